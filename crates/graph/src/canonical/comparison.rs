@@ -1,0 +1,121 @@
+//! How the stereoisomers that two records of one constitution stand for lie to each other.
+
+use std::collections::BTreeSet;
+
+use crate::{Canonical, OrderError, Orderer, Shape, order::Labelling, stereo::Candidate};
+
+use super::colour;
+
+/// How two sets of stereoisomers of one constitution lie to each other.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Arrangement {
+    /// The same set.
+    Same,
+    /// They share a stereoisomer, but are not the same set.
+    Overlapping,
+    /// One stereoisomer each, mirror images of each other.
+    MirrorImages,
+    /// No stereoisomer of one is one of the other or its mirror image.
+    Unlike,
+    /// Nothing shared, but some stereoisomer of one is the mirror image of one of the other, and one
+    /// of the sets has more than one.
+    PossiblyMirrorImages,
+}
+
+/// Compares the claims of two records of the same labelled constitution.
+///
+/// # Errors
+/// [`OrderError::StepLimit`].
+///
+/// # Complexity
+/// A canonical labelling for each listed assignment of either side; nearly always one.
+pub fn arrangement(
+    orderer: &mut Orderer,
+    a: &Canonical,
+    b: &Canonical,
+) -> Result<Arrangement, OrderError> {
+    if a.same_compound(b) {
+        return Ok(Arrangement::Same);
+    }
+    // Elements that either side leaves free agree with anything: the free set of each side is a
+    // union of orbits, so only the elements that both fix have to be compared.
+    let (in_a, in_b) = (a.fixed_places(), b.fixed_places());
+    let common: BTreeSet<Place> = in_a.intersection(&in_b).copied().collect();
+    let ours = orderer.certificates(a, &common, false)?;
+    let theirs = orderer.certificates(b, &common, false)?;
+    if !ours.is_disjoint(&theirs) {
+        return Ok(Arrangement::Overlapping);
+    }
+    let mirrored = orderer.certificates(b, &common, true)?;
+    Ok(if ours.is_disjoint(&mirrored) {
+        Arrangement::Unlike
+    } else if a.claims.open || b.claims.open {
+        Arrangement::PossiblyMirrorImages
+    } else {
+        Arrangement::MirrorImages
+    })
+}
+
+/// A stereo element by shape and the canonical places of its centres. Sets of elements closed under
+/// automorphisms have the same places whichever of the equivalent orders was found.
+type Place = (Shape, u32, u32);
+
+impl Canonical {
+    fn place(&self, candidate: &Candidate) -> Place {
+        let [a, b] = candidate.centres.map(|atom| self.bare.rank[atom as usize]);
+        (candidate.shape, a.min(b), a.max(b))
+    }
+
+    fn fixed_places(&self) -> BTreeSet<Place> {
+        let fixed = self
+            .variables
+            .iter()
+            .zip(&self.claims.free)
+            .filter(|&(_, &free)| !free);
+        fixed
+            .flat_map(|(variable, _)| &variable.members)
+            .map(|&(index, _)| self.place(&self.perception.candidates[index]))
+            .collect()
+    }
+}
+
+impl Orderer {
+    /// Certificates of all listed assignments, or of their mirror images, with only the elements at
+    /// `places` marked.
+    fn certificates(
+        &mut self,
+        canonical: &Canonical,
+        places: &BTreeSet<Place>,
+        mirrored: bool,
+    ) -> Result<BTreeSet<Vec<u64>>, OrderError> {
+        colour::load(
+            &mut self.graph,
+            &canonical.skeleton,
+            &canonical.mesomer,
+            true,
+        )?;
+        let limit = self.limits.order_steps;
+        let mut steps = 0;
+        let mut found = BTreeSet::new();
+        let mut labelling = Labelling::default();
+        for assignment in &canonical.claims.assignments {
+            self.graph.units.clear();
+            for (variable, &odd) in canonical.variables.iter().zip(assignment) {
+                for &(index, opposite) in &variable.members {
+                    let candidate = &canonical.perception.candidates[index];
+                    if places.contains(&canonical.place(candidate)) {
+                        let turned = mirrored && candidate.is_chiral();
+                        self.graph
+                            .units
+                            .push(candidate.unit(odd ^ opposite ^ turned));
+                    }
+                }
+            }
+            self.labeller
+                .label(&self.graph, limit, &mut steps, &mut labelling)
+                .map_err(|_| OrderError::StepLimit { limit })?;
+            found.insert(labelling.certificate.clone());
+        }
+        Ok(found)
+    }
+}

@@ -1,0 +1,125 @@
+//! The canonical form: the molecule as canonical text writes it, numbered in canonical order.
+
+use crate::{Canonical, Element, Ligand, Parity, Shape, claims::Status, stereo::slot};
+
+use super::placement;
+
+/// An atom of the canonical form.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct FormAtom {
+    /// The element.
+    pub element: Element,
+    /// The mass number, where given.
+    pub isotope: Option<u16>,
+    /// Formal charge in the placement that is written.
+    pub charge: i8,
+    /// Hydrogens of natural composition. Labelled ones are atoms of their own.
+    pub hydrogens: u8,
+}
+
+/// A marked stereo element of the canonical form.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct FormStereo {
+    /// The geometry.
+    pub shape: Shape,
+    /// The centre twice, or the two ends.
+    pub centres: [u32; 2],
+    /// The ligands, two at each end for double bonds and axes.
+    pub ligands: [Ligand; 4],
+    /// The arrangement.
+    pub parity: Parity,
+}
+
+/// A molecule in canonical form: hydrogens folded, π bonds and charges in the placement that is
+/// least in canonical order, customary rather than charge-separated where custom has a neutral form,
+/// only marks that count.
+#[derive(Debug, Clone, Default, PartialEq, Eq)]
+pub struct CanonicalForm {
+    /// The atoms in canonical order, then labelled hydrogens.
+    pub atoms: Vec<FormAtom>,
+    /// The bonds: lower atom, higher atom, order 1 to 4; sorted.
+    pub bonds: Vec<(u32, u32, u8)>,
+    /// The marked stereo elements, sorted by centres.
+    pub stereo: Vec<FormStereo>,
+}
+
+impl Canonical {
+    /// The canonical form.
+    pub fn form(&self) -> CanonicalForm {
+        let placed = placement::place(&self.skeleton, &self.mesomer, &self.written.rank);
+        let rank = |atom: u32| self.written.rank[atom as usize];
+        let mut form = CanonicalForm::default();
+        // A labelled hydrogen of each host, for stereo ligands: host rank, mass, atom.
+        let mut labelled: Vec<(u32, u32, u32)> = Vec::new();
+        let mut next = self.skeleton.len() as u32;
+        for &atom in &self.written.order {
+            let record = &self.skeleton.atoms[atom as usize];
+            let counts = [0, 4, 8].map(|shift| record.labelled >> shift & 15);
+            let natural = u16::from(record.hydrogens).saturating_sub(counts.iter().sum());
+            form.atoms.push(FormAtom {
+                element: record.element,
+                isotope: record.isotope,
+                charge: placed.charges[atom as usize],
+                hydrogens: natural as u8,
+            });
+            for (mass, count) in (1u32..).zip(counts) {
+                for _ in 0..count {
+                    labelled.push((rank(atom), mass, next));
+                    next += 1;
+                }
+            }
+        }
+        for (bond, &order) in self.skeleton.bonds.iter().zip(&placed.orders) {
+            let (a, b) = (rank(bond.a), rank(bond.b));
+            form.bonds.push((a.min(b), a.max(b), order));
+        }
+        for &(host, mass, atom) in &labelled {
+            form.atoms.push(FormAtom {
+                element: Element::HYDROGEN,
+                isotope: Some(mass as u16),
+                charge: 0,
+                hydrogens: 0,
+            });
+            form.bonds.push((host, atom, 1));
+        }
+        form.bonds.sort_unstable();
+        self.add_stereo(&mut form, &labelled);
+        form
+    }
+
+    fn add_stereo(&self, form: &mut CanonicalForm, labelled: &[(u32, u32, u32)]) {
+        let rank = |atom: u32| self.written.rank[atom as usize];
+        for (variable, status) in self.variables.iter().zip(&self.claims.statuses) {
+            let (Status::Marked, Some(odd)) = (status, variable.odd) else {
+                continue;
+            };
+            for &(index, opposite) in &variable.members {
+                let candidate = &self.perception.candidates[index];
+                let centres = candidate.centres.map(rank);
+                let mut at = 0;
+                let ligands = candidate.ligands.map(|ligand| {
+                    let centre = centres[at / 2];
+                    at += 1;
+                    match ligand {
+                        slot::LONE_PAIR => Ligand::LonePair,
+                        slot::HYDROGEN => Ligand::Hydrogen,
+                        l if l > slot::HYDROGEN => {
+                            let mass = l - slot::HYDROGEN;
+                            let own = labelled.iter().find(|&&(h, m, _)| h == centre && m == mass);
+                            own.map_or(Ligand::Hydrogen, |&(_, _, atom)| Ligand::Atom(atom))
+                        }
+                        atom => Ligand::Atom(rank(atom)),
+                    }
+                });
+                let parity = Parity::from_odd(odd ^ opposite);
+                form.stereo.push(FormStereo {
+                    shape: candidate.shape,
+                    centres,
+                    ligands,
+                    parity,
+                });
+            }
+        }
+        form.stereo.sort_by_key(|element| element.centres);
+    }
+}

@@ -1,0 +1,101 @@
+//! The normal form, atom by atom, for callers who compare constitutions.
+
+use crate::{Canonical, Element, mesomer::MOBILE};
+
+/// An atom of the normal form, terminal hydrogens folded.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct NormalAtom {
+    /// The atom's index in the molecule.
+    pub source: u32,
+    /// The element.
+    pub element: Element,
+    /// The mass number, where given.
+    pub isotope: Option<u16>,
+    /// All hydrogens.
+    pub hydrogens: u8,
+    /// Hydrogens with mass number 1, 2 and 3, where given.
+    pub labelled: [u8; 3],
+    /// The charge; `None` where it differs among the best placements.
+    pub charge: Option<i8>,
+    /// Open valences; `None` where they differ among the best placements.
+    pub open: Option<u8>,
+}
+
+/// A bond of the normal form, by positions in the list of atoms.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct NormalBond {
+    /// One atom.
+    pub a: u32,
+    /// The other.
+    pub b: u32,
+    /// The order, 1 to 4; `None` for a mobile bond.
+    pub order: Option<u8>,
+    /// Whether the bond lies in a ring.
+    pub in_ring: bool,
+}
+
+/// Atoms in canonical order, and bonds.
+#[derive(Debug, Clone, Default, PartialEq, Eq)]
+pub struct NormalForm {
+    /// The atoms.
+    pub atoms: Vec<NormalAtom>,
+    /// The bonds, in no particular order.
+    pub bonds: Vec<NormalBond>,
+}
+
+impl Canonical {
+    /// The normal form: what the constitution of the record is, whatever placement was drawn.
+    pub fn normal_form(&self) -> NormalForm {
+        let atoms = self.written.order.iter().map(|&atom| {
+            let record = &self.skeleton.atoms[atom as usize];
+            let state = &self.mesomer.states[atom as usize];
+            NormalAtom {
+                source: record.source,
+                element: record.element,
+                isotope: record.isotope,
+                hydrogens: record.hydrogens,
+                labelled: [0, 4, 8].map(|shift| (record.labelled >> shift & 15) as u8),
+                charge: (!state.mobile).then_some(state.charge),
+                open: (!state.mobile).then_some(state.open),
+            }
+        });
+        let rank = |atom: u32| self.written.rank[atom as usize];
+        let bonds = self.skeleton.bonds.iter().enumerate().map(|(index, bond)| {
+            let order = self.mesomer.orders[index];
+            NormalBond {
+                a: rank(bond.a),
+                b: rank(bond.b),
+                order: (order != MOBILE).then_some(order),
+                in_ring: self.skeleton.ring[index],
+            }
+        });
+        NormalForm {
+            atoms: atoms.collect(),
+            bonds: bonds.collect(),
+        }
+    }
+
+    /// Generators of the automorphism group of the constitution with isotopes, stereo left aside:
+    /// images of positions in [`Canonical::normal_form`].
+    pub fn automorphisms(&self) -> Vec<Vec<u32>> {
+        let rank = |atom: u32| self.written.rank[atom as usize];
+        let image = |generator: &Vec<u32>| {
+            self.written
+                .order
+                .iter()
+                .map(|&atom| rank(generator[atom as usize]))
+                .collect()
+        };
+        self.bare.generators.iter().map(image).collect()
+    }
+
+    /// Positions in [`Canonical::normal_form`] in the canonical order of the constitution with
+    /// isotopes: two records of one labelled constitution match position by position.
+    pub fn constitution_order(&self) -> Vec<u32> {
+        self.bare
+            .order
+            .iter()
+            .map(|&atom| self.written.rank[atom as usize])
+            .collect()
+    }
+}

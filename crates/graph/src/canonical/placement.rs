@@ -1,0 +1,93 @@
+//! The placement of π bonds and charges that canonical text writes.
+
+use crate::{
+    Element,
+    matching::Matching,
+    mesomer::{MOBILE, Mesomer, is_metal},
+    skeleton::Skeleton,
+};
+
+/// Bond orders and charges of one valence structure, on the skeleton.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub(super) struct Placed {
+    pub(super) orders: Vec<u8>,
+    pub(super) charges: Vec<i8>,
+}
+
+/// Of all best placements the first in canonical order: bonds by the ranks of their atoms, each as
+/// high an order as the bonds before it allow, then charges. Charge-separated centres below the
+/// second row are then written in the customary form (S=O, P=O).
+pub(super) fn place(skeleton: &Skeleton, mesomer: &Mesomer, rank: &[u32]) -> Placed {
+    let mut placed = Placed {
+        orders: mesomer.orders.clone(),
+        charges: skeleton.atoms.iter().map(|atom| atom.charge).collect(),
+    };
+    for (charge, state) in placed.charges.iter_mut().zip(&mesomer.states) {
+        if !state.mobile {
+            *charge = state.charge;
+        }
+    }
+    let mut matching = Matching::default();
+    for system in &mesomer.systems {
+        let touches_mobile = system
+            .bonds
+            .iter()
+            .any(|bond| mesomer.orders[bond.bond as usize] == MOBILE)
+            || system
+                .atoms
+                .iter()
+                .any(|&atom| mesomer.states[atom as usize].mobile);
+        if touches_mobile && !system.mate.is_empty() {
+            system.first_placement(
+                &mut matching,
+                rank,
+                |bond, order| {
+                    placed.orders[bond as usize] = order;
+                },
+                |atom, charge| {
+                    placed.charges[atom as usize] = charge;
+                },
+            );
+        }
+    }
+    customary(skeleton, rank, &mut placed);
+    placed
+}
+
+/// Neutralises charge-separated pairs at third-row and heavier centres of groups 15–17: oxygen
+/// first, then its group, then nitrogen; a phosphorus ylide is written with a double bond as well.
+fn customary(skeleton: &Skeleton, rank: &[u32], placed: &mut Placed) {
+    let mut centres: Vec<u32> = (0..skeleton.len() as u32).collect();
+    centres.sort_unstable_by_key(|&atom| rank[atom as usize]);
+    for centre in centres {
+        let element = skeleton.atoms[centre as usize].element;
+        if is_metal(element) || !matches!(element.group(), Some(15..=17)) || element.period() < 3 {
+            continue;
+        }
+        let mut partners: Vec<(u8, u32, u32, u32)> = skeleton
+            .arcs(centre)
+            .iter()
+            .filter_map(|&(to, bond)| {
+                let class = match skeleton.atoms[to as usize].element {
+                    Element::OXYGEN => 0,
+                    other if other.group() == Some(16) => 1,
+                    Element::NITROGEN => 2,
+                    Element::CARBON if element == Element::PHOSPHORUS => 3,
+                    _ => return None,
+                };
+                Some((class, rank[to as usize], to, bond))
+            })
+            .collect();
+        partners.sort_unstable();
+        for (_, _, to, bond) in partners {
+            while placed.charges[centre as usize] > 0
+                && placed.charges[to as usize] < 0
+                && placed.orders[bond as usize] < 3
+            {
+                placed.charges[centre as usize] -= 1;
+                placed.charges[to as usize] += 1;
+                placed.orders[bond as usize] += 1;
+            }
+        }
+    }
+}

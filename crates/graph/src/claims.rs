@@ -1,0 +1,18 @@
+//! Claims: the set of stereoisomers that a record stands for, compared and keyed as a set.
+//!
+//! The marks of a record fix some elements and leave others free. Its stereoisomers are the
+//! assignments it allows, up to automorphisms of the constitution. Two records may mark different
+//! elements and still allow the same set, so the set itself is brought into normal form:
+//!
+//! * An element is *free* when inverting it maps the set onto itself. Free elements carry no mark in
+//!   the normal form. Which elements are free is decided exactly; it depends on the set alone.
+//! * What remains is a list of assignments of the other elements, one for each canonical certificate
+//!   in the set. For almost every record it has one member; only unmarked elements that an
+//!   automorphism takes to marked ones make it longer, up to a limit.
+
+mod action;
+mod solve;
+mod variables;
+
+pub(crate) use solve::{Claims, Outcome, Solver, Status};
+pub(crate) use variables::{Variable, variables};

@@ -1,0 +1,133 @@
+//! How automorphisms of the constitution act on stereo elements.
+
+use crate::stereo::{Candidate, Perception, slot};
+
+use super::Variable;
+
+/// What one automorphism does to one variable: its image, and whether the parity is inverted.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(super) struct Move {
+    pub(super) from: usize,
+    pub(super) to: usize,
+    pub(super) inverts: bool,
+}
+
+/// The action of a list of automorphisms; per automorphism only what it moves or inverts.
+#[derive(Debug, Default, Clone)]
+pub(super) struct Action {
+    pub(super) moves: Vec<Vec<Move>>,
+}
+
+/// For each candidate its variable, and whether it is opposite there.
+pub(super) fn membership(candidates: usize, variables: &[Variable]) -> Vec<(usize, bool)> {
+    let mut table = vec![(usize::MAX, false); candidates];
+    for (index, variable) in variables.iter().enumerate() {
+        for &(candidate, opposite) in &variable.members {
+            table[candidate] = (index, opposite);
+        }
+    }
+    table
+}
+
+impl Action {
+    /// Works out the action of automorphisms given as images of all skeleton atoms.
+    pub(super) fn of(
+        generators: &[Vec<u32>],
+        perception: &Perception,
+        variables: &[Variable],
+    ) -> Self {
+        let candidates = &perception.candidates;
+        let member = membership(candidates.len(), variables);
+        let mut places: Vec<([u32; 2], usize)> = candidates
+            .iter()
+            .enumerate()
+            .map(|(index, c)| (sorted(c.centres), index))
+            .collect();
+        places.sort_unstable();
+        let find = |centres: [u32; 2]| {
+            let at = places
+                .binary_search_by_key(&sorted(centres), |place| place.0)
+                .ok()?;
+            Some(places[at].1)
+        };
+        let moves = generators.iter().map(|generator| {
+            let image = |vertex: u32| generator[vertex as usize];
+            let mut moves = Vec::new();
+            for (from, variable) in variables.iter().enumerate() {
+                let Some(&(index, opposite)) = variable.members.first() else {
+                    continue;
+                };
+                let candidate = &candidates[index];
+                let Some(target) = find(candidate.centres.map(image)) else {
+                    continue;
+                };
+                let inverts = inverts(candidate, &candidates[target], image);
+                let (to, target_opposite) = member[target];
+                let inverts = inverts ^ opposite ^ target_opposite;
+                if to != from || inverts {
+                    moves.push(Move { from, to, inverts });
+                }
+            }
+            moves
+        });
+        Self {
+            moves: moves.collect(),
+        }
+    }
+
+    /// Variables that some automorphism inverts while it leaves all others as they are: they are
+    /// not stereogenic in any record. Removing one may uncover the next.
+    pub(super) fn never_stereogenic(&self, variables: usize) -> Vec<bool> {
+        let mut never = vec![false; variables];
+        loop {
+            let mut changed = false;
+            for moves in &self.moves {
+                let mut real = moves.iter().filter(|m| !never[m.from]);
+                if let (Some(only), None) = (real.next(), real.next())
+                    && only.from == only.to
+                {
+                    never[only.from] = true;
+                    changed = true;
+                }
+            }
+            if !changed {
+                return never;
+            }
+        }
+    }
+}
+
+fn sorted([a, b]: [u32; 2]) -> [u32; 2] {
+    [a.min(b), a.max(b)]
+}
+
+/// Whether the images of a candidate's ligands are an odd permutation of the target's.
+fn inverts(candidate: &Candidate, target: &Candidate, image: impl Fn(u32) -> u32) -> bool {
+    let mut ligands = candidate
+        .ligands
+        .map(|l| if l < slot::HYDROGEN { image(l) } else { l });
+    let one_centre = candidate.centres[0] == candidate.centres[1];
+    if !one_centre && image(candidate.centres[0]) != target.centres[0] {
+        ligands = [ligands[2], ligands[3], ligands[0], ligands[1]];
+    }
+    let mut order = [0usize; 4];
+    for (at, (place, ligand)) in order.iter_mut().zip(ligands).enumerate() {
+        // Both ends of a double bond may have a hydrogen; look within the end.
+        let range = if one_centre {
+            0..4
+        } else {
+            at / 2 * 2..at / 2 * 2 + 2
+        };
+        *place = range
+            .clone()
+            .find(|&i| target.ligands[i] == ligand)
+            .unwrap_or(at);
+    }
+    let mut odd = false;
+    for i in 0..4 {
+        for j in i + 1..4 {
+            odd ^= order[i] > order[j];
+        }
+    }
+    odd
+}

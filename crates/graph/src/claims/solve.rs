@@ -1,0 +1,372 @@
+//! The normal form of a set of stereoisomers.
+
+use crate::{
+    OrderError,
+    order::{Coloured, Labeller, Labelling},
+    stereo::Perception,
+};
+
+use super::{Variable, action::Action};
+
+/// What became of a variable.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(crate) enum Status {
+    /// Its mark counts.
+    Marked,
+    /// Unmarked, and inverting it gives another stereoisomer.
+    Unmarked,
+    /// Not stereogenic here: marks on it say nothing.
+    NotStereogenic,
+}
+
+/// The set of stereoisomers in normal form.
+#[derive(Debug, Default, Clone)]
+pub(crate) struct Claims {
+    /// Per variable: inverting it maps the set onto itself.
+    pub(crate) free: Vec<bool>,
+    /// Assignments of the variables that are not free, one for each certificate. Free variables have
+    /// an arbitrary value.
+    pub(crate) assignments: Vec<Vec<bool>>,
+    /// The certificates, sorted; the set is determined by them.
+    pub(crate) certificates: Vec<Vec<u64>>,
+    /// Whether the set has more than one stereoisomer, quiet elements aside.
+    pub(crate) open: bool,
+    pub(crate) statuses: Vec<Status>,
+}
+
+/// The claims of a record, with the order to write it in.
+#[derive(Debug, Default, Clone)]
+pub(crate) struct Outcome {
+    pub(crate) claims: Claims,
+    pub(crate) written: Labelling,
+}
+
+/// Labels one molecule under changing marks.
+pub(crate) struct Solver<'a> {
+    pub(crate) graph: &'a mut Coloured,
+    pub(crate) labeller: &'a mut Labeller,
+    pub(crate) perception: &'a Perception,
+    pub(crate) variables: &'a [Variable],
+    pub(crate) step_limit: u64,
+    pub(crate) steps: &'a mut u64,
+    pub(crate) open_limit: u32,
+}
+
+impl Solver<'_> {
+    /// Canonical labelling with marks on the variables that `mark` gives one.
+    pub(crate) fn label(
+        &mut self,
+        mark: impl Fn(usize) -> Option<bool>,
+    ) -> Result<Labelling, OrderError> {
+        self.graph.units.clear();
+        for (index, variable) in self.variables.iter().enumerate() {
+            if let Some(odd) = mark(index) {
+                for &(candidate, opposite) in &variable.members {
+                    let unit = self.perception.candidates[candidate].unit(odd ^ opposite);
+                    self.graph.units.push(unit);
+                }
+            }
+        }
+        let mut labelling = Labelling::default();
+        self.labeller
+            .label(self.graph, self.step_limit, self.steps, &mut labelling)
+            .map_err(|_| OrderError::StepLimit {
+                limit: self.step_limit,
+            })?;
+        Ok(labelling)
+    }
+
+    /// Finds the normal form. `bare` is the labelling of the same graph without any marks.
+    pub(crate) fn solve(&mut self, bare: &Labelling) -> Result<Outcome, OrderError> {
+        let action = Action::of(&bare.generators, self.perception, self.variables);
+        let orbits = Orbits::of(&action, self.variables.len());
+        let never = action.never_stereogenic(self.variables.len());
+        let mut free = self.surely_free(&orbits, &never);
+        let assignments = self.assignments(&free)?;
+        let mut found = self.distinct(assignments, &free)?;
+        let more = self.further_free(&found, &orbits, &free)?;
+        if !more.is_empty() {
+            for variable in more {
+                free[variable] = true;
+            }
+            let assignments = found.into_iter().map(|member| member.assignment).collect();
+            found = self.distinct(assignments, &free)?;
+        }
+        let written = self.written(bare, &found, &free)?;
+        let statuses = self.statuses(&orbits, &free, &never)?;
+        let open = found.len() > 1 || self.is_open(&found, &orbits, &free, &never)?;
+        let (assignments, certificates) = found
+            .into_iter()
+            .map(|m| (m.assignment, m.labelling.certificate))
+            .unzip();
+        Ok(Outcome {
+            claims: Claims {
+                free,
+                assignments,
+                certificates,
+                open,
+                statuses,
+            },
+            written,
+        })
+    }
+
+    /// Variables that are free without a doubt: never stereogenic, or unmarked with all their
+    /// images.
+    fn surely_free(&self, orbits: &Orbits, never: &[bool]) -> Vec<bool> {
+        let marked = |v: usize| self.variables[v].odd.is_some() && !never[v];
+        let mut orbit_marked = vec![false; self.variables.len()];
+        for v in (0..self.variables.len()).filter(|&v| marked(v)) {
+            orbit_marked[orbits.root[v]] = true;
+        }
+        (0..self.variables.len())
+            .map(|v| never[v] || !orbit_marked[orbits.root[v]])
+            .collect()
+    }
+
+    /// All assignments of the unmarked variables that are not surely free.
+    fn assignments(&self, free: &[bool]) -> Result<Vec<Vec<bool>>, OrderError> {
+        let marked: Vec<bool> = self
+            .variables
+            .iter()
+            .map(|variable| variable.odd == Some(true))
+            .collect();
+        let listed: Vec<usize> = (0..free.len())
+            .filter(|&v| !free[v] && self.variables[v].odd.is_none())
+            .collect();
+        if listed.len() > self.open_limit as usize {
+            return Err(OrderError::TooManyOpenElements {
+                limit: self.open_limit,
+            });
+        }
+        Ok((0u64..1 << listed.len())
+            .map(|bits| {
+                let mut assignment = marked.clone();
+                for (at, &variable) in listed.iter().enumerate() {
+                    assignment[variable] = bits >> at & 1 == 1;
+                }
+                assignment
+            })
+            .collect())
+    }
+
+    /// Labels each assignment and keeps one for each certificate, sorted.
+    fn distinct(
+        &mut self,
+        assignments: Vec<Vec<bool>>,
+        free: &[bool],
+    ) -> Result<Vec<Member>, OrderError> {
+        let mut found = Vec::with_capacity(assignments.len());
+        for assignment in assignments {
+            let labelling = self.label(|v| (!free[v]).then(|| assignment[v]))?;
+            found.push(Member {
+                assignment,
+                labelling,
+            });
+        }
+        found.sort_by(|a, b| a.labelling.certificate.cmp(&b.labelling.certificate));
+        found.dedup_by(|a, b| a.labelling.certificate == b.labelling.certificate);
+        Ok(found)
+    }
+
+    /// Orbits of variables whose inversion, one at a time, maps the set onto itself. Inverting
+    /// variables that an automorphism of the assignment exchanges gives the same, so one of each
+    /// kind is tried.
+    fn further_free(
+        &mut self,
+        found: &[Member],
+        orbits: &Orbits,
+        free: &[bool],
+    ) -> Result<Vec<usize>, OrderError> {
+        let mut more = Vec::new();
+        for root in 0..free.len() {
+            if orbits.root[root] != root || orbits.inert[root] || free[root] {
+                continue;
+            }
+            let orbit: Vec<usize> = (0..free.len())
+                .filter(|&v| orbits.root[v] == root)
+                .collect();
+            if self.all_inversions_stay(found, &orbit, free)? {
+                more.extend(orbit);
+            }
+        }
+        Ok(more)
+    }
+
+    fn all_inversions_stay(
+        &mut self,
+        found: &[Member],
+        orbit: &[usize],
+        free: &[bool],
+    ) -> Result<bool, OrderError> {
+        for member in found {
+            let own = Action::of(
+                &member.labelling.generators,
+                self.perception,
+                self.variables,
+            );
+            let own = Orbits::of(&own, free.len());
+            for &v in orbit.iter().filter(|&&v| own.root[v] == v) {
+                let flipped =
+                    self.label(|w| (!free[w]).then(|| member.assignment[w] ^ (w == v)))?;
+                let inside = found
+                    .binary_search_by(|m| m.labelling.certificate.cmp(&flipped.certificate))
+                    .is_ok();
+                if !inside {
+                    return Ok(false);
+                }
+            }
+        }
+        Ok(true)
+    }
+
+    /// The labelling that canonical text is written from: the record's own marks, free ones left
+    /// out.
+    fn written(
+        &mut self,
+        bare: &Labelling,
+        found: &[Member],
+        free: &[bool],
+    ) -> Result<Labelling, OrderError> {
+        let marked = |v: usize| self.variables[v].odd.filter(|_| !free[v]);
+        if (0..free.len()).all(|v| marked(v).is_none()) {
+            return Ok(bare.clone());
+        }
+        if let [only] = found
+            && (0..free.len()).all(|v| free[v] || self.variables[v].odd.is_some())
+        {
+            return Ok(only.labelling.clone());
+        }
+        let variables = self.variables;
+        self.label(|v| variables[v].odd.filter(|_| !free[v]))
+    }
+
+    /// Whether some inversion of a free element gives another stereoisomer. If none does from one
+    /// member of the set, the set has one member: each further inversion starts from an equivalent
+    /// assignment.
+    fn is_open(
+        &mut self,
+        found: &[Member],
+        orbits: &Orbits,
+        free: &[bool],
+        never: &[bool],
+    ) -> Result<bool, OrderError> {
+        let variables = self.variables;
+        let counts = |v: usize| free[v] && !never[v] && !variables[v].quiet;
+        if (0..free.len()).any(|v| counts(v) && orbits.inert[v]) {
+            return Ok(true);
+        }
+        if !(0..free.len()).any(counts) {
+            return Ok(false);
+        }
+        let Some(member) = found.first() else {
+            return Ok(false);
+        };
+        let value = |v: usize| (!free[v] || counts(v)).then(|| member.assignment[v]);
+        let base = self.label(value)?;
+        let own = Action::of(&base.generators, self.perception, self.variables);
+        let own = Orbits::of(&own, free.len());
+        for v in (0..free.len()).filter(|&v| counts(v) && own.root[v] == v) {
+            let flipped = self.label(|w| value(w).map(|odd| odd ^ (w == v)))?;
+            if flipped.certificate != base.certificate {
+                return Ok(true);
+            }
+        }
+        Ok(false)
+    }
+
+    /// What each variable is in this record. An unmarked one counts as stereogenic unless an
+    /// automorphism inverts it and leaves all other elements, marked or not, as they are.
+    fn statuses(
+        &mut self,
+        orbits: &Orbits,
+        free: &[bool],
+        never: &[bool],
+    ) -> Result<Vec<Status>, OrderError> {
+        let mut statuses = Vec::with_capacity(free.len());
+        for v in 0..free.len() {
+            statuses.push(if !free[v] {
+                if self.variables[v].odd.is_some() {
+                    Status::Marked
+                } else {
+                    Status::Unmarked
+                }
+            } else if never[v] {
+                Status::NotStereogenic
+            } else if orbits.inert[v] || self.is_stereogenic(v, free, never)? {
+                Status::Unmarked
+            } else {
+                Status::NotStereogenic
+            });
+        }
+        Ok(statuses)
+    }
+
+    fn is_stereogenic(
+        &mut self,
+        v: usize,
+        free: &[bool],
+        never: &[bool],
+    ) -> Result<bool, OrderError> {
+        let variables = self.variables;
+        let colours = self.graph.colours.clone();
+        // Each other unmarked element keeps its place: its centres get a colour of their own, above
+        // all bits that atoms use.
+        for (index, variable) in variables.iter().enumerate() {
+            if free[index] && !never[index] && index != v {
+                for &(candidate, _) in &variable.members {
+                    for centre in self.perception.candidates[candidate].centres {
+                        self.graph.colours[centre as usize] = !(index as u64);
+                    }
+                }
+            }
+        }
+        let value = |w: usize| match variables[w].odd {
+            _ if never[w] => None,
+            Some(odd) if !free[w] => Some(odd),
+            _ => Some(false),
+        };
+        let even = self.label(value);
+        let odd = self.label(|w| value(w).map(|odd| odd ^ (w == v)));
+        self.graph.colours = colours;
+        Ok(even?.certificate != odd?.certificate)
+    }
+}
+
+/// One assignment with its labelling.
+#[derive(Debug, Clone)]
+struct Member {
+    assignment: Vec<bool>,
+    labelling: Labelling,
+}
+
+/// Orbits of variables, and which variables no automorphism moves or inverts.
+#[derive(Debug, Clone)]
+pub(super) struct Orbits {
+    /// Per variable: the least variable of its orbit.
+    root: Vec<usize>,
+    inert: Vec<bool>,
+}
+
+impl Orbits {
+    fn of(action: &Action, variables: usize) -> Self {
+        let mut root: Vec<usize> = (0..variables).collect();
+        let mut inert = vec![true; variables];
+        for entry in action.moves.iter().flatten() {
+            inert[entry.from] = false;
+            inert[entry.to] = false;
+            let find = |root: &[usize], mut v: usize| {
+                while root[v] != v {
+                    v = root[v];
+                }
+                v
+            };
+            let (a, b) = (find(&root, entry.from), find(&root, entry.to));
+            root[a.max(b)] = a.min(b);
+        }
+        for v in 0..variables {
+            root[v] = root[root[v]];
+        }
+        Self { root, inert }
+    }
+}

@@ -1,0 +1,45 @@
+//! Molecules as graphs: perception, canonical order, stereo claims and keys.
+//!
+//! This crate knows no file format. A reader fills a [`MoleculeBuilder`].
+#![forbid(unsafe_code)]
+
+mod atom;
+mod bond;
+mod builder;
+mod canonical;
+mod claims;
+mod drawn;
+mod element;
+mod formula;
+mod kekule;
+mod key;
+mod limits;
+mod mass;
+mod matching;
+mod mesomer;
+mod molecule;
+mod order;
+mod rings;
+mod skeleton;
+mod stereo;
+mod unsaturation;
+
+pub use crate::{
+    atom::Atom,
+    bond::BondOrder,
+    builder::{BuildError, MoleculeBuilder},
+    canonical::{
+        Arrangement, Canonical, CanonicalForm, Dropped, FormAtom, FormStereo, Mark, NormalAtom,
+        NormalBond, NormalForm, OrderError, Orderer, StereoElement, StereoNote, arrangement,
+    },
+    drawn::{DrawnStereo, Ligand, Parity, Shape},
+    element::{Element, Nuclide},
+    formula::Formula,
+    kekule::PiDemand,
+    key::{KEY_VERSION, Key},
+    limits::Limits,
+    mass::{Mass, MassError, average_mass, monoisotopic_mass},
+    molecule::Molecule,
+    stereo::Undrawable,
+    unsaturation::Unsaturation,
+};

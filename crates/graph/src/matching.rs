@@ -1,0 +1,308 @@
+//! Maximum matching in a general graph: augmenting paths with blossoms.
+//!
+//! Edmonds, Can. J. Math. 1965, 17, 449. A search from one exposed vertex costs O(vertices × edges)
+//! at worst and is close to linear on molecules.
+
+use std::{collections::VecDeque, ops::Range};
+
+/// No vertex: the mate of an exposed vertex.
+pub(crate) const NONE: u32 = u32::MAX;
+
+/// A graph with a matching that grows by augmenting paths. All vectors are scratch that is reused.
+#[derive(Debug, Default, Clone)]
+pub(crate) struct Matching {
+    neighbours: Vec<Vec<u32>>,
+    vertices: usize,
+    mate: Vec<u32>,
+    removed: Vec<bool>,
+    group: Vec<u32>,
+    blocked: Option<(u32, u32)>,
+    parent: Vec<u32>,
+    base: Vec<u32>,
+    outer: Vec<bool>,
+    in_blossom: Vec<bool>,
+    on_path: Vec<bool>,
+    queue: VecDeque<u32>,
+}
+
+impl Matching {
+    /// Empties the graph and gives it `vertices` isolated vertices.
+    pub(crate) fn reset(&mut self, vertices: usize) {
+        for list in self.neighbours.iter_mut().take(self.vertices) {
+            list.clear();
+        }
+        self.vertices = vertices;
+        if self.neighbours.len() < vertices {
+            self.neighbours.resize_with(vertices, Vec::new);
+        }
+        self.mate.clear();
+        self.mate.resize(vertices, NONE);
+        self.removed.clear();
+        self.removed.resize(vertices, false);
+        self.group.clear();
+        self.group.extend(0..vertices as u32);
+        self.blocked = None;
+    }
+
+    /// Puts a vertex into a group, for [`Matching::block`].
+    pub(crate) fn set_group(&mut self, vertex: u32, group: u32) {
+        self.group[vertex as usize] = group;
+    }
+
+    /// Hides all edges between two groups from searches, or shows them again.
+    pub(crate) fn block(&mut self, groups: Option<(u32, u32)>) {
+        self.blocked = groups;
+    }
+
+    fn is_blocked(&self, a: u32, b: u32) -> bool {
+        self.blocked.is_some_and(|(x, y)| {
+            let (p, q) = (self.group[a as usize], self.group[b as usize]);
+            (p, q) == (x, y) || (p, q) == (y, x)
+        })
+    }
+
+    /// Adds an edge. The caller adds each edge once.
+    pub(crate) fn add_edge(&mut self, a: u32, b: u32) {
+        self.neighbours[a as usize].push(b);
+        self.neighbours[b as usize].push(a);
+    }
+
+    /// Deletes all edges between two ranges of vertices, save those with a kept end.
+    pub(crate) fn cut(&mut self, a: Range<u32>, b: Range<u32>, kept: &[bool]) {
+        for (from, to) in [(a.clone(), b.clone()), (b, a)] {
+            for vertex in from.filter(|&v| !kept[v as usize]) {
+                self.neighbours[vertex as usize]
+                    .retain(|other| kept[*other as usize] || !to.contains(other));
+            }
+        }
+    }
+
+    /// The neighbours of a vertex.
+    pub(crate) fn neighbours(&self, vertex: u32) -> &[u32] {
+        &self.neighbours[vertex as usize]
+    }
+
+    /// The partner of a vertex, [`NONE`] if it is exposed.
+    pub(crate) fn mate(&self, vertex: u32) -> u32 {
+        self.mate[vertex as usize]
+    }
+
+    /// Puts an edge into the matching; both ends must be exposed.
+    pub(crate) fn join(&mut self, a: u32, b: u32) {
+        self.mate[a as usize] = b;
+        self.mate[b as usize] = a;
+    }
+
+    /// Takes the matching edge at a vertex out again and returns the other end.
+    pub(crate) fn part(&mut self, a: u32) -> u32 {
+        let b = self.mate[a as usize];
+        if b != NONE {
+            self.mate[a as usize] = NONE;
+            self.mate[b as usize] = NONE;
+        }
+        b
+    }
+
+    /// Hides a vertex from searches, or shows it again.
+    pub(crate) fn set_removed(&mut self, vertex: u32, removed: bool) {
+        self.removed[vertex as usize] = removed;
+    }
+
+    /// The whole matching, to be put back by [`Matching::restore`].
+    pub(crate) fn saved(&self) -> Vec<u32> {
+        self.mate.clone()
+    }
+
+    /// Puts a saved matching back.
+    pub(crate) fn restore(&mut self, mate: &[u32]) {
+        self.mate.clear();
+        self.mate.extend_from_slice(mate);
+    }
+
+    /// Matches greedily, vertices of few choices first where that is free, then augments until no
+    /// exposed vertex can be matched. Returns the number of exposed vertices left.
+    pub(crate) fn maximise(&mut self) -> usize {
+        for vertex in 0..self.vertices as u32 {
+            if self.mate[vertex as usize] != NONE || self.removed[vertex as usize] {
+                continue;
+            }
+            let free = self.neighbours[vertex as usize]
+                .iter()
+                .copied()
+                .filter(|&n| self.mate[n as usize] == NONE && !self.removed[n as usize])
+                .min_by_key(|&n| self.neighbours[n as usize].len());
+            if let Some(other) = free {
+                self.join(vertex, other);
+            }
+        }
+        let mut exposed = 0;
+        for vertex in 0..self.vertices as u32 {
+            if self.mate[vertex as usize] == NONE
+                && !self.removed[vertex as usize]
+                && !self.augment(vertex)
+            {
+                exposed += 1;
+            }
+        }
+        exposed
+    }
+
+    /// Looks for an augmenting path from an exposed vertex and flips it. Covered vertices stay
+    /// covered.
+    pub(crate) fn augment(&mut self, root: u32) -> bool {
+        let Some(end) = self.search(root) else {
+            return false;
+        };
+        let mut vertex = end;
+        while vertex != NONE {
+            let before = self.parent[vertex as usize];
+            let next = self.mate[before as usize];
+            self.join(vertex, before);
+            vertex = next;
+        }
+        true
+    }
+
+    /// Breadth-first search with blossom shrinking; returns the far end of an augmenting path.
+    fn search(&mut self, root: u32) -> Option<u32> {
+        let count = self.vertices;
+        self.parent.clear();
+        self.parent.resize(count, NONE);
+        self.outer.clear();
+        self.outer.resize(count, false);
+        self.base.clear();
+        self.base.extend(0..count as u32);
+        self.queue.clear();
+        self.outer[root as usize] = true;
+        self.queue.push_back(root);
+        while let Some(vertex) = self.queue.pop_front() {
+            for at in 0..self.neighbours[vertex as usize].len() {
+                let to = self.neighbours[vertex as usize][at];
+                if self.removed[to as usize]
+                    || self.base[vertex as usize] == self.base[to as usize]
+                    || self.mate[vertex as usize] == to
+                    || self.is_blocked(vertex, to)
+                {
+                    continue;
+                }
+                let to_mate = self.mate[to as usize];
+                if to == root || (to_mate != NONE && self.parent[to_mate as usize] != NONE) {
+                    self.shrink(vertex, to);
+                } else if self.parent[to as usize] == NONE {
+                    self.parent[to as usize] = vertex;
+                    if to_mate == NONE {
+                        return Some(to);
+                    }
+                    self.outer[to_mate as usize] = true;
+                    self.queue.push_back(to_mate);
+                }
+            }
+        }
+        None
+    }
+
+    /// Contracts the blossom closed by the edge between two outer vertices.
+    fn shrink(&mut self, a: u32, b: u32) {
+        let base = self.common_base(a, b);
+        self.in_blossom.clear();
+        self.in_blossom.resize(self.vertices, false);
+        self.mark_path(a, base, b);
+        self.mark_path(b, base, a);
+        for vertex in 0..self.vertices {
+            if self.in_blossom[self.base[vertex] as usize] {
+                self.base[vertex] = base;
+                if !self.outer[vertex] {
+                    self.outer[vertex] = true;
+                    self.queue.push_back(vertex as u32);
+                }
+            }
+        }
+    }
+
+    /// The lowest common ancestor of two outer vertices in the shrunken tree.
+    fn common_base(&mut self, mut a: u32, mut b: u32) -> u32 {
+        self.on_path.clear();
+        self.on_path.resize(self.vertices, false);
+        loop {
+            a = self.base[a as usize];
+            self.on_path[a as usize] = true;
+            if self.mate[a as usize] == NONE {
+                break;
+            }
+            a = self.parent[self.mate[a as usize] as usize];
+        }
+        loop {
+            b = self.base[b as usize];
+            if self.on_path[b as usize] {
+                return b;
+            }
+            b = self.parent[self.mate[b as usize] as usize];
+        }
+    }
+
+    fn mark_path(&mut self, mut vertex: u32, base: u32, mut child: u32) {
+        while self.base[vertex as usize] != base {
+            let mate = self.mate[vertex as usize];
+            self.in_blossom[self.base[vertex as usize] as usize] = true;
+            self.in_blossom[self.base[mate as usize] as usize] = true;
+            self.parent[vertex as usize] = child;
+            child = mate;
+            vertex = self.parent[mate as usize];
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn exposed(vertices: usize, edges: &[(u32, u32)]) -> usize {
+        let mut matching = Matching::default();
+        matching.reset(vertices);
+        for &(a, b) in edges {
+            matching.add_edge(a, b);
+        }
+        matching.maximise()
+    }
+
+    #[test]
+    fn odd_cycles_need_blossoms() {
+        assert_eq!(exposed(5, &[(0, 1), (1, 2), (2, 3), (3, 4), (4, 0)]), 1);
+        let two_triangles = [(0, 1), (1, 2), (2, 0), (2, 3), (3, 4), (4, 5), (5, 3)];
+        assert_eq!(exposed(6, &two_triangles), 0);
+    }
+
+    /// Compares with a search over all matchings on every graph of five vertices.
+    #[test]
+    fn all_graphs_of_five_vertices() {
+        let pairs: Vec<(u32, u32)> = (0..5)
+            .flat_map(|a| (a + 1..5).map(move |b| (a, b)))
+            .collect();
+        for mask in 0u32..1 << pairs.len() {
+            let edges: Vec<_> = pairs
+                .iter()
+                .enumerate()
+                .filter(|(i, _)| mask >> i & 1 == 1)
+                .map(|(_, &edge)| edge)
+                .collect();
+            let best = (0u32..1 << edges.len())
+                .filter_map(|chosen| {
+                    let mut used = 0u32;
+                    let mut size = 0;
+                    for (i, &(a, b)) in edges.iter().enumerate() {
+                        if chosen >> i & 1 == 1 {
+                            if used & (1 << a | 1 << b) != 0 {
+                                return None;
+                            }
+                            used |= 1 << a | 1 << b;
+                            size += 1;
+                        }
+                    }
+                    Some(size)
+                })
+                .max()
+                .unwrap_or(0);
+            assert_eq!(exposed(5, &edges), 5 - 2 * best, "{edges:?}");
+        }
+    }
+}

@@ -1,0 +1,85 @@
+//! Mesomers are one structure: the normal form of charges, radicals and π bonds.
+//!
+//! Two steps, defined in docs/definitions.md. [`octet`] puts over-full octets into charge-separated
+//! form by a closed table. Then, within each conjugated system, all placements of π bonds and
+//! charges are considered that are best in this order: most π bonds, least total charge, fewest
+//! open valences, fewest negative charges on carbon. What all best placements share is fixed, what
+//! differs among them is mobile. [`placement`] makes this a perfect-matching question, so that the
+//! answer is exact and polynomial; [`mobile`] asks it bond by bond.
+
+mod first;
+mod mobile;
+mod octet;
+mod placement;
+mod valence;
+
+use crate::{matching::Matching, skeleton::Skeleton};
+
+pub(crate) use placement::System;
+use valence::Valence;
+pub(crate) use valence::is_metal;
+
+/// The order of a bond that differs among the best placements.
+pub(crate) const MOBILE: u8 = 5;
+
+/// What the best placements say about an atom.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Default, Hash)]
+pub(crate) struct AtomState {
+    /// Charge where it is fixed; 0 where it is mobile.
+    pub(crate) charge: i8,
+    /// Open valences where they are fixed.
+    pub(crate) open: u8,
+    /// Whether charge or open valences differ among the best placements.
+    pub(crate) mobile: bool,
+    /// Net charge and open valences of the conjugated system, for atoms where these are mobile.
+    pub(crate) system: (i16, u16),
+}
+
+/// The normal form of one molecule, on the atoms and bonds of its skeleton.
+#[derive(Debug, Default, Clone)]
+pub(crate) struct Mesomer {
+    /// Per bond: 1 to 4, or [`MOBILE`].
+    pub(crate) orders: Vec<u8>,
+    pub(crate) states: Vec<AtomState>,
+    /// The conjugated systems whose placement is not settled by the drawing alone.
+    pub(crate) systems: Vec<System>,
+    valences: Vec<Valence>,
+    matching: Matching,
+}
+
+impl Mesomer {
+    /// Works out the normal form. The skeleton's charges and bond orders are brought into the
+    /// charge-separated form on the way.
+    pub(crate) fn load(&mut self, skeleton: &mut Skeleton) {
+        octet::separate(skeleton);
+        self.orders.clear();
+        self.orders
+            .extend(skeleton.bonds.iter().map(|bond| bond.order));
+        valence::load(&mut self.valences, skeleton);
+        self.states.clear();
+        self.states.extend(
+            skeleton
+                .atoms
+                .iter()
+                .zip(&self.valences)
+                .map(|(atom, valence)| AtomState {
+                    charge: atom.charge,
+                    open: valence.open,
+                    ..AtomState::default()
+                }),
+        );
+        self.systems.clear();
+        placement::find_systems(skeleton, &self.valences, &mut self.systems);
+        for at in 0..self.systems.len() {
+            let system = &mut self.systems[at];
+            if system.settle(skeleton, &self.valences, &mut self.matching) {
+                mobile::mark(
+                    system,
+                    &mut self.matching,
+                    &mut self.orders,
+                    &mut self.states,
+                );
+            }
+        }
+    }
+}

@@ -1,0 +1,59 @@
+//! Over-full octets become charge-separated.
+//!
+//! A group 15–17 atom drawn above its octet (pentavalent nitrogen, a sulfone's sulfur, a phosphine
+//! oxide's phosphorus, perchlorate, iodosyl, ylides and their thio and seleno analogues) takes a
+//! positive charge for each π bond in excess, and the neighbour takes the negative one.
+
+use crate::skeleton::Skeleton;
+
+use super::valence::{self, is_metal};
+
+/// Rewrites charges and bond orders of the skeleton in place.
+pub(super) fn separate(skeleton: &mut Skeleton) {
+    for atom in 0..skeleton.len() as u32 {
+        let element = skeleton.atoms[atom as usize].element;
+        if !valence::is_group_15_to_17(element) {
+            continue;
+        }
+        while excess(skeleton, atom) > 0 {
+            let Some(bond) = pi_bond(skeleton, atom) else {
+                break;
+            };
+            let other = {
+                let bond = &mut skeleton.bonds[bond as usize];
+                bond.order -= 1;
+                bond.a ^ bond.b ^ atom
+            };
+            let centre = &mut skeleton.atoms[atom as usize];
+            centre.charge = centre.charge.saturating_add(1);
+            let neighbour = &mut skeleton.atoms[other as usize];
+            neighbour.charge = neighbour.charge.saturating_sub(1);
+        }
+    }
+}
+
+/// How far the electrons about an atom exceed its octet.
+fn excess(skeleton: &Skeleton, atom: u32) -> i32 {
+    let record = &skeleton.atoms[atom as usize];
+    let drawn: i32 = skeleton
+        .arcs(atom)
+        .iter()
+        .map(|&(_, bond)| i32::from(skeleton.bonds[bond as usize].order))
+        .sum::<i32>()
+        + i32::from(record.hydrogens);
+    drawn - valence::neutral(record.element) - i32::from(record.charge)
+}
+
+/// A π bond to give up, the one to the most electronegative neighbour. Where the choice is between
+/// equals they end in one conjugated system and the choice does not matter.
+fn pi_bond(skeleton: &Skeleton, atom: u32) -> Option<u32> {
+    skeleton
+        .arcs(atom)
+        .iter()
+        .filter(|&&(to, bond)| {
+            skeleton.bonds[bond as usize].order > 1
+                && !is_metal(skeleton.atoms[to as usize].element)
+        })
+        .max_by_key(|&&(to, _)| valence::neutral(skeleton.atoms[to as usize].element) == 2)
+        .map(|&(_, bond)| bond)
+}

@@ -1,0 +1,104 @@
+//! The graph that the search orders: coloured vertices, classed edges, oriented units.
+
+/// Bond classes are below this number; counts of one class about a vertex stay below 512.
+pub(crate) const CLASSES: usize = 7;
+/// Bits that a count takes in a refinement key.
+pub(super) const COUNT_BITS: u32 = 9;
+
+/// A unit whose orientation the order has to respect: four ligands in order and which of the two
+/// arrangements they have. Ligands from `vertices` upwards are not vertices (a hydrogen, a lone
+/// pair); they rank above all vertices and among each other by number.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(crate) struct Unit {
+    /// The centre twice, or the two ends, each with two ligands.
+    pub(crate) centres: [u32; 2],
+    pub(crate) ligands: [u32; 4],
+    pub(crate) odd: bool,
+    /// Kind and marking, part of the unit's colour.
+    pub(crate) colour: u32,
+}
+
+/// A coloured graph in compressed form. Colours are arbitrary words and part of the certificate.
+#[derive(Debug, Default, Clone)]
+pub(crate) struct Coloured {
+    pub(crate) colours: Vec<u64>,
+    start: Vec<u32>,
+    arcs: Vec<(u32, u8)>,
+    pub(crate) units: Vec<Unit>,
+}
+
+impl Coloured {
+    /// Loads vertices and edges; edge classes are below [`CLASSES`].
+    pub(crate) fn load(
+        &mut self,
+        colours: impl Iterator<Item = u64>,
+        edges: impl Iterator<Item = (u32, u32, u8)> + Clone,
+    ) {
+        self.units.clear();
+        self.colours.clear();
+        self.colours.extend(colours);
+        self.start.clear();
+        self.start.resize(self.colours.len() + 1, 0);
+        let mut sum = 0;
+        for (a, b, _) in edges.clone() {
+            self.start[a as usize] += 1;
+            self.start[b as usize] += 1;
+            sum += 2;
+        }
+        self.arcs.clear();
+        self.arcs.resize(sum, (0, 0));
+        let mut total = 0;
+        for slot in &mut self.start {
+            total += *slot;
+            *slot = total;
+        }
+        for (a, b, class) in edges {
+            for (from, to) in [(a, b), (b, a)] {
+                self.start[from as usize] -= 1;
+                self.arcs[self.start[from as usize] as usize] = (to, class);
+            }
+        }
+    }
+
+    /// The number of vertices.
+    pub(crate) fn len(&self) -> usize {
+        self.colours.len()
+    }
+
+    /// Neighbours with edge classes.
+    pub(crate) fn arcs(&self, vertex: u32) -> &[(u32, u8)] {
+        let at = vertex as usize;
+        &self.arcs[self.start[at] as usize..self.start[at + 1] as usize]
+    }
+
+    /// Whether some vertex has more neighbours than refinement keys can count.
+    pub(crate) fn exceeds_degree(&self) -> bool {
+        self.start
+            .windows(2)
+            .any(|pair| pair[1] - pair[0] >= 1 << COUNT_BITS)
+    }
+}
+
+/// The parity of a unit when its ligands are put in the order of `rank`, and its centres in that
+/// order too: `None` while two of its ligands share a rank.
+pub(super) fn ranked_parity(unit: &Unit, rank: impl Fn(u32) -> u32) -> Option<bool> {
+    let mut ranks = unit.ligands.map(&rank);
+    let mut odd = unit.odd;
+    // Exchanging the two ends moves two ligands past two others, which is even, so only the order
+    // within each end matters for a double bond or an axis.
+    let pairs: &[(usize, usize)] = if unit.centres[0] == unit.centres[1] {
+        &[(0, 1), (2, 3), (0, 2), (1, 3), (1, 2)]
+    } else {
+        &[(0, 1), (2, 3)]
+    };
+    for &(i, j) in pairs {
+        if ranks[i] == ranks[j] {
+            return None;
+        }
+        if ranks[i] > ranks[j] {
+            ranks.swap(i, j);
+            odd = !odd;
+        }
+    }
+    Some(odd)
+}

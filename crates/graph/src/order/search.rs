@@ -1,0 +1,366 @@
+//! The search tree: individualise, refine, compare leaves, prune by automorphisms.
+//!
+//! McKay & Piperno, J. Symb. Comput. 2014, 60, 94. The canonical leaf is the least of (invariants of
+//! the path, certificate). Two leaves with equal certificates give an automorphism; an automorphism
+//! cuts off whatever it maps onto explored ground. Steps (refinements) are counted; when the limit
+//! is reached there is no order at all.
+
+use std::cmp::Ordering;
+
+use super::{
+    coloured::{Coloured, ranked_parity},
+    partition::{Partition, Snapshot},
+    refine::Refiner,
+};
+
+/// The search ended at its step limit.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(crate) struct StepLimit;
+
+/// Stands between the edges and the units of a certificate.
+const SEPARATOR: u64 = u64::MAX;
+
+/// A leaf: the vertex at each position, and the graph written in that order.
+#[derive(Debug, Default, Clone)]
+struct Leaf {
+    lab: Vec<u32>,
+    path: Vec<u32>,
+    traces: Vec<u64>,
+    certificate: Vec<u64>,
+}
+
+/// A node on the present path.
+#[derive(Debug, Clone)]
+struct Node {
+    snapshot: Snapshot,
+    children: Vec<u32>,
+    next: usize,
+    /// The vertex individualised to leave this node towards the present one.
+    chosen: u32,
+    /// Whether the path so far has the invariants of the first leaf's path.
+    like_first: bool,
+    /// The path so far against the best leaf's path.
+    against_best: Ordering,
+}
+
+/// Searches one connected component at a time; all vectors are reused.
+#[derive(Debug, Default, Clone)]
+pub(crate) struct Search {
+    partition: Partition,
+    refiner: Refiner,
+    nodes: Vec<Node>,
+    depth: usize,
+    traces: Vec<u64>,
+    first: Leaf,
+    best: Leaf,
+    current: Vec<u64>,
+    units: Vec<u32>,
+    generators: Vec<Vec<u32>>,
+    /// Union-find over vertices, of the automorphisms found so far.
+    orbit: Vec<u32>,
+    pruning: Vec<u32>,
+    /// The deepest node, by index, that lies on the first path.
+    on_first: usize,
+    pub(crate) steps: u64,
+}
+
+fn find(parent: &mut [u32], mut vertex: u32) -> u32 {
+    while parent[vertex as usize] != vertex {
+        parent[vertex as usize] = parent[parent[vertex as usize] as usize];
+        vertex = parent[vertex as usize];
+    }
+    vertex
+}
+
+fn unite(parent: &mut [u32], a: u32, b: u32) {
+    let (a, b) = (find(parent, a), find(parent, b));
+    let (low, high) = (a.min(b), a.max(b));
+    parent[high as usize] = low;
+}
+
+impl Search {
+    /// Orders the vertices of one component.
+    ///
+    /// Afterwards [`Search::order`], [`Search::certificate`] and [`Search::generators`] hold the
+    /// answer. `steps` counts on from its present value up to `limit`.
+    pub(crate) fn run(
+        &mut self,
+        graph: &Coloured,
+        members: &[u32],
+        limit: u64,
+    ) -> Result<(), StepLimit> {
+        self.start(graph, members);
+        for start in self.partition.starts().collect::<Vec<_>>() {
+            self.refiner.enqueue(start);
+        }
+        self.step(graph, limit)?;
+        self.depth = 0;
+        self.on_first = 0;
+        if self.partition.is_discrete() {
+            self.leaf(graph, true, Ordering::Equal);
+            return Ok(());
+        }
+        self.open_node(true, Ordering::Equal);
+        while self.depth > 0 {
+            self.advance(graph, limit)?;
+        }
+        Ok(())
+    }
+
+    fn start(&mut self, graph: &Coloured, members: &[u32]) {
+        self.partition
+            .load(members, graph.len(), |v| graph.colours[v as usize]);
+        self.refiner.reset(graph.len());
+        self.traces.clear();
+        self.generators.clear();
+        self.first.certificate.clear();
+        self.best.certificate.clear();
+        self.orbit.clear();
+        self.orbit.extend(0..graph.len() as u32);
+        self.units.clear();
+        if !graph.units.is_empty() {
+            let inside = |v: u32| {
+                self.partition
+                    .lab
+                    .get(self.partition.pos[v as usize] as usize)
+                    == Some(&v)
+            };
+            let units = graph
+                .units
+                .iter()
+                .zip(0..)
+                .filter(|(unit, _)| inside(unit.centres[0]));
+            self.units.extend(units.map(|(_, index)| index));
+        }
+    }
+
+    fn step(&mut self, graph: &Coloured, limit: u64) -> Result<u64, StepLimit> {
+        self.steps += 1;
+        if self.steps > limit {
+            return Err(StepLimit);
+        }
+        Ok(self.refiner.refine(graph, &self.units, &mut self.partition))
+    }
+
+    /// Makes the present partition a node whose children are the vertices of its first smallest
+    /// cell.
+    fn open_node(&mut self, like_first: bool, against_best: Ordering) {
+        if self.nodes.len() == self.depth {
+            self.nodes.push(Node {
+                snapshot: Snapshot::default(),
+                children: Vec::new(),
+                next: 0,
+                chosen: 0,
+                like_first,
+                against_best,
+            });
+        }
+        let partition = &self.partition;
+        let target = partition
+            .starts()
+            .filter(|&start| partition.len[start as usize] > 1)
+            .min_by_key(|&start| partition.len[start as usize]);
+        let node = &mut self.nodes[self.depth];
+        partition.save(&mut node.snapshot);
+        node.children.clear();
+        if let Some(target) = target {
+            node.children.extend_from_slice(partition.members(target));
+        }
+        node.next = 0;
+        node.like_first = like_first;
+        node.against_best = against_best;
+        self.depth += 1;
+    }
+
+    /// Takes the next child of the deepest node, or leaves that node.
+    fn advance(&mut self, graph: &Coloured, limit: u64) -> Result<(), StepLimit> {
+        let level = self.depth - 1;
+        let Some(vertex) = self.next_child(level) else {
+            self.depth = level;
+            self.on_first = self.on_first.min(level.saturating_sub(1));
+            return Ok(());
+        };
+        let node = &mut self.nodes[level];
+        node.chosen = vertex;
+        let (like_first, against_best) = (node.like_first, node.against_best);
+        self.partition.restore(&node.snapshot);
+        let cell = self.partition.cell[vertex as usize];
+        self.partition.individualise(vertex);
+        // The individualised vertex alone refines as far as it and the rest of its cell would.
+        self.refiner.enqueue(cell);
+        let trace = self.step(graph, limit)?;
+        self.traces.truncate(level);
+        self.traces.push(trace);
+        let has_first = !self.first.certificate.is_empty();
+        let like_first = like_first && (!has_first || self.first.traces.get(level) == Some(&trace));
+        let against_best = if has_first && against_best.is_eq() {
+            self.best
+                .traces
+                .get(level)
+                .map_or(Ordering::Greater, |best| trace.cmp(best))
+        } else {
+            against_best
+        };
+        if !like_first && against_best.is_gt() {
+            return Ok(());
+        }
+        if self.partition.is_discrete() {
+            self.leaf(graph, like_first, against_best);
+        } else {
+            self.open_node(like_first, against_best);
+        }
+        Ok(())
+    }
+
+    /// The next child worth visiting: the least of each orbit under the automorphisms that fix the
+    /// path to this node.
+    fn next_child(&mut self, level: usize) -> Option<u32> {
+        let on_first_path = level <= self.on_first;
+        if !on_first_path && self.nodes[level].next > 0 && !self.generators.is_empty() {
+            self.pruning_orbits(level);
+        }
+        let node = &mut self.nodes[level];
+        while let Some(&vertex) = node.children.get(node.next) {
+            let tried = &node.children[..node.next];
+            node.next += 1;
+            let orbit = if on_first_path {
+                &mut self.orbit
+            } else {
+                &mut self.pruning
+            };
+            if tried.is_empty() || self.generators.is_empty() {
+                return Some(vertex);
+            }
+            let own = find(orbit, vertex);
+            if !tried.iter().any(|&earlier| find(orbit, earlier) == own) {
+                return Some(vertex);
+            }
+        }
+        None
+    }
+
+    fn pruning_orbits(&mut self, level: usize) {
+        self.pruning.clear();
+        self.pruning.extend(0..self.orbit.len() as u32);
+        for generator in &self.generators {
+            let fixes = self.nodes[..level]
+                .iter()
+                .all(|node| generator[node.chosen as usize] == node.chosen);
+            if fixes {
+                for &vertex in &self.partition.lab {
+                    unite(&mut self.pruning, vertex, generator[vertex as usize]);
+                }
+            }
+        }
+    }
+
+    fn leaf(&mut self, graph: &Coloured, like_first: bool, against_best: Ordering) {
+        let mut certificate = std::mem::take(&mut self.current);
+        write_certificate(graph, &self.partition, &self.units, &mut certificate);
+        self.current = certificate;
+        if self.first.certificate.is_empty() {
+            self.keep_best();
+            self.first.clone_from(&self.best);
+            self.on_first = self.depth.saturating_sub(1);
+            return;
+        }
+        if like_first && self.current == self.first.certificate {
+            self.automorphism(true);
+            return;
+        }
+        // A leaf that was reached only because it is like the first one may not become the best.
+        let order = against_best.then_with(|| self.current.cmp(&self.best.certificate));
+        match order {
+            Ordering::Less => self.keep_best(),
+            Ordering::Equal => self.automorphism(false),
+            Ordering::Greater => {}
+        }
+    }
+
+    fn keep_best(&mut self) {
+        self.best.lab.clone_from(&self.partition.lab);
+        self.best.certificate.clone_from(&self.current);
+        self.best.traces.clone_from(&self.traces);
+        self.best.path.clear();
+        self.best
+            .path
+            .extend(self.nodes[..self.depth].iter().map(|node| node.chosen));
+        // From here on the present path is the best one.
+        for node in &mut self.nodes[..self.depth] {
+            node.against_best = Ordering::Equal;
+        }
+    }
+
+    /// Records the automorphism that takes an earlier leaf to this one, and goes back to where the
+    /// two paths part: everything in between is an image of what was explored.
+    fn automorphism(&mut self, with_first: bool) {
+        let earlier = if with_first { &self.first } else { &self.best };
+        let mut generator: Vec<u32> = (0..self.orbit.len() as u32).collect();
+        for (&from, &to) in earlier.lab.iter().zip(&self.partition.lab) {
+            generator[from as usize] = to;
+            unite(&mut self.orbit, from, to);
+        }
+        let common = self.nodes[..self.depth]
+            .iter()
+            .zip(&earlier.path)
+            .take_while(|(node, chosen)| node.chosen == **chosen)
+            .count();
+        self.generators.push(generator);
+        self.depth = self.depth.min(common + 1);
+        self.on_first = self.on_first.min(common);
+    }
+
+    /// The vertices in canonical order.
+    pub(crate) fn order(&self) -> &[u32] {
+        &self.best.lab
+    }
+
+    /// The graph written in canonical order: equal exactly for isomorphic components.
+    pub(crate) fn certificate(&self) -> &[u64] {
+        &self.best.certificate
+    }
+
+    /// Generators of the automorphism group, as images of all vertices of the graph.
+    pub(crate) fn generators(&self) -> &[Vec<u32>] {
+        &self.generators
+    }
+}
+
+/// Writes colours, edges and units in the order of a discrete partition.
+fn write_certificate(graph: &Coloured, partition: &Partition, units: &[u32], words: &mut Vec<u64>) {
+    words.clear();
+    words.push(partition.lab.len() as u64);
+    words.extend(partition.lab.iter().map(|&v| graph.colours[v as usize]));
+    for (at, &vertex) in partition.lab.iter().enumerate() {
+        let from = words.len();
+        for &(to, class) in graph.arcs(vertex) {
+            let position = partition.pos[to as usize];
+            if (position as usize) < at {
+                words.push((at as u64) << 32 | u64::from(position) << 8 | u64::from(class));
+            }
+        }
+        words[from..].sort_unstable();
+    }
+    words.push(SEPARATOR);
+    let from = words.len();
+    let vertices = graph.len() as u32;
+    let rank = |v: u32| {
+        if v < vertices {
+            partition.pos[v as usize]
+        } else {
+            v
+        }
+    };
+    for &index in units {
+        let unit = &graph.units[index as usize];
+        let mut ends = unit.centres.map(rank);
+        ends.sort_unstable();
+        let orientation = match ranked_parity(unit, rank) {
+            None => 2,
+            Some(odd) => u64::from(odd),
+        };
+        let colour = u64::from(unit.colour);
+        words.push(u64::from(ends[0]) << 36 | u64::from(ends[1]) << 8 | colour << 2 | orientation);
+    }
+    words[from..].sort_unstable();
+}

@@ -1,0 +1,120 @@
+//! Stereo elements: which places of a molecule can be stereogenic, and what a record marks there.
+//!
+//! This stage looks at each place and its surroundings only. Whether symmetry makes a place
+//! stereogenic, and what the marks then claim, is decided in [`crate::claims`].
+
+mod bridgehead;
+mod double_bond;
+mod labile;
+mod marks;
+mod tetrahedral;
+mod undrawable;
+
+use crate::{Parity, Shape, mesomer::Mesomer, order::Unit, skeleton::Skeleton};
+
+pub(crate) use bridgehead::Cage;
+pub use undrawable::Undrawable;
+
+/// Ligands that are no atoms, as numbers above every atom. Hydrogens by isotope first.
+pub(crate) mod slot {
+    /// Hydrogen of natural composition; mass numbers 1, 2 and 3 follow.
+    pub(crate) const HYDROGEN: u32 = u32::MAX - 8;
+    /// A lone pair.
+    pub(crate) const LONE_PAIR: u32 = u32::MAX - 1;
+}
+
+/// A place that can carry a mark.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(crate) struct Candidate {
+    pub(crate) shape: Shape,
+    /// Skeleton atoms.
+    pub(crate) centres: [u32; 2],
+    /// Skeleton atoms or [`slot`] numbers.
+    pub(crate) ligands: [u32; 4],
+    /// The mark, if there is one.
+    pub(crate) parity: Option<Parity>,
+    /// A mark counts here, but its absence leaves nothing open.
+    pub(crate) quiet: bool,
+}
+
+impl Candidate {
+    /// The unit for the canonical search with a given parity.
+    pub(crate) fn unit(&self, odd: bool) -> Unit {
+        let colour = match self.shape {
+            Shape::Tetrahedral => 0,
+            Shape::DoubleBond => 1,
+            Shape::Axis => 2,
+        };
+        Unit {
+            centres: self.centres,
+            ligands: self.ligands,
+            odd,
+            colour,
+        }
+    }
+
+    /// Whether reflection in a mirror inverts the element.
+    pub(crate) fn is_chiral(&self) -> bool {
+        self.shape != Shape::DoubleBond
+    }
+}
+
+/// Why a mark of the record counts for nothing.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
+#[non_exhaustive]
+pub enum Dropped {
+    /// The atom or bond cannot be stereogenic: not enough different ligands, or not such an atom.
+    NotStereogenic,
+    /// An amine nitrogen, which inverts.
+    AmineNitrogen,
+    /// A C=N bond of an amidine, guanidine, imidate or N–H imine.
+    LabileDoubleBond,
+    /// Phosphorus or sulfur whose mark depends on which oxygen bears a hydrogen.
+    MobileHydrogen,
+    /// A mobile or ring double bond whose smallest ring has fewer than eight members.
+    SmallRing,
+    /// The mark does not fit the ligands that the atom has.
+    Misfit,
+}
+
+/// All candidates of a molecule and what became of its marks.
+#[derive(Debug, Default, Clone)]
+pub(crate) struct Perception {
+    pub(crate) candidates: Vec<Candidate>,
+    /// Sets of bridgeheads that determine each other.
+    pub(crate) cages: Vec<Cage>,
+    /// Marks that fell away, by skeleton atom.
+    pub(crate) dropped: Vec<(Dropped, [u32; 2])>,
+    /// Cages whose marks no cage can have: they count as drawn.
+    pub(crate) impossible: Vec<Vec<u32>>,
+    pub(crate) undrawable: Vec<Undrawable>,
+}
+
+impl Perception {
+    /// Finds all candidates and puts the record's marks on them.
+    pub(crate) fn load(
+        &mut self,
+        skeleton: &Skeleton,
+        mesomer: &Mesomer,
+        drawn: &[crate::DrawnStereo],
+    ) {
+        self.candidates.clear();
+        self.dropped.clear();
+        self.impossible.clear();
+        self.cages.clear();
+        let marks = marks::on_skeleton(skeleton, drawn);
+        let thetas = tetrahedral::find(self, skeleton, mesomer, &marks);
+        double_bond::find(self, skeleton, mesomer, &marks);
+        marks::apply(self, skeleton, mesomer, &marks);
+        bridgehead::bind(self, &thetas);
+        undrawable::find(skeleton, mesomer, &mut self.undrawable);
+    }
+
+    /// The candidate at a tetrahedral centre or a pair of ends.
+    pub(crate) fn candidate_at(&self, centres: [u32; 2]) -> Option<usize> {
+        let [a, b] = centres;
+        self.candidates
+            .iter()
+            .position(|c| c.centres == [a, b] || c.centres == [b, a])
+    }
+}

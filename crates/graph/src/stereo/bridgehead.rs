@@ -1,0 +1,243 @@
+//! Bridgeheads that determine each other.
+//!
+//! Two atoms joined by three disjoint paths of at least one atom each, where the two smallest of the
+//! three rings so made have at most seven members, can only have both outer ligands outward: seen
+//! along the same three paths their parities are opposite. Such atoms are one element for identity;
+//! each keeps its own entry in output.
+
+use crate::{Parity, skeleton::Skeleton};
+
+use super::{Candidate, Perception};
+
+/// The largest size of the two smaller rings.
+const LARGEST_FORCED_RING: usize = 7;
+/// Inner atoms of a path that can be part of such a pair: the other path of its ring has one.
+const LONGEST_PATH: usize = LARGEST_FORCED_RING - 3;
+
+/// Two bridgeheads and their three paths: the first and last inner atom of each.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(super) struct Theta {
+    pub(super) ends: [u32; 2],
+    paths: [[u32; 2]; 3],
+}
+
+/// Candidates that are one element: index, and whether its parity is opposite to the first one's.
+#[derive(Debug, Default, Clone, PartialEq, Eq)]
+pub(crate) struct Cage {
+    pub(crate) members: Vec<(usize, bool)>,
+}
+
+/// A path between two possible bridgeheads.
+#[derive(Debug, Clone)]
+struct Path {
+    end: u32,
+    inner: Vec<u32>,
+}
+
+/// All pairs, among atoms that can be centres.
+pub(super) fn thetas(skeleton: &Skeleton, can_be: &[bool]) -> Vec<Theta> {
+    let branching = |atom: u32| {
+        can_be[atom as usize]
+            && skeleton
+                .arcs(atom)
+                .iter()
+                .filter(|&&(_, b)| skeleton.ring[b as usize])
+                .count()
+                >= 3
+    };
+    let heads: Vec<u32> = (0..skeleton.len() as u32)
+        .filter(|&atom| branching(atom))
+        .collect();
+    let mut found = Vec::new();
+    if heads.len() < 2 {
+        return found;
+    }
+    for &head in &heads {
+        let mut paths = paths_from(skeleton, head, |atom| atom > head && branching(atom));
+        paths.sort_by_key(|path| (path.end, path.inner.len()));
+        for group in paths.chunk_by(|a, b| a.end == b.end) {
+            disjoint_triples(head, group, &mut found);
+        }
+    }
+    found
+}
+
+/// Simple paths over ring bonds with one to [`LONGEST_PATH`] inner atoms, to atoms that `ends`
+/// accepts. Depth-first without recursion; the depth is bounded.
+fn paths_from(skeleton: &Skeleton, head: u32, ends: impl Fn(u32) -> bool) -> Vec<Path> {
+    let mut found = Vec::new();
+    let mut trail = vec![head];
+    let mut next = vec![0usize];
+    while let (Some(&atom), Some(at)) = (trail.last(), next.last_mut()) {
+        let Some(&(to, bond)) = skeleton.arcs(atom).get(*at) else {
+            trail.pop();
+            next.pop();
+            continue;
+        };
+        *at += 1;
+        if !skeleton.ring[bond as usize] || trail.contains(&to) {
+            continue;
+        }
+        if trail.len() > 1 && ends(to) {
+            found.push(Path {
+                end: to,
+                inner: trail[1..].to_vec(),
+            });
+        }
+        if trail.len() <= LONGEST_PATH {
+            trail.push(to);
+            next.push(0);
+        }
+    }
+    found
+}
+
+/// Triples of disjoint paths, shortest first, with rings small enough.
+fn disjoint_triples(head: u32, paths: &[Path], found: &mut Vec<Theta>) {
+    let disjoint = |a: &Path, b: &Path| a.inner.iter().all(|atom| !b.inner.contains(atom));
+    for (i, a) in paths.iter().enumerate() {
+        for (j, b) in paths.iter().enumerate().skip(i + 1) {
+            if !disjoint(a, b) {
+                continue;
+            }
+            for c in &paths[j + 1..] {
+                // Paths come by length, so the two smallest rings are a with b and a with c.
+                let ring = a.inner.len() + c.inner.len() + 2;
+                if ring <= LARGEST_FORCED_RING && disjoint(a, c) && disjoint(b, c) {
+                    let ends = |p: &Path| [p.inner[0], p.inner[p.inner.len() - 1]];
+                    let paths = [ends(a), ends(b), ends(c)];
+                    found.push(Theta {
+                        ends: [head, a.end],
+                        paths,
+                    });
+                }
+            }
+        }
+    }
+}
+
+/// Joins candidates into cages and lets marked bridgeheads speak for the others. Where the marks
+/// contradict what a cage can have, all count as drawn.
+pub(super) fn bind(perception: &mut Perception, thetas: &[Theta]) {
+    if thetas.is_empty() {
+        return;
+    }
+    let mut forest = Forest::new(perception.candidates.len());
+    for theta in thetas {
+        let [u, v] = theta.ends.map(|atom| perception.candidate_at([atom, atom]));
+        let (Some(u), Some(v)) = (u, v) else { continue };
+        let order = |index: usize, side: usize| {
+            along_paths(
+                &perception.candidates[index],
+                theta.paths.map(|path| path[side]),
+            )
+        };
+        if let (Some(first), Some(second)) = (order(u, 0), order(v, 1)) {
+            forest.join(u, v, !(first ^ second));
+        }
+    }
+    for cage in forest.cages() {
+        settle(perception, cage);
+    }
+}
+
+/// Whether putting a candidate's ligands into the order path, path, path, outer one is odd.
+fn along_paths(candidate: &Candidate, paths: [u32; 3]) -> Option<bool> {
+    let mut order = [0usize; 4];
+    let mut sum = 0;
+    for (place, atom) in order.iter_mut().zip(paths) {
+        *place = candidate.ligands.iter().position(|&l| l == atom)?;
+        sum += *place;
+    }
+    order[3] = 6usize.checked_sub(sum)?;
+    let mut odd = false;
+    for i in 0..4 {
+        for j in i + 1..4 {
+            odd ^= order[i] > order[j];
+        }
+    }
+    Some(odd)
+}
+
+fn settle(perception: &mut Perception, cage: Cage) {
+    let candidates = &mut perception.candidates;
+    let atoms = |candidates: &[Candidate]| -> Vec<u32> {
+        cage.members
+            .iter()
+            .map(|&(index, _)| candidates[index].centres[0])
+            .collect()
+    };
+    let mut implied = cage
+        .members
+        .iter()
+        .filter_map(|&(index, opposite)| Some(candidates[index].parity?.is_odd() != opposite));
+    let Some(first) = implied.next() else {
+        perception.cages.push(cage);
+        return;
+    };
+    if implied.any(|other| other != first) {
+        let atoms = atoms(candidates);
+        perception.impossible.push(atoms);
+        return;
+    }
+    for &(index, opposite) in &cage.members {
+        candidates[index].parity = Some(Parity::from_odd(first != opposite));
+    }
+    perception.cages.push(cage);
+}
+
+/// Union-find with a parity to the root.
+struct Forest {
+    parent: Vec<usize>,
+    odd: Vec<bool>,
+    contradictory: Vec<bool>,
+}
+
+impl Forest {
+    fn new(count: usize) -> Self {
+        Self {
+            parent: (0..count).collect(),
+            odd: vec![false; count],
+            contradictory: vec![false; count],
+        }
+    }
+
+    fn root(&self, mut index: usize) -> (usize, bool) {
+        let mut odd = false;
+        while self.parent[index] != index {
+            odd ^= self.odd[index];
+            index = self.parent[index];
+        }
+        (index, odd)
+    }
+
+    fn join(&mut self, a: usize, b: usize, odd: bool) {
+        let ((a, a_odd), (b, b_odd)) = (self.root(a), self.root(b));
+        let between = odd ^ a_odd ^ b_odd;
+        if a == b {
+            self.contradictory[a] |= between;
+            return;
+        }
+        let (low, high) = (a.min(b), a.max(b));
+        self.parent[high] = low;
+        self.odd[high] = between;
+        self.contradictory[low] |= self.contradictory[high];
+    }
+
+    /// The sets of two or more. A set whose relations contradict each other binds nothing.
+    fn cages(&self) -> Vec<Cage> {
+        let mut cages: Vec<Cage> = vec![Cage::default(); self.parent.len()];
+        for index in 0..self.parent.len() {
+            let (root, odd) = self.root(index);
+            cages[root].members.push((index, odd));
+        }
+        let bound =
+            |(root, cage): &(usize, Cage)| cage.members.len() > 1 && !self.contradictory[*root];
+        cages
+            .into_iter()
+            .enumerate()
+            .filter(bound)
+            .map(|(_, cage)| cage)
+            .collect()
+    }
+}

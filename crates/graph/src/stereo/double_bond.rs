@@ -1,0 +1,154 @@
+//! Double bonds, and cumulated ones, that can be stereogenic.
+
+use crate::{
+    Element, Shape,
+    mesomer::{MOBILE, Mesomer},
+    skeleton::Skeleton,
+};
+
+use super::{Candidate, Perception, labile, marks::Mark, slot, tetrahedral::hydrogen_slots};
+
+/// Rings below this size hold their double bonds cis.
+const SMALLEST_FREE_RING: u32 = 8;
+
+/// Adds the candidates. Mobile bonds are candidates only in a record that marks one; the absence of
+/// a mark on them leaves nothing open.
+pub(super) fn find(
+    perception: &mut Perception,
+    skeleton: &Skeleton,
+    mesomer: &Mesomer,
+    marks: &[Mark],
+) {
+    let marked_mobile = marks.iter().any(|mark| {
+        mark.shape == Shape::DoubleBond
+            && skeleton
+                .bond_between(mark.centres[0], mark.centres[1])
+                .is_some_and(|bond| mesomer.orders[bond as usize] == MOBILE)
+    });
+    for (index, bond) in skeleton.bonds.iter().enumerate() {
+        let chain = match mesomer.orders[index] {
+            2 => match cumulene(skeleton, mesomer, index as u32) {
+                Some(chain) => chain,
+                None => continue,
+            },
+            MOBILE if marked_mobile => Chain {
+                ends: [bond.a, bond.b],
+                inner: [bond.b, bond.a],
+                bonds: 1,
+            },
+            _ => continue,
+        };
+        if let Some(candidate) = candidate(skeleton, mesomer, index as u32, &chain) {
+            perception.candidates.push(candidate);
+        }
+    }
+}
+
+/// A run of cumulated double bonds: its two ends and the atom next to each end.
+struct Chain {
+    ends: [u32; 2],
+    inner: [u32; 2],
+    bonds: u32,
+}
+
+/// The run that a double bond belongs to, reported once: for the bond of least index in it.
+fn cumulene(skeleton: &Skeleton, mesomer: &Mesomer, bond: u32) -> Option<Chain> {
+    let start = &skeleton.bonds[bond as usize];
+    let mut chain = Chain {
+        ends: [0; 2],
+        inner: [0; 2],
+        bonds: 1,
+    };
+    for (side, (mut from, mut to)) in [(start.b, start.a), (start.a, start.b)]
+        .into_iter()
+        .enumerate()
+    {
+        while let Some((next, via)) = continues(skeleton, mesomer, from, to) {
+            if via < bond || chain.bonds as usize > skeleton.bonds.len() {
+                return None;
+            }
+            chain.bonds += 1;
+            (from, to) = (to, next);
+        }
+        chain.ends[side] = to;
+        chain.inner[side] = from;
+    }
+    Some(chain)
+}
+
+/// The next double bond beyond `to`, coming from `from`, where `to` is an inner atom of a cumulene.
+fn continues(skeleton: &Skeleton, mesomer: &Mesomer, from: u32, to: u32) -> Option<(u32, u32)> {
+    let record = &skeleton.atoms[to as usize];
+    if record.element.group() != Some(14) || record.hydrogens > 0 || skeleton.degree(to) != 2 {
+        return None;
+    }
+    skeleton
+        .arcs(to)
+        .iter()
+        .copied()
+        .find(|&(next, bond)| next != from && mesomer.orders[bond as usize] == 2)
+}
+
+fn candidate(
+    skeleton: &Skeleton,
+    mesomer: &Mesomer,
+    bond: u32,
+    chain: &Chain,
+) -> Option<Candidate> {
+    let [a, b] = chain.ends;
+    if a == b || (chain.bonds == 1 && labile::is_labile_imine(skeleton, mesomer, a, b)) {
+        return None;
+    }
+    if in_small_ring(skeleton, bond) {
+        return None;
+    }
+    let [first, second] = end_ligands(skeleton, mesomer, a, chain.inner[0])?;
+    let [third, fourth] = end_ligands(skeleton, mesomer, b, chain.inner[1])?;
+    Some(Candidate {
+        shape: if chain.bonds % 2 == 1 {
+            Shape::DoubleBond
+        } else {
+            Shape::Axis
+        },
+        centres: [a, b],
+        ligands: [first, second, third, fourth],
+        parity: None,
+        quiet: mesomer.orders[bond as usize] == MOBILE,
+    })
+}
+
+/// Whether a bond lies in a ring too small for a free choice of geometry.
+pub(super) fn in_small_ring(skeleton: &Skeleton, bond: u32) -> bool {
+    let ends = &skeleton.bonds[bond as usize];
+    skeleton.ring[bond as usize]
+        && skeleton
+            .adjacency
+            .smallest_ring(ends.a, ends.b, SMALLEST_FREE_RING - 1)
+            .is_some()
+}
+
+/// The two ligands at an end, apart from the chain; `None` if it has not two, or two alike at
+/// sight, or if the end cannot keep a geometry.
+fn end_ligands(skeleton: &Skeleton, mesomer: &Mesomer, end: u32, inner: u32) -> Option<[u32; 2]> {
+    let record = &skeleton.atoms[end as usize];
+    let charge = mesomer.states[end as usize].charge;
+    let others = skeleton.degree(end) - 1 + usize::from(record.hydrogens);
+    let lone_pair = match (record.element.group(), others, charge) {
+        (Some(14), 2, _) => false,
+        (Some(15), 2, _) => false,
+        (Some(15), 1, _) => true,
+        (Some(16), 1, 1) if record.element != Element::OXYGEN => true,
+        _ => return None,
+    };
+    let mut found = [slot::LONE_PAIR; 2];
+    let atoms = skeleton
+        .arcs(end)
+        .iter()
+        .map(|&(to, _)| to)
+        .filter(|&to| to != inner);
+    let ligands = atoms.chain(hydrogen_slots(record.hydrogens, record.labelled));
+    for (place, ligand) in found.iter_mut().zip(ligands) {
+        *place = ligand;
+    }
+    (lone_pair || found[0] != found[1]).then_some(found)
+}

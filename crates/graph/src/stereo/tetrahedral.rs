@@ -1,0 +1,155 @@
+//! Atoms that can be tetrahedral centres.
+
+use crate::{Element, Shape, mesomer::Mesomer, skeleton::Skeleton};
+
+use super::{
+    Candidate, Perception,
+    bridgehead::{self, Theta},
+    labile,
+    marks::Mark,
+    slot,
+};
+
+/// What an atom is as a possible centre.
+enum Eligible {
+    /// Configurationally stable.
+    Stable,
+    /// Nitrogen that is stable only where its ligands are held back: a bridgehead.
+    HeldNitrogen,
+    /// Nitrogen in a three-membered ring.
+    SmallRingNitrogen,
+    /// Four ligands on an element without a rule: only marks count.
+    Unruled,
+}
+
+/// Adds the tetrahedral candidates; returns the bridgehead relations found on the way.
+pub(super) fn find(
+    perception: &mut Perception,
+    skeleton: &Skeleton,
+    mesomer: &Mesomer,
+    marks: &[Mark],
+) -> Vec<Theta> {
+    let unruled_marks = marks.iter().any(|mark| {
+        mark.shape == Shape::Tetrahedral
+            && mark.parity.is_some()
+            && matches!(
+                eligible(skeleton, mesomer, mark.centres[0]),
+                Some(Eligible::Unruled)
+            )
+    });
+    let eligibles: Vec<Option<Eligible>> = (0..skeleton.len() as u32)
+        .map(|atom| eligible(skeleton, mesomer, atom))
+        .collect();
+    let can_be: Vec<bool> = eligibles
+        .iter()
+        .map(|e| matches!(e, Some(Eligible::Stable | Eligible::HeldNitrogen)))
+        .collect();
+    let thetas = bridgehead::thetas(skeleton, &can_be);
+    for atom in 0..skeleton.len() as u32 {
+        let quiet = match eligibles[atom as usize] {
+            Some(Eligible::Stable) => false,
+            Some(Eligible::HeldNitrogen) if thetas.iter().any(|t| t.ends.contains(&atom)) => false,
+            Some(Eligible::SmallRingNitrogen) => true,
+            Some(Eligible::Unruled) if unruled_marks => true,
+            _ => continue,
+        };
+        let Some(ligands) = ligands(skeleton, atom) else {
+            continue;
+        };
+        if labile::turns_on_mobile_hydrogen(skeleton, atom) {
+            continue;
+        }
+        perception.candidates.push(Candidate {
+            shape: Shape::Tetrahedral,
+            centres: [atom, atom],
+            ligands,
+            parity: None,
+            quiet,
+        });
+    }
+    thetas
+}
+
+fn eligible(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Eligible> {
+    let record = &skeleton.atoms[atom as usize];
+    let state = &mesomer.states[atom as usize];
+    let degree = skeleton.degree(atom);
+    if degree + usize::from(record.hydrogens) > 4
+        || degree < 2
+        || state.mobile
+        || skeleton
+            .arcs(atom)
+            .iter()
+            .any(|&(_, bond)| mesomer.orders[bond as usize] != 1)
+    {
+        return None;
+    }
+    let sigma = degree + usize::from(record.hydrogens);
+    match (record.element, sigma, state.charge) {
+        (Element::CARBON | Element::SILICON | Element::GERMANIUM, 4, 0) => Some(Eligible::Stable),
+        (Element::TIN | Element::LEAD, 4, 0) | (Element::BORON, 4, -1) => Some(Eligible::Stable),
+        (Element::NITROGEN, 4, 1) if record.hydrogens == 0 => Some(Eligible::Stable),
+        (Element::NITROGEN, 4, 1) | (Element::NITROGEN, 3, 0) => {
+            Some(if (in_three_ring(skeleton, atom)) && record.charge == 0 {
+                Eligible::SmallRingNitrogen
+            } else {
+                Eligible::HeldNitrogen
+            })
+        }
+        (Element::PHOSPHORUS | Element::ARSENIC | Element::ANTIMONY, 4, 1)
+        | (Element::PHOSPHORUS | Element::ARSENIC | Element::ANTIMONY, 3, 0)
+        | (Element::SULFUR | Element::SELENIUM | Element::TELLURIUM, 3, 1)
+        | (Element::SULFUR | Element::SELENIUM | Element::TELLURIUM, 4, 2) => {
+            Some(Eligible::Stable)
+        }
+        (element, 4, _) if !is_ruled(element) => Some(Eligible::Unruled),
+        _ => None,
+    }
+}
+
+/// Elements whose four-ligand forms the rules above settle, for or against.
+fn is_ruled(element: Element) -> bool {
+    matches!(
+        element,
+        Element::HYDROGEN
+            | Element::BORON
+            | Element::CARBON
+            | Element::NITROGEN
+            | Element::OXYGEN
+            | Element::FLUORINE
+            | Element::CHLORINE
+            | Element::BROMINE
+    )
+}
+
+fn in_three_ring(skeleton: &Skeleton, atom: u32) -> bool {
+    skeleton.arcs(atom).iter().any(|&(to, bond)| {
+        skeleton.ring[bond as usize] && skeleton.adjacency.smallest_ring(atom, to, 3).is_some()
+    })
+}
+
+/// The four ligands of an atom, or `None` if it has not four or two of them are alike at sight.
+fn ligands(skeleton: &Skeleton, atom: u32) -> Option<[u32; 4]> {
+    let record = &skeleton.atoms[atom as usize];
+    let mut found = [slot::LONE_PAIR; 4];
+    let mut count = 0;
+    let arcs = skeleton.arcs(atom).iter().map(|&(to, _)| to);
+    for ligand in arcs.chain(hydrogen_slots(record.hydrogens, record.labelled)) {
+        *found.get_mut(count)? = ligand;
+        count += 1;
+    }
+    let alike = found[..count]
+        .iter()
+        .enumerate()
+        .any(|(at, l)| found[..at].contains(l));
+    (count >= 3 && !alike).then_some(found)
+}
+
+/// The slots of counted and folded hydrogens.
+pub(super) fn hydrogen_slots(hydrogens: u8, labelled: u16) -> impl Iterator<Item = u32> {
+    let count = move |mass: u32| u32::from(labelled >> (4 * (mass - 1)) & 15);
+    let natural = u32::from(hydrogens).saturating_sub((1..=3).map(count).sum());
+    std::iter::once((0, natural))
+        .chain((1..=3).map(move |mass| (mass, count(mass))))
+        .flat_map(|(mass, count)| std::iter::repeat_n(slot::HYDROGEN + mass, count as usize))
+}
