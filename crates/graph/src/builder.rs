@@ -78,6 +78,13 @@ impl MoleculeBuilder {
         self.delocalised.clear();
     }
 
+    /// Makes room for a molecule of known size.
+    pub fn reserve(&mut self, atoms: usize, bonds: usize) {
+        self.molecule.graph.reserve_nodes(atoms);
+        self.molecule.graph.reserve_edges(bonds);
+        self.demand.reserve(atoms);
+    }
+
     /// The number of atoms added.
     pub fn atom_count(&self) -> usize {
         self.molecule.graph.node_count()

@@ -19,7 +19,7 @@ use crate::{
 };
 
 pub use comparison::{Arrangement, arrangement};
-pub use elements::{Dropped, Mark, StereoElement, StereoNote};
+pub use elements::{Dropped, Mark, Remark, StereoElement};
 pub use form::{CanonicalForm, FormAtom, FormStereo};
 pub use normal::{NormalAtom, NormalBond, NormalForm};
 

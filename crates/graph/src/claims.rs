@@ -14,5 +14,5 @@ mod action;
 mod solve;
 mod variables;
 
-pub(crate) use solve::{Claims, Outcome, Solver, Status};
+pub(crate) use solve::{Claims, Solver, Status};
 pub(crate) use variables::{Variable, variables};

@@ -104,6 +104,21 @@ impl Element {
         })
     }
 
+    /// Whether the element keeps its bonds as drawn: metals, and the few others (noble gases, the
+    /// wildcard) of which the octet rule says nothing. Boron, silicon, germanium, arsenic, antimony,
+    /// selenium, tellurium and the halogens down to astatine are not among them.
+    #[must_use]
+    pub const fn is_metal(self) -> bool {
+        let nonmetal = match self.group() {
+            Some(13) => self.0 == Self::BORON.0,
+            Some(14) => self.period() <= 4,
+            Some(15 | 16) => self.period() <= 5,
+            Some(17) => true,
+            _ => self.0 == Self::HYDROGEN.0,
+        };
+        !nonmetal
+    }
+
     /// The period 1..=7; 0 for the wildcard.
     #[must_use]
     pub const fn period(self) -> u8 {

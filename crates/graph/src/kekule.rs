@@ -32,7 +32,14 @@ pub(crate) fn assign(
     matching: &mut Matching,
 ) -> Result<Vec<bool>, BuildError> {
     let excluded = |atom: u32| demand[atom as usize] == PiDemand::Excluded;
-    set_up(demand, matching);
+    matching.reset(demand.len());
+    for (atom, demand) in (0..).zip(demand) {
+        match demand {
+            PiDemand::Needed => {}
+            PiDemand::Excluded => matching.set_removed(atom, true),
+            PiDemand::Optional => matching.set_optional(atom),
+        }
+    }
     let mut exposed = usize::MAX;
     for in_rings in [true, false] {
         let usable = delocalised.iter().filter(|&&(bond, a, b)| {
@@ -58,28 +65,4 @@ pub(crate) fn assign(
         .iter()
         .map(|&(_, a, b)| matching.mate(a) == b)
         .collect())
-}
-
-/// One vertex an atom. An atom that may stay out gets a stand-in that it, or another stand-in, can
-/// be matched with, and one spare vertex settles the parity: so a perfect matching exists exactly
-/// when all atoms that need a double bond can have one.
-fn set_up(demand: &[PiDemand], matching: &mut Matching) {
-    let count = demand.len() as u32;
-    let optional: Vec<u32> = (0..count)
-        .filter(|&a| demand[a as usize] == PiDemand::Optional)
-        .collect();
-    let needed = demand.iter().filter(|&&d| d == PiDemand::Needed).count();
-    let spare = u32::from(!optional.is_empty() && needed % 2 == 1);
-    let stand_ins = optional.len() as u32;
-    matching.reset((count + stand_ins + spare) as usize);
-    for atom in 0..count {
-        matching.set_removed(atom, demand[atom as usize] == PiDemand::Excluded);
-    }
-    for (at, &atom) in optional.iter().enumerate() {
-        let stand_in = count + at as u32;
-        matching.add_edge(atom, stand_in);
-        for other in stand_in + 1..count + stand_ins + spare {
-            matching.add_edge(stand_in, other);
-        }
-    }
 }

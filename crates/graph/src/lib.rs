@@ -30,7 +30,7 @@ pub use crate::{
     builder::{BuildError, MoleculeBuilder},
     canonical::{
         Arrangement, Canonical, CanonicalForm, Dropped, FormAtom, FormStereo, Mark, NormalAtom,
-        NormalBond, NormalForm, OrderError, Orderer, StereoElement, StereoNote, arrangement,
+        NormalBond, NormalForm, OrderError, Orderer, Remark, StereoElement, arrangement,
     },
     drawn::{DrawnStereo, Ligand, Parity, Shape},
     element::{Element, Nuclide},

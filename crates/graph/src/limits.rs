@@ -26,7 +26,7 @@ impl Default for Limits {
         Self {
             line_bytes: 1 << 20,
             record_bytes: 16 << 20,
-            atoms: 65_535,
+            atoms: 200_000,
             order_steps: 200_000,
             open_elements: 8,
             map_steps: 2_000_000,

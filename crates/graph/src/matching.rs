@@ -17,6 +17,8 @@ pub(crate) struct Matching {
     removed: Vec<bool>,
     group: Vec<u32>,
     blocked: Option<(u32, u32)>,
+    /// Vertices that need no partner: a search may end by exposing one.
+    optional: Vec<bool>,
     parent: Vec<u32>,
     base: Vec<u32>,
     outer: Vec<bool>,
@@ -42,6 +44,13 @@ impl Matching {
         self.group.clear();
         self.group.extend(0..vertices as u32);
         self.blocked = None;
+        self.optional.clear();
+        self.optional.resize(vertices, false);
+    }
+
+    /// Says that a vertex need not be covered.
+    pub(crate) fn set_optional(&mut self, vertex: u32) {
+        self.optional[vertex as usize] = true;
     }
 
     /// Puts a vertex into a group, for [`Matching::block`].
@@ -119,11 +128,11 @@ impl Matching {
         self.mate.extend_from_slice(mate);
     }
 
-    /// Matches greedily, vertices of few choices first where that is free, then augments until no
-    /// exposed vertex can be matched. Returns the number of exposed vertices left.
+    /// Matches greedily, then augments until no exposed vertex can be matched. Returns how many are
+    /// left; optional vertices do not count.
     pub(crate) fn maximise(&mut self) -> usize {
         for vertex in 0..self.vertices as u32 {
-            if self.mate[vertex as usize] != NONE || self.removed[vertex as usize] {
+            if self.is_settled(vertex) {
                 continue;
             }
             let free = self.neighbours[vertex as usize]
@@ -135,16 +144,15 @@ impl Matching {
                 self.join(vertex, other);
             }
         }
-        let mut exposed = 0;
-        for vertex in 0..self.vertices as u32 {
-            if self.mate[vertex as usize] == NONE
-                && !self.removed[vertex as usize]
-                && !self.augment(vertex)
-            {
-                exposed += 1;
-            }
-        }
-        exposed
+        (0..self.vertices as u32)
+            .filter(|&v| !self.is_settled(v) && !self.augment(v))
+            .count()
+    }
+
+    /// Whether nothing is to be done about a vertex: covered, hidden, or optional.
+    fn is_settled(&self, vertex: u32) -> bool {
+        let at = vertex as usize;
+        self.mate[at] != NONE || self.removed[at] || self.optional[at]
     }
 
     /// Looks for an augmenting path from an exposed vertex and flips it. Covered vertices stay
@@ -176,6 +184,9 @@ impl Matching {
         self.outer[root as usize] = true;
         self.queue.push_back(root);
         while let Some(vertex) = self.queue.pop_front() {
+            if self.optional[vertex as usize] && vertex != root {
+                return Some(self.part(vertex));
+            }
             for at in 0..self.neighbours[vertex as usize].len() {
                 let to = self.neighbours[vertex as usize][at];
                 if self.removed[to as usize]

@@ -17,7 +17,6 @@ use crate::{matching::Matching, skeleton::Skeleton};
 
 pub(crate) use placement::System;
 use valence::Valence;
-pub(crate) use valence::is_metal;
 
 /// The order of a bond that differs among the best placements.
 pub(crate) const MOBILE: u8 = 5;
@@ -48,6 +47,35 @@ pub(crate) struct Mesomer {
 }
 
 impl Mesomer {
+    /// Rings of 4n mobile bonds in which no atom has a third: cyclobutadienes, cyclooctatetraenes.
+    pub(crate) fn bond_shift_rings(&self, skeleton: &Skeleton) -> Vec<Vec<u32>> {
+        let mobile = |atom: u32| {
+            let arcs = skeleton.arcs(atom).iter();
+            arcs.filter(|&&(_, bond)| self.orders[bond as usize] == MOBILE)
+                .map(|&(to, _)| to)
+        };
+        let mut seen = vec![false; skeleton.len()];
+        let mut rings = Vec::new();
+        for start in 0..skeleton.len() as u32 {
+            let mut ring = Vec::new();
+            let mut next = Some(start);
+            while let Some(atom) = next.filter(|&a| !seen[a as usize] && mobile(a).count() == 2) {
+                seen[atom as usize] = true;
+                ring.push(atom);
+                next = mobile(atom).find(|&to| !seen[to as usize]);
+            }
+            let closed = ring.len() >= 4
+                && ring.len() % 4 == 0
+                && ring
+                    .last()
+                    .is_some_and(|&last| mobile(last).any(|to| to == start));
+            if closed {
+                rings.push(ring);
+            }
+        }
+        rings
+    }
+
     /// Works out the normal form. The skeleton's charges and bond orders are brought into the
     /// charge-separated form on the way.
     pub(crate) fn load(&mut self, skeleton: &mut Skeleton) {

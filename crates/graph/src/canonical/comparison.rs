@@ -39,14 +39,14 @@ pub fn arrangement(
     }
     // Elements that either side leaves free agree with anything: the free set of each side is a
     // union of orbits, so only the elements that both fix have to be compared.
-    let (in_a, in_b) = (a.fixed_places(), b.fixed_places());
+    let (in_a, in_b) = (a.fixed_places(b), b.fixed_places(a));
     let common: BTreeSet<Place> = in_a.intersection(&in_b).copied().collect();
-    let ours = orderer.certificates(a, &common, false)?;
-    let theirs = orderer.certificates(b, &common, false)?;
+    let ours = orderer.certificates(a, &a.assignments(b), &common, false)?;
+    let theirs = orderer.certificates(b, &b.assignments(a), &common, false)?;
     if !ours.is_disjoint(&theirs) {
         return Ok(Arrangement::Overlapping);
     }
-    let mirrored = orderer.certificates(b, &common, true)?;
+    let mirrored = orderer.certificates(b, &b.assignments(a), &common, true)?;
     Ok(if ours.is_disjoint(&mirrored) {
         Arrangement::Unlike
     } else if a.claims.open || b.claims.open {
@@ -66,16 +66,37 @@ impl Canonical {
         (candidate.shape, a.min(b), a.max(b))
     }
 
-    fn fixed_places(&self) -> BTreeSet<Place> {
-        let fixed = self
-            .variables
-            .iter()
-            .zip(&self.claims.free)
-            .filter(|&(_, &free)| !free);
-        fixed
-            .flat_map(|(variable, _)| &variable.members)
+    /// Free cages that have to be compared bridgehead by bridgehead, because the other record marks
+    /// one in a way that no cage can have: whichever way round, their bridgeheads stay tied.
+    fn tied_cages(&self, other: &Self) -> Vec<usize> {
+        if other.perception.impossible.is_empty() {
+            return Vec::new();
+        }
+        (0..self.variables.len())
+            .filter(|&v| self.claims.free[v] && self.variables[v].members.len() > 1)
+            .collect()
+    }
+
+    fn fixed_places(&self, other: &Self) -> BTreeSet<Place> {
+        let tied = self.tied_cages(other);
+        (0..self.variables.len())
+            .filter(|v| !self.claims.free[*v] || tied.contains(v))
+            .flat_map(|v| &self.variables[v].members)
             .map(|&(index, _)| self.place(&self.perception.candidates[index]))
             .collect()
+    }
+
+    /// The listed assignments, with both values of each tied cage.
+    fn assignments(&self, other: &Self) -> Vec<Vec<bool>> {
+        let mut list = self.claims.assignments.clone();
+        for cage in self.tied_cages(other) {
+            let mut turned = list.clone();
+            for assignment in &mut turned {
+                assignment[cage] = !assignment[cage];
+            }
+            list.append(&mut turned);
+        }
+        list
     }
 }
 
@@ -85,6 +106,7 @@ impl Orderer {
     fn certificates(
         &mut self,
         canonical: &Canonical,
+        assignments: &[Vec<bool>],
         places: &BTreeSet<Place>,
         mirrored: bool,
     ) -> Result<BTreeSet<Vec<u64>>, OrderError> {
@@ -98,7 +120,7 @@ impl Orderer {
         let mut steps = 0;
         let mut found = BTreeSet::new();
         let mut labelling = Labelling::default();
-        for assignment in &canonical.claims.assignments {
+        for assignment in assignments {
             self.graph.units.clear();
             for (variable, &odd) in canonical.variables.iter().zip(assignment) {
                 for &(index, opposite) in &variable.members {

@@ -1,6 +1,10 @@
 //! The stereo elements of a record as callers see them, on the atoms of the molecule.
 
-use crate::{Canonical, Ligand, Parity, Shape, Undrawable, claims::Status, stereo::slot};
+use crate::{
+    Canonical, Ligand, Parity, Shape, Undrawable,
+    claims::{Status, Variable},
+    stereo::{Candidate, slot},
+};
 
 pub use crate::stereo::Dropped;
 
@@ -32,10 +36,10 @@ pub struct StereoElement {
     pub variable: usize,
 }
 
-/// What is to be said about the stereo of a record beside its elements. Atoms count from 0.
+/// What is to be said about a record beside its stereo elements. Atoms count from 0.
 #[derive(Debug, Clone, PartialEq, Eq)]
 #[non_exhaustive]
-pub enum StereoNote {
+pub enum Remark {
     /// A mark counts for nothing.
     MarkDropped {
         /// Why.
@@ -51,6 +55,17 @@ pub enum StereoNote {
     /// Bridgeheads are marked in a way that no cage of this size can have; the marks count as drawn.
     ImpossibleCage {
         /// The bridgeheads.
+        atoms: Vec<u32>,
+    },
+    /// Of the mobile double bonds, whose geometry counts only where it is marked, some are marked
+    /// and these are not.
+    PartlyMarkedMobileBonds {
+        /// The ends of the unmarked bonds.
+        atoms: Vec<u32>,
+    },
+    /// A ring of 4n mobile bonds: its two bond-shift forms count as one structure.
+    BondShiftRing {
+        /// The ring's atoms.
         atoms: Vec<u32>,
     },
     /// Something that the record's notation leaves out although it may matter.
@@ -70,11 +85,7 @@ impl Canonical {
             };
             for &(index, opposite) in &variable.members {
                 let candidate = &self.perception.candidates[index];
-                let ligands = candidate.ligands.map(|ligand| match ligand {
-                    slot::LONE_PAIR => Ligand::LonePair,
-                    l if l >= slot::HYDROGEN => Ligand::Hydrogen,
-                    atom => Ligand::Atom(self.source(atom)),
-                });
+                let ligands = self.ligands(candidate);
                 let mark = given.map_or(Mark::Absent, |odd| {
                     Mark::Given(Parity::from_odd(odd ^ opposite))
                 });
@@ -93,11 +104,11 @@ impl Canonical {
     }
 
     /// What else is to be said about the stereo of the record.
-    pub fn stereo_notes(&self) -> Vec<StereoNote> {
+    pub fn remarks(&self) -> Vec<Remark> {
         let perception = &self.perception;
         let mut notes = Vec::new();
         for &(reason, centres) in &perception.dropped {
-            notes.push(StereoNote::MarkDropped {
+            notes.push(Remark::MarkDropped {
                 reason,
                 atoms: self.sources(centres),
             });
@@ -106,7 +117,7 @@ impl Canonical {
             if self.claims.free[number] && variable.odd.is_some() {
                 for &(index, _) in &variable.members {
                     let centres = perception.candidates[index].centres;
-                    notes.push(StereoNote::MarkIdle {
+                    notes.push(Remark::MarkIdle {
                         atoms: self.sources(centres),
                     });
                 }
@@ -114,10 +125,15 @@ impl Canonical {
         }
         for cage in &perception.impossible {
             let atoms = cage.iter().map(|&atom| self.source(atom)).collect();
-            notes.push(StereoNote::ImpossibleCage { atoms });
+            notes.push(Remark::ImpossibleCage { atoms });
+        }
+        notes.extend(self.partly_marked());
+        for ring in self.mesomer.bond_shift_rings(&self.skeleton) {
+            let atoms = ring.iter().map(|&atom| self.source(atom)).collect();
+            notes.push(Remark::BondShiftRing { atoms });
         }
         for place in &perception.undrawable {
-            notes.push(StereoNote::NotDrawn(match *place {
+            notes.push(Remark::NotDrawn(match *place {
                 Undrawable::HinderedAxis { atoms } => Undrawable::HinderedAxis {
                     atoms: atoms.map(|atom| self.source(atom)),
                 },
@@ -127,6 +143,55 @@ impl Canonical {
             }));
         }
         notes
+    }
+
+    fn partly_marked(&self) -> Option<Remark> {
+        let mobile = |v: &&Variable| v.quiet && self.shape(v) == Shape::DoubleBond;
+        let (marked, unmarked): (Vec<&Variable>, Vec<&Variable>) = self
+            .variables
+            .iter()
+            .filter(mobile)
+            .partition(|v| v.odd.is_some());
+        if marked.is_empty() || unmarked.is_empty() {
+            return None;
+        }
+        let mut atoms: Vec<u32> = unmarked
+            .iter()
+            .flat_map(|v| &v.members)
+            .flat_map(|&(index, _)| self.sources(self.perception.candidates[index].centres))
+            .collect();
+        atoms.sort_unstable();
+        atoms.dedup();
+        Some(Remark::PartlyMarkedMobileBonds { atoms })
+    }
+
+    fn shape(&self, variable: &Variable) -> Shape {
+        let first = variable.members.first();
+        first.map_or(Shape::Tetrahedral, |&(index, _)| {
+            self.perception.candidates[index].shape
+        })
+    }
+
+    /// Ligands on the atoms of the molecule. A labelled hydrogen is named by its atom, so that it
+    /// can be told from others.
+    fn ligands(&self, candidate: &Candidate) -> [Ligand; 4] {
+        let mut at = 0;
+        candidate.ligands.map(|ligand| {
+            let centre = candidate.centres[at / 2];
+            at += 1;
+            match ligand {
+                slot::LONE_PAIR => Ligand::LonePair,
+                slot::HYDROGEN => Ligand::Hydrogen,
+                l if l > slot::HYDROGEN => {
+                    let mass = (l - slot::HYDROGEN) as u8;
+                    let own = (0u32..).zip(&self.skeleton.folded).find(|&(atom, folded)| {
+                        *folded == Some(mass) && self.skeleton.home[atom as usize] == centre
+                    });
+                    own.map_or(Ligand::Hydrogen, |(atom, _)| Ligand::Atom(atom))
+                }
+                atom => Ligand::Atom(self.source(atom)),
+            }
+        })
     }
 
     fn source(&self, atom: u32) -> u32 {

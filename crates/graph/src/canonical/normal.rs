@@ -75,6 +75,14 @@ impl Canonical {
         }
     }
 
+    /// Whether an atom of the molecule is a hydrogen that counts as one of its neighbour's hydrogens.
+    pub fn is_folded(&self, atom: u32) -> bool {
+        self.skeleton
+            .folded
+            .get(atom as usize)
+            .is_some_and(Option::is_some)
+    }
+
     /// Generators of the automorphism group of the constitution with isotopes, stereo left aside:
     /// images of positions in [`Canonical::normal_form`].
     pub fn automorphisms(&self) -> Vec<Vec<u32>> {

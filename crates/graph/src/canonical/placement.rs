@@ -3,7 +3,7 @@
 use crate::{
     Element,
     matching::Matching,
-    mesomer::{MOBILE, Mesomer, is_metal},
+    mesomer::{MOBILE, Mesomer},
     skeleton::Skeleton,
 };
 
@@ -61,7 +61,7 @@ fn customary(skeleton: &Skeleton, rank: &[u32], placed: &mut Placed) {
     centres.sort_unstable_by_key(|&atom| rank[atom as usize]);
     for centre in centres {
         let element = skeleton.atoms[centre as usize].element;
-        if is_metal(element) || !matches!(element.group(), Some(15..=17)) || element.period() < 3 {
+        if element.is_metal() || !matches!(element.group(), Some(15..=17)) || element.period() < 3 {
             continue;
         }
         let mut partners: Vec<(u8, u32, u32, u32)> = skeleton

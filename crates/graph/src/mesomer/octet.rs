@@ -6,7 +6,7 @@
 
 use crate::skeleton::Skeleton;
 
-use super::valence::{self, is_metal};
+use super::valence;
 
 /// Rewrites charges and bond orders of the skeleton in place.
 pub(super) fn separate(skeleton: &mut Skeleton) {
@@ -52,7 +52,7 @@ fn pi_bond(skeleton: &Skeleton, atom: u32) -> Option<u32> {
         .iter()
         .filter(|&&(to, bond)| {
             skeleton.bonds[bond as usize].order > 1
-                && !is_metal(skeleton.atoms[to as usize].element)
+                && !skeleton.atoms[to as usize].element.is_metal()
         })
         .max_by_key(|&&(to, _)| valence::neutral(skeleton.atoms[to as usize].element) == 2)
         .map(|&(_, bond)| bond)

@@ -96,7 +96,9 @@ pub(super) fn find_systems(skeleton: &Skeleton, valences: &[Valence], systems: &
             }
         }
     }
-    let takes_part = |atom: u32| valences[atom as usize].pi > 0 && !in_open_system[atom as usize];
+    // A ring shift that would turn a triple bond into cumulated ones relates valence isomers, not
+    // mesomers (docs/definitions.md), so atoms with room for two π bonds stay out here.
+    let takes_part = |atom: u32| valences[atom as usize].pi == 1 && !in_open_system[atom as usize];
     let cyclic = skeleton.adjacency.ring_bonds(skeleton.bonds.len(), |bond| {
         let bond = &skeleton.bonds[bond as usize];
         takes_part(bond.a) && takes_part(bond.b)

@@ -32,19 +32,7 @@ impl Valence {
 
 /// Nitrogen, oxygen and fluorine groups.
 pub(crate) fn is_group_15_to_17(element: Element) -> bool {
-    !is_metal(element) && matches!(element.group(), Some(15..=17))
-}
-
-/// Whether an atom keeps its bonds as drawn: metals, and whatever the octet model says nothing of.
-pub(crate) fn is_metal(element: Element) -> bool {
-    let nonmetal = match element.group() {
-        Some(13) => element == Element::BORON,
-        Some(14) => element.period() <= 4,
-        Some(15 | 16) => element.period() <= 5,
-        Some(17) => true,
-        _ => element == Element::HYDROGEN,
-    };
-    !nonmetal
+    !element.is_metal() && matches!(element.group(), Some(15..=17))
 }
 
 /// The valence of the neutral atom in its octet.
@@ -95,7 +83,7 @@ pub(crate) fn load(table: &mut Vec<Valence>, skeleton: &Skeleton) {
 /// Open valences of an atom as drawn, if the octet model covers it.
 fn open_valence(skeleton: &Skeleton, atom: u32) -> Option<u8> {
     let record = &skeleton.atoms[atom as usize];
-    if is_metal(record.element) || record.element == Element::HYDROGEN {
+    if record.element.is_metal() || record.element == Element::HYDROGEN {
         return None;
     }
     let mut drawn = i32::from(record.hydrogens);

@@ -1,8 +1,7 @@
 //! The graph that the search orders: coloured vertices, classed edges, oriented units.
 
-/// Bond classes are below this number; counts of one class about a vertex stay below 512.
-pub(crate) const CLASSES: usize = 7;
-/// Bits that a count takes in a refinement key.
+/// Bits that the count of one edge class takes in a refinement key, so there is room for seven
+/// classes and a vertex may have at most 511 neighbours.
 pub(super) const COUNT_BITS: u32 = 9;
 
 /// A unit whose orientation the order has to respect: four ligands in order and which of the two
@@ -28,7 +27,7 @@ pub(crate) struct Coloured {
 }
 
 impl Coloured {
-    /// Loads vertices and edges; edge classes are below [`CLASSES`].
+    /// Loads vertices and edges; edge classes are below seven.
     pub(crate) fn load(
         &mut self,
         colours: impl Iterator<Item = u64>,

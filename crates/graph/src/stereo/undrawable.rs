@@ -1,10 +1,6 @@
 //! What a plain drawing cannot say although it may matter.
 
-use crate::{
-    Element,
-    mesomer::{Mesomer, is_metal},
-    skeleton::Skeleton,
-};
+use crate::{Element, mesomer::Mesomer, skeleton::Skeleton};
 
 use super::Perception;
 
@@ -79,7 +75,7 @@ impl Perception {
 }
 
 fn is_transition_metal(element: Element) -> bool {
-    is_metal(element) && matches!(element.group(), None | Some(3..=12))
+    element.is_metal() && matches!(element.group(), None | Some(3..=12))
 }
 
 fn neighbours_alike(skeleton: &Skeleton, atom: u32) -> bool {

@@ -1,0 +1,2 @@
+//! molkin
+fn main() {}

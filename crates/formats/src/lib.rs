@@ -1,0 +1,26 @@
+//! Readers and writers of structure files.
+//!
+//! Each format is a module of its own: [`smiles`], [`molfile`] and [`sdf`]; [`source`] reads files of
+//! any of them. All give a [`Record`] or a [`ReadError`] with line, column, code and what was expected.
+#![forbid(unsafe_code)]
+
+mod error;
+mod excerpt;
+mod limits;
+mod lines;
+mod note;
+mod record;
+mod span;
+
+pub mod molfile;
+pub mod sdf;
+pub mod smiles;
+pub mod source;
+
+pub use crate::{
+    error::{ReadError, ReadErrorKind},
+    limits::ReadLimits,
+    note::Note,
+    record::Record,
+    span::Span,
+};

@@ -1,0 +1,180 @@
+//! SDF: molfiles with data items, one record after another.
+//!
+//! ```text
+//! record := molfile item* "$$$$"
+//! item   := ">" … "<" name ">" …  value-line*  blank-line
+//! ```
+//! Records are read one at a time. A record that fails leaves those after it alone: reading goes on
+//! behind the next line that is `$$$$`.
+
+mod data;
+mod lines;
+
+use std::io::BufRead;
+
+use crate::{
+    ReadError, ReadErrorKind, Record, Span,
+    molfile::{self, Block, ReadOptions, decode},
+    sdf::lines::{Line, Lines},
+};
+
+/// The records of an SDF source.
+///
+/// Lines end in LF, CR LF or CR, also mixed. An empty stretch between two `$$$$` lines is a record
+/// too, and fails; blank lines after the last `$$$$` are not, and that `$$$$` may be missing. Lines
+/// in errors and notes count from the start of the source. After an error of the source itself
+/// ([`ReadErrorKind::Io`]) nothing more is read. Memory follows the longest record, up to the
+/// limit.
+///
+/// # Examples
+/// ```
+/// use molkin_formats::{molfile::ReadOptions, sdf::Records};
+///
+/// let file = "water\n\n\n  1  0  0  0  0  0            999 V2000
+///     0.0000    0.0000    0.0000 O   0  0
+/// M  END
+/// >  <batch>
+/// 17
+///
+/// $$$$
+/// broken
+/// $$$$
+/// ";
+/// let mut records = Records::new(file.as_bytes(), ReadOptions::default());
+/// let water = records.next().ok_or("a record")??;
+/// assert_eq!(water.properties, [("batch".to_owned(), "17".to_owned())]);
+/// let error = records.next().ok_or("a record")?.unwrap_err();
+/// assert_eq!(error.to_string(),
+///     "12:1: the record ends where the program line of a molfile is expected");
+/// assert_eq!(records.title(), "broken");
+/// assert!(records.next().is_none());
+/// # Ok::<(), Box<dyn std::error::Error>>(())
+/// ```
+#[derive(Debug)]
+pub struct Records<R> {
+    lines: Lines<R>,
+    options: ReadOptions,
+    /// The lines of the record at hand, each ended by LF.
+    text: Vec<u8>,
+    /// The number of its first line.
+    first_line: u32,
+    ended: bool,
+    /// Whether a source without any text is a record that fails.
+    one_expected: bool,
+}
+
+/// Why the lines of a record stopped.
+enum Stop {
+    /// At `$$$$`.
+    Delimiter,
+    /// At the end of the source.
+    End,
+}
+
+impl<R: BufRead> Records<R> {
+    /// The records of a source.
+    pub fn new(source: R, options: ReadOptions) -> Self {
+        Self {
+            lines: Lines::new(source, options.limits.line_bytes),
+            options,
+            text: Vec::new(),
+            first_line: 1,
+            ended: false,
+            one_expected: false,
+        }
+    }
+
+    /// The records of a molfile: at least one. Whatever follows a `$$$$` line is read too.
+    pub(crate) fn of_molfile(source: R, options: ReadOptions) -> Self {
+        Self {
+            one_expected: true,
+            ..Self::new(source, options)
+        }
+    }
+
+    /// The name line of the record read last, whether it could be read or not; empty before the
+    /// first.
+    pub fn title(&self) -> String {
+        let line = Block::new(&self.text, 1).lines().next();
+        line.map_or_else(String::new, |line| decode(line.text.trim_ascii()))
+    }
+
+    /// Collects the lines of the next record; a fault if they exceed a limit.
+    fn collect(&mut self) -> std::io::Result<(Stop, Result<(), ReadError>)> {
+        self.text.clear();
+        self.first_line = self.lines.number().saturating_add(1);
+        let limit = self.options.limits.record_bytes;
+        let mut outcome = Ok(());
+        loop {
+            let (line, whole) = match self.lines.next()? {
+                Some(Line::Whole(line)) => (line, true),
+                Some(Line::TooLong(line)) => (line, false),
+                None => return Ok((Stop::End, outcome)),
+            };
+            if whole && line.trim_ascii_end() == b"$$$$" {
+                return Ok((Stop::Delimiter, outcome));
+            }
+            if outcome.is_err() {
+                continue;
+            }
+            let fits = self.text.len().saturating_add(line.len()) < limit;
+            if whole && fits {
+                self.text.extend_from_slice(line);
+                self.text.push(b'\n');
+                continue;
+            }
+            let kind = match whole {
+                true => ReadErrorKind::RecordTooLong { limit },
+                false => ReadErrorKind::LineTooLong {
+                    limit: self.options.limits.line_bytes,
+                },
+            };
+            let offset = if whole { 0 } else { line.len() };
+            let line = line.to_vec();
+            let span = Span::at_offset(self.lines.number(), offset, 0);
+            outcome = Err(ReadError::new(kind, span, &line));
+        }
+    }
+
+    fn parse(&self) -> Result<Record, ReadError> {
+        let block = Block::new(&self.text, self.first_line);
+        let mut lines = block.lines();
+        let mut record = molfile::read(&mut lines, &self.options, self.text.len())
+            .map_err(|fault| block.error(fault))?;
+        data::read(&mut lines, &mut record);
+        Ok(record)
+    }
+}
+
+impl<R: BufRead> Iterator for Records<R> {
+    type Item = Result<Record, ReadError>;
+
+    fn next(&mut self) -> Option<Self::Item> {
+        if self.ended {
+            return None;
+        }
+        let first = self.lines.number() == 0;
+        match self.collect() {
+            Ok((stop, outcome)) => {
+                self.ended = matches!(stop, Stop::End);
+                let nothing = self.ended && outcome.is_ok() && self.text.trim_ascii().is_empty();
+                if nothing && !(first && self.one_expected) {
+                    return None;
+                }
+                Some(outcome.and_then(|()| self.parse()))
+            }
+            Err(error) => {
+                self.ended = true;
+                let kind = ReadErrorKind::Io {
+                    kind: error.kind(),
+                    message: error.to_string().into(),
+                };
+                let line = self.lines.number().saturating_add(1);
+                Some(Err(ReadError::new(kind, Span::new(line, 1, 0), b"")))
+            }
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests;

@@ -1,0 +1,121 @@
+//! Canonical SMILES out.
+//!
+//! The text is a function of the canonical form and of nothing else, in this order: a spanning tree
+//! and the order of its branches ([`layout`]), the bonds that carry `/` or `\` ([`slopes`]), the tags
+//! of tetrahedral atoms and allenes ([`tags`]), and last the characters ([`emit`]). Bonds are written
+//! as in one Kekulé structure, without aromatic symbols.
+
+mod atom;
+mod emit;
+mod forest;
+mod layout;
+mod rows;
+mod search;
+mod slopes;
+mod structure;
+mod tags;
+mod units;
+
+#[cfg(test)]
+mod tests;
+
+use molkin_graph::{CanonicalForm, Shape};
+
+use self::{emit::Emitter, layout::Layout, slopes::Slopes, structure::Structure, tags::Tags};
+
+/// A molecule as text.
+#[derive(Debug, Clone, Default, PartialEq, Eq)]
+pub struct Written {
+    /// The SMILES.
+    pub text: String,
+    /// What the text could not say; empty for nearly all molecules. Reading the text back then gives
+    /// the same keys and the same text.
+    pub lost: Vec<Lost>,
+}
+
+/// Something that the notation has no way to say. Atoms are numbers of the canonical form.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
+#[non_exhaustive]
+pub enum Lost {
+    /// A marked arrangement: one of a mobile double bond that stands as single in the structure that
+    /// is written, or of a double bond that cannot get its `/` or `\` without a contradiction or
+    /// without marking a neighbour as well. It is left out.
+    Arrangement {
+        /// The geometry.
+        shape: Shape,
+        /// The centre twice, or the two ends.
+        centres: [u32; 2],
+    },
+    /// More ring bonds are open at once than there are labels, 1 to 99. Those beyond are written as
+    /// `%(100)` and so on, which is outside the standard and is not read back.
+    RingLabels {
+        /// The highest label.
+        highest: u32,
+    },
+}
+
+/// Writes a canonical form as SMILES.
+///
+/// Two forms give the same text exactly when they are equal, what is [`Written::lost`] aside, so the
+/// text may serve as a name; keys remain what identity is decided by.
+///
+/// Each component starts at its lowest atom; shorter branches come first and the longest goes on as
+/// the chain. Hydrogens are counted on their atoms unless a mass number, or a `/` or `\` that no
+/// other bond can carry, asks for an atom.
+///
+/// # Complexity
+/// O(n log n) in atoms and bonds, with a bounded search where marked double bonds are conjugated.
+///
+/// # Source
+/// OpenSMILES 1.0, "Standard Form", "Tetrahedral Chirality", "Cis/Trans Configuration".
+///
+/// # Examples
+/// ```
+/// use molkin_formats::smiles;
+/// use molkin_graph::{Limits, Orderer};
+///
+/// let molecule = smiles::parse("OC(=O)\\C=C/C")?;
+/// let canonical = Orderer::new(Limits::default()).order(&molecule)?;
+/// let written = smiles::write(&canonical.form());
+/// assert!(written.lost.is_empty());
+///
+/// let again = smiles::parse(&written.text)?;
+/// let again = Orderer::new(Limits::default()).order(&again)?;
+/// assert_eq!(again.compound_key(), canonical.compound_key());
+/// assert_eq!(smiles::write(&again.form()), written);
+/// # Ok::<(), Box<dyn std::error::Error>>(())
+/// ```
+pub fn write(form: &CanonicalForm) -> Written {
+    let structure = Structure::new(form);
+    let layout = Layout::new(&structure);
+    let planar_or_axial = form
+        .stereo
+        .iter()
+        .any(|element| element.shape != Shape::Tetrahedral);
+    let rows = if planar_or_axial {
+        rows::find(&structure)
+    } else {
+        Vec::new()
+    };
+    let mut lost = Vec::new();
+    let mut shown: Vec<u8> = form.atoms.iter().map(atom::shown_hydrogens).collect();
+    let mut slopes = Slopes::solve(&structure, &layout, &rows, &mut lost);
+    slopes.show_hydrogens(&structure, &mut shown);
+    let tags = Tags::new(&structure, &layout, &rows, &shown, &mut lost);
+    if layout.highest_label > layout::LAST_LABEL {
+        lost.push(Lost::RingLabels {
+            highest: layout.highest_label,
+        });
+    }
+    lost.sort_unstable();
+    let text = Emitter {
+        structure: &structure,
+        layout: &layout,
+        shown: &shown,
+        tags: &tags,
+        slopes: &mut slopes,
+        text: String::new(),
+    }
+    .emit();
+    Written { text, lost }
+}

@@ -1,0 +1,132 @@
+//! Branch points and chains of one record.
+
+use molkin_graph::Element;
+
+use crate::Structure;
+
+/// An atom with three or more non-hydrogen neighbours.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct BranchPoint {
+    /// The atom, from 0.
+    pub atom: u32,
+    /// The sizes, in non-hydrogen atoms, of what hangs on it outside rings, ascending.
+    pub branches: Vec<usize>,
+    /// How many of its bonds lie in rings.
+    pub ring_bonds: usize,
+}
+
+/// How a record branches.
+#[derive(Debug, Clone, PartialEq, Eq, Default)]
+pub struct Branching {
+    /// The branch points by atom number.
+    pub points: Vec<BranchPoint>,
+    /// For each component without rings that has a bond: a longest chain of non-hydrogen atoms, from
+    /// its lower-numbered end.
+    pub chains: Vec<Vec<u32>>,
+}
+
+/// The heavy-atom graph of a record, on its own numbering.
+struct Skeleton {
+    neighbours: Vec<Vec<(u32, bool)>>,
+}
+
+/// Describes a record.
+pub(super) fn of(structure: &Structure) -> Branching {
+    let form = structure.canonical().normal_form();
+    let mut skeleton = Skeleton {
+        neighbours: vec![Vec::new(); structure.molecule().atom_count()],
+    };
+    for bond in &form.bonds {
+        let [a, b] = [bond.a, bond.b].map(|at| &form.atoms[at as usize]);
+        if a.element != Element::HYDROGEN && b.element != Element::HYDROGEN {
+            skeleton.neighbours[a.source as usize].push((b.source, bond.in_ring));
+            skeleton.neighbours[b.source as usize].push((a.source, bond.in_ring));
+        }
+    }
+    for list in &mut skeleton.neighbours {
+        list.sort_unstable();
+    }
+    Branching {
+        points: skeleton.points(),
+        chains: skeleton.chains(),
+    }
+}
+
+impl Skeleton {
+    fn points(&self) -> Vec<BranchPoint> {
+        let branching = (0u32..)
+            .zip(&self.neighbours)
+            .filter(|(_, list)| list.len() >= 3);
+        branching
+            .map(|(atom, list)| {
+                let outside = list.iter().filter(|&&(_, in_ring)| !in_ring);
+                let mut branches: Vec<usize> = outside
+                    .map(|&(to, _)| self.order_from(to, Some(atom)).len())
+                    .collect();
+                branches.sort_unstable();
+                let ring_bonds = list.len() - branches.len();
+                BranchPoint {
+                    atom,
+                    branches,
+                    ring_bonds,
+                }
+            })
+            .collect()
+    }
+
+    /// The atoms reachable without crossing `barred`, breadth first, each with its predecessor.
+    fn order_from(&self, start: u32, barred: Option<u32>) -> Vec<(u32, u32)> {
+        let mut seen = std::collections::HashSet::from([start]);
+        seen.extend(barred);
+        let mut order = vec![(start, start)];
+        let mut at = 0;
+        while let Some(&(atom, _)) = order.get(at) {
+            at += 1;
+            for &(to, _) in &self.neighbours[atom as usize] {
+                if seen.insert(to) {
+                    order.push((to, atom));
+                }
+            }
+        }
+        order
+    }
+
+    /// Longest chains by two breadth-first walks, which is exact in trees.
+    fn chains(&self) -> Vec<Vec<u32>> {
+        let mut seen = std::collections::HashSet::new();
+        let mut chains = Vec::new();
+        for start in 0..self.neighbours.len() as u32 {
+            if self.neighbours[start as usize].is_empty() || seen.contains(&start) {
+                continue;
+            }
+            let component = self.order_from(start, None);
+            seen.extend(component.iter().map(|&(atom, _)| atom));
+            let in_ring =
+                |&(atom, _): &(u32, u32)| self.neighbours[atom as usize].iter().any(|&(_, r)| r);
+            if component.iter().any(in_ring) {
+                continue;
+            }
+            let Some(&(end, _)) = component.last() else {
+                continue;
+            };
+            let walk = self.order_from(end, None);
+            chains.push(path_back(&walk, end));
+        }
+        chains
+    }
+}
+
+/// The path from the last atom of a breadth-first walk back to its start, lower end first.
+fn path_back(walk: &[(u32, u32)], start: u32) -> Vec<u32> {
+    let before: std::collections::HashMap<u32, u32> = walk.iter().copied().collect();
+    let mut path = Vec::new();
+    let mut atom = walk.last().map(|&(atom, _)| atom);
+    while let Some(here) = atom {
+        path.push(here);
+        atom = before.get(&here).copied().filter(|_| here != start);
+    }
+    if path.first() > path.last() {
+        path.reverse();
+    }
+    path
+}

@@ -1,0 +1,192 @@
+//! The map between constitutional isomers and what it keeps.
+
+use std::collections::HashMap;
+
+use molkin_graph::{Element, Limits, NormalAtom, NormalForm};
+
+use crate::{
+    Structure,
+    mapping::{self, Effort, Side},
+};
+
+use super::{Explanation, branching};
+
+/// Bonds under an atom map; atoms from 0. Bonds to hydrogen are not counted.
+#[derive(Debug, Clone, PartialEq, Eq, Default)]
+pub struct BondDifference {
+    /// Bonds that both have, those of changed order included.
+    pub kept: usize,
+    /// Bonds that only A has, lower atom first.
+    pub only_in_a: Vec<(u32, u32)>,
+    /// Bonds that only B has, lower atom first.
+    pub only_in_b: Vec<(u32, u32)>,
+    /// Kept bonds of different order: the bond in A and in B. A mobile bond has an order of its own.
+    pub order_changed: Vec<((u32, u32), (u32, u32))>,
+    /// Whether bonds, orders and hydrogens are all proved to differ as little as possible.
+    pub minimal: bool,
+    /// Proved: no map has fewer bonds that only one record has.
+    pub at_least: usize,
+}
+
+/// A pair of mapped atoms with different numbers of hydrogens; atoms from 0.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct HydrogenDifference {
+    /// The atom in A.
+    pub a: u32,
+    /// The atom in B.
+    pub b: u32,
+    /// Hydrogens on it in A.
+    pub count_a: u8,
+    /// Hydrogens on it in B.
+    pub count_b: u8,
+}
+
+/// The order class of a mobile bond, beside 1 to 4.
+const MOBILE: u8 = 5;
+
+/// Non-hydrogen atoms and bonds of a record in canonical order.
+struct Heavy {
+    atoms: Vec<NormalAtom>,
+    bonds: Vec<(u32, u32, u8)>,
+}
+
+pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanation {
+    let heavy = [a, b].map(|side| Heavy::of(&side.canonical().normal_form()));
+    let [left, right] = &heavy;
+    let sides = sides(left, right);
+    let effort = Effort {
+        steps: limits.map_steps,
+        stop: None,
+    };
+    let branching = Some([branching::of(a), branching::of(b)]);
+    // Constitutional isomers have equal formulae and each side lists its bonds once, so the only
+    // error left is a bridging hydrogen that one side counts and the other bonds; then there is no
+    // map to show.
+    let Ok(mapping) = mapping::map_atoms(&sides[0], &sides[1], &effort) else {
+        return Explanation {
+            branching,
+            stereo_least: true,
+            ..Explanation::default()
+        };
+    };
+    let pairs = mapping.pairs;
+    let mut atom_map: Vec<(u32, u32)> = left
+        .atoms
+        .iter()
+        .zip(&pairs)
+        .map(|(atom, &image)| (atom.source, right.atoms[image as usize].source))
+        .collect();
+    atom_map.sort_unstable();
+    let mut hydrogens: Vec<HydrogenDifference> = left
+        .atoms
+        .iter()
+        .zip(&pairs)
+        .map(|(atom, &image)| (atom, &right.atoms[image as usize]))
+        .filter(|(x, y)| x.hydrogens != y.hydrogens)
+        .map(|(x, y)| HydrogenDifference {
+            a: x.source,
+            b: y.source,
+            count_a: x.hydrogens,
+            count_b: y.hydrogens,
+        })
+        .collect();
+    hydrogens.sort_unstable_by_key(|h| h.a);
+    let mut bonds = difference(left, right, &pairs);
+    let proved = mapping.proved;
+    bonds.minimal = proved.bonds && proved.orders && proved.hydrogens;
+    bonds.at_least = mapping.bonds_at_least as usize;
+    Explanation {
+        atom_map,
+        bonds: Some(bonds),
+        hydrogens,
+        branching,
+        stereo: Vec::new(),
+        stereo_least: true,
+        steps: mapping.steps,
+    }
+}
+
+impl Heavy {
+    fn of(form: &NormalForm) -> Self {
+        let mut place = vec![None; form.atoms.len()];
+        let mut atoms = Vec::new();
+        for (slot, atom) in place.iter_mut().zip(&form.atoms) {
+            if atom.element != Element::HYDROGEN {
+                *slot = Some(atoms.len() as u32);
+                atoms.push(*atom);
+            }
+        }
+        let mut bonds: Vec<(u32, u32, u8)> = form
+            .bonds
+            .iter()
+            .filter_map(|bond| {
+                let (a, b) = (place[bond.a as usize]?, place[bond.b as usize]?);
+                Some((a.min(b), a.max(b), bond.order.unwrap_or(MOBILE)))
+            })
+            .collect();
+        bonds.sort_unstable();
+        Self { atoms, bonds }
+    }
+}
+
+/// What an atom carries beside element and hydrogens.
+type AtomMark = (Option<i8>, Option<u8>, Option<u16>, [u8; 3]);
+
+fn mark(atom: &NormalAtom) -> AtomMark {
+    (atom.charge, atom.open, atom.isotope, atom.labelled)
+}
+
+/// Both sides for the search; equal marks get equal numbers, whichever side they are on.
+fn sides(left: &Heavy, right: &Heavy) -> [Side; 2] {
+    let mut known: Vec<AtomMark> = left.atoms.iter().chain(&right.atoms).map(mark).collect();
+    known.sort_unstable();
+    known.dedup();
+    [left, right].map(|side| Side {
+        elements: side
+            .atoms
+            .iter()
+            .map(|atom| atom.element.number())
+            .collect(),
+        hydrogens: side.atoms.iter().map(|atom| atom.hydrogens).collect(),
+        marks: side
+            .atoms
+            .iter()
+            .map(|atom| known.binary_search(&mark(atom)).unwrap_or_else(|at| at) as u32)
+            .collect(),
+        bonds: side.bonds.clone(),
+    })
+}
+
+fn difference(left: &Heavy, right: &Heavy, pairs: &[u32]) -> BondDifference {
+    let source = |side: &Heavy, a: u32, b: u32| {
+        let (a, b) = (side.atoms[a as usize].source, side.atoms[b as usize].source);
+        (a.min(b), a.max(b))
+    };
+    let mut in_b: HashMap<(u32, u32), u8> = right
+        .bonds
+        .iter()
+        .map(|&(a, b, order)| ((a, b), order))
+        .collect();
+    let mut found = BondDifference::default();
+    for &(a, b, order) in &left.bonds {
+        let (x, y) = (pairs[a as usize], pairs[b as usize]);
+        match in_b.remove(&(x.min(y), x.max(y))) {
+            None => found.only_in_a.push(source(left, a, b)),
+            Some(other) => {
+                found.kept += 1;
+                if other != order {
+                    found
+                        .order_changed
+                        .push((source(left, a, b), source(right, x, y)));
+                }
+            }
+        }
+    }
+    found
+        .only_in_b
+        .extend(in_b.keys().map(|&(a, b)| source(right, a, b)));
+    found.only_in_a.sort_unstable();
+    found.only_in_b.sort_unstable();
+    found.order_changed.sort_unstable();
+    found
+}

@@ -1,0 +1,23 @@
+//! How two molecules are related, and what makes the difference.
+//!
+//! [`relate`] is cheap and gives the verdict; [`explain`] finds what accounts for it; [`wire`] is the
+//! output contract of docs/output.md.
+#![forbid(unsafe_code)]
+
+mod explain;
+mod mapping;
+mod relation;
+mod remarks;
+mod structure;
+mod words;
+
+pub mod wire;
+
+pub use crate::{
+    explain::{
+        BondDifference, BranchPoint, Branching, Explanation, HydrogenDifference, StereoChange,
+        StereoDifference, explain,
+    },
+    relation::{Relation, StereoKind, Verdict, relate},
+    structure::{PrepareError, Structure},
+};

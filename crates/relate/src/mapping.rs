@@ -1,0 +1,180 @@
+//! The atom map of least distance between two structures of the same elements.
+//!
+//! The distance of a map is, in this order of weight: (i) bonds between non-hydrogen atoms that only one structure has,
+//! (ii) kept bonds whose order differs, (iii) the summed difference in hydrogen count, (iv) atoms that differ in charge,
+//! isotope or radical. Finding the least distance is a quadratic assignment problem. It is solved exactly by branch and
+//! bound:
+//!
+//! - `pairs` lists what may be laid on what, `bound` turns it into one linear assignment per element (`assignment`) over
+//!   small neighbour matchings (`local`). The reward of a kept bond is shared between its two ends, and shares move until
+//!   the bound is tight: the dual ascent for quadratic assignment of Hahn & Grant, Oper. Res. 46, 912 (1998), applied to
+//!   graphs.
+//! - `search` branches on one atom at a time and leaves out what `symmetry` shows to be a repetition.
+//! - `grow` and `polish` give good maps early. They decide nothing.
+//!
+//! Invariant of the whole module: atom indices come from `problem`, which checks every index of the input, and pair and
+//! slot indices come from `pairs`, which is built from it. All other files index by them without a test.
+
+mod assignment;
+mod bound;
+mod domain;
+mod goal;
+mod grow;
+mod local;
+mod meter;
+mod pairs;
+mod polish;
+mod problem;
+mod search;
+mod shares;
+mod stage;
+mod symmetry;
+
+#[cfg(test)]
+mod oracle;
+#[cfg(test)]
+mod tests;
+
+use std::sync::atomic::AtomicBool;
+
+use self::{meter::Meter, problem::Problem};
+
+/// One structure as the search sees it: non-hydrogen atoms in canonical order.
+///
+/// The four lists of atoms are equally long. The order decides which of several equally good maps is returned, never the
+/// distance.
+#[derive(Debug, Clone, Default, PartialEq, Eq, PartialOrd, Ord)]
+pub(crate) struct Side {
+    /// Atomic number of each atom, or any other label that a map must keep.
+    pub elements: Vec<u8>,
+    /// Hydrogens on each atom.
+    pub hydrogens: Vec<u8>,
+    /// Charge, isotope and radical of each atom as one label: equal label, nothing differs.
+    pub marks: Vec<u32>,
+    /// Both atoms and the order class of each bond. Only equality of classes counts; mobile bonds are a class of their own.
+    pub bonds: Vec<(u32, u32, u8)>,
+}
+
+/// How far a map is from an isomorphism. Compares in the order of the fields.
+#[derive(Debug, Clone, Copy, Default, PartialEq, Eq, PartialOrd, Ord)]
+pub(crate) struct Distance {
+    /// (i) Bonds that only one structure has.
+    pub bonds: u32,
+    /// (ii) Kept bonds whose order class differs.
+    pub orders: u32,
+    /// (iii) Sum of the differences in hydrogen count.
+    pub hydrogens: u32,
+    /// (iv) Atoms whose marks differ.
+    pub marks: u32,
+}
+
+/// Which parts of a [`Distance`] are proved least, each with the parts before it held at their least.
+///
+/// A part is proved only if those before it are.
+#[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
+pub(crate) struct Proved {
+    /// (i) is least.
+    pub bonds: bool,
+    /// (ii) is least.
+    pub orders: bool,
+    /// (iii) is least.
+    pub hydrogens: bool,
+}
+
+/// The best map found, its distance, and what is known about it.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub(crate) struct Mapping {
+    /// For each atom of the first structure, the atom of the second.
+    pub pairs: Vec<u32>,
+    /// The distance of this map.
+    pub distance: Distance,
+    /// Which parts of the distance are least.
+    pub proved: Proved,
+    /// No map has fewer bonds that only one structure has.
+    pub bonds_at_least: u32,
+    /// The search steps that were spent; at most a little above the budget.
+    pub steps: u64,
+}
+
+/// How much the search may spend.
+#[derive(Debug, Clone, Copy)]
+pub(crate) struct Effort<'s> {
+    /// Budget in steps. A step is one small neighbour matching or as much other work, some 60 ns; it is counted, not
+    /// timed, so that results repeat.
+    pub steps: u64,
+    /// Raised from outside to end the search early, as if the budget had ended.
+    pub stop: Option<&'s AtomicBool>,
+}
+
+impl Default for Effort<'_> {
+    fn default() -> Self {
+        Self {
+            steps: 2_000_000,
+            stop: None,
+        }
+    }
+}
+
+/// Why two structures cannot be mapped.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, thiserror::Error)]
+#[non_exhaustive]
+pub(crate) enum MappingError {
+    /// The elements differ in number, so no one-to-one map keeps them.
+    #[error("the two structures do not have the same non-hydrogen atoms")]
+    ElementsDiffer,
+    /// The lists of a side that should be equally long are not.
+    #[error("a structure has {elements} elements, {hydrogens} hydrogen counts and {marks} marks")]
+    UnequalLists {
+        /// Length of the list of elements.
+        elements: usize,
+        /// Length of the list of hydrogen counts.
+        hydrogens: usize,
+        /// Length of the list of marks.
+        marks: usize,
+    },
+    /// A bond names an atom that is not there, joins an atom to itself, or occurs twice.
+    #[error(
+        "bond {index} joins atoms {first} and {second}, which is not possible or was said before"
+    )]
+    BadBond {
+        /// Place in the list of bonds, sorted by atoms.
+        index: usize,
+        /// The lower atom.
+        first: u32,
+        /// The higher atom.
+        second: u32,
+    },
+}
+
+/// Finds the map of least distance from `a` to `b`.
+///
+/// # Returns
+/// The map, its distance and which parts of it are proved least. With the sides exchanged the result is the inverse map.
+/// Among equally distant maps that were met, the one with the lexicographically least list of pairs (of the lesser side)
+/// is taken. When the budget ends first, the best map found is returned and the open parts are not `proved`.
+/// # Errors
+/// See [`MappingError`].
+/// # Complexity
+/// Exponential at worst, cut off by the budget. Memory grows with the product of the two bond counts up to a fixed limit;
+/// structures beyond it get a map from a linear method, proved only if it happens to be perfect.
+pub(crate) fn map_atoms(a: &Side, b: &Side, effort: &Effort<'_>) -> Result<Mapping, MappingError> {
+    let (a, b) = (problem::normal(a), problem::normal(b));
+    // Solving always from the lesser side makes the two directions mirror each other.
+    let swapped = b < a;
+    let (left, right) = if swapped { (&b, &a) } else { (&a, &b) };
+    let problem = Problem::new(left, right)?;
+    let mut meter = Meter::new(effort);
+    let mut mapping = stage::solve(&problem, &mut meter);
+    if swapped {
+        mapping.pairs = inverse(&mapping.pairs);
+    }
+    Ok(mapping)
+}
+
+fn inverse(map: &[u32]) -> Vec<u32> {
+    let mut inverse = vec![0; map.len()];
+    for (from, &to) in (0..).zip(map) {
+        inverse[to as usize] = from;
+    }
+    inverse
+}

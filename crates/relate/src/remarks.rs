@@ -1,0 +1,179 @@
+//! Remarks on records and pairs: a stable code, the atoms, a sentence.
+
+use molkin_graph::{Dropped, Mark, Remark, Undrawable};
+
+use crate::{Relation, Structure};
+
+/// A remark about one record. Atoms from 0; in the text they count from 1.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub(crate) struct Noted {
+    pub(crate) code: &'static str,
+    pub(crate) atoms: Vec<u32>,
+    pub(crate) text: String,
+}
+
+/// "atom 3", "atoms 3 and 4", "atoms 3, 4 and 7".
+pub(crate) fn atoms_in_words(atoms: &[u32]) -> String {
+    let numbers: Vec<String> = atoms.iter().map(|atom| (atom + 1).to_string()).collect();
+    match numbers.as_slice() {
+        [] => "no atom".to_owned(),
+        [one] => format!("atom {one}"),
+        [rest @ .., last] => format!("atoms {} and {last}", rest.join(", ")),
+    }
+}
+
+/// What is to be said about a record on its own.
+pub(crate) fn of_record(structure: &Structure) -> Vec<Noted> {
+    structure
+        .canonical()
+        .remarks()
+        .iter()
+        .filter_map(of_remark)
+        .collect()
+}
+
+fn of_remark(remark: &Remark) -> Option<Noted> {
+    let (code, atoms, text) = match remark {
+        Remark::MarkDropped { reason, atoms } => {
+            let (code, why) = dropped(*reason);
+            let text = format!(
+                "The stereo mark at {} counts for nothing: {why}.",
+                atoms_in_words(atoms)
+            );
+            (code, atoms.clone(), text)
+        }
+        Remark::MarkIdle { atoms } => (
+            "mark-idle",
+            atoms.clone(),
+            format!(
+                "The stereo mark at {} says nothing: by symmetry, or because other elements are unmarked, both arrangements give the same.",
+                atoms_in_words(atoms)
+            ),
+        ),
+        Remark::ImpossibleCage { atoms } => (
+            "impossible-cage",
+            atoms.clone(),
+            format!(
+                "The bridgeheads ({}) are marked in a way that rings of this size cannot have; the marks count as drawn.",
+                atoms_in_words(atoms)
+            ),
+        ),
+        Remark::PartlyMarkedMobileBonds { atoms } => (
+            "partly-marked-mobile-bonds",
+            atoms.clone(),
+            format!(
+                "Only some of the mobile double bonds carry a mark; those at {} do not.",
+                atoms_in_words(atoms)
+            ),
+        ),
+        Remark::BondShiftRing { atoms } => (
+            "bond-shift",
+            atoms.clone(),
+            format!(
+                "The two bond-shift forms of the ring ({}) count as one structure.",
+                atoms_in_words(atoms)
+            ),
+        ),
+        Remark::NotDrawn(Undrawable::HinderedAxis { atoms }) => (
+            "axis-not-marked",
+            atoms.to_vec(),
+            format!(
+                "Rotation about the bond between {} may be hindered; the record does not say which arrangement is meant.",
+                atoms_in_words(atoms)
+            ),
+        ),
+        Remark::NotDrawn(Undrawable::MetalCentre { atom }) => (
+            "metal-not-marked",
+            vec![*atom],
+            format!(
+                "The arrangement about the metal (atom {}) is not said by this record.",
+                atom + 1
+            ),
+        ),
+        _ => return None,
+    };
+    Some(Noted { code, atoms, text })
+}
+
+fn dropped(reason: Dropped) -> (&'static str, &'static str) {
+    match reason {
+        Dropped::AmineNitrogen => ("mark-on-amine-nitrogen", "amine nitrogen inverts"),
+        Dropped::LabileDoubleBond => (
+            "mark-on-labile-double-bond",
+            "the geometry of this double bond is not kept",
+        ),
+        Dropped::MobileHydrogen => (
+            "mark-depends-on-mobile-hydrogen",
+            "it depends on which of two like atoms bears a hydrogen",
+        ),
+        Dropped::SmallRing => (
+            "mark-in-small-ring",
+            "in a ring of fewer than eight atoms there is no choice",
+        ),
+        Dropped::Misfit => ("mark-misfit", "it does not fit the ligands that are drawn"),
+        _ => ("mark-not-stereogenic", "the place cannot be stereogenic"),
+    }
+}
+
+/// The remark that identical but open records get: what each leaves unmarked.
+pub(crate) fn unmarked(structure: &Structure) -> Option<Noted> {
+    let mut atoms: Vec<u32> = structure
+        .canonical()
+        .stereo_elements()
+        .iter()
+        .filter(|element| element.mark == Mark::Absent && !element.quiet)
+        .flat_map(|element| element.centres)
+        .collect();
+    atoms.sort_unstable();
+    atoms.dedup();
+    (!atoms.is_empty()).then(|| Noted {
+        code: "unmarked-stereo",
+        text: format!("Stereogenic but unmarked: {}.", atoms_in_words(&atoms)),
+        atoms,
+    })
+}
+
+/// Remarks on a pair as such.
+pub(crate) fn of_pair(a: &Structure, b: &Structure, relation: Relation) -> Vec<Noted> {
+    let mut notes = Vec::new();
+    if relation == Relation::Constitutional && metal_bonds(a) != metal_bonds(b) {
+        notes.push(Noted {
+            code: "metal-bonds-differ",
+            atoms: Vec::new(),
+            text: "One record draws a bond to a metal where the other draws ions or none; metals keep their bonds as drawn.".to_owned(),
+        });
+    }
+    if relation == Relation::Identical && multiplicities(a) != multiplicities(b) {
+        notes.push(Noted {
+            code: "multiplicity-differs",
+            atoms: Vec::new(),
+            text: "The records state different spin multiplicities; these do not decide identity."
+                .to_owned(),
+        });
+    }
+    notes
+}
+
+fn metal_bonds(structure: &Structure) -> usize {
+    let is_metal = |atom: u32| {
+        structure
+            .molecule()
+            .atom(atom)
+            .is_some_and(|atom| atom.element.is_metal())
+    };
+    structure
+        .molecule()
+        .bonds()
+        .filter(|&(a, b, _)| is_metal(a) || is_metal(b))
+        .count()
+}
+
+fn multiplicities(structure: &Structure) -> Vec<u8> {
+    let mut list: Vec<u8> = structure
+        .molecule()
+        .atoms()
+        .filter_map(|atom| atom.multiplicity)
+        .collect();
+    list.sort_unstable();
+    list
+}

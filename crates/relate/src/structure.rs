@@ -1,0 +1,101 @@
+//! One side of a comparison, prepared once.
+
+use molkin_graph::{Canonical, Element, Formula, Molecule, OrderError, Orderer};
+use thiserror::Error;
+
+/// Why a record cannot be compared.
+#[derive(Debug, Clone, PartialEq, Eq, Error)]
+#[non_exhaustive]
+pub enum PrepareError {
+    /// The record has unknown atoms, so it is not one structure.
+    #[error("the record has unknown atoms (*), so it is not one structure")]
+    NotOneStructure {
+        /// The unknown atoms, from 0.
+        atoms: Vec<u32>,
+    },
+    /// No canonical order within the limits.
+    #[error(transparent)]
+    Order(#[from] OrderError),
+}
+
+impl PrepareError {
+    /// A stable name of the kind of error, in kebab-case.
+    pub fn code(&self) -> &'static str {
+        match self {
+            Self::NotOneStructure { .. } => "not-one-structure",
+            Self::Order(OrderError::StepLimit { .. }) => "order-step-limit",
+            Self::Order(OrderError::TooManyOpenElements { .. }) => "open-element-limit",
+            Self::Order(OrderError::TooManyAtoms { .. }) => "atom-limit",
+            Self::Order(_) => "out-of-range",
+        }
+    }
+}
+
+/// A molecule with its canonical view: what every comparison starts from.
+#[derive(Debug, Clone)]
+pub struct Structure {
+    molecule: Molecule,
+    canonical: Canonical,
+    formula: Formula,
+    isotopes: Vec<(Element, u16, u32)>,
+}
+
+impl Structure {
+    /// Prepares a molecule.
+    ///
+    /// # Errors
+    /// [`PrepareError::NotOneStructure`] for unknown atoms, [`PrepareError::Order`] when a limit is
+    /// reached.
+    pub fn new(orderer: &mut Orderer, molecule: Molecule) -> Result<Self, PrepareError> {
+        let unknown: Vec<u32> = molecule
+            .atoms()
+            .zip(0..)
+            .filter(|(atom, _)| atom.element == Element::WILDCARD)
+            .map(|(_, index)| index)
+            .collect();
+        if !unknown.is_empty() {
+            return Err(PrepareError::NotOneStructure { atoms: unknown });
+        }
+        let canonical = orderer.order(&molecule)?;
+        let formula = molecule.formula();
+        let isotopes = isotopes(&molecule);
+        Ok(Self {
+            molecule,
+            canonical,
+            formula,
+            isotopes,
+        })
+    }
+
+    /// The molecule as drawn.
+    pub fn molecule(&self) -> &Molecule {
+        &self.molecule
+    }
+
+    /// Its canonical view.
+    pub fn canonical(&self) -> &Canonical {
+        &self.canonical
+    }
+
+    /// Its formula; isotopes count as their element.
+    pub fn formula(&self) -> &Formula {
+        &self.formula
+    }
+
+    /// How many atoms of each stated nuclide the record has: element, mass number, count; sorted.
+    pub fn isotopes(&self) -> &[(Element, u16, u32)] {
+        &self.isotopes
+    }
+}
+
+fn isotopes(molecule: &Molecule) -> Vec<(Element, u16, u32)> {
+    let mut stated: Vec<(Element, u16)> = molecule
+        .atoms()
+        .filter_map(|atom| Some((atom.element, atom.isotope?)))
+        .collect();
+    stated.sort_unstable();
+    stated
+        .chunk_by(|a, b| a == b)
+        .map(|group| (group[0].0, group[0].1, group.len() as u32))
+        .collect()
+}

@@ -1,0 +1,87 @@
+//! The output contract, version 1: what JSON says, field by field (docs/output.md).
+//!
+//! Atoms count from 1 here, in input order. Fields that do not apply are absent.
+
+mod describe;
+mod pair;
+
+use serde::Serialize;
+
+pub use describe::{Describe, Masses, Stereo, Unsaturation, describe};
+pub use pair::{
+    BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Pair, StereoEntry, compare,
+};
+
+/// The version of the contract.
+pub const VERSION: u32 = 1;
+
+/// Which record of a pair a note or an error is about.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[serde(rename_all = "lowercase")]
+pub enum Which {
+    /// The first.
+    A,
+    /// The second.
+    B,
+}
+
+/// Where a record came from, and what it is.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+pub struct Input {
+    /// File name, `-`, or the SMILES text as given.
+    pub source: String,
+    /// Number of the record in its source, from 1.
+    pub record: u64,
+    /// Name or title; empty where there is none.
+    pub name: String,
+    /// Formula in Hill order.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub formula: Option<String>,
+    /// Canonical SMILES.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub smiles: Option<String>,
+}
+
+/// A remark about a record or a pair.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+pub struct Note {
+    /// A stable name in kebab-case.
+    pub code: String,
+    /// The record, where it is about one of a pair.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub input: Option<Which>,
+    /// Atoms, from 1.
+    pub atoms: Vec<u32>,
+    /// One sentence.
+    pub text: String,
+}
+
+/// Why a record could not be read or compared.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+pub struct Error {
+    /// The record, where it is one of a pair.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub input: Option<Which>,
+    /// Line of the source, from 1.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub line: Option<u32>,
+    /// Byte column, from 1.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub column: Option<u32>,
+    /// A stable name in kebab-case.
+    pub code: String,
+    /// What is wrong and what was expected.
+    pub message: String,
+}
+
+fn from_one(atoms: &[u32]) -> Vec<u32> {
+    atoms.iter().map(|atom| atom + 1).collect()
+}
+
+fn element_name(shape: molkin_graph::Shape) -> &'static str {
+    match shape {
+        molkin_graph::Shape::Tetrahedral => "tetrahedral",
+        molkin_graph::Shape::DoubleBond => "double-bond",
+        molkin_graph::Shape::Axis => "axis",
+    }
+}

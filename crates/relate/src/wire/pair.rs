@@ -1,0 +1,384 @@
+//! One compared pair.
+
+use molkin_formats::{Note as ReadNote, Record, smiles};
+use molkin_graph::{Limits, OrderError, Orderer};
+use serde::Serialize;
+
+use crate::{
+    Branching as DomainBranching, Explanation, Relation, Structure, explain, relate,
+    remarks::{self, Noted},
+    words,
+};
+
+use super::{Error, Input, Note, VERSION, Which, element_name, from_one};
+
+/// The result for one pair. Either `errors` or the fields from `relation` on are there.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+pub struct Pair {
+    /// Contract version.
+    pub version: u32,
+    /// The first record.
+    pub a: Input,
+    /// The second record.
+    pub b: Input,
+    /// `identical`, `stereo`, `constitutional` or `not-isomers`.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub relation: Option<&'static str>,
+    /// The kind, where the relation has kinds.
+    #[serde(skip_serializing_if = "is_error")]
+    pub kind: Kind,
+    /// All kinds that hold.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub aspects: Option<Vec<&'static str>>,
+    /// Identical, but more than one sample fits.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub open: Option<bool>,
+    /// One or two plain sentences.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub summary: Option<String>,
+    /// Non-hydrogen atoms of A and B.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub atom_map: Option<Vec<[u32; 2]>>,
+    /// Bonds under the map.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub bonds: Option<Bonds>,
+    /// Mapped atoms with different hydrogen counts.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub hydrogens: Option<Vec<Hydrogens>>,
+    /// How both records branch.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub branch_points: Option<BranchPoints>,
+    /// Stereo elements that differ.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub stereo: Option<Vec<StereoEntry>>,
+    /// Remarks.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub notes: Option<Vec<Note>>,
+    /// Why there is no verdict.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub errors: Option<Vec<Error>>,
+}
+
+/// The kind field: null for relations without kinds, absent beside errors.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[serde(untagged)]
+pub enum Kind {
+    /// A kind, or null.
+    Verdict(Option<&'static str>),
+    /// No verdict at all.
+    NoVerdict,
+}
+
+fn is_error(kind: &Kind) -> bool {
+    *kind == Kind::NoVerdict
+}
+
+/// A bond of A and the bond of B it is mapped to.
+pub type BondPair = [[u32; 2]; 2];
+
+/// Bonds under the map.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+pub struct Bonds {
+    /// How many both have, changed orders included.
+    pub kept: usize,
+    /// Bonds that only A has, in A's numbers.
+    pub only_in_a: Vec<[u32; 2]>,
+    /// Bonds that only B has, in B's numbers.
+    pub only_in_b: Vec<[u32; 2]>,
+    /// Kept bonds of different order.
+    pub order_changed: Vec<BondPair>,
+    /// Whether the distance is proved least.
+    pub minimal: bool,
+    /// Proved lower bound on the bonds that only one has.
+    pub at_least: usize,
+}
+
+/// A mapped pair of atoms with different hydrogen counts.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+pub struct Hydrogens {
+    /// Atom of A.
+    pub a: u32,
+    /// Atom of B.
+    pub b: u32,
+    /// Hydrogens in A.
+    pub count_a: u8,
+    /// Hydrogens in B.
+    pub count_b: u8,
+}
+
+/// How both records branch.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+pub struct BranchPoints {
+    /// The first record.
+    pub a: Branching,
+    /// The second record.
+    pub b: Branching,
+}
+
+/// How one record branches.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+pub struct Branching {
+    /// Atoms with three or more non-hydrogen neighbours.
+    pub points: Vec<BranchPoint>,
+    /// A longest chain of each component without rings.
+    pub chains: Vec<Vec<u32>>,
+}
+
+/// A branch point.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+pub struct BranchPoint {
+    /// The atom.
+    pub atom: u32,
+    /// Sizes of the branches outside rings, in non-hydrogen atoms.
+    pub branches: Vec<usize>,
+    /// Bonds of the atom that lie in rings.
+    pub ring_bonds: usize,
+}
+
+/// A stereo element that differs.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+pub struct StereoEntry {
+    /// Centre or ends in A.
+    pub a: Vec<u32>,
+    /// Centre or ends in B.
+    pub b: Vec<u32>,
+    /// `tetrahedral`, `double-bond` or `axis`.
+    pub element: &'static str,
+    /// `inverted`, `marked-only-in-a` or `marked-only-in-b`.
+    pub change: &'static str,
+}
+
+/// Compares two records and says it in the terms of the contract. With `brief` the map and all that
+/// needs it are left out.
+///
+/// What cannot be compared comes back with `errors`; this function does not fail.
+pub fn compare(
+    orderer: &mut Orderer,
+    limits: &Limits,
+    inputs: [(&str, u64, Result<Record, Error>); 2],
+    brief: bool,
+) -> Pair {
+    let mut pair = Pair::unsettled();
+    let mut errors = Vec::new();
+    let mut sides = Vec::new();
+    for (which, (source, number, outcome)) in [Which::A, Which::B].into_iter().zip(inputs) {
+        let mut input = Input {
+            source: source.to_owned(),
+            record: number,
+            name: String::new(),
+            formula: None,
+            smiles: None,
+        };
+        match outcome {
+            Err(error) => errors.push(Error {
+                input: Some(which),
+                ..error
+            }),
+            Ok(record) => {
+                input.name = record.name;
+                match Structure::new(orderer, record.molecule) {
+                    Err(error) => errors.push(Error {
+                        input: Some(which),
+                        line: None,
+                        column: None,
+                        code: error.code().to_owned(),
+                        message: error.to_string(),
+                    }),
+                    Ok(structure) => {
+                        input.formula = Some(structure.formula().to_string());
+                        input.smiles = Some(smiles::write(&structure.canonical().form()).text);
+                        sides.push((structure, record.notes));
+                    }
+                }
+            }
+        }
+        match which {
+            Which::A => pair.a = input,
+            Which::B => pair.b = input,
+        }
+    }
+    if let [(a, notes_a), (b, notes_b)] = &sides[..] {
+        if let Err(error) = pair.settle(orderer, limits, [(a, notes_a), (b, notes_b)], brief) {
+            errors.push(Error {
+                input: None,
+                line: None,
+                column: None,
+                code: "order-step-limit".to_owned(),
+                message: error.to_string(),
+            });
+        }
+    }
+    if !errors.is_empty() {
+        pair.errors = Some(errors);
+    }
+    pair
+}
+
+impl Pair {
+    fn unsettled() -> Self {
+        let nothing = Input {
+            source: String::new(),
+            record: 0,
+            name: String::new(),
+            formula: None,
+            smiles: None,
+        };
+        Self {
+            version: VERSION,
+            a: nothing.clone(),
+            b: nothing,
+            relation: None,
+            kind: Kind::NoVerdict,
+            aspects: None,
+            open: None,
+            summary: None,
+            atom_map: None,
+            bonds: None,
+            hydrogens: None,
+            branch_points: None,
+            stereo: None,
+            notes: None,
+            errors: None,
+        }
+    }
+
+    fn settle(
+        &mut self,
+        orderer: &mut Orderer,
+        limits: &Limits,
+        [(a, notes_a), (b, notes_b)]: [(&Structure, &Vec<ReadNote>); 2],
+        brief: bool,
+    ) -> Result<(), OrderError> {
+        let verdict = relate(orderer, a, b)?;
+        let explained = (!brief).then(|| explain(a, b, verdict.relation, limits));
+        self.relation = Some(verdict.relation.as_str());
+        self.kind = Kind::Verdict(verdict.relation.kind());
+        self.aspects = Some(verdict.relation.kind().into_iter().collect());
+        self.open = Some(verdict.open);
+        self.summary = Some(words::summary(a, b, &verdict, explained.as_ref()));
+        let mut notes = Vec::new();
+        for (which, structure, read) in [(Which::A, a, notes_a), (Which::B, b, notes_b)] {
+            notes.extend(read.iter().map(|note| Note::of_reader(note, Some(which))));
+            let own = remarks::of_record(structure);
+            let unmarked = verdict.open.then(|| remarks::unmarked(structure)).flatten();
+            notes.extend(
+                own.into_iter()
+                    .chain(unmarked)
+                    .map(|n| Note::of(n, Some(which))),
+            );
+        }
+        notes.extend(
+            remarks::of_pair(a, b, verdict.relation)
+                .into_iter()
+                .map(|n| Note::of(n, None)),
+        );
+        if let Some(explained) = explained {
+            self.add_explanation(verdict.relation, explained, &mut notes);
+        }
+        self.notes = Some(notes);
+        Ok(())
+    }
+
+    fn add_explanation(
+        &mut self,
+        relation: Relation,
+        explained: Explanation,
+        notes: &mut Vec<Note>,
+    ) {
+        if matches!(relation, Relation::Identical | Relation::NotIsomers) {
+            return;
+        }
+        if !explained.stereo_least {
+            notes.push(Note::of(Noted {
+                code: "stereo-map-limit",
+                atoms: Vec::new(),
+                text: "There are too many equivalent atom maps to look at all; another may disturb fewer stereo elements.".to_owned(),
+            }, None));
+        }
+        self.atom_map = Some(
+            explained
+                .atom_map
+                .iter()
+                .map(|&(a, b)| [a + 1, b + 1])
+                .collect(),
+        );
+        let bond = |&(a, b): &(u32, u32)| [a + 1, b + 1];
+        self.bonds = explained.bonds.map(|bonds| Bonds {
+            kept: bonds.kept,
+            only_in_a: bonds.only_in_a.iter().map(bond).collect(),
+            only_in_b: bonds.only_in_b.iter().map(bond).collect(),
+            order_changed: bonds
+                .order_changed
+                .iter()
+                .map(|(a, b)| [bond(a), bond(b)])
+                .collect(),
+            minimal: bonds.minimal,
+            at_least: bonds.at_least,
+        });
+        self.hydrogens = Some(
+            explained
+                .hydrogens
+                .iter()
+                .map(|h| Hydrogens {
+                    a: h.a + 1,
+                    b: h.b + 1,
+                    count_a: h.count_a,
+                    count_b: h.count_b,
+                })
+                .collect(),
+        );
+        self.branch_points = explained.branching.map(|[a, b]| BranchPoints {
+            a: Branching::of(&a),
+            b: Branching::of(&b),
+        });
+        if relation != Relation::Constitutional {
+            self.stereo = Some(
+                explained
+                    .stereo
+                    .iter()
+                    .map(|difference| StereoEntry {
+                        a: from_one(&difference.a),
+                        b: from_one(&difference.b),
+                        element: element_name(difference.shape),
+                        change: difference.change.as_str(),
+                    })
+                    .collect(),
+            );
+        }
+    }
+}
+
+impl Branching {
+    fn of(branching: &DomainBranching) -> Self {
+        let points = branching.points.iter().map(|point| BranchPoint {
+            atom: point.atom + 1,
+            branches: point.branches.clone(),
+            ring_bonds: point.ring_bonds,
+        });
+        let chains = branching.chains.iter().map(|chain| from_one(chain));
+        Self {
+            points: points.collect(),
+            chains: chains.collect(),
+        }
+    }
+}
+
+impl Note {
+    pub(super) fn of(noted: Noted, input: Option<Which>) -> Self {
+        Self {
+            code: noted.code.to_owned(),
+            input,
+            atoms: from_one(&noted.atoms),
+            text: noted.text,
+        }
+    }
+
+    pub(super) fn of_reader(note: &ReadNote, input: Option<Which>) -> Self {
+        Self {
+            code: note.code.to_owned(),
+            input,
+            atoms: from_one(&note.atoms),
+            text: note.text.clone(),
+        }
+    }
+}

@@ -1,0 +1,92 @@
+//! The verdict in plain sentences.
+
+use crate::{Explanation, Relation, StereoKind, Structure, Verdict};
+
+/// One or two sentences for a chemist.
+pub(crate) fn summary(
+    a: &Structure,
+    b: &Structure,
+    verdict: &Verdict,
+    explained: Option<&Explanation>,
+) -> String {
+    match verdict.relation {
+        Relation::Identical if verdict.open => {
+            "The two records say the same, but they leave stereo open: the samples may still differ.".to_owned()
+        }
+        Relation::Identical => "The two records are the same compound.".to_owned(),
+        Relation::Stereo(kind) => stereo(kind, explained),
+        Relation::Constitutional => constitutional(a, explained),
+        Relation::NotIsomers => not_isomers(a, b),
+    }
+}
+
+fn stereo(kind: StereoKind, explained: Option<&Explanation>) -> String {
+    let verdict = match kind {
+        StereoKind::Enantiomers => "Enantiomers: mirror images that do not coincide.",
+        StereoKind::Diastereomers => {
+            "Diastereomers: the same connectivity, a different arrangement in space, and not mirror images."
+        }
+        StereoKind::Undetermined => {
+            "Undetermined: the same connectivity; as marked, the two may or may not be the same stereoisomer."
+        }
+        StereoKind::Unresolved => {
+            "Unresolved: surely different stereoisomers, but the marks do not settle whether they are mirror images."
+        }
+    };
+    let count = explained.map_or(0, |e| e.stereo.len());
+    match count {
+        0 => verdict.to_owned(),
+        1 => format!("{verdict} One stereo element differs."),
+        n => format!("{verdict} {n} stereo elements differ."),
+    }
+}
+
+fn constitutional(a: &Structure, explained: Option<&Explanation>) -> String {
+    let formula = a.formula();
+    let verdict = format!(
+        "Constitutional isomers: the same formula {formula}, but the atoms are connected differently."
+    );
+    let Some(bonds) = explained.and_then(|e| e.bonds.as_ref()) else {
+        return verdict;
+    };
+    let (only_a, only_b) = (bonds.only_in_a.len(), bonds.only_in_b.len());
+    let how = if bonds.minimal {
+        "At the least"
+    } else {
+        "One way to see it:"
+    };
+    match (only_a + only_b, bonds.order_changed.len()) {
+        (0, 0) => {
+            format!("{verdict} All bonds agree; hydrogens, charges or isotopes sit elsewhere.")
+        }
+        (0, n) => format!("{verdict} {how} {} of different order.", counted(n, "bond")),
+        _ => format!(
+            "{verdict} {how} {} only in A and {} only in B.",
+            counted(only_a, "bond"),
+            counted(only_b, "bond")
+        ),
+    }
+}
+
+fn counted(count: usize, noun: &str) -> String {
+    match count {
+        0 => format!("no {noun}"),
+        1 => format!("one {noun}"),
+        n => format!("{n} {noun}s"),
+    }
+}
+
+fn not_isomers(a: &Structure, b: &Structure) -> String {
+    let (left, right) = (a.formula(), b.formula());
+    if left != right {
+        let same_atoms = left.iter().eq(right.iter());
+        let why = if same_atoms {
+            "the net charge differs"
+        } else {
+            "the molecular formulae differ"
+        };
+        format!("Not isomers: {why} ({left} and {right}).")
+    } else {
+        format!("Not isomers: the same elements ({left}), but a different isotopic composition.")
+    }
+}
