@@ -1,1 +1,37 @@
-//! Shared helpers of the end-to-end tests.
+//! What the end-to-end tests and benches share.
+//!
+//! Everything goes through the public interfaces of the three libraries. Committed cases lie in
+//! `fixtures/` and on the pages of `docs/`; published data that cannot be committed lie beside the
+//! repository, in `../shared/data`, and tests on them say so and end where it is absent.
+#![forbid(unsafe_code)]
+#![allow(
+    clippy::panic,
+    clippy::unwrap_used,
+    reason = "a helper of a test fails by panicking"
+)]
+
+mod alkanes;
+mod comparer;
+mod distance;
+mod molfile;
+mod numbers;
+mod pairs;
+mod renumber;
+mod small;
+mod stereo;
+mod tally;
+mod text;
+
+pub use crate::{
+    alkanes::{Tree, alkanes},
+    comparer::Comparer,
+    distance::{least_distance, stated_distance},
+    molfile::renumbered_molfile,
+    numbers::Numbers,
+    pairs::{Expected, Pair, definition_pairs, fixture_pairs},
+    renumber::{renumbered, renumbered_form},
+    small::small_isomers,
+    stereo::{all_markings, mirrored},
+    tally::Tally,
+    text::{Table, first_word, read_text, shared, workspace},
+};

@@ -1,2 +1,20 @@
-//! molkin
-fn main() {}
+//! molkin at the command line: arguments in, results to standard output, words to standard error.
+#![forbid(unsafe_code)]
+
+mod args;
+mod compare;
+mod describe;
+mod exit;
+mod input;
+mod keys;
+mod output;
+mod report;
+mod run;
+
+use std::process::ExitCode;
+
+use clap::Parser;
+
+fn main() -> ExitCode {
+    run::run(&args::Arguments::parse()).into()
+}

@@ -6,7 +6,6 @@
 
 mod error;
 mod excerpt;
-mod limits;
 mod lines;
 mod note;
 mod record;
@@ -19,7 +18,6 @@ pub mod source;
 
 pub use crate::{
     error::{ReadError, ReadErrorKind},
-    limits::ReadLimits,
     note::Note,
     record::Record,
     span::Span,

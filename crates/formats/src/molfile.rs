@@ -28,8 +28,9 @@ use block::Fault;
 pub(crate) use block::{Block, Line, Lines};
 pub(crate) use field::decode;
 use header::Version;
+use molkin_graph::Limits;
 
-use crate::{Note, ReadError, ReadErrorKind, ReadLimits, Record};
+use crate::{Note, ReadError, ReadErrorKind, Record};
 
 /// How molfiles are read.
 ///
@@ -38,14 +39,14 @@ use crate::{Note, ReadError, ReadErrorKind, ReadLimits, Record};
 /// use molkin_formats::molfile::{ReadOptions, ValenceTable};
 ///
 /// let options = ReadOptions { valences: ValenceTable::Late, ..ReadOptions::default() };
-/// assert_eq!(options.limits, molkin_formats::ReadLimits::default());
+/// assert_eq!(options.limits.atoms, molkin_graph::Limits::default().atoms);
 /// ```
 #[derive(Debug, Clone, Copy, Default)]
 pub struct ReadOptions {
     /// The table from which hydrogens follow that the file does not write.
     pub valences: ValenceTable,
     /// Bounds on the record.
-    pub limits: ReadLimits,
+    pub limits: Limits,
 }
 
 /// Reads one molfile with the default [`ReadOptions`].

@@ -47,6 +47,12 @@ pub enum OrderError {
         /// The limit.
         limit: usize,
     },
+    /// A vertex has more neighbours than the search can count.
+    #[error("an atom has more than 511 neighbours")]
+    TooManyNeighbours,
+    /// The stop flag was raised.
+    #[error("stopped from outside")]
+    Stopped,
     /// An atom's charge, isotope or hydrogen count is outside what a certificate holds.
     #[error("charge, isotope or hydrogen count of atom {atom} is out of range")]
     OutOfRange {
@@ -64,7 +70,7 @@ pub struct Orderer {
 }
 
 /// The canonical view of one molecule.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Default)]
 pub struct Canonical {
     pub(crate) skeleton: Skeleton,
     pub(crate) mesomer: Mesomer,
@@ -103,55 +109,70 @@ impl Orderer {
     /// McKay & Piperno, J. Symb. Comput. 2014, 60, 94; the treatment of stereo and of open claims is
     /// described in docs/architecture.md.
     pub fn order(&mut self, molecule: &Molecule) -> Result<Canonical, OrderError> {
+        let mut canonical = Canonical::default();
+        self.order_into(molecule, &mut canonical)?;
+        Ok(canonical)
+    }
+
+    /// As [`Orderer::order`], into a view whose memory is reused. After an error the view holds
+    /// nothing of use.
+    ///
+    /// # Errors
+    /// As [`Orderer::order`].
+    pub fn order_into(
+        &mut self,
+        molecule: &Molecule,
+        view: &mut Canonical,
+    ) -> Result<(), OrderError> {
         if molecule.atom_count() > self.limits.atoms {
             return Err(OrderError::TooManyAtoms {
                 limit: self.limits.atoms,
             });
         }
-        let mut skeleton = Skeleton::default();
-        skeleton.load(molecule);
-        let mut mesomer = Mesomer::default();
-        mesomer.load(&mut skeleton);
+        view.skeleton.load(molecule);
+        view.mesomer.load(&mut view.skeleton);
         let mut steps = 0;
-        let constitution = self.label(&skeleton, &mesomer, false, &mut steps)?;
-        let labelled = skeleton
+        self.label(
+            &view.skeleton,
+            &view.mesomer,
+            false,
+            &mut steps,
+            &mut view.constitution,
+        )?;
+        let labelled = view
+            .skeleton
             .atoms
             .iter()
             .any(|atom| atom.isotope.is_some() || atom.labelled > 0);
-        let bare = if labelled {
-            self.label(&skeleton, &mesomer, true, &mut steps)?
+        if labelled {
+            self.label(
+                &view.skeleton,
+                &view.mesomer,
+                true,
+                &mut steps,
+                &mut view.bare,
+            )?;
         } else {
-            constitution.clone()
-        };
-        let mut perception = Perception::default();
-        perception.load(&skeleton, &mesomer, molecule.drawn_stereo());
-        perception.keep_unequal_axes(&skeleton, &bare.generators);
-        let variables = claims::variables(&perception);
-        let outcome = Solver {
+            view.bare.clone_from(&view.constitution);
+        }
+        view.perception
+            .load(&view.skeleton, &view.mesomer, molecule.drawn_stereo());
+        view.perception
+            .keep_unequal_axes(&view.skeleton, &view.bare.generators);
+        view.variables = claims::variables(&view.perception);
+        Solver {
             graph: &mut self.graph,
             labeller: &mut self.labeller,
-            perception: &perception,
-            variables: &variables,
-            step_limit: self.limits.order_steps,
+            perception: &view.perception,
+            variables: &view.variables,
+            limits: &self.limits,
             steps: &mut steps,
-            open_limit: self.limits.open_elements,
         }
-        .solve(&bare)?;
-        let constitution_key = Key::of(0, std::iter::once(&constitution.certificate[..]));
-        let certificates = outcome.claims.certificates.iter().map(Vec::as_slice);
-        let compound_key = Key::of(1, certificates);
-        Ok(Canonical {
-            skeleton,
-            mesomer,
-            perception,
-            variables,
-            claims: outcome.claims,
-            constitution,
-            bare,
-            written: outcome.written,
-            constitution_key,
-            compound_key,
-        })
+        .solve(&view.bare, &mut view.claims, &mut view.written)?;
+        let constitution = &view.constitution.certificate[..];
+        view.constitution_key = Key::of(0, std::iter::once(constitution));
+        view.compound_key = Key::of(1, view.claims.certificates.iter().map(Vec::as_slice));
+        Ok(())
     }
 
     fn label(
@@ -160,14 +181,11 @@ impl Orderer {
         mesomer: &Mesomer,
         isotopes: bool,
         steps: &mut u64,
-    ) -> Result<Labelling, OrderError> {
+        labelling: &mut Labelling,
+    ) -> Result<(), OrderError> {
         colour::load(&mut self.graph, skeleton, mesomer, isotopes)?;
-        let mut labelling = Labelling::default();
-        let limit = self.limits.order_steps;
         self.labeller
-            .label(&self.graph, limit, steps, &mut labelling)
-            .map_err(|_| OrderError::StepLimit { limit })?;
-        Ok(labelling)
+            .label(&self.graph, &self.limits, steps, labelling)
     }
 }
 

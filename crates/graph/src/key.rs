@@ -12,7 +12,7 @@ pub const KEY_VERSION: u8 = 1;
 /// certificate.
 ///
 /// Written as the version, a hyphen and 32 hexadecimal digits.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash)]
+#[derive(Debug, Clone, Copy, Default, PartialEq, Eq, PartialOrd, Ord, Hash)]
 pub struct Key([u8; 16]);
 
 impl Key {

@@ -1,24 +1,35 @@
 //! Bounds on work and size, all in one place.
 
+use std::sync::atomic::{AtomicBool, Ordering};
+
 /// Bounds within which a record is worked on. Searches count steps, not time, so results repeat.
 ///
 /// Whatever reaches a bound ends in an error or a note that says so, never in a weaker answer.
-#[derive(Debug, Clone, PartialEq, Eq)]
-#[non_exhaustive]
+///
+/// # Examples
+/// ```
+/// use molkin_graph::Limits;
+///
+/// let limits = Limits { atoms: 200, ..Limits::default() };
+/// assert_eq!(limits.line_bytes, 1 << 20);
+/// ```
+#[derive(Debug, Clone, Copy)]
 pub struct Limits {
-    /// Bytes of one line of input.
+    /// Bytes of one line of input, its end not counted: 1 MiB by default.
     pub line_bytes: usize,
-    /// Bytes of one record of input.
+    /// Bytes of one record of input, all its lines together: 16 MiB by default.
     pub record_bytes: usize,
-    /// Atoms of one record, hydrogens written as atoms included.
+    /// Atoms of one record, hydrogens written as atoms included: 200,000 by default.
     pub atoms: usize,
-    /// Refinements of a partition, over all canonical searches for one record.
+    /// Refinements of a partition, over all canonical searches for one record: 200,000 by default.
     pub order_steps: u64,
     /// Unmarked stereo elements in positions that symmetry relates to marked ones: the stereoisomers
-    /// they allow are listed, two to this power.
+    /// they allow are listed, two to this power. 8 by default.
     pub open_elements: u32,
-    /// Steps of the search for the atom map of one pair.
+    /// Steps of the search for the atom map of one pair: 500,000 by default, some 60 ns each.
     pub map_steps: u64,
+    /// Raised from outside to end searches early, as if their limit had been reached.
+    pub stop: Option<&'static AtomicBool>,
 }
 
 impl Default for Limits {
@@ -29,7 +40,15 @@ impl Default for Limits {
             atoms: 200_000,
             order_steps: 200_000,
             open_elements: 8,
-            map_steps: 2_000_000,
+            map_steps: 500_000,
+            stop: None,
         }
+    }
+}
+
+impl Limits {
+    /// Whether the stop flag has been raised.
+    pub fn stopped(&self) -> bool {
+        self.stop.is_some_and(|flag| flag.load(Ordering::Relaxed))
     }
 }

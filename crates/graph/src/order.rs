@@ -10,7 +10,8 @@ mod search;
 
 pub(crate) use coloured::{Coloured, Unit};
 use search::Search;
-pub(crate) use search::StepLimit;
+
+use crate::{Limits, OrderError};
 
 /// Orders graphs; owns all scratch.
 #[derive(Debug, Default, Clone)]
@@ -45,24 +46,24 @@ impl Labeller {
     /// Orders a graph, counting refinements in `steps`.
     ///
     /// # Errors
-    /// [`StepLimit`] when `steps` passes `limit`, or when a vertex has more neighbours than the
-    /// refinement can count (511).
+    /// [`OrderError::StepLimit`] when `steps` passes the limit, [`OrderError::Stopped`], and
+    /// [`OrderError::TooManyNeighbours`].
     pub(crate) fn label(
         &mut self,
         graph: &Coloured,
-        limit: u64,
+        limits: &Limits,
         steps: &mut u64,
         labelling: &mut Labelling,
-    ) -> Result<(), StepLimit> {
+    ) -> Result<(), OrderError> {
         if graph.exceeds_degree() {
-            return Err(StepLimit);
+            return Err(OrderError::TooManyNeighbours);
         }
         labelling.generators.clear();
         self.components(graph);
         self.found.clear();
         self.search.steps = *steps;
         for at in 0..self.members.len() {
-            self.search.run(graph, &self.members[at], limit)?;
+            self.search.run(graph, &self.members[at], limits)?;
             labelling
                 .generators
                 .extend_from_slice(self.search.generators());
@@ -139,7 +140,8 @@ mod tests {
         graph.load(colours.iter().copied(), edges.iter().copied());
         let mut labelling = Labelling::default();
         let mut steps = 0;
-        let outcome = Labeller::default().label(&graph, 1_000_000, &mut steps, &mut labelling);
+        let outcome =
+            Labeller::default().label(&graph, &Limits::default(), &mut steps, &mut labelling);
         assert_eq!(outcome, Ok(()));
         labelling
     }

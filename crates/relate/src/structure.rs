@@ -26,6 +26,8 @@ impl PrepareError {
             Self::Order(OrderError::StepLimit { .. }) => "order-step-limit",
             Self::Order(OrderError::TooManyOpenElements { .. }) => "open-element-limit",
             Self::Order(OrderError::TooManyAtoms { .. }) => "atom-limit",
+            Self::Order(OrderError::TooManyNeighbours) => "neighbour-limit",
+            Self::Order(OrderError::Stopped) => "stopped",
             Self::Order(_) => "out-of-range",
         }
     }

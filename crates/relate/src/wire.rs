@@ -3,14 +3,22 @@
 //! Atoms count from 1 here, in input order. Fields that do not apply are absent.
 
 mod describe;
+mod keys;
 mod pair;
+mod prepared;
 
+use molkin_formats::{Note as ReadNote, ReadError};
 use serde::Serialize;
 
+use crate::remarks::Noted;
+
 pub use describe::{Describe, Masses, Stereo, Unsaturation, describe};
+pub use keys::{KeyRow, key_row};
 pub use pair::{
-    BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Pair, StereoEntry, compare,
+    BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair, StereoEntry,
+    compare,
 };
+pub use prepared::Prepared;
 
 /// The version of the contract.
 pub const VERSION: u32 = 1;
@@ -72,6 +80,65 @@ pub struct Error {
     pub code: String,
     /// What is wrong and what was expected.
     pub message: String,
+}
+
+impl Note {
+    fn of(noted: Noted) -> Self {
+        Self {
+            code: noted.code.to_owned(),
+            input: None,
+            atoms: from_one(&noted.atoms),
+            text: noted.text,
+        }
+    }
+
+    fn of_reader(note: &ReadNote) -> Self {
+        Self {
+            code: note.code.to_owned(),
+            input: None,
+            atoms: from_one(&note.atoms),
+            text: note.text.clone(),
+        }
+    }
+
+    fn on(self, which: Which) -> Self {
+        Self {
+            input: Some(which),
+            ..self
+        }
+    }
+}
+
+impl From<&ReadError> for Error {
+    fn from(error: &ReadError) -> Self {
+        let span = error.span();
+        Self {
+            input: None,
+            line: Some(span.line),
+            column: Some(span.column),
+            code: error.code().to_owned(),
+            message: error.kind().to_string(),
+        }
+    }
+}
+
+impl Error {
+    fn without_place(code: &str, message: String) -> Self {
+        Self {
+            input: None,
+            line: None,
+            column: None,
+            code: code.to_owned(),
+            message,
+        }
+    }
+
+    fn on(self, which: Which) -> Self {
+        Self {
+            input: Some(which),
+            ..self
+        }
+    }
 }
 
 fn from_one(atoms: &[u32]) -> Vec<u32> {

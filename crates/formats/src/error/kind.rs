@@ -16,19 +16,19 @@ pub enum ReadErrorKind {
         /// What the system says.
         message: Box<str>,
     },
-    /// A line is longer than [`crate::ReadLimits::line_bytes`].
+    /// A line is longer than [`molkin_graph::Limits::line_bytes`].
     #[error("the line is longer than {limit} bytes")]
     LineTooLong {
         /// The limit.
         limit: usize,
     },
-    /// A record is longer than [`crate::ReadLimits::record_bytes`].
+    /// A record is longer than [`molkin_graph::Limits::record_bytes`].
     #[error("the record is longer than {limit} bytes")]
     RecordTooLong {
         /// The limit.
         limit: usize,
     },
-    /// A record has more atoms than [`crate::ReadLimits::atoms`].
+    /// A record has more atoms than [`molkin_graph::Limits::atoms`].
     #[error("the record has more than {limit} atoms")]
     TooManyAtoms {
         /// The limit.

@@ -7,13 +7,14 @@ mod ignored;
 mod property;
 
 use crate::{
-    ReadErrorKind, ReadLimits, Span,
+    ReadErrorKind, Span,
     molfile::{
         block::{Fault, Line, Lines},
         drawing::Drawing,
         header::Version,
     },
 };
+use molkin_graph::Limits;
 
 /// Reads what follows a counts line, through `M  END`.
 ///
@@ -22,7 +23,7 @@ pub(super) fn read(
     lines: &mut Lines<'_>,
     counts: Line<'_>,
     version: Version,
-    limits: &ReadLimits,
+    limits: &Limits,
 ) -> Result<Drawing, Fault> {
     let (atoms, bonds, lists) = (counts.field(1, 3), counts.field(4, 3), counts.field(7, 3));
     let atom_count = atoms.stated("the number of atoms", 0, 999)?;

@@ -1,12 +1,13 @@
 //! Streams of records.
 
+use molkin_graph::Limits;
 use std::io::{self, BufReader, Read};
 
 use insta::assert_snapshot;
 use rstest::rstest;
 
 use super::Records;
-use crate::{ReadLimits, molfile::ReadOptions};
+use crate::molfile::ReadOptions;
 
 const WATER: &str = "water
 
@@ -17,7 +18,7 @@ M  END
 ";
 
 /// What becomes of each record: its name and the number of its properties, or its title and error.
-fn outcomes(text: &[u8], limits: ReadLimits) -> Vec<String> {
+fn outcomes(text: &[u8], limits: Limits) -> Vec<String> {
     let options = ReadOptions {
         limits,
         ..ReadOptions::default()
@@ -34,7 +35,7 @@ fn outcomes(text: &[u8], limits: ReadLimits) -> Vec<String> {
 }
 
 fn read(text: &str) -> Vec<String> {
-    outcomes(text.as_bytes(), ReadLimits::default())
+    outcomes(text.as_bytes(), Limits::default())
 }
 
 #[rstest]
@@ -121,18 +122,18 @@ fn text_of_any_encoding_is_read() {
 fn what_exceeds_a_limit_fails_alone() {
     let long = WATER.replace("water", &"w".repeat(90));
     let text = [&long, "$$$$\n", WATER, "$$$$\n"].concat();
-    let limits = ReadLimits {
+    let limits = Limits {
         line_bytes: 80,
-        ..ReadLimits::default()
+        ..Limits::default()
     };
     assert_snapshot!(outcomes(text.as_bytes(), limits).join("\n"), @r"
     ! 1:81: the line is longer than 80 bytes
     water 0
     ");
     let long = [WATER, "> <a>\n", &"value\n".repeat(40), "\n$$$$\n", WATER].concat();
-    let limits = ReadLimits {
+    let limits = Limits {
         record_bytes: 200,
-        ..ReadLimits::default()
+        ..Limits::default()
     };
     assert_snapshot!(outcomes(long.as_bytes(), limits).join("\n"), @r"
     water! 24:1: the record is longer than 200 bytes

@@ -1,5 +1,6 @@
 //! The reader: one record after another with the same scratch.
 
+use molkin_graph::Limits;
 use molkin_graph::MoleculeBuilder;
 
 use super::{
@@ -7,17 +8,17 @@ use super::{
     remarks::{Extent, Fault, Remarks},
     scan::{self, Scratch},
 };
-use crate::{ReadError, ReadErrorKind, ReadLimits, Record};
+use crate::{ReadError, ReadErrorKind, Record};
 
 /// How SMILES is read.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+#[derive(Debug, Clone, Copy, Default)]
 pub struct ReadOptions {
     /// Refuse what the standard does not allow and no reader can misunderstand: repeated dots, ring
     /// labels after a branch, unpaired or contradictory `/` and `\`, three and more charge signs,
     /// `[HH]`, aromatic symbols beyond the standard. By default each of these is read with a note.
     pub strict: bool,
     /// Bounds on a record.
-    pub limits: ReadLimits,
+    pub limits: Limits,
 }
 
 /// Reads SMILES records and reuses its storage from one to the next.

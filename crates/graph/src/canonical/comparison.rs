@@ -116,7 +116,6 @@ impl Orderer {
             &canonical.mesomer,
             true,
         )?;
-        let limit = self.limits.order_steps;
         let mut steps = 0;
         let mut found = BTreeSet::new();
         let mut labelling = Labelling::default();
@@ -134,8 +133,7 @@ impl Orderer {
                 }
             }
             self.labeller
-                .label(&self.graph, limit, &mut steps, &mut labelling)
-                .map_err(|_| OrderError::StepLimit { limit })?;
+                .label(&self.graph, &self.limits, &mut steps, &mut labelling)?;
             found.insert(labelling.certificate.clone());
         }
         Ok(found)

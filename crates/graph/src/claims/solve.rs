@@ -1,7 +1,7 @@
 //! The normal form of a set of stereoisomers.
 
 use crate::{
-    OrderError,
+    Limits, OrderError,
     order::{Coloured, Labeller, Labelling},
     stereo::Perception,
 };
@@ -34,22 +34,14 @@ pub(crate) struct Claims {
     pub(crate) statuses: Vec<Status>,
 }
 
-/// The claims of a record, with the order to write it in.
-#[derive(Debug, Default, Clone)]
-pub(crate) struct Outcome {
-    pub(crate) claims: Claims,
-    pub(crate) written: Labelling,
-}
-
 /// Labels one molecule under changing marks.
 pub(crate) struct Solver<'a> {
     pub(crate) graph: &'a mut Coloured,
     pub(crate) labeller: &'a mut Labeller,
     pub(crate) perception: &'a Perception,
     pub(crate) variables: &'a [Variable],
-    pub(crate) step_limit: u64,
+    pub(crate) limits: &'a Limits,
     pub(crate) steps: &'a mut u64,
-    pub(crate) open_limit: u32,
 }
 
 impl Solver<'_> {
@@ -69,46 +61,48 @@ impl Solver<'_> {
         }
         let mut labelling = Labelling::default();
         self.labeller
-            .label(self.graph, self.step_limit, self.steps, &mut labelling)
-            .map_err(|_| OrderError::StepLimit {
-                limit: self.step_limit,
-            })?;
+            .label(self.graph, self.limits, self.steps, &mut labelling)?;
         Ok(labelling)
     }
 
-    /// Finds the normal form. `bare` is the labelling of the same graph without any marks.
-    pub(crate) fn solve(&mut self, bare: &Labelling) -> Result<Outcome, OrderError> {
+    /// Finds the normal form, and the labelling to write the record from. `bare` is the labelling of
+    /// the same graph without any marks.
+    pub(crate) fn solve(
+        &mut self,
+        bare: &Labelling,
+        claims: &mut Claims,
+        written: &mut Labelling,
+    ) -> Result<(), OrderError> {
+        if self.variables.is_empty() {
+            claims.clear();
+            claims.assignments.push(Vec::new());
+            claims.certificates.push(bare.certificate.clone());
+            written.clone_from(bare);
+            return Ok(());
+        }
         let action = Action::of(&bare.generators, self.perception, self.variables);
         let orbits = Orbits::of(&action, self.variables.len());
         let never = action.never_stereogenic(self.variables.len());
         let mut free = self.surely_free(&orbits, &never);
         let assignments = self.assignments(&free)?;
-        let mut found = self.distinct(assignments, &free)?;
+        let mut found = self.distinct(assignments, &free, bare)?;
         let more = self.further_free(&found, &orbits, &free)?;
         if !more.is_empty() {
             for variable in more {
                 free[variable] = true;
             }
             let assignments = found.into_iter().map(|member| member.assignment).collect();
-            found = self.distinct(assignments, &free)?;
+            found = self.distinct(assignments, &free, bare)?;
         }
-        let written = self.written(bare, &found, &free)?;
-        let statuses = self.statuses(&orbits, &free, &never)?;
-        let open = found.len() > 1 || self.is_open(&found, &orbits, &free, &never)?;
-        let (assignments, certificates) = found
+        *written = self.written(bare, &found, &free)?;
+        claims.statuses = self.statuses(&orbits, &free, &never)?;
+        claims.open = found.len() > 1 || self.is_open(&found, &orbits, &free, &never)?;
+        (claims.assignments, claims.certificates) = found
             .into_iter()
             .map(|m| (m.assignment, m.labelling.certificate))
             .unzip();
-        Ok(Outcome {
-            claims: Claims {
-                free,
-                assignments,
-                certificates,
-                open,
-                statuses,
-            },
-            written,
-        })
+        claims.free = free;
+        Ok(())
     }
 
     /// Variables that are free without a doubt: never stereogenic, or unmarked with all their
@@ -134,9 +128,9 @@ impl Solver<'_> {
         let listed: Vec<usize> = (0..free.len())
             .filter(|&v| !free[v] && self.variables[v].odd.is_none())
             .collect();
-        if listed.len() > self.open_limit as usize {
+        if listed.len() > self.limits.open_elements as usize {
             return Err(OrderError::TooManyOpenElements {
-                limit: self.open_limit,
+                limit: self.limits.open_elements,
             });
         }
         Ok((0u64..1 << listed.len())
@@ -155,7 +149,15 @@ impl Solver<'_> {
         &mut self,
         assignments: Vec<Vec<bool>>,
         free: &[bool],
+        bare: &Labelling,
     ) -> Result<Vec<Member>, OrderError> {
+        if free.iter().all(|&free| free) {
+            let assignment = assignments.into_iter().next().unwrap_or_default();
+            return Ok(vec![Member {
+                assignment,
+                labelling: bare.clone(),
+            }]);
+        }
         let mut found = Vec::with_capacity(assignments.len());
         for assignment in assignments {
             let labelling = self.label(|v| (!free[v]).then(|| assignment[v]))?;
@@ -330,6 +332,16 @@ impl Solver<'_> {
         let odd = self.label(|w| value(w).map(|odd| odd ^ (w == v)));
         self.graph.colours = colours;
         Ok(even?.certificate != odd?.certificate)
+    }
+}
+
+impl Claims {
+    fn clear(&mut self) {
+        self.free.clear();
+        self.assignments.clear();
+        self.certificates.clear();
+        self.statuses.clear();
+        self.open = false;
     }
 }
 

@@ -19,6 +19,9 @@ pub(crate) struct Valence {
     pub(crate) can_be_negative: bool,
     /// Whether it can carry a positive charge in place of an open valence.
     pub(crate) can_be_positive: bool,
+    /// A boron atom drawn with a negative charge in place of an empty orbital: part of a conjugated
+    /// system that may place the charge elsewhere.
+    pub(crate) acceptor: bool,
     /// Group 15 to 17.
     pub(crate) hetero: bool,
 }
@@ -26,7 +29,7 @@ pub(crate) struct Valence {
 impl Valence {
     /// Whether the atom can be part of a conjugated system.
     pub(crate) fn has_room(&self) -> bool {
-        self.pi > 0 || self.spare > 0 || self.onium
+        self.pi > 0 || self.spare > 0 || self.onium || self.acceptor
     }
 }
 
@@ -130,6 +133,7 @@ fn room(skeleton: &Skeleton, covered: &[Option<u8>], atom: u32, open: u8) -> Opt
         open,
         can_be_negative: record.element != Element::BORON,
         can_be_positive: !hetero,
+        acceptor: record.element == Element::BORON && record.charge < 0,
         hetero,
     })
 }

@@ -7,15 +7,13 @@
 
 use std::cmp::Ordering;
 
+use crate::{Limits, OrderError};
+
 use super::{
     coloured::{Coloured, ranked_parity},
     partition::{Partition, Snapshot},
     refine::Refiner,
 };
-
-/// The search ended at its step limit.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub(crate) struct StepLimit;
 
 /// Stands between the edges and the units of a certificate.
 const SEPARATOR: u64 = u64::MAX;
@@ -82,18 +80,18 @@ impl Search {
     /// Orders the vertices of one component.
     ///
     /// Afterwards [`Search::order`], [`Search::certificate`] and [`Search::generators`] hold the
-    /// answer. `steps` counts on from its present value up to `limit`.
+    /// answer. `steps` counts on from its present value up to the limit.
     pub(crate) fn run(
         &mut self,
         graph: &Coloured,
         members: &[u32],
-        limit: u64,
-    ) -> Result<(), StepLimit> {
+        limits: &Limits,
+    ) -> Result<(), OrderError> {
         self.start(graph, members);
         for start in self.partition.starts().collect::<Vec<_>>() {
             self.refiner.enqueue(start);
         }
-        self.step(graph, limit)?;
+        self.step(graph, limits)?;
         self.depth = 0;
         self.on_first = 0;
         if self.partition.is_discrete() {
@@ -102,7 +100,7 @@ impl Search {
         }
         self.open_node(true, Ordering::Equal);
         while self.depth > 0 {
-            self.advance(graph, limit)?;
+            self.advance(graph, limits)?;
         }
         Ok(())
     }
@@ -134,10 +132,15 @@ impl Search {
         }
     }
 
-    fn step(&mut self, graph: &Coloured, limit: u64) -> Result<u64, StepLimit> {
+    fn step(&mut self, graph: &Coloured, limits: &Limits) -> Result<u64, OrderError> {
         self.steps += 1;
-        if self.steps > limit {
-            return Err(StepLimit);
+        if self.steps > limits.order_steps {
+            return Err(OrderError::StepLimit {
+                limit: limits.order_steps,
+            });
+        }
+        if limits.stopped() {
+            return Err(OrderError::Stopped);
         }
         Ok(self.refiner.refine(graph, &self.units, &mut self.partition))
     }
@@ -173,7 +176,7 @@ impl Search {
     }
 
     /// Takes the next child of the deepest node, or leaves that node.
-    fn advance(&mut self, graph: &Coloured, limit: u64) -> Result<(), StepLimit> {
+    fn advance(&mut self, graph: &Coloured, limits: &Limits) -> Result<(), OrderError> {
         let level = self.depth - 1;
         let Some(vertex) = self.next_child(level) else {
             self.depth = level;
@@ -188,7 +191,7 @@ impl Search {
         self.partition.individualise(vertex);
         // The individualised vertex alone refines as far as it and the rest of its cell would.
         self.refiner.enqueue(cell);
-        let trace = self.step(graph, limit)?;
+        let trace = self.step(graph, limits)?;
         self.traces.truncate(level);
         self.traces.push(trace);
         let has_first = !self.first.certificate.is_empty();

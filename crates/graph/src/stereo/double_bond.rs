@@ -1,7 +1,7 @@
 //! Double bonds, and cumulated ones, that can be stereogenic.
 
 use crate::{
-    Element, Shape,
+    Shape,
     mesomer::{MOBILE, Mesomer},
     skeleton::Skeleton,
 };
@@ -137,7 +137,7 @@ fn end_ligands(skeleton: &Skeleton, mesomer: &Mesomer, end: u32, inner: u32) -> 
         (Some(14), 2, _) => false,
         (Some(15), 2, _) => false,
         (Some(15), 1, _) => true,
-        (Some(16), 1, 1) if record.element != Element::OXYGEN => true,
+        (Some(16), 1, 1) => true,
         _ => return None,
     };
     let mut found = [slot::LONE_PAIR; 2];

@@ -75,7 +75,7 @@ fn eligible(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Eligibl
     let state = &mesomer.states[atom as usize];
     let degree = skeleton.degree(atom);
     if degree + usize::from(record.hydrogens) > 4
-        || degree < 2
+        || degree == 0
         || state.mobile
         || skeleton
             .arcs(atom)

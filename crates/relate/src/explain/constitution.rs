@@ -56,7 +56,7 @@ pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanat
     let sides = sides(left, right);
     let effort = Effort {
         steps: limits.map_steps,
-        stop: None,
+        stop: limits.stop,
     };
     let branching = Some([branching::of(a), branching::of(b)]);
     // Constitutional isomers have equal formulae and each side lists its bonds once, so the only

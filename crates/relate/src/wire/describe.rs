@@ -1,18 +1,11 @@
 //! One described record.
 
-use molkin_formats::{
-    Record,
-    smiles::{self, Lost},
-};
-use molkin_graph::{Element, Mark, Molecule, Orderer, average_mass, monoisotopic_mass};
+use molkin_graph::{Element, Mark, Molecule, StereoElement, average_mass, monoisotopic_mass};
 use serde::Serialize;
 
-use crate::{
-    Structure,
-    remarks::{self, Noted, atoms_in_words},
-};
+use crate::Structure;
 
-use super::{Error, Note, VERSION, element_name, from_one};
+use super::{Error, Note, Prepared, VERSION, element_name, from_one};
 
 /// What is known about one record. Either `errors` or the fields from `formula` on are there.
 #[derive(Debug, Clone, PartialEq, Serialize)]
@@ -88,22 +81,17 @@ pub struct Stereo {
 }
 
 /// Describes a record in the terms of the contract; what cannot be described comes with `errors`.
-pub fn describe(
-    orderer: &mut Orderer,
-    source: &str,
-    number: u64,
-    name: &str,
-    outcome: Result<Record, Error>,
-) -> Describe {
+pub fn describe(prepared: &Prepared) -> Describe {
+    let input = prepared.input();
     let mut described = Describe {
         version: VERSION,
-        source: source.to_owned(),
-        record: number,
-        name: name.to_owned(),
-        formula: None,
+        source: input.source.clone(),
+        record: input.record,
+        name: input.name.clone(),
+        formula: input.formula.clone(),
         masses: None,
         unsaturation: None,
-        smiles: None,
+        smiles: input.smiles.clone(),
         constitution_key: None,
         compound_key: None,
         open: None,
@@ -111,47 +99,19 @@ pub fn describe(
         notes: None,
         errors: None,
     };
-    match outcome {
-        Err(error) => described.errors = Some(vec![error]),
-        Ok(record) => {
-            described.name = record.name;
-            match Structure::new(orderer, record.molecule) {
-                Err(error) => {
-                    described.errors = Some(vec![Error {
-                        input: None,
-                        line: None,
-                        column: None,
-                        code: error.code().to_owned(),
-                        message: error.to_string(),
-                    }]);
-                }
-                Ok(structure) => {
-                    let read = record.notes.iter().map(|note| Note::of_reader(note, None));
-                    described.fill(&structure, read.collect());
-                }
-            }
+    match prepared.parts() {
+        Err(error) => described.errors = Some(vec![error.clone()]),
+        Ok((structure, notes)) => {
+            described.fill(structure);
+            described.notes = Some(notes.to_vec());
         }
     }
     described
 }
 
 impl Describe {
-    fn fill(&mut self, structure: &Structure, mut notes: Vec<Note>) {
+    fn fill(&mut self, structure: &Structure) {
         let canonical = structure.canonical();
-        let written = smiles::write(&canonical.form());
-        notes.extend(
-            remarks::of_record(structure)
-                .into_iter()
-                .map(|n| Note::of(n, None)),
-        );
-        let order: Vec<u32> = canonical.order().collect();
-        notes.extend(
-            written
-                .lost
-                .iter()
-                .map(|lost| Note::of(lost_in_smiles(lost, &order), None)),
-        );
-        self.formula = Some(structure.formula().to_string());
         self.masses = masses(structure.molecule());
         let unsaturation = structure.molecule().unsaturation();
         self.unsaturation = Some(Unsaturation {
@@ -160,62 +120,30 @@ impl Describe {
                 .textbook_doubled
                 .map(|doubled| doubled as f64 / 2.0),
         });
-        self.smiles = Some(written.text);
         self.constitution_key = Some(canonical.constitution_key().to_string());
         self.compound_key = Some(canonical.compound_key().to_string());
         self.open = Some(canonical.is_open());
-        self.stereo = Some(
-            canonical
-                .stereo_elements()
-                .iter()
-                .map(|element| {
-                    let [a, b] = element.centres;
-                    let atoms = if a == b {
-                        vec![a]
-                    } else {
-                        vec![a.min(b), a.max(b)]
-                    };
-                    Stereo {
-                        atoms: from_one(&atoms),
-                        element: element_name(element.shape),
-                        mark: match element.mark {
-                            Mark::Given(_) => "given",
-                            Mark::Absent => "absent",
-                        },
-                    }
-                })
-                .collect(),
-        );
-        self.notes = Some(notes);
+        let elements = canonical.stereo_elements();
+        self.stereo = Some(elements.iter().map(Stereo::of).collect());
     }
 }
 
-/// What canonical SMILES could not say; `order` gives the atoms of the record in canonical order.
-fn lost_in_smiles(lost: &Lost, order: &[u32]) -> Noted {
-    match lost {
-        Lost::Arrangement { centres, .. } => {
-            let mut atoms: Vec<u32> = centres
-                .iter()
-                .filter_map(|&at| order.get(at as usize).copied())
-                .collect();
-            atoms.sort_unstable();
-            atoms.dedup();
-            let text = format!(
-                "SMILES cannot say the arrangement at {}.",
-                atoms_in_words(&atoms)
-            );
-            Noted {
-                code: "smiles-loses-stereo",
-                atoms,
-                text,
-            }
+impl Stereo {
+    fn of(element: &StereoElement) -> Self {
+        let [a, b] = element.centres;
+        let atoms = if a == b {
+            vec![a]
+        } else {
+            vec![a.min(b), a.max(b)]
+        };
+        Self {
+            atoms: from_one(&atoms),
+            element: element_name(element.shape),
+            mark: match element.mark {
+                Mark::Given(_) => "given",
+                Mark::Absent => "absent",
+            },
         }
-        _ => Noted {
-            code: "smiles-ring-labels",
-            atoms: Vec::new(),
-            text: "The SMILES needs more than 99 ring labels at once, beyond the standard."
-                .to_owned(),
-        },
     }
 }
 

@@ -1,16 +1,15 @@
 //! One compared pair.
 
-use molkin_formats::{Note as ReadNote, Record, smiles};
 use molkin_graph::{Limits, OrderError, Orderer};
 use serde::Serialize;
 
 use crate::{
-    Branching as DomainBranching, Explanation, Relation, Structure, explain, relate,
+    Branching as DomainBranching, Explanation, PrepareError, Relation, Structure, explain, relate,
     remarks::{self, Noted},
     words,
 };
 
-use super::{Error, Input, Note, VERSION, Which, element_name, from_one};
+use super::{Error, Input, Note, Prepared, VERSION, Which, element_name, from_one};
 
 /// The result for one pair. Either `errors` or the fields from `relation` on are there.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize)]
@@ -155,78 +154,32 @@ pub struct StereoEntry {
 pub fn compare(
     orderer: &mut Orderer,
     limits: &Limits,
-    inputs: [(&str, u64, Result<Record, Error>); 2],
+    [a, b]: [&Prepared; 2],
     brief: bool,
 ) -> Pair {
-    let mut pair = Pair::unsettled();
-    let mut errors = Vec::new();
-    let mut sides = Vec::new();
-    for (which, (source, number, outcome)) in [Which::A, Which::B].into_iter().zip(inputs) {
-        let mut input = Input {
-            source: source.to_owned(),
-            record: number,
-            name: String::new(),
-            formula: None,
-            smiles: None,
-        };
-        match outcome {
-            Err(error) => errors.push(Error {
-                input: Some(which),
-                ..error
-            }),
-            Ok(record) => {
-                input.name = record.name;
-                match Structure::new(orderer, record.molecule) {
-                    Err(error) => errors.push(Error {
-                        input: Some(which),
-                        line: None,
-                        column: None,
-                        code: error.code().to_owned(),
-                        message: error.to_string(),
-                    }),
-                    Ok(structure) => {
-                        input.formula = Some(structure.formula().to_string());
-                        input.smiles = Some(smiles::write(&structure.canonical().form()).text);
-                        sides.push((structure, record.notes));
-                    }
-                }
+    let mut pair = Pair::unsettled(a, b);
+    match (a.parts(), b.parts()) {
+        (Ok(left), Ok(right)) => {
+            if let Err(error) = pair.settle(orderer, limits, [left, right], brief) {
+                let code = PrepareError::from(error).code();
+                pair.errors = Some(vec![Error::without_place(code, error.to_string())]);
             }
         }
-        match which {
-            Which::A => pair.a = input,
-            Which::B => pair.b = input,
+        (left, right) => {
+            let errors = [(Which::A, left.err()), (Which::B, right.err())];
+            let on_side = |(which, error): (_, Option<&Error>)| Some(error?.clone().on(which));
+            pair.errors = Some(errors.into_iter().filter_map(on_side).collect());
         }
-    }
-    if let [(a, notes_a), (b, notes_b)] = &sides[..] {
-        if let Err(error) = pair.settle(orderer, limits, [(a, notes_a), (b, notes_b)], brief) {
-            errors.push(Error {
-                input: None,
-                line: None,
-                column: None,
-                code: "order-step-limit".to_owned(),
-                message: error.to_string(),
-            });
-        }
-    }
-    if !errors.is_empty() {
-        pair.errors = Some(errors);
     }
     pair
 }
 
 impl Pair {
-    fn unsettled() -> Self {
-        let nothing = Input {
-            source: String::new(),
-            record: 0,
-            name: String::new(),
-            formula: None,
-            smiles: None,
-        };
+    fn unsettled(a: &Prepared, b: &Prepared) -> Self {
         Self {
             version: VERSION,
-            a: nothing.clone(),
-            b: nothing,
+            a: a.input().clone(),
+            b: b.input().clone(),
             relation: None,
             kind: Kind::NoVerdict,
             aspects: None,
@@ -246,7 +199,7 @@ impl Pair {
         &mut self,
         orderer: &mut Orderer,
         limits: &Limits,
-        [(a, notes_a), (b, notes_b)]: [(&Structure, &Vec<ReadNote>); 2],
+        [(a, notes_a), (b, notes_b)]: [(&Structure, &[Note]); 2],
         brief: bool,
     ) -> Result<(), OrderError> {
         let verdict = relate(orderer, a, b)?;
@@ -257,21 +210,13 @@ impl Pair {
         self.open = Some(verdict.open);
         self.summary = Some(words::summary(a, b, &verdict, explained.as_ref()));
         let mut notes = Vec::new();
-        for (which, structure, read) in [(Which::A, a, notes_a), (Which::B, b, notes_b)] {
-            notes.extend(read.iter().map(|note| Note::of_reader(note, Some(which))));
-            let own = remarks::of_record(structure);
+        for (which, structure, own) in [(Which::A, a, notes_a), (Which::B, b, notes_b)] {
             let unmarked = verdict.open.then(|| remarks::unmarked(structure)).flatten();
-            notes.extend(
-                own.into_iter()
-                    .chain(unmarked)
-                    .map(|n| Note::of(n, Some(which))),
-            );
+            let own = own.iter().cloned().chain(unmarked.map(Note::of));
+            notes.extend(own.map(|note| note.on(which)));
         }
-        notes.extend(
-            remarks::of_pair(a, b, verdict.relation)
-                .into_iter()
-                .map(|n| Note::of(n, None)),
-        );
+        let of_pair = remarks::of_pair(a, b, verdict.relation);
+        notes.extend(of_pair.into_iter().map(Note::of));
         if let Some(explained) = explained {
             self.add_explanation(verdict.relation, explained, &mut notes);
         }
@@ -293,7 +238,7 @@ impl Pair {
                 code: "stereo-map-limit",
                 atoms: Vec::new(),
                 text: "There are too many equivalent atom maps to look at all; another may disturb fewer stereo elements.".to_owned(),
-            }, None));
+            }));
         }
         self.atom_map = Some(
             explained
@@ -359,26 +304,6 @@ impl Branching {
         Self {
             points: points.collect(),
             chains: chains.collect(),
-        }
-    }
-}
-
-impl Note {
-    pub(super) fn of(noted: Noted, input: Option<Which>) -> Self {
-        Self {
-            code: noted.code.to_owned(),
-            input,
-            atoms: from_one(&noted.atoms),
-            text: noted.text,
-        }
-    }
-
-    pub(super) fn of_reader(note: &ReadNote, input: Option<Which>) -> Self {
-        Self {
-            code: note.code.to_owned(),
-            input,
-            atoms: from_one(&note.atoms),
-            text: note.text.clone(),
         }
     }
 }

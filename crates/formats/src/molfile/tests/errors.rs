@@ -1,10 +1,11 @@
 //! What cannot be read, and how that is shown.
 
 use insta::assert_snapshot;
+use molkin_graph::Limits;
 use rstest::rstest;
 
 use super::draw_solid;
-use crate::{ReadLimits, molfile};
+use crate::molfile;
 
 fn refuse(text: &str) -> String {
     molfile::parse(text.as_bytes())
@@ -214,9 +215,9 @@ fn query_lines(#[case] line: &str, #[case] code: &str) {
 
 #[test]
 fn limits() {
-    let limits = ReadLimits {
+    let limits = Limits {
         atoms: 2,
-        ..ReadLimits::default()
+        ..Limits::default()
     };
     let options = molfile::ReadOptions {
         limits,
@@ -224,9 +225,9 @@ fn limits() {
     };
     let error = molfile::parse_with(ETHANOL.as_bytes(), &options).unwrap_err();
     assert_eq!(error.code(), "too-many-atoms");
-    let limits = ReadLimits {
+    let limits = Limits {
         record_bytes: 20,
-        ..ReadLimits::default()
+        ..Limits::default()
     };
     let options = molfile::ReadOptions {
         limits,

@@ -1,9 +1,7 @@
+use molkin_graph::Limits;
 use std::io::{self, BufReader, Read};
 
-use crate::{
-    ReadLimits,
-    smiles::{ReadOptions, Records},
-};
+use crate::smiles::{ReadOptions, Records};
 
 fn outcomes(text: &str, options: ReadOptions) -> Vec<Result<String, String>> {
     Records::new(text.as_bytes(), options)
@@ -46,9 +44,9 @@ fn only_the_text_after_the_last_line_end_does_not_count() {
 
 #[test]
 fn a_long_line_fails_alone() {
-    let limits = ReadLimits {
+    let limits = Limits {
         line_bytes: 6,
-        ..ReadLimits::default()
+        ..Limits::default()
     };
     let found = outcomes(
         "CCCCCCCC\nC two\n",

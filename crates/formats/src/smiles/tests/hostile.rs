@@ -3,15 +3,15 @@
 use rstest::rstest;
 
 use super::{ReadOptions, Reader};
-use crate::ReadLimits;
+use molkin_graph::Limits;
 
 const MANY: usize = 1_000_000;
 
 fn read_all(text: &[u8]) -> Result<usize, &'static str> {
-    let limits = ReadLimits {
+    let limits = Limits {
         line_bytes: 16 << 20,
         atoms: 2_000_000,
-        ..ReadLimits::default()
+        ..Limits::default()
     };
     let mut reader = Reader::new(ReadOptions {
         limits,
@@ -53,10 +53,10 @@ fn long_texts(#[case] text: String, #[case] expected: Result<usize, &str>) {
 #[test]
 fn limits_hold() {
     let options = ReadOptions {
-        limits: ReadLimits {
+        limits: Limits {
             line_bytes: 8,
             atoms: 4,
-            ..ReadLimits::default()
+            ..Limits::default()
         },
         ..ReadOptions::default()
     };

@@ -271,8 +271,8 @@ impl<'a> Search<'a> {
         let (from, goal) = (self.units[unit].inner, self.units[unit].ends[0].atom);
         let mut seen = vec![from];
         let mut layer = 0;
-        // A ring of n atoms closes within n - 1 steps that avoid the bond.
-        for _ in 1..SMALLEST_FREE_RING {
+        // A ring of n atoms closes in n - 1 steps that avoid the bond.
+        for _ in 2..SMALLEST_FREE_RING {
             let reached = seen.len();
             for at in layer..reached {
                 for arc in self.structure.arcs(seen[at]) {

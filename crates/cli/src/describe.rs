@@ -1,0 +1,32 @@
+//! `molkin describe`.
+
+use std::io;
+
+use molkin_graph::{Limits, Orderer};
+use molkin_relate::wire::{self, Prepared};
+
+use crate::{
+    args::{Describe, Format},
+    input,
+    output::{json::Objects, text},
+    report::Report,
+};
+
+/// Describes every record of every input, in order.
+pub(crate) fn run(options: &Describe, report: &mut Report) -> io::Result<()> {
+    let mut orderer = Orderer::new(Limits::default());
+    let mut objects = Objects::new(options.format);
+    input::each_record(&options.inputs, report, |report, source, outcome| {
+        let prepared = Prepared::new(&mut orderer, source, outcome);
+        let described = wire::describe(&prepared);
+        match options.format {
+            Format::Text => {
+                let style = report.style();
+                text::describe::write(report.out(), style, &described, &prepared)?;
+            }
+            Format::Json | Format::Jsonl => objects.write(report.out(), &described)?,
+        }
+        Ok(described.errors.is_none())
+    })?;
+    objects.finish(report.out())
+}

@@ -1,0 +1,240 @@
+//! Inputs: what an argument means, and the records it leads to.
+
+use std::{
+    collections::VecDeque,
+    ffi::{OsStr, OsString},
+    io::{self, BufRead, BufReader, Cursor, Read},
+    path::Path,
+};
+
+use molkin_formats::source::{Format, ReadOptions, RecordOutcome, Records, SourceError};
+
+use crate::report::Report;
+
+/// What an argument means.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+enum Meaning<'a> {
+    /// A file whose extension tells its format.
+    KnownFile(&'a Path),
+    /// A file of any name.
+    AnyFile(&'a Path),
+    /// Standard input.
+    Standard,
+    /// The argument itself.
+    Smiles(&'a str),
+}
+
+impl<'a> Meaning<'a> {
+    fn of(argument: &'a OsStr) -> Self {
+        // No SMILES is anything but ASCII.
+        let Some(text) = argument.to_str() else {
+            return Self::AnyFile(Path::new(argument));
+        };
+        if let Some(path) = text.strip_prefix("file:") {
+            Self::AnyFile(Path::new(path))
+        } else if let Some(smiles) = text.strip_prefix("smiles:") {
+            Self::Smiles(smiles)
+        } else if text == "-" {
+            Self::Standard
+        } else if Format::of_name(text).is_some() || is_table(text) {
+            Self::KnownFile(Path::new(text))
+        } else {
+            Self::Smiles(text)
+        }
+    }
+}
+
+/// Whether a name is that of a table, which is known but not read yet.
+fn is_table(name: &str) -> bool {
+    let name = name.to_ascii_lowercase();
+    let stem = name.strip_suffix(".gz").unwrap_or(&name);
+    stem.ends_with(".csv") || stem.ends_with(".tsv")
+}
+
+/// Whether the argument reads standard input.
+pub(crate) fn is_standard(argument: &OsStr) -> bool {
+    Meaning::of(argument) == Meaning::Standard
+}
+
+/// A file with the same name as an argument that was taken for a SMILES.
+pub(crate) fn mistaken_for_smiles(argument: &OsStr) -> Option<&Path> {
+    match Meaning::of(argument) {
+        Meaning::Smiles(text) => Some(Path::new(text)).filter(|path| path.is_file()),
+        _ => None,
+    }
+}
+
+/// The records of one input. One record is in memory at a time, those looked at ahead aside.
+///
+/// An input that breaks off ends there; [`Input::failure`] then says why.
+pub(crate) struct Input {
+    name: String,
+    records: Records<'static>,
+    ahead: VecDeque<RecordOutcome>,
+    failure: Option<SourceError>,
+    ended: bool,
+}
+
+impl Input {
+    /// Opens what an argument means.
+    pub(crate) fn open(argument: &OsStr) -> Result<Self, SourceError> {
+        let options = ReadOptions::default();
+        let records = match Meaning::of(argument) {
+            Meaning::KnownFile(path) => Records::open(path, options)?,
+            Meaning::AnyFile(path) => Records::open_any(path, options)?,
+            Meaning::Standard => standard(options)?,
+            Meaning::Smiles(text) => {
+                let bytes = Cursor::new(text.as_bytes().to_vec());
+                Records::new(text, bytes, Format::Smiles, options)
+            }
+        };
+        Ok(Self {
+            name: records.name().to_owned(),
+            records,
+            ahead: VecDeque::new(),
+            failure: None,
+            ended: false,
+        })
+    }
+
+    /// The name of the file, `-`, or the SMILES.
+    pub(crate) fn name(&self) -> &str {
+        &self.name
+    }
+
+    /// Why the input broke off, once it has.
+    pub(crate) fn failure(&self) -> Option<&SourceError> {
+        self.failure.as_ref()
+    }
+
+    /// How many records are still to come, if fewer than `most`; otherwise `most`.
+    pub(crate) fn look_ahead(&mut self, most: usize) -> usize {
+        while self.ahead.len() < most
+            && let Some(outcome) = self.read()
+        {
+            self.ahead.push_back(outcome);
+        }
+        self.ahead.len().min(most)
+    }
+
+    fn read(&mut self) -> Option<RecordOutcome> {
+        if self.ended {
+            return None;
+        }
+        match self.records.next() {
+            Some(Ok(outcome)) => return Some(outcome),
+            Some(Err(failure)) => self.failure = Some(failure),
+            None => {}
+        }
+        self.ended = true;
+        None
+    }
+}
+
+impl Iterator for Input {
+    type Item = RecordOutcome;
+
+    fn next(&mut self) -> Option<RecordOutcome> {
+        self.ahead.pop_front().or_else(|| self.read())
+    }
+}
+
+/// The lines that decide the format of a stream without a name.
+const TELLING_LINES: usize = 4;
+/// As far as they are looked for.
+const TELLING_BYTES: u64 = 1 << 16;
+
+fn standard(options: ReadOptions) -> Result<Records<'static>, SourceError> {
+    let mut stream = BufReader::new(io::stdin());
+    // A pipe delivers in pieces of any size, so the first piece need not hold the telling lines.
+    let mut start = Vec::new();
+    let mut limited = stream.by_ref().take(TELLING_BYTES);
+    for _ in 0..TELLING_LINES {
+        let outcome = limited.read_until(b'\n', &mut start);
+        if let Err(error) = outcome {
+            return Err(SourceError::Open {
+                name: "-".to_owned(),
+                error,
+            });
+        }
+    }
+    let format = Format::guess(&start);
+    let stream = Cursor::new(start).chain(stream);
+    Ok(Records::new("-", stream, format, options))
+}
+
+/// Hands each record of each input to `work`, which says whether it went well. Inputs that cannot be
+/// opened or that break off are reported, and the next one is read. Ends with the count of records
+/// that failed.
+pub(crate) fn each_record(
+    arguments: &[OsString],
+    report: &mut Report,
+    mut work: impl FnMut(&mut Report, &str, RecordOutcome) -> io::Result<bool>,
+) -> io::Result<()> {
+    let (mut records, mut failed) = (0_u64, 0_u64);
+    let mut standard_taken = false;
+    for argument in arguments {
+        if is_standard(argument) && std::mem::replace(&mut standard_taken, true) {
+            report.trouble("standard input (-) can be read only once")?;
+            continue;
+        }
+        let mut input = match Input::open(argument) {
+            Ok(input) => input,
+            Err(error) => {
+                report.trouble(error)?;
+                continue;
+            }
+        };
+        let name = input.name().to_owned();
+        for outcome in input.by_ref() {
+            records += 1;
+            if !work(report, &name, outcome)? {
+                failed += 1;
+                hint(argument, report)?;
+            }
+        }
+        if let Some(failure) = input.failure() {
+            report.trouble(failure)?;
+        }
+    }
+    if failed > 0 {
+        report.trouble(format_args!("{failed} of {records} records failed"))?;
+    }
+    Ok(())
+}
+
+/// Says that a SMILES which failed is also the name of a file.
+pub(crate) fn hint(argument: &OsStr, report: &mut Report) -> io::Result<()> {
+    match mistaken_for_smiles(argument) {
+        Some(path) => {
+            let path = path.display();
+            report.say(format_args!(
+                "{path} was read as a SMILES; for the file of that name write file:{path}"
+            ))
+        }
+        None => Ok(()),
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[track_caller]
+    fn check(argument: &str, meaning: Meaning<'_>) {
+        assert_eq!(Meaning::of(OsStr::new(argument)), meaning);
+    }
+
+    #[test]
+    fn what_arguments_mean() {
+        check("a.smi", Meaning::KnownFile(Path::new("a.smi")));
+        check("dir/B.SDF.gz", Meaning::KnownFile(Path::new("dir/B.SDF.gz")));
+        check("t.csv", Meaning::KnownFile(Path::new("t.csv")));
+        check("file:CCO", Meaning::AnyFile(Path::new("CCO")));
+        check("-", Meaning::Standard);
+        check("CCO", Meaning::Smiles("CCO"));
+        check("C.O", Meaning::Smiles("C.O"));
+        check("smiles:a.smi", Meaning::Smiles("a.smi"));
+        check("", Meaning::Smiles(""));
+    }
+}

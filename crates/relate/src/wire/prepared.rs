@@ -1,0 +1,164 @@
+//! A record made ready, once, for everything the contract can say about it.
+
+use molkin_formats::{
+    ReadError,
+    smiles::{self, Lost},
+    source::RecordOutcome,
+};
+use molkin_graph::Orderer;
+
+use crate::{
+    Structure,
+    remarks::{self, Noted, atoms_in_words},
+};
+
+use super::{Error, Input, Note};
+
+/// A record of a source, read and ordered, or the reason why it could not be.
+///
+/// # Examples
+/// ```
+/// use molkin_formats::source::{Format, ReadOptions, Records};
+/// use molkin_graph::{Limits, Orderer};
+/// use molkin_relate::wire::{Prepared, compare};
+///
+/// let limits = Limits::default();
+/// let mut orderer = Orderer::new(limits.clone());
+/// let file = "CCO ethanol\nCOC dimethyl ether\n";
+/// let mut sides = Vec::new();
+/// for outcome in Records::new("two.smi", file.as_bytes(), Format::Smiles, ReadOptions::default()) {
+///     sides.push(Prepared::new(&mut orderer, "two.smi", outcome?));
+/// }
+/// let pair = compare(&mut orderer, &limits, [&sides[0], &sides[1]], false);
+/// assert_eq!(pair.relation, Some("constitutional"));
+/// assert_eq!(pair.b.name, "dimethyl ether");
+/// # Ok::<(), Box<dyn std::error::Error>>(())
+/// ```
+#[derive(Debug, Clone)]
+pub struct Prepared {
+    input: Input,
+    outcome: Result<Ready, Failure>,
+}
+
+#[derive(Debug, Clone)]
+struct Ready {
+    structure: Structure,
+    notes: Vec<Note>,
+}
+
+#[derive(Debug, Clone)]
+struct Failure {
+    error: Error,
+    read: Option<ReadError>,
+}
+
+impl Prepared {
+    /// Prepares one record of `source`. What cannot be read, or ordered within the limits, is kept
+    /// as an error; this function does not fail.
+    pub fn new(orderer: &mut Orderer, source: &str, outcome: RecordOutcome) -> Self {
+        let mut input = Input {
+            source: source.to_owned(),
+            record: outcome.index,
+            name: outcome.name,
+            formula: None,
+            smiles: None,
+        };
+        let record = match outcome.result {
+            Ok(record) => record,
+            Err(error) => {
+                let failure = Failure {
+                    error: Error::from(&error),
+                    read: Some(error),
+                };
+                return Self {
+                    input,
+                    outcome: Err(failure),
+                };
+            }
+        };
+        let outcome = match Structure::new(orderer, record.molecule) {
+            Err(error) => Err(Failure {
+                error: Error::without_place(error.code(), error.to_string()),
+                read: None,
+            }),
+            Ok(structure) => {
+                let written = smiles::write(&structure.canonical().form());
+                let own = remarks::of_record(&structure);
+                let lost = lost_in_smiles(&structure, &written.lost);
+                let read = record.notes.iter().map(Note::of_reader);
+                let notes = read.chain(own.into_iter().chain(lost).map(Note::of));
+                let notes = notes.collect();
+                input.formula = Some(structure.formula().to_string());
+                input.smiles = Some(written.text);
+                Ok(Ready { structure, notes })
+            }
+        };
+        Self { input, outcome }
+    }
+
+    /// Where the record came from, and what it is.
+    pub fn input(&self) -> &Input {
+        &self.input
+    }
+
+    /// The structure; `None` where there is an error.
+    pub fn structure(&self) -> Option<&Structure> {
+        Some(&self.outcome.as_ref().ok()?.structure)
+    }
+
+    /// Why there is no structure.
+    pub fn error(&self) -> Option<&Error> {
+        Some(&self.outcome.as_ref().err()?.error)
+    }
+
+    /// The reader's error, which can show the place, where it is that.
+    pub fn read_error(&self) -> Option<&ReadError> {
+        self.outcome.as_ref().err()?.read.as_ref()
+    }
+
+    /// The structure and what is to be noted about it, or the error.
+    pub(super) fn parts(&self) -> Result<(&Structure, &[Note]), &Error> {
+        match &self.outcome {
+            Ok(ready) => Ok((&ready.structure, &ready.notes)),
+            Err(failure) => Err(&failure.error),
+        }
+    }
+}
+
+/// What canonical SMILES could not say.
+fn lost_in_smiles(structure: &Structure, lost: &[Lost]) -> Vec<Noted> {
+    if lost.is_empty() {
+        return Vec::new();
+    }
+    // The writer numbers atoms by the canonical form.
+    let order: Vec<u32> = structure.canonical().order().collect();
+    lost.iter().map(|lost| noted(lost, &order)).collect()
+}
+
+fn noted(lost: &Lost, order: &[u32]) -> Noted {
+    match lost {
+        Lost::Arrangement { centres, .. } => {
+            let mut atoms: Vec<u32> = centres
+                .iter()
+                .filter_map(|&at| order.get(at as usize).copied())
+                .collect();
+            atoms.sort_unstable();
+            atoms.dedup();
+            let text = format!(
+                "SMILES cannot say the arrangement at {}.",
+                atoms_in_words(&atoms)
+            );
+            Noted {
+                code: "smiles-loses-stereo",
+                atoms,
+                text,
+            }
+        }
+        _ => Noted {
+            code: "smiles-ring-labels",
+            atoms: Vec::new(),
+            text: "The SMILES needs more than 99 ring labels at once, beyond the standard."
+                .to_owned(),
+        },
+    }
+}

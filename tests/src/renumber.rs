@@ -1,0 +1,124 @@
+//! The same molecule with its atoms, bonds and ligands in another order.
+
+use molkin_graph::{
+    Atom, CanonicalForm, DrawnStereo, FormStereo, Ligand, Molecule, MoleculeBuilder, Parity, Shape,
+};
+
+use crate::Numbers;
+
+/// A molecule with atoms, bonds, the ends of bonds, marks and the ligands of marks in random order.
+///
+/// # Panics
+/// If the molecule cannot be rebuilt.
+pub fn renumbered(molecule: &Molecule, numbers: &mut Numbers) -> Molecule {
+    let order = numbers.order(molecule.atom_count());
+    let place = inverse(&order);
+    let mut builder = MoleculeBuilder::new();
+    let atoms: Vec<Atom> = molecule.atoms().copied().collect();
+    for &old in &order {
+        builder.add_atom(atoms[old as usize]);
+    }
+    let mut bonds: Vec<_> = molecule.bonds().collect();
+    numbers.shuffle(&mut bonds);
+    for (a, b, order) in bonds {
+        let (a, b) = (place[a as usize], place[b as usize]);
+        let (a, b) = if numbers.coin() { (a, b) } else { (b, a) };
+        builder.add_bond(a, b, order).unwrap();
+    }
+    let mut marks = molecule.drawn_stereo().to_vec();
+    numbers.shuffle(&mut marks);
+    for mark in marks {
+        let (centres, ligands, odd) = reordered(mark.shape, mark.centres, mark.ligands, numbers);
+        builder.add_stereo(DrawnStereo {
+            shape: mark.shape,
+            centres: centres.map(|atom| place[atom as usize]),
+            ligands: ligands.map(|ligand| moved(ligand, &place)),
+            parity: mark
+                .parity
+                .map(|parity| Parity::from_odd(parity.is_odd() ^ odd)),
+        });
+    }
+    builder.build().unwrap()
+}
+
+/// A form with its atoms in random order, which is canonical no longer. Written, it gives another
+/// spelling of the same molecule.
+pub fn renumbered_form(form: &CanonicalForm, numbers: &mut Numbers) -> CanonicalForm {
+    let order = numbers.order(form.atoms.len());
+    let place = inverse(&order);
+    let mut bonds: Vec<(u32, u32, u8)> = form
+        .bonds
+        .iter()
+        .map(|&(a, b, order)| {
+            let (a, b) = (place[a as usize], place[b as usize]);
+            (a.min(b), a.max(b), order)
+        })
+        .collect();
+    bonds.sort_unstable();
+    let mut stereo: Vec<FormStereo> = form
+        .stereo
+        .iter()
+        .map(|mark| {
+            let (centres, ligands, odd) =
+                reordered(mark.shape, mark.centres, mark.ligands, numbers);
+            FormStereo {
+                shape: mark.shape,
+                centres: centres.map(|atom| place[atom as usize]),
+                ligands: ligands.map(|ligand| moved(ligand, &place)),
+                parity: Parity::from_odd(mark.parity.is_odd() ^ odd),
+            }
+        })
+        .collect();
+    stereo.sort_by_key(|mark| mark.centres);
+    CanonicalForm {
+        atoms: order.iter().map(|&old| form.atoms[old as usize]).collect(),
+        bonds,
+        stereo,
+    }
+}
+
+/// The places at which the numbers of an order stand.
+fn inverse(order: &[u32]) -> Vec<u32> {
+    let mut place = vec![0; order.len()];
+    for (new, &old) in (0..).zip(order) {
+        place[old as usize] = new;
+    }
+    place
+}
+
+fn moved(ligand: Ligand, place: &[u32]) -> Ligand {
+    match ligand {
+        Ligand::Atom(atom) => Ligand::Atom(place[atom as usize]),
+        other => other,
+    }
+}
+
+/// Centres and ligands in another order, and whether the parity changes with it.
+fn reordered(
+    shape: Shape,
+    mut centres: [u32; 2],
+    mut ligands: [Ligand; 4],
+    numbers: &mut Numbers,
+) -> ([u32; 2], [Ligand; 4], bool) {
+    let mut odd = false;
+    if shape == Shape::Tetrahedral {
+        for index in (1..4).rev() {
+            let other = numbers.below(index + 1);
+            ligands.swap(index, other);
+            odd ^= other != index;
+        }
+        return (centres, ligands, odd);
+    }
+    for end in [0, 2] {
+        if numbers.coin() {
+            ligands.swap(end, end + 1);
+            odd = !odd;
+        }
+    }
+    // Both ends at once: an even permutation of four ligands, and the same sides of a double bond.
+    if numbers.coin() {
+        centres.swap(0, 1);
+        ligands.rotate_left(2);
+    }
+    (centres, ligands, odd)
+}

@@ -1,0 +1,115 @@
+//! Collections of real structures: what is read, and what canonical SMILES keeps.
+
+use std::{
+    collections::BTreeMap,
+    io::{Cursor, Read, Seek},
+};
+
+use molkin_formats::{
+    smiles,
+    source::{self, Format, RecordOutcome},
+};
+use molkin_graph::Canonical;
+use molkin_tests::{Comparer, Table, Tally, read_text, shared, workspace};
+use rstest::rstest;
+
+/// Records of a file whose canonical SMILES is read back, evenly spread, where not all are.
+const SAMPLE: usize = 3_000;
+
+/// The reason for each refused record of a file, by its number.
+fn refusals(file: &str) -> BTreeMap<u64, String> {
+    let table = Table::read(&workspace("fixtures/refused/collections.tsv"));
+    table
+        .columns(["file", "record", "code", "reason"])
+        .filter(|[own, ..]| *own == file)
+        .map(|[_, record, code, reason]| {
+            assert!(!reason.is_empty(), "{file} {record} gives no reason");
+            (record.parse().unwrap(), code.to_owned())
+        })
+        .collect()
+}
+
+/// The records of a file. That of drugs is a table of one column under a header.
+fn records(file: &str) -> Option<source::Records<'static>> {
+    let path = shared("collections")?.join(file);
+    let options = source::ReadOptions::default();
+    if file.ends_with(".csv") {
+        let mut text = Cursor::new(read_text(&path));
+        let mut header = [0; 7];
+        text.read_exact(&mut header).unwrap();
+        assert_eq!(&header, b"smiles\n");
+        text.seek(std::io::SeekFrom::Start(7)).unwrap();
+        return Some(source::Records::new(file, text, Format::Smiles, options));
+    }
+    Some(source::Records::open(&path, options).unwrap())
+}
+
+/// The canonical view of a record, or the code of the error.
+fn view(comparer: &mut Comparer, outcome: RecordOutcome) -> Result<Canonical, String> {
+    let record = outcome.result.map_err(|error| error.code().to_owned())?;
+    let structure = comparer.prepare(record.molecule)?;
+    Ok(structure.canonical().clone())
+}
+
+/// Canonical SMILES gives the same key and the same text, what it says to have lost aside.
+fn read_back(comparer: &mut Comparer, canonical: &Canonical) -> Result<bool, String> {
+    let written = smiles::write(&canonical.form());
+    if !written.lost.is_empty() {
+        return Ok(false);
+    }
+    let again = comparer.canonical(&written.text)?;
+    if again.compound_key() != canonical.compound_key() {
+        return Err(format!("{}: another key", written.text));
+    }
+    let text = smiles::write(&again.form()).text;
+    if text != written.text {
+        return Err(format!("{}: becomes {text}", written.text));
+    }
+    Ok(true)
+}
+
+#[rstest]
+#[case::drugs("drugs.csv", 1_935)]
+#[case::natural_products("natural_products.smi.gz", 50_000)]
+#[case::chiral("chiral.smi.gz", 81_030)]
+#[case::actives("actives.smi.gz", 10_000)]
+#[case::vendor("vendor.smi", 9_999)]
+#[case::hard("hard.sdf.gz", 1_181)]
+#[case::solubility("solubility.sdf.gz", 200)]
+#[case::nci("nci200.sdf.gz", 200)]
+#[case::mols("mols.1000.sdf.gz", 1_000)]
+fn collections_are_read_and_written(#[case] file: &'static str, #[case] stated: usize) {
+    let Some(records) = records(file) else {
+        return;
+    };
+    let full = std::env::var_os("MOLKIN_FULL").is_some();
+    let step = if full { 1 } else { stated.div_ceil(SAMPLE) };
+    let mut refusals = refusals(file);
+    assert!(refusals.len() * 1000 <= stated, "less than 99.9 % of {file} is read");
+    let mut comparer = Comparer::default();
+    let mut tally = Tally::new(file);
+    let mut round_trips = 0;
+    let mut lost = 0;
+    for outcome in records {
+        let outcome = outcome.unwrap();
+        let index = outcome.index;
+        let name = outcome.name.clone();
+        let result = match (view(&mut comparer, outcome), refusals.remove(&index)) {
+            (Ok(canonical), None) if index as usize % step == 0 => {
+                round_trips += 1;
+                let kept = read_back(&mut comparer, &canonical);
+                lost += usize::from(kept == Ok(false));
+                kept.map(|_| ())
+            }
+            (Ok(_), None) => Ok(()),
+            (Ok(_), Some(_)) => Err("listed as refused, but read".to_owned()),
+            (Err(code), Some(listed)) if code == listed => Ok(()),
+            (Err(code), _) => Err(code),
+        };
+        tally.value(result.map_err(|error| format!("{file} record {index} {name}: {error}")));
+    }
+    eprintln!("{file}: {round_trips} read back, {lost} with a stated loss");
+    assert!(refusals.is_empty(), "not met: {refusals:?}");
+    assert!(round_trips >= stated / step);
+    tally.finish(stated);
+}

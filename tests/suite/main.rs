@@ -1,0 +1,14 @@
+//! End-to-end tests of the three libraries through their public interfaces.
+//!
+//! Tests on `../shared/data` end with a message where it is absent. Every test states how many
+//! cases it runs and fails on fewer. `MOLKIN_FULL=1` takes whole files where samples are the rule.
+#![forbid(unsafe_code)]
+#![allow(
+    clippy::panic,
+    clippy::print_stderr,
+    clippy::unwrap_used,
+    reason = "a test fails by panicking and says what it did"
+)]
+
+mod fixtures;
+mod relations;

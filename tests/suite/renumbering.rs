@@ -1,0 +1,177 @@
+//! One key, whatever the order of atoms: in the molecule, in SMILES and in molfile lines.
+
+use std::collections::BTreeMap;
+
+use molkin_formats::{molfile, smiles};
+use molkin_graph::{Key, Molecule};
+use molkin_tests::{
+    Comparer, Numbers, Tally, all_markings, definition_pairs, first_word, read_text, renumbered,
+    renumbered_form, renumbered_molfile, shared, workspace,
+};
+use rstest::rstest;
+
+/// Numberings of each ordinary structure, and of each highly symmetric one.
+const TIMES: usize = 20;
+const MANY_TIMES: usize = 1_000;
+
+/// Structures to renumber: the committed ones, and real ones up to `count` in all.
+fn structures(count: usize) -> Vec<String> {
+    let pairs = definition_pairs();
+    let mut texts: Vec<String> = pairs.into_iter().flat_map(|pair| [pair.a, pair.b]).collect();
+    let files = ["collections/vendor.smi", "relations/a.smi", "relations/claims_b.smi"];
+    for path in files.into_iter().filter_map(shared) {
+        let text = read_text(&path);
+        let step = text.lines().count() / (count / files.len());
+        let lines = text.lines().step_by(step.max(1));
+        texts.extend(lines.map(|line| first_word(line).to_owned()));
+    }
+    texts
+}
+
+/// Checks that a molecule and its renumbered copies share their keys.
+fn molecule_copies(
+    comparer: &mut Comparer,
+    molecule: &Molecule,
+    numbers: &mut Numbers,
+    times: usize,
+) -> Result<(), String> {
+    let key = comparer.key(molecule)?;
+    for _ in 0..times {
+        let copy = renumbered(molecule, numbers);
+        if comparer.key(&copy)? != key {
+            return Err(format!("another key: {copy:?}"));
+        }
+    }
+    Ok(())
+}
+
+/// The same with spellings: the canonical form in another order, written and read.
+fn spellings(
+    comparer: &mut Comparer,
+    molecule: &Molecule,
+    numbers: &mut Numbers,
+    times: usize,
+) -> Result<(), String> {
+    let canonical = comparer.order(molecule)?;
+    let form = canonical.form();
+    if !smiles::write(&form).lost.is_empty() {
+        return Ok(());
+    }
+    for _ in 0..times {
+        let written = smiles::write(&renumbered_form(&form, numbers));
+        let again = comparer.canonical(&written.text)?;
+        if again.compound_key() != canonical.compound_key() {
+            return Err(format!("another key: {}", written.text));
+        }
+    }
+    Ok(())
+}
+
+type Check = fn(&mut Comparer, &Molecule, &mut Numbers, usize) -> Result<(), String>;
+
+#[rstest]
+#[case::molecules("renumbered molecules", molecule_copies)]
+#[case::spellings("respelled SMILES", spellings)]
+fn one_key_for_real_structures(#[case] name: &'static str, #[case] check: Check) {
+    let mut comparer = Comparer::default();
+    let mut numbers = Numbers::new(1);
+    let mut tally = Tally::new(name);
+    for text in structures(1_800) {
+        let outcome = comparer
+            .molecule(&text)
+            .and_then(|molecule| check(&mut comparer, &molecule, &mut numbers, TIMES));
+        tally.value(outcome.map_err(|error| format!("{text}: {error}")));
+    }
+    let there = shared("relations").is_some();
+    tally.finish(if there { 2_000 } else { 400 });
+}
+
+/// C60, by the spiral of its faces written as a ring of 60 with chords: bonds 1 to 30 are the
+/// perfect matching of a Hamiltonian cycle.
+fn buckminsterfullerene() -> &'static str {
+    "C12=C3C4=C5C6=C1C7=C8C9=C1C%10=C%11C(=C29)C3=C2C3=C4C4=C5C5=C9C6=C7C6=C7C8=C1C1=C8C%10=C%10C%11=C2C2=C3C3=C4C4=C5C5=C%11C%12=C(C6=C95)C7=C1C1=C%12C5=C%11C4=C3C3=C5C(=C81)C%10=C23"
+}
+
+#[rstest]
+#[case::molecules("renumbered cages", molecule_copies)]
+#[case::spellings("respelled cages", spellings)]
+fn one_key_for_symmetric_structures(#[case] name: &'static str, #[case] check: Check) {
+    let mut comparer = Comparer::default();
+    let mut numbers = Numbers::new(2);
+    let mut tally = Tally::new(name);
+    let cages = [
+        "C12C3C4C1C5C2C3C45",
+        "C12C3C4C5C1C1C6C2C2C3C3C4C4C5C1C1C6C2C3C41",
+        "C1C2CC3CC1CC(C2)C3",
+        buckminsterfullerene(),
+    ];
+    let cages = cages.map(|text| comparer.molecule(text).unwrap());
+    let inositols = inositols(&mut comparer);
+    for molecule in cages.iter().chain(inositols.values()) {
+        let outcome = check(&mut comparer, molecule, &mut numbers, MANY_TIMES);
+        tally.value(outcome);
+    }
+    tally.finish(13);
+}
+
+/// A molecule for each key of cyclohexane-1,2,3,4,5,6-hexol.
+fn inositols(comparer: &mut Comparer) -> BTreeMap<Key, Molecule> {
+    let flat = comparer.molecule("OC1C(O)C(O)C(O)C(O)C1O").unwrap();
+    let found: BTreeMap<Key, Molecule> = all_markings(&flat)
+        .map(|molecule| (comparer.key(&molecule).unwrap(), molecule))
+        .collect();
+    assert_eq!(found.len(), 9);
+    found
+}
+
+/// The molfiles of a file of molfiles or SDF.
+fn molfiles(text: &str) -> impl Iterator<Item = &str> {
+    let records = text.split("$$$$\n");
+    records.filter_map(|record| {
+        let end = record.find("M  END")?;
+        Some(&record[..end + "M  END".len()])
+    })
+}
+
+#[test]
+fn one_key_for_molfiles() {
+    let mut comparer = Comparer::default();
+    let mut numbers = Numbers::new(3);
+    let mut tally = Tally::new("renumbered molfiles");
+    let demo = std::fs::read_dir(workspace("fixtures/demo")).unwrap();
+    let demo = demo.map(|entry| entry.unwrap().path()).filter(|path| {
+        let extension = path.extension().unwrap_or_default();
+        extension == "mol" || extension == "sdf"
+    });
+    let published = ["drawings/v2000.sdf.gz", "collections/hard.sdf.gz", "collections/mols.1000.sdf.gz"];
+    for path in demo.chain(published.into_iter().filter_map(shared)) {
+        let text = read_text(&path);
+        for molfile in molfiles(&text) {
+            let Ok(record) = molfile::parse(molfile.as_bytes()) else {
+                continue;
+            };
+            let mut outcome = || {
+                let key = comparer.key(&record.molecule)?;
+                for _ in 0..TIMES {
+                    let Some(copy) = renumbered_molfile(molfile, &mut numbers) else {
+                        return Ok(false);
+                    };
+                    let record = molfile::parse(copy.as_bytes());
+                    let record = record.map_err(|error| format!("{error}\n{copy}"))?;
+                    if comparer.key(&record.molecule)? != key {
+                        return Err(format!("another key\n{copy}"));
+                    }
+                }
+                Ok(true)
+            };
+            match outcome() {
+                // It has lines that this test cannot renumber.
+                Ok(false) => {}
+                Ok(true) => tally.case(true, String::new),
+                Err(error) => tally.case(false, || format!("{}: {error}", record.name)),
+            }
+        }
+    }
+    let there = shared("drawings").is_some();
+    tally.finish(if there { 2_000 } else { 25 });
+}
