@@ -10,5 +10,15 @@
     reason = "a test fails by panicking and says what it did"
 )]
 
+mod collections;
+mod counts;
+mod demo;
+mod drawings;
 mod fixtures;
+mod golden;
+mod graphs;
+mod hostile;
+mod pages;
 mod relations;
+mod renumbering;
+mod symmetry;

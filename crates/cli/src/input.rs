@@ -7,7 +7,11 @@ use std::{
     path::Path,
 };
 
-use molkin_formats::source::{Format, ReadOptions, RecordOutcome, Records, SourceError};
+use molkin_formats::{
+    smiles,
+    source::{Format, ReadOptions, RecordOutcome, Records, SourceError},
+};
+use thiserror::Error;
 
 use crate::report::Report;
 
@@ -56,12 +60,18 @@ pub(crate) fn is_standard(argument: &OsStr) -> bool {
     Meaning::of(argument) == Meaning::Standard
 }
 
-/// A file with the same name as an argument that was taken for a SMILES.
-pub(crate) fn mistaken_for_smiles(argument: &OsStr) -> Option<&Path> {
-    match Meaning::of(argument) {
-        Meaning::Smiles(text) => Some(Path::new(text)).filter(|path| path.is_file()),
-        _ => None,
-    }
+/// Why an input cannot be opened.
+#[derive(Debug, Error)]
+pub(crate) enum OpenError {
+    /// The file or stream fails.
+    #[error(transparent)]
+    Source(#[from] SourceError),
+    /// No SMILES, but a file has this name.
+    #[error("{name} is no SMILES, but there is a file of that name: write file:{name}")]
+    FileName {
+        /// The argument.
+        name: String,
+    },
 }
 
 /// The records of one input. One record is in memory at a time, those looked at ahead aside.
@@ -77,13 +87,14 @@ pub(crate) struct Input {
 
 impl Input {
     /// Opens what an argument means.
-    pub(crate) fn open(argument: &OsStr) -> Result<Self, SourceError> {
+    pub(crate) fn open(argument: &OsStr) -> Result<Self, OpenError> {
         let options = ReadOptions::default();
         let records = match Meaning::of(argument) {
             Meaning::KnownFile(path) => Records::open(path, options)?,
             Meaning::AnyFile(path) => Records::open_any(path, options)?,
             Meaning::Standard => standard(options)?,
             Meaning::Smiles(text) => {
+                refuse_file_name(argument, text)?;
                 let bytes = Cursor::new(text.as_bytes().to_vec());
                 Records::new(text, bytes, Format::Smiles, options)
             }
@@ -139,6 +150,16 @@ impl Iterator for Input {
     }
 }
 
+/// A mistyped file name should not turn into as many errors as the other file has records.
+fn refuse_file_name(argument: &OsStr, text: &str) -> Result<(), OpenError> {
+    let bare = argument == text;
+    if bare && Path::new(text).exists() && smiles::parse(text).is_err() {
+        let name = text.to_owned();
+        return Err(OpenError::FileName { name });
+    }
+    Ok(())
+}
+
 /// The lines that decide the format of a stream without a name.
 const TELLING_LINES: usize = 4;
 /// As far as they are looked for.
@@ -190,7 +211,6 @@ pub(crate) fn each_record(
             records += 1;
             if !work(report, &name, outcome)? {
                 failed += 1;
-                hint(argument, report)?;
             }
         }
         if let Some(failure) = input.failure() {
@@ -201,19 +221,6 @@ pub(crate) fn each_record(
         report.trouble(format_args!("{failed} of {records} records failed"))?;
     }
     Ok(())
-}
-
-/// Says that a SMILES which failed is also the name of a file.
-pub(crate) fn hint(argument: &OsStr, report: &mut Report) -> io::Result<()> {
-    match mistaken_for_smiles(argument) {
-        Some(path) => {
-            let path = path.display();
-            report.say(format_args!(
-                "{path} was read as a SMILES; for the file of that name write file:{path}"
-            ))
-        }
-        None => Ok(()),
-    }
 }
 
 #[cfg(test)]
@@ -228,7 +235,10 @@ mod tests {
     #[test]
     fn what_arguments_mean() {
         check("a.smi", Meaning::KnownFile(Path::new("a.smi")));
-        check("dir/B.SDF.gz", Meaning::KnownFile(Path::new("dir/B.SDF.gz")));
+        check(
+            "dir/B.SDF.gz",
+            Meaning::KnownFile(Path::new("dir/B.SDF.gz")),
+        );
         check("t.csv", Meaning::KnownFile(Path::new("t.csv")));
         check("file:CCO", Meaning::AnyFile(Path::new("CCO")));
         check("-", Meaning::Standard);

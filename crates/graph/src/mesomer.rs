@@ -17,6 +17,7 @@ use crate::{matching::Matching, skeleton::Skeleton};
 
 pub(crate) use placement::System;
 use valence::Valence;
+pub(crate) use valence::neutral as neutral_valence;
 
 /// The order of a bond that differs among the best placements.
 pub(crate) const MOBILE: u8 = 5;

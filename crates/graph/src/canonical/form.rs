@@ -46,7 +46,9 @@ pub struct CanonicalForm {
 impl Canonical {
     /// The canonical form.
     pub fn form(&self) -> CanonicalForm {
-        let placed = placement::place(&self.skeleton, &self.mesomer, &self.written.rank);
+        let placed = placement::place(&self.skeleton, &self.mesomer, &self.written.rank, |bond| {
+            self.is_marked_mobile(bond)
+        });
         let rank = |atom: u32| self.written.rank[atom as usize];
         let mut form = CanonicalForm::default();
         // A labelled hydrogen of each host, for stereo ligands: host rank, mass, atom.
@@ -85,6 +87,20 @@ impl Canonical {
         form.bonds.sort_unstable();
         self.add_stereo(&mut form, &labelled);
         form
+    }
+
+    /// Whether a marked double-bond element sits on this bond although it is mobile.
+    fn is_marked_mobile(&self, bond: u32) -> bool {
+        let bond = &self.skeleton.bonds[bond as usize];
+        let places = self.variables.iter().zip(&self.claims.statuses);
+        places
+            .filter(|(v, status)| v.quiet && **status == Status::Marked)
+            .any(|(v, _)| {
+                v.members.iter().any(|&(index, _)| {
+                    let centres = self.perception.candidates[index].centres;
+                    centres == [bond.a, bond.b] || centres == [bond.b, bond.a]
+                })
+            })
     }
 
     fn add_stereo(&self, form: &mut CanonicalForm, labelled: &[(u32, u32, u32)]) {

@@ -3,7 +3,7 @@
 use crate::{
     Element,
     matching::Matching,
-    mesomer::{MOBILE, Mesomer},
+    mesomer::{self, MOBILE, Mesomer},
     skeleton::Skeleton,
 };
 
@@ -14,10 +14,16 @@ pub(super) struct Placed {
     pub(super) charges: Vec<i8>,
 }
 
-/// Of all best placements the first in canonical order: bonds by the ranks of their atoms, each as
-/// high an order as the bonds before it allow, then charges. Charge-separated centres below the
-/// second row are then written in the customary form (S=O, P=O).
-pub(super) fn place(skeleton: &Skeleton, mesomer: &Mesomer, rank: &[u32]) -> Placed {
+/// Of all best placements the first in canonical order: bonds that carry a mark (`marked`, by
+/// bond) before the others, then by the ranks of their atoms, each as high an order as the bonds
+/// before it allow, then charges. Charge-separated centres below the second row are then written in
+/// the customary form (S=O, P=O).
+pub(super) fn place(
+    skeleton: &Skeleton,
+    mesomer: &Mesomer,
+    rank: &[u32],
+    marked: impl Fn(u32) -> bool,
+) -> Placed {
     let mut placed = Placed {
         orders: mesomer.orders.clone(),
         charges: skeleton.atoms.iter().map(|atom| atom.charge).collect(),
@@ -41,6 +47,7 @@ pub(super) fn place(skeleton: &Skeleton, mesomer: &Mesomer, rank: &[u32]) -> Pla
             system.first_placement(
                 &mut matching,
                 rank,
+                &marked,
                 |bond, order| {
                     placed.orders[bond as usize] = order;
                 },
@@ -64,6 +71,10 @@ fn customary(skeleton: &Skeleton, rank: &[u32], placed: &mut Placed) {
         if element.is_metal() || !matches!(element.group(), Some(15..=17)) || element.period() < 3 {
             continue;
         }
+        // Only where reading the customary form would separate the charges again.
+        if !is_full(skeleton, placed, centre) {
+            continue;
+        }
         let mut partners: Vec<(u8, u32, u32, u32)> = skeleton
             .arcs(centre)
             .iter()
@@ -82,6 +93,7 @@ fn customary(skeleton: &Skeleton, rank: &[u32], placed: &mut Placed) {
         for (_, _, to, bond) in partners {
             while placed.charges[centre as usize] > 0
                 && placed.charges[to as usize] < 0
+                && is_full(skeleton, placed, to)
                 && placed.orders[bond as usize] < 3
             {
                 placed.charges[centre as usize] -= 1;
@@ -90,4 +102,16 @@ fn customary(skeleton: &Skeleton, rank: &[u32], placed: &mut Placed) {
             }
         }
     }
+}
+
+/// Whether an atom has exactly the bonds that its charge gives room for: no open valence, no octet
+/// exceeded or broken up.
+fn is_full(skeleton: &Skeleton, placed: &Placed, atom: u32) -> bool {
+    let record = &skeleton.atoms[atom as usize];
+    let bonds = skeleton.arcs(atom).iter();
+    let drawn: i32 = bonds
+        .map(|&(_, bond)| i32::from(placed.orders[bond as usize]))
+        .sum();
+    drawn + i32::from(record.hydrogens)
+        == mesomer::neutral_valence(record.element) + i32::from(placed.charges[atom as usize])
 }

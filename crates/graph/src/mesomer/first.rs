@@ -5,19 +5,21 @@ use crate::matching::{Matching, NONE};
 use super::placement::{Pool, System, SystemBond};
 
 impl System {
-    /// Walks through the bonds by the ranks of their atoms and gives each the highest order that is
+    /// Walks through the bonds, those that `first` names before the others and each sort by the ranks
+    /// of their atoms, and gives each the highest order that is
     /// still possible, then does the same with charges; reports orders and charges.
     pub(crate) fn first_placement(
         &self,
         matching: &mut Matching,
         rank: &[u32],
+        first: impl Fn(u32) -> bool,
         mut set_order: impl FnMut(u32, u8),
         mut set_charge: impl FnMut(u32, i8),
     ) {
         let mut system = self.clone();
         system.build(matching);
         matching.restore(&self.mate);
-        let mut order: Vec<(u32, u32, SystemBond)> = self
+        let mut order: Vec<(bool, u32, u32, SystemBond)> = self
             .bonds
             .iter()
             .map(|bond| {
@@ -31,16 +33,22 @@ impl System {
                         ..*bond
                     }
                 };
-                (ranks[0].min(ranks[1]), ranks[0].max(ranks[1]), ordered)
+                let later = !first(bond.bond);
+                (
+                    later,
+                    ranks[0].min(ranks[1]),
+                    ranks[0].max(ranks[1]),
+                    ordered,
+                )
             })
             .collect();
-        order.sort_unstable_by_key(|&(a, b, _)| (a, b));
+        order.sort_unstable_by_key(|&(later, a, b, _)| (later, a, b));
         let mut choice = Choice {
             system: &system,
             matching,
             settled: vec![false; self.mate.len()],
         };
-        for (_, _, bond) in order {
+        for (_, _, _, bond) in order {
             let pi = choice.raise(bond.a, bond.b);
             set_order(bond.bond, 1 + pi);
         }
@@ -102,11 +110,11 @@ impl Choice<'_> {
                     && self.matching.neighbours(x).contains(&y)
             })
             .collect();
-        let present = edges
-            .iter()
-            .copied()
-            .find(|&(x, y)| self.matching.mate(x) == y);
-        let found = present.or_else(|| edges.into_iter().find(|&edge| self.force(edge)));
+        // The first edge that some perfect matching has, not the one that happens to be present:
+        // vertices of an atom are not all alike, and the choice may not depend on the drawing.
+        let found = edges
+            .into_iter()
+            .find(|&(x, y)| self.matching.mate(x) == y || self.force((x, y)));
         if let Some((x, y)) = found {
             for vertex in [x, y] {
                 self.settled[vertex as usize] = true;

@@ -23,7 +23,7 @@ use super::{Error, Input, Note};
 /// use molkin_relate::wire::{Prepared, compare};
 ///
 /// let limits = Limits::default();
-/// let mut orderer = Orderer::new(limits.clone());
+/// let mut orderer = Orderer::new(limits);
 /// let file = "CCO ethanol\nCOC dimethyl ether\n";
 /// let mut sides = Vec::new();
 /// for outcome in Records::new("two.smi", file.as_bytes(), Format::Smiles, ReadOptions::default()) {

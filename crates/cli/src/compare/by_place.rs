@@ -1,0 +1,95 @@
+//! Pairs by the place of records in their sources.
+
+use std::io;
+
+use crate::input::Input;
+
+use super::Comparison;
+
+/// Compares record by record; or, where one input holds a single record and the other more, that
+/// one with each of the others. Records are read as they are needed.
+pub(super) fn compare(
+    comparison: &mut Comparison<'_>,
+    mut a: Input,
+    mut b: Input,
+) -> io::Result<()> {
+    match [a.look_ahead(2), b.look_ahead(2)] {
+        [0, _] | [_, 0] => without_records(comparison, [a, b]),
+        [1, 2] if a.failure().is_none() => one_against_many(comparison, a, b, false),
+        [2, 1] if b.failure().is_none() => one_against_many(comparison, b, a, true),
+        _ => in_step(comparison, a, b),
+    }
+}
+
+fn without_records(comparison: &mut Comparison<'_>, inputs: [Input; 2]) -> io::Result<()> {
+    for mut input in inputs {
+        if !comparison.broke_off(&input)? && input.look_ahead(1) == 0 {
+            let message = format!("{} holds no records: nothing to compare", input.name());
+            comparison.report.trouble(message)?;
+        }
+    }
+    Ok(())
+}
+
+fn one_against_many(
+    comparison: &mut Comparison<'_>,
+    mut one: Input,
+    mut many: Input,
+    swapped: bool,
+) -> io::Result<()> {
+    let Some(outcome) = one.next() else {
+        return Ok(());
+    };
+    let one = comparison.prepare(one.name(), outcome);
+    while let Some(outcome) = many.next() {
+        let other = comparison.prepare(many.name(), outcome);
+        let sides = if swapped {
+            [&other, &one]
+        } else {
+            [&one, &other]
+        };
+        comparison.pair(sides)?;
+    }
+    comparison.broke_off(&many).map(|_| ())
+}
+
+fn in_step(comparison: &mut Comparison<'_>, mut a: Input, mut b: Input) -> io::Result<()> {
+    loop {
+        match (a.next(), b.next()) {
+            (Some(left), Some(right)) => {
+                let left = comparison.prepare(a.name(), left);
+                let right = comparison.prepare(b.name(), right);
+                comparison.pair([&left, &right])?;
+            }
+            (Some(left), None) => return left_over(comparison, left.index, a, b),
+            (None, Some(right)) => return left_over(comparison, right.index, b, a),
+            (None, None) => {
+                comparison.broke_off(&a)?;
+                return comparison.broke_off(&b).map(|_| ());
+            }
+        }
+    }
+}
+
+/// Reports the records of `long` from `first` on, which have no partner.
+fn left_over(
+    comparison: &mut Comparison<'_>,
+    first: u64,
+    mut long: Input,
+    short: Input,
+) -> io::Result<()> {
+    comparison.broke_off(&short)?;
+    let last = long.by_ref().last().map_or(first, |outcome| outcome.index);
+    let which = if first == last {
+        format!("record {first} of {} has", long.name())
+    } else {
+        format!("records {first} to {last} of {} have", long.name())
+    };
+    let message = format!(
+        "{which} no partner: {} ends after record {}",
+        short.name(),
+        first - 1
+    );
+    comparison.report.trouble(message)?;
+    comparison.broke_off(&long).map(|_| ())
+}
