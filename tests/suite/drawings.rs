@@ -17,7 +17,7 @@ fn drawings_say_what_their_smiles_say() {
     let mut tally = Tally::new("drawings");
     for (line, drawing) in smiles.lines().zip(drawings) {
         let drawing = drawing.unwrap();
-        let mut outcome = || {
+        let outcome = || {
             let record = drawing.result.map_err(|error| error.to_string())?;
             let a = comparer.prepare(record.molecule)?;
             let b = comparer.structure(first_word(line))?;

@@ -19,7 +19,7 @@ use rstest::rstest;
 #[case::fullerenes("fullerenes.tsv.gz", ["one_kekule_smiles_Cn", "same_kekule_renumbered"], 2_038)]
 fn regular_graphs(
     #[case] file: &'static str,
-    #[case] columns: [&str; 2],
+    #[case] columns: [&'static str; 2],
     #[case] stated: usize,
 ) {
     let Some(folder) = shared("graphs/molecules") else {

@@ -145,10 +145,9 @@ fn damaged_molfiles_give_a_result_or_an_error() {
     tally.finish(8_000);
 }
 
-/// A ladder of fused four-membered rings: atom after atom along one side, closed from the other.
-fn ladder(rings: usize) -> String {
-    let up: String = (0..rings).map(|_| "C1C2".to_owned()).collect();
-    up
+/// Four-membered rings fused in a row: over one rung, back over the next, and so on.
+fn ladder(turns: usize) -> String {
+    format!("C1CC2C1{}CC2", "C1C2C2C1".repeat(turns))
 }
 
 /// Long and deep texts, read, ordered, written and related to themselves.
@@ -158,12 +157,12 @@ fn ladder(rings: usize) -> String {
 #[case::ring_openings("C1".repeat(500_000), "duplicate-bond")]
 #[case::ring_labels((10..100).map(|label| format!("C%{label}")).collect::<String>(), "ring-not-closed")]
 #[case::chain("C".repeat(100_000), "identical")]
-#[case::open_chain(format!("C/C={}", "C/C=".repeat(10_000)) + "C", "identical")]
+#[case::marked_double_bonds(format!("C{}", "/C=C/C".repeat(5_000)), "identical")]
 #[case::polyene("C=C".repeat(5_000), "identical")]
 #[case::polyyne("C#C".repeat(5_000), "identical")]
 #[case::cumulene("C=".repeat(5_000) + "C", "identical")]
-#[case::rings(rings(1_000), "identical")]
-#[case::fused_rings(format!("C1CC{}CC1", "C2CC".repeat(0)), "identical")]
+#[case::rings("C1CCCCC1".repeat(1_000), "identical")]
+#[case::fused_rings(ladder(1_000), "identical")]
 #[case::branches("C(".repeat(50_000) + "C" + &")".repeat(50_000), "identical")]
 #[case::nested("C(C)(".repeat(120) + "C" + &")".repeat(120), "identical")]
 #[case::salts("[Na+].[Cl-].".repeat(2_000) + "O", "identical")]
@@ -171,7 +170,6 @@ fn ladder(rings: usize) -> String {
 #[case::hub(format!("C{}", "(C)".repeat(20_000)), "identical")]
 #[case::open_centres(format!("C{}C", "C(F)".repeat(2_000)), "identical")]
 #[case::marked_centres(format!("C{}C", "[C@H](F)".repeat(2_000)), "identical")]
-#[case::ionic_chain("C[N+](C)(C)C[O-]".repeat(1), "identical")]
 fn long_and_deep_texts(#[case] text: String, #[case] expected: &str) {
     let mut comparer = Comparer::default();
     let outcome = match smiles::Reader::default().read(&text, 1) {

