@@ -24,7 +24,11 @@ pub(super) fn compare(
 fn without_records(comparison: &mut Comparison<'_>, inputs: [Input; 2]) -> io::Result<()> {
     for mut input in inputs {
         if !comparison.broke_off(&input)? && input.look_ahead(1) == 0 {
-            let message = format!("{} holds no records: nothing to compare", input.name());
+            let name = match input.name() {
+                "" => "the empty argument",
+                name => name,
+            };
+            let message = format!("{name} holds no records: nothing to compare");
             comparison.report.trouble(message)?;
         }
     }

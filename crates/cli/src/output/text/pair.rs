@@ -109,10 +109,13 @@ impl Differences<'_> {
         }
         list(out, style, (None, "order, A → B"), changed.into_iter())?;
         if !bonds.minimal && self.pair.relation == Some("constitutional") {
-            let text = format!(
-                "The search ended at its budget. Another map may change less; at least {} differ in any. --steps N looks further.",
-                counted(bonds.at_least, "bond")
-            );
+            let mut text =
+                "The search ended at its budget; another map may change less.".to_owned();
+            if bonds.at_least > 0 {
+                let least = counted(bonds.at_least, "bond");
+                text.push_str(&format!(" In any map at least {least} differ."));
+            }
+            text.push_str(" --steps N looks further.");
             labelled(out, style, (None, "not proved least"), &text)?;
         }
         Ok(())
