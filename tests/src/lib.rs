@@ -18,6 +18,7 @@ mod numbers;
 mod pairs;
 mod renumber;
 mod small;
+mod spelling;
 mod stereo;
 mod tally;
 mod text;
@@ -31,6 +32,7 @@ pub use crate::{
     pairs::{Expected, Pair, definition_pairs, fixture_pairs},
     renumber::{renumbered, renumbered_form},
     small::small_isomers,
+    spelling::random_spelling,
     stereo::{all_markings, mirrored},
     tally::Tally,
     text::{Table, first_word, read_text, shared, workspace},

@@ -13,9 +13,6 @@ use molkin_graph::Canonical;
 use molkin_tests::{Comparer, Table, Tally, read_text, shared, workspace};
 use rstest::rstest;
 
-/// Records of a file whose canonical SMILES is read back, evenly spread, where not all are.
-const SAMPLE: usize = 3_000;
-
 /// The reason for each refused record of a file, by its number.
 fn refusals(file: &str) -> BTreeMap<u64, String> {
     let table = Table::read(&workspace("fixtures/refused/collections.tsv"));
@@ -75,41 +72,35 @@ fn read_back(comparer: &mut Comparer, canonical: &Canonical) -> Result<bool, Str
 #[case::actives("actives.smi.gz", 10_000)]
 #[case::vendor("vendor.smi", 9_999)]
 #[case::hard("hard.sdf.gz", 1_181)]
-#[case::solubility("solubility.sdf.gz", 200)]
+#[case::solubility("solubility.sdf.gz", 1_025)]
 #[case::nci("nci200.sdf.gz", 200)]
 #[case::mols("mols.1000.sdf.gz", 1_000)]
 fn collections_are_read_and_written(#[case] file: &'static str, #[case] stated: usize) {
     let Some(records) = records(file) else {
         return;
     };
-    let full = std::env::var_os("MOLKIN_FULL").is_some();
-    let step = if full { 1 } else { stated.div_ceil(SAMPLE) };
     let mut refusals = refusals(file);
     assert!(refusals.len() * 1000 <= stated, "less than 99.9 % of {file} is read");
     let mut comparer = Comparer::default();
     let mut tally = Tally::new(file);
-    let mut round_trips = 0;
     let mut lost = 0;
     for outcome in records {
         let outcome = outcome.unwrap();
         let index = outcome.index;
         let name = outcome.name.clone();
         let result = match (view(&mut comparer, outcome), refusals.remove(&index)) {
-            (Ok(canonical), None) if index as usize % step == 0 => {
-                round_trips += 1;
+            (Ok(canonical), None) => {
                 let kept = read_back(&mut comparer, &canonical);
                 lost += usize::from(kept == Ok(false));
                 kept.map(|_| ())
             }
-            (Ok(_), None) => Ok(()),
             (Ok(_), Some(_)) => Err("listed as refused, but read".to_owned()),
             (Err(code), Some(listed)) if code == listed => Ok(()),
             (Err(code), _) => Err(code),
         };
         tally.value(result.map_err(|error| format!("{file} record {index} {name}: {error}")));
     }
-    eprintln!("{file}: {round_trips} read back, {lost} with a stated loss");
+    eprintln!("{file}: {lost} records lose something as SMILES, and say so");
     assert!(refusals.is_empty(), "not met: {refusals:?}");
-    assert!(round_trips >= stated / step);
     tally.finish(stated);
 }

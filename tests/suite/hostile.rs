@@ -26,8 +26,9 @@ fn use_up(comparer: &mut Comparer, molecule: Molecule) -> &'static str {
     let canonical = structure.canonical();
     let written = smiles::write(&canonical.form());
     let _ = (canonical.stereo_elements(), canonical.remarks());
+    let kept = written.lost.is_empty();
     let Ok(again) = comparer.structure(&written.text) else {
-        return "written, not read back";
+        return if kept { "not read back" } else { "a stated loss" };
     };
     let limits = Limits {
         map_steps: 200,
@@ -39,10 +40,13 @@ fn use_up(comparer: &mut Comparer, molecule: Molecule) -> &'static str {
     explain(&structure, &again, verdict.relation, &limits);
     match verdict.relation {
         Relation::Identical => "identical",
-        _ if written.lost.is_empty() => "changed",
-        _ => "changed, with a stated loss",
+        _ if kept => "changed",
+        _ => "a stated loss",
     }
 }
+
+/// Outcomes that no input may have: what is written without loss must come back as it was.
+const WRONG: [&str; 2] = ["changed", "not read back"];
 
 /// One to four changes of single bytes or stretches: overwritten, left out, doubled, cut off.
 fn damaged(text: &str, alphabet: &[u8], numbers: &mut Numbers) -> Vec<u8> {
@@ -96,8 +100,7 @@ fn damaged_smiles_give_a_result_or_an_error() {
             }
         };
         met.insert(outcome);
-        // What is read and written without loss must come back as it was.
-        tally.case(outcome != "changed", || String::from_utf8_lossy(&text).into_owned());
+        tally.case(!WRONG.contains(&outcome), || String::from_utf8_lossy(&text).into_owned());
     }
     assert!(met.len() > 12, "the damage reaches too little: {met:?}");
     tally.finish(20_000);
@@ -137,7 +140,7 @@ fn damaged_molfiles_give_a_result_or_an_error() {
             }
         };
         met.insert(outcome);
-        tally.case(outcome != "changed", || String::from_utf8_lossy(&text).into_owned());
+        tally.case(!WRONG.contains(&outcome), || String::from_utf8_lossy(&text).into_owned());
         let records = sdf::Records::new(&text[..], molfile::ReadOptions::default());
         assert!(records.count() <= 6);
     }
@@ -145,7 +148,7 @@ fn damaged_molfiles_give_a_result_or_an_error() {
     tally.finish(8_000);
 }
 
-/// Four-membered rings fused in a row: over one rung, back over the next, and so on.
+/// Four-membered rings fused in a row, two for each turn: over one rung, back over the next.
 fn ladder(turns: usize) -> String {
     format!("C1CC2C1{}CC2", "C1C2C2C1".repeat(turns))
 }
@@ -153,23 +156,26 @@ fn ladder(turns: usize) -> String {
 /// Long and deep texts, read, ordered, written and related to themselves.
 #[rstest]
 #[case::parentheses("(".repeat(1_000_000), "branch-without-atom")]
-#[case::open_branches("C(".repeat(500_000), "branch-not-closed")]
-#[case::ring_openings("C1".repeat(500_000), "duplicate-bond")]
+#[case::open_branches("C(".repeat(150_000), "branch-not-closed")]
+#[case::more_branches("C(".repeat(500_000), "too-many-atoms")]
+#[case::ring_openings("C1".repeat(75_000), "duplicate-bond")]
 #[case::ring_labels((10..100).map(|label| format!("C%{label}")).collect::<String>(), "ring-not-closed")]
 #[case::chain("C".repeat(100_000), "identical")]
-#[case::marked_double_bonds(format!("C{}", "/C=C/C".repeat(5_000)), "identical")]
-#[case::polyene("C=C".repeat(5_000), "identical")]
+#[case::marked_double_bonds(format!("C{}", "/C=C/C".repeat(1_000)), "identical")]
+#[case::polyene("C=C".repeat(1_000), "identical")]
 #[case::polyyne("C#C".repeat(5_000), "identical")]
 #[case::cumulene("C=".repeat(5_000) + "C", "identical")]
 #[case::rings("C1CCCCC1".repeat(1_000), "identical")]
-#[case::fused_rings(ladder(1_000), "identical")]
+#[case::fused_rings(ladder(20), "identical")]
+#[case::too_many_fused_rings(ladder(500), "a stated loss")]
 #[case::branches("C(".repeat(50_000) + "C" + &")".repeat(50_000), "identical")]
 #[case::nested("C(C)(".repeat(120) + "C" + &")".repeat(120), "identical")]
 #[case::salts("[Na+].[Cl-].".repeat(2_000) + "O", "identical")]
-#[case::waters("O.".repeat(20_000) + "O", "identical")]
-#[case::hub(format!("C{}", "(C)".repeat(20_000)), "identical")]
-#[case::open_centres(format!("C{}C", "C(F)".repeat(2_000)), "identical")]
-#[case::marked_centres(format!("C{}C", "[C@H](F)".repeat(2_000)), "identical")]
+#[case::waters("O.".repeat(5_000) + "O", "identical")]
+#[case::hub(format!("C{}", "(C)".repeat(500)), "identical")]
+#[case::great_hub(format!("C{}", "(C)".repeat(20_000)), "not ordered")]
+#[case::open_centres(format!("C{}C", "C(F)".repeat(1_000)), "identical")]
+#[case::marked_centres(format!("C{}C", "[C@H](F)".repeat(1_000)), "identical")]
 fn long_and_deep_texts(#[case] text: String, #[case] expected: &str) {
     let mut comparer = Comparer::default();
     let outcome = match smiles::Reader::default().read(&text, 1) {

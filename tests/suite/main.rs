@@ -1,7 +1,7 @@
 //! End-to-end tests of the three libraries through their public interfaces.
 //!
 //! Tests on `../shared/data` end with a message where it is absent. Every test states how many
-//! cases it runs and fails on fewer. `MOLKIN_FULL=1` takes whole files where samples are the rule.
+//! cases it runs and fails on fewer.
 #![forbid(unsafe_code)]
 #![allow(
     clippy::panic,

@@ -5,7 +5,7 @@ use std::collections::BTreeMap;
 use molkin_formats::{molfile, smiles};
 use molkin_graph::{Atom, BondOrder, Element, Key, Molecule, MoleculeBuilder};
 use molkin_tests::{
-    Comparer, Numbers, Tally, all_markings, definition_pairs, first_word, read_text, renumbered,
+    Comparer, Numbers, Tally, all_markings, definition_pairs, first_word, random_spelling, read_text, renumbered,
     renumbered_form, renumbered_molfile, shared, workspace,
 };
 use rstest::rstest;
@@ -67,11 +67,33 @@ fn spellings(
     Ok(())
 }
 
+/// The same with a writer that shares nothing with the library's, where it can spell the structure.
+fn random_spellings(
+    comparer: &mut Comparer,
+    molecule: &Molecule,
+    numbers: &mut Numbers,
+    times: usize,
+) -> Result<(), String> {
+    let canonical = comparer.order(molecule)?;
+    let form = canonical.form();
+    for _ in 0..times {
+        let Some(text) = random_spelling(&form, numbers) else {
+            return Ok(());
+        };
+        let again = comparer.canonical(&text)?;
+        if again.compound_key() != canonical.compound_key() {
+            return Err(format!("another key: {text}"));
+        }
+    }
+    Ok(())
+}
+
 type Check = fn(&mut Comparer, &Molecule, &mut Numbers, usize) -> Result<(), String>;
 
 #[rstest]
 #[case::molecules("renumbered molecules", molecule_copies)]
 #[case::spellings("respelled SMILES", spellings)]
+#[case::random_spellings("random spellings", random_spellings)]
 fn one_key_for_real_structures(#[case] name: &'static str, #[case] check: Check) {
     let mut comparer = Comparer::default();
     let mut numbers = Numbers::new(1);
@@ -135,6 +157,7 @@ fn buckminsterfullerene() -> Molecule {
 #[rstest]
 #[case::molecules("renumbered cages", molecule_copies)]
 #[case::spellings("respelled cages", spellings)]
+#[case::random_spellings("random spellings of cages", random_spellings)]
 fn one_key_for_symmetric_structures(#[case] name: &'static str, #[case] check: Check) {
     let mut comparer = Comparer::default();
     let mut numbers = Numbers::new(2);

@@ -50,8 +50,7 @@ impl Report {
     pub(crate) fn say(&mut self, message: impl Display) -> io::Result<()> {
         // On a terminal both streams meet; their order should be that of the events.
         self.out.flush()?;
-        // Nobody can be told that standard error is closed.
-        let _ = writeln!(io::stderr(), "molkin: {message}");
+        words(message);
         Ok(())
     }
 
@@ -65,4 +64,10 @@ impl Report {
     pub(crate) fn flush(&mut self) -> io::Result<()> {
         self.out.flush()
     }
+}
+
+/// Says something on standard error.
+pub(crate) fn words(message: impl Display) {
+    // Nobody can be told that standard error is closed.
+    let _ = writeln!(io::stderr(), "molkin: {message}");
 }

@@ -7,7 +7,7 @@ use crate::{
     compare, describe,
     exit::Status,
     keys,
-    report::Report,
+    report::{self, Report},
 };
 
 /// Runs a command. Trouble with single inputs and records is reported where it occurs; only a
@@ -25,7 +25,7 @@ pub(crate) fn run(arguments: &Arguments) -> Status {
         Err(error) if error.kind() == ErrorKind::BrokenPipe => {}
         Err(error) => {
             report.count(Status::Trouble);
-            let _ = report.say(format_args!("standard output: {error}"));
+            report::words(format_args!("standard output: {error}"));
         }
     }
     report.status()

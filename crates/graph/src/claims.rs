@@ -11,6 +11,7 @@
 //!   automorphism takes to marked ones make it longer, up to a limit.
 
 mod action;
+mod orbits;
 mod solve;
 mod variables;
 

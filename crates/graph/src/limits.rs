@@ -21,7 +21,8 @@ pub struct Limits {
     pub record_bytes: usize,
     /// Atoms of one record, hydrogens written as atoms included: 200,000 by default.
     pub atoms: usize,
-    /// Refinements of a partition, over all canonical searches for one record: 200,000 by default.
+    /// Steps of all canonical searches for one record, a step being an edge or a vertex looked at:
+    /// 100 million by default, which takes about a second.
     pub order_steps: u64,
     /// Unmarked stereo elements in positions that symmetry relates to marked ones: the stereoisomers
     /// they allow are listed, two to this power. 8 by default.
@@ -38,7 +39,7 @@ impl Default for Limits {
             line_bytes: 1 << 20,
             record_bytes: 16 << 20,
             atoms: 200_000,
-            order_steps: 200_000,
+            order_steps: 100_000_000,
             open_elements: 8,
             map_steps: 500_000,
             stop: None,

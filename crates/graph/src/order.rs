@@ -5,10 +5,12 @@
 
 mod coloured;
 mod partition;
+mod permutation;
 mod refine;
 mod search;
 
 pub(crate) use coloured::{Coloured, Unit};
+pub(crate) use permutation::Permutation;
 use search::Search;
 
 use crate::{Limits, OrderError};
@@ -38,8 +40,8 @@ pub(crate) struct Labelling {
     pub(crate) rank: Vec<u32>,
     /// The graph written in that order; equal exactly for isomorphic graphs.
     pub(crate) certificate: Vec<u64>,
-    /// Generators of the automorphism group, as images of all vertices.
-    pub(crate) generators: Vec<Vec<u32>>,
+    /// Generators of the automorphism group.
+    pub(crate) generators: Vec<Permutation>,
 }
 
 impl Labeller {
@@ -120,11 +122,8 @@ impl Labeller {
         }
         for pair in self.found.windows(2) {
             if pair[0].certificate == pair[1].certificate {
-                let mut exchange: Vec<u32> = (0..graph.len() as u32).collect();
-                for (&a, &b) in pair[0].order.iter().zip(&pair[1].order) {
-                    exchange[a as usize] = b;
-                    exchange[b as usize] = a;
-                }
+                let pairs = pair[0].order.iter().zip(&pair[1].order);
+                let exchange = Permutation::of(pairs.flat_map(|(&a, &b)| [(a, b), (b, a)]));
                 labelling.generators.push(exchange);
             }
         }
@@ -197,9 +196,10 @@ mod tests {
             let copy = label(&[0; 10], &shuffled(&edges, 10, seed));
             assert_eq!(copy.certificate, reference.certificate);
             for generator in &copy.generators {
-                let mut seen = generator.clone();
-                seen.sort_unstable();
-                assert_eq!(seen, (0..10).collect::<Vec<_>>());
+                let mut images: Vec<u32> = generator.moved().iter().map(|&(_, to)| to).collect();
+                images.sort_unstable();
+                let moved: Vec<u32> = generator.moved().iter().map(|&(from, _)| from).collect();
+                assert_eq!(images, moved);
             }
         }
     }

@@ -88,6 +88,8 @@ pub(crate) struct Perception {
     /// Cages whose marks no cage can have: they count as drawn.
     pub(crate) impossible: Vec<Vec<u32>>,
     pub(crate) undrawable: Vec<Undrawable>,
+    /// Centres, the lower first, and candidates; sorted.
+    places: Vec<([u32; 2], usize)>,
 }
 
 impl Perception {
@@ -105,16 +107,26 @@ impl Perception {
         let marks = marks::on_skeleton(skeleton, drawn);
         let thetas = tetrahedral::find(self, skeleton, mesomer, &marks);
         double_bond::find(self, skeleton, mesomer, &marks);
+        let places = self.candidates.iter().enumerate();
+        self.places.clear();
+        self.places
+            .extend(places.map(|(index, c)| (ascending(c.centres), index)));
+        self.places.sort_unstable();
         marks::apply(self, skeleton, mesomer, &marks);
         bridgehead::bind(self, &thetas);
         undrawable::find(skeleton, mesomer, &mut self.undrawable);
     }
 
-    /// The candidate at a tetrahedral centre or a pair of ends.
+    /// The candidate at a tetrahedral centre (given twice) or a pair of ends.
     pub(crate) fn candidate_at(&self, centres: [u32; 2]) -> Option<usize> {
-        let [a, b] = centres;
-        self.candidates
-            .iter()
-            .position(|c| c.centres == [a, b] || c.centres == [b, a])
+        let at = self
+            .places
+            .binary_search_by_key(&ascending(centres), |place| place.0)
+            .ok()?;
+        Some(self.places[at].1)
     }
+}
+
+fn ascending([a, b]: [u32; 2]) -> [u32; 2] {
+    [a.min(b), a.max(b)]
 }

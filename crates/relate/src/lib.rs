@@ -1,6 +1,6 @@
 //! How two molecules are related, and what makes the difference.
 //!
-//! [`relate`] is cheap and gives the verdict; [`explain`] finds what accounts for it; [`wire`] is the
+//! [`relate`] is cheap and gives the verdict; [`explain()`] finds what accounts for it; [`wire`] is the
 //! output contract of docs/output.md.
 #![forbid(unsafe_code)]
 

@@ -115,7 +115,7 @@ fn dropped(reason: Dropped) -> (&'static str, &'static str) {
     }
 }
 
-/// The remark that identical but open records get: what each leaves unmarked.
+/// The remark that open, undetermined and unresolved records get: what each leaves unmarked.
 pub(crate) fn unmarked(structure: &Structure) -> Option<Noted> {
     let mut atoms: Vec<u32> = structure
         .canonical()

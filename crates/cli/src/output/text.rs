@@ -22,7 +22,8 @@ fn place(source: &str, record: u64, name: &str) -> String {
     if many || source == "-" || record > 1 {
         text.push_str(&format!(", record {record}"));
     }
-    if !name.is_empty() {
+    // A SMILES that was typed with its name shows it already.
+    if !name.is_empty() && !source.ends_with(name) {
         text.push_str(": ");
         text.push_str(&printable(name));
     }

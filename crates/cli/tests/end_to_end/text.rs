@@ -13,74 +13,212 @@ fn compared(a: &str, b: &str) -> String {
 
 #[test]
 fn constitutional() {
-    assert_snapshot!(compared("label.mol", "arrived.mol"), @"");
+    assert_snapshot!(compared("label.mol", "arrived.mol"), @r"
+    Constitutional isomers: the same formula C8H8O2, but the atoms are connected differently. At the least one bond only in A and one bond only in B.
+      A                 label.mol: QM-0417 label
+                        C8H8O2  C1(OC)=CC=C(C=O)C=C1
+      B                 arrived.mol: QM-0417 bottle
+                        C8H8O2  C1(C(=O)OC)=CC=CC=C1
+      only in A         O2–C3
+      only in B         O2–C3
+      hydrogens, A → B  C3 (no H) → C8 (1 H), C7 (1 H) → C3 (no H)
+      branches in A     C3 (2 ring bonds, a branch of 2), C6 (2 ring bonds, a branch of 2)
+      branches in B     C3 (branches of 1, 2, 6), C5 (2 ring bonds, a branch of 4)
+      atoms, A → B      C1 → C1, O2 → O2, C3 → C8, C4 → C9, C5 → C10, C6 → C5, C7 → C3, O8 → O4,
+                        C9 → C6, C10 → C7
+    ");
 }
 
 #[test]
 fn bond_orders() {
-    assert_snapshot!(compared("C=CCc1ccccc1 allylbenzene", "C/C=C/c1ccccc1 trans-1-propenylbenzene"), @"");
+    assert_snapshot!(compared("C=CCO", "C/C=C/O"), @r"
+    Constitutional isomers: the same formula C3H6O, but the atoms are connected differently. At the least 2 bonds of different order.
+      A                 C=CCO
+                        C3H6O  C(=C)CO
+      B                 C/C=C/O
+                        C3H6O  C(/C)=C\O
+      order, A → B      C1=C2 → C1–C2, C2–C3 → C2=C3
+      hydrogens, A → B  C1 (2 H) → C1 (3 H), C3 (2 H) → C3 (1 H)
+      chain in A        4 atoms: C1–C2–C3–O4
+      chain in B        4 atoms: C1–C2–C3–O4
+      atoms, A → B      the same numbers in both
+    ");
 }
 
 #[test]
 fn chains() {
-    assert_snapshot!(compared("CC(C)CC", "CCCCC"), @"");
+    assert_snapshot!(compared("CC(=O)CN", "NCCC=O"), @r"
+    Constitutional isomers: the same formula C3H7NO, but the atoms are connected differently. At the least one bond only in A and one bond only in B.
+      A                 CC(=O)CN
+                        C3H7NO  C(=O)(C)CN
+      B                 NCCC=O
+                        C3H7NO  O=CCCN
+      only in A         C2–C4
+      only in B         C2–C3
+      hydrogens, A → B  C1 (3 H) → C3 (2 H), C2 (no H) → C4 (1 H)
+      branches in A     C2 (branches of 1, 1, 2)
+      chain in A        4 atoms: O3–C2–C4–N5
+      chain in B        5 atoms: N1–C2–C3–C4–O5
+      atoms, A → B      C1 → C3, C2 → C4, O3 → O5, C4 → C2, N5 → N1
+    ");
 }
 
 #[test]
 fn enantiomers() {
-    assert_snapshot!(compared("hand-label.mol", "hand-arrived.mol"), @"");
+    assert_snapshot!(compared("hand-label.mol", "hand-arrived.mol"), @r"
+    Enantiomers: mirror images that do not coincide. One stereo element differs.
+      A                 hand-label.mol: QM-0422 label
+                        C8H10O  C1([C@@H](O)C)=CC=CC=C1
+      B                 hand-arrived.mol: QM-0422 bottle
+                        C8H10O  C1([C@H](O)C)=CC=CC=C1
+      stereo            C2 → C2: centre, inverted
+      atoms, A → B      the same numbers in both
+    ");
 }
 
 #[test]
 fn diastereomers() {
-    assert_snapshot!(compared("O=C/C=C(C)/CCC=C(C)C geranial", "O=C/C=C(C)\\CCC=C(C)C neral"), @"");
+    assert_snapshot!(compared("O=C/C=C(C)/CCC=C(C)C geranial", "O=C/C=C(C)\\CCC=C(C)C neral"), @r"
+    Diastereomers: the same connectivity, a different arrangement in space, and not mirror images. One stereo element differs.
+      A                 O=C/C=C(C)/CCC=C(C)C geranial
+                        C10H16O  C(/C)(=C/C=O)CCC=C(C)C
+      B                 O=C/C=C(C)\CCC=C(C)C neral
+                        C10H16O  C(/C)(=C\C=O)CCC=C(C)C
+      stereo            C3=C4 → C3=C4: double bond, opposite geometry
+      atoms, A → B      the same numbers in both
+    ");
 }
 
 #[test]
 fn undetermined() {
-    assert_snapshot!(compared("crossed-label.mol", "crossed-arrived.mol"), @"");
+    assert_snapshot!(compared("crossed-label.mol", "crossed-arrived.mol"), @r"
+    Undetermined: the same connectivity; as marked, the two may or may not be the same stereoisomer. One stereo element differs.
+      A                 crossed-label.mol: QM-0430 label
+                        C10H10O  C1(C=CC(=O)C)=CC=CC=C1
+      B                 crossed-arrived.mol: QM-0430 bottle
+                        C10H10O  C1(/C=C/C(=O)C)=CC=CC=C1
+      stereo            C4=C5 → C4=C5: double bond, open in A, marked in B
+      atoms, A → B      the same numbers in both
+      note on A         Stereogenic but unmarked: atoms 4 and 5. [unmarked-stereo]
+    ");
 }
 
 #[test]
 fn unresolved() {
-    assert_snapshot!(compared("half-label.mol", "half-arrived.mol"), @"");
+    assert_snapshot!(compared("half-label.mol", "half-arrived.mol"), @r"
+    Unresolved: surely different stereoisomers, but the marks do not settle whether they are mirror images. One stereo element differs.
+      A                 half-label.mol: QM-0433 label
+                        C7H14O  C1(C)CCC[C@@H](O)C1
+      B                 half-arrived.mol: QM-0433 bottle
+                        C7H14O  C1(C)CCC[C@H](O)C1
+      stereo            C6 → C6: centre, inverted
+      atoms, A → B      the same numbers in both
+      note on A         Stereogenic but unmarked: atom 2. [unmarked-stereo]
+      note on B         Stereogenic but unmarked: atom 2. [unmarked-stereo]
+    ");
 }
 
 #[test]
 fn identical() {
-    assert_snapshot!(compared("nitro-label.mol", "nitro-arrived.mol"), @"");
+    assert_snapshot!(compared("nitro-label.mol", "nitro-arrived.mol"), @r"
+    The two records are the same compound.
+      A                 nitro-label.mol: QM-0436 label
+                        C7H7NO3  C1([N+](=O)[O-])=CC=C(OC)C=C1
+      B                 nitro-arrived.mol: QM-0436 bottle
+                        C7H7NO3  C1([N+](=O)[O-])=CC=C(OC)C=C1
+    ");
 }
 
 #[test]
 fn identical_but_open() {
-    assert_snapshot!(compared("wavy-label.mol", "wavy-arrived.mol"), @"");
+    assert_snapshot!(compared("wavy-label.mol", "wavy-arrived.mol"), @r"
+    The two records say the same, but they leave stereo open: the samples may still differ.
+      A                 wavy-label.mol: QM-0440 label
+                        C9H10O2  C1(C(C)C(=O)O)=CC=CC=C1
+      B                 wavy-arrived.mol: QM-0440 bottle
+                        C9H10O2  C1(C(C)C(=O)O)=CC=CC=C1
+      note on A         Stereogenic but unmarked: atom 2. [unmarked-stereo]
+      note on B         Stereogenic but unmarked: atom 2. [unmarked-stereo]
+    ");
 }
 
 #[test]
 fn not_isomers() {
-    assert_snapshot!(compared("salt-label.mol", "salt-arrived.mol"), @"");
+    assert_snapshot!(compared("salt-label.mol", "salt-arrived.mol"), @r"
+    Not isomers: the molecular formulae differ (C7H6O3 and C7H5NaO3).
+      A                 salt-label.mol: QM-0444 label
+                        C7H6O3  C(=O)(O)C1=C(O)C=CC=C1
+      B                 salt-arrived.mol: QM-0444 bottle
+                        C7H5NaO3  [Na+].O=C([O-])C1=C(O)C=CC=C1
+    ");
 }
 
 #[test]
 fn unreadable() {
-    assert_snapshot!(compared("CCOC(=O)c1ccccc1", "CCOC(=O)c1cccc1"), @"");
+    assert_snapshot!(compared("CCOC(=O)c1ccccc1", "CCOC(=O)c1cccc1"), @r"
+    No verdict.
+      A                 CCOC(=O)c1ccccc1
+                        C9H10O2  C1(C(=O)OCC)=CC=CC=C1
+      B                 CCOC(=O)c1cccc1
+      error             no-kekule-structure at line 1, column 14: no choice of double bonds fits the
+                        aromatic atoms; left over: atom 10
+        1 | CCOC(=O)c1cccc1
+          |              ^
+    ");
 }
 
 #[test]
 fn budget_ended() {
     let outcome = run(&["compare", "OCC=C=CO", "O=CC=CCO", "--steps", "1"]);
     let (text, _) = outcome.out.split_once("\nThis compares").unwrap();
-    assert_snapshot!(text, @"");
+    assert_snapshot!(text, @r"
+    Constitutional isomers: the same formula C4H6O2, but the atoms are connected differently. One way to see it: 2 bonds of different order.
+      A                 OCC=C=CO
+                        C4H6O2  C(=CO)=CCO
+      B                 O=CC=CCO
+                        C4H6O2  O=CC=CCO
+      order, A → B      C4=C5 → C2–C3, C5–O6 → O1=C2
+      not proved least  The search ended at its budget; another map may change less. --steps N looks
+                        further.
+      hydrogens, A → B  C4 (no H) → C3 (1 H), O6 (1 H) → O1 (no H)
+      chain in A        6 atoms: O1–C2–C3–C4–C5–O6
+      chain in B        6 atoms: O1–C2–C3–C4–C5–O6
+      atoms, A → B      O1 → O6, C2 → C5, C3 → C4, C4 → C3, C5 → C2, O6 → O1
+    ");
 }
 
 #[test]
 fn described() {
-    assert_snapshot!(demo(&["describe", "half-label.mol", "CC[O-] ethoxide", "C1CC"]).out, @"");
+    assert_snapshot!(demo(&["describe", "half-label.mol", "CC[O-] ethoxide", "C1CC"]).out, @r"
+    half-label.mol: QM-0433 label
+      formula           C7H14O
+      mass              114.188 average, 114.10447 monoisotopic
+      rings + π bonds   1
+      SMILES            C1(C)CCC[C@@H](O)C1
+      constitution key  1-c1ed35b27ef5aed3f8c98a363d2c2534
+      compound key      1-d173267fe81681274998c3d69227973c
+      open              The record stands for more than one possible sample.
+      stereo            C2: tetrahedral, unmarked
+      stereo            C6: tetrahedral, marked
+
+    CC[O-] ethoxide
+      formula           C2H5O-
+      mass              45.062 average, 45.03459 monoisotopic
+      rings + π bonds   0 (by the textbook formula 0.5)
+      SMILES            [O-]CC
+      constitution key  1-f71570ae0e14c5ab59f125ced2fc57c0
+      compound key      1-f6e7f569b2c52c3d4d90a5800b988afb
+
+    C1CC
+      error             ring-not-closed at line 1, column 2: ring label 1 is opened and never closed
+        1 | C1CC
+          |  ^
+    ");
 }
 
 #[test]
 fn counted() {
     let outcome = demo(&["compare", "held.smi", "vendor.sdf", "--by", "name"]);
     let tally = outcome.out.lines().rev().nth(2).unwrap();
-    assert_snapshot!(tally, @"");
+    assert_snapshot!(tally, @"14 pairs: 6 identical (1 of them open), 4 stereo, 2 constitutional, 1 not isomers, 1 without a verdict");
 }

@@ -114,7 +114,10 @@ impl Canonical {
             });
         }
         for (number, variable) in self.variables.iter().enumerate() {
-            if self.claims.free[number] && variable.odd.is_some() {
+            // A drawing gives every double bond a geometry, so one that cannot have any is no news.
+            let drawn_only = self.claims.statuses[number] == Status::NotStereogenic
+                && self.shape(variable) == Shape::DoubleBond;
+            if self.claims.free[number] && variable.odd.is_some() && !drawn_only {
                 for &(index, _) in &variable.members {
                     let centres = perception.candidates[index].centres;
                     notes.push(Remark::MarkIdle {

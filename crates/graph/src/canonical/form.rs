@@ -1,5 +1,7 @@
 //! The canonical form: the molecule as canonical text writes it, numbered in canonical order.
 
+use std::collections::HashSet;
+
 use crate::{Canonical, Element, Ligand, Parity, Shape, claims::Status, stereo::slot};
 
 use super::placement;
@@ -46,8 +48,9 @@ pub struct CanonicalForm {
 impl Canonical {
     /// The canonical form.
     pub fn form(&self) -> CanonicalForm {
+        let marked = self.marked_mobile_bonds();
         let placed = placement::place(&self.skeleton, &self.mesomer, &self.written.rank, |bond| {
-            self.is_marked_mobile(bond)
+            marked.contains(&bond)
         });
         let rank = |atom: u32| self.written.rank[atom as usize];
         let mut form = CanonicalForm::default();
@@ -89,18 +92,17 @@ impl Canonical {
         form
     }
 
-    /// Whether a marked double-bond element sits on this bond although it is mobile.
-    fn is_marked_mobile(&self, bond: u32) -> bool {
-        let bond = &self.skeleton.bonds[bond as usize];
+    /// Mobile bonds that carry a mark.
+    fn marked_mobile_bonds(&self) -> HashSet<u32> {
         let places = self.variables.iter().zip(&self.claims.statuses);
         places
-            .filter(|(v, status)| v.quiet && **status == Status::Marked)
-            .any(|(v, _)| {
-                v.members.iter().any(|&(index, _)| {
-                    let centres = self.perception.candidates[index].centres;
-                    centres == [bond.a, bond.b] || centres == [bond.b, bond.a]
-                })
+            .filter(|(variable, status)| variable.quiet && **status == Status::Marked)
+            .flat_map(|(variable, _)| &variable.members)
+            .filter_map(|&(index, _)| {
+                let [a, b] = self.perception.candidates[index].centres;
+                self.skeleton.bond_between(a, b)
             })
+            .collect()
     }
 
     fn add_stereo(&self, form: &mut CanonicalForm, labelled: &[(u32, u32, u32)]) {

@@ -1,6 +1,6 @@
 //! The normal form, atom by atom, for callers who compare constitutions.
 
-use crate::{Canonical, Element, mesomer::MOBILE};
+use crate::{Canonical, Element, mesomer::MOBILE, order::Permutation};
 
 /// An atom of the normal form, terminal hydrogens folded.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -87,12 +87,13 @@ impl Canonical {
     /// images of positions in [`Canonical::normal_form`].
     pub fn automorphisms(&self) -> Vec<Vec<u32>> {
         let rank = |atom: u32| self.written.rank[atom as usize];
-        let image = |generator: &Vec<u32>| {
-            self.written
+        let image = |generator: &Permutation| {
+            let images = self
+                .written
                 .order
                 .iter()
-                .map(|&atom| rank(generator[atom as usize]))
-                .collect()
+                .map(|&atom| rank(generator.image(atom)));
+            images.collect()
         };
         self.bare.generators.iter().map(image).collect()
     }

@@ -1,6 +1,9 @@
 //! How automorphisms of the constitution act on stereo elements.
 
-use crate::stereo::{Candidate, Perception, slot};
+use crate::{
+    order::Permutation,
+    stereo::{Candidate, Perception, slot},
+};
 
 use super::Variable;
 
@@ -30,35 +33,23 @@ pub(super) fn membership(candidates: usize, variables: &[Variable]) -> Vec<(usiz
 }
 
 impl Action {
-    /// Works out the action of automorphisms given as images of all skeleton atoms.
+    /// Works out the action of automorphisms of the skeleton.
     pub(super) fn of(
-        generators: &[Vec<u32>],
+        generators: &[Permutation],
         perception: &Perception,
         variables: &[Variable],
     ) -> Self {
         let candidates = &perception.candidates;
         let member = membership(candidates.len(), variables);
-        let mut places: Vec<([u32; 2], usize)> = candidates
-            .iter()
-            .enumerate()
-            .map(|(index, c)| (sorted(c.centres), index))
-            .collect();
-        places.sort_unstable();
-        let find = |centres: [u32; 2]| {
-            let at = places
-                .binary_search_by_key(&sorted(centres), |place| place.0)
-                .ok()?;
-            Some(places[at].1)
-        };
         let moves = generators.iter().map(|generator| {
-            let image = |vertex: u32| generator[vertex as usize];
+            let image = |vertex: u32| generator.image(vertex);
             let mut moves = Vec::new();
             for (from, variable) in variables.iter().enumerate() {
                 let Some(&(index, opposite)) = variable.members.first() else {
                     continue;
                 };
                 let candidate = &candidates[index];
-                let Some(target) = find(candidate.centres.map(image)) else {
+                let Some(target) = perception.candidate_at(candidate.centres.map(image)) else {
                     continue;
                 };
                 let inverts = inverts(candidate, &candidates[target], image);
@@ -95,10 +86,6 @@ impl Action {
             }
         }
     }
-}
-
-fn sorted([a, b]: [u32; 2]) -> [u32; 2] {
-    [a.min(b), a.max(b)]
 }
 
 /// Whether the images of a candidate's ligands are an odd permutation of the target's.

@@ -6,7 +6,7 @@ use crate::{
     stereo::Perception,
 };
 
-use super::{Variable, action::Action};
+use super::{Variable, action::Action, orbits::Orbits};
 
 /// What became of a variable.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -182,7 +182,9 @@ impl Solver<'_> {
     ) -> Result<Vec<usize>, OrderError> {
         let mut more = Vec::new();
         for root in 0..free.len() {
-            if orbits.root[root] != root || orbits.inert[root] || free[root] {
+            // Where no automorphism inverts an element in place, the number of even ones in its
+            // orbit is a property of each stereoisomer, so a mark there is never idle.
+            if orbits.root[root] != root || !orbits.inverted[root] || free[root] {
                 continue;
             }
             let orbit: Vec<usize> = (0..free.len())
@@ -255,7 +257,7 @@ impl Solver<'_> {
     ) -> Result<bool, OrderError> {
         let variables = self.variables;
         let counts = |v: usize| free[v] && !never[v] && !variables[v].quiet;
-        if (0..free.len()).any(|v| counts(v) && orbits.inert[v]) {
+        if (0..free.len()).any(|v| counts(v) && !orbits.inverted[orbits.root[v]]) {
             return Ok(true);
         }
         if !(0..free.len()).any(counts) {
@@ -295,7 +297,7 @@ impl Solver<'_> {
                 }
             } else if never[v] {
                 Status::NotStereogenic
-            } else if orbits.inert[v] || self.is_stereogenic(v, free, never)? {
+            } else if !orbits.inverted[orbits.root[v]] || self.is_stereogenic(v, free, never)? {
                 Status::Unmarked
             } else {
                 Status::NotStereogenic
@@ -350,35 +352,4 @@ impl Claims {
 struct Member {
     assignment: Vec<bool>,
     labelling: Labelling,
-}
-
-/// Orbits of variables, and which variables no automorphism moves or inverts.
-#[derive(Debug, Clone)]
-pub(super) struct Orbits {
-    /// Per variable: the least variable of its orbit.
-    root: Vec<usize>,
-    inert: Vec<bool>,
-}
-
-impl Orbits {
-    fn of(action: &Action, variables: usize) -> Self {
-        let mut root: Vec<usize> = (0..variables).collect();
-        let mut inert = vec![true; variables];
-        for entry in action.moves.iter().flatten() {
-            inert[entry.from] = false;
-            inert[entry.to] = false;
-            let find = |root: &[usize], mut v: usize| {
-                while root[v] != v {
-                    v = root[v];
-                }
-                v
-            };
-            let (a, b) = (find(&root, entry.from), find(&root, entry.to));
-            root[a.max(b)] = a.min(b);
-        }
-        for v in 0..variables {
-            root[v] = root[root[v]];
-        }
-        Self { root, inert }
-    }
 }

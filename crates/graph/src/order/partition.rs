@@ -11,14 +11,9 @@ pub(crate) struct Partition {
     /// Per cell start: the number of vertices.
     pub(super) len: Vec<u32>,
     pub(super) cells: u32,
-}
-
-/// What has to be put back to return to a node of the search tree.
-#[derive(Debug, Default, Clone)]
-pub(super) struct Snapshot {
-    lab: Vec<u32>,
-    len: Vec<u32>,
-    cells: u32,
+    /// The splits made, as the cell that was split and the cell split off, so that each can be
+    /// undone by joining it to what precedes it.
+    log: Vec<(u32, u32)>,
 }
 
 impl Partition {
@@ -38,6 +33,7 @@ impl Partition {
         self.len.clear();
         self.len.resize(members.len(), 0);
         self.cells = 0;
+        self.log.clear();
         let mut start = 0;
         for at in 0..self.lab.len() {
             let vertex = self.lab[at];
@@ -71,78 +67,93 @@ impl Partition {
         })
     }
 
-    /// Splits a vertex off the front of its cell; the rest follows as a new cell.
-    pub(super) fn individualise(&mut self, vertex: u32) {
+    /// The first cell from `start` on that has two or more vertices; there must be one.
+    pub(super) fn first_open_cell(&self, mut start: u32) -> u32 {
+        while self.len[start as usize] == 1 {
+            start += 1;
+        }
+        start
+    }
+
+    /// Splits a vertex off the end of its cell and returns the start of its new cell.
+    pub(super) fn individualise(&mut self, vertex: u32) -> u32 {
         let start = self.cell[vertex as usize];
-        let (at, first) = (self.pos[vertex as usize], self.lab[start as usize]);
-        self.lab.swap(start as usize, at as usize);
-        self.pos[vertex as usize] = start;
-        self.pos[first as usize] = at;
-        let rest = self.len[start as usize] - 1;
-        self.len[start as usize] = 1;
-        self.len[start as usize + 1] = rest;
-        for at in start + 1..=start + rest {
-            let other = self.lab[at as usize];
-            self.cell[other as usize] = start + 1;
-        }
+        let last = start + self.len[start as usize] - 1;
+        self.exchange(self.pos[vertex as usize], last);
+        self.len[start as usize] -= 1;
+        self.len[last as usize] = 1;
+        self.cell[vertex as usize] = last;
         self.cells += 1;
+        self.log.push((start, last));
+        last
     }
 
-    pub(super) fn save(&self, snapshot: &mut Snapshot) {
-        snapshot.lab.clone_from(&self.lab);
-        snapshot.len.clone_from(&self.len);
-        snapshot.cells = self.cells;
+    fn exchange(&mut self, a: u32, b: u32) {
+        self.lab.swap(a as usize, b as usize);
+        self.pos[self.lab[a as usize] as usize] = a;
+        self.pos[self.lab[b as usize] as usize] = b;
     }
 
-    pub(super) fn restore(&mut self, snapshot: &Snapshot) {
-        self.lab.clone_from(&snapshot.lab);
-        self.len.clone_from(&snapshot.len);
-        self.cells = snapshot.cells;
-        let mut start = 0;
-        while start < self.lab.len() {
-            let end = start + self.len[start] as usize;
-            for at in start..end {
-                let vertex = self.lab[at] as usize;
-                self.pos[vertex] = at as u32;
-                self.cell[vertex] = start as u32;
+    /// How many splits were made so far; [`Partition::undo_to`] goes back to it.
+    pub(super) fn splits(&self) -> usize {
+        self.log.len()
+    }
+
+    /// Undoes splits until only the first `splits` are left. Cells get their vertices back, in
+    /// whatever order: the order within a cell means nothing.
+    pub(super) fn undo_to(&mut self, splits: usize) {
+        while self.log.len() > splits
+            && let Some((cell, part)) = self.log.pop()
+        {
+            let size = self.len[part as usize];
+            self.len[cell as usize] += size;
+            for at in part..part + size {
+                self.cell[self.lab[at as usize] as usize] = cell;
             }
-            start = end;
+            self.cells -= 1;
         }
     }
 
-    /// Splits the cell at `start` by a key per vertex, ascending. Calls `fragment` with the start of
-    /// each part in order, if there is more than one.
+    /// Splits a cell by keys: `keyed` lists those of its vertices whose key is not zero, ascending.
+    /// Vertices with key zero stay in front. Costs only what `keyed` is long. Calls `fragment` with
+    /// start, size and key of each part in order, if there is more than one.
     pub(super) fn split(
         &mut self,
-        start: u32,
-        key: &[u64],
+        cell: u32,
+        keyed: &[(u64, u32)],
         mut fragment: impl FnMut(u32, u32, u64),
     ) -> bool {
-        let end = start + self.len[start as usize];
-        let slice = &mut self.lab[start as usize..end as usize];
-        let first = key[slice[0] as usize];
-        if slice.iter().all(|&v| key[v as usize] == first) {
+        let size = self.len[cell as usize];
+        let rest = size - keyed.len() as u32;
+        let one_key = keyed.first().map(|&(key, _)| key) == keyed.last().map(|&(key, _)| key);
+        if keyed.is_empty() || (rest == 0 && one_key) {
             return false;
         }
-        slice.sort_unstable_by_key(|&v| key[v as usize]);
-        let mut begin = start;
-        for at in start..end {
-            let vertex = self.lab[at as usize];
-            if at > start && key[vertex as usize] != key[self.lab[at as usize - 1] as usize] {
-                self.len[begin as usize] = at - begin;
-                begin = at;
-                self.cells += 1;
+        for (at, &(_, vertex)) in (cell + rest..).zip(keyed) {
+            // Later vertices of the list are still where they were, so nothing placed is moved.
+            self.exchange(self.pos[vertex as usize], at);
+        }
+        if rest > 0 {
+            self.len[cell as usize] = rest;
+            fragment(cell, rest, 0);
+        }
+        let mut at = cell + rest;
+        let logged = self.log.len();
+        for group in keyed.chunk_by(|a, b| a.0 == b.0) {
+            let length = group.len() as u32;
+            self.len[at as usize] = length;
+            for &(_, vertex) in group {
+                self.cell[vertex as usize] = at;
             }
-            self.pos[vertex as usize] = at;
-            self.cell[vertex as usize] = begin;
+            if at > cell {
+                self.cells += 1;
+                self.log.push((cell, at));
+            }
+            fragment(at, length, group[0].0);
+            at += length;
         }
-        self.len[begin as usize] = end - begin;
-        let mut at = start;
-        while at < end {
-            let size = self.len[at as usize];
-            fragment(at, size, key[self.lab[at as usize] as usize]);
-            at += size;
-        }
+        // Undone from the back, parts have to join the cell from its near end onwards.
+        self.log[logged..].reverse();
         true
     }
 }

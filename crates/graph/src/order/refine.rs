@@ -12,9 +12,15 @@ pub(super) struct Refiner {
     queued: Vec<bool>,
     key: Vec<u64>,
     touched: Vec<u32>,
-    cells: Vec<u32>,
+    /// Cell, key and number of each touched vertex.
+    keyed: Vec<(u32, u64, u32)>,
+    /// Key and number of the touched vertices of one cell.
+    group: Vec<(u64, u32)>,
+    parts: Vec<u32>,
     splitter: Vec<u32>,
     invariant: u64,
+    /// Edges looked at since the last reset.
+    pub(super) work: u64,
 }
 
 /// One step of a hash that is invariant because its inputs come in an invariant order.
@@ -27,6 +33,7 @@ fn mix(state: u64, word: u64) -> u64 {
 impl Refiner {
     /// Gets ready for a graph with this many vertices.
     pub(super) fn reset(&mut self, vertices: usize) {
+        self.work = 0;
         self.queue.clear();
         self.queued.clear();
         self.queued.resize(vertices, false);
@@ -71,7 +78,7 @@ impl Refiner {
             }
             self.splitter.clear();
             self.splitter.extend_from_slice(partition.members(start));
-            self.touch(graph, partition);
+            self.touch(graph);
             self.invariant = mix(self.invariant, start.into());
             self.split_touched(partition);
             // The queue is drained from the front; forget the drained part before it grows large.
@@ -84,49 +91,50 @@ impl Refiner {
     }
 
     /// Counts, for each vertex next to the splitter, its edges into it by class.
-    fn touch(&mut self, graph: &Coloured, partition: &Partition) {
+    fn touch(&mut self, graph: &Coloured) {
         self.touched.clear();
-        self.cells.clear();
         for &from in &self.splitter {
+            self.work += graph.arcs(from).len() as u64;
             for &(to, class) in graph.arcs(from) {
                 let key = &mut self.key[to as usize];
                 if *key == 0 {
                     self.touched.push(to);
-                    self.cells.push(partition.cell[to as usize]);
                 }
                 *key += 1 << (COUNT_BITS * u32::from(class));
             }
         }
-        self.cells.sort_unstable();
-        self.cells.dedup();
     }
 
-    fn split_touched(&mut self, partition: &mut Partition) {
-        let cells = std::mem::take(&mut self.cells);
-        for &cell in &cells {
-            let size = partition.len[cell as usize];
-            if size == 1 {
-                let key = self.key[partition.lab[cell as usize] as usize];
-                self.invariant = mix(self.invariant, key ^ (u64::from(cell) << 40));
-                continue;
-            }
-            self.split_cell(cell, partition);
-        }
-        self.cells = cells;
+    /// Splits all cells that have touched vertices by the keys of these, in an invariant order.
+    fn split_touched(&mut self, partition: &mut Partition) -> bool {
+        self.keyed.clear();
         for &vertex in &self.touched {
-            self.key[vertex as usize] = 0;
+            let key = std::mem::take(&mut self.key[vertex as usize]);
+            self.keyed
+                .push((partition.cell[vertex as usize], key, vertex));
         }
+        self.keyed.sort_unstable();
+        let keyed = std::mem::take(&mut self.keyed);
+        let mut split = false;
+        for group in keyed.chunk_by(|a, b| a.0 == b.0) {
+            let cell = group[0].0;
+            self.group.clear();
+            self.group
+                .extend(group.iter().map(|&(_, key, vertex)| (key, vertex)));
+            split |= self.split_cell(cell, partition);
+        }
+        self.keyed = keyed;
+        split
     }
 
-    /// Splits a cell by the present keys and queues the parts: all if the cell was waiting, else all
-    /// but the first of the largest (Hopcroft 1971).
+    /// Splits a cell by the keys in `group` and queues the parts: all if the cell was waiting, else
+    /// all but the first of the largest (Hopcroft 1971).
     fn split_cell(&mut self, cell: u32, partition: &mut Partition) -> bool {
         let (mut invariant, mut largest) = (self.invariant, (0, 0));
-        let mut parts: [u32; 16] = [0; 16];
-        let mut count = 0;
         let waiting = self.queued[cell as usize];
-        let mut overflow = Vec::new();
-        let split = partition.split(cell, &self.key, |start, size, key| {
+        self.parts.clear();
+        let parts = &mut self.parts;
+        let split = partition.split(cell, &self.group, |start, size, key| {
             invariant = mix(
                 mix(invariant, key),
                 u64::from(start) << 32 | u64::from(size),
@@ -134,22 +142,21 @@ impl Refiner {
             if size > largest.1 {
                 largest = (start, size);
             }
-            match parts.get_mut(count) {
-                Some(slot) => *slot = start,
-                None => overflow.push(start),
-            }
-            count += 1;
+            parts.push(start);
         });
         if split {
-            let known = parts[..count.min(parts.len())].iter().copied();
-            for start in known.chain(overflow) {
+            for at in 0..self.parts.len() {
+                let start = self.parts[at];
                 if waiting || start != largest.0 {
                     self.enqueue(start);
                 }
             }
         } else {
-            let key = self.key[partition.lab[cell as usize] as usize];
-            invariant = mix(mix(invariant, key), cell.into());
+            let key = self.group.first().map_or(0, |&(key, _)| key);
+            invariant = mix(
+                mix(invariant, key),
+                u64::from(cell) << 32 | self.group.len() as u64,
+            );
         }
         self.invariant = invariant;
         split
@@ -162,8 +169,8 @@ impl Refiner {
             return false;
         }
         self.touched.clear();
-        self.cells.clear();
         let vertices = graph.len() as u32;
+        self.work += units.len() as u64;
         for &index in units {
             let unit = &graph.units[index as usize];
             let rank = |v: u32| {
@@ -186,22 +193,10 @@ impl Refiner {
             for &centre in &unit.centres[..ends] {
                 if self.key[centre as usize] == 0 {
                     self.touched.push(centre);
-                    self.cells.push(partition.cell[centre as usize]);
                 }
                 self.key[centre as usize] += word;
             }
         }
-        self.cells.sort_unstable();
-        self.cells.dedup();
-        let mut split = false;
-        let cells = std::mem::take(&mut self.cells);
-        for &cell in &cells {
-            split |= self.split_cell(cell, partition);
-        }
-        self.cells = cells;
-        for &vertex in &self.touched {
-            self.key[vertex as usize] = 0;
-        }
-        split
+        self.split_touched(partition)
     }
 }

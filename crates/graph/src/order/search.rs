@@ -11,7 +11,8 @@ use crate::{Limits, OrderError};
 
 use super::{
     coloured::{Coloured, ranked_parity},
-    partition::{Partition, Snapshot},
+    partition::Partition,
+    permutation::Permutation,
     refine::Refiner,
 };
 
@@ -30,7 +31,10 @@ struct Leaf {
 /// A node on the present path.
 #[derive(Debug, Clone)]
 struct Node {
-    snapshot: Snapshot,
+    /// Splits of the partition at this node.
+    splits: usize,
+    /// The cell whose vertices are the children.
+    target: u32,
     children: Vec<u32>,
     next: usize,
     /// The vertex individualised to leave this node towards the present one.
@@ -53,7 +57,7 @@ pub(crate) struct Search {
     best: Leaf,
     current: Vec<u64>,
     units: Vec<u32>,
-    generators: Vec<Vec<u32>>,
+    generators: Vec<Permutation>,
     /// Union-find over vertices, of the automorphisms found so far.
     orbit: Vec<u32>,
     pruning: Vec<u32>,
@@ -132,8 +136,9 @@ impl Search {
         }
     }
 
+    /// Refines once. Work is counted in edges and vertices looked at, so that a step costs about
+    /// the same on small and large graphs.
     fn step(&mut self, graph: &Coloured, limits: &Limits) -> Result<u64, OrderError> {
-        self.steps += 1;
         if self.steps > limits.order_steps {
             return Err(OrderError::StepLimit {
                 limit: limits.order_steps,
@@ -142,15 +147,23 @@ impl Search {
         if limits.stopped() {
             return Err(OrderError::Stopped);
         }
-        Ok(self.refiner.refine(graph, &self.units, &mut self.partition))
+        let trace = self.refiner.refine(graph, &self.units, &mut self.partition);
+        self.steps += 1 + std::mem::take(&mut self.refiner.work);
+        Ok(trace)
     }
 
-    /// Makes the present partition a node whose children are the vertices of its first smallest
-    /// cell.
+    /// Makes the present partition a node whose children are the vertices of its first cell of two
+    /// or more. Cells before that of the node above have one vertex each and keep it, so the look
+    /// starts there: all levels of a path together look at each cell once.
     fn open_node(&mut self, like_first: bool, against_best: Ordering) {
+        let from = self
+            .depth
+            .checked_sub(1)
+            .map_or(0, |above| self.nodes[above].target);
         if self.nodes.len() == self.depth {
             self.nodes.push(Node {
-                snapshot: Snapshot::default(),
+                splits: 0,
+                target: 0,
                 children: Vec::new(),
                 next: 0,
                 chosen: 0,
@@ -158,17 +171,14 @@ impl Search {
                 against_best,
             });
         }
-        let partition = &self.partition;
-        let target = partition
-            .starts()
-            .filter(|&start| partition.len[start as usize] > 1)
-            .min_by_key(|&start| partition.len[start as usize]);
+        let target = self.partition.first_open_cell(from);
         let node = &mut self.nodes[self.depth];
-        partition.save(&mut node.snapshot);
+        node.splits = self.partition.splits();
+        node.target = target;
         node.children.clear();
-        if let Some(target) = target {
-            node.children.extend_from_slice(partition.members(target));
-        }
+        node.children
+            .extend_from_slice(self.partition.members(target));
+        self.steps += node.children.len() as u64;
         node.next = 0;
         node.like_first = like_first;
         node.against_best = against_best;
@@ -186,9 +196,8 @@ impl Search {
         let node = &mut self.nodes[level];
         node.chosen = vertex;
         let (like_first, against_best) = (node.like_first, node.against_best);
-        self.partition.restore(&node.snapshot);
-        let cell = self.partition.cell[vertex as usize];
-        self.partition.individualise(vertex);
+        self.partition.undo_to(node.splits);
+        let cell = self.partition.individualise(vertex);
         // The individualised vertex alone refines as far as it and the rest of its cell would.
         self.refiner.enqueue(cell);
         let trace = self.step(graph, limits)?;
@@ -248,10 +257,10 @@ impl Search {
         for generator in &self.generators {
             let fixes = self.nodes[..level]
                 .iter()
-                .all(|node| generator[node.chosen as usize] == node.chosen);
+                .all(|node| generator.image(node.chosen) == node.chosen);
             if fixes {
-                for &vertex in &self.partition.lab {
-                    unite(&mut self.pruning, vertex, generator[vertex as usize]);
+                for &(from, to) in generator.moved() {
+                    unite(&mut self.pruning, from, to);
                 }
             }
         }
@@ -260,6 +269,7 @@ impl Search {
     fn leaf(&mut self, graph: &Coloured, like_first: bool, against_best: Ordering) {
         let mut certificate = std::mem::take(&mut self.current);
         write_certificate(graph, &self.partition, &self.units, &mut certificate);
+        self.steps += certificate.len() as u64;
         self.current = certificate;
         if self.first.certificate.is_empty() {
             self.keep_best();
@@ -298,9 +308,13 @@ impl Search {
     /// two paths part: everything in between is an image of what was explored.
     fn automorphism(&mut self, with_first: bool) {
         let earlier = if with_first { &self.first } else { &self.best };
-        let mut generator: Vec<u32> = (0..self.orbit.len() as u32).collect();
-        for (&from, &to) in earlier.lab.iter().zip(&self.partition.lab) {
-            generator[from as usize] = to;
+        let pairs = earlier
+            .lab
+            .iter()
+            .copied()
+            .zip(self.partition.lab.iter().copied());
+        let generator = Permutation::of(pairs);
+        for &(from, to) in generator.moved() {
             unite(&mut self.orbit, from, to);
         }
         let common = self.nodes[..self.depth]
@@ -323,8 +337,8 @@ impl Search {
         &self.best.certificate
     }
 
-    /// Generators of the automorphism group, as images of all vertices of the graph.
-    pub(crate) fn generators(&self) -> &[Vec<u32>] {
+    /// Generators of the automorphism group.
+    pub(crate) fn generators(&self) -> &[Permutation] {
         &self.generators
     }
 }

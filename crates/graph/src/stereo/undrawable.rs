@@ -1,6 +1,6 @@
 //! What a plain drawing cannot say although it may matter.
 
-use crate::{Element, mesomer::Mesomer, skeleton::Skeleton};
+use crate::{Element, mesomer::Mesomer, order::Permutation, skeleton::Skeleton};
 
 use super::Perception;
 
@@ -54,17 +54,17 @@ pub(super) fn find(skeleton: &Skeleton, mesomer: &Mesomer, found: &mut Vec<Undra
 impl Perception {
     /// Keeps the hindered axes at whose two ends the ortho places differ; the others have a plane
     /// of symmetry through the axis. `generators` are automorphisms of the constitution.
-    pub(crate) fn keep_unequal_axes(&mut self, skeleton: &Skeleton, generators: &[Vec<u32>]) {
+    pub(crate) fn keep_unequal_axes(&mut self, skeleton: &Skeleton, generators: &[Permutation]) {
         self.undrawable.retain(|place| match *place {
             Undrawable::HinderedAxis { atoms: [a, b] } => {
                 // An automorphism that fixes one end and exchanges its ortho places.
                 let exchanged = |end: u32, other: u32| {
                     generators.iter().any(|g| {
-                        g[end as usize] == end
+                        g.image(end) == end
                             && skeleton
                                 .arcs(end)
                                 .iter()
-                                .any(|&(to, _)| to != other && g[to as usize] != to)
+                                .any(|&(to, _)| to != other && g.image(to) != to)
                     })
                 };
                 !exchanged(a, b) && !exchanged(b, a)

@@ -4,7 +4,8 @@ use molkin_graph::{Limits, OrderError, Orderer};
 use serde::Serialize;
 
 use crate::{
-    Branching as DomainBranching, Explanation, PrepareError, Relation, Structure, explain, relate,
+    Branching as DomainBranching, Explanation, PrepareError, Relation, StereoKind, Structure,
+    explain, relate,
     remarks::{self, Noted},
     words,
 };
@@ -209,9 +210,15 @@ impl Pair {
         self.aspects = Some(verdict.relation.kind().into_iter().collect());
         self.open = Some(verdict.open);
         self.summary = Some(words::summary(a, b, &verdict, explained.as_ref()));
+        // What is unmarked is why these verdicts are not firmer.
+        let unsettled = verdict.open
+            || matches!(
+                verdict.relation,
+                Relation::Stereo(StereoKind::Undetermined | StereoKind::Unresolved)
+            );
         let mut notes = Vec::new();
         for (which, structure, own) in [(Which::A, a, notes_a), (Which::B, b, notes_b)] {
-            let unmarked = verdict.open.then(|| remarks::unmarked(structure)).flatten();
+            let unmarked = unsettled.then(|| remarks::unmarked(structure)).flatten();
             let own = own.iter().cloned().chain(unmarked.map(Note::of));
             notes.extend(own.map(|note| note.on(which)));
         }

@@ -5,7 +5,7 @@ use std::io::{self, Write};
 use crate::output::style::{Role, Style};
 
 /// Columns of the label, and of a line altogether.
-const LABEL: usize = 16;
+const LABEL: usize = 17;
 const WIDTH: usize = 96;
 
 /// A blank at which no line breaks; it is written as a plain one.
