@@ -97,7 +97,9 @@ impl<'f> Speller<'f> {
         let children = std::mem::take(&mut self.children[atom as usize]);
         let hidden = [Ligand::Hydrogen, Ligand::LonePair];
         let hidden = self.centres.get(&atom).into_iter().flat_map(|mark| {
-            mark.ligands.into_iter().filter(|ligand| hidden.contains(ligand))
+            mark.ligands
+                .into_iter()
+                .filter(|ligand| hidden.contains(ligand))
         });
         let written: Vec<Ligand> = parent
             .map(Ligand::Atom)
@@ -169,7 +171,10 @@ impl<'f> Speller<'f> {
         if plain && orders.saturating_add(atom.hydrogens) == usual && numbers.below(4) > 0 {
             return symbol.to_owned();
         }
-        let isotope = atom.isotope.map(|mass| mass.to_string()).unwrap_or_default();
+        let isotope = atom
+            .isotope
+            .map(|mass| mass.to_string())
+            .unwrap_or_default();
         let hydrogens = match atom.hydrogens {
             0 => String::new(),
             1 => "H".to_owned(),
@@ -207,7 +212,11 @@ fn slopes(
     // its end exactly when the other is.
     let mut ties: BTreeMap<(u32, u32), Vec<((u32, u32), bool)>> = BTreeMap::new();
     let mut marked = BTreeSet::new();
-    for mark in form.stereo.iter().filter(|mark| mark.shape == Shape::DoubleBond) {
+    for mark in form
+        .stereo
+        .iter()
+        .filter(|mark| mark.shape == Shape::DoubleBond)
+    {
         let [a, b] = mark.centres;
         orders.get(&(a, b)).filter(|&&order| order == 2)?;
         marked.extend([(a, b), (b, a)]);
@@ -218,7 +227,9 @@ fn slopes(
                 _ => None,
             })
             .collect();
-        let both_ends = [a, b].iter().all(|end| bonds.iter().any(|(bond, _)| bond.0 == *end));
+        let both_ends = [a, b]
+            .iter()
+            .all(|end| bonds.iter().any(|(bond, _)| bond.0 == *end));
         if !both_ends || bonds.iter().any(|(bond, _)| orders[bond] != 1) {
             return None;
         }
@@ -226,7 +237,9 @@ fn slopes(
         for &(x, second_x) in &bonds {
             for &(y, second_y) in &bonds {
                 let across = (far(x) != far(y)) && mark.parity.is_odd();
-                ties.entry(x).or_default().push((y, !(second_x ^ second_y ^ across)));
+                ties.entry(x)
+                    .or_default()
+                    .push((y, !(second_x ^ second_y ^ across)));
             }
         }
     }

@@ -80,7 +80,10 @@ fn collections_are_read_and_written(#[case] file: &'static str, #[case] stated: 
         return;
     };
     let mut refusals = refusals(file);
-    assert!(refusals.len() * 1000 <= stated, "less than 99.9 % of {file} is read");
+    assert!(
+        refusals.len() * 1000 <= stated,
+        "less than 99.9 % of {file} is read"
+    );
     let mut comparer = Comparer::default();
     let mut tally = Tally::new(file);
     let mut lost = 0;

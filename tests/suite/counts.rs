@@ -3,9 +3,7 @@
 use std::collections::{BTreeMap, BTreeSet};
 
 use molkin_graph::Key;
-use molkin_tests::{
-    Comparer, Table, Tally, alkanes, all_markings, mirrored, read_text, shared,
-};
+use molkin_tests::{Comparer, Table, Tally, alkanes, all_markings, mirrored, read_text, shared};
 use rstest::rstest;
 
 /// Sets in which bond-shift forms of 4n rings are one structure, with the number of structures.
@@ -88,5 +86,8 @@ fn textbook_stereoisomers(
         keys.insert(key);
         pairs.insert(key.min(image));
     }
-    assert_eq!((keys.len(), pairs.len()), (compounds, without_mirror_images));
+    assert_eq!(
+        (keys.len(), pairs.len()),
+        (compounds, without_mirror_images)
+    );
 }

@@ -55,9 +55,7 @@ fn page_rows() -> Vec<Vec<String>> {
         .filter_map(|line| line.strip_prefix('|')?.strip_suffix('|'))
         .map(|row| {
             let cells = row.split('|');
-            cells
-                .map(|cell| cell.trim().replace('`', ""))
-                .collect()
+            cells.map(|cell| cell.trim().replace('`', "")).collect()
         })
         .collect()
 }
@@ -106,6 +104,9 @@ fn the_demo_is_as_its_page_says() {
         "undetermined",
         "unresolved",
     ];
-    assert_eq!(occurring.iter().map(String::as_str).collect::<Vec<_>>(), all);
+    assert_eq!(
+        occurring.iter().map(String::as_str).collect::<Vec<_>>(),
+        all
+    );
     tally.finish(24);
 }

@@ -28,7 +28,11 @@ fn use_up(comparer: &mut Comparer, molecule: Molecule) -> &'static str {
     let _ = (canonical.stereo_elements(), canonical.remarks());
     let kept = written.lost.is_empty();
     let Ok(again) = comparer.structure(&written.text) else {
-        return if kept { "not read back" } else { "a stated loss" };
+        return if kept {
+            "not read back"
+        } else {
+            "a stated loss"
+        };
     };
     let limits = Limits {
         map_steps: 200,
@@ -79,10 +83,17 @@ fn damaged(text: &str, alphabet: &[u8], numbers: &mut Numbers) -> Vec<u8> {
 fn damaged_smiles_give_a_result_or_an_error() {
     const ALPHABET: &[u8] = b"CNOcnosSPFIBrl[]()=#$:/\\@+-.%0123456789Hh* \t|";
     let pairs = definition_pairs();
-    let mut texts: Vec<String> = pairs.into_iter().flat_map(|pair| [pair.a, pair.b]).collect();
+    let mut texts: Vec<String> = pairs
+        .into_iter()
+        .flat_map(|pair| [pair.a, pair.b])
+        .collect();
     if let Some(path) = shared("collections/vendor.smi") {
         let text = read_text(&path);
-        texts.extend(text.lines().step_by(20).map(|line| first_word(line).to_owned()));
+        texts.extend(
+            text.lines()
+                .step_by(20)
+                .map(|line| first_word(line).to_owned()),
+        );
     }
     let mut numbers = Numbers::new(7);
     let mut comparer = comparer();
@@ -100,7 +111,9 @@ fn damaged_smiles_give_a_result_or_an_error() {
             }
         };
         met.insert(outcome);
-        tally.case(!WRONG.contains(&outcome), || String::from_utf8_lossy(&text).into_owned());
+        tally.case(!WRONG.contains(&outcome), || {
+            String::from_utf8_lossy(&text).into_owned()
+        });
     }
     assert!(met.len() > 12, "the damage reaches too little: {met:?}");
     tally.finish(20_000);
@@ -116,11 +129,18 @@ fn damaged_molfiles_give_a_result_or_an_error() {
     };
     for entry in std::fs::read_dir(workspace("fixtures/demo")).unwrap() {
         let path = entry.unwrap().path();
-        if path.extension().is_some_and(|extension| extension == "mol" || extension == "sdf") {
+        if path
+            .extension()
+            .is_some_and(|extension| extension == "mol" || extension == "sdf")
+        {
             take(read_text(&path), 100);
         }
     }
-    for file in ["drawings/3d.sdf.gz", "collections/nci200.sdf.gz", "collections/hard.sdf.gz"] {
+    for file in [
+        "drawings/3d.sdf.gz",
+        "collections/nci200.sdf.gz",
+        "collections/hard.sdf.gz",
+    ] {
         if let Some(path) = shared(file) {
             take(read_text(&path), 200);
         }
@@ -140,7 +160,9 @@ fn damaged_molfiles_give_a_result_or_an_error() {
             }
         };
         met.insert(outcome);
-        tally.case(!WRONG.contains(&outcome), || String::from_utf8_lossy(&text).into_owned());
+        tally.case(!WRONG.contains(&outcome), || {
+            String::from_utf8_lossy(&text).into_owned()
+        });
         let records = sdf::Records::new(&text[..], molfile::ReadOptions::default());
         assert!(records.count() <= 6);
     }

@@ -5,8 +5,8 @@ use std::collections::BTreeMap;
 use molkin_formats::{molfile, smiles};
 use molkin_graph::{Atom, BondOrder, Element, Key, Molecule, MoleculeBuilder};
 use molkin_tests::{
-    Comparer, Numbers, Tally, all_markings, definition_pairs, first_word, random_spelling, read_text, renumbered,
-    renumbered_form, renumbered_molfile, shared, workspace,
+    Comparer, Numbers, Tally, all_markings, definition_pairs, first_word, random_spelling,
+    read_text, renumbered, renumbered_form, renumbered_molfile, shared, workspace,
 };
 use rstest::rstest;
 
@@ -17,8 +17,15 @@ const MANY_TIMES: usize = 1_000;
 /// Structures to renumber: the committed ones, and real ones up to `count` in all.
 fn structures(count: usize) -> Vec<String> {
     let pairs = definition_pairs();
-    let mut texts: Vec<String> = pairs.into_iter().flat_map(|pair| [pair.a, pair.b]).collect();
-    let files = ["collections/vendor.smi", "relations/a.smi", "relations/claims_b.smi"];
+    let mut texts: Vec<String> = pairs
+        .into_iter()
+        .flat_map(|pair| [pair.a, pair.b])
+        .collect();
+    let files = [
+        "collections/vendor.smi",
+        "relations/a.smi",
+        "relations/claims_b.smi",
+    ];
     for path in files.into_iter().filter_map(shared) {
         let text = read_text(&path);
         let step = text.lines().count() / (count / files.len());
@@ -34,7 +41,7 @@ fn molecule_copies(
     molecule: &Molecule,
     numbers: &mut Numbers,
     times: usize,
-) -> Result<(), String> {
+) -> Result<bool, String> {
     let key = comparer.key(molecule)?;
     for _ in 0..times {
         let copy = renumbered(molecule, numbers);
@@ -42,7 +49,7 @@ fn molecule_copies(
             return Err(format!("another key: {copy:?}"));
         }
     }
-    Ok(())
+    Ok(true)
 }
 
 /// The same with spellings: the canonical form in another order, written and read.
@@ -51,11 +58,11 @@ fn spellings(
     molecule: &Molecule,
     numbers: &mut Numbers,
     times: usize,
-) -> Result<(), String> {
+) -> Result<bool, String> {
     let canonical = comparer.order(molecule)?;
     let form = canonical.form();
     if !smiles::write(&form).lost.is_empty() {
-        return Ok(());
+        return Ok(false);
     }
     for _ in 0..times {
         let written = smiles::write(&renumbered_form(&form, numbers));
@@ -64,7 +71,7 @@ fn spellings(
             return Err(format!("another key: {}", written.text));
         }
     }
-    Ok(())
+    Ok(true)
 }
 
 /// The same with a writer that shares nothing with the library's, where it can spell the structure.
@@ -73,22 +80,23 @@ fn random_spellings(
     molecule: &Molecule,
     numbers: &mut Numbers,
     times: usize,
-) -> Result<(), String> {
+) -> Result<bool, String> {
     let canonical = comparer.order(molecule)?;
     let form = canonical.form();
     for _ in 0..times {
         let Some(text) = random_spelling(&form, numbers) else {
-            return Ok(());
+            return Ok(false);
         };
         let again = comparer.canonical(&text)?;
         if again.compound_key() != canonical.compound_key() {
             return Err(format!("another key: {text}"));
         }
     }
-    Ok(())
+    Ok(true)
 }
 
-type Check = fn(&mut Comparer, &Molecule, &mut Numbers, usize) -> Result<(), String>;
+/// Says whether it could check the molecule, or what is wrong.
+type Check = fn(&mut Comparer, &Molecule, &mut Numbers, usize) -> Result<bool, String>;
 
 #[rstest]
 #[case::molecules("renumbered molecules", molecule_copies)]
@@ -102,7 +110,9 @@ fn one_key_for_real_structures(#[case] name: &'static str, #[case] check: Check)
         let outcome = comparer
             .molecule(&text)
             .and_then(|molecule| check(&mut comparer, &molecule, &mut numbers, TIMES));
-        tally.value(outcome.map_err(|error| format!("{text}: {error}")));
+        if outcome != Ok(false) {
+            tally.value(outcome.map_err(|error| format!("{text}: {error}")));
+        }
     }
     let there = shared("relations").is_some();
     tally.finish(if there { 2_000 } else { 400 });
@@ -117,8 +127,20 @@ fn icosahedron() -> [[u32; 5]; 12] {
         match corner {
             0 => [0, 1, 2, 3, 4].map(upper),
             11 => [0, 1, 2, 3, 4].map(lower),
-            1..6 => [0, upper(ring + 1), upper(ring + 4), lower(ring), lower(ring + 4)],
-            _ => [11, lower(ring + 1), lower(ring + 4), upper(ring), upper(ring + 1)],
+            1..6 => [
+                0,
+                upper(ring + 1),
+                upper(ring + 4),
+                lower(ring),
+                lower(ring + 4),
+            ],
+            _ => [
+                11,
+                lower(ring + 1),
+                lower(ring + 4),
+                upper(ring),
+                upper(ring + 1),
+            ],
         }
     })
 }
@@ -172,7 +194,7 @@ fn one_key_for_symmetric_structures(#[case] name: &'static str, #[case] check: C
     let inositols = inositols(&mut comparer);
     for molecule in cages.iter().chain(inositols.values()) {
         let outcome = check(&mut comparer, molecule, &mut numbers, MANY_TIMES);
-        tally.value(outcome);
+        tally.value(outcome.map(|checked| assert!(checked)));
     }
     tally.finish(13);
 }
@@ -206,7 +228,11 @@ fn one_key_for_molfiles() {
         let extension = path.extension().unwrap_or_default();
         extension == "mol" || extension == "sdf"
     });
-    let published = ["drawings/v2000.sdf.gz", "collections/hard.sdf.gz", "collections/mols.1000.sdf.gz"];
+    let published = [
+        "drawings/v2000.sdf.gz",
+        "collections/hard.sdf.gz",
+        "collections/mols.1000.sdf.gz",
+    ];
     for path in demo.chain(published.into_iter().filter_map(shared)) {
         let text = read_text(&path);
         for molfile in molfiles(&text) {

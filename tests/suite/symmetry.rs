@@ -1,9 +1,7 @@
 //! What holds for any pair: mirror symmetry of verdict and explanation, the least distance.
 
 use molkin_graph::Limits;
-use molkin_relate::{
-    Explanation, HydrogenDifference, Relation, StereoChange, Structure, explain,
-};
+use molkin_relate::{Explanation, HydrogenDifference, Relation, StereoChange, Structure, explain};
 use molkin_tests::{
     Comparer, Numbers, Tally, definition_pairs, first_word, least_distance, mirrored, read_text,
     renumbered, shared, small_isomers, stated_distance,
@@ -97,9 +95,12 @@ fn both_directions_mirror_each_other() {
         .collect();
     if let Some(folder) = shared("relations") {
         for prefix in ["", "claims_"] {
-            let [a, b] = ["a.smi", "b.smi"]
-                .map(|file| read_text(&folder.join(format!("{prefix}{file}"))));
-            let lines = a.lines().zip(b.lines()).step_by(if prefix.is_empty() { 30 } else { 4 });
+            let [a, b] =
+                ["a.smi", "b.smi"].map(|file| read_text(&folder.join(format!("{prefix}{file}"))));
+            let lines = a
+                .lines()
+                .zip(b.lines())
+                .step_by(if prefix.is_empty() { 30 } else { 4 });
             pairs.extend(lines.map(|(a, b)| (first_word(a).to_owned(), first_word(b).to_owned())));
         }
     }
@@ -117,7 +118,10 @@ fn both_directions_mirror_each_other() {
 fn the_mirror_image_of_the_mirror_image_is_the_compound() {
     let mut comparer = Comparer::default();
     let mut tally = Tally::new("mirror images");
-    for text in definition_pairs().into_iter().flat_map(|pair| [pair.a, pair.b]) {
+    for text in definition_pairs()
+        .into_iter()
+        .flat_map(|pair| [pair.a, pair.b])
+    {
         let mut outcome = || {
             let molecule = comparer.molecule(&text)?;
             let image = mirrored(&molecule);
@@ -159,9 +163,16 @@ fn the_distance_of_small_isomers_is_the_least() {
         let explanation = explain(&a, &b, relation, &limits);
         let stated = stated_distance(&explanation);
         let least = least_distance(&a, &b);
-        let proved = explanation.bonds.as_ref().is_some_and(|bonds| bonds.minimal);
+        let proved = explanation
+            .bonds
+            .as_ref()
+            .is_some_and(|bonds| bonds.minimal);
         tally.case(proved && stated == Some(least), || {
-            format!("{stated:?}, not {least:?}: {:?} {:?}", a.molecule(), b.molecule())
+            format!(
+                "{stated:?}, not {least:?}: {:?} {:?}",
+                a.molecule(),
+                b.molecule()
+            )
         });
     }
     tally.finish(500);

@@ -57,7 +57,7 @@ pub enum OrderError {
     #[error("stopped from outside")]
     Stopped,
     /// An atom's charge, isotope or hydrogen count is outside what a certificate holds.
-    #[error("charge, isotope or hydrogen count of atom {atom} is out of range")]
+    #[error("charge, isotope or hydrogen count of atom {} (from 1) is out of range", atom + 1)]
     OutOfRange {
         /// The atom, from 0.
         atom: u32,

@@ -13,7 +13,9 @@
 mod action;
 mod orbits;
 mod solve;
+mod status;
 mod variables;
 
-pub(crate) use solve::{Claims, Solver, Status};
+pub(crate) use solve::{Claims, Solver};
+pub(crate) use status::Status;
 pub(crate) use variables::{Variable, variables};

@@ -11,6 +11,7 @@ mod first;
 mod mobile;
 mod octet;
 mod placement;
+mod systems;
 mod valence;
 
 #[cfg(test)]
@@ -101,7 +102,7 @@ impl Mesomer {
                 }),
         );
         self.systems.clear();
-        placement::find_systems(skeleton, &self.valences, &mut self.systems);
+        systems::find_systems(skeleton, &self.valences, &mut self.systems);
         for at in 0..self.systems.len() {
             let system = &mut self.systems[at];
             if system.settle(skeleton, &self.valences, &mut self.matching) {

@@ -3,6 +3,7 @@
 //! Components are ordered one by one and then sorted by their certificates, so that a record of
 //! many equal components costs no more than their sum. Within a component see [`search`].
 
+mod certificate;
 mod coloured;
 mod partition;
 mod permutation;

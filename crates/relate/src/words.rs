@@ -50,21 +50,23 @@ fn constitutional(a: &Structure, explained: Option<&Explanation>) -> String {
         return verdict;
     };
     let (only_a, only_b) = (bonds.only_in_a.len(), bonds.only_in_b.len());
-    let how = if bonds.minimal {
-        "At the least"
-    } else {
-        "One way to see it:"
-    };
-    match (only_a + only_b, bonds.order_changed.len()) {
+    let differences = match (only_a + only_b, bonds.order_changed.len()) {
         (0, 0) => {
-            format!("{verdict} All bonds agree; hydrogens, charges or isotopes sit elsewhere.")
+            return format!(
+                "{verdict} All bonds agree; hydrogens, charges or isotopes sit elsewhere."
+            );
         }
-        (0, n) => format!("{verdict} {how} {} of different order.", counted(n, "bond")),
+        (0, changed) => format!("{} of different order", counted(changed, "bond")),
         _ => format!(
-            "{verdict} {how} {} only in A and {} only in B.",
+            "{} only in A and {} only in B",
             counted(only_a, "bond"),
             counted(only_b, "bond")
         ),
+    };
+    if bonds.minimal {
+        format!("{verdict} The least difference: {differences}.")
+    } else {
+        format!("{verdict} One way to see it, not proved the least: {differences}.")
     }
 }
 

@@ -80,7 +80,11 @@ fn benzene_has_one_form() {
                 (
                     i,
                     (i + 1) % 6,
-                    if (i as u8 + first) % 2 == 0 { 2 } else { 1 },
+                    if (i as u8 + first).is_multiple_of(2) {
+                        2
+                    } else {
+                        1
+                    },
                 )
             })
             .collect()

@@ -1,0 +1,113 @@
+//! What the normal form of a set says about each element, and about the set as a whole.
+
+use crate::OrderError;
+
+use super::{
+    action::Action,
+    orbits::Orbits,
+    solve::{Member, Solver},
+};
+
+/// What became of a variable.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(crate) enum Status {
+    /// Its mark counts.
+    Marked,
+    /// Unmarked, and inverting it gives another stereoisomer.
+    Unmarked,
+    /// Not stereogenic here: marks on it say nothing.
+    NotStereogenic,
+}
+
+impl Solver<'_> {
+    /// Whether some inversion of a free element gives another stereoisomer. If none does from one
+    /// member of the set, the set has one member: each further inversion starts from an equivalent
+    /// assignment.
+    pub(super) fn is_open(
+        &mut self,
+        found: &[Member],
+        orbits: &Orbits,
+        free: &[bool],
+        never: &[bool],
+    ) -> Result<bool, OrderError> {
+        let variables = self.variables;
+        let counts = |v: usize| free[v] && !never[v] && !variables[v].quiet;
+        if (0..free.len()).any(|v| counts(v) && !orbits.inverted[orbits.root[v]]) {
+            return Ok(true);
+        }
+        if !(0..free.len()).any(counts) {
+            return Ok(false);
+        }
+        let Some(member) = found.first() else {
+            return Ok(false);
+        };
+        let value = |v: usize| (!free[v] || counts(v)).then(|| member.assignment[v]);
+        let base = self.label(value)?;
+        let own = Action::of(&base.generators, self.perception, self.variables);
+        let own = Orbits::of(&own, free.len());
+        for v in (0..free.len()).filter(|&v| counts(v) && own.root[v] == v) {
+            let flipped = self.label(|w| value(w).map(|odd| odd ^ (w == v)))?;
+            if flipped.certificate != base.certificate {
+                return Ok(true);
+            }
+        }
+        Ok(false)
+    }
+
+    /// What each variable is in this record. An unmarked one counts as stereogenic unless an
+    /// automorphism inverts it and leaves all other elements, marked or not, as they are.
+    pub(super) fn statuses(
+        &mut self,
+        orbits: &Orbits,
+        free: &[bool],
+        never: &[bool],
+    ) -> Result<Vec<Status>, OrderError> {
+        let mut statuses = Vec::with_capacity(free.len());
+        for v in 0..free.len() {
+            statuses.push(if !free[v] {
+                if self.variables[v].odd.is_some() {
+                    Status::Marked
+                } else {
+                    Status::Unmarked
+                }
+            } else if never[v] {
+                Status::NotStereogenic
+            } else if !orbits.inverted[orbits.root[v]] || self.is_stereogenic(v, free, never)? {
+                Status::Unmarked
+            } else {
+                Status::NotStereogenic
+            });
+        }
+        Ok(statuses)
+    }
+
+    fn is_stereogenic(
+        &mut self,
+        v: usize,
+        free: &[bool],
+        never: &[bool],
+    ) -> Result<bool, OrderError> {
+        let variables = self.variables;
+        let colours = self.graph.colours.clone();
+        // Each other unmarked element keeps its place: its centres get a colour of their own, above
+        // all bits that atoms use.
+        for (index, variable) in variables.iter().enumerate() {
+            if free[index] && !never[index] && index != v {
+                for &(candidate, _) in &variable.members {
+                    for centre in self.perception.candidates[candidate].centres {
+                        self.graph.colours[centre as usize] = !(index as u64);
+                    }
+                }
+            }
+        }
+        let value = |w: usize| match variables[w].odd {
+            _ if never[w] => None,
+            Some(odd) if !free[w] => Some(odd),
+            _ => Some(false),
+        };
+        let even = self.label(value);
+        let odd = self.label(|w| value(w).map(|odd| odd ^ (w == v)));
+        self.graph.colours = colours;
+        Ok(even?.certificate != odd?.certificate)
+    }
+}
