@@ -122,7 +122,7 @@ const ISOMERS: [(&str, [&str; 2], usize); 2] = [
     (
         "skeleton",
         ["CC(C)Cc1ccc(cc1)C(C)C(=O)O", "CCCCc1ccc(cc1)CCOC=O"],
-        8,
+        4,
     ),
 ];
 

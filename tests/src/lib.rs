@@ -30,10 +30,10 @@ pub use crate::{
     molfile::renumbered_molfile,
     numbers::Numbers,
     pairs::{Expected, Pair, definition_pairs, fixture_pairs},
-    renumber::{renumbered, renumbered_form},
+    renumber::{renumbered, renumbered_form, with_hydrogens_written},
     small::small_isomers,
     spelling::random_spelling,
-    stereo::{all_markings, mirrored},
+    stereo::{Markings, all_markings, completions, mirrored},
     tally::Tally,
     text::{Table, first_word, read_text, shared, workspace},
 };

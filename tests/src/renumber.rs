@@ -1,7 +1,8 @@
-//! The same molecule with its atoms, bonds and ligands in another order.
+//! The same molecule drawn otherwise: in another order, or with its hydrogens as atoms.
 
 use molkin_graph::{
-    Atom, CanonicalForm, DrawnStereo, FormStereo, Ligand, Molecule, MoleculeBuilder, Parity, Shape,
+    Atom, BondOrder, CanonicalForm, DrawnStereo, Element, FormStereo, Ligand, Molecule,
+    MoleculeBuilder, Parity, Shape,
 };
 
 use crate::Numbers;
@@ -75,6 +76,42 @@ pub fn renumbered_form(form: &CanonicalForm, numbers: &mut Numbers) -> Canonical
         bonds,
         stereo,
     }
+}
+
+/// A molecule with every hydrogen as an atom of its own.
+///
+/// # Panics
+/// If the molecule cannot be rebuilt.
+pub fn with_hydrogens_written(molecule: &Molecule) -> Molecule {
+    let mut builder = MoleculeBuilder::new();
+    for atom in molecule.atoms() {
+        builder.add_atom(Atom {
+            hydrogens: 0,
+            ..*atom
+        });
+    }
+    for (a, b, order) in molecule.bonds() {
+        builder.add_bond(a, b, order).unwrap();
+    }
+    let mut first = vec![None; molecule.atom_count()];
+    for (host, atom) in (0u32..).zip(molecule.atoms()) {
+        for _ in 0..atom.hydrogens {
+            let hydrogen = builder.add_atom(Atom::new(Element::HYDROGEN));
+            builder.add_bond(host, hydrogen, BondOrder::Single).unwrap();
+            first[host as usize].get_or_insert(hydrogen);
+        }
+    }
+    for mark in molecule.drawn_stereo() {
+        let mut mark = *mark;
+        for (at, ligand) in mark.ligands.iter_mut().enumerate() {
+            if *ligand == Ligand::Hydrogen {
+                let host = mark.centres[at / 2];
+                *ligand = first[host as usize].map_or(*ligand, Ligand::Atom);
+            }
+        }
+        builder.add_stereo(mark);
+    }
+    builder.build().unwrap()
 }
 
 /// The places at which the numbers of an order stand.

@@ -61,9 +61,9 @@ fn molecule(numbers: &mut Numbers, kinds: &[(Element, u8)], more: usize) -> Opti
             ..Atom::new(element)
         });
     }
-    for b in 0..count {
-        for a in 0..b {
-            if let Some(order) = BondOrder::from_pairs(orders[a][b]) {
+    for (a, row) in orders.iter().enumerate() {
+        for (b, &pairs) in row.iter().enumerate() {
+            if let Some(order) = BondOrder::from_pairs(pairs) {
                 builder.add_bond(a as u32, b as u32, order).ok()?;
             }
         }

@@ -202,15 +202,17 @@ fn tag(mark: &FormStereo, written: &[Ligand]) -> &'static str {
     }
 }
 
+/// For each bond, given by its end and ligand, the bonds tied to it, and whether its ligand is above
+/// its end exactly when theirs is.
+type Ties = BTreeMap<(u32, u32), Vec<((u32, u32), bool)>>;
+
 /// Directions of the single bonds at marked double bonds.
 fn slopes(
     form: &CanonicalForm,
     orders: &BTreeMap<(u32, u32), u8>,
     numbers: &mut Numbers,
 ) -> Option<BTreeMap<(u32, u32), bool>> {
-    // Of two bonds that are tied, each given by its end and ligand: whether one ligand is above
-    // its end exactly when the other is.
-    let mut ties: BTreeMap<(u32, u32), Vec<((u32, u32), bool)>> = BTreeMap::new();
+    let mut ties = Ties::new();
     let mut marked = BTreeSet::new();
     for mark in form
         .stereo
@@ -251,10 +253,7 @@ fn slopes(
     (!stray).then_some(slopes)
 }
 
-fn solve(
-    ties: &BTreeMap<(u32, u32), Vec<((u32, u32), bool)>>,
-    numbers: &mut Numbers,
-) -> Option<BTreeMap<(u32, u32), bool>> {
+fn solve(ties: &Ties, numbers: &mut Numbers) -> Option<BTreeMap<(u32, u32), bool>> {
     let mut slopes: BTreeMap<(u32, u32), bool> = BTreeMap::new();
     for &start in ties.keys() {
         let mut waiting = vec![];

@@ -1,6 +1,8 @@
 //! Molecules with other marks.
 
-use molkin_graph::{DrawnStereo, Element, Ligand, Molecule, MoleculeBuilder, Parity, Shape};
+use molkin_graph::{
+    DrawnStereo, Element, Ligand, Molecule, MoleculeBuilder, Parity, Shape, StereoElement,
+};
 
 /// The mirror image.
 ///
@@ -17,38 +19,94 @@ pub fn mirrored(molecule: &Molecule) -> Molecule {
     with_marks(molecule, marks)
 }
 
-/// A molecule with every combination of marks on all its carbon atoms that have four ligands, at
-/// most one of them hydrogen; 2 to the number of such atoms. Its own marks are left out.
-///
-/// # Panics
-/// If the molecule cannot be rebuilt, or has twenty such atoms.
-pub fn all_markings(molecule: &Molecule) -> impl Iterator<Item = Molecule> + '_ {
-    let places: Vec<(u32, [Ligand; 4])> = (0u32..)
-        .zip(molecule.atoms())
-        .filter(|(_, atom)| atom.element == Element::CARBON && atom.hydrogens <= 1)
-        .filter_map(|(index, atom)| {
-            let mut ligands: Vec<Ligand> = molecule
-                .neighbours(index)
-                .map(|(neighbour, _)| Ligand::Atom(neighbour))
-                .collect();
+/// The places of a molecule that may carry marks, itself left unmarked.
+#[derive(Debug)]
+pub struct Markings<'m> {
+    molecule: &'m Molecule,
+    places: Vec<DrawnStereo>,
+}
+
+impl<'m> Markings<'m> {
+    /// All carbon atoms with four ligands, at most one of them hydrogen, whether or not symmetry
+    /// makes centres of them; and the double bonds and axes among `elements`.
+    pub fn new(molecule: &'m Molecule, elements: &[StereoElement]) -> Self {
+        let centres = (0u32..).zip(molecule.atoms()).filter_map(|(index, atom)| {
+            let neighbours = molecule.neighbours(index);
+            let mut ligands: Vec<Ligand> = neighbours.map(|(n, _)| Ligand::Atom(n)).collect();
             if atom.hydrogens == 1 {
                 ligands.push(Ligand::Hydrogen);
             }
-            Some((index, ligands.try_into().ok()?))
-        })
-        .collect();
-    assert!(places.len() < 20, "too many combinations");
-    (0u32..1 << places.len()).map(move |choice| {
-        let marks = (0..)
-            .zip(&places)
-            .map(|(bit, &(centre, ligands))| DrawnStereo {
+            let carbon = atom.element == Element::CARBON && atom.hydrogens <= 1;
+            Some(DrawnStereo {
                 shape: Shape::Tetrahedral,
-                centres: [centre, centre],
-                ligands,
-                parity: Some(Parity::from_odd(choice >> bit & 1 == 1)),
+                centres: [index, index],
+                ligands: ligands.try_into().ok().filter(|_| carbon)?,
+                parity: None,
+            })
+        });
+        let others = elements
+            .iter()
+            .filter(|element| element.shape != Shape::Tetrahedral)
+            .map(|element| DrawnStereo {
+                shape: element.shape,
+                centres: element.centres,
+                ligands: element.ligands,
+                parity: None,
             });
-        with_marks(molecule, marks)
+        Self {
+            molecule,
+            places: centres.chain(others).collect(),
+        }
+    }
+
+    /// The number of places.
+    pub fn places(&self) -> usize {
+        self.places.len()
+    }
+
+    /// The molecule with the given marks, one for each place.
+    ///
+    /// # Panics
+    /// If the molecule cannot be rebuilt.
+    pub fn marked(&self, marks: &[Option<Parity>]) -> Molecule {
+        let drawn = self.places.iter().zip(marks);
+        with_marks(
+            self.molecule,
+            drawn.map(|(place, &parity)| DrawnStereo { parity, ..*place }),
+        )
+    }
+
+    /// Every way to mark all places; 2 to the number of places.
+    pub fn full(&self) -> impl Iterator<Item = Vec<Option<Parity>>> + use<> {
+        completions(&vec![None; self.places()])
+    }
+}
+
+/// Every way to give the marks that are left open.
+///
+/// # Panics
+/// If twenty or more are open.
+pub fn completions(marks: &[Option<Parity>]) -> impl Iterator<Item = Vec<Option<Parity>>> + use<> {
+    let marks = marks.to_vec();
+    let open: Vec<usize> = (0..marks.len()).filter(|&at| marks[at].is_none()).collect();
+    assert!(open.len() < 20, "too many combinations");
+    (0u32..1 << open.len()).map(move |choice| {
+        let mut full = marks.clone();
+        for (bit, &at) in open.iter().enumerate() {
+            full[at] = Some(Parity::from_odd(choice >> bit & 1 == 1));
+        }
+        full
     })
+}
+
+/// A molecule with every combination of marks on its carbon atoms; see [`Markings::new`].
+///
+/// # Panics
+/// If the molecule cannot be rebuilt, or has twenty such atoms.
+pub fn all_markings(molecule: &Molecule) -> Vec<Molecule> {
+    let markings = Markings::new(molecule, &[]);
+    let full = markings.full();
+    full.map(|marks| markings.marked(&marks)).collect()
 }
 
 fn with_marks(molecule: &Molecule, marks: impl Iterator<Item = DrawnStereo>) -> Molecule {

@@ -1,9 +1,11 @@
 //! Files: where they are and what is in them.
 
 use std::{
+    collections::BTreeSet,
     fs::File,
-    io::Read,
+    io::{Read, Write},
     path::{Path, PathBuf},
+    sync::{Mutex, PoisonError},
 };
 
 /// A path of the repository.
@@ -12,14 +14,24 @@ pub fn workspace(path: &str) -> PathBuf {
 }
 
 /// A path of the published data beside the repository; where it is absent, `None` and a message.
-#[allow(clippy::print_stderr, reason = "a skipped test says so")]
 pub fn shared(path: &str) -> Option<PathBuf> {
     let place = workspace("../shared/data").join(path);
     if place.exists() {
         return Some(place);
     }
-    eprintln!("skipped: ../shared/data/{path} is not there");
+    say_skipped(path);
     None
+}
+
+/// Says once what is skipped, past the capture of test output, so that no run hides it.
+fn say_skipped(path: &str) {
+    static SAID: Mutex<BTreeSet<String>> = Mutex::new(BTreeSet::new());
+    let mut said = SAID.lock().unwrap_or_else(PoisonError::into_inner);
+    if said.insert(path.to_owned()) {
+        let message = format!("skipped: ../shared/data/{path} is not there\n");
+        // A closed error stream is no reason to fail.
+        let _ = std::io::stderr().write_all(message.as_bytes());
+    }
 }
 
 /// A whole file as text, decompressed where its name ends in `.gz`. Bytes that are no UTF-8 are

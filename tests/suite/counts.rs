@@ -55,7 +55,8 @@ fn alkanes_are_as_many_as_published() {
         let marked = size.values().map(|tree| {
             let molecule = tree.molecule();
             let keys: BTreeSet<Key> = all_markings(&molecule)
-                .map(|marked| comparer.key(&marked).unwrap())
+                .iter()
+                .map(|marked| comparer.key(marked).unwrap())
                 .collect();
             keys.len()
         });

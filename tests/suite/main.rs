@@ -10,9 +10,11 @@
     reason = "a test fails by panicking and says what it did"
 )]
 
+mod claims;
 mod collections;
 mod counts;
 mod demo;
+mod distances;
 mod drawings;
 mod fixtures;
 mod golden;

@@ -6,7 +6,8 @@ use molkin_formats::{molfile, smiles};
 use molkin_graph::{Atom, BondOrder, Element, Key, Molecule, MoleculeBuilder};
 use molkin_tests::{
     Comparer, Numbers, Tally, all_markings, definition_pairs, first_word, random_spelling,
-    read_text, renumbered, renumbered_form, renumbered_molfile, shared, workspace,
+    read_text, renumbered, renumbered_form, renumbered_molfile, shared, with_hydrogens_written,
+    workspace,
 };
 use rstest::rstest;
 
@@ -50,6 +51,21 @@ fn molecule_copies(
         }
     }
     Ok(true)
+}
+
+/// The same with all hydrogens as atoms.
+fn hydrogens(
+    comparer: &mut Comparer,
+    molecule: &Molecule,
+    numbers: &mut Numbers,
+    times: usize,
+) -> Result<bool, String> {
+    let key = comparer.key(molecule)?;
+    let written = with_hydrogens_written(molecule);
+    if comparer.key(&written)? != key {
+        return Err("another key with hydrogens written".to_owned());
+    }
+    molecule_copies(comparer, &written, numbers, times.div_ceil(TIMES))
 }
 
 /// The same with spellings: the canonical form in another order, written and read.
@@ -100,6 +116,7 @@ type Check = fn(&mut Comparer, &Molecule, &mut Numbers, usize) -> Result<bool, S
 
 #[rstest]
 #[case::molecules("renumbered molecules", molecule_copies)]
+#[case::hydrogens("written hydrogens", hydrogens)]
 #[case::spellings("respelled SMILES", spellings)]
 #[case::random_spellings("random spellings", random_spellings)]
 fn one_key_for_real_structures(#[case] name: &'static str, #[case] check: Check) {
@@ -178,6 +195,7 @@ fn buckminsterfullerene() -> Molecule {
 
 #[rstest]
 #[case::molecules("renumbered cages", molecule_copies)]
+#[case::hydrogens("cages with written hydrogens", hydrogens)]
 #[case::spellings("respelled cages", spellings)]
 #[case::random_spellings("random spellings of cages", random_spellings)]
 fn one_key_for_symmetric_structures(#[case] name: &'static str, #[case] check: Check) {
@@ -203,7 +221,8 @@ fn one_key_for_symmetric_structures(#[case] name: &'static str, #[case] check: C
 fn inositols(comparer: &mut Comparer) -> BTreeMap<Key, Molecule> {
     let flat = comparer.molecule("OC1C(O)C(O)C(O)C(O)C1O").unwrap();
     let found: BTreeMap<Key, Molecule> = all_markings(&flat)
-        .map(|molecule| (comparer.key(&molecule).unwrap(), molecule))
+        .iter()
+        .map(|molecule| (comparer.key(molecule).unwrap(), molecule.clone()))
         .collect();
     assert_eq!(found.len(), 9);
     found

@@ -11,11 +11,24 @@ pub enum BondOrder {
     Triple = 3,
     /// Four electron pairs (`$` in SMILES).
     Quadruple = 4,
+    /// A bond from a donor to a metal that takes no valence (CTfile type 9).
+    Coordination = 6,
+    /// A hydrogen bond (CTfile type 10).
+    Hydrogen = 0,
 }
 
 impl BondOrder {
-    /// The number of electron pairs: 1 to 4.
+    /// The number of electron pairs that count as valence: 1 to 4, and none for coordination and
+    /// hydrogen bonds.
     pub fn pairs(self) -> u8 {
+        match self {
+            Self::Coordination | Self::Hydrogen => 0,
+            other => other as u8,
+        }
+    }
+
+    /// The class of the bond in identity, one number for each order.
+    pub(crate) fn class(self) -> u8 {
         self as u8
     }
 

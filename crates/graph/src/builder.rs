@@ -4,7 +4,7 @@ use petgraph::graph::NodeIndex;
 use thiserror::Error;
 
 use crate::{
-    Atom, BondOrder, DrawnStereo, Ligand, Molecule, PiDemand,
+    Atom, BondOrder, DrawnCoordination, DrawnStereo, Ligand, Molecule, PiDemand, StereoGroup,
     kekule::{self, Delocalised},
     matching::Matching,
     rings::Adjacency,
@@ -74,6 +74,8 @@ impl MoleculeBuilder {
     pub fn clear(&mut self) {
         self.molecule.graph.clear();
         self.molecule.stereo.clear();
+        self.molecule.coordination.clear();
+        self.molecule.groups.clear();
         self.demand.clear();
         self.delocalised.clear();
     }
@@ -153,6 +155,17 @@ impl MoleculeBuilder {
         self.molecule.stereo.push(mark);
     }
 
+    /// Adds the arrangement about a centre that is not tetrahedral; it is checked by
+    /// [`MoleculeBuilder::build`].
+    pub fn add_coordination(&mut self, mark: DrawnCoordination) {
+        self.molecule.coordination.push(mark);
+    }
+
+    /// Adds a group of stereo elements.
+    pub fn add_group(&mut self, group: StereoGroup) {
+        self.molecule.groups.push(group);
+    }
+
     /// Resolves delocalised bonds, checks the stereo marks and returns the molecule.
     ///
     /// # Errors
@@ -175,7 +188,11 @@ impl MoleculeBuilder {
         self.molecule
             .stereo
             .iter()
-            .try_for_each(|mark| self.check_stereo(mark))
+            .try_for_each(|mark| self.check_stereo(mark))?;
+        self.molecule
+            .coordination
+            .iter()
+            .try_for_each(|mark| self.check_coordination(mark))
     }
 
     fn resolve_delocalised(&mut self) -> Result<(), BuildError> {
@@ -205,6 +222,27 @@ impl MoleculeBuilder {
             if double {
                 let edge = petgraph::graph::EdgeIndex::new(bond as usize);
                 graph[edge] = BondOrder::Double;
+            }
+        }
+        Ok(())
+    }
+
+    fn check_coordination(&self, mark: &DrawnCoordination) -> Result<(), BuildError> {
+        let bad = BuildError::BadStereo { atom: mark.centre };
+        if mark.centre as usize >= self.atom_count()
+            || mark.ligands.len() != mark.polyhedron.positions()
+        {
+            return Err(bad);
+        }
+        for (at, ligand) in mark.ligands.iter().enumerate() {
+            if let Ligand::Atom(atom) = *ligand {
+                let attached = self
+                    .molecule
+                    .neighbours(mark.centre)
+                    .any(|(n, _)| n == atom);
+                if !attached || mark.ligands[..at].contains(ligand) {
+                    return Err(bad);
+                }
             }
         }
         Ok(())

@@ -18,8 +18,8 @@ pub enum Shape {
     Tetrahedral,
     /// A double bond, or an odd number of cumulated ones: two ligands at each end, in one plane.
     DoubleBond,
-    /// An allene, or a longer even number of cumulated double bonds: two ligands at each end, in
-    /// two planes at right angles.
+    /// An allene, or a longer even number of cumulated double bonds, or a single bond about which
+    /// rotation is hindered: two ligands at each end, in two planes.
     Axis,
 }
 
@@ -69,4 +69,56 @@ pub struct DrawnStereo {
     pub ligands: [Ligand; 4],
     /// The arrangement, or `None` where the record says it is unknown.
     pub parity: Option<Parity>,
+}
+
+/// The polyhedron of ligands about a centre that is not tetrahedral, with its positions in order.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash)]
+pub enum Polyhedron {
+    /// Four positions in the order in which they go round the square.
+    SquarePlanar,
+    /// First axial, second axial, then three equatorial ones that run anticlockwise seen from the
+    /// first axial position.
+    TrigonalBipyramidal,
+    /// Top, bottom, then four that run anticlockwise seen from the top.
+    Octahedral,
+}
+
+impl Polyhedron {
+    /// How many positions it has: 4, 5 or 6.
+    pub fn positions(self) -> usize {
+        match self {
+            Self::SquarePlanar => 4,
+            Self::TrigonalBipyramidal => 5,
+            Self::Octahedral => 6,
+        }
+    }
+}
+
+/// The arrangement of ligands about a centre that is not tetrahedral, as a record gives it.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct DrawnCoordination {
+    /// The polyhedron.
+    pub polyhedron: Polyhedron,
+    /// The centre.
+    pub centre: u32,
+    /// The ligands by position; as many as the polyhedron has positions.
+    pub ligands: Vec<Ligand>,
+}
+
+/// How the marks of a group of stereo elements are meant (CTfile: enhanced stereochemistry).
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash)]
+pub enum GroupKind {
+    /// Both the drawn arrangement and that with the whole group inverted are present.
+    And,
+    /// The drawn arrangement or that with the whole group inverted: one of the two.
+    Or,
+}
+
+/// A group of stereo elements whose marks are meant relative to each other.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct StereoGroup {
+    /// How the group is meant.
+    pub kind: GroupKind,
+    /// The centres; for a double bond or axis either end stands for it.
+    pub atoms: Vec<u32>,
 }

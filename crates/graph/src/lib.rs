@@ -34,7 +34,9 @@ pub use crate::{
         Arrangement, Canonical, CanonicalForm, Dropped, FormAtom, FormStereo, Mark, NormalAtom,
         NormalBond, NormalForm, OrderError, Orderer, Remark, StereoElement, arrangement,
     },
-    drawn::{DrawnStereo, Ligand, Parity, Shape},
+    drawn::{
+        DrawnCoordination, DrawnStereo, GroupKind, Ligand, Parity, Polyhedron, Shape, StereoGroup,
+    },
     element::{Element, Nuclide},
     formula::Formula,
     kekule::PiDemand,

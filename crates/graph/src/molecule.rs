@@ -2,7 +2,7 @@
 
 use petgraph::graph::{NodeIndex, UnGraph};
 
-use crate::{Atom, BondOrder, DrawnStereo, Element, Formula};
+use crate::{Atom, BondOrder, DrawnCoordination, DrawnStereo, Element, Formula, StereoGroup};
 
 /// A molecule, or several components that one record holds, as drawn.
 ///
@@ -27,6 +27,8 @@ use crate::{Atom, BondOrder, DrawnStereo, Element, Formula};
 pub struct Molecule {
     pub(crate) graph: UnGraph<Atom, BondOrder, u32>,
     pub(crate) stereo: Vec<DrawnStereo>,
+    pub(crate) coordination: Vec<DrawnCoordination>,
+    pub(crate) groups: Vec<StereoGroup>,
 }
 
 impl Molecule {
@@ -73,6 +75,16 @@ impl Molecule {
     /// The stereo marks as drawn.
     pub fn drawn_stereo(&self) -> &[DrawnStereo] {
         &self.stereo
+    }
+
+    /// Centres that are not tetrahedral, with the arrangement that the record gives.
+    pub fn drawn_coordination(&self) -> &[DrawnCoordination] {
+        &self.coordination
+    }
+
+    /// Groups of stereo elements whose marks are meant relative to each other.
+    pub fn stereo_groups(&self) -> &[StereoGroup] {
+        &self.groups
     }
 
     /// The graph itself, for callers who run other graph algorithms on it.

@@ -74,7 +74,7 @@ impl Skeleton {
                 _ => self.bonds.push(SkeletonBond {
                     a: self.home[a as usize],
                     b: self.home[b as usize],
-                    order: order.pairs(),
+                    order: order.class(),
                 }),
             }
         }
@@ -127,6 +127,14 @@ impl Skeleton {
         atom.hydrogens = atom.hydrogens.saturating_add(1);
         if mass > 0 {
             atom.labelled += 1 << (4 * (mass - 1));
+        }
+    }
+
+    /// Electron pairs of a bond that count as valence: none for coordination and hydrogen bonds.
+    pub(crate) fn pairs(&self, bond: u32) -> u8 {
+        match self.bonds[bond as usize].order {
+            order @ 1..=4 => order,
+            _ => 0,
         }
     }
 

@@ -39,7 +39,8 @@ pub struct FormStereo {
 pub struct CanonicalForm {
     /// The atoms in canonical order, then labelled hydrogens.
     pub atoms: Vec<FormAtom>,
-    /// The bonds: lower atom, higher atom, order 1 to 4; sorted.
+    /// The bonds: lower atom, higher atom, order 1 to 4, 6 for a coordination bond and 0 for a
+    /// hydrogen bond; sorted.
     pub bonds: Vec<(u32, u32, u8)>,
     /// The marked stereo elements, sorted by centres.
     pub stereo: Vec<FormStereo>,

@@ -28,7 +28,8 @@ pub struct NormalBond {
     pub a: u32,
     /// The other.
     pub b: u32,
-    /// The order, 1 to 4; `None` for a mobile bond.
+    /// The order, 1 to 4, 6 for a coordination bond and 0 for a hydrogen bond; `None` for a mobile
+    /// bond.
     pub order: Option<u8>,
     /// Whether the bond lies in a ring.
     pub in_ring: bool,

@@ -14,6 +14,16 @@ pub(super) struct Placed {
     pub(super) charges: Vec<i8>,
 }
 
+impl Placed {
+    /// Electron pairs of a bond that count as valence.
+    fn valence(&self, bond: u32) -> u8 {
+        match self.orders[bond as usize] {
+            order @ 1..=4 => order,
+            _ => 0,
+        }
+    }
+}
+
 /// Of all best placements the first in canonical order: bonds that carry a mark (`marked`, by
 /// bond) before the others, then by the ranks of their atoms, each as high an order as the bonds
 /// before it allow, then charges. Charge-separated centres below the second row are then written in
@@ -94,7 +104,7 @@ fn customary(skeleton: &Skeleton, rank: &[u32], placed: &mut Placed) {
             while placed.charges[centre as usize] > 0
                 && placed.charges[to as usize] < 0
                 && is_full(skeleton, placed, to)
-                && placed.orders[bond as usize] < 3
+                && (1..3).contains(&placed.orders[bond as usize])
             {
                 placed.charges[centre as usize] -= 1;
                 placed.charges[to as usize] += 1;
@@ -110,7 +120,7 @@ fn is_full(skeleton: &Skeleton, placed: &Placed, atom: u32) -> bool {
     let record = &skeleton.atoms[atom as usize];
     let bonds = skeleton.arcs(atom).iter();
     let drawn: i32 = bonds
-        .map(|&(_, bond)| i32::from(placed.orders[bond as usize]))
+        .map(|&(_, bond)| i32::from(placed.valence(bond)))
         .sum();
     drawn + i32::from(record.hydrogens)
         == mesomer::neutral_valence(record.element) + i32::from(placed.charges[atom as usize])

@@ -38,7 +38,7 @@ fn excess(skeleton: &Skeleton, atom: u32) -> i32 {
     let drawn: i32 = skeleton
         .arcs(atom)
         .iter()
-        .map(|&(_, bond)| i32::from(skeleton.bonds[bond as usize].order))
+        .map(|&(_, bond)| i32::from(skeleton.pairs(bond)))
         .sum::<i32>()
         + i32::from(record.hydrogens);
     drawn - valence::neutral(record.element) - i32::from(record.charge)
@@ -51,8 +51,7 @@ fn pi_bond(skeleton: &Skeleton, atom: u32) -> Option<u32> {
         .arcs(atom)
         .iter()
         .filter(|&&(to, bond)| {
-            skeleton.bonds[bond as usize].order > 1
-                && !skeleton.atoms[to as usize].element.is_metal()
+            skeleton.pairs(bond) > 1 && !skeleton.atoms[to as usize].element.is_metal()
         })
         .max_by_key(|&&(to, _)| valence::neutral(skeleton.atoms[to as usize].element) == 2)
         .map(|&(_, bond)| bond)

@@ -60,7 +60,7 @@ fn component(
     while let Some(&atom) = atoms.get(at) {
         at += 1;
         for &(to, bond) in skeleton.arcs(atom) {
-            if !seen[to as usize] && joins(to, bond) {
+            if !seen[to as usize] && skeleton.pairs(bond) > 0 && joins(to, bond) {
                 seen[to as usize] = true;
                 atoms.push(to);
             }
@@ -76,6 +76,7 @@ impl System {
         for (a, &atom) in atoms.iter().enumerate() {
             for &(to, bond) in skeleton.arcs(atom) {
                 if to > atom
+                    && skeleton.pairs(bond) > 0
                     && keep(bond)
                     && let Ok(b) = atoms.binary_search(&to)
                 {

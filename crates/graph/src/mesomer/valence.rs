@@ -91,7 +91,7 @@ fn open_valence(skeleton: &Skeleton, atom: u32) -> Option<u8> {
     }
     let mut drawn = i32::from(record.hydrogens);
     for &(_, bond) in skeleton.arcs(atom) {
-        let order = skeleton.bonds[bond as usize].order;
+        let order = skeleton.pairs(bond);
         if order > 3 {
             return None;
         }
@@ -106,8 +106,8 @@ fn room(skeleton: &Skeleton, covered: &[Option<u8>], atom: u32, open: u8) -> Opt
     let mut sigma = i32::from(record.hydrogens);
     let mut pi_drawn = 0;
     for &(to, bond) in skeleton.arcs(atom) {
-        let order = i32::from(skeleton.bonds[bond as usize].order);
-        if covered[to as usize].is_some() {
+        let order = i32::from(skeleton.pairs(bond));
+        if order > 0 && covered[to as usize].is_some() {
             sigma += 1;
             pi_drawn += order - 1;
         } else {
