@@ -50,6 +50,9 @@ pub enum OrderError {
         /// The limit.
         limit: usize,
     },
+    /// The record has stereo groups (AND, OR), which are not compared yet.
+    #[error("the record has stereo groups (AND, OR), which are not compared yet")]
+    StereoGroups,
     /// A vertex has more neighbours than the search can count.
     #[error("an atom has more than 511 neighbours")]
     TooManyNeighbours,
@@ -159,10 +162,25 @@ impl Orderer {
             view.bare.clone_from(&view.constitution);
         }
         view.perception
-            .load(&view.skeleton, &view.mesomer, molecule.drawn_stereo());
+            .load(&view.skeleton, &view.mesomer, molecule);
         view.perception
             .keep_unequal_axes(&view.skeleton, &view.bare.generators);
         view.variables = claims::variables(&view.perception);
+        if !molecule.stereo_groups().is_empty() {
+            return Err(OrderError::StereoGroups);
+        }
+        // Arrangements about metals are given, not open: they are part of the graph whose
+        // automorphisms relate the other elements.
+        let placed = if view.perception.placed.is_empty() {
+            None
+        } else {
+            self.keep_effective(&mut view.perception, &mut steps)?;
+            self.graph.placed.clone_from(&view.perception.placed);
+            let mut labelling = Labelling::default();
+            self.labeller
+                .label(&self.graph, &self.limits, &mut steps, &mut labelling)?;
+            Some(labelling)
+        };
         Solver {
             graph: &mut self.graph,
             labeller: &mut self.labeller,
@@ -171,10 +189,56 @@ impl Orderer {
             limits: &self.limits,
             steps: &mut steps,
         }
-        .solve(&view.bare, &mut view.claims, &mut view.written)?;
+        .solve(
+            placed.as_ref().unwrap_or(&view.bare),
+            &mut view.claims,
+            &mut view.written,
+        )?;
         let constitution = &view.constitution.certificate[..];
         view.constitution_key = Key::of(0, std::iter::once(constitution));
         view.compound_key = Key::of(1, view.claims.certificates.iter().map(Vec::as_slice));
+        Ok(())
+    }
+
+    /// Leaves out arrangements that make no difference: all that the ligands could have give the
+    /// same compound.
+    fn keep_effective(
+        &mut self,
+        perception: &mut Perception,
+        steps: &mut u64,
+    ) -> Result<(), OrderError> {
+        let mut at = 0;
+        while at < perception.placed.len() {
+            let candidates = perception.candidates.iter();
+            self.graph.units.clear();
+            self.graph
+                .units
+                .extend(candidates.filter_map(|c| Some(c.unit(c.parity?.is_odd()))));
+            self.graph.placed.clone_from(&perception.placed);
+            let own = &perception.placed[at];
+            let mut seen: Option<Labelling> = None;
+            let mut differs = false;
+            for ligands in own.polyhedron.arrangements(&own.ligands) {
+                self.graph.placed[at].ligands = ligands;
+                let mut labelling = Labelling::default();
+                self.labeller
+                    .label(&self.graph, &self.limits, steps, &mut labelling)?;
+                if seen
+                    .as_ref()
+                    .is_some_and(|first| first.certificate != labelling.certificate)
+                {
+                    differs = true;
+                    break;
+                }
+                seen = Some(labelling);
+            }
+            if differs {
+                at += 1;
+            } else {
+                perception.placed.remove(at);
+            }
+        }
+        self.graph.units.clear();
         Ok(())
     }
 

@@ -19,6 +19,7 @@ mod matching;
 mod mesomer;
 mod molecule;
 mod order;
+mod polyhedron;
 mod rings;
 mod skeleton;
 #[cfg(test)]

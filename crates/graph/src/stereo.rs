@@ -4,13 +4,19 @@
 //! stereogenic, and what the marks then claim, is decided in [`crate::claims`].
 
 mod bridgehead;
+mod coordination;
 mod double_bond;
 mod labile;
 mod marks;
 mod tetrahedral;
 mod undrawable;
 
-use crate::{Parity, Shape, mesomer::Mesomer, order::Unit, skeleton::Skeleton};
+use crate::{
+    Molecule, Parity, Shape,
+    mesomer::Mesomer,
+    order::{Placed, Unit},
+    skeleton::Skeleton,
+};
 
 pub(crate) use bridgehead::Cage;
 pub use undrawable::Undrawable;
@@ -88,23 +94,20 @@ pub(crate) struct Perception {
     /// Cages whose marks no cage can have: they count as drawn.
     pub(crate) impossible: Vec<Vec<u32>>,
     pub(crate) undrawable: Vec<Undrawable>,
+    /// Arrangements about centres that are not tetrahedral.
+    pub(crate) placed: Vec<Placed>,
     /// Centres, the lower first, and candidates; sorted.
     places: Vec<([u32; 2], usize)>,
 }
 
 impl Perception {
     /// Finds all candidates and puts the record's marks on them.
-    pub(crate) fn load(
-        &mut self,
-        skeleton: &Skeleton,
-        mesomer: &Mesomer,
-        drawn: &[crate::DrawnStereo],
-    ) {
+    pub(crate) fn load(&mut self, skeleton: &Skeleton, mesomer: &Mesomer, molecule: &Molecule) {
         self.candidates.clear();
         self.dropped.clear();
         self.impossible.clear();
         self.cages.clear();
-        let marks = marks::on_skeleton(skeleton, drawn);
+        let marks = marks::on_skeleton(skeleton, molecule.drawn_stereo());
         let thetas = tetrahedral::find(self, skeleton, mesomer, &marks);
         double_bond::find(self, skeleton, mesomer, &marks);
         let places = self.candidates.iter().enumerate();
@@ -114,7 +117,8 @@ impl Perception {
         self.places.sort_unstable();
         marks::apply(self, skeleton, mesomer, &marks);
         bridgehead::bind(self, &thetas);
-        undrawable::find(skeleton, mesomer, &mut self.undrawable);
+        coordination::load(self, skeleton, molecule.drawn_coordination());
+        undrawable::find(self, skeleton, mesomer);
     }
 
     /// The candidate at a tetrahedral centre (given twice) or a pair of ends.

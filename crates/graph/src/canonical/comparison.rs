@@ -41,6 +41,12 @@ pub fn arrangement(
     // union of orbits, so only the elements that both fix have to be compared.
     let (in_a, in_b) = (a.fixed_places(b), b.fixed_places(a));
     let common: BTreeSet<Place> = in_a.intersection(&in_b).copied().collect();
+    let (metals_a, metals_b) = (a.placed_places(), b.placed_places());
+    let metals: BTreeSet<u32> = metals_a.intersection(&metals_b).copied().collect();
+    let common = Common {
+        elements: common,
+        metals,
+    };
     let ours = orderer.certificates(a, &a.assignments(b), &common, false)?;
     let theirs = orderer.certificates(b, &b.assignments(a), &common, false)?;
     if !ours.is_disjoint(&theirs) {
@@ -56,6 +62,13 @@ pub fn arrangement(
     })
 }
 
+/// What both records fix.
+struct Common {
+    elements: BTreeSet<Place>,
+    /// Canonical places of centres with a polyhedron.
+    metals: BTreeSet<u32>,
+}
+
 /// A stereo element by shape and the canonical places of its centres. Sets of elements closed under
 /// automorphisms have the same places whichever of the equivalent orders was found.
 type Place = (Shape, u32, u32);
@@ -64,6 +77,14 @@ impl Canonical {
     fn place(&self, candidate: &Candidate) -> Place {
         let [a, b] = candidate.centres.map(|atom| self.bare.rank[atom as usize]);
         (candidate.shape, a.min(b), a.max(b))
+    }
+
+    fn placed_places(&self) -> BTreeSet<u32> {
+        self.perception
+            .placed
+            .iter()
+            .map(|placed| self.bare.rank[placed.centre as usize])
+            .collect()
     }
 
     /// Free cages that have to be compared bridgehead by bridgehead, because the other record marks
@@ -101,13 +122,13 @@ impl Canonical {
 }
 
 impl Orderer {
-    /// Certificates of all listed assignments, or of their mirror images, with only the elements at
-    /// `places` marked.
+    /// Certificates of all listed assignments, or of their mirror images, with only the elements that
+    /// both records fix marked.
     fn certificates(
         &mut self,
         canonical: &Canonical,
         assignments: &[Vec<bool>],
-        places: &BTreeSet<Place>,
+        common: &Common,
         mirrored: bool,
     ) -> Result<BTreeSet<Vec<u64>>, OrderError> {
         colour::load(
@@ -119,12 +140,25 @@ impl Orderer {
         let mut steps = 0;
         let mut found = BTreeSet::new();
         let mut labelling = Labelling::default();
+        let placed = canonical.perception.placed.iter();
+        for own in placed {
+            if common
+                .metals
+                .contains(&canonical.bare.rank[own.centre as usize])
+            {
+                let mut own = own.clone();
+                if mirrored {
+                    own.ligands = own.polyhedron.mirrored(&own.ligands);
+                }
+                self.graph.placed.push(own);
+            }
+        }
         for assignment in assignments {
             self.graph.units.clear();
             for (variable, &odd) in canonical.variables.iter().zip(assignment) {
                 for &(index, opposite) in &variable.members {
                     let candidate = &canonical.perception.candidates[index];
-                    if places.contains(&canonical.place(candidate)) {
+                    if common.elements.contains(&canonical.place(candidate)) {
                         let turned = mirrored && candidate.is_chiral();
                         self.graph
                             .units

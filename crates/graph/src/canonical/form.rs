@@ -2,7 +2,9 @@
 
 use std::collections::HashSet;
 
-use crate::{Canonical, Element, Ligand, Parity, Shape, claims::Status, stereo::slot};
+use crate::{
+    Canonical, DrawnCoordination, Element, Ligand, Parity, Shape, claims::Status, stereo::slot,
+};
 
 use super::placement;
 
@@ -44,6 +46,9 @@ pub struct CanonicalForm {
     pub bonds: Vec<(u32, u32, u8)>,
     /// The marked stereo elements, sorted by centres.
     pub stereo: Vec<FormStereo>,
+    /// Arrangements about centres that are not tetrahedral, by centre; each turned so that it is
+    /// least.
+    pub coordination: Vec<DrawnCoordination>,
 }
 
 impl Canonical {
@@ -119,16 +124,7 @@ impl Canonical {
                 let ligands = candidate.ligands.map(|ligand| {
                     let centre = centres[at / 2];
                     at += 1;
-                    match ligand {
-                        slot::LONE_PAIR => Ligand::LonePair,
-                        slot::HYDROGEN => Ligand::Hydrogen,
-                        l if l > slot::HYDROGEN => {
-                            let mass = l - slot::HYDROGEN;
-                            let own = labelled.iter().find(|&&(h, m, _)| h == centre && m == mass);
-                            own.map_or(Ligand::Hydrogen, |&(_, _, atom)| Ligand::Atom(atom))
-                        }
-                        atom => Ligand::Atom(rank(atom)),
-                    }
+                    self.ligand(ligand, centre, labelled)
                 });
                 let parity = Parity::from_odd(odd ^ opposite);
                 form.stereo.push(FormStereo {
@@ -140,5 +136,45 @@ impl Canonical {
             }
         }
         form.stereo.sort_by_key(|element| element.centres);
+        for placed in &self.perception.placed {
+            let centre = rank(placed.centre);
+            let own = |ligand: u32| {
+                if ligand < slot::HYDROGEN {
+                    rank(ligand)
+                } else {
+                    ligand
+                }
+            };
+            let numbers: Vec<u32> = placed.ligands.iter().map(|&ligand| own(ligand)).collect();
+            let turned = placed.polyhedron.least(&numbers);
+            let atoms = &self.written.order;
+            let back = |number: u32| atoms.get(number as usize).copied().unwrap_or(number);
+            let ligands = turned
+                .into_iter()
+                .map(|number| self.ligand(back(number), centre, labelled))
+                .collect();
+            form.coordination.push(DrawnCoordination {
+                polyhedron: placed.polyhedron,
+                centre,
+                ligands,
+            });
+        }
+        form.coordination.sort_by_key(|mark| mark.centre);
+    }
+
+    /// A skeleton ligand in the numbering of the form; `labelled` lists hydrogens that are atoms.
+    fn ligand(&self, ligand: u32, centre: u32, labelled: &[(u32, u32, u32)]) -> Ligand {
+        match ligand {
+            slot::LONE_PAIR => Ligand::LonePair,
+            slot::HYDROGEN => Ligand::Hydrogen,
+            l if l > slot::HYDROGEN => {
+                let mass = l - slot::HYDROGEN;
+                let own = labelled
+                    .iter()
+                    .find(|&&(host, m, _)| host == centre && m == mass);
+                own.map_or(Ligand::Hydrogen, |&(_, _, atom)| Ligand::Atom(atom))
+            }
+            atom => Ligand::Atom(self.written.rank[atom as usize]),
+        }
     }
 }

@@ -3,6 +3,7 @@
 use super::{
     coloured::{Coloured, ranked_parity},
     partition::Partition,
+    refine::Inside,
 };
 
 /// Stands between the edges and the units of a certificate.
@@ -12,7 +13,7 @@ const SEPARATOR: u64 = u64::MAX;
 pub(super) fn write_certificate(
     graph: &Coloured,
     partition: &Partition,
-    units: &[u32],
+    inside: &Inside,
     words: &mut Vec<u64>,
 ) {
     words.clear();
@@ -38,7 +39,7 @@ pub(super) fn write_certificate(
             v
         }
     };
-    for &index in units {
+    for &index in &inside.units {
         let unit = &graph.units[index as usize];
         let mut ends = unit.centres.map(rank);
         ends.sort_unstable();
@@ -50,4 +51,20 @@ pub(super) fn write_certificate(
         words.push(u64::from(ends[0]) << 36 | u64::from(ends[1]) << 8 | colour << 2 | orientation);
     }
     words[from..].sort_unstable();
+    if inside.placed.is_empty() {
+        return;
+    }
+    let mut placed: Vec<Vec<u64>> = inside
+        .placed
+        .iter()
+        .map(|&index| {
+            let placed = &graph.placed[index as usize];
+            let mut row = vec![rank(placed.centre).into(), placed.polyhedron as u64];
+            row.extend(placed.ranks(rank).into_iter().map(u64::from));
+            row
+        })
+        .collect();
+    placed.sort_unstable();
+    words.push(SEPARATOR);
+    words.extend(placed.into_iter().flatten());
 }

@@ -1,5 +1,7 @@
 //! The graph that the search orders: coloured vertices, classed edges, oriented units.
 
+use crate::Polyhedron;
+
 /// Bits that the count of one edge class takes in a refinement key, so there is room for seven
 /// classes and a vertex may have at most 511 neighbours.
 pub(super) const COUNT_BITS: u32 = 9;
@@ -17,6 +19,23 @@ pub(crate) struct Unit {
     pub(crate) colour: u32,
 }
 
+/// A centre with its ligands placed on a polyhedron: vertices, or numbers above all vertices.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub(crate) struct Placed {
+    pub(crate) centre: u32,
+    pub(crate) polyhedron: Polyhedron,
+    pub(crate) ligands: Vec<u32>,
+}
+
+impl Placed {
+    /// The least sequence of ranks that rotation can bring about: invariant, and complete once all
+    /// ligands have ranks of their own.
+    pub(super) fn ranks(&self, rank: impl Fn(u32) -> u32) -> Vec<u32> {
+        let ranks: Vec<u32> = self.ligands.iter().map(|&ligand| rank(ligand)).collect();
+        self.polyhedron.least(&ranks)
+    }
+}
+
 /// A coloured graph in compressed form. Colours are arbitrary words and part of the certificate.
 #[derive(Debug, Default, Clone)]
 pub(crate) struct Coloured {
@@ -24,6 +43,7 @@ pub(crate) struct Coloured {
     start: Vec<u32>,
     arcs: Vec<(u32, u8)>,
     pub(crate) units: Vec<Unit>,
+    pub(crate) placed: Vec<Placed>,
 }
 
 impl Coloured {
@@ -34,6 +54,7 @@ impl Coloured {
         edges: impl Iterator<Item = (u32, u32, u8)> + Clone,
     ) {
         self.units.clear();
+        self.placed.clear();
         self.colours.clear();
         self.colours.extend(colours);
         self.start.clear();

@@ -5,6 +5,13 @@ use super::{
     partition::Partition,
 };
 
+/// The units and placed centres of the component that is being ordered, by index.
+#[derive(Debug, Default, Clone)]
+pub(super) struct Inside {
+    pub(super) units: Vec<u32>,
+    pub(super) placed: Vec<u32>,
+}
+
 /// Scratch of the refinement, and the running invariant of what it did.
 #[derive(Debug, Default, Clone)]
 pub(super) struct Refiner {
@@ -54,13 +61,13 @@ impl Refiner {
     pub(super) fn refine(
         &mut self,
         graph: &Coloured,
-        units: &[u32],
+        inside: &Inside,
         partition: &mut Partition,
     ) -> u64 {
         self.invariant = mix(0, partition.cells.into());
         loop {
             self.equitable(graph, partition);
-            if partition.is_discrete() || !self.orient(graph, units, partition) {
+            if partition.is_discrete() || !self.orient(graph, inside, partition) {
                 break;
             }
         }
@@ -164,22 +171,22 @@ impl Refiner {
 
     /// Splits cells by the orientation of the units centred on their vertices. A unit whose ligands
     /// are not yet told apart counts as such.
-    fn orient(&mut self, graph: &Coloured, units: &[u32], partition: &mut Partition) -> bool {
-        if units.is_empty() {
+    fn orient(&mut self, graph: &Coloured, inside: &Inside, partition: &mut Partition) -> bool {
+        if inside.units.is_empty() && inside.placed.is_empty() {
             return false;
         }
         self.touched.clear();
+        self.work += (inside.units.len() + inside.placed.len()) as u64;
         let vertices = graph.len() as u32;
-        self.work += units.len() as u64;
-        for &index in units {
+        let rank = |v: u32| {
+            if v < vertices {
+                partition.cell[v as usize]
+            } else {
+                v
+            }
+        };
+        for &index in &inside.units {
             let unit = &graph.units[index as usize];
-            let rank = |v: u32| {
-                if v < vertices {
-                    partition.cell[v as usize]
-                } else {
-                    v
-                }
-            };
             let word = match ranked_parity(unit, rank) {
                 None => 1,
                 Some(false) => 1 << 16,
@@ -191,12 +198,25 @@ impl Refiner {
                 2
             };
             for &centre in &unit.centres[..ends] {
-                if self.key[centre as usize] == 0 {
-                    self.touched.push(centre);
-                }
-                self.key[centre as usize] += word;
+                self.add(centre, word);
             }
         }
+        for &index in &inside.placed {
+            let placed = &graph.placed[index as usize];
+            let ranks = placed.ranks(rank);
+            let word = ranks.iter().fold(1, |state, &rank| mix(state, rank.into()));
+            // Bits above those of units; equal hashes of different arrangements split less, that is
+            // all.
+            self.add(placed.centre, word << 48 | 1 << 47);
+        }
         self.split_touched(partition)
+    }
+
+    fn add(&mut self, vertex: u32, word: u64) {
+        let key = &mut self.key[vertex as usize];
+        if *key == 0 {
+            self.touched.push(vertex);
+        }
+        *key = key.wrapping_add(word);
     }
 }

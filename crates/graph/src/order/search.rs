@@ -10,8 +10,11 @@ use std::cmp::Ordering;
 use crate::{Limits, OrderError};
 
 use super::{
-    certificate::write_certificate, coloured::Coloured, partition::Partition,
-    permutation::Permutation, refine::Refiner,
+    certificate::write_certificate,
+    coloured::Coloured,
+    partition::Partition,
+    permutation::Permutation,
+    refine::{Inside, Refiner},
 };
 
 /// A leaf: the vertex at each position, and the graph written in that order.
@@ -51,7 +54,7 @@ pub(crate) struct Search {
     first: Leaf,
     best: Leaf,
     current: Vec<u64>,
-    units: Vec<u32>,
+    inside: Inside,
     generators: Vec<Permutation>,
     /// Union-find over vertices, of the automorphisms found so far.
     orbit: Vec<u32>,
@@ -114,21 +117,18 @@ impl Search {
         self.best.certificate.clear();
         self.orbit.clear();
         self.orbit.extend(0..graph.len() as u32);
-        self.units.clear();
-        if !graph.units.is_empty() {
-            let inside = |v: u32| {
-                self.partition
-                    .lab
-                    .get(self.partition.pos[v as usize] as usize)
-                    == Some(&v)
-            };
-            let units = graph
-                .units
-                .iter()
-                .zip(0..)
-                .filter(|(unit, _)| inside(unit.centres[0]));
-            self.units.extend(units.map(|(_, index)| index));
-        }
+        self.inside.units.clear();
+        self.inside.placed.clear();
+        let partition = &self.partition;
+        let inside = |v: u32| partition.lab.get(partition.pos[v as usize] as usize) == Some(&v);
+        let units = (0..)
+            .zip(&graph.units)
+            .filter(|(_, unit)| inside(unit.centres[0]));
+        self.inside.units.extend(units.map(|(index, _)| index));
+        let placed = (0..)
+            .zip(&graph.placed)
+            .filter(|(_, placed)| inside(placed.centre));
+        self.inside.placed.extend(placed.map(|(index, _)| index));
     }
 
     /// Refines once. Work is counted in edges and vertices looked at, so that a step costs about
@@ -142,7 +142,9 @@ impl Search {
         if limits.stopped() {
             return Err(OrderError::Stopped);
         }
-        let trace = self.refiner.refine(graph, &self.units, &mut self.partition);
+        let trace = self
+            .refiner
+            .refine(graph, &self.inside, &mut self.partition);
         self.steps += 1 + std::mem::take(&mut self.refiner.work);
         Ok(trace)
     }
@@ -263,7 +265,7 @@ impl Search {
 
     fn leaf(&mut self, graph: &Coloured, like_first: bool, against_best: Ordering) {
         let mut certificate = std::mem::take(&mut self.current);
-        write_certificate(graph, &self.partition, &self.units, &mut certificate);
+        write_certificate(graph, &self.partition, &self.inside, &mut certificate);
         self.steps += certificate.len() as u64;
         self.current = certificate;
         if self.first.certificate.is_empty() {

@@ -1,9 +1,9 @@
-//! Double bonds, and cumulated ones, that can be stereogenic.
+//! Double bonds, cumulated ones and hindered axes that can be stereogenic.
 
 use crate::{
     Shape,
     mesomer::{MOBILE, Mesomer},
-    skeleton::Skeleton,
+    skeleton::{Skeleton, SkeletonBond},
 };
 
 use super::{Candidate, Perception, labile, marks::Mark, slot, tetrahedral::hydrogen_slots};
@@ -11,20 +11,22 @@ use super::{Candidate, Perception, labile, marks::Mark, slot, tetrahedral::hydro
 /// Rings below this size hold their double bonds cis.
 const SMALLEST_FREE_RING: u32 = 8;
 
-/// Adds the candidates. Mobile bonds are candidates only in a record that marks one; the absence of
-/// a mark on them leaves nothing open.
+/// Adds the candidates. Mobile bonds, and single bonds as hindered axes, are candidates only in a
+/// record that marks one; the absence of a mark on them leaves nothing open.
 pub(super) fn find(
     perception: &mut Perception,
     skeleton: &Skeleton,
     mesomer: &Mesomer,
     marks: &[Mark],
 ) {
-    let marked_mobile = marks.iter().any(|mark| {
-        mark.shape == Shape::DoubleBond
-            && skeleton
-                .bond_between(mark.centres[0], mark.centres[1])
-                .is_some_and(|bond| mesomer.orders[bond as usize] == MOBILE)
-    });
+    let marked = |shape: Shape, order: u8| {
+        marks.iter().any(|mark| {
+            let bond = skeleton.bond_between(mark.centres[0], mark.centres[1]);
+            mark.shape == shape && bond.is_some_and(|bond| mesomer.orders[bond as usize] == order)
+        })
+    };
+    let marked_mobile = marked(Shape::DoubleBond, MOBILE);
+    let marked_axis = marked(Shape::Axis, 1);
     for (index, bond) in skeleton.bonds.iter().enumerate() {
         let chain = match mesomer.orders[index] {
             2 => match cumulene(skeleton, mesomer, index as u32) {
@@ -36,6 +38,11 @@ pub(super) fn find(
                 inner: [bond.b, bond.a],
                 bonds: 1,
             },
+            1 if marked_axis && is_between_sp2(skeleton, mesomer, bond) => Chain {
+                ends: [bond.a, bond.b],
+                inner: [bond.b, bond.a],
+                bonds: 0,
+            },
             _ => continue,
         };
         if let Some(candidate) = candidate(skeleton, mesomer, index as u32, &chain) {
@@ -44,7 +51,17 @@ pub(super) fn find(
     }
 }
 
-/// A run of cumulated double bonds: its two ends and the atom next to each end.
+/// Whether a single bond joins two atoms that have other than single bonds besides.
+fn is_between_sp2(skeleton: &Skeleton, mesomer: &Mesomer, bond: &SkeletonBond) -> bool {
+    [bond.a, bond.b].iter().all(|&atom| {
+        skeleton
+            .arcs(atom)
+            .iter()
+            .any(|&(_, bond)| mesomer.orders[bond as usize] != 1)
+    })
+}
+
+/// A run of cumulated double bonds, or one single bond that is an axis (`bonds` is 0): its two ends and the atom next to each end.
 struct Chain {
     ends: [u32; 2],
     inner: [u32; 2],
@@ -113,7 +130,7 @@ fn candidate(
         centres: [a, b],
         ligands: [first, second, third, fourth],
         parity: None,
-        quiet: mesomer.orders[bond as usize] == MOBILE,
+        quiet: mesomer.orders[bond as usize] != 2,
     })
 }
 

@@ -24,14 +24,7 @@ pub(super) fn on_skeleton(skeleton: &Skeleton, drawn: &[DrawnStereo]) -> Vec<Mar
         .iter()
         .map(|mark| {
             let centres = mark.centres.map(home);
-            let ligands = mark.ligands.map(|ligand| match ligand {
-                Ligand::LonePair => slot::LONE_PAIR,
-                Ligand::Hydrogen => slot::HYDROGEN,
-                Ligand::Atom(atom) => match skeleton.folded.get(atom as usize) {
-                    Some(Some(mass)) => slot::HYDROGEN + u32::from(*mass),
-                    _ => home(atom),
-                },
-            });
+            let ligands = mark.ligands.map(|ligand| slot_of(skeleton, ligand));
             Mark {
                 shape: mark.shape,
                 centres,
@@ -40,6 +33,18 @@ pub(super) fn on_skeleton(skeleton: &Skeleton, drawn: &[DrawnStereo]) -> Vec<Mar
             }
         })
         .collect()
+}
+
+/// A ligand as the skeleton knows it.
+pub(super) fn slot_of(skeleton: &Skeleton, ligand: Ligand) -> u32 {
+    match ligand {
+        Ligand::LonePair => slot::LONE_PAIR,
+        Ligand::Hydrogen => slot::HYDROGEN,
+        Ligand::Atom(atom) => match skeleton.folded.get(atom as usize) {
+            Some(Some(mass)) => slot::HYDROGEN + u32::from(*mass),
+            _ => skeleton.home.get(atom as usize).copied().unwrap_or(NO_ATOM),
+        },
+    }
 }
 
 /// Sets the parity of candidates from marks and records the marks that fall away.

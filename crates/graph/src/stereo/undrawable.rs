@@ -21,34 +21,42 @@ pub enum Undrawable {
     },
 }
 
-/// Lists the places, as skeleton atoms.
-pub(super) fn find(skeleton: &Skeleton, mesomer: &Mesomer, found: &mut Vec<Undrawable>) {
-    found.clear();
+/// Lists the places that the record leaves out, as skeleton atoms.
+pub(super) fn find(perception: &mut Perception, skeleton: &Skeleton, mesomer: &Mesomer) {
+    perception.undrawable.clear();
     for (index, bond) in skeleton.bonds.iter().enumerate() {
         let axis = mesomer.orders[index] == 1
             && !skeleton.ring[index]
             && is_sp2_ring_atom(skeleton, mesomer, bond.a)
             && is_sp2_ring_atom(skeleton, mesomer, bond.b);
-        if axis {
-            let (first, second) = (
-                ortho(skeleton, bond.a, bond.b),
-                ortho(skeleton, bond.b, bond.a),
-            );
-            if first.min(second) >= 1 && first + second >= 3 {
-                found.push(Undrawable::HinderedAxis {
-                    atoms: [bond.a, bond.b],
-                });
-            }
+        if !axis || is_marked(perception, [bond.a, bond.b]) {
+            continue;
+        }
+        let (first, second) = (
+            ortho(skeleton, bond.a, bond.b),
+            ortho(skeleton, bond.b, bond.a),
+        );
+        if first.min(second) >= 1 && first + second >= 3 {
+            perception.undrawable.push(Undrawable::HinderedAxis {
+                atoms: [bond.a, bond.b],
+            });
         }
     }
     for atom in 0..skeleton.len() as u32 {
         if is_transition_metal(skeleton.atoms[atom as usize].element)
             && skeleton.degree(atom) >= 4
             && !neighbours_alike(skeleton, atom)
+            && !is_marked(perception, [atom, atom])
+            && !perception.placed.iter().any(|placed| placed.centre == atom)
         {
-            found.push(Undrawable::MetalCentre { atom });
+            perception.undrawable.push(Undrawable::MetalCentre { atom });
         }
     }
+}
+
+fn is_marked(perception: &Perception, centres: [u32; 2]) -> bool {
+    let candidate = perception.candidate_at(centres);
+    candidate.is_some_and(|index| perception.candidates[index].parity.is_some())
 }
 
 impl Perception {
