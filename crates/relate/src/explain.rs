@@ -2,6 +2,8 @@
 
 mod branching;
 mod constitution;
+mod coordination;
+mod named;
 mod stereo;
 
 use molkin_graph::Limits;
@@ -10,7 +12,7 @@ use crate::{Relation, Structure};
 
 pub use branching::{BranchPoint, Branching};
 pub use constitution::{BondDifference, HydrogenDifference};
-pub use stereo::{StereoChange, StereoDifference};
+pub use stereo::{Geometry, StereoChange, StereoDifference};
 
 /// What accounts for a relation, on the atoms of both records (from 0, in input order).
 #[derive(Debug, Clone, PartialEq, Eq, Default)]

@@ -15,8 +15,8 @@ pub mod wire;
 
 pub use crate::{
     explain::{
-        BondDifference, BranchPoint, Branching, Explanation, HydrogenDifference, StereoChange,
-        StereoDifference, explain,
+        BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
+        StereoChange, StereoDifference, explain,
     },
     relation::{Relation, StereoKind, Verdict, relate},
     structure::{PrepareError, Structure},

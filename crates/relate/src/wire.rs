@@ -144,11 +144,3 @@ impl Error {
 fn from_one(atoms: &[u32]) -> Vec<u32> {
     atoms.iter().map(|atom| atom + 1).collect()
 }
-
-fn element_name(shape: molkin_graph::Shape) -> &'static str {
-    match shape {
-        molkin_graph::Shape::Tetrahedral => "tetrahedral",
-        molkin_graph::Shape::DoubleBond => "double-bond",
-        molkin_graph::Shape::Axis => "axis",
-    }
-}

@@ -27,7 +27,7 @@ const STRUCTURES: &[&str] = &[
     // Double bonds: equivalent ones, and one that depends on two centres.
     "C/C=C/C=C/C",
     "C/C=C/[C@H](O)/C=C/C",
-        "C[C@H](O)/C=C/[C@H](C)O",
+    "C[C@H](O)/C=C/[C@H](C)O",
     // Spiro, allene, axis with centres.
     "C[C@H]1C[C@@]2(C1)C[C@H](C)C2",
     "CC=[C@]=CC",
@@ -82,31 +82,48 @@ struct Listed {
 fn list(orderer: &mut Orderer, text: &str) -> Vec<Listed> {
     let molecule = smiles::parse(text).unwrap();
     let count = molecule.drawn_stereo().len();
-    let inverts: Vec<bool> =
-        molecule.drawn_stereo().iter().map(|m| m.shape != Shape::DoubleBond).collect();
+    let inverts: Vec<bool> = molecule
+        .drawn_stereo()
+        .iter()
+        .map(|m| m.shape != Shape::DoubleBond)
+        .collect();
     let mut keys: BTreeMap<Vec<bool>, Key> = BTreeMap::new();
     for code in 0..1u32 << count {
         let full: Vec<bool> = (0..count).map(|at| code >> at & 1 == 1).collect();
-        let marks: Vec<_> = full.iter().map(|&odd| Some(Parity::from_odd(odd))).collect();
+        let marks: Vec<_> = full
+            .iter()
+            .map(|&odd| Some(Parity::from_odd(odd)))
+            .collect();
         let view = orderer.order(&remarked(&molecule, &marks)).unwrap();
         assert!(!view.is_open(), "{text} {full:?}");
         keys.insert(full, view.compound_key());
     }
     let mirror = |full: &[bool]| -> Vec<bool> {
-        full.iter().zip(&inverts).map(|(odd, inverts)| odd ^ inverts).collect()
+        full.iter()
+            .zip(&inverts)
+            .map(|(odd, inverts)| odd ^ inverts)
+            .collect()
     };
     all_marks(count)
         .into_iter()
         .map(|marks| {
             let allowed = |full: &&Vec<bool>| {
-                full.iter().zip(&marks).all(|(odd, mark)| {
-                    mark.is_none_or(|parity| parity.is_odd() == *odd)
-                })
+                full.iter()
+                    .zip(&marks)
+                    .all(|(odd, mark)| mark.is_none_or(|parity| parity.is_odd() == *odd))
             };
             let own = keys.keys().filter(allowed).map(|full| keys[full]).collect();
-            let mirrored = keys.keys().filter(allowed).map(|full| keys[&mirror(full)]).collect();
+            let mirrored = keys
+                .keys()
+                .filter(allowed)
+                .map(|full| keys[&mirror(full)])
+                .collect();
             let structure = Structure::new(orderer, remarked(&molecule, &marks)).unwrap();
-            Listed { structure, own, mirrored }
+            Listed {
+                structure,
+                own,
+                mirrored,
+            }
         })
         .collect()
 }

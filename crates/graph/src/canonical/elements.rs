@@ -1,7 +1,7 @@
 //! The stereo elements of a record as callers see them, on the atoms of the molecule.
 
 use crate::{
-    Canonical, Ligand, Parity, Shape, Undrawable,
+    Canonical, DrawnCoordination, Ligand, Parity, Shape, Undrawable,
     claims::{Status, Variable},
     stereo::{Candidate, slot},
 };
@@ -103,6 +103,23 @@ impl Canonical {
         found
     }
 
+    /// The arrangements about centres that are not tetrahedral, as far as they make a difference, on
+    /// the atoms of the molecule.
+    pub fn coordination_elements(&self) -> Vec<DrawnCoordination> {
+        let placed = self.perception.placed.iter();
+        placed
+            .map(|placed| DrawnCoordination {
+                polyhedron: placed.polyhedron,
+                centre: self.source(placed.centre),
+                ligands: placed
+                    .ligands
+                    .iter()
+                    .map(|&ligand| self.molecule_ligand(ligand, placed.centre))
+                    .collect(),
+            })
+            .collect()
+    }
+
     /// What else is to be said about the stereo of the record.
     pub fn remarks(&self) -> Vec<Remark> {
         let perception = &self.perception;
@@ -182,19 +199,23 @@ impl Canonical {
         candidate.ligands.map(|ligand| {
             let centre = candidate.centres[at / 2];
             at += 1;
-            match ligand {
-                slot::LONE_PAIR => Ligand::LonePair,
-                slot::HYDROGEN => Ligand::Hydrogen,
-                l if l > slot::HYDROGEN => {
-                    let mass = (l - slot::HYDROGEN) as u8;
-                    let own = (0u32..).zip(&self.skeleton.folded).find(|&(atom, folded)| {
-                        *folded == Some(mass) && self.skeleton.home[atom as usize] == centre
-                    });
-                    own.map_or(Ligand::Hydrogen, |(atom, _)| Ligand::Atom(atom))
-                }
-                atom => Ligand::Atom(self.source(atom)),
-            }
+            self.molecule_ligand(ligand, centre)
         })
+    }
+
+    fn molecule_ligand(&self, ligand: u32, centre: u32) -> Ligand {
+        match ligand {
+            slot::LONE_PAIR => Ligand::LonePair,
+            slot::HYDROGEN => Ligand::Hydrogen,
+            l if l > slot::HYDROGEN => {
+                let mass = (l - slot::HYDROGEN) as u8;
+                let own = (0u32..).zip(&self.skeleton.folded).find(|&(atom, folded)| {
+                    *folded == Some(mass) && self.skeleton.home[atom as usize] == centre
+                });
+                own.map_or(Ligand::Hydrogen, |(atom, _)| Ligand::Atom(atom))
+            }
+            atom => Ligand::Atom(self.source(atom)),
+        }
     }
 
     fn source(&self, atom: u32) -> u32 {

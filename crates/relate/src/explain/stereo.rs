@@ -2,11 +2,37 @@
 
 use std::collections::{HashMap, HashSet, VecDeque};
 
-use molkin_graph::{Ligand, Mark, Shape, StereoElement};
+use molkin_graph::{Ligand, Mark, Polyhedron, Shape, StereoElement};
 
 use crate::Structure;
 
-use super::{BondDifference, Explanation};
+use super::{
+    BondDifference, Explanation, coordination,
+    named::{named, unfolded},
+};
+
+/// The geometry of what differs.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum Geometry {
+    /// A stereo element with two arrangements.
+    Element(Shape),
+    /// A centre whose ligands sit on a polyhedron.
+    Coordination(Polyhedron),
+}
+
+impl Geometry {
+    /// The word of the output contract.
+    pub fn as_str(self) -> &'static str {
+        match self {
+            Self::Element(Shape::Tetrahedral) => "tetrahedral",
+            Self::Element(Shape::DoubleBond) => "double-bond",
+            Self::Element(Shape::Axis) => "axis",
+            Self::Coordination(Polyhedron::SquarePlanar) => "square-planar",
+            Self::Coordination(Polyhedron::TrigonalBipyramidal) => "trigonal-bipyramidal",
+            Self::Coordination(Polyhedron::Octahedral) => "octahedral",
+        }
+    }
+}
 
 /// What happens to a stereo element from A to B.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
@@ -14,6 +40,8 @@ use super::{BondDifference, Explanation};
 pub enum StereoChange {
     /// Both mark it, with opposite arrangements.
     Inverted,
+    /// Both give an arrangement of ligands about the centre, and they are not the same.
+    Rearranged,
     /// Only A marks it.
     MarkedOnlyInA,
     /// Only B marks it.
@@ -25,6 +53,7 @@ impl StereoChange {
     pub fn as_str(self) -> &'static str {
         match self {
             Self::Inverted => "inverted",
+            Self::Rearranged => "rearranged",
             Self::MarkedOnlyInA => "marked-only-in-a",
             Self::MarkedOnlyInB => "marked-only-in-b",
         }
@@ -35,7 +64,7 @@ impl StereoChange {
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct StereoDifference {
     /// Its geometry.
-    pub shape: Shape,
+    pub geometry: Geometry,
     /// The centre, or both ends, in A.
     pub a: Vec<u32>,
     /// The same in B.
@@ -180,26 +209,6 @@ impl Maps {
     }
 }
 
-/// A ligand as the other side would name it.
-#[derive(PartialEq, Eq, Clone, Copy)]
-enum Named {
-    Atom(u32),
-    Hydrogen(Option<u16>),
-    LonePair,
-}
-
-fn named(structure: &Structure, ligand: Ligand, image: &dyn Fn(u32) -> Option<u32>) -> Named {
-    match ligand {
-        Ligand::LonePair => Named::LonePair,
-        Ligand::Hydrogen => Named::Hydrogen(None),
-        Ligand::Atom(atom) => match image(atom) {
-            Some(to) => Named::Atom(to),
-            // Only folded hydrogens have no image.
-            None => Named::Hydrogen(structure.molecule().atom(atom).and_then(|a| a.isotope)),
-        },
-    }
-}
-
 fn differences(
     a: &Structure,
     b: &Structure,
@@ -232,7 +241,7 @@ fn differences(
         };
         let atoms = (distinct(element.centres), distinct([x, y]));
         found.push(StereoDifference {
-            shape: element.shape,
+            geometry: Geometry::Element(element.shape),
             a: atoms.0,
             b: atoms.1,
             change,
@@ -250,13 +259,14 @@ fn differences(
         };
         if element.mark != Mark::Absent {
             found.push(StereoDifference {
-                shape: element.shape,
+                geometry: Geometry::Element(element.shape),
                 a: distinct(back),
                 b: distinct(element.centres),
                 change: StereoChange::MarkedOnlyInB,
             });
         }
     }
+    found.extend(coordination::differences(a, b, image));
     found.sort_by(|x, y| x.a.cmp(&y.a));
     found
 }
@@ -285,12 +295,9 @@ fn opposed(
         return false;
     };
     let mut ours = element.ligands.map(|ligand| named(a, ligand, image));
-    let theirs = other.ligands.map(|ligand| {
-        named(b, ligand, &|atom| {
-            let folded = b.canonical().is_folded(atom);
-            (!folded).then_some(atom)
-        })
-    });
+    let theirs = other
+        .ligands
+        .map(|ligand| named(b, ligand, &|atom| unfolded(b, atom)));
     let one_centre = element.centres[0] == element.centres[1];
     if !one_centre && image(element.centres[0]) != Some(other.centres[0]) {
         ours = [ours[2], ours[3], ours[0], ours[1]];

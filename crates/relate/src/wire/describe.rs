@@ -3,9 +3,9 @@
 use molkin_graph::{Element, Mark, Molecule, StereoElement, average_mass, monoisotopic_mass};
 use serde::Serialize;
 
-use crate::Structure;
+use crate::{Geometry, Structure};
 
-use super::{Error, Note, Prepared, VERSION, element_name, from_one};
+use super::{Error, Note, Prepared, VERSION, from_one};
 
 /// What is known about one record. Either `errors` or the fields from `formula` on are there.
 #[derive(Debug, Clone, PartialEq, Serialize)]
@@ -74,7 +74,7 @@ pub struct Unsaturation {
 pub struct Stereo {
     /// Centre or ends.
     pub atoms: Vec<u32>,
-    /// `tetrahedral`, `double-bond` or `axis`.
+    /// `tetrahedral`, `double-bond`, `axis`, `square-planar`, `trigonal-bipyramidal` or `octahedral`.
     pub element: &'static str,
     /// `given` or `absent`.
     pub mark: &'static str,
@@ -124,7 +124,13 @@ impl Describe {
         self.compound_key = Some(canonical.compound_key().to_string());
         self.open = Some(canonical.is_open());
         let elements = canonical.stereo_elements();
-        self.stereo = Some(elements.iter().map(Stereo::of).collect());
+        let metals = canonical.coordination_elements();
+        let metals = metals.iter().map(|element| Stereo {
+            atoms: from_one(&[element.centre]),
+            element: Geometry::Coordination(element.polyhedron).as_str(),
+            mark: "given",
+        });
+        self.stereo = Some(elements.iter().map(Stereo::of).chain(metals).collect());
     }
 }
 
@@ -138,7 +144,7 @@ impl Stereo {
         };
         Self {
             atoms: from_one(&atoms),
-            element: element_name(element.shape),
+            element: Geometry::Element(element.shape).as_str(),
             mark: match element.mark {
                 Mark::Given(_) => "given",
                 Mark::Absent => "absent",

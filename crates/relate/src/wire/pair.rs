@@ -10,7 +10,7 @@ use crate::{
     words,
 };
 
-use super::{Error, Input, Note, Prepared, VERSION, Which, element_name, from_one};
+use super::{Error, Input, Note, Prepared, VERSION, Which, from_one};
 
 /// The result for one pair. Either `errors` or the fields from `relation` on are there.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize)]
@@ -142,9 +142,9 @@ pub struct StereoEntry {
     pub a: Vec<u32>,
     /// Centre or ends in B.
     pub b: Vec<u32>,
-    /// `tetrahedral`, `double-bond` or `axis`.
+    /// `tetrahedral`, `double-bond`, `axis`, `square-planar`, `trigonal-bipyramidal` or `octahedral`.
     pub element: &'static str,
-    /// `inverted`, `marked-only-in-a` or `marked-only-in-b`.
+    /// `inverted`, `rearranged`, `marked-only-in-a` or `marked-only-in-b`.
     pub change: &'static str,
 }
 
@@ -291,7 +291,7 @@ impl Pair {
                     .map(|difference| StereoEntry {
                         a: from_one(&difference.a),
                         b: from_one(&difference.b),
-                        element: element_name(difference.shape),
+                        element: difference.geometry.as_str(),
                         change: difference.change.as_str(),
                     })
                     .collect(),
