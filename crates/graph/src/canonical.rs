@@ -136,7 +136,7 @@ impl Orderer {
             });
         }
         view.skeleton.load(molecule);
-        view.mesomer.load(&mut view.skeleton);
+        view.mesomer.load(&mut view.skeleton, &self.limits)?;
         let mut steps = 0;
         self.label(
             &view.skeleton,

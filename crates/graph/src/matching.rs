@@ -9,11 +9,16 @@ use std::{collections::VecDeque, ops::Range};
 pub(crate) const NONE: u32 = u32::MAX;
 
 /// A graph with a matching that grows by augmenting paths. All vectors are scratch that is reused.
+///
+/// A search touches and resets only what it reaches, so that many local questions on a large graph
+/// cost what they look at.
 #[derive(Debug, Default, Clone)]
 pub(crate) struct Matching {
     neighbours: Vec<Vec<u32>>,
     vertices: usize,
     mate: Vec<u32>,
+    /// Changes of mates since the last reset: vertex and mate before.
+    journal: Vec<(u32, u32)>,
     removed: Vec<bool>,
     group: Vec<u32>,
     blocked: Option<(u32, u32)>,
@@ -22,9 +27,14 @@ pub(crate) struct Matching {
     parent: Vec<u32>,
     base: Vec<u32>,
     outer: Vec<bool>,
-    in_blossom: Vec<bool>,
-    on_path: Vec<bool>,
+    touched: Vec<u32>,
+    /// Stamps of the last path and blossom that a vertex was on.
+    on_path: Vec<u32>,
+    in_blossom: Vec<u32>,
+    stamp: u32,
     queue: VecDeque<u32>,
+    /// Edges looked at since the caller last set it to zero.
+    pub(crate) work: u64,
 }
 
 impl Matching {
@@ -37,15 +47,22 @@ impl Matching {
         if self.neighbours.len() < vertices {
             self.neighbours.resize_with(vertices, Vec::new);
         }
-        self.mate.clear();
-        self.mate.resize(vertices, NONE);
-        self.removed.clear();
-        self.removed.resize(vertices, false);
-        self.group.clear();
-        self.group.extend(0..vertices as u32);
+        fill(&mut self.mate, vertices, NONE);
+        fill(&mut self.removed, vertices, false);
+        fill(&mut self.optional, vertices, false);
+        fill(&mut self.parent, vertices, NONE);
+        fill(&mut self.outer, vertices, false);
+        fill(&mut self.on_path, vertices, 0);
+        fill(&mut self.in_blossom, vertices, 0);
+        self.stamp = 0;
+        self.journal.clear();
+        self.touched.clear();
+        for identity in [&mut self.group, &mut self.base] {
+            identity.clear();
+            identity.extend(0..vertices as u32);
+        }
         self.blocked = None;
-        self.optional.clear();
-        self.optional.resize(vertices, false);
+        self.work += vertices as u64;
     }
 
     /// Says that a vertex need not be covered.
@@ -56,6 +73,11 @@ impl Matching {
     /// Puts a vertex into a group, for [`Matching::block`].
     pub(crate) fn set_group(&mut self, vertex: u32, group: u32) {
         self.group[vertex as usize] = group;
+    }
+
+    /// The group of a vertex.
+    pub(crate) fn group(&self, vertex: u32) -> u32 {
+        self.group[vertex as usize]
     }
 
     /// Hides all edges between two groups from searches, or shows them again.
@@ -72,6 +94,7 @@ impl Matching {
 
     /// Adds an edge. The caller adds each edge once.
     pub(crate) fn add_edge(&mut self, a: u32, b: u32) {
+        self.work += 1;
         self.neighbours[a as usize].push(b);
         self.neighbours[b as usize].push(a);
     }
@@ -96,20 +119,44 @@ impl Matching {
         self.mate[vertex as usize]
     }
 
-    /// Puts an edge into the matching; both ends must be exposed.
+    /// Puts an edge into the matching.
     pub(crate) fn join(&mut self, a: u32, b: u32) {
-        self.mate[a as usize] = b;
-        self.mate[b as usize] = a;
+        self.set_mate(a, b);
+        self.set_mate(b, a);
     }
 
     /// Takes the matching edge at a vertex out again and returns the other end.
     pub(crate) fn part(&mut self, a: u32) -> u32 {
         let b = self.mate[a as usize];
         if b != NONE {
-            self.mate[a as usize] = NONE;
-            self.mate[b as usize] = NONE;
+            self.set_mate(a, NONE);
+            self.set_mate(b, NONE);
         }
         b
+    }
+
+    fn set_mate(&mut self, vertex: u32, mate: u32) {
+        self.journal.push((vertex, self.mate[vertex as usize]));
+        self.mate[vertex as usize] = mate;
+    }
+
+    /// How many changes were made so far; [`Matching::undo_to`] goes back to it.
+    pub(crate) fn changes(&self) -> usize {
+        self.journal.len()
+    }
+
+    /// The vertices whose mate was changed since; some several times.
+    pub(crate) fn changed_since(&self, changes: usize) -> impl Iterator<Item = u32> + '_ {
+        self.journal[changes..].iter().map(|&(vertex, _)| vertex)
+    }
+
+    /// Undoes changes until only the first `changes` are left.
+    pub(crate) fn undo_to(&mut self, changes: usize) {
+        while self.journal.len() > changes
+            && let Some((vertex, mate)) = self.journal.pop()
+        {
+            self.mate[vertex as usize] = mate;
+        }
     }
 
     /// Hides a vertex from searches, or shows it again.
@@ -126,6 +173,7 @@ impl Matching {
     pub(crate) fn restore(&mut self, mate: &[u32]) {
         self.mate.clear();
         self.mate.extend_from_slice(mate);
+        self.journal.clear();
     }
 
     /// Matches greedily, then augments until no exposed vertex can be matched. Returns how many are
@@ -135,6 +183,7 @@ impl Matching {
             if self.is_settled(vertex) {
                 continue;
             }
+            self.work += self.neighbours[vertex as usize].len() as u64;
             let free = self.neighbours[vertex as usize]
                 .iter()
                 .copied()
@@ -173,20 +222,18 @@ impl Matching {
 
     /// Breadth-first search with blossom shrinking; returns the far end of an augmenting path.
     fn search(&mut self, root: u32) -> Option<u32> {
-        let count = self.vertices;
-        self.parent.clear();
-        self.parent.resize(count, NONE);
-        self.outer.clear();
-        self.outer.resize(count, false);
-        self.base.clear();
-        self.base.extend(0..count as u32);
+        for vertex in self.touched.drain(..) {
+            self.parent[vertex as usize] = NONE;
+            self.outer[vertex as usize] = false;
+            self.base[vertex as usize] = vertex;
+        }
         self.queue.clear();
-        self.outer[root as usize] = true;
-        self.queue.push_back(root);
+        self.reach(root);
         while let Some(vertex) = self.queue.pop_front() {
             if self.optional[vertex as usize] && vertex != root {
                 return Some(self.part(vertex));
             }
+            self.work += self.neighbours[vertex as usize].len() as u64;
             for at in 0..self.neighbours[vertex as usize].len() {
                 let to = self.neighbours[vertex as usize][at];
                 if self.removed[to as usize]
@@ -201,26 +248,33 @@ impl Matching {
                     self.shrink(vertex, to);
                 } else if self.parent[to as usize] == NONE {
                     self.parent[to as usize] = vertex;
+                    self.touched.push(to);
                     if to_mate == NONE {
                         return Some(to);
                     }
-                    self.outer[to_mate as usize] = true;
-                    self.queue.push_back(to_mate);
+                    self.reach(to_mate);
                 }
             }
         }
         None
     }
 
+    /// Puts an outer vertex into the queue.
+    fn reach(&mut self, vertex: u32) {
+        self.outer[vertex as usize] = true;
+        self.touched.push(vertex);
+        self.queue.push_back(vertex);
+    }
+
     /// Contracts the blossom closed by the edge between two outer vertices.
     fn shrink(&mut self, a: u32, b: u32) {
         let base = self.common_base(a, b);
-        self.in_blossom.clear();
-        self.in_blossom.resize(self.vertices, false);
+        self.stamp += 1;
         self.mark_path(a, base, b);
         self.mark_path(b, base, a);
-        for vertex in 0..self.vertices {
-            if self.in_blossom[self.base[vertex] as usize] {
+        for at in 0..self.touched.len() {
+            let vertex = self.touched[at] as usize;
+            if self.in_blossom[self.base[vertex] as usize] == self.stamp {
                 self.base[vertex] = base;
                 if !self.outer[vertex] {
                     self.outer[vertex] = true;
@@ -228,15 +282,15 @@ impl Matching {
                 }
             }
         }
+        self.work += self.touched.len() as u64;
     }
 
     /// The lowest common ancestor of two outer vertices in the shrunken tree.
     fn common_base(&mut self, mut a: u32, mut b: u32) -> u32 {
-        self.on_path.clear();
-        self.on_path.resize(self.vertices, false);
+        self.stamp += 1;
         loop {
             a = self.base[a as usize];
-            self.on_path[a as usize] = true;
+            self.on_path[a as usize] = self.stamp;
             if self.mate[a as usize] == NONE {
                 break;
             }
@@ -244,7 +298,7 @@ impl Matching {
         }
         loop {
             b = self.base[b as usize];
-            if self.on_path[b as usize] {
+            if self.on_path[b as usize] == self.stamp {
                 return b;
             }
             b = self.parent[self.mate[b as usize] as usize];
@@ -254,13 +308,18 @@ impl Matching {
     fn mark_path(&mut self, mut vertex: u32, base: u32, mut child: u32) {
         while self.base[vertex as usize] != base {
             let mate = self.mate[vertex as usize];
-            self.in_blossom[self.base[vertex as usize] as usize] = true;
-            self.in_blossom[self.base[mate as usize] as usize] = true;
+            self.in_blossom[self.base[vertex as usize] as usize] = self.stamp;
+            self.in_blossom[self.base[mate as usize] as usize] = self.stamp;
             self.parent[vertex as usize] = child;
             child = mate;
             vertex = self.parent[mate as usize];
         }
     }
+}
+
+fn fill<T: Clone>(list: &mut Vec<T>, length: usize, value: T) {
+    list.clear();
+    list.resize(length, value);
 }
 
 #[cfg(test)]

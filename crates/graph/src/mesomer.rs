@@ -17,7 +17,7 @@ mod valence;
 #[cfg(test)]
 mod tests;
 
-use crate::{matching::Matching, skeleton::Skeleton};
+use crate::{Limits, OrderError, matching::Matching, skeleton::Skeleton};
 
 pub(crate) use placement::System;
 use valence::Valence;
@@ -83,7 +83,14 @@ impl Mesomer {
 
     /// Works out the normal form. The skeleton's charges and bond orders are brought into the
     /// charge-separated form on the way.
-    pub(crate) fn load(&mut self, skeleton: &mut Skeleton) {
+    ///
+    /// # Errors
+    /// [`OrderError::StepLimit`] for conjugated systems beyond all bounds.
+    pub(crate) fn load(
+        &mut self,
+        skeleton: &mut Skeleton,
+        limits: &Limits,
+    ) -> Result<(), OrderError> {
         octet::separate(skeleton);
         self.orders.clear();
         self.orders
@@ -103,16 +110,14 @@ impl Mesomer {
         );
         self.systems.clear();
         systems::find_systems(skeleton, &self.valences, &mut self.systems);
+        self.matching.work = 0;
         for at in 0..self.systems.len() {
             let system = &mut self.systems[at];
-            if system.settle(skeleton, &self.valences, &mut self.matching) {
-                mobile::mark(
-                    system,
-                    &mut self.matching,
-                    &mut self.orders,
-                    &mut self.states,
-                );
+            if system.settle(skeleton, &self.valences, &mut self.matching, limits)? {
+                let (orders, states) = (&mut self.orders, &mut self.states);
+                mobile::mark(system, &mut self.matching, limits, orders, states)?;
             }
         }
+        Ok(())
     }
 }

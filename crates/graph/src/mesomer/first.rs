@@ -69,7 +69,7 @@ impl System {
         }
         let mate = choice.matching.saved();
         for group in groups {
-            let (charge, _) = self.charge_and_open(&mate, group);
+            let (charge, _) = self.charge_and_open(|v| mate[v as usize], group);
             set_charge(self.atoms[group as usize], charge as i8);
         }
     }
@@ -126,7 +126,7 @@ impl Choice<'_> {
 
     /// Brings an edge into the perfect matching if that is possible, else leaves all as it was.
     fn force(&mut self, (x, y): (u32, u32)) -> bool {
-        let before = self.matching.saved();
+        let before = self.matching.changes();
         let (u, v) = (self.matching.part(x), self.matching.part(y));
         self.matching.set_removed(x, true);
         self.matching.set_removed(y, true);
@@ -137,7 +137,7 @@ impl Choice<'_> {
         if done {
             self.matching.join(x, y);
         } else {
-            self.matching.restore(&before);
+            self.matching.undo_to(before);
         }
         done
     }

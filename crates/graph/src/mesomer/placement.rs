@@ -14,11 +14,12 @@
 //! from the largest down, negative carbons from none up.
 
 use crate::{
+    Limits, OrderError,
     matching::{Matching, NONE},
     skeleton::Skeleton,
 };
 
-use super::valence::Valence;
+use super::{mobile::within, valence::Valence};
 
 /// What can become of a vertex that no π bond covers.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -76,15 +77,20 @@ pub(crate) struct System {
 }
 
 impl System {
-    /// Finds a best placement. `false` where the model has none and the drawing stands.
+    /// Finds a best placement, which the matching holds afterwards. `false` where the model has none
+    /// and the drawing stands.
+    ///
+    /// # Errors
+    /// [`OrderError::StepLimit`] when the matching has looked at more edges than the limits allow.
     pub(super) fn settle(
         &mut self,
         skeleton: &Skeleton,
         valences: &[Valence],
         matching: &mut Matching,
-    ) -> bool {
+        limits: &Limits,
+    ) -> Result<bool, OrderError> {
         if !self.closed {
-            return self.search(valences, matching);
+            return self.search(valences, matching, limits);
         }
         self.build(matching);
         for at in 0..self.bonds.len() {
@@ -96,13 +102,25 @@ impl System {
                 }
             }
         }
-        self.mate = matching.saved();
-        true
+        self.keep(matching);
+        Ok(true)
     }
 
-    fn search(&mut self, valences: &[Valence], matching: &mut Matching) -> bool {
+    /// Takes the matching as the placement that was found.
+    fn keep(&mut self, matching: &mut Matching) {
+        self.mate = matching.saved();
+        matching.restore(&self.mate);
+    }
+
+    fn search(
+        &mut self,
+        valences: &[Valence],
+        matching: &mut Matching,
+        limits: &Limits,
+    ) -> Result<bool, OrderError> {
         let sum = |of: fn(&Room) -> u32| self.rooms.iter().map(of).sum::<u32>() as i32;
         let (base, onium) = (sum(|r| r.pi + r.spare), sum(|r| r.onium));
+        let on_hetero = sum(|r| if r.valence.hetero { r.pi + r.spare } else { 0 });
         let intrinsic: i32 = self
             .atoms
             .iter()
@@ -123,7 +141,7 @@ impl System {
                     if open < 0 || base - (2 * pi_bonds - used) != open + positive + negative {
                         continue;
                     }
-                    for on_carbon in 0..=negative {
+                    for on_carbon in (negative - on_hetero).max(0)..=negative {
                         let sizes = [
                             negative - on_carbon,
                             on_carbon,
@@ -132,16 +150,42 @@ impl System {
                             onium - used,
                         ];
                         self.pools = sizes.map(|size| size as u32);
-                        self.build(matching);
-                        if matching.maximise() == 0 {
-                            self.mate = matching.saved();
-                            return true;
+                        if self.is_placement(matching, limits)? {
+                            return Ok(true);
                         }
                     }
                 }
             }
         }
-        false
+        Ok(false)
+    }
+
+    /// Whether the present pool sizes have a perfect matching; if so it is kept.
+    fn is_placement(
+        &mut self,
+        matching: &mut Matching,
+        limits: &Limits,
+    ) -> Result<bool, OrderError> {
+        // The graph is not even built when it would be larger than the work allowed.
+        let vertices: u64 = self
+            .rooms
+            .iter()
+            .map(|r| u64::from(r.pi + r.spare + r.onium))
+            .sum();
+        let pools: u64 = self.pools.iter().map(|&size| u64::from(size)).sum();
+        matching.work = matching.work.saturating_add(vertices);
+        if vertices.saturating_mul(pools) > limits.order_steps / 8 {
+            return Err(OrderError::StepLimit {
+                limit: limits.order_steps,
+            });
+        }
+        within(matching, limits)?;
+        self.build(matching);
+        let found = matching.maximise() == 0;
+        if found {
+            self.keep(matching);
+        }
+        Ok(found)
     }
 
     /// The size of a largest matching by π bonds alone: an upper bound.
@@ -235,21 +279,31 @@ impl System {
     }
 
     /// How many edges of a matching run between two groups.
-    pub(crate) fn multiplicity(&self, mate: &[u32], a: u32, b: u32) -> u32 {
+    pub(crate) fn multiplicity(&self, mate: impl Fn(u32) -> u32, a: u32, b: u32) -> u32 {
         let range = self.vertices(b);
         self.vertices(a)
-            .filter(|&v| range.contains(&mate[v as usize]))
+            .filter(|&v| range.contains(&mate(v)))
             .count() as u32
     }
 
+    /// How many edges of the placement that was found run between two groups.
+    pub(crate) fn placed(&self, a: u32, b: u32) -> u32 {
+        self.multiplicity(|v| self.mate[v as usize], a, b)
+    }
+
     /// Charge and open valences of an atom in a placement.
-    pub(crate) fn charge_and_open(&self, mate: &[u32], group: u32) -> (i32, u32) {
+    pub(crate) fn charge_and_open(&self, mate: impl Fn(u32) -> u32, group: u32) -> (i32, u32) {
         let room = &self.rooms[group as usize];
-        let count = |pool| self.multiplicity(mate, group, self.pool_group(pool)) as i32;
+        let count = |pool| self.multiplicity(&mate, group, self.pool_group(pool)) as i32;
         let onium = room.onium as i32 - count(Pool::Idle);
         let negative = count(Pool::NegativeHetero) + count(Pool::NegativeCarbon);
         let charge = i32::from(room.valence.intrinsic) + onium + count(Pool::Positive) - negative;
         (charge, count(Pool::Open) as u32)
+    }
+
+    /// Charge and open valences of an atom in the placement that was found.
+    pub(crate) fn placed_charge_and_open(&self, group: u32) -> (i32, u32) {
+        self.charge_and_open(|v| self.mate[v as usize], group)
     }
 
     /// Open valences of the whole system.
