@@ -32,6 +32,7 @@ pub(crate) fn assign(
     matching: &mut Matching,
 ) -> Result<Vec<bool>, BuildError> {
     let excluded = |atom: u32| demand[atom as usize] == PiDemand::Excluded;
+    matching.budget = u64::MAX;
     matching.reset(demand.len());
     for (atom, demand) in (0..).zip(demand) {
         match demand {

@@ -35,9 +35,24 @@ pub(crate) struct Matching {
     queue: VecDeque<u32>,
     /// Edges looked at since the caller last set it to zero.
     pub(crate) work: u64,
+    /// Searches give up once `work` has passed this; the caller then has to discard what they say.
+    pub(crate) budget: u64,
 }
 
 impl Matching {
+    /// Scratch whose searches never give up.
+    pub(crate) fn unbounded() -> Self {
+        Self {
+            budget: u64::MAX,
+            ..Self::default()
+        }
+    }
+
+    /// Whether work went beyond the budget, so that answers since then mean nothing.
+    pub(crate) fn is_exhausted(&self) -> bool {
+        self.work > self.budget
+    }
+
     /// Empties the graph and gives it `vertices` isolated vertices.
     pub(crate) fn reset(&mut self, vertices: usize) {
         for list in self.neighbours.iter_mut().take(self.vertices) {
@@ -234,6 +249,9 @@ impl Matching {
                 return Some(self.part(vertex));
             }
             self.work += self.neighbours[vertex as usize].len() as u64;
+            if self.work > self.budget {
+                return None;
+            }
             for at in 0..self.neighbours[vertex as usize].len() {
                 let to = self.neighbours[vertex as usize][at];
                 if self.removed[to as usize]
@@ -327,7 +345,7 @@ mod tests {
     use super::*;
 
     fn exposed(vertices: usize, edges: &[(u32, u32)]) -> usize {
-        let mut matching = Matching::default();
+        let mut matching = Matching::unbounded();
         matching.reset(vertices);
         for &(a, b) in edges {
             matching.add_edge(a, b);

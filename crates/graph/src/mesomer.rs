@@ -110,7 +110,9 @@ impl Mesomer {
         );
         self.systems.clear();
         systems::find_systems(skeleton, &self.valences, &mut self.systems);
+        // An edge of a matching costs some four times as much as one of a refinement.
         self.matching.work = 0;
+        self.matching.budget = limits.order_steps / 4;
         for at in 0..self.systems.len() {
             let system = &mut self.systems[at];
             if system.settle(skeleton, &self.valences, &mut self.matching, limits)? {

@@ -43,7 +43,7 @@ pub(super) fn place(
             *charge = state.charge;
         }
     }
-    let mut matching = Matching::default();
+    let mut matching = Matching::unbounded();
     for system in &mesomer.systems {
         let touches_mobile = system
             .bonds

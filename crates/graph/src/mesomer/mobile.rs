@@ -34,7 +34,12 @@ pub(super) fn mark(
     let mut mobile = vec![false; system.bonds.len()];
     for at in 0..system.bonds.len() {
         let bond = system.bonds[at];
-        if mobile[at] || !moves(system, matching, bond.a, bond.b) {
+        if mobile[at] {
+            continue;
+        }
+        let moved = moves(system, matching, bond.a, bond.b);
+        within(matching, limits)?;
+        if !moved {
             continue;
         }
         // Every bond that the other placement covers differently is mobile, too; it can only be at
@@ -50,7 +55,6 @@ pub(super) fn mark(
             }
         }
         matching.undo_to(0);
-        within(matching, limits)?;
     }
     for (bond, mobile) in system.bonds.iter().zip(mobile) {
         let pi = system.placed(bond.a, bond.b) as u8;
@@ -62,9 +66,9 @@ pub(super) fn mark(
     mark_atoms(system, matching, limits, states)
 }
 
-/// Whether the matching has kept within the limit on steps.
+/// Fails once the matching has gone beyond its budget.
 pub(super) fn within(matching: &Matching, limits: &Limits) -> Result<(), OrderError> {
-    if matching.work > limits.order_steps {
+    if matching.is_exhausted() {
         return Err(OrderError::StepLimit {
             limit: limits.order_steps,
         });
@@ -81,7 +85,12 @@ fn mark_atoms(
     let mut mobile = vec![false; system.atoms.len()];
     for group in 0..system.atoms.len() as u32 {
         for pool in Pool::ALL {
-            if mobile[group as usize] || !moves(system, matching, group, system.pool_group(pool)) {
+            if mobile[group as usize] {
+                break;
+            }
+            let moved = moves(system, matching, group, system.pool_group(pool));
+            within(matching, limits)?;
+            if !moved {
                 continue;
             }
             let changed: Vec<u32> = matching
@@ -95,7 +104,6 @@ fn mark_atoms(
             }
             matching.undo_to(0);
         }
-        within(matching, limits)?;
     }
     for (group, &atom) in system.atoms.iter().enumerate() {
         let (charge, open) = system.placed_charge_and_open(group as u32);

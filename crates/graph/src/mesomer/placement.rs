@@ -131,6 +131,7 @@ impl System {
             .most_pi_bonds(true, matching)
             .min((charge + base).div_euclid(2));
         let without_onium = self.most_pi_bonds(false, matching);
+        within(matching, limits)?;
         for pi_bonds in (0..=most).rev() {
             for positive_total in charge.max(0)..=onium + base {
                 let least = (pi_bonds - without_onium).max(0);
@@ -182,6 +183,7 @@ impl System {
         within(matching, limits)?;
         self.build(matching);
         let found = matching.maximise() == 0;
+        within(matching, limits)?;
         if found {
             self.keep(matching);
         }
