@@ -23,11 +23,13 @@ mod stereo;
 mod tally;
 mod text;
 
+pub mod fuzz;
+
 pub use crate::{
     alkanes::{Tree, alkanes},
     comparer::Comparer,
     distance::{least_distance, stated_distance},
-    molfile::renumbered_molfile,
+    molfile::{molfiles, renumbered_molfile},
     numbers::Numbers,
     pairs::{Expected, Pair, definition_pairs, fixture_pairs},
     renumber::{renumbered, renumbered_form, with_hydrogens_written},
@@ -37,3 +39,8 @@ pub use crate::{
     tally::Tally,
     text::{Table, first_word, read_text, shared, workspace},
 };
+
+/// The programs of the README, compiled and run.
+#[cfg(doctest)]
+#[doc = include_str!("../../README.md")]
+struct Readme;

@@ -175,10 +175,23 @@ impl MoleculeBuilder {
     /// # Complexity
     /// Linear in atoms and bonds, save for aromatic systems (maximum matching).
     pub fn build(&mut self) -> Result<Molecule, BuildError> {
+        let mut molecule = Molecule::default();
+        self.build_into(&mut molecule)?;
+        Ok(molecule)
+    }
+
+    /// As [`MoleculeBuilder::build`], into a molecule whose storage is used for the next one.
+    ///
+    /// # Errors
+    /// As [`MoleculeBuilder::build`]; the molecule is empty then.
+    pub fn build_into(&mut self, molecule: &mut Molecule) -> Result<(), BuildError> {
         let outcome = self.finish();
-        let molecule = std::mem::take(&mut self.molecule);
+        if outcome.is_err() {
+            self.clear();
+        }
+        std::mem::swap(&mut self.molecule, molecule);
         self.clear();
-        outcome.map(|()| molecule)
+        outcome
     }
 
     fn finish(&mut self) -> Result<(), BuildError> {
@@ -203,19 +216,18 @@ impl MoleculeBuilder {
             .map(|edge| (edge.source().index() as u32, edge.target().index() as u32));
         self.adjacency.load(graph.node_count(), ends);
         let ring = self.adjacency.ring_bonds(graph.edge_count(), |_| true);
-        let in_ring = |atom: u32| {
-            self.adjacency
-                .of(atom)
-                .iter()
-                .any(|&(_, bond)| ring[bond as usize])
-        };
-        if let Some(atom) = self
-            .delocalised
-            .iter()
-            .flat_map(|&(_, a, b)| [a, b])
-            .find(|&atom| !in_ring(atom))
-        {
-            return Err(BuildError::AromaticOutsideRing { atom });
+        for &(bond, a, b) in &self.delocalised {
+            // Both atoms of a ring bond are in a ring; only bonds between rings need a look.
+            if ring[bond as usize] {
+                continue;
+            }
+            let in_ring = |&atom: &u32| {
+                let mut arcs = self.adjacency.of(atom).iter();
+                arcs.any(|&(_, bond)| ring[bond as usize])
+            };
+            if let Some(atom) = [a, b].into_iter().find(|atom| !in_ring(atom)) {
+                return Err(BuildError::AromaticOutsideRing { atom });
+            }
         }
         let double = kekule::assign(&self.demand, &ring, &self.delocalised, &mut self.matching)?;
         for (&(bond, _, _), double) in self.delocalised.iter().zip(double) {

@@ -15,6 +15,7 @@ use thiserror::Error;
 use crate::{
     Key, Limits, Molecule,
     claims::{self, Claims, Solver, Variable},
+    key,
     mesomer::Mesomer,
     order::{Coloured, Labeller, Labelling},
     skeleton::Skeleton,
@@ -194,9 +195,19 @@ impl Orderer {
             &mut view.claims,
             &mut view.written,
         )?;
-        let constitution = &view.constitution.certificate[..];
+        let constitution = key::digest(&view.constitution.certificate);
         view.constitution_key = Key::of(0, std::iter::once(constitution));
-        view.compound_key = Key::of(1, view.claims.certificates.iter().map(Vec::as_slice));
+        let certificates = view.claims.certificates.iter();
+        // Most records have neither isotopes nor stereo: one certificate serves both keys.
+        let digests = certificates.map(|certificate| {
+            let known = *certificate == view.constitution.certificate;
+            if known {
+                constitution
+            } else {
+                key::digest(certificate)
+            }
+        });
+        view.compound_key = Key::of(1, digests);
         Ok(())
     }
 

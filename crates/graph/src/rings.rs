@@ -60,7 +60,7 @@ impl Adjacency {
         let mut in_ring = vec![false; bonds];
         let mut depth = vec![UNSEEN; self.len()];
         let mut low = vec![UNSEEN; self.len()];
-        let mut stack: Vec<(u32, u32, usize)> = Vec::new();
+        let mut stack: Vec<(u32, u32, usize)> = Vec::with_capacity(self.len());
         for root in 0..self.len() as u32 {
             if depth[root as usize] != UNSEEN {
                 continue;
