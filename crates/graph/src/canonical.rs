@@ -17,7 +17,7 @@ use crate::{
     claims::{self, Claims, Solver, Variable},
     key,
     mesomer::Mesomer,
-    order::{Coloured, Labeller, Labelling},
+    order::{Coloured, Labeller, Labelling, Unit},
     skeleton::Skeleton,
     stereo::Perception,
 };
@@ -51,6 +51,12 @@ pub enum OrderError {
         /// The limit.
         limit: usize,
     },
+    /// Of equivalent centres some are given an arrangement and some are not, in a record with
+    /// arrangements about metals; such records are not compared yet.
+    #[error(
+        "of equivalent centres beside an arrangement about a metal only some are marked; such records are not compared yet"
+    )]
+    PartlyMarkedCentres,
     /// The record has stereo groups (AND, OR), which are not compared yet.
     #[error("the record has stereo groups (AND, OR), which are not compared yet")]
     StereoGroups,
@@ -175,7 +181,12 @@ impl Orderer {
         let placed = if view.perception.placed.is_empty() {
             None
         } else {
-            self.keep_effective(&mut view.perception, &mut steps)?;
+            self.keep_effective(
+                &mut view.perception,
+                &view.variables,
+                &view.bare,
+                &mut steps,
+            )?;
             self.graph.placed.clone_from(&view.perception.placed);
             let mut labelling = Labelling::default();
             self.labeller
@@ -216,15 +227,26 @@ impl Orderer {
     fn keep_effective(
         &mut self,
         perception: &mut Perception,
+        variables: &[Variable],
+        bare: &Labelling,
         steps: &mut u64,
     ) -> Result<(), OrderError> {
+        let never = claims::never_stereogenic(&bare.generators, perception, variables);
+        let counting: Vec<Unit> = variables
+            .iter()
+            .zip(never)
+            .filter(|(_, never)| !never)
+            .filter_map(|(variable, _)| Some((&variable.members, variable.odd?)))
+            .flat_map(|(members, odd)| {
+                members
+                    .iter()
+                    .map(move |&(index, opposite)| (index, odd ^ opposite))
+            })
+            .map(|(index, odd)| perception.candidates[index].unit(odd))
+            .collect();
         let mut at = 0;
         while at < perception.placed.len() {
-            let candidates = perception.candidates.iter();
-            self.graph.units.clear();
-            self.graph
-                .units
-                .extend(candidates.filter_map(|c| Some(c.unit(c.parity?.is_odd()))));
+            self.graph.units.clone_from(&counting);
             self.graph.placed.clone_from(&perception.placed);
             let own = &perception.placed[at];
             let mut seen: Option<Labelling> = None;

@@ -10,6 +10,8 @@
 //!   in the set. For almost every record it has one member; only unmarked elements that an
 //!   automorphism takes to marked ones make it longer, up to a limit.
 
+use crate::{order::Permutation, stereo::Perception};
+
 mod action;
 mod orbits;
 mod solve;
@@ -19,3 +21,12 @@ mod variables;
 pub(crate) use solve::{Claims, Solver};
 pub(crate) use status::Status;
 pub(crate) use variables::{Variable, variables};
+
+/// Per variable: whether some automorphism inverts it and leaves all others as they are.
+pub(crate) fn never_stereogenic(
+    generators: &[Permutation],
+    perception: &Perception,
+    variables: &[Variable],
+) -> Vec<bool> {
+    action::Action::of(generators, perception, variables).never_stereogenic(variables.len())
+}

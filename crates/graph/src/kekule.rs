@@ -31,23 +31,30 @@ pub(crate) fn assign(
     delocalised: &[Delocalised],
     matching: &mut Matching,
 ) -> Result<Vec<bool>, BuildError> {
-    let excluded = |atom: u32| demand[atom as usize] == PiDemand::Excluded;
-    matching.budget = u64::MAX;
-    matching.reset(demand.len());
-    for (atom, demand) in (0..).zip(demand) {
-        match demand {
-            PiDemand::Needed => {}
-            PiDemand::Excluded => matching.set_removed(atom, true),
-            PiDemand::Optional => matching.set_optional(atom),
+    // Excluded atoms take no part: the others are numbered among themselves.
+    let mut number = vec![NONE; demand.len()];
+    let mut members = Vec::new();
+    for (atom, slot) in (0..).zip(&mut number) {
+        if demand[atom as usize] != PiDemand::Excluded {
+            *slot = members.len() as u32;
+            members.push(atom);
         }
     }
+    matching.budget = u64::MAX;
+    matching.reset(members.len());
+    for (vertex, &atom) in (0..).zip(&members) {
+        if demand[atom as usize] == PiDemand::Optional {
+            matching.set_optional(vertex);
+        }
+    }
+    let ends = |a: u32, b: u32| [number[a as usize], number[b as usize]];
     let mut exposed = usize::MAX;
     for in_rings in [true, false] {
-        let usable = delocalised.iter().filter(|&&(bond, a, b)| {
-            ring[bond as usize] == in_rings && !excluded(a) && !excluded(b)
-        });
-        for &(_, a, b) in usable {
-            matching.add_edge(a, b);
+        for &(bond, a, b) in delocalised {
+            let [a, b] = ends(a, b);
+            if ring[bond as usize] == in_rings && a != NONE && b != NONE {
+                matching.add_edge(a, b);
+            }
         }
         exposed = matching.maximise();
         if exposed == 0 {
@@ -55,15 +62,21 @@ pub(crate) fn assign(
         }
     }
     if exposed > 0 {
-        let atoms = (0..demand.len() as u32)
-            .filter(|&atom| {
-                demand[atom as usize] == PiDemand::Needed && matching.mate(atom) == NONE
-            })
+        let left_over = |vertex: u32, atom: u32| {
+            demand[atom as usize] == PiDemand::Needed && matching.mate(vertex) == NONE
+        };
+        let atoms = (0..)
+            .zip(&members)
+            .filter(|&(vertex, &atom)| left_over(vertex, atom))
+            .map(|(_, &atom)| atom)
             .collect();
         return Err(BuildError::NoKekuleStructure { atoms });
     }
     Ok(delocalised
         .iter()
-        .map(|&(_, a, b)| matching.mate(a) == b)
+        .map(|&(_, a, b)| {
+            let [a, b] = ends(a, b);
+            a != NONE && b != NONE && matching.mate(a) == b
+        })
         .collect())
 }

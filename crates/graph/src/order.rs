@@ -12,6 +12,7 @@ mod search;
 
 pub(crate) use coloured::{Coloured, Placed, Unit};
 pub(crate) use permutation::Permutation;
+use refine::Inside;
 use search::Search;
 
 use crate::{Limits, OrderError};
@@ -65,8 +66,10 @@ impl Labeller {
         self.components(graph);
         self.found.clear();
         self.search.steps = *steps;
-        for at in 0..self.members.len() {
-            self.search.run(graph, &self.members[at], limits)?;
+        self.search.prepare(graph);
+        let inside = self.inside(graph);
+        for (members, inside) in self.members.iter().zip(&inside) {
+            self.search.run(graph, members, inside, limits)?;
             labelling
                 .generators
                 .extend_from_slice(self.search.generators());
@@ -79,6 +82,19 @@ impl Labeller {
         self.found.sort_by(|a, b| a.certificate.cmp(&b.certificate));
         self.collect(graph, labelling);
         Ok(())
+    }
+
+    /// The units and placed centres of each component.
+    fn inside(&self, graph: &Coloured) -> Vec<Inside> {
+        let mut inside = vec![Inside::default(); self.members.len()];
+        let component = |vertex: u32| self.component_of[vertex as usize] as usize;
+        for (index, unit) in (0..).zip(&graph.units) {
+            inside[component(unit.centres[0])].units.push(index);
+        }
+        for (index, placed) in (0..).zip(&graph.placed) {
+            inside[component(placed.centre)].placed.push(index);
+        }
+        inside
     }
 
     fn components(&mut self, graph: &Coloured) {

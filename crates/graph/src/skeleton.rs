@@ -105,12 +105,12 @@ impl Skeleton {
             let Some(host) = molecule.atom(other) else {
                 continue;
             };
-            if order.pairs() != 1 || molecule.neighbours(other).count() > 12 {
+            if order.pairs() != 1 || molecule.neighbours(other).nth(12).is_some() {
                 continue;
             }
             let foldable = host.element != Element::HYDROGEN
                 || host.charge != 0
-                || molecule.neighbours(other).count() > 1
+                || molecule.neighbours(other).nth(1).is_some()
                 || (self.folded[other as usize].is_none()
                     && (host.isotope, other) > (atom.isotope, index))
                 || (host.isotope > Some(3));

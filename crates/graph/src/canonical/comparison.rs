@@ -40,9 +40,19 @@ pub fn arrangement(
     // Elements that either side leaves free agree with anything: the free set of each side is a
     // union of orbits, so only the elements that both fix have to be compared.
     let (in_a, in_b) = (a.fixed_places(b), b.fixed_places(a));
+    for (side, fixed) in [(a, &in_a), (b, &in_b)] {
+        if !side.perception.placed.is_empty() && !side.is_closed(fixed) {
+            return Err(OrderError::PartlyMarkedCentres);
+        }
+    }
+    if a.places_what_is_tetrahedral(b) || b.places_what_is_tetrahedral(a) {
+        return Ok(Arrangement::Unlike);
+    }
     let common: BTreeSet<Place> = in_a.intersection(&in_b).copied().collect();
     let (metals_a, metals_b) = (a.placed_places(), b.placed_places());
     let metals: BTreeSet<u32> = metals_a.intersection(&metals_b).copied().collect();
+    // What only one side fixes leaves open whether mirror images of the rest are mirror images.
+    let both_fix_all = in_a == in_b && metals_a == metals_b;
     let common = Common {
         elements: common,
         metals,
@@ -55,7 +65,7 @@ pub fn arrangement(
     let mirrored = orderer.certificates(b, &b.assignments(a), &common, true)?;
     Ok(if ours.is_disjoint(&mirrored) {
         Arrangement::Unlike
-    } else if a.claims.open || b.claims.open {
+    } else if a.claims.open || b.claims.open || !both_fix_all {
         Arrangement::PossiblyMirrorImages
     } else {
         Arrangement::MirrorImages
@@ -77,6 +87,27 @@ impl Canonical {
     fn place(&self, candidate: &Candidate) -> Place {
         let [a, b] = candidate.centres.map(|atom| self.bare.rank[atom as usize]);
         (candidate.shape, a.min(b), a.max(b))
+    }
+
+    /// Whether automorphisms of the constitution take what is fixed to what is fixed: only then do
+    /// canonical places mean the same in both records.
+    fn is_closed(&self, fixed: &BTreeSet<Place>) -> bool {
+        let rank = |atom: u32| self.bare.rank[atom as usize];
+        let metals = self.placed_places();
+        self.bare.generators.iter().all(|generator| {
+            let moved = |at: u32| rank(generator.image(self.bare.order[at as usize]));
+            fixed.iter().all(|&(shape, a, b)| {
+                let (a, b) = (moved(a), moved(b));
+                fixed.contains(&(shape, a.min(b), a.max(b)))
+            }) && metals.iter().all(|&metal| metals.contains(&moved(metal)))
+        })
+    }
+
+    /// Whether this record puts ligands on a polyhedron where the other marks a tetrahedron.
+    fn places_what_is_tetrahedral(&self, other: &Self) -> bool {
+        let tetrahedra = other.fixed_places(self);
+        let mut metals = self.placed_places().into_iter();
+        metals.any(|metal| tetrahedra.contains(&(Shape::Tetrahedral, metal, metal)))
     }
 
     fn placed_places(&self) -> BTreeSet<u32> {

@@ -84,19 +84,17 @@ impl Canonical {
             .is_some_and(Option::is_some)
     }
 
-    /// Generators of the automorphism group of the constitution with isotopes, stereo left aside:
-    /// images of positions in [`Canonical::normal_form`].
-    pub fn automorphisms(&self) -> Vec<Vec<u32>> {
+    /// Generators of the automorphism group of the constitution with isotopes, stereo left aside. Each
+    /// lists the positions in [`Canonical::normal_form`] that it moves, ascending, with their images.
+    pub fn automorphisms(&self) -> Vec<Vec<(u32, u32)>> {
         let rank = |atom: u32| self.written.rank[atom as usize];
-        let image = |generator: &Permutation| {
-            let images = self
-                .written
-                .order
-                .iter()
-                .map(|&atom| rank(generator.image(atom)));
-            images.collect()
+        let images = |generator: &Permutation| {
+            let moved = generator.moved().iter();
+            let mut images: Vec<_> = moved.map(|&(from, to)| (rank(from), rank(to))).collect();
+            images.sort_unstable();
+            images
         };
-        self.bare.generators.iter().map(image).collect()
+        self.bare.generators.iter().map(images).collect()
     }
 
     /// Positions in [`Canonical::normal_form`] in the canonical order of the constitution with

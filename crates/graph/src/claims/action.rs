@@ -39,27 +39,21 @@ impl Action {
         perception: &Perception,
         variables: &[Variable],
     ) -> Self {
-        let candidates = &perception.candidates;
-        let member = membership(candidates.len(), variables);
+        let member = membership(perception.candidates.len(), variables);
+        let near = Near::of(perception, &member);
         let moves = generators.iter().map(|generator| {
-            let image = |vertex: u32| generator.image(vertex);
-            let mut moves = Vec::new();
-            for (from, variable) in variables.iter().enumerate() {
-                let Some(&(index, opposite)) = variable.members.first() else {
-                    continue;
-                };
-                let candidate = &candidates[index];
-                let Some(target) = perception.candidate_at(candidate.centres.map(image)) else {
-                    continue;
-                };
-                let inverts = inverts(candidate, &candidates[target], image);
-                let (to, target_opposite) = member[target];
-                let inverts = inverts ^ opposite ^ target_opposite;
-                if to != from || inverts {
-                    moves.push(Move { from, to, inverts });
-                }
-            }
-            moves
+            // Only variables with an atom that moves can be moved or inverted.
+            let mut touched: Vec<usize> = generator
+                .moved()
+                .iter()
+                .flat_map(|&(atom, _)| near.at(atom))
+                .collect();
+            touched.sort_unstable();
+            touched.dedup();
+            touched
+                .into_iter()
+                .filter_map(|from| moved(generator, perception, variables, &member, from))
+                .collect()
         });
         Self {
             moves: moves.collect(),
@@ -86,6 +80,51 @@ impl Action {
             }
         }
     }
+}
+
+/// Variables by the atoms that are centres or ligands of their first candidates.
+struct Near {
+    entries: Vec<(u32, usize)>,
+}
+
+impl Near {
+    fn of(perception: &Perception, member: &[(usize, bool)]) -> Self {
+        let mut entries = Vec::new();
+        for (candidate, &(variable, _)) in perception.candidates.iter().zip(member) {
+            let atoms = candidate.centres.iter().chain(&candidate.ligands);
+            let atoms = atoms.filter(|&&atom| atom < slot::HYDROGEN);
+            entries.extend(atoms.map(|&atom| (atom, variable)));
+        }
+        entries.sort_unstable();
+        entries.dedup();
+        Self { entries }
+    }
+
+    fn at(&self, atom: u32) -> impl Iterator<Item = usize> + '_ {
+        let from = self.entries.partition_point(|&(other, _)| other < atom);
+        let own = self.entries[from..]
+            .iter()
+            .take_while(move |&&(other, _)| other == atom);
+        own.map(|&(_, variable)| variable)
+    }
+}
+
+/// What an automorphism does to a variable, if anything.
+fn moved(
+    generator: &Permutation,
+    perception: &Perception,
+    variables: &[Variable],
+    member: &[(usize, bool)],
+    from: usize,
+) -> Option<Move> {
+    let image = |vertex: u32| generator.image(vertex);
+    let &(index, opposite) = variables[from].members.first()?;
+    let candidate = &perception.candidates[index];
+    let target = perception.candidate_at(candidate.centres.map(image))?;
+    let inverts = inverts(candidate, &perception.candidates[target], image);
+    let (to, target_opposite) = member[target];
+    let inverts = inverts ^ opposite ^ target_opposite;
+    (to != from || inverts).then_some(Move { from, to, inverts })
 }
 
 /// Whether the images of a candidate's ligands are an odd permutation of the target's.

@@ -23,6 +23,9 @@ pub(crate) struct Claims {
     pub(crate) statuses: Vec<Status>,
 }
 
+/// Unmarked elements that are listed at the most, whatever the limits say: 2 to this power.
+const MOST_OPEN: u32 = 24;
+
 /// Labels one molecule under changing marks.
 pub(crate) struct Solver<'a> {
     pub(crate) graph: &'a mut Coloured,
@@ -85,7 +88,8 @@ impl Solver<'_> {
         }
         *written = self.written(bare, &found, &free)?;
         claims.statuses = self.statuses(&orbits, &free, &never)?;
-        claims.open = found.len() > 1 || self.is_open(&found, &orbits, &free, &never)?;
+        claims.open = self.differs_beside_quiet(&found, &free)?
+            || self.is_open(&found, &orbits, &free, &never)?;
         (claims.assignments, claims.certificates) = found
             .into_iter()
             .map(|m| (m.assignment, m.labelling.certificate))
@@ -117,7 +121,7 @@ impl Solver<'_> {
         let listed: Vec<usize> = (0..free.len())
             .filter(|&v| !free[v] && self.variables[v].odd.is_none())
             .collect();
-        if listed.len() > self.limits.open_elements as usize {
+        if listed.len() > self.limits.open_elements.min(MOST_OPEN) as usize {
             return Err(OrderError::TooManyOpenElements {
                 limit: self.limits.open_elements,
             });

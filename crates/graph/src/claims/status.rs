@@ -1,5 +1,7 @@
 //! What the normal form of a set says about each element, and about the set as a whole.
 
+use std::collections::BTreeSet;
+
 use crate::OrderError;
 
 use super::{
@@ -52,6 +54,25 @@ impl Solver<'_> {
             }
         }
         Ok(false)
+    }
+
+    /// Whether the listed assignments differ in more than elements whose absence leaves nothing open.
+    pub(super) fn differs_beside_quiet(
+        &mut self,
+        found: &[Member],
+        free: &[bool],
+    ) -> Result<bool, OrderError> {
+        let variables = self.variables;
+        let quiet = |v: usize| variables[v].quiet && variables[v].odd.is_none();
+        if found.len() < 2 || !(0..free.len()).any(|v| !free[v] && quiet(v)) {
+            return Ok(found.len() > 1);
+        }
+        let mut certificates = BTreeSet::new();
+        for member in found {
+            let value = |v: usize| (!free[v] && !quiet(v)).then(|| member.assignment[v]);
+            certificates.insert(self.label(value)?.certificate);
+        }
+        Ok(certificates.len() > 1)
     }
 
     /// What each variable is in this record. An unmarked one counts as stereogenic unless an

@@ -9,14 +9,22 @@ use crate::skeleton::Skeleton;
 use super::valence;
 
 /// Rewrites charges and bond orders of the skeleton in place.
+///
+/// A π bond between two over-full atoms stays as drawn: giving the charge to either would let the
+/// numbering decide.
 pub(super) fn separate(skeleton: &mut Skeleton) {
+    let over_full: Vec<bool> = (0..skeleton.len() as u32)
+        .map(|atom| {
+            let element = skeleton.atoms[atom as usize].element;
+            valence::is_group_15_to_17(element) && excess(skeleton, atom) > 0
+        })
+        .collect();
     for atom in 0..skeleton.len() as u32 {
-        let element = skeleton.atoms[atom as usize].element;
-        if !valence::is_group_15_to_17(element) {
+        if !over_full[atom as usize] {
             continue;
         }
         while excess(skeleton, atom) > 0 {
-            let Some(bond) = pi_bond(skeleton, atom) else {
+            let Some(bond) = pi_bond(skeleton, atom, &over_full) else {
                 break;
             };
             let other = {
@@ -44,14 +52,17 @@ fn excess(skeleton: &Skeleton, atom: u32) -> i32 {
     drawn - valence::neutral(record.element) - i32::from(record.charge)
 }
 
-/// A π bond to give up, the one to the most electronegative neighbour. Where the choice is between
-/// equals they end in one conjugated system and the choice does not matter.
-fn pi_bond(skeleton: &Skeleton, atom: u32) -> Option<u32> {
+/// A π bond to give up: one to a neighbour of oxygen's group if there is one. Among equals the choice
+/// does not matter: where not all are given up, the centre and its neighbours are one conjugated
+/// system.
+fn pi_bond(skeleton: &Skeleton, atom: u32, over_full: &[bool]) -> Option<u32> {
     skeleton
         .arcs(atom)
         .iter()
         .filter(|&&(to, bond)| {
-            skeleton.pairs(bond) > 1 && !skeleton.atoms[to as usize].element.is_metal()
+            !over_full[to as usize]
+                && skeleton.pairs(bond) > 1
+                && !skeleton.atoms[to as usize].element.is_metal()
         })
         .max_by_key(|&&(to, _)| valence::neutral(skeleton.atoms[to as usize].element) == 2)
         .map(|&(_, bond)| bond)

@@ -19,8 +19,8 @@ pub(crate) struct Valence {
     pub(crate) can_be_negative: bool,
     /// Whether it can carry a positive charge in place of an open valence.
     pub(crate) can_be_positive: bool,
-    /// A boron atom drawn with a negative charge in place of an empty orbital: part of a conjugated
-    /// system that may place the charge elsewhere.
+    /// A boron atom with an empty orbital, or drawn with a negative charge in its place: it joins what
+    /// it is bonded to into one conjugated system, however the charge is drawn.
     pub(crate) acceptor: bool,
     /// Group 15 to 17.
     pub(crate) hetero: bool,
@@ -133,7 +133,7 @@ fn room(skeleton: &Skeleton, covered: &[Option<u8>], atom: u32, open: u8) -> Opt
         open,
         can_be_negative: record.element != Element::BORON,
         can_be_positive: !hetero,
-        acceptor: record.element == Element::BORON && record.charge < 0,
+        acceptor: record.element == Element::BORON,
         hetero,
     })
 }

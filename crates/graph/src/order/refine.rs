@@ -7,7 +7,7 @@ use super::{
 
 /// The units and placed centres of the component that is being ordered, by index.
 #[derive(Debug, Default, Clone)]
-pub(super) struct Inside {
+pub(crate) struct Inside {
     pub(super) units: Vec<u32>,
     pub(super) placed: Vec<u32>,
 }

@@ -79,7 +79,8 @@ fn unite(parent: &mut [u32], a: u32, b: u32) {
 }
 
 impl Search {
-    /// Orders the vertices of one component.
+    /// Orders the vertices of one component, whose units and placed centres `inside` lists, after
+    /// [`Search::prepare`].
     ///
     /// Afterwards [`Search::order`], [`Search::certificate`] and [`Search::generators`] hold the
     /// answer. `steps` counts on from its present value up to the limit.
@@ -87,8 +88,10 @@ impl Search {
         &mut self,
         graph: &Coloured,
         members: &[u32],
+        inside: &Inside,
         limits: &Limits,
     ) -> Result<(), OrderError> {
+        self.inside.clone_from(inside);
         self.start(graph, members);
         for start in self.partition.starts().collect::<Vec<_>>() {
             self.refiner.enqueue(start);
@@ -107,28 +110,23 @@ impl Search {
         Ok(())
     }
 
+    /// Gets ready for the components of a graph: all that costs as much as the whole graph is done
+    /// here, once.
+    pub(crate) fn prepare(&mut self, graph: &Coloured) {
+        self.refiner.reset(graph.len());
+        for identity in [&mut self.orbit, &mut self.pruning] {
+            identity.clear();
+            identity.extend(0..graph.len() as u32);
+        }
+    }
+
     fn start(&mut self, graph: &Coloured, members: &[u32]) {
         self.partition
             .load(members, graph.len(), |v| graph.colours[v as usize]);
-        self.refiner.reset(graph.len());
         self.traces.clear();
         self.generators.clear();
         self.first.certificate.clear();
         self.best.certificate.clear();
-        self.orbit.clear();
-        self.orbit.extend(0..graph.len() as u32);
-        self.inside.units.clear();
-        self.inside.placed.clear();
-        let partition = &self.partition;
-        let inside = |v: u32| partition.lab.get(partition.pos[v as usize] as usize) == Some(&v);
-        let units = (0..)
-            .zip(&graph.units)
-            .filter(|(_, unit)| inside(unit.centres[0]));
-        self.inside.units.extend(units.map(|(index, _)| index));
-        let placed = (0..)
-            .zip(&graph.placed)
-            .filter(|(_, placed)| inside(placed.centre));
-        self.inside.placed.extend(placed.map(|(index, _)| index));
     }
 
     /// Refines once. Work is counted in edges and vertices looked at, so that a step costs about
@@ -249,8 +247,9 @@ impl Search {
     }
 
     fn pruning_orbits(&mut self, level: usize) {
-        self.pruning.clear();
-        self.pruning.extend(0..self.orbit.len() as u32);
+        for &vertex in &self.partition.lab {
+            self.pruning[vertex as usize] = vertex;
+        }
         for generator in &self.generators {
             let fixes = self.nodes[..level]
                 .iter()

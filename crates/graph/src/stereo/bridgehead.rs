@@ -84,7 +84,9 @@ fn paths_from(skeleton: &Skeleton, head: u32, ends: impl Fn(u32) -> bool) -> Vec
                 inner: trail[1..].to_vec(),
             });
         }
-        if trail.len() <= LONGEST_PATH {
+        // Cages of main-group atoms have no more than four bonds at an atom; a metal cluster is no
+        // such cage, and its paths would multiply.
+        if trail.len() <= LONGEST_PATH && skeleton.degree(to) <= 4 {
             trail.push(to);
             next.push(0);
         }

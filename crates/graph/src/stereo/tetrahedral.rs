@@ -1,6 +1,6 @@
 //! Atoms that can be tetrahedral centres.
 
-use crate::{Element, Shape, mesomer::Mesomer, skeleton::Skeleton};
+use crate::{BondOrder, Element, Shape, mesomer::Mesomer, skeleton::Skeleton};
 
 use super::{
     Candidate, Perception,
@@ -80,7 +80,7 @@ fn eligible(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Eligibl
         || skeleton
             .arcs(atom)
             .iter()
-            .any(|&(_, bond)| mesomer.orders[bond as usize] != 1)
+            .any(|&(_, bond)| !matches!(mesomer.orders[bond as usize], 1 | COORDINATION))
     {
         return None;
     }
@@ -89,6 +89,13 @@ fn eligible(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Eligibl
         (Element::CARBON | Element::SILICON | Element::GERMANIUM, 4, 0) => Some(Eligible::Stable),
         (Element::TIN | Element::LEAD, 4, 0) | (Element::BORON, 4, -1) => Some(Eligible::Stable),
         (Element::NITROGEN, 4, 1) if record.hydrogens == 0 => Some(Eligible::Stable),
+        // A donor on a metal: the metal is its fourth ligand, drawn as a bond of either kind.
+        (Element::NITROGEN | Element::PHOSPHORUS | Element::ARSENIC | Element::ANTIMONY, 4, 0)
+        | (Element::SULFUR | Element::SELENIUM | Element::TELLURIUM, 3, 0)
+            if record.hydrogens == 0 && is_on_metal(skeleton, atom) =>
+        {
+            Some(Eligible::Stable)
+        }
         (Element::NITROGEN, 4, 1) | (Element::NITROGEN, 3, 0) => {
             Some(if (in_three_ring(skeleton, atom)) && record.charge == 0 {
                 Eligible::SmallRingNitrogen
@@ -105,6 +112,16 @@ fn eligible(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Eligibl
         (element, 4, _) if !is_ruled(element) => Some(Eligible::Unruled),
         _ => None,
     }
+}
+
+/// The order of a coordination bond.
+const COORDINATION: u8 = BondOrder::Coordination as u8;
+
+fn is_on_metal(skeleton: &Skeleton, atom: u32) -> bool {
+    skeleton
+        .arcs(atom)
+        .iter()
+        .any(|&(to, _)| skeleton.atoms[to as usize].element.is_metal())
 }
 
 /// Elements whose four-ligand forms the rules above settle, for or against.

@@ -1,5 +1,7 @@
 //! Branch points and chains of one record.
 
+use std::collections::{HashMap, HashSet};
+
 use molkin_graph::Element;
 
 use crate::Structure;
@@ -54,15 +56,15 @@ pub(super) fn of(structure: &Structure) -> Branching {
 
 impl Skeleton {
     fn points(&self) -> Vec<BranchPoint> {
+        let tree = Tree::of(self);
         let branching = (0u32..)
             .zip(&self.neighbours)
             .filter(|(_, list)| list.len() >= 3);
         branching
             .map(|(atom, list)| {
                 let outside = list.iter().filter(|&&(_, in_ring)| !in_ring);
-                let mut branches: Vec<usize> = outside
-                    .map(|&(to, _)| self.order_from(to, Some(atom)).len())
-                    .collect();
+                let mut branches: Vec<usize> =
+                    outside.map(|&(to, _)| tree.size_beyond(atom, to)).collect();
                 branches.sort_unstable();
                 let ring_bonds = list.len() - branches.len();
                 BranchPoint {
@@ -74,10 +76,9 @@ impl Skeleton {
             .collect()
     }
 
-    /// The atoms reachable without crossing `barred`, breadth first, each with its predecessor.
-    fn order_from(&self, start: u32, barred: Option<u32>) -> Vec<(u32, u32)> {
-        let mut seen = std::collections::HashSet::from([start]);
-        seen.extend(barred);
+    /// The atoms reachable from one, breadth first, each with its predecessor.
+    fn order_from(&self, start: u32) -> Vec<(u32, u32)> {
+        let mut seen = HashSet::from([start]);
         let mut order = vec![(start, start)];
         let mut at = 0;
         while let Some(&(atom, _)) = order.get(at) {
@@ -93,13 +94,13 @@ impl Skeleton {
 
     /// Longest chains by two breadth-first walks, which is exact in trees.
     fn chains(&self) -> Vec<Vec<u32>> {
-        let mut seen = std::collections::HashSet::new();
+        let mut seen = HashSet::new();
         let mut chains = Vec::new();
         for start in 0..self.neighbours.len() as u32 {
             if self.neighbours[start as usize].is_empty() || seen.contains(&start) {
                 continue;
             }
-            let component = self.order_from(start, None);
+            let component = self.order_from(start);
             seen.extend(component.iter().map(|&(atom, _)| atom));
             let in_ring =
                 |&(atom, _): &(u32, u32)| self.neighbours[atom as usize].iter().any(|&(_, r)| r);
@@ -109,16 +110,59 @@ impl Skeleton {
             let Some(&(end, _)) = component.last() else {
                 continue;
             };
-            let walk = self.order_from(end, None);
+            let walk = self.order_from(end);
             chains.push(path_back(&walk, end));
         }
         chains
     }
 }
 
+/// Sizes of subtrees of a spanning tree. A bond outside rings is a bond of every spanning tree, so the
+/// atoms beyond it are a subtree or all but one.
+struct Tree {
+    parent: Vec<u32>,
+    size: Vec<usize>,
+    /// Per atom: the atoms of its component.
+    whole: Vec<usize>,
+}
+
+impl Tree {
+    fn of(skeleton: &Skeleton) -> Self {
+        let count = skeleton.neighbours.len();
+        let mut tree = Self {
+            parent: (0..count as u32).collect(),
+            size: vec![1; count],
+            whole: vec![0; count],
+        };
+        for start in 0..count as u32 {
+            if tree.whole[start as usize] > 0 {
+                continue;
+            }
+            let order = skeleton.order_from(start);
+            for &(atom, before) in order.iter().rev() {
+                tree.whole[atom as usize] = order.len();
+                tree.parent[atom as usize] = before;
+                if atom != before {
+                    tree.size[before as usize] += tree.size[atom as usize];
+                }
+            }
+        }
+        tree
+    }
+
+    /// The atoms on the far side of a bond outside rings.
+    fn size_beyond(&self, atom: u32, to: u32) -> usize {
+        if self.parent[to as usize] == atom {
+            self.size[to as usize]
+        } else {
+            self.whole[atom as usize] - self.size[atom as usize]
+        }
+    }
+}
+
 /// The path from the last atom of a breadth-first walk back to its start, lower end first.
 fn path_back(walk: &[(u32, u32)], start: u32) -> Vec<u32> {
-    let before: std::collections::HashMap<u32, u32> = walk.iter().copied().collect();
+    let before: HashMap<u32, u32> = walk.iter().copied().collect();
     let mut path = Vec::new();
     let mut atom = walk.last().map(|&(atom, _)| atom);
     while let Some(here) = atom {

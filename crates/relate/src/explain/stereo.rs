@@ -123,7 +123,8 @@ struct Maps {
     start: Vec<(u32, u32)>,
     /// Atoms of B by position.
     sources: Vec<u32>,
-    automorphisms: Vec<Vec<u32>>,
+    /// Positions that each moves, with their images.
+    automorphisms: Vec<Vec<(u32, u32)>>,
     /// Positions in B that centres and ligands of A's elements start at.
     relevant: Vec<u32>,
 }
@@ -191,7 +192,7 @@ impl Maps {
         let mut queue = VecDeque::from([identity]);
         while let Some(images) = queue.pop_front() {
             for generator in &self.automorphisms {
-                let next: Vec<u32> = images.iter().map(|&at| generator[at as usize]).collect();
+                let next: Vec<u32> = images.iter().map(|&at| image(generator, at)).collect();
                 if seen.len() >= most {
                     return (best, false);
                 }
@@ -207,6 +208,14 @@ impl Maps {
             }
         }
         (best, true)
+    }
+}
+
+/// The image of a position.
+fn image(automorphism: &[(u32, u32)], at: u32) -> u32 {
+    match automorphism.binary_search_by_key(&at, |&(from, _)| from) {
+        Ok(found) => automorphism[found].1,
+        Err(_) => at,
     }
 }
 
@@ -248,9 +257,14 @@ fn differences(
             change,
         });
     }
-    let inverse = |atom: u32| -> Option<u32> {
-        (0..a.molecule().atom_count() as u32).find(|&x| image(x) == Some(atom))
+    let inverse: HashMap<u32, u32> = if rest.is_empty() {
+        HashMap::new()
+    } else {
+        (0..a.molecule().atom_count() as u32)
+            .filter_map(|x| Some((image(x)?, x)))
+            .collect()
     };
+    let inverse = |atom: u32| inverse.get(&atom).copied();
     for element in in_b
         .iter()
         .filter(|e| rest.contains_key(&sorted(e.centres)))

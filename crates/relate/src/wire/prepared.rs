@@ -136,29 +136,48 @@ fn lost_in_smiles(structure: &Structure, lost: &[Lost]) -> Vec<Noted> {
 }
 
 fn noted(lost: &Lost, order: &[u32]) -> Noted {
+    let sources = |places: &[u32]| -> Vec<u32> {
+        let atoms = places
+            .iter()
+            .filter_map(|&at| order.get(at as usize).copied());
+        let mut atoms: Vec<u32> = atoms.collect();
+        atoms.sort_unstable();
+        atoms.dedup();
+        atoms
+    };
+    let arrangement = |atoms: Vec<u32>| Noted {
+        code: "smiles-loses-stereo",
+        text: format!(
+            "SMILES cannot say the arrangement at {}.",
+            atoms_in_words(&atoms)
+        ),
+        atoms,
+    };
     match lost {
-        Lost::Arrangement { centres, .. } => {
-            let mut atoms: Vec<u32> = centres
-                .iter()
-                .filter_map(|&at| order.get(at as usize).copied())
-                .collect();
-            atoms.sort_unstable();
-            atoms.dedup();
+        Lost::Arrangement { centres, .. } => arrangement(sources(centres)),
+        Lost::Coordination { centre, .. } => arrangement(sources(&[*centre])),
+        Lost::Bond { atoms, .. } => {
+            let atoms = sources(atoms);
             let text = format!(
-                "SMILES cannot say the arrangement at {}.",
+                "SMILES has no symbol for the coordination or hydrogen bond between {}.",
                 atoms_in_words(&atoms)
             );
             Noted {
-                code: "smiles-loses-stereo",
+                code: "smiles-loses-bond",
                 atoms,
                 text,
             }
         }
-        _ => Noted {
+        Lost::RingLabels { .. } => Noted {
             code: "smiles-ring-labels",
             atoms: Vec::new(),
             text: "The SMILES needs more than 99 ring labels at once, beyond the standard."
                 .to_owned(),
+        },
+        _ => Noted {
+            code: "smiles-loses",
+            atoms: Vec::new(),
+            text: "SMILES cannot say all of this record.".to_owned(),
         },
     }
 }
