@@ -1,10 +1,35 @@
-//! The lines of a V2000 molfile in another order.
+//! Molfiles, and their lines in another order.
 
-use crate::Numbers;
+use crate::{Numbers, read_text, shared, workspace};
+
+/// The molfiles and SDF records of the demo, and of published SDF files that are there.
+///
+/// # Panics
+/// If the demo cannot be read.
+pub fn molfiles(published: &[&str]) -> Vec<String> {
+    let demo = std::fs::read_dir(workspace("fixtures/demo")).unwrap();
+    let mut paths: Vec<_> = demo.map(|entry| entry.unwrap().path()).collect();
+    // Folders list their files in any order, but runs are to repeat.
+    paths.sort();
+    paths.retain(|path| {
+        path.extension()
+            .is_some_and(|ext| ext == "mol" || ext == "sdf")
+    });
+    paths.extend(published.iter().copied().filter_map(shared));
+    let texts = paths.iter().map(|path| read_text(path));
+    texts
+        .flat_map(|text| {
+            let records = text
+                .split("$$$$\n")
+                .filter(|record| !record.trim().is_empty());
+            records.map(str::to_owned).collect::<Vec<_>>()
+        })
+        .collect()
+}
 
 /// A molfile with its atom lines, its bond lines and the ends of its plain bonds in random order;
 /// numbers in property lines follow. `None` where the molfile has lines whose atom numbers this
-/// does not know how to change.
+/// does not know how to change. Data items behind it are left out.
 ///
 /// # Panics
 /// If the counts line is not that of a V2000 molfile.
@@ -30,6 +55,9 @@ pub fn renumbered_molfile(text: &str, numbers: &mut Numbers) -> Option<String> {
     out.extend(bonds);
     for line in properties {
         out.push(property(line, &place)?);
+        if line.trim_end() == END {
+            break;
+        }
     }
     Some(out.join("\n") + "\n")
 }
@@ -45,8 +73,10 @@ fn bond(line: &str, place: &[usize], numbers: &mut Numbers) -> String {
     format!("{a:3}{b:3}{}", &line[6..])
 }
 
+const END: &str = "M  END";
+
 fn property(line: &str, place: &[usize]) -> Option<String> {
-    if line.trim_end() == "M  END" {
+    if line.trim_end() == END {
         return Some(line.to_owned());
     }
     let known = ["M  CHG", "M  RAD", "M  ISO"];

@@ -1,8 +1,8 @@
 //! The same molecule drawn otherwise: in another order, or with its hydrogens as atoms.
 
 use molkin_graph::{
-    Atom, BondOrder, CanonicalForm, DrawnStereo, Element, FormStereo, Ligand, Molecule,
-    MoleculeBuilder, Parity, Shape,
+    Atom, BondOrder, CanonicalForm, DrawnCoordination, DrawnStereo, Element, FormStereo, Ligand,
+    Molecule, MoleculeBuilder, Parity, Shape, StereoGroup,
 };
 
 use crate::Numbers;
@@ -39,6 +39,17 @@ pub fn renumbered(molecule: &Molecule, numbers: &mut Numbers) -> Molecule {
                 .map(|parity| Parity::from_odd(parity.is_odd() ^ odd)),
         });
     }
+    for mark in molecule.drawn_coordination() {
+        builder.add_coordination(moved_coordination(mark, &place));
+    }
+    for group in molecule.stereo_groups() {
+        let mut atoms: Vec<u32> = group.atoms.iter().map(|&a| place[a as usize]).collect();
+        numbers.shuffle(&mut atoms);
+        builder.add_group(StereoGroup {
+            kind: group.kind,
+            atoms,
+        });
+    }
     builder.build().unwrap()
 }
 
@@ -71,10 +82,16 @@ pub fn renumbered_form(form: &CanonicalForm, numbers: &mut Numbers) -> Canonical
         })
         .collect();
     stereo.sort_by_key(|mark| mark.centres);
+    let coordination = form.coordination.iter();
+    let mut coordination: Vec<_> = coordination
+        .map(|mark| moved_coordination(mark, &place))
+        .collect();
+    coordination.sort_by_key(|mark| mark.centre);
     CanonicalForm {
         atoms: order.iter().map(|&old| form.atoms[old as usize]).collect(),
         bonds,
         stereo,
+        coordination,
     }
 }
 
@@ -111,6 +128,18 @@ pub fn with_hydrogens_written(molecule: &Molecule) -> Molecule {
         }
         builder.add_stereo(mark);
     }
+    for mark in molecule.drawn_coordination() {
+        let mut mark = mark.clone();
+        for ligand in &mut mark.ligands {
+            if *ligand == Ligand::Hydrogen {
+                *ligand = first[mark.centre as usize].map_or(*ligand, Ligand::Atom);
+            }
+        }
+        builder.add_coordination(mark);
+    }
+    for group in molecule.stereo_groups() {
+        builder.add_group(group.clone());
+    }
     builder.build().unwrap()
 }
 
@@ -127,6 +156,15 @@ fn moved(ligand: Ligand, place: &[u32]) -> Ligand {
     match ligand {
         Ligand::Atom(atom) => Ligand::Atom(place[atom as usize]),
         other => other,
+    }
+}
+
+fn moved_coordination(mark: &DrawnCoordination, place: &[u32]) -> DrawnCoordination {
+    let ligands = mark.ligands.iter();
+    DrawnCoordination {
+        polyhedron: mark.polyhedron,
+        centre: place[mark.centre as usize],
+        ligands: ligands.map(|&ligand| moved(ligand, place)).collect(),
     }
 }
 

@@ -7,8 +7,8 @@ use molkin_graph::{CanonicalForm, Element, FormStereo, Ligand, Shape};
 use crate::Numbers;
 
 /// A SMILES of the form that starts at a random atom and takes branches, ring labels and brackets
-/// at random; `None` where the form has allenes or longer cumulenes with marks, or marked double
-/// bonds whose `/` and `\` would mark others as well.
+/// at random; `None` where the form has marked axes or coordination centres, bonds that are no
+/// electron pairs, or marked double bonds whose `/` and `\` would mark others as well.
 ///
 /// Recursive: for molecules of ordinary size.
 pub fn random_spelling(form: &CanonicalForm, numbers: &mut Numbers) -> Option<String> {
@@ -50,6 +50,10 @@ impl<'f> Speller<'f> {
                 neighbours[from as usize].push(to);
                 orders.insert((from, to), order);
             }
+        }
+        let pairs_only = form.bonds.iter().all(|bond| (1..=4).contains(&bond.2));
+        if !pairs_only || !form.coordination.is_empty() {
+            return None;
         }
         let mut centres = BTreeMap::new();
         for mark in &form.stereo {

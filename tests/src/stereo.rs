@@ -1,7 +1,8 @@
 //! Molecules with other marks.
 
 use molkin_graph::{
-    DrawnStereo, Element, Ligand, Molecule, MoleculeBuilder, Parity, Shape, StereoElement,
+    DrawnStereo, Element, Ligand, Molecule, MoleculeBuilder, Parity, Polyhedron, Shape,
+    StereoElement,
 };
 
 /// The mirror image.
@@ -16,7 +17,23 @@ pub fn mirrored(molecule: &Molecule) -> Molecule {
         },
         ..*mark
     });
-    with_marks(molecule, marks)
+    let coordination = molecule.drawn_coordination().iter().map(|mark| {
+        let mut mark = mark.clone();
+        // A plane through the axis that holds one of the other positions exchanges two of them.
+        match mark.polyhedron {
+            Polyhedron::SquarePlanar => {}
+            Polyhedron::TrigonalBipyramidal => mark.ligands.swap(3, 4),
+            Polyhedron::Octahedral => mark.ligands.swap(3, 5),
+        }
+        mark
+    });
+    let mut builder = skeleton(molecule);
+    marks.for_each(|mark| builder.add_stereo(mark));
+    coordination.for_each(|mark| builder.add_coordination(mark));
+    for group in molecule.stereo_groups() {
+        builder.add_group(group.clone());
+    }
+    builder.build().unwrap()
 }
 
 /// The places of a molecule that may carry marks, itself left unmarked.
@@ -69,11 +86,11 @@ impl<'m> Markings<'m> {
     /// # Panics
     /// If the molecule cannot be rebuilt.
     pub fn marked(&self, marks: &[Option<Parity>]) -> Molecule {
-        let drawn = self.places.iter().zip(marks);
-        with_marks(
-            self.molecule,
-            drawn.map(|(place, &parity)| DrawnStereo { parity, ..*place }),
-        )
+        let mut builder = skeleton(self.molecule);
+        for (place, &parity) in self.places.iter().zip(marks) {
+            builder.add_stereo(DrawnStereo { parity, ..*place });
+        }
+        builder.build().unwrap()
     }
 
     /// Every way to mark all places; 2 to the number of places.
@@ -109,7 +126,8 @@ pub fn all_markings(molecule: &Molecule) -> Vec<Molecule> {
     full.map(|marks| markings.marked(&marks)).collect()
 }
 
-fn with_marks(molecule: &Molecule, marks: impl Iterator<Item = DrawnStereo>) -> Molecule {
+/// Atoms and bonds of a molecule, without marks.
+fn skeleton(molecule: &Molecule) -> MoleculeBuilder {
     let mut builder = MoleculeBuilder::new();
     for atom in molecule.atoms() {
         builder.add_atom(*atom);
@@ -117,6 +135,5 @@ fn with_marks(molecule: &Molecule, marks: impl Iterator<Item = DrawnStereo>) -> 
     for (a, b, order) in molecule.bonds() {
         builder.add_bond(a, b, order).unwrap();
     }
-    marks.for_each(|mark| builder.add_stereo(mark));
-    builder.build().unwrap()
+    builder
 }

@@ -10,12 +10,16 @@
     reason = "a test fails by panicking and says what it did"
 )]
 
+mod bounds;
 mod claims;
 mod collections;
 mod counts;
+mod ctfile;
+mod damaged;
 mod demo;
 mod distances;
 mod drawings;
+mod findings;
 mod fixtures;
 mod golden;
 mod graphs;
@@ -23,4 +27,5 @@ mod hostile;
 mod pages;
 mod relations;
 mod renumbering;
+mod smiles;
 mod symmetry;

@@ -41,7 +41,7 @@ fn turned(explanation: &Explanation) -> Explanation {
     }
     turned
         .stereo
-        .sort_by(|x, y| (&x.a, x.shape).cmp(&(&y.a, y.shape)));
+        .sort_by(|x, y| (&x.a, x.geometry.as_str()).cmp(&(&y.a, y.geometry.as_str())));
     turned
 }
 

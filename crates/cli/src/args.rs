@@ -8,7 +8,7 @@ use crate::output::CAUTION;
 
 const INPUT_HELP: &str = "\
 Inputs:
-  a name ending in .smi .smiles .mol .sdf .sd, each also with .gz: that file
+  a name ending in .smi .smiles .mol .sdf .sd .csv .tsv, each also with .gz: that file
   -            standard input
   file:PATH    a file of any other name
   smiles:TEXT  TEXT as a SMILES, whatever it looks like
@@ -61,6 +61,8 @@ pub(crate) struct Compare {
     /// Form of the output
     #[arg(long, value_enum, default_value_t = Format::Text)]
     pub(crate) format: Format,
+    #[command(flatten)]
+    pub(crate) reading: Reading,
 }
 
 /// Write a table of keys, one line a record.
@@ -75,6 +77,47 @@ pub(crate) struct Keys {
     /// Form of the output
     #[arg(long, value_enum, default_value_t = TableFormat::Csv)]
     pub(crate) format: TableFormat,
+    #[command(flatten)]
+    pub(crate) reading: Reading,
+}
+
+/// How inputs are read.
+#[derive(Debug, Args)]
+#[command(next_help_heading = "Reading")]
+pub(crate) struct Reading {
+    /// Refuse SMILES against the standard that are read with a note otherwise
+    #[arg(long)]
+    pub(crate) strict: bool,
+    /// Table of valences from which the hydrogens of a molfile follow that it doesn't write
+    #[arg(long, value_enum, default_value_t = Valences::Early)]
+    pub(crate) valences: Valences,
+    /// What the marks of a molfile mean whose chiral flag isn't set
+    #[arg(long, value_enum, default_value_t = FlagZero::Absolute)]
+    pub(crate) flag_zero: FlagZero,
+    /// Column of a table that holds the structures (default: found by its title)
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) structure: Option<String>,
+    /// Column of a table that holds the names (default: found by its title)
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) name: Option<String>,
+}
+
+/// Tables of valences: see docs/formats.md.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub(crate) enum Valences {
+    /// That in use before 2014
+    Early,
+    /// That in use since 2014
+    Late,
+}
+
+/// Readings of a chiral flag that isn't set.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub(crate) enum FlagZero {
+    /// The arrangement drawn
+    Absolute,
+    /// A mixture of that and its mirror image
+    Mixture,
 }
 
 /// Say what is known about each record.
@@ -87,6 +130,8 @@ pub(crate) struct Describe {
     /// Form of the output
     #[arg(long, value_enum, default_value_t = Format::Text)]
     pub(crate) format: Format,
+    #[command(flatten)]
+    pub(crate) reading: Reading,
 }
 
 /// How results are written.

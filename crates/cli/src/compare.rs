@@ -9,7 +9,7 @@ use std::{
     io::{self, Write},
 };
 
-use molkin_formats::source::RecordOutcome;
+use molkin_formats::source::{ReadOptions, RecordOutcome};
 use molkin_graph::{Limits, Orderer};
 use molkin_relate::wire::{self, Pair, Prepared};
 
@@ -28,7 +28,11 @@ pub(crate) fn run(options: &Compare, report: &mut Report) -> io::Result<()> {
     if input::is_standard(&options.a) && input::is_standard(&options.b) {
         return report.trouble("standard input (-) can be only one of the two");
     }
-    let opened = (open(&options.a, report)?, open(&options.b, report)?);
+    let reading = input::read_options(&options.reading);
+    let opened = (
+        open(&options.a, &reading, report)?,
+        open(&options.b, &reading, report)?,
+    );
     let (Some(a), Some(b)) = opened else {
         return Ok(());
     };
@@ -40,8 +44,8 @@ pub(crate) fn run(options: &Compare, report: &mut Report) -> io::Result<()> {
     comparison.finish()
 }
 
-fn open(argument: &OsStr, report: &mut Report) -> io::Result<Option<Input>> {
-    match Input::open(argument) {
+fn open(argument: &OsStr, reading: &ReadOptions, report: &mut Report) -> io::Result<Option<Input>> {
+    match Input::open(argument, reading.clone()) {
         Ok(input) => Ok(Some(input)),
         Err(error) => report.trouble(error).map(|()| None),
     }

@@ -16,7 +16,9 @@ use crate::{
 pub(crate) fn run(options: &Describe, report: &mut Report) -> io::Result<()> {
     let mut orderer = Orderer::new(Limits::default());
     let mut objects = Objects::new(options.format);
-    input::each_record(&options.inputs, report, |report, source, outcome| {
+    let reading = input::read_options(&options.reading);
+    let inputs = &options.inputs;
+    input::each_record(inputs, &reading, report, |report, source, outcome| {
         let prepared = Prepared::new(&mut orderer, source, outcome);
         let described = wire::describe(&prepared);
         match options.format {

@@ -8,12 +8,16 @@ use std::{
 };
 
 use molkin_formats::{
+    molfile::{self, ValenceTable},
     smiles,
     source::{Format, ReadOptions, RecordOutcome, Records, SourceError},
 };
 use thiserror::Error;
 
-use crate::report::Report;
+use crate::{
+    args::{FlagZero, Reading, Valences},
+    report::Report,
+};
 
 /// What an argument means.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -40,7 +44,7 @@ impl<'a> Meaning<'a> {
             Self::Smiles(smiles)
         } else if text == "-" {
             Self::Standard
-        } else if Format::of_name(text).is_some() || is_table(text) {
+        } else if Format::of_name(text).is_some() {
             Self::KnownFile(Path::new(text))
         } else {
             Self::Smiles(text)
@@ -48,11 +52,21 @@ impl<'a> Meaning<'a> {
     }
 }
 
-/// Whether a name is that of a table, which is known but not read yet.
-fn is_table(name: &str) -> bool {
-    let name = name.to_ascii_lowercase();
-    let stem = name.strip_suffix(".gz").unwrap_or(&name);
-    stem.ends_with(".csv") || stem.ends_with(".tsv")
+/// What the arguments ask of the readers.
+pub(crate) fn read_options(reading: &Reading) -> ReadOptions {
+    let mut options = ReadOptions::default();
+    options.smiles.strict = reading.strict;
+    options.molfile.valences = match reading.valences {
+        Valences::Early => ValenceTable::Early,
+        Valences::Late => ValenceTable::Late,
+    };
+    options.molfile.flag_zero = match reading.flag_zero {
+        FlagZero::Absolute => molfile::FlagZero::Absolute,
+        FlagZero::Mixture => molfile::FlagZero::Mixture,
+    };
+    options.columns.structure.clone_from(&reading.structure);
+    options.columns.name.clone_from(&reading.name);
+    options
 }
 
 /// Whether the argument reads standard input.
@@ -87,8 +101,7 @@ pub(crate) struct Input {
 
 impl Input {
     /// Opens what an argument means.
-    pub(crate) fn open(argument: &OsStr) -> Result<Self, OpenError> {
-        let options = ReadOptions::default();
+    pub(crate) fn open(argument: &OsStr, options: ReadOptions) -> Result<Self, OpenError> {
         let records = match Meaning::of(argument) {
             Meaning::KnownFile(path) => Records::open(path, options)?,
             Meaning::AnyFile(path) => Records::open_any(path, options)?,
@@ -189,6 +202,7 @@ fn standard(options: ReadOptions) -> Result<Records<'static>, SourceError> {
 /// that failed.
 pub(crate) fn each_record(
     arguments: &[OsString],
+    options: &ReadOptions,
     report: &mut Report,
     mut work: impl FnMut(&mut Report, &str, RecordOutcome) -> io::Result<bool>,
 ) -> io::Result<()> {
@@ -199,7 +213,7 @@ pub(crate) fn each_record(
             report.trouble("standard input (-) can be read only once")?;
             continue;
         }
-        let mut input = match Input::open(argument) {
+        let mut input = match Input::open(argument, options.clone()) {
             Ok(input) => input,
             Err(error) => {
                 report.trouble(error)?;

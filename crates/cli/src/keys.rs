@@ -19,7 +19,9 @@ pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
     let mut table = Table::default();
     let mut orderer = Orderer::new(Limits::default());
     table.header(report.out())?;
-    input::each_record(&options.inputs, report, |report, source, outcome| {
+    let reading = input::read_options(&options.reading);
+    let inputs = &options.inputs;
+    input::each_record(inputs, &reading, report, |report, source, outcome| {
         let row = wire::key_row(&mut orderer, source, outcome);
         if row.status != "ok" {
             report.count(Status::Trouble);

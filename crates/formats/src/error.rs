@@ -1,6 +1,6 @@
 //! Why a record could not be read, and where.
 
-use std::fmt;
+use std::{fmt, io};
 
 use thiserror::Error;
 
@@ -48,6 +48,25 @@ impl ReadError {
     pub fn with_related(mut self, related: Span) -> Self {
         self.related = Some(related);
         self
+    }
+
+    /// A failure of the source itself at a line.
+    pub(crate) fn of_source(error: &io::Error, line: u32) -> Self {
+        let kind = ReadErrorKind::Io {
+            kind: error.kind(),
+            message: error.to_string().into(),
+        };
+        Self::new(kind, Span::new(line, 1, 0), b"")
+    }
+
+    /// The same error for a text that is part of another one: `moved` says where its places are
+    /// there, and `line` is the line at the first.
+    #[cfg(feature = "table")]
+    pub(crate) fn moved(self, moved: impl Fn(Span) -> Span, line: &[u8]) -> Self {
+        Self {
+            related: self.related.map(&moved),
+            ..Self::new(self.kind, moved(self.span), line)
+        }
     }
 
     /// What is wrong.

@@ -1,7 +1,7 @@
 //! Readers and writers of structure files.
 //!
-//! Each format is a module of its own: [`smiles`], [`molfile`] and [`sdf`]; [`source`] reads files of
-//! any of them. All give a [`Record`] or a [`ReadError`] with line, column, code and what was expected.
+//! Each format is a module of its own: [`smiles`], [`molfile`], [`sdf`] and [`table`]; [`source`] reads
+//! files of any of them. All give a [`Record`] or a [`ReadError`] with line, column, code and what was expected.
 #![forbid(unsafe_code)]
 
 mod error;
@@ -15,6 +15,7 @@ pub mod molfile;
 pub mod sdf;
 pub mod smiles;
 pub mod source;
+pub mod table;
 
 pub use crate::{
     error::{ReadError, ReadErrorKind},

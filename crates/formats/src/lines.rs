@@ -1,18 +1,22 @@
 //! Lines of a source, read one at a time and bounded.
 
 use std::{
-    io::{self, BufRead, Read},
+    io::{self, BufRead, ErrorKind},
     ops::Range,
 };
 
-/// Reads lines that end in LF or CRLF. Memory follows the bytes read, up to the limit for one line.
+/// Reads lines that end in LF, CR LF or CR, also mixed, and takes off a UTF-8 signature in front.
+/// Memory follows the bytes read, up to the limit for one line.
 #[derive(Debug)]
 pub(crate) struct Lines<R> {
     source: R,
     buffer: Vec<u8>,
     number: u32,
     limit: usize,
-    /// Where in the buffer the line read last stands, its end left out.
+    /// The last line ended in CR: an LF that comes next belongs to it. It isn't waited for, so that
+    /// a line is handed out as soon as it is there.
+    after_return: bool,
+    /// Where in the buffer the line read last stands.
     current: Range<usize>,
 }
 
@@ -36,11 +40,12 @@ impl<R: BufRead> Lines<R> {
             buffer: Vec::new(),
             number: 0,
             limit,
+            after_return: false,
             current: 0..0,
         }
     }
 
-    /// The number of the line read last, from 1.
+    /// The number of the line read last, from 1; 0 before the first.
     pub(crate) fn number(&self) -> u32 {
         self.number
     }
@@ -54,73 +59,133 @@ impl<R: BufRead> Lines<R> {
     pub(crate) fn next(&mut self) -> io::Result<Option<Line<'_>>> {
         self.buffer.clear();
         self.current = 0..0;
-        // Two more than the limit, so that CRLF after a line of just that length is still seen.
-        let most = (self.limit as u64).saturating_add(2);
-        self.source
-            .by_ref()
-            .take(most)
-            .read_until(b'\n', &mut self.buffer)?;
-        if self.buffer.is_empty() {
+        let Some(length) = self.fill()? else {
             return Ok(None);
-        }
+        };
         self.number = self.number.saturating_add(1);
         let signed = self.number == 1 && self.buffer.starts_with(SIGNATURE);
         let start = if signed { SIGNATURE.len() } else { 0 };
-        let ended = self.buffer.strip_suffix(b"\n");
-        let line = ended.unwrap_or(&self.buffer);
-        let end = line.strip_suffix(b"\r").unwrap_or(line).len();
-        if end - start <= self.limit {
-            self.current = start..end;
-            return Ok(Some(Line::Whole(self.current())));
+        let whole = length - start <= self.limit;
+        let end = if whole { length } else { start + self.limit };
+        self.current = start..end;
+        Ok(Some(match whole {
+            true => Line::Whole(self.current()),
+            false => Line::TooLong(self.current()),
+        }))
+    }
+
+    /// Reads through the next line end and keeps what precedes it, as far as there is room. Its
+    /// length, or `None` at the end of the source.
+    fn fill(&mut self) -> io::Result<Option<usize>> {
+        // Room for the signature, so that a line of just the limit may follow it.
+        let most = self.limit.saturating_add(SIGNATURE.len());
+        let mut length = 0_usize;
+        loop {
+            let mut chunk = match self.source.fill_buf() {
+                Err(error) if error.kind() == ErrorKind::Interrupted => continue,
+                other => other?,
+            };
+            let mut taken = 0;
+            if std::mem::take(&mut self.after_return) && chunk.first() == Some(&b'\n') {
+                chunk = &chunk[1..];
+                taken = 1;
+            }
+            if chunk.is_empty() && taken == 0 {
+                return Ok((length > 0).then_some(length));
+            }
+            let end = chunk.iter().position(|&byte| matches!(byte, b'\n' | b'\r'));
+            let line = &chunk[..end.unwrap_or(chunk.len())];
+            length = length.saturating_add(line.len());
+            let room = most - self.buffer.len();
+            self.buffer.extend_from_slice(&line[..line.len().min(room)]);
+            taken += line.len();
+            if let Some(end) = end {
+                self.after_return = chunk[end] == b'\r';
+                self.source.consume(taken + 1);
+                return Ok(Some(length));
+            }
+            self.source.consume(taken);
         }
-        if ended.is_none() {
-            self.source.skip_until(b'\n')?;
-        }
-        self.current = start..start + self.limit;
-        Ok(Some(Line::TooLong(self.current())))
     }
 }
 
 #[cfg(test)]
 mod tests {
+    use std::io::{BufReader, Read};
+
+    use rstest::rstest;
+
     use super::*;
 
-    fn collect(text: &str, limit: usize) -> Vec<(u32, String, bool)> {
-        let mut lines = Lines::new(text.as_bytes(), limit);
+    fn collect(text: &[u8], limit: usize, chunk: usize) -> Vec<(String, bool)> {
+        let mut lines = Lines::new(BufReader::with_capacity(chunk, text), limit);
         let mut found = Vec::new();
         while let Some(line) = lines.next().unwrap() {
             let (text, whole) = match line {
                 Line::Whole(text) => (text, true),
                 Line::TooLong(text) => (text, false),
             };
-            let text = String::from_utf8_lossy(text).into_owned();
-            found.push((lines.number(), text, whole));
+            found.push((String::from_utf8_lossy(text).into_owned(), whole));
         }
         found
     }
 
-    #[test]
-    fn line_ends_are_taken_off() {
-        let expected = ["a", "b", "", "c"].map(str::to_owned);
-        for text in ["a\nb\n\nc\n", "a\r\nb\r\n\r\nc", "\u{feff}a\nb\n\nc"] {
-            let found: Vec<String> = collect(text, 9)
-                .into_iter()
-                .map(|(_, text, _)| text)
-                .collect();
-            assert_eq!(found, expected, "{text:?}");
-        }
+    /// The same lines whatever the size of the pieces in which they come.
+    #[rstest]
+    #[case::lf(b"a\nb\n\nc\n")]
+    #[case::crlf(b"a\r\nb\r\n\r\nc")]
+    #[case::cr(b"a\rb\r\rc\r")]
+    #[case::mixed(b"a\nb\r\n\rc")]
+    #[case::signature(b"\xEF\xBB\xBFa\nb\n\r\nc")]
+    #[case::end_missing(b"a\r\nb\n\nc")]
+    fn line_ends_mix(#[case] text: &[u8], #[values(1, 2, 3, 64)] chunk: usize) {
+        let lines: Vec<_> = collect(text, 9, chunk)
+            .into_iter()
+            .map(|(text, _)| text)
+            .collect();
+        assert_eq!(lines, ["a", "b", "", "c"]);
+    }
+
+    #[rstest]
+    fn a_line_beyond_the_limit_leaves_the_next_ones_alone(#[values(1, 2, 64)] chunk: usize) {
+        let lines = collect(b"abc\r\nabcd\rabcdefghijkl\nx", 3, chunk);
+        let expected = [("abc", true), ("abc", false), ("abc", false), ("x", true)];
+        assert_eq!(
+            lines,
+            expected.map(|(text, whole)| (text.to_owned(), whole))
+        );
+    }
+
+    /// A signature is none of the line's bytes, and only the first line has one.
+    #[rstest]
+    fn a_signature_does_not_count(#[values(1, 2, 64)] chunk: usize) {
+        let lines = collect(b"\xEF\xBB\xBFabc\n\xEF\xBB\xBF\n", 3, chunk);
+        assert_eq!(lines[0], ("abc".to_owned(), true));
+        assert_eq!(lines[1], ("\u{feff}".to_owned(), true));
+        let lines = collect(b"\xEF\xBB\xBFabcd", 3, chunk);
+        assert_eq!(lines, [("abc".to_owned(), false)]);
+        assert_eq!(collect(b"\xEF\xBB\xBF", 3, chunk), [(String::new(), true)]);
     }
 
     #[test]
-    fn a_line_beyond_the_limit_leaves_the_next_ones_alone() {
-        let found = collect("abc\r\nabcd\nabcdefgh\nx", 3);
-        let expected = [
-            (1, "abc", true),
-            (2, "abc", false),
-            (3, "abc", false),
-            (4, "x", true),
-        ];
-        let expected = expected.map(|(number, text, whole)| (number, text.to_owned(), whole));
-        assert_eq!(found, expected);
+    fn the_current_line_and_its_number() {
+        let mut lines = Lines::new(&b"a\rbc\r\n"[..], 9);
+        assert_eq!((lines.number(), lines.current()), (0, &b""[..]));
+        for (number, text) in [(1, b"a".as_slice()), (2, b"bc")] {
+            assert!(lines.next().unwrap().is_some());
+            assert_eq!((lines.number(), lines.current()), (number, text));
+        }
+        assert!(lines.next().unwrap().is_none());
+        assert_eq!((lines.number(), lines.current()), (2, &b""[..]));
+    }
+
+    /// A gigabyte without a line end takes no more memory than the limit.
+    #[test]
+    fn memory_follows_the_limit() {
+        let source = BufReader::new(std::io::repeat(b'(').take(1 << 30));
+        let mut lines = Lines::new(source, 1 << 20);
+        assert!(matches!(lines.next(), Ok(Some(Line::TooLong(_)))));
+        assert!(lines.buffer.capacity() <= 4 << 20);
+        assert!(matches!(lines.next(), Ok(None)));
     }
 }

@@ -1,4 +1,4 @@
-//! Molfiles: one drawn structure in fixed columns (CTfile formats).
+//! Molfiles: one drawn structure as a table of atoms and bonds (CTfile formats).
 //!
 //! ```text
 //! line 1      name                         may be blank, but must be there
@@ -9,17 +9,24 @@
 //! M  CHG …    charges, radicals, isotopes
 //! M  END
 //! ```
-//! Version 2000 is read; version 3000 gives the error `unsupported`. What the reader decides where
-//! the format leaves it open is listed in `docs/formats.md`.
+//! This is version 2000. Version 3000 has the same header with `V3000` on the counts line, and then
+//! words instead of columns. What the reader decides where the format leaves it open is listed in
+//! `docs/formats.md`.
 
+mod aromatic;
 mod block;
+mod bond_type;
 mod drawing;
 mod field;
+mod group_type;
 mod header;
 mod lower;
 mod neighbours;
+mod site;
 mod stereo;
+mod symbol;
 mod v2000;
+mod v3000;
 mod valence;
 
 pub use valence::ValenceTable;
@@ -45,8 +52,23 @@ use crate::{Note, ReadError, ReadErrorKind, Record};
 pub struct ReadOptions {
     /// The table from which hydrogens follow that the file does not write.
     pub valences: ValenceTable,
+    /// How marks are meant where the chiral flag is not set.
+    pub flag_zero: FlagZero,
     /// Bounds on the record.
     pub limits: Limits,
+}
+
+/// How the marks of a record are meant whose chiral flag is not set and that has no stereo
+/// collections.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+#[non_exhaustive]
+pub enum FlagZero {
+    /// As drawn, with a note: most writers leave the flag unset on drawings that are meant so.
+    #[default]
+    Absolute,
+    /// As a mixture of the drawn arrangement and its mirror image: all tetrahedral centres and axes
+    /// of the record are one group.
+    Mixture,
 }
 
 /// Reads one molfile with the default [`ReadOptions`].
@@ -108,13 +130,13 @@ pub(crate) fn read(
         return Err(Fault::new(ReadErrorKind::RecordTooLong { limit }, start));
     }
     let header = header::read(lines)?;
-    if header.version == Version::V3000 {
-        let what = "a molfile of version 3000";
-        let version = header.counts.field(34, 6);
-        return Err(version.fault(ReadErrorKind::Unsupported { what }));
-    }
-    let mut drawing = v2000::read(lines, header.counts, header.version, &options.limits)?;
-    let molecule = lower::molecule(&mut drawing, options.valences)?;
+    let mut drawing = match header.version {
+        Version::V3000 => v3000::read(lines, &options.limits)?,
+        Version::V2000 | Version::Unstated => {
+            v2000::read(lines, header.counts, header.version, &options.limits)?
+        }
+    };
+    let molecule = lower::molecule(&mut drawing, options)?;
     if molecule.atom_count() == 0 {
         drawing.notes.push(Note {
             code: "no-atoms",

@@ -8,14 +8,13 @@
 //! behind the next line that is `$$$$`.
 
 mod data;
-mod lines;
 
 use std::io::BufRead;
 
 use crate::{
     ReadError, ReadErrorKind, Record, Span,
+    lines::{Line, Lines},
     molfile::{self, Block, ReadOptions, decode},
-    sdf::lines::{Line, Lines},
 };
 
 /// The records of an SDF source.
@@ -165,12 +164,8 @@ impl<R: BufRead> Iterator for Records<R> {
             }
             Err(error) => {
                 self.ended = true;
-                let kind = ReadErrorKind::Io {
-                    kind: error.kind(),
-                    message: error.to_string().into(),
-                };
                 let line = self.lines.number().saturating_add(1);
-                Some(Err(ReadError::new(kind, Span::new(line, 1, 0), b"")))
+                Some(Err(ReadError::of_source(&error, line)))
             }
         }
     }

@@ -12,13 +12,14 @@
 //! hydrogens, then double bonds of aromatic systems, then stereo marks. Faults keep their place
 //! through both.
 //!
-//! Atoms are numbered from 0 from left to right, hydrogens written as atoms included. `@`, `@@`,
-//! `@TH` and `@AL` tags and `/` and `\` become stereo marks whether or not the atoms around them
-//! differ; square-planar, trigonal-bipyramidal and octahedral tags are errors. Extensions of
-//! particular programs are errors where they stand in the SMILES, and notes where they follow it.
+//! Atoms are numbered from 0 from left to right, hydrogens written as atoms included. Stereo tags of
+//! all classes and `/` and `\` become stereo marks whether or not the atoms around them differ.
+//! Extensions of particular programs are errors where they stand in the SMILES, and notes where they
+//! follow it.
 
 mod file;
 mod lower;
+mod polyhedra;
 mod reader;
 mod remarks;
 mod ring_bonds;
@@ -40,7 +41,7 @@ use crate::ReadError;
 pub use self::{
     file::Records,
     reader::{ReadOptions, Reader},
-    write::{Lost, Written, write},
+    write::{Lost, Writer, Written, write},
 };
 
 /// Reads one SMILES with the default options and leaves out name and notes.

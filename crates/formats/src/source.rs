@@ -2,126 +2,38 @@
 //!
 //! ```text
 //! .smi .smiles     one SMILES a line           .mol          one molfile
-//! .sdf .sd         molfiles with data items    and .gz behind any of them (feature `gzip`)
+//! .sdf .sd         molfiles with data items    .csv .tsv     tables with a column of SMILES (feature `table`)
 //! ```
+//! and `.gz` behind any of them (feature `gzip`).
+
+mod error;
+mod format;
 
 use std::{
     fmt,
     fs::File,
-    io::{self, BufRead, BufReader},
+    io::{BufRead, BufReader},
     path::Path,
 };
 
-use thiserror::Error;
+#[cfg(feature = "table")]
+use crate::table;
+use crate::{
+    ReadError, Record, molfile, sdf, smiles,
+    table::{Columns, Delimiter},
+};
 
-use crate::{ReadError, ReadErrorKind, Record, molfile, sdf, smiles};
-
-/// The formats of a source.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-#[non_exhaustive]
-pub enum Format {
-    /// One SMILES and a name on each line.
-    Smiles,
-    /// One molfile.
-    Molfile,
-    /// Molfiles with data items, each ended by `$$$$`.
-    Sdf,
-}
-
-impl Format {
-    /// The format that a file name's extension means, and whether `.gz` follows it; `None` for an
-    /// extension that is not known. Case does not count.
-    ///
-    /// # Examples
-    /// ```
-    /// use molkin_formats::source::Format;
-    ///
-    /// assert_eq!(Format::of_name("vendor/lot.SDF.gz"), Some((Format::Sdf, true)));
-    /// assert_eq!(Format::of_name("CCO"), None);
-    /// ```
-    pub fn of_name(name: &str) -> Option<(Self, bool)> {
-        let name = name.to_ascii_lowercase();
-        let (stem, compressed) = match name.strip_suffix(".gz") {
-            Some(stem) => (stem, true),
-            None => (name.as_str(), false),
-        };
-        let (_, extension) = stem.rsplit_once('.')?;
-        let format = match extension {
-            "smi" | "smiles" => Self::Smiles,
-            "mol" => Self::Molfile,
-            "sdf" | "sd" => Self::Sdf,
-            _ => return None,
-        };
-        Some((format, compressed))
-    }
-
-    /// The format that the start of a text looks like: SDF where its fourth line names a molfile
-    /// version, or else SMILES. For sources without a name that tells.
-    pub fn guess(start: &[u8]) -> Self {
-        let counts = molfile::Block::new(start, 1).lines().nth(3);
-        let version = counts.map(|line| line.field(34, 6).text());
-        match version {
-            Some(b"V2000" | b"V3000") => Self::Sdf,
-            _ => Self::Smiles,
-        }
-    }
-}
+pub use self::{error::SourceError, format::Format};
 
 /// How records are read, by format.
-#[derive(Debug, Clone, Copy, Default)]
+#[derive(Debug, Clone, Default)]
 pub struct ReadOptions {
-    /// For SMILES.
+    /// For SMILES, those in tables included.
     pub smiles: smiles::ReadOptions,
     /// For molfiles, those in SDF included.
     pub molfile: molfile::ReadOptions,
-}
-
-/// Why a source cannot be opened, or not be read to its end. Faults of single records are
-/// [`ReadError`]s instead.
-#[derive(Debug, Error)]
-#[non_exhaustive]
-pub enum SourceError {
-    /// The name has no known extension.
-    #[error(
-        "{name}: the extension is not known; .smi, .smiles, .mol, .sdf and .sd are, each also with .gz"
-    )]
-    UnknownFormat {
-        /// The name of the source.
-        name: String,
-    },
-    /// Tables are not read yet.
-    #[error("{name}: .csv and .tsv files are not read yet")]
-    TableFormat {
-        /// The name of the source.
-        name: String,
-    },
-    /// The file is compressed and this build reads no compressed files.
-    #[error("{name}: this build cannot read .gz files (it lacks the feature \"gzip\")")]
-    NoGzip {
-        /// The name of the source.
-        name: String,
-    },
-    /// The file cannot be opened.
-    #[error("{name}: {error}")]
-    Open {
-        /// The name of the source.
-        name: String,
-        /// What the system says.
-        #[source]
-        error: io::Error,
-    },
-    /// Reading failed midway; records before this one are good.
-    #[error("{name}, line {line}: {message}")]
-    Read {
-        /// The name of the source.
-        name: String,
-        /// The line that could not be read, from 1.
-        line: u32,
-        /// The class of the failure.
-        kind: io::ErrorKind,
-        /// What the system says.
-        message: Box<str>,
-    },
+    /// For tables.
+    pub columns: Columns,
 }
 
 /// What became of one record.
@@ -164,16 +76,42 @@ enum Reader<'s> {
     Smiles(Box<smiles::Records<Source<'s>>>),
     /// SDF, or a molfile, which is SDF of one record.
     Sdf(sdf::Records<Source<'s>>),
+    #[cfg(feature = "table")]
+    Table(Box<table::Records<Source<'s>>>),
+    /// There are no records, and this is why, until it has been said.
+    Refused(Option<SourceError>),
+}
+
+impl<'s> Reader<'s> {
+    #[cfg(feature = "table")]
+    fn table(name: &str, source: Source<'s>, delimiter: Delimiter, options: ReadOptions) -> Self {
+        let options = table::ReadOptions {
+            smiles: options.smiles,
+            columns: options.columns,
+        };
+        match table::Records::new(source, delimiter, &options) {
+            Ok(records) => Self::Table(Box::new(records)),
+            Err(error) => Self::Refused(Some(SourceError::of_header(name, error))),
+        }
+    }
+
+    #[cfg(not(feature = "table"))]
+    fn table(name: &str, _: Source<'s>, _: Delimiter, _: ReadOptions) -> Self {
+        let name = name.to_owned();
+        Self::Refused(Some(SourceError::NoTables { name }))
+    }
 }
 
 impl<'s> Records<'s> {
-    /// The records of a stream in a given format. `name` is for errors.
+    /// The records of a stream in a given format. `name` is for errors. Of a table, the header is
+    /// read here; what is wrong with it is told in place of the first record.
     pub fn new(
         name: impl Into<String>,
         source: impl BufRead + Send + 's,
         format: Format,
         options: ReadOptions,
     ) -> Self {
+        let name = name.into();
         let source: Source<'s> = Box::new(source);
         let reader = match format {
             Format::Smiles => {
@@ -181,9 +119,11 @@ impl<'s> Records<'s> {
             }
             Format::Molfile => Reader::Sdf(sdf::Records::of_molfile(source, options.molfile)),
             Format::Sdf => Reader::Sdf(sdf::Records::new(source, options.molfile)),
+            Format::Csv => Reader::table(&name, source, Delimiter::Detected, options),
+            Format::Tsv => Reader::table(&name, source, Delimiter::Byte(b'\t'), options),
         };
         Self {
-            name: name.into(),
+            name,
             index: 0,
             reader,
         }
@@ -225,17 +165,16 @@ impl Records<'static> {
     /// Opens a file in the format that its extension means.
     ///
     /// # Errors
-    /// [`SourceError::UnknownFormat`], [`SourceError::TableFormat`], [`SourceError::NoGzip`],
+    /// [`SourceError::UnknownFormat`], [`SourceError::NoTables`], [`SourceError::NoGzip`],
     /// [`SourceError::Open`].
     pub fn open(path: &Path, options: ReadOptions) -> Result<Self, SourceError> {
         let name = path.display().to_string();
         let Some((format, compressed)) = Format::of_name(&name) else {
-            return Err(if is_table(&name) {
-                SourceError::TableFormat { name }
-            } else {
-                SourceError::UnknownFormat { name }
-            });
+            return Err(SourceError::UnknownFormat { name });
         };
+        if matches!(format, Format::Csv | Format::Tsv) && !cfg!(feature = "table") {
+            return Err(SourceError::NoTables { name });
+        }
         if compressed && !cfg!(feature = "gzip") {
             return Err(SourceError::NoGzip { name });
         }
@@ -257,7 +196,7 @@ impl Records<'static> {
     /// As [`Records::open`], [`SourceError::UnknownFormat`] aside, and [`SourceError::Read`].
     pub fn open_any(path: &Path, options: ReadOptions) -> Result<Self, SourceError> {
         let name = path.display().to_string();
-        if Format::of_name(&name).is_some() || is_table(&name) {
+        if Format::of_name(&name).is_some() {
             return Self::open(path, options);
         }
         match File::open(path) {
@@ -265,12 +204,6 @@ impl Records<'static> {
             Err(error) => Err(SourceError::Open { name, error }),
         }
     }
-}
-
-fn is_table(name: &str) -> bool {
-    let name = name.to_ascii_lowercase();
-    let stem = name.strip_suffix(".gz").unwrap_or(&name);
-    stem.ends_with(".csv") || stem.ends_with(".tsv")
 }
 
 #[cfg(feature = "gzip")]
@@ -297,18 +230,14 @@ impl Iterator for Records<'_> {
         let (result, title) = match &mut self.reader {
             Reader::Smiles(records) => (records.next()?, records.title()),
             Reader::Sdf(records) => (records.next()?, records.title()),
+            #[cfg(feature = "table")]
+            Reader::Table(records) => (records.next()?, records.title()),
+            Reader::Refused(error) => return error.take().map(Err),
         };
         if let Err(error) = &result
-            && let ReadErrorKind::Io { kind, message } = error.kind()
+            && let Some(failure) = SourceError::of_record(&self.name, error)
         {
-            let (name, line) = (self.name.clone(), error.span().line);
-            let (kind, message) = (*kind, message.clone());
-            return Some(Err(SourceError::Read {
-                name,
-                line,
-                kind,
-                message,
-            }));
+            return Some(Err(failure));
         }
         self.index += 1;
         Some(Ok(RecordOutcome {

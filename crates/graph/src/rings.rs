@@ -60,16 +60,19 @@ impl Adjacency {
         let mut in_ring = vec![false; bonds];
         let mut depth = vec![UNSEEN; self.len()];
         let mut low = vec![UNSEEN; self.len()];
-        let mut stack: Vec<(u32, u32, usize)> = Vec::with_capacity(self.len());
+        // Vertex, the bond it was entered by, and the range of arcs still to be looked at.
+        let range = |vertex: u32| (self.start[vertex as usize], self.start[vertex as usize + 1]);
+        let mut stack: Vec<(u32, u32, (u32, u32))> = Vec::with_capacity(self.len());
         for root in 0..self.len() as u32 {
             if depth[root as usize] != UNSEEN {
                 continue;
             }
             depth[root as usize] = 0;
             low[root as usize] = 0;
-            stack.push((root, u32::MAX, 0));
-            while let Some(&mut (vertex, entered, ref mut next)) = stack.last_mut() {
-                if let Some(&(to, bond)) = self.of(vertex).get(*next) {
+            stack.push((root, u32::MAX, range(root)));
+            while let Some(&mut (vertex, entered, (ref mut next, end))) = stack.last_mut() {
+                if *next < end {
+                    let (to, bond) = self.arcs[*next as usize];
                     *next += 1;
                     if bond == entered || !keep(bond) {
                         continue;
@@ -77,7 +80,7 @@ impl Adjacency {
                     if depth[to as usize] == UNSEEN {
                         depth[to as usize] = depth[vertex as usize] + 1;
                         low[to as usize] = depth[to as usize];
-                        stack.push((to, bond, 0));
+                        stack.push((to, bond, range(to)));
                     } else {
                         in_ring[bond as usize] = true;
                         low[vertex as usize] = low[vertex as usize].min(depth[to as usize]);

@@ -110,6 +110,7 @@ impl Skeleton {
             }
             let foldable = host.element != Element::HYDROGEN
                 || host.charge != 0
+                || host.hydrogens != 0
                 || molecule.neighbours(other).nth(1).is_some()
                 || (self.folded[other as usize].is_none()
                     && (host.isotope, other) > (atom.isotope, index))

@@ -79,13 +79,80 @@ fn a_file_name_that_looks_like_no_file() {
     );
 }
 
+const TABLE: &str = "id;Drawn;SMILES;price\nA 1;O;CCO;12\nA 2;C;C1CC;5\nA 3;N\nA 4;CC;\"CC\";7\n";
+
+#[test]
+fn tables_with_their_columns_found_or_chosen() {
+    let folder = Folder::new("tables_with_their_columns_found_or_chosen")
+        .with("t.csv", TABLE)
+        .with("t.tsv", TABLE.replace(';', "\t"));
+    for name in ["t.csv", "t.tsv"] {
+        let outcome = folder.run(&["keys", name]);
+        let rows = [
+            format!("{name} 1 A 1 C2H6O"),
+            format!("{name} 2 A 2 "),
+            format!("{name} 3 A 3 "),
+            format!("{name} 4 A 4 C2H6"),
+        ];
+        assert_eq!(read(&outcome.out), rows);
+        assert!(
+            outcome.out.contains("3:8: ring-not-closed: "),
+            "{}",
+            outcome.out
+        );
+        assert!(
+            outcome.out.contains("4:6: field-count: "),
+            "{}",
+            outcome.out
+        );
+        assert_eq!(outcome.words, "molkin: 2 of 4 records failed\n");
+        let chosen = folder.run(&["keys", name, "--structure", "drawn", "--name", "PRICE"]);
+        let rows = [
+            format!("{name} 1 12 H2O"),
+            format!("{name} 2 5 CH4"),
+            format!("{name} 3  "),
+            format!("{name} 4 7 C2H6"),
+        ];
+        assert_eq!(read(&chosen.out), rows);
+    }
+    let piped = with_input(&["keys", "-"], TABLE);
+    assert_eq!(read(&piped.out)[0], "- 1 A 1 C2H6O");
+    let paired = folder.run(&["compare", "t.csv", "t.tsv", "--by", "name", "--brief"]);
+    assert!(paired.out.contains("4 pairs"), "{}", paired.out);
+}
+
 #[rstest]
-#[case("t.csv")]
-#[case("t.tsv.gz")]
-fn tables_are_refused(#[case] name: &str) {
-    let outcome = run(&["keys", name]);
-    let words = format!("molkin: {name}: .csv and .tsv files are not read yet\n");
-    assert_eq!((outcome.status, outcome.words), (2, words));
+#[case(&["keys", "t.csv"], "no column is known to hold structures; there are: \"a\", \"b c\"")]
+#[case(&["describe", "t.csv", "--structure", "x"], "there is no column \"x\"; there are: \"a\", \"b c\"")]
+#[case(&["compare", "t.csv", "C", "--structure", "a", "--name", "c"], "there is no column \"c\"; there are: \"a\", \"b c\"")]
+fn a_table_without_its_columns(#[case] arguments: &[&str], #[case] reason: &str) {
+    let folder = Folder::new(&format!("a_table_without_its_columns_{}", arguments[0]))
+        .with("t.csv", "a,b c\nC,1\n");
+    let outcome = folder.run(arguments);
+    assert_eq!(
+        (outcome.status, outcome.words),
+        (2, format!("molkin: t.csv: {reason}\n"))
+    );
+}
+
+#[test]
+fn strict_reading_refuses_what_is_noted_otherwise() {
+    let text = "C..C\n";
+    assert_eq!(with_input(&["keys", "-"], text).status, 0);
+    let strict = with_input(&["keys", "-", "--strict"], text);
+    assert_eq!(strict.status, 2);
+    assert!(strict.out.contains("misplaced-dot"), "{}", strict.out);
+}
+
+#[test]
+fn tables_of_valences_can_be_chosen() {
+    let tin = WATER.replace(" O", " Sn");
+    let formula = |arguments: &[&str]| read(&with_input(arguments, &tin).out).concat();
+    assert_eq!(formula(&["keys", "-"]), "- 1 water H2Sn");
+    assert_eq!(
+        formula(&["keys", "-", "--valences", "late"]),
+        "- 1 water Sn"
+    );
 }
 
 #[test]

@@ -84,6 +84,17 @@ pub enum ReadErrorKind {
         "this is the counts line, but three lines belong before it: is a blank first line missing?"
     )]
     HeaderLineMissing,
+    /// A row of a table has more or fewer fields than the header.
+    #[error("the row has {found} {}, but the header names {expected}", fields(*found))]
+    FieldCount {
+        /// The fields of the row.
+        found: usize,
+        /// The fields of the header.
+        expected: usize,
+    },
+    /// A quoted field of a table is never closed, or by a quote that was to open another field.
+    #[error("the quote is opened and not closed")]
+    QuoteNotClosed,
     /// A symbol that is no element.
     #[error("{symbol:?} is not the symbol of an element")]
     UnknownElement {
@@ -154,6 +165,35 @@ pub enum ReadErrorKind {
         /// The number of atoms.
         declared: u32,
     },
+    /// Something names an atom by a number that no atom has.
+    #[error("no atom has the number {number}")]
+    NoAtomNumbered {
+        /// The number.
+        number: u32,
+    },
+    /// Something names a bond by a number that no bond has.
+    #[error("no bond has the number {number}")]
+    NoBondNumbered {
+        /// The number.
+        number: u32,
+    },
+    /// Two atoms or two bonds have the same number.
+    #[error("the number {number} is given twice")]
+    NumberRepeated {
+        /// The number.
+        number: u32,
+    },
+    /// There are more or fewer lines than the counts line declares. The related span is the
+    /// declaration.
+    #[error("{declared} {what} are declared, but there are {found}")]
+    CountMismatch {
+        /// What is counted.
+        what: &'static str,
+        /// The number declared.
+        declared: u32,
+        /// The number of lines.
+        found: u32,
+    },
     /// An aromatic bond symbol at an atom that is not aromatic.
     #[error("an aromatic bond must join two aromatic atoms")]
     AromaticBondOutsideAromatic,
@@ -178,6 +218,15 @@ pub enum ReadErrorKind {
         /// The atoms left over in one largest choice.
         atoms: Box<[u32]>,
     },
+    /// Aromatic bonds that need a hydrogen more on one of several atoms.
+    #[error(
+        "the aromatic bonds need one more hydrogen, and it fits at each of: {}",
+        numbers(atoms)
+    )]
+    HydrogensUndetermined {
+        /// The atoms at which it fits.
+        atoms: Box<[u32]>,
+    },
     /// A stereo tag that the format does not have.
     #[error("there is no such stereo tag: {expected} is expected")]
     BadStereoTag {
@@ -189,12 +238,6 @@ pub enum ReadErrorKind {
     BadStereo {
         /// The atom.
         atom: u32,
-    },
-    /// A stereo class that is valid in the format and not read here.
-    #[error("{class} stereo marks are not read")]
-    UnsupportedStereo {
-        /// The class of arrangement.
-        class: &'static str,
     },
     /// A query: it stands for many structures.
     #[error("{what} makes this a query, not a structure")]
@@ -209,8 +252,8 @@ pub enum ReadErrorKind {
         /// The feature.
         what: &'static str,
     },
-    /// Read with a note by default, and refused because the standard was asked for.
-    #[error("against the standard: {text}")]
+    /// Read with a note by default, and refused because strict reading was asked for.
+    #[error("refused in strict reading: {text}")]
     NotStandard {
         /// The code of the note.
         code: &'static str,
@@ -236,6 +279,8 @@ impl ReadErrorKind {
             Self::NumberOutOfRange { .. } => "number-out-of-range",
             Self::NoStructure => "no-structure",
             Self::HeaderLineMissing => "header-line-missing",
+            Self::FieldCount { .. } => "field-count",
+            Self::QuoteNotClosed => "quote-not-closed",
             Self::UnknownElement { .. } => "unknown-element",
             Self::NotAromatic { .. } => "not-aromatic",
             Self::BracketNotClosed => "bracket-not-closed",
@@ -251,13 +296,17 @@ impl ReadErrorKind {
             Self::SelfBond { .. } => "self-bond",
             Self::DuplicateBond { .. } => "duplicate-bond",
             Self::NoSuchAtom { .. } => "no-such-atom",
+            Self::NoAtomNumbered { .. } => "no-such-atom",
+            Self::NoBondNumbered { .. } => "no-such-bond",
+            Self::NumberRepeated { .. } => "number-repeated",
+            Self::CountMismatch { .. } => "count-mismatch",
             Self::AromaticBondOutsideAromatic => "aromatic-bond-outside-aromatic",
             Self::AromaticOutsideRing { .. } => "aromatic-outside-ring",
             Self::AromaticValence { .. } => "aromatic-valence",
             Self::NoKekuleStructure { .. } => "no-kekule-structure",
+            Self::HydrogensUndetermined { .. } => "hydrogens-undetermined",
             Self::BadStereoTag { .. } => "bad-stereo-tag",
             Self::BadStereo { .. } => "bad-stereo",
-            Self::UnsupportedStereo { .. } => "unsupported-stereo",
             Self::Query { .. } => "query",
             Self::Unsupported { .. } => "unsupported",
             Self::NotStandard { code, .. } => code,
@@ -291,4 +340,8 @@ fn numbers(atoms: &[u32]) -> String {
         list.push(format!("and {} more", atoms.len() - SHOWN));
     }
     format!("atom {}", list.join(", "))
+}
+
+fn fields(count: usize) -> &'static str {
+    if count == 1 { "field" } else { "fields" }
 }

@@ -82,6 +82,11 @@ impl<'a> Line<'a> {
     pub(crate) fn is_blank(&self) -> bool {
         self.text.trim_ascii().is_empty()
     }
+
+    /// Whether this is the last line of a molfile.
+    pub(crate) fn is_end(&self) -> bool {
+        self.text.trim_ascii_end() == b"M  END"
+    }
 }
 
 /// Splits at LF, CR LF and CR, mixed as they come.

@@ -2,7 +2,7 @@
 //!
 //! Every version of the format fills this; [`crate::molfile::lower`] makes a molecule of it.
 
-use molkin_graph::Element;
+use molkin_graph::{Element, StereoGroup};
 
 use crate::{Note, Span};
 
@@ -13,6 +13,11 @@ pub(super) struct Drawing {
     pub(super) bonds: Vec<DrawnBond>,
     /// The chiral flag of the counts line.
     pub(super) chiral: bool,
+    /// Groups of centres with relative marks.
+    pub(super) groups: Vec<StereoGroup>,
+    /// Whether the record says of any centre whether its mark is absolute or relative. Then the
+    /// chiral flag says nothing.
+    pub(super) grouped: bool,
     pub(super) notes: Vec<Note>,
 }
 
@@ -90,12 +95,17 @@ pub(super) enum BondKind {
     Double,
     Triple,
     Aromatic,
+    /// From a donor to a metal; takes no valence.
+    Coordination,
+    /// A hydrogen bond; takes no valence.
+    Hydrogen,
 }
 
 impl BondKind {
-    /// Bonding electron pairs, those of the aromatic system aside.
+    /// Bonding electron pairs that count as valence, those of the aromatic system aside.
     pub(super) fn pairs(self) -> u32 {
         match self {
+            Self::Coordination | Self::Hydrogen => 0,
             Self::Single | Self::Aromatic => 1,
             Self::Double => 2,
             Self::Triple => 3,

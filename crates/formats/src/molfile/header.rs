@@ -31,6 +31,9 @@ const COUNTS: &str = "a counts line";
 /// is flat follows from its coordinates.
 pub(super) fn read<'a>(lines: &mut Lines<'a>) -> Result<Header<'a>, Fault> {
     let name = lines.demand("the name line of a molfile")?;
+    if let Some(what) = other_format(name.text) {
+        return Err(Fault::new(ReadErrorKind::Unsupported { what }, name.span()));
+    }
     lines.demand("the program line of a molfile")?;
     let comment = lines.demand("the comment line of a molfile")?;
     let early = looks_like_counts(comment);
@@ -51,6 +54,16 @@ pub(super) fn read<'a>(lines: &mut Lines<'a>) -> Result<Header<'a>, Fault> {
         name: decode(name.text.trim_ascii()),
         counts,
         version: version(counts)?,
+    })
+}
+
+/// Formats of the same family that begin with a name of their own.
+fn other_format(first: &[u8]) -> Option<&'static str> {
+    Some(match first {
+        [b'$', b'R', b'X', b'N', ..] => "a reaction file",
+        [b'$', b'R', b'D', b'F', b'I', b'L', b'E', ..] => "a file of reactions or data (RDF)",
+        [b'$', b'M', b'D', b'L', ..] => "a file of R groups (RGF)",
+        _ => return None,
     })
 }
 

@@ -1,6 +1,6 @@
 //! Who is bonded to whom in a drawing, and which bonds are in rings.
 
-use crate::molfile::drawing::DrawnBond;
+use crate::molfile::drawing::{BondKind, DrawnBond};
 
 /// The bonds of each atom in the order of the bond lines.
 #[derive(Debug)]
@@ -17,18 +17,23 @@ pub(super) struct Neighbours {
 const REACH: usize = 256;
 
 impl Neighbours {
-    /// `atoms` is more than every index in `bonds`. Linear time.
+    /// `atoms` is more than every index in `bonds`. Hydrogen bonds make no neighbours. Linear time.
     pub(super) fn new(atoms: usize, bonds: &[DrawnBond]) -> Self {
         let mut starts = vec![0_usize; atoms + 1];
-        for end in bonds.iter().flat_map(|bond| bond.ends) {
+        let is_hydrogen_bond = |bond: &DrawnBond| bond.kind == BondKind::Hydrogen;
+        let counted = bonds.iter().filter(|bond| !is_hydrogen_bond(bond));
+        for end in counted.flat_map(|bond| bond.ends) {
             starts[end as usize + 1] += 1;
         }
         for atom in 0..atoms {
             starts[atom + 1] += starts[atom];
         }
         let mut next = starts.clone();
-        let mut list = vec![(0, 0); 2 * bonds.len()];
+        let mut list = vec![(0, 0); starts[atoms]];
         for (index, bond) in (0_u32..).zip(bonds) {
+            if is_hydrogen_bond(bond) {
+                continue;
+            }
             let [a, b] = bond.ends;
             for (here, there) in [(a, b), (b, a)] {
                 list[next[here as usize]] = (there, index);
@@ -41,6 +46,9 @@ impl Neighbours {
             in_ring: Vec::new(),
         };
         neighbours.in_ring = neighbours.find_ring_bonds(bonds.len());
+        for (bond, in_ring) in bonds.iter().zip(&mut neighbours.in_ring) {
+            *in_ring &= !is_hydrogen_bond(bond);
+        }
         neighbours
     }
 
@@ -141,10 +149,7 @@ impl Neighbours {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::{
-        Span,
-        molfile::drawing::{BondKind, BondMark},
-    };
+    use crate::{Span, molfile::drawing::BondMark};
 
     fn neighbours(atoms: usize, bonds: &[[u32; 2]]) -> Neighbours {
         let bonds: Vec<_> = bonds

@@ -8,19 +8,24 @@ mod acceptable;
 mod axis;
 mod centre;
 mod chain;
+mod hindered;
+mod metal;
 mod plane;
 mod solid;
 mod vector;
 mod wedge;
 
-use molkin_graph::{DrawnStereo, Parity, Shape};
+use molkin_graph::{
+    DrawnCoordination, DrawnStereo, Element, GroupKind, Parity, Shape, StereoGroup,
+};
 
 use crate::{
     Note,
     molfile::{
+        FlagZero,
         drawing::{BondKind, BondMark, Drawing, DrawnAtom, DrawnBond},
-        lower::Site,
         neighbours::Neighbours,
+        site::Site,
         stereo::vector::Vector,
     },
 };
@@ -45,13 +50,22 @@ struct Scene<'a> {
     dimension: Dimension,
 }
 
+/// What a drawing says about arrangement in space.
+#[derive(Debug, Default)]
+pub(super) struct Marks {
+    pub(super) elements: Vec<DrawnStereo>,
+    pub(super) coordination: Vec<DrawnCoordination>,
+    pub(super) groups: Vec<StereoGroup>,
+}
+
 /// Reads all marks, in the order: tetrahedral centres, then double bonds and axes.
 pub(super) fn marks(
     drawing: &Drawing,
     neighbours: &Neighbours,
     sites: &[Site],
+    flag_zero: FlagZero,
     notes: &mut Vec<Note>,
-) -> Vec<DrawnStereo> {
+) -> Marks {
     let dimension = dimension(&drawing.atoms);
     let scene = Scene {
         drawing,
@@ -59,23 +73,34 @@ pub(super) fn marks(
         sites,
         dimension,
     };
+    let mut marks = Marks {
+        groups: drawing.groups.clone(),
+        ..Marks::default()
+    };
     if dimension == Dimension::None {
         scene.note_no_coordinates(notes);
-        return Vec::new();
+        return marks;
     }
-    let chains = chain::find(&scene);
-    let mut marks = match dimension {
-        Dimension::Solid => solid::centres(&scene),
-        _ => wedge::centres(&scene, &chains, notes),
-    };
+    let mut chains = chain::find(&scene);
+    let axes = hindered::find(&scene, &chains);
+    chains.extend(axes);
+    if dimension == Dimension::Solid {
+        marks.elements = solid::centres(&scene);
+        metal::read(&scene, &mut marks, notes);
+    } else {
+        marks.elements = wedge::centres(&scene, &chains, notes);
+    }
     for chain in &chains {
         if chain.is_axis() {
-            marks.extend(axis::read(&scene, chain, notes));
+            marks.elements.extend(axis::read(&scene, chain, notes));
         } else {
-            marks.push(plane::read(&scene, chain, notes));
+            marks.elements.push(plane::read(&scene, chain, notes));
         }
     }
-    note_chiral_flag(drawing, &marks, notes);
+    if !drawing.chiral && !drawing.grouped {
+        let group = read_flag_zero(&marks.elements, flag_zero, notes);
+        marks.groups.extend(group);
+    }
     marks
 }
 
@@ -120,14 +145,17 @@ impl Scene<'_> {
         }
     }
 
-    /// Whether an atom has a double bond, be it one of an aromatic system.
-    fn is_unsaturated(&self, atom: u32) -> bool {
-        self.site(atom).delocalised
-            || self
-                .neighbours
-                .of(atom)
-                .iter()
-                .any(|&(_, bond)| self.bond(bond).kind == BondKind::Double)
+    /// Whether an atom is a metal, as far as its neighbours can be arranged in other ways than about
+    /// carbon.
+    fn is_metal(&self, atom: u32) -> bool {
+        let element = self.drawing.atoms[atom as usize].element;
+        element.is_metal() && !matches!(element.group(), Some(18)) && element != Element::WILDCARD
+    }
+
+    /// Whether an atom is a metal outside groups 13 to 18: wedges at it are no tetrahedron.
+    fn is_transition_metal(&self, atom: u32) -> bool {
+        let group = self.drawing.atoms[atom as usize].element.group();
+        self.is_metal(atom) && group.is_none_or(|group| group <= 12)
     }
 
     fn note_no_coordinates(&self, notes: &mut Vec<Note>) {
@@ -145,23 +173,33 @@ impl Scene<'_> {
 }
 
 /// The chiral flag says whether the drawn configuration is meant as absolute; most writers leave it
-/// unset on drawings that are, so the marks are read as absolute.
-fn note_chiral_flag(drawing: &Drawing, marks: &[DrawnStereo], notes: &mut Vec<Note>) {
+/// unset on drawings that are.
+fn read_flag_zero(
+    marks: &[DrawnStereo],
+    flag_zero: FlagZero,
+    notes: &mut Vec<Note>,
+) -> Option<StereoGroup> {
     let chiral = |mark: &&DrawnStereo| mark.shape != Shape::DoubleBond && mark.parity.is_some();
     let atoms: Vec<u32> = marks
         .iter()
         .filter(chiral)
         .map(|mark| mark.centres[0])
         .collect();
-    if !drawing.chiral && !atoms.is_empty() {
-        notes.push(Note {
-            code: "chiral-flag-unset",
-            atoms,
-            span: None,
-            text: "the chiral flag is not set; the drawn configuration is read as absolute"
-                .to_owned(),
-        });
+    if atoms.is_empty() {
+        return None;
     }
+    let reading = match flag_zero {
+        FlagZero::Absolute => "as absolute",
+        FlagZero::Mixture => "as a mixture with its mirror image",
+    };
+    notes.push(Note {
+        code: "chiral-flag-unset",
+        atoms: atoms.clone(),
+        span: None,
+        text: format!("the chiral flag is not set; the drawn configuration is read {reading}"),
+    });
+    let kind = GroupKind::And;
+    (flag_zero == FlagZero::Mixture).then_some(StereoGroup { kind, atoms })
 }
 
 /// The parity of four ligands from the signed volume of their positions, the first being the

@@ -3,6 +3,7 @@
 mod errors;
 mod properties;
 mod stereo;
+mod v3000;
 
 use std::fmt::Write;
 

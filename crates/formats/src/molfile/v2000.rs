@@ -66,13 +66,9 @@ fn counted<'a>(
     counts: Span,
 ) -> Result<Line<'a>, Fault> {
     let line = lines.demand(expected)?;
-    if is_end(line) {
+    if line.is_end() {
         let fault = Fault::new(ReadErrorKind::UnexpectedEnd { expected }, line.span());
         return Err(fault.with_related(counts));
     }
     Ok(line)
-}
-
-fn is_end(line: Line<'_>) -> bool {
-    line.text.trim_ascii_end() == b"M  END"
 }

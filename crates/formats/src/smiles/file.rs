@@ -1,6 +1,6 @@
 //! Files of SMILES: one record per line.
 
-use std::io::{self, BufRead};
+use std::io::BufRead;
 
 use super::{ReadOptions, Reader};
 use crate::{
@@ -10,7 +10,7 @@ use crate::{
 
 /// The records of a SMILES file, one for each line.
 ///
-/// A line is a SMILES, white space and a name, and ends in LF or CRLF. Every line counts as a
+/// A line is a SMILES, white space and a name, and ends in LF, CR LF or CR. Every line counts as a
 /// record, a blank or unreadable one too; only the empty text after the last line end does not.
 /// Reading goes on after a record that fails, and ends after an error of the source itself
 /// ([`ReadErrorKind::Io`]). Memory follows the longest line, up to the limit.
@@ -81,16 +81,8 @@ impl<R: BufRead> Iterator for Records<R> {
             }
             Err(error) => {
                 self.ended = true;
-                Some(Err(source_error(&error, number)))
+                Some(Err(ReadError::of_source(&error, number)))
             }
         }
     }
-}
-
-fn source_error(error: &io::Error, line: u32) -> ReadError {
-    let kind = ReadErrorKind::Io {
-        kind: error.kind(),
-        message: error.to_string().into(),
-    };
-    ReadError::new(kind, Span::new(line, 1, 0), b"")
 }

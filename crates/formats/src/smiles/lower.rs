@@ -14,9 +14,11 @@ use crate::ReadErrorKind;
 pub(super) fn lower(
     syntax: &mut Syntax,
     builder: &mut MoleculeBuilder,
+    molecule: &mut Molecule,
     remarks: &mut Remarks,
-) -> Result<Molecule, Fault> {
+) -> Result<(), Fault> {
     builder.clear();
+    builder.reserve(syntax.atoms.len(), syntax.bonds.len());
     if syntax.has_open {
         ring_bonds::settle_open_bonds(syntax);
     }
@@ -25,7 +27,7 @@ pub(super) fn lower(
     add_bonds(syntax, builder)?;
     stereo::add_marks(syntax, builder, remarks)?;
     builder
-        .build()
+        .build_into(molecule)
         .map_err(|error| build_fault(syntax, error, None))
 }
 
@@ -54,7 +56,7 @@ fn add_atoms(
             let number = u64::from(index) + 1;
             let text = format!("{} atom {number} {oddity}", atom.atom.element.name());
             let extent = Extent::new(atom.offset as usize, atom.width as usize);
-            remarks.note("unusual-valence", &[index], extent, text);
+            remarks.note("unusual-valence", &[index], extent, text)?;
         }
     }
     Ok(())

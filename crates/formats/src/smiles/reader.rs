@@ -13,9 +13,10 @@ use crate::{ReadError, ReadErrorKind, Record};
 /// How SMILES is read.
 #[derive(Debug, Clone, Copy, Default)]
 pub struct ReadOptions {
-    /// Refuse what the standard does not allow and no reader can misunderstand: repeated dots, ring
-    /// labels after a branch, unpaired or contradictory `/` and `\`, three and more charge signs,
-    /// `[HH]`, aromatic symbols beyond the standard. By default each of these is read with a note.
+    /// Refuse what is read with a note by default: what the standard does not allow though no reader
+    /// can misunderstand it, as repeated dots and ring labels after a branch, and what can hardly be
+    /// meant, as unusual valences and marks that say nothing. Notes on what the standard expressly
+    /// calls valid remain notes.
     pub strict: bool,
     /// Bounds on a record.
     pub limits: Limits,
@@ -66,38 +67,71 @@ impl Reader {
     /// # Complexity
     /// Linear in the length of the text, save for the matching in aromatic systems.
     pub fn read(&mut self, text: impl AsRef<[u8]>, line: u32) -> Result<Record, ReadError> {
-        let text = text.as_ref();
-        self.read_bytes(text, line).map_err(
-            |Fault {
-                 kind,
-                 extent,
-                 related,
-             }| {
-                let error = ReadError::new(kind, extent.on(line), text);
-                match related {
-                    Some(related) => error.with_related(related.on(line)),
-                    None => error,
-                }
-            },
-        )
+        let mut record = Record::default();
+        self.read_into(text, line, &mut record)?;
+        Ok(record)
     }
 
-    fn read_bytes(&mut self, text: &[u8], line: u32) -> Result<Record, Fault> {
+    /// As [`Reader::read`], into a record that has been worked up, whose storage is reused: no memory
+    /// is asked for where none grows.
+    ///
+    /// # Errors
+    /// As [`Reader::read`]; what the record then holds has no meaning.
+    ///
+    /// # Examples
+    /// ```
+    /// use molkin_formats::{Record, smiles::Reader};
+    ///
+    /// let mut reader = Reader::default();
+    /// let mut record = Record::default();
+    /// let mut atoms = 0;
+    /// for (number, line) in (1..).zip(["CCO ethanol", "O water"]) {
+    ///     reader.read_into(line, number, &mut record)?;
+    ///     atoms += record.molecule.atom_count();
+    /// }
+    /// assert_eq!(atoms, 4);
+    /// # Ok::<(), molkin_formats::ReadError>(())
+    /// ```
+    pub fn read_into(
+        &mut self,
+        text: impl AsRef<[u8]>,
+        line: u32,
+        record: &mut Record,
+    ) -> Result<(), ReadError> {
+        let text = text.as_ref();
+        let outcome = self.read_bytes(text, line, record);
+        outcome.map_err(|fault| {
+            let error = ReadError::new(fault.kind, fault.extent.on(line), text);
+            match fault.related {
+                Some(related) => error.with_related(related.on(line)),
+                None => error,
+            }
+        })
+    }
+
+    fn read_bytes(&mut self, text: &[u8], line: u32, record: &mut Record) -> Result<(), Fault> {
         let ReadOptions { strict, limits } = self.options;
         let limit = limits.line_bytes.min(limits.record_bytes).min(LONGEST);
         if text.len() > limit {
             return Err(Fault::new(ReadErrorKind::LineTooLong { limit }, limit, 0));
         }
-        let mut remarks = Remarks::new(strict, line);
+        record.name.clear();
+        record.properties.clear();
+        record.notes.clear();
+        let mut remarks = Remarks::new(strict, line, std::mem::take(&mut record.notes));
         let length = scan::scan(text, limits.atoms, &mut self.scratch, &mut remarks)?;
         let rest = text[length..].trim_ascii();
         if length == 0 && !rest.is_empty() {
             return Err(Fault::new(ReadErrorKind::NoStructure, 0, 1));
         }
-        let molecule = lower::lower(&mut self.scratch.syntax, &mut self.builder, &mut remarks)?;
+        let Self {
+            scratch, builder, ..
+        } = self;
+        let molecule = &mut record.molecule;
+        lower::lower(&mut scratch.syntax, builder, molecule, &mut remarks)?;
         if molecule.atom_count() == 0 {
             let text = "the record has no atoms";
-            remarks.note("no-atoms", &[], Extent::new(0, 0), text);
+            remarks.note_allowed("no-atoms", &[], Extent::new(0, 0), text);
         }
         if rest.starts_with(b"|") {
             let start = text.len() - text[length..].trim_ascii_start().len();
@@ -107,14 +141,10 @@ impl Reader {
                 &[],
                 Extent::new(start, rest.len()),
                 text,
-            );
+            )?;
         }
-        let name = String::from_utf8_lossy(rest).into_owned();
-        Ok(Record {
-            name,
-            molecule,
-            notes: remarks.into_notes(),
-            properties: Vec::new(),
-        })
+        record.name.push_str(&String::from_utf8_lossy(rest));
+        record.notes = remarks.into_notes();
+        Ok(())
     }
 }

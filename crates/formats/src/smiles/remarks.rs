@@ -51,11 +51,12 @@ pub(super) struct Remarks {
 }
 
 impl Remarks {
-    pub(super) fn new(strict: bool, line: u32) -> Self {
+    /// `notes` is storage to be reused; it should be empty.
+    pub(super) fn new(strict: bool, line: u32, notes: Vec<Note>) -> Self {
         Self {
             strict,
             line,
-            notes: Vec::new(),
+            notes,
         }
     }
 
@@ -63,33 +64,17 @@ impl Remarks {
         self.notes
     }
 
-    /// Adds a note.
+    /// Adds a note; in strict reading it is a fault.
     pub(super) fn note(
         &mut self,
         code: &'static str,
         atoms: &[u32],
         extent: Extent,
         text: impl Into<String>,
-    ) {
-        let span = Some(extent.on(self.line));
-        self.notes.push(Note {
-            code,
-            atoms: atoms.to_vec(),
-            span,
-            text: text.into(),
-        });
-    }
-
-    /// Adds a note on something that the standard does not allow; an error in strict mode.
-    pub(super) fn nonstandard(
-        &mut self,
-        code: &'static str,
-        atoms: &[u32],
-        extent: Extent,
-        text: impl Into<String>,
     ) -> Result<(), Fault> {
+        let text = text.into();
         if self.strict {
-            let text = text.into().into();
+            let text = text.into();
             let kind = ReadErrorKind::NotStandard { code, text };
             return Err(Fault {
                 kind,
@@ -97,7 +82,24 @@ impl Remarks {
                 related: None,
             });
         }
-        self.note(code, atoms, extent, text);
+        self.note_allowed(code, atoms, extent, text);
         Ok(())
+    }
+
+    /// Adds a note on something that the standard expressly calls valid; it stands in strict reading
+    /// too.
+    pub(super) fn note_allowed(
+        &mut self,
+        code: &'static str,
+        atoms: &[u32],
+        extent: Extent,
+        text: impl Into<String>,
+    ) {
+        self.notes.push(Note {
+            code,
+            atoms: atoms.to_vec(),
+            span: Some(extent.on(self.line)),
+            text: text.into(),
+        });
     }
 }

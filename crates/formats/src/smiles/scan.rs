@@ -185,7 +185,7 @@ impl Scanner<'_> {
             let text = "an aromatic bond is written at an atom without an aromatic symbol";
             let extent = Extent::new(at, 1);
             self.remarks
-                .nonstandard("aromatic-bond-outside-aromatic", &ends, extent, text)?;
+                .note("aromatic-bond-outside-aromatic", &ends, extent, text)?;
         }
         Ok(kind)
     }

@@ -1,7 +1,11 @@
 //! What the text says, before chemistry is read into it: atoms, bonds, and for each atom the order
 //! in which its bonds are written. Flat arrays that a reader reuses from record to record.
 
-use molkin_graph::{Atom, BondOrder, Element};
+use molkin_graph::BondOrder;
+
+mod atom;
+
+pub(super) use self::atom::{AtomSyntax, AtomToken, StereoTag, TagClass};
 
 /// Stands for "no atom", "no bond" or "no place".
 pub(super) const NONE: u32 = u32::MAX;
@@ -51,104 +55,10 @@ pub(super) struct BondSyntax {
     pub(super) ends: [u32; 2],
     pub(super) kind: BondKind,
     pub(super) slope: Slope,
-    /// Whether a double bond has made use of the slope.
-    pub(super) used: bool,
+    /// How many double bonds make use of the slope.
+    pub(super) uses: u8,
     pub(super) offset: u32,
     pub(super) width: u32,
-}
-
-/// Which arrangement a stereo tag speaks of.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub(super) enum TagClass {
-    /// `@` or `@@`: what the number of ligands suggests.
-    Plain,
-    Tetrahedral,
-    Allene,
-}
-
-/// The stereo tag of a bracket atom.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub(super) struct StereoTag {
-    pub(super) class: TagClass,
-    pub(super) clockwise: bool,
-}
-
-/// An atom as its own text gives it.
-#[derive(Debug, Clone, Copy)]
-pub(super) struct AtomToken {
-    pub(super) atom: Atom,
-    pub(super) aromatic: bool,
-    pub(super) bracket: bool,
-    pub(super) tag: Option<StereoTag>,
-}
-
-impl AtomToken {
-    /// An atom written without brackets; its hydrogens follow from its bonds.
-    #[inline]
-    pub(super) fn bare(element: Element, aromatic: bool) -> Self {
-        Self {
-            atom: Atom::new(element),
-            aromatic,
-            bracket: false,
-            tag: None,
-        }
-    }
-}
-
-/// An atom.
-#[derive(Debug, Clone, Copy)]
-pub(super) struct AtomSyntax {
-    pub(super) atom: Atom,
-    pub(super) tag: Option<StereoTag>,
-    pub(super) aromatic: bool,
-    pub(super) bracket: bool,
-    /// Whether it is bonded to an atom before it in its chain; that bond is then its first one.
-    pub(super) preceded: bool,
-    /// Whether a branch has been opened at it.
-    pub(super) branched: bool,
-    /// Whether one of its bonds is delocalised.
-    pub(super) delocalised: bool,
-    /// Whether one of its bonds is written as double, triple or quadruple.
-    pub(super) multiple: bool,
-    pub(super) degree: u32,
-    /// The sum of its bond orders, a delocalised bond counted as 1.
-    pub(super) order_sum: u32,
-    pub(super) offset: u32,
-    pub(super) width: u32,
-    first: u32,
-    last: u32,
-}
-
-impl AtomSyntax {
-    /// An atom without bonds yet; `place` is the offset and width of its text.
-    #[inline]
-    pub(super) fn new(token: AtomToken, preceded: bool, place: (u32, u32)) -> Self {
-        Self {
-            atom: token.atom,
-            tag: token.tag,
-            aromatic: token.aromatic,
-            bracket: token.bracket,
-            preceded,
-            branched: false,
-            delocalised: false,
-            multiple: false,
-            degree: 0,
-            order_sum: 0,
-            offset: place.0,
-            width: place.1,
-            first: NONE,
-            last: NONE,
-        }
-    }
-
-    /// Whether an aromatic bond symbol belongs here by the standard.
-    pub(super) fn may_be_aromatic(&self) -> bool {
-        self.aromatic || self.is_wildcard()
-    }
-
-    fn is_wildcard(&self) -> bool {
-        self.atom.element == Element::WILDCARD
-    }
 }
 
 /// One end of a bond, in the list of the atom that it sits on.
@@ -191,33 +101,37 @@ impl Syntax {
     /// Takes the next place in the text order of the atom's bonds, to be filled by
     /// [`Syntax::link_places`].
     pub(super) fn reserve_place(&mut self, atom: u32) -> u32 {
-        self.push_place(atom, NONE, NONE)
+        let place = self.places.len() as u32;
+        let last = self.atoms[atom as usize].append(place);
+        self.push_place(last, NONE, NONE);
+        place
     }
 
+    /// Adds a place behind the one that was the last of its atom.
     #[inline]
-    fn push_place(&mut self, atom: u32, other: u32, bond: u32) -> u32 {
+    fn push_place(&mut self, last: u32, other: u32, bond: u32) {
         let place = self.places.len() as u32;
         self.places.push(Place {
             other,
             bond,
             next: NONE,
         });
-        let owner = &mut self.atoms[atom as usize];
-        let last = std::mem::replace(&mut owner.last, place);
-        if last == NONE {
-            owner.first = place;
-        } else {
-            self.places[last as usize].next = place;
+        if let Some(last) = self.places.get_mut(last as usize) {
+            last.next = place;
         }
-        place
     }
 
     /// Adds a bond between two atoms, last in the text order of both so far.
     #[inline]
     pub(super) fn link(&mut self, a: u32, b: u32, kind: BondKind, slope: Slope, place: (u32, u32)) {
         let bond = self.bonds.len() as u32;
-        self.push_place(a, b, bond);
-        self.push_place(b, a, bond);
+        for (atom, other) in [(a, b), (b, a)] {
+            let next = self.places.len() as u32;
+            let atom = &mut self.atoms[atom as usize];
+            atom.count(kind);
+            let last = atom.append(next);
+            self.push_place(last, other, bond);
+        }
         self.push_bond([a, b], kind, slope, place);
     }
 
@@ -236,22 +150,14 @@ impl Syntax {
             place.other = other;
             place.bond = bond;
         }
+        for atom in ends {
+            self.atoms[atom as usize].count(kind);
+        }
         self.push_bond(ends, kind, slope, place);
     }
 
     #[inline]
     fn push_bond(&mut self, ends: [u32; 2], kind: BondKind, slope: Slope, place: (u32, u32)) {
-        let pairs = match kind {
-            BondKind::Order(order) => u32::from(order.pairs()),
-            BondKind::Delocalised | BondKind::Open => 1,
-        };
-        for atom in ends {
-            let atom = &mut self.atoms[atom as usize];
-            atom.degree += 1;
-            atom.order_sum += pairs;
-            atom.multiple |= pairs > 1;
-            atom.delocalised |= kind == BondKind::Delocalised;
-        }
         self.has_slopes |= slope != Slope::Unmarked;
         self.has_open |= kind == BondKind::Open;
         let (offset, width) = place;
@@ -259,7 +165,7 @@ impl Syntax {
             ends,
             kind,
             slope,
-            used: false,
+            uses: 0,
             offset,
             width,
         });

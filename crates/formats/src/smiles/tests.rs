@@ -7,6 +7,7 @@ use super::{ReadOptions, Reader};
 use crate::{ReadError, Record};
 
 mod aromatic;
+mod coordination;
 mod errors;
 mod file;
 mod hostile;
@@ -50,6 +51,7 @@ fn bonds(molecule: &Molecule) -> Vec<String> {
         BondOrder::Double => '=',
         BondOrder::Triple => '#',
         BondOrder::Quadruple => '$',
+        BondOrder::Coordination | BondOrder::Hydrogen => panic!("{order:?} in SMILES"),
     };
     let mut bonds: Vec<String> = molecule
         .bonds()

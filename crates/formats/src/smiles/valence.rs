@@ -22,17 +22,19 @@ fn listed(element: Element) -> &'static [u32] {
 /// They fill the smallest listed valence that the bonds do not exceed. An aromatic atom uses its
 /// lowest valence only, one unit of which goes to the ring unless a multiple bond has taken it.
 pub(super) fn implicit_hydrogens(atom: &AtomSyntax) -> u8 {
-    let valences = listed(atom.atom.element);
-    let free = if atom.aromatic {
-        let ring = u32::from(!atom.multiple);
-        valences
-            .first()
-            .map_or(0, |valence| valence.saturating_sub(atom.order_sum + ring))
-    } else {
-        let fits = valences.iter().find(|&&valence| valence >= atom.order_sum);
-        fits.map_or(0, |valence| valence - atom.order_sum)
-    };
-    free as u8
+    if !atom.aromatic {
+        return hydrogens_beside(atom.atom.element, atom.order_sum);
+    }
+    let ring = u32::from(!atom.multiple);
+    let lowest = listed(atom.atom.element).first();
+    lowest.map_or(0, |valence| valence.saturating_sub(atom.order_sum + ring)) as u8
+}
+
+/// The hydrogens of a bare symbol that is not aromatic, beside bonds whose orders have this sum.
+pub(super) fn hydrogens_beside(element: Element, order_sum: u32) -> u8 {
+    let mut valences = listed(element).iter();
+    let fits = valences.find(|&&valence| valence >= order_sum);
+    fits.map_or(0, |valence| valence - order_sum) as u8
 }
 
 /// What the valences of an atom call for as a remark, if anything.
@@ -46,12 +48,14 @@ pub(super) fn oddity(atom: &AtomSyntax, demand: PiDemand) -> Option<&'static str
         hydrogens,
         ..
     } = atom.atom;
-    if charge != 0 {
+    let listed = listed(element);
+    // By far most atoms are bare and within the first valence, a bond of the ring included.
+    if charge != 0 || !atom.bracket && atom.order_sum <= *listed.first()? {
         return None;
     }
     let most = match element {
         Element::CHLORINE | Element::BROMINE | Element::IODINE => 7,
-        _ => *listed(element).last()?,
+        _ => *listed.last()?,
     };
     let ring = u32::from(atom.aromatic && demand == PiDemand::Needed);
     if atom.order_sum + u32::from(hydrogens) + ring > most {
@@ -93,6 +97,12 @@ fn electrons_left(atom: &AtomSyntax) -> Option<i64> {
 pub(super) fn has_lone_pair(atom: &AtomSyntax, demand: PiDemand) -> bool {
     let ring = i64::from(atom.aromatic && demand == PiDemand::Needed);
     electrons_left(atom).is_some_and(|left| left - ring >= 2)
+}
+
+/// Whether a site of a coordination polyhedron can be without a ligand: a lone pair is in its place,
+/// or on transition metals and atoms of unknown element nothing that can be told.
+pub(super) fn may_have_lone_pair(atom: &AtomSyntax) -> bool {
+    electrons_left(atom).is_none_or(|left| left >= 2)
 }
 
 /// Whether an aromatic atom takes part in a double bond of its ring.

@@ -14,14 +14,21 @@ mod search;
 mod slopes;
 mod structure;
 mod tags;
+mod tree;
 mod units;
 
 #[cfg(test)]
 mod tests;
 
-use molkin_graph::{CanonicalForm, Shape};
+use molkin_graph::{BondOrder, CanonicalForm, Polyhedron, Shape};
 
-use self::{emit::Emitter, layout::Layout, slopes::Slopes, structure::Structure, tags::Tags};
+use self::{
+    emit::Emitter,
+    layout::Layout,
+    slopes::Slopes,
+    structure::{ArcTable, Structure},
+    tags::Tags,
+};
 
 /// A molecule as text.
 #[derive(Debug, Clone, Default, PartialEq, Eq)]
@@ -39,12 +46,28 @@ pub struct Written {
 pub enum Lost {
     /// A marked arrangement: one of a mobile double bond that stands as single in the structure that
     /// is written, or of a double bond that cannot get its `/` or `\` without a contradiction or
-    /// without marking a neighbour as well. It is left out.
+    /// without marking a neighbour as well, or of an axis that is a single bond. It is left out.
     Arrangement {
         /// The geometry.
         shape: Shape,
         /// The centre twice, or the two ends.
         centres: [u32; 2],
+    },
+    /// The arrangement about a centre that is not tetrahedral: it has more than one empty site, or a
+    /// ligand that is left out. The tag is left out.
+    Coordination {
+        /// The polyhedron.
+        polyhedron: Polyhedron,
+        /// The centre.
+        centre: u32,
+    },
+    /// A bond that the notation has no symbol for: a coordination bond, written as single, or a
+    /// hydrogen bond, left out.
+    Bond {
+        /// Its atoms.
+        atoms: [u32; 2],
+        /// What it is.
+        order: BondOrder,
     },
     /// More ring bonds are open at once than there are labels, 1 to 99. Those beyond are written as
     /// `%(100)` and so on, which is outside the standard and is not read back.
@@ -86,36 +109,64 @@ pub enum Lost {
 /// # Ok::<(), Box<dyn std::error::Error>>(())
 /// ```
 pub fn write(form: &CanonicalForm) -> Written {
-    let structure = Structure::new(form);
-    let layout = Layout::new(&structure);
-    let planar_or_axial = form
-        .stereo
-        .iter()
-        .any(|element| element.shape != Shape::Tetrahedral);
-    let rows = if planar_or_axial {
-        rows::find(&structure)
-    } else {
-        Vec::new()
-    };
-    let mut lost = Vec::new();
-    let mut shown: Vec<u8> = form.atoms.iter().map(atom::shown_hydrogens).collect();
-    let mut slopes = Slopes::solve(&structure, &layout, &rows, &mut lost);
-    slopes.show_hydrogens(&structure, &mut shown);
-    let tags = Tags::new(&structure, &layout, &rows, &shown, &mut lost);
-    if layout.highest_label > layout::LAST_LABEL {
-        lost.push(Lost::RingLabels {
-            highest: layout.highest_label,
-        });
+    Writer::default().write(form)
+}
+
+/// Writes canonical forms and reuses its storage from one to the next; see [`write`].
+///
+/// # Examples
+/// ```
+/// use molkin_formats::smiles;
+/// use molkin_graph::{Limits, Orderer};
+///
+/// let mut orderer = Orderer::new(Limits::default());
+/// let mut writer = smiles::Writer::default();
+/// let mut texts = Vec::new();
+/// for text in ["OCC", "C(O)C"] {
+///     let canonical = orderer.order(&smiles::parse(text)?)?;
+///     texts.push(writer.write(&canonical.form()).text);
+/// }
+/// assert_eq!(texts[0], texts[1]);
+/// # Ok::<(), Box<dyn std::error::Error>>(())
+/// ```
+#[derive(Debug, Default)]
+pub struct Writer {
+    arcs: ArcTable,
+    layout: Layout,
+}
+
+impl Writer {
+    /// Writes a canonical form as [`write`] does.
+    pub fn write(&mut self, form: &CanonicalForm) -> Written {
+        let structure = Structure::new(form, &mut self.arcs);
+        self.layout.plan(&structure);
+        let layout = &self.layout;
+        let mut lost = Vec::new();
+        structure.report_lost_bonds(&mut lost);
+        let mut elements = form.stereo.iter();
+        let mut rows = Vec::new();
+        if elements.any(|element| element.shape != Shape::Tetrahedral) {
+            rows = rows::find(&structure);
+        }
+        let mut shown: Vec<u8> = form.atoms.iter().map(atom::shown_hydrogens).collect();
+        let mut slopes = Slopes::solve(&structure, layout, &rows, &mut lost);
+        slopes.show_hydrogens(&structure, &mut shown);
+        let tags = Tags::new(&structure, layout, &rows, &shown, &mut lost);
+        if layout.highest_label > layout::LAST_LABEL {
+            lost.push(Lost::RingLabels {
+                highest: layout.highest_label,
+            });
+        }
+        lost.sort_unstable();
+        let emitter = Emitter {
+            structure: &structure,
+            layout,
+            shown: &shown,
+            tags: &tags,
+            slopes: &mut slopes,
+            text: String::with_capacity(2 * form.atoms.len()),
+        };
+        let text = emitter.emit();
+        Written { text, lost }
     }
-    lost.sort_unstable();
-    let text = Emitter {
-        structure: &structure,
-        layout: &layout,
-        shown: &shown,
-        tags: &tags,
-        slopes: &mut slopes,
-        text: String::new(),
-    }
-    .emit();
-    Written { text, lost }
 }

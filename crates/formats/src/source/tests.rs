@@ -16,6 +16,8 @@ use super::{Format, ReadOptions, Records, SourceError};
 #[case("a.sd", Some((Format::Sdf, false)))]
 #[case("a.sdf.gz", Some((Format::Sdf, true)))]
 #[case("a.SMI.GZ", Some((Format::Smiles, true)))]
+#[case("a.csv", Some((Format::Csv, false)))]
+#[case("a.Tsv.gz", Some((Format::Tsv, true)))]
 #[case("a.gz", None)]
 #[case("a.txt", None)]
 #[case("smi", None)]
@@ -30,9 +32,18 @@ const WATER: &str = "water\n\n\n  1  0  0  0  0  0            999 V2000\n    0.0
 #[case::sdf(WATER, Format::Sdf)]
 #[case::cut_short("water\n\n\n  1  0", Format::Smiles)]
 #[case::smiles("CCO\n\n\nC\n", Format::Smiles)]
+#[case::heading("SMILES name\nC methane\n", Format::Smiles)]
 #[case::empty("", Format::Smiles)]
 fn formats_by_content(#[case] text: &str, #[case] expected: Format) {
     assert_eq!(Format::guess(text.as_bytes()), expected);
+}
+
+#[cfg(feature = "table")]
+#[rstest]
+#[case("\u{feff}id;Smiles\r\n1;C\r\n")]
+#[case("SMILES\tname\rC\tmethane\r")]
+fn tables_by_their_header(#[case] text: &str) {
+    assert_eq!(Format::guess(text.as_bytes()), Format::Csv);
 }
 
 /// Index, name and success of each record.
@@ -73,6 +84,16 @@ fn a_molfile_is_at_least_one_record() {
     assert!(read("", Format::Sdf).is_empty());
 }
 
+/// All that can be streams.
+const FORMATS: &[Format] = &[
+    Format::Smiles,
+    Format::Sdf,
+    #[cfg(feature = "table")]
+    Format::Csv,
+    #[cfg(feature = "table")]
+    Format::Tsv,
+];
+
 #[test]
 fn a_source_that_breaks_off_names_itself() {
     struct Broken;
@@ -81,9 +102,9 @@ fn a_source_that_breaks_off_names_itself() {
             Err(io::Error::other("the cable was pulled"))
         }
     }
-    for format in [Format::Smiles, Format::Sdf] {
+    for format in FORMATS {
         let source = BufReader::new(Broken);
-        let mut records = Records::new("lot 7", source, format, ReadOptions::default());
+        let mut records = Records::new("lot 7", source, *format, ReadOptions::default());
         let error = records.next().unwrap().unwrap_err();
         assert_eq!(error.to_string(), "lot 7, line 1: the cable was pulled");
         assert!(records.next().is_none());
@@ -94,8 +115,6 @@ fn a_source_that_breaks_off_names_itself() {
 fn what_cannot_be_opened() {
     let open = |name: &str| Records::open(Path::new(name), ReadOptions::default()).unwrap_err();
     assert!(matches!(open("a.txt"), SourceError::UnknownFormat { .. }));
-    assert!(matches!(open("a.csv"), SourceError::TableFormat { .. }));
-    assert!(matches!(open("a.tsv.gz"), SourceError::TableFormat { .. }));
     assert!(matches!(
         open("no such folder/a.mol"),
         SourceError::Open { .. }
@@ -104,6 +123,46 @@ fn what_cannot_be_opened() {
         open("no such folder/a.mol")
             .to_string()
             .starts_with("no such folder/a.mol: ")
+    );
+}
+
+#[cfg(not(feature = "table"))]
+#[test]
+fn tables_need_the_feature() {
+    let error = Records::open(Path::new("a.csv"), ReadOptions::default()).unwrap_err();
+    assert!(matches!(error, SourceError::NoTables { .. }));
+}
+
+#[cfg(feature = "table")]
+#[test]
+fn a_table_without_structures_ends_with_its_header() {
+    let open = |text: &'static str, format| {
+        let mut records = Records::new("lot", text.as_bytes(), format, ReadOptions::default());
+        let error = records.next().unwrap().unwrap_err();
+        assert!(records.next().is_none());
+        error.to_string()
+    };
+    assert_eq!(
+        open("CCO,1\nCC,2\n", Format::Csv),
+        r#"lot: no column is known to hold structures; there are: "CCO", "1""#
+    );
+    assert_eq!(
+        open("smiles,id\nC,1\n", Format::Tsv),
+        r#"lot: no column is known to hold structures; there are: "smiles,id""#
+    );
+    assert_eq!(
+        open("\n\n", Format::Csv),
+        "lot: the table is empty; its first line should name the columns"
+    );
+    assert_eq!(
+        open("smiles,\"id\nC,1\n", Format::Csv),
+        "lot: the header: 1:8: the quote is opened and not closed"
+    );
+    let rows = read("name,smiles\na,CC\nb,C(C\n,O\n", Format::Csv);
+    let expected = [(1, "a", true), (2, "b", false), (3, "", true)];
+    assert_eq!(
+        rows,
+        expected.map(|(index, name, good)| (index, name.to_owned(), good))
     );
 }
 

@@ -10,46 +10,67 @@ use super::valence;
 
 /// Rewrites charges and bond orders of the skeleton in place.
 ///
-/// A π bond between two over-full atoms stays as drawn: giving the charge to either would let the
-/// numbering decide.
+/// A π bond between two over-full atoms waits until one of them is full: giving the charge to either
+/// would let the numbering decide. So the table is applied in rounds, each decided by what was
+/// over-full at its start; what is left between two over-full atoms stays as drawn.
 pub(super) fn separate(skeleton: &mut Skeleton) {
-    let over_full: Vec<bool> = (0..skeleton.len() as u32)
-        .map(|atom| {
-            let element = skeleton.atoms[atom as usize].element;
-            valence::is_group_15_to_17(element) && excess(skeleton, atom) > 0
-        })
-        .collect();
-    for atom in 0..skeleton.len() as u32 {
-        if !over_full[atom as usize] {
-            continue;
+    loop {
+        let over_full: Vec<bool> = (0..skeleton.len() as u32)
+            .map(|atom| is_over_full(skeleton, atom))
+            .collect();
+        let mut changed = false;
+        for atom in 0..skeleton.len() as u32 {
+            if !over_full[atom as usize] {
+                continue;
+            }
+            while excess(skeleton, atom) > 0
+                && let Some(bond) = pi_bond(skeleton, atom, &over_full)
+            {
+                separate_bond(skeleton, atom, bond);
+                changed = true;
+            }
         }
-        while excess(skeleton, atom) > 0 {
-            let Some(bond) = pi_bond(skeleton, atom, &over_full) else {
-                break;
-            };
-            let other = {
-                let bond = &mut skeleton.bonds[bond as usize];
-                bond.order -= 1;
-                bond.a ^ bond.b ^ atom
-            };
-            let centre = &mut skeleton.atoms[atom as usize];
-            centre.charge = centre.charge.saturating_add(1);
-            let neighbour = &mut skeleton.atoms[other as usize];
-            neighbour.charge = neighbour.charge.saturating_sub(1);
+        if !changed {
+            return;
         }
     }
+}
+
+fn separate_bond(skeleton: &mut Skeleton, centre: u32, bond: u32) {
+    let other = {
+        let bond = &mut skeleton.bonds[bond as usize];
+        bond.order -= 1;
+        bond.a ^ bond.b ^ centre
+    };
+    let centre = &mut skeleton.atoms[centre as usize];
+    centre.charge = centre.charge.saturating_add(1);
+    let neighbour = &mut skeleton.atoms[other as usize];
+    neighbour.charge = neighbour.charge.saturating_sub(1);
+}
+
+/// Whether an atom of groups 15–17 has more electrons about it than an octet, in bonds that it has
+/// the electrons for. (With more bonds than valence electrons a drawing means nothing; it stays.)
+fn is_over_full(skeleton: &Skeleton, atom: u32) -> bool {
+    let record = &skeleton.atoms[atom as usize];
+    let electrons = 8 - valence::neutral(record.element);
+    valence::is_group_15_to_17(record.element)
+        && excess(skeleton, atom) > 0
+        && drawn(skeleton, atom) + i32::from(record.charge) <= electrons
+}
+
+/// Electron pairs in the bonds of an atom.
+fn drawn(skeleton: &Skeleton, atom: u32) -> i32 {
+    let bonds = skeleton
+        .arcs(atom)
+        .iter()
+        .map(|&(_, bond)| i32::from(skeleton.pairs(bond)));
+    bonds.sum::<i32>() + i32::from(skeleton.atoms[atom as usize].hydrogens)
 }
 
 /// How far the electrons about an atom exceed its octet.
 fn excess(skeleton: &Skeleton, atom: u32) -> i32 {
     let record = &skeleton.atoms[atom as usize];
-    let drawn: i32 = skeleton
-        .arcs(atom)
-        .iter()
-        .map(|&(_, bond)| i32::from(skeleton.pairs(bond)))
-        .sum::<i32>()
-        + i32::from(record.hydrogens);
-    drawn - valence::neutral(record.element) - i32::from(record.charge)
+    drawn(skeleton, atom) - valence::neutral(record.element) - i32::from(record.charge)
 }
 
 /// A π bond to give up: one to a neighbour of oxygen's group if there is one. Among equals the choice

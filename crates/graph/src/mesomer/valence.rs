@@ -54,7 +54,8 @@ fn charged(element: Element, charge: i32) -> i32 {
     match element.group() {
         Some(13) => 3 - charge,
         Some(14) => 4 - charge.abs(),
-        _ => neutral(element) + charge,
+        // Lone pairs become bonds as charge rises, until the electrons run out.
+        _ => (neutral(element) + charge).min(8 - neutral(element) - charge),
     }
 }
 
@@ -117,12 +118,10 @@ fn room(skeleton: &Skeleton, covered: &[Option<u8>], atom: u32, open: u8) -> Opt
     let left = neutral(record.element) - sigma;
     let pi = left.clamp(0, 2);
     let hetero = is_group_15_to_17(record.element);
-    // Four pairs are an octet; second-row centres above their valence take a π bond only where one
-    // is drawn (sulfur trioxide), never by rearrangement.
+    // Four pairs are an octet. Centres below the second row may take a π bond beyond the charge that
+    // their σ bonds enforce (sulfur trioxide).
     let octet_room = (4 - sigma).clamp(0, 2) > pi;
-    let onium = hetero
-        && octet_room
-        && (left >= 0 || (left == -1 && record.element.period() >= 3 && pi_drawn > 0));
+    let onium = hetero && octet_room && (left >= 0 || (left == -1 && record.element.period() >= 3));
     let outside = pi_drawn > pi + i32::from(onium) + i32::from(record.element == Element::BORON)
         || (record.element == Element::BORON && (record.charge > 0 || sigma > 3));
     (!outside).then_some(Valence {

@@ -1,4 +1,5 @@
-//! Axes of chirality: allenes and longer chains of an even number of double bonds.
+//! Axes of chirality: allenes and longer chains of an even number of double bonds, and single bonds
+//! about which rotation is hindered.
 
 use molkin_graph::{DrawnStereo, Ligand, Parity, Shape};
 
@@ -72,7 +73,9 @@ fn height(scene: &Scene<'_>, end: u32, ligands: [Ligand; 2]) -> Result<Option<f6
     Ok(found)
 }
 
-/// The end with wedges stands upright, the other lies in the plane.
+/// The end with wedges stands upright, the other lies in the plane. About a single bond the planes
+/// of the ends may be turned by any angle, so wedges at both ends can go together: alike on opposite
+/// sides of the axis, contrary on the same side.
 fn from_wedges(
     scene: &Scene<'_>,
     chain: &Chain,
@@ -81,6 +84,13 @@ fn from_wedges(
     let [a, b] = chain.ends;
     let axis = scene.direction(a, b).unit()?;
     let upright = |height: f64| Vector([0.0, 0.0, height]);
+    if chain.is_single() {
+        let raised = |at: usize| {
+            let flat = plane::side(scene, chain.ends[at], chain.ligands[at], axis)?;
+            Some(flat + upright(heights[at].ok()?.unwrap_or(0.0)))
+        };
+        return turn(axis, raised(0)?, raised(1)?);
+    }
     match heights {
         [Ok(Some(height)), Ok(None)] => turn(
             axis,

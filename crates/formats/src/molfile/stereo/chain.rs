@@ -1,4 +1,6 @@
 //! Double bonds and cumulated chains of them, with what is attached at their ends.
+//!
+//! A single bond about which rotation is hindered is a chain of no double bond.
 
 use molkin_graph::Ligand;
 
@@ -10,14 +12,14 @@ use crate::molfile::{
 /// The largest ring in which a double bond can only be cis.
 const FORCED_RING: usize = 7;
 
-/// A double bond, or several in a row.
+/// A double bond, or several in a row, or none.
 #[derive(Debug)]
 pub(super) struct Chain {
     /// The atoms at its two ends.
     pub(super) ends: [u32; 2],
     /// What the ends carry, atoms first.
     pub(super) ligands: [[Ligand; 2]; 2],
-    /// The number of double bonds.
+    /// The number of double bonds; 0 for a single bond.
     length: usize,
     /// Whether a bond of the chain is drawn crossed.
     pub(super) crossed: bool,
@@ -27,6 +29,20 @@ impl Chain {
     /// Whether the ends stand at right angles, as those of an allene do.
     pub(super) fn is_axis(&self) -> bool {
         self.length.is_multiple_of(2)
+    }
+
+    /// A single bond between two ends.
+    pub(super) fn single(ends: [u32; 2], ligands: [[Ligand; 2]; 2]) -> Self {
+        Self {
+            ends,
+            ligands,
+            length: 0,
+            crossed: false,
+        }
+    }
+
+    pub(super) fn is_single(&self) -> bool {
+        self.length == 0
     }
 
     /// The ligands in the order of a stereo mark.

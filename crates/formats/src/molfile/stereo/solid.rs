@@ -4,7 +4,7 @@ use molkin_graph::{DrawnStereo, Element, Ligand};
 
 use crate::molfile::{
     drawing::BondMark,
-    stereo::{Scene, centre, vector::Vector},
+    stereo::{Scene, centre, metal, vector::Vector},
 };
 
 /// Marks every atom with four ligands in space that are not flat, unless two of them are plain
@@ -13,6 +13,7 @@ use crate::molfile::{
 pub(super) fn centres(scene: &Scene<'_>) -> Vec<DrawnStereo> {
     (0_u32..)
         .zip(&scene.drawing.atoms)
+        .filter(|&(atom, _)| !metal::is_arranged(scene, atom))
         .filter_map(|(atom, _)| centre(scene, atom))
         .collect()
 }

@@ -5,7 +5,7 @@ use molkin_graph::{DrawnStereo, Parity};
 use crate::{
     Note,
     molfile::{
-        drawing::{BondKind, BondMark},
+        drawing::BondMark,
         stereo::{
             Scene,
             acceptable::{self, Stroke, Unclear},
@@ -46,17 +46,21 @@ pub(super) fn centres(
     let in_chain = |atom: u32, axis: bool| ends.binary_search(&(atom, axis)).is_ok();
     let mut marks = Vec::new();
     for atom in starts {
+        if in_chain(atom, true) {
+            continue;
+        }
         let wavy = scene
             .strokes(atom)
             .any(|(mark, _)| mark == BondMark::Either);
-        if let Some(ligands) = scene.ligands(atom) {
+        let ligands = scene.ligands(atom);
+        if let Some(ligands) = ligands.filter(|_| !scene.is_transition_metal(atom)) {
             let parity = if wavy {
                 None
             } else {
                 scene.parity_from_wedges(atom, notes)
             };
             marks.push(centre::mark(atom, ligands, parity));
-        } else if !(in_chain(atom, true) || wavy && in_chain(atom, false)) {
+        } else if !(wavy && in_chain(atom, false)) {
             scene.note_no_centre(atom, notes);
         }
     }
@@ -113,37 +117,18 @@ impl Scene<'_> {
         centre::parity(&directions, FLAT).ok_or(Unclear::Flat)
     }
 
-    /// A wedge at an atom that has no four ligands: the mark of a hindered axis, or a slip.
+    /// A wedge at an atom that can be no centre and no end of an axis.
     fn note_no_centre(&self, atom: u32, notes: &mut Vec<Note>) {
-        let flat = |atom: u32| self.is_unsaturated(atom) && self.neighbours.of(atom).len() == 3;
-        let across = flat(atom)
-            .then(|| {
-                self.neighbours.of(atom).iter().find(|&&(there, bond)| {
-                    self.bond(bond).kind == BondKind::Single
-                        && flat(there)
-                        && !self.neighbours.in_ring_within(7, bond, [atom, there])
-                })
-            })
-            .flatten();
+        let metal = self.is_transition_metal(atom);
         let number = atom.saturating_add(1);
-        let span = self.drawing.atoms.get(atom as usize).map(|atom| atom.span);
-        notes.push(match across {
-            Some(&(there, _)) => Note {
-                code: "axis-not-read",
-                atoms: vec![atom, there],
-                span,
-                text: format!(
-                    "the wedge at atom {number} may mark the axis {number}-{}, which is not read yet",
-                    there.saturating_add(1)
-                ),
-            },
-            None => Note {
-                code: "stereo-bond-ignored",
-                atoms: vec![atom],
-                span,
-                text: format!(
-                    "a wedge or wavy bond starts at atom {number}, which cannot be a stereocentre"
-                ),
+        notes.push(Note {
+            code: if metal { "metal-wedges-ignored" } else { "stereo-bond-ignored" },
+            atoms: vec![atom],
+            span: self.drawing.atoms.get(atom as usize).map(|atom| atom.span),
+            text: if metal {
+                format!("wedges start at the metal atom {number}; a flat drawing does not say how its ligands are arranged")
+            } else {
+                format!("a wedge or wavy bond starts at atom {number}, which cannot be a stereocentre")
             },
         });
     }

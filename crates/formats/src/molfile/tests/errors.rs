@@ -99,7 +99,7 @@ fn bonds() {
       |       ^^^
     ");
     assert_snapshot!(broken("  2  3  1", "  2  3 -1"), @r"
-    9:7: the bond type must be from 1 to 4
+    9:7: the bond type must be from 1 to 10
     9 |   2  3 -1  0
       |       ^^^
     ");
@@ -138,9 +138,9 @@ fn header() {
       | ^^^^^^^^^^^
     ");
     assert_snapshot!(broken("V2000", "V3000"), @r"
-    4:34: a molfile of version 3000 is not read
-    4 |   3  2  0  0  0  0            999 V3000
-      |                                  ^^^^^^
+    5:1: this is not a line that starts with M  V30
+    5 |     0.0000    0.0000    0.0000 C   0  0
+      | ^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^
     ");
     assert_snapshot!(broken("V2000", "V4000"), @r"
     4:34: this is not V2000 or V3000

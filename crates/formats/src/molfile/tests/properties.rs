@@ -147,13 +147,24 @@ fn aromatic_rings(#[case] symbols: &[&str], #[case] double: usize, #[case] hydro
     );
 }
 
-/// Which nitrogen of pyrrole or imidazole has the hydrogen cannot be read off aromatic bonds.
+/// A hydrogen that only one nitrogen can have is read there.
+#[test]
+fn the_hydrogen_of_pyrrole_has_one_place() {
+    let record = read(&ring(&["C", "C", "N", "C", "C"]));
+    assert_eq!(record.molecule.formula().to_string(), "C4H5N");
+    assert_eq!(codes(&record), ["hydrogen-placed"]);
+    assert_eq!(record.notes[0].atoms, [2]);
+}
+
+/// Which nitrogen of imidazole has the hydrogen cannot be read off aromatic bonds; no nitrogen helps
+/// cyclopentadienyl.
 #[rstest]
-#[case::pyrrole(&["N", "C", "C", "C", "C"])]
-#[case::imidazole(&["N", "C", "N", "C", "C"])]
-fn aromatic_rings_that_need_a_hydrogen(#[case] symbols: &[&str]) {
+#[case::imidazole(&["N", "C", "N", "C", "C"], "hydrogens-undetermined")]
+#[case::triazole(&["N", "N", "N", "C", "C"], "hydrogens-undetermined")]
+#[case::cyclopentadienyl(&["C", "C", "C", "C", "C"], "no-kekule-structure")]
+fn aromatic_rings_that_need_a_hydrogen(#[case] symbols: &[&str], #[case] code: &str) {
     let error = molfile::parse(ring(symbols).as_bytes()).unwrap_err();
-    assert_eq!(error.code(), "no-kekule-structure");
+    assert_eq!(error.code(), code);
 }
 
 fn ring(symbols: &[&str]) -> String {

@@ -1,9 +1,9 @@
 //! Marks from drawings.
 
-use molkin_graph::{Ligand, Parity, Shape};
+use molkin_graph::{Ligand, Parity, Polyhedron, Shape};
 use rstest::rstest;
 
-use super::{Spot, codes, draw, draw_solid, read};
+use super::{Record, Spot, codes, draw, draw_solid, read};
 
 /// A point at a distance of 1.5 in a direction in degrees.
 fn at(angle: f64) -> (f64, f64) {
@@ -356,29 +356,116 @@ fn a_cumulene_of_three_is_a_long_double_bond() {
     assert_eq!(mark.parity, Some(Parity::Odd));
 }
 
-/// 1,3-Butadiene-like axis between two unsaturated atoms: a wedge there may mean a hindered
-/// rotation.
-#[test]
-fn a_wedge_at_an_unsaturated_atom_is_noted() {
+/// FC(=O)C(=S)Cl with stereo codes for the bonds to F and Cl.
+fn hindered(wedges: [u8; 2]) -> Record {
     let atoms = [
         ("C", 0.0, 0.0),
         ("C", 1.5, 0.0),
-        ("C", -0.75, 1.3),
+        ("O", -0.75, 1.3),
         ("F", -0.75, -1.3),
-        ("C", 2.25, 1.3),
+        ("S", 2.25, 1.3),
         ("Cl", 2.25, -1.3),
     ];
     let bonds = [
         (1, 2, 1, 0),
         (1, 3, 2, 0),
-        (1, 4, 1, 1),
+        (1, 4, 1, wedges[0]),
+        (2, 5, 2, 0),
+        (2, 6, 1, wedges[1]),
+    ];
+    read(&draw(&atoms, &bonds))
+}
+
+/// A wedge at an unsaturated atom stands that end of the axis upright; wedges at both ends must
+/// agree. The ligands are O, F, S, Cl.
+#[rstest]
+#[case::towards([1, 0], Some(Parity::Even))]
+#[case::away([6, 0], Some(Parity::Odd))]
+#[case::other_end([0, 1], Some(Parity::Odd))]
+#[case::contrary_on_one_side([1, 6], Some(Parity::Even))]
+#[case::alike_on_one_side([1, 1], None)]
+#[case::unknown([4, 0], None)]
+fn hindered_axes(#[case] wedges: [u8; 2], #[case] expected: Option<Parity>) {
+    let record = hindered(wedges);
+    let [mark] = record.molecule.drawn_stereo() else {
+        panic!("one mark, {:?}", codes(&record))
+    };
+    assert_eq!((mark.shape, mark.centres), (Shape::Axis, [0, 1]));
+    assert_eq!(mark.ligands, [2, 3, 4, 5].map(Ligand::Atom));
+    assert_eq!(mark.parity, expected);
+    let unclear = wedges == [1, 1];
+    assert_eq!(codes(&record).contains(&"axis-unclear"), unclear);
+}
+
+/// The same axis in space: the end with O and F is turned by a quarter, F nearer to the reader. It
+/// is read only because a wedge says that rotation is hindered.
+#[rstest]
+#[case(1, Some(Parity::Even))]
+#[case(0, None)]
+fn hindered_axes_in_space(#[case] wedge: u8, #[case] expected: Option<Parity>) {
+    let atoms = [
+        ("C", 0.0, 0.0, 0.0),
+        ("C", 1.5, 0.0, 0.0),
+        ("O", -0.75, 0.0, -1.3),
+        ("F", -0.75, 0.0, 1.3),
+        ("S", 2.25, 1.3, 0.0),
+        ("Cl", 2.25, -1.3, 0.0),
+    ];
+    let bonds = [
+        (1, 2, 1, 0),
+        (1, 3, 2, 0),
+        (1, 4, 1, wedge),
         (2, 5, 2, 0),
         (2, 6, 1, 0),
     ];
+    let record = read(&draw_solid(&atoms, &bonds, ""));
+    let marks = record.molecule.drawn_stereo();
+    assert_eq!(marks.first().map(|mark| mark.parity), expected.map(Some));
+}
+
+/// Platinum in space with two Cl and two Br; the Cl opposite to each other.
+#[test]
+fn a_square_metal_in_space() {
+    let atoms = [
+        ("Pt", 0.0, 0.0, 0.0),
+        ("Cl", 2.3, 0.0, 0.1),
+        ("Cl", -2.3, 0.0, 0.0),
+        ("Br", 0.0, 2.4, 0.0),
+        ("Br", 0.0, -2.4, 0.0),
+    ];
+    let bonds = [(1, 2, 1, 0), (1, 3, 1, 0), (1, 4, 1, 0), (1, 5, 1, 0)];
+    let record = read(&draw_solid(&atoms, &bonds, ""));
+    let [mark] = record.molecule.drawn_coordination() else {
+        panic!("one arrangement, {:?}", codes(&record))
+    };
+    assert_eq!(
+        (mark.polyhedron, mark.centre),
+        (Polyhedron::SquarePlanar, 0)
+    );
+    let place = |atom| {
+        mark.ligands
+            .iter()
+            .position(|&ligand| ligand == Ligand::Atom(atom))
+    };
+    assert_eq!(place(1).unwrap().abs_diff(place(2).unwrap()), 2);
+    assert!(record.molecule.drawn_stereo().is_empty());
+}
+
+/// Wedges at a metal make no tetrahedron of it, and a flat drawing says no more.
+#[test]
+fn wedges_at_a_metal_are_noted() {
+    let atoms = [
+        ("Pt", 0.0, 0.0),
+        ("Cl", 1.5, 0.5),
+        ("Cl", -1.5, 0.5),
+        ("N", 1.5, -0.5),
+        ("N", -1.5, -0.5),
+    ];
+    let bonds = [(1, 2, 1, 6), (1, 3, 1, 6), (1, 4, 1, 1), (1, 5, 1, 1)];
     let record = read(&draw(&atoms, &bonds));
     assert!(record.molecule.drawn_stereo().is_empty());
-    assert_eq!(codes(&record), ["axis-not-read"]);
-    assert_eq!(record.notes[0].atoms, [0, 1]);
+    assert!(record.molecule.drawn_coordination().is_empty());
+    assert_eq!(codes(&record), ["metal-wedges-ignored"]);
 }
 
 /// Norbornane-like bridgehead: all three ring bonds on one side and the bridge wedged.

@@ -4,6 +4,7 @@ use crate::{
     Note, ReadErrorKind, Span,
     molfile::{
         block::{Fault, Line},
+        bond_type,
         drawing::{BondKind, BondMark, DrawnBond},
     },
 };
@@ -21,7 +22,7 @@ pub(super) fn read(
             line.field(4, 3).span(),
         ));
     }
-    let kind = kind(line)?;
+    let kind = bond_type::read(line.field(7, 3))?;
     let stereo = line.field(10, 3);
     let code = stereo.number("the bond stereo code", 0, 99)?;
     let mark = match (kind, code) {
@@ -30,7 +31,7 @@ pub(super) fn read(
         (BondKind::Single | BondKind::Aromatic, 6) => BondMark::Down,
         (BondKind::Single | BondKind::Aromatic, 4) | (BondKind::Double, 3) => BondMark::Either,
         _ => {
-            notes.push(note(
+            notes.push(bond_type::note(
                 "stereo-bond-ignored",
                 ends,
                 stereo.span(),
@@ -41,7 +42,7 @@ pub(super) fn read(
     };
     let topology = line.field(16, 3);
     if topology.number("the bond topology", 0, 99)? > 0 {
-        notes.push(note(
+        notes.push(bond_type::note(
             "query-field-ignored",
             ends,
             topology.span(),
@@ -66,47 +67,4 @@ fn end(line: Line<'_>, column: usize, (declared, counts): (u32, Span)) -> Result
     Err(field
         .fault(ReadErrorKind::NoSuchAtom { named, declared })
         .with_related(counts))
-}
-
-fn kind(line: Line<'_>) -> Result<BondKind, Fault> {
-    let field = line.field(7, 3);
-    let what = match field.stated("the bond type", -99, 999)? {
-        1 => return Ok(BondKind::Single),
-        2 => return Ok(BondKind::Double),
-        3 => return Ok(BondKind::Triple),
-        4 => return Ok(BondKind::Aromatic),
-        5 => "a single-or-double bond",
-        6 => "a single-or-aromatic bond",
-        7 => "a double-or-aromatic bond",
-        8 => "an any-order bond",
-        9 => {
-            return Err(field.fault(ReadErrorKind::Unsupported {
-                what: "a coordination bond",
-            }));
-        }
-        10 => {
-            return Err(field.fault(ReadErrorKind::Unsupported {
-                what: "a hydrogen bond",
-            }));
-        }
-        _ => {
-            let kind = ReadErrorKind::NumberOutOfRange {
-                what: "the bond type",
-                least: 1,
-                most: 4,
-            };
-            return Err(field.fault(kind));
-        }
-    };
-    Err(field.fault(ReadErrorKind::Query { what }))
-}
-
-fn note(code: &'static str, ends: [u32; 2], span: Span, what: &str) -> Note {
-    let [a, b] = ends.map(|end| end.saturating_add(1));
-    Note {
-        code,
-        atoms: ends.to_vec(),
-        span: Some(span),
-        text: format!("the bond {a}-{b} has {what}; it is not read"),
-    }
 }

@@ -1,9 +1,10 @@
 //! Property lines that change nothing about the structure, and those that make it none.
 
 use crate::{
-    Note, ReadErrorKind,
+    Note,
     molfile::{
         block::{Fault, Line},
+        group_type,
         v2000::entries,
     },
 };
@@ -23,6 +24,16 @@ pub(super) fn query(key: &[u8]) -> Option<&'static str> {
     })
 }
 
+/// Lines beyond the format that change bonds, charges or hydrogens (zero-order bonds: A. M. Clark,
+/// J. Chem. Inf. Model. 2011, 51, 3149). Read without them, the structure would be another one.
+pub(super) fn extension(key: &[u8]) -> Option<&'static str> {
+    Some(match key {
+        b"ZBO" => "an extension with bonds of order zero",
+        b"ZCH" | b"HYD" => "an extension that goes with bonds of order zero",
+        _ => return None,
+    })
+}
+
 /// The lines with details of substructure groups, whose types the `STY` lines give.
 pub(super) fn is_group_detail(key: &[u8]) -> bool {
     const DETAILS: [&[u8]; 20] = [
@@ -32,31 +43,10 @@ pub(super) fn is_group_detail(key: &[u8]) -> bool {
     DETAILS.contains(&key)
 }
 
-/// Reads the types of substructure groups. A display group is read through with a note: its atoms
-/// are all there. A polymer has no one structure.
+/// Reads the types of substructure groups.
 pub(super) fn group_types(line: Line<'_>, notes: &mut Vec<Note>) -> Result<(), Fault> {
     for (_, kind) in entries::pairs(line)? {
-        let what = match kind.text().to_ascii_uppercase().as_slice() {
-            b"SUP" => "an abbreviation",
-            b"MUL" => "a multiplied group",
-            b"DAT" => "attached data",
-            b"GEN" => "a generic bracket",
-            b"COM" | b"MIX" | b"FOR" => "a mixture",
-            b"SRU" | b"MON" | b"MER" | b"COP" | b"CRO" | b"MOD" | b"GRA" | b"ANY" => {
-                return Err(kind.fault(ReadErrorKind::Unsupported { what: "a polymer" }));
-            }
-            _ => {
-                return Err(kind.fault(ReadErrorKind::Malformed {
-                    expected: "a group type",
-                }));
-            }
-        };
-        notes.push(Note {
-            code: "group-ignored",
-            atoms: Vec::new(),
-            span: Some(kind.span()),
-            text: format!("{what} is marked; the atoms are read as drawn"),
-        });
+        notes.push(group_type::read(kind)?);
     }
     Ok(())
 }

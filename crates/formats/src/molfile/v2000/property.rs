@@ -1,7 +1,5 @@
 //! The property block: charges, radicals, isotopes, and what is read through.
 
-use molkin_graph::Element;
-
 use crate::{
     Note, ReadErrorKind, Span,
     molfile::{
@@ -9,7 +7,8 @@ use crate::{
         drawing::{Drawing, Radical},
         field::{Field, decode},
         header::Version,
-        v2000::{self, atom::State, entries, ignored},
+        symbol,
+        v2000::{atom::State, entries, ignored},
     },
 };
 
@@ -49,7 +48,7 @@ pub(super) fn read(
             break;
         }
         let line = lines.demand("M  END")?;
-        if v2000::is_end(line) {
+        if line.is_end() {
             break;
         }
         properties.take(line, lines)?;
@@ -97,15 +96,18 @@ impl Properties<'_> {
             b"RAD" => self.radicals(line),
             b"ISO" => self.isotopes(line),
             b"STY" => ignored::group_types(line, &mut self.drawing.notes),
-            _ => match ignored::query(key) {
-                Some(what) => Err(Fault::new(ReadErrorKind::Query { what }, line.span())),
-                None => {
-                    if !ignored::is_group_detail(key) {
-                        self.unknown(line);
-                    }
-                    Ok(())
+            _ => {
+                if let Some(what) = ignored::query(key) {
+                    return Err(Fault::new(ReadErrorKind::Query { what }, line.span()));
                 }
-            },
+                if let Some(what) = ignored::extension(key) {
+                    return Err(Fault::new(ReadErrorKind::Unsupported { what }, line.span()));
+                }
+                if !ignored::is_group_detail(key) {
+                    self.unknown(line);
+                }
+                Ok(())
+            }
         }
     }
 
@@ -156,18 +158,12 @@ impl Properties<'_> {
             };
             // Zero is how some writers say that an atom has its natural composition.
             atom.isotope = u16::try_from(mass).ok().filter(|&mass| mass > 0);
-            let usual = natural_mass(atom.element).map(|natural| natural - 18..=natural + 12);
-            if mass > 0 && usual.is_some_and(|usual| !usual.contains(&mass)) {
-                self.drawing.notes.push(Note {
-                    code: "isotope-unusual",
-                    atoms: vec![entry.atom],
-                    span: Some(entry.value.span()),
-                    text: format!(
-                        "the mass number {mass} of atom {} is far from the natural one",
-                        entry.atom.saturating_add(1)
-                    ),
-                });
-            }
+            self.drawing.notes.extend(symbol::unusual_mass(
+                atom.element,
+                mass,
+                entry.atom,
+                entry.value.span(),
+            ));
         }
         Ok(())
     }
@@ -210,19 +206,10 @@ impl Properties<'_> {
             atom.charge = state.charge;
             atom.radical = state.radical;
             if !self.isotopes_stated && state.mass_difference != 0 {
-                atom.isotope = natural_mass(atom.element)
+                atom.isotope = symbol::natural_mass(atom.element)
                     .and_then(|natural| u16::try_from(natural + state.mass_difference).ok())
                     .or(atom.isotope);
             }
         }
     }
-}
-
-/// The standard weight in whole units, from which mass differences count; that of the longest-lived
-/// nuclide where an element has none.
-fn natural_mass(element: Element) -> Option<i32> {
-    let weight = element
-        .standard_weight()
-        .map(|weight| weight.round() as i32);
-    weight.or_else(|| element.mass_number_of_longest_lived().map(i32::from))
 }

@@ -31,30 +31,32 @@ impl Scanner<'_> {
         if token.signs > 2 {
             let text = "the charge is written with more than two signs";
             self.remarks
-                .nonstandard("repeated-charge-sign", &here, extent, text)?;
+                .note("repeated-charge-sign", &here, extent, text)?;
         } else if token.signs == 2 {
             let text = "the charge is written with two signs, which is outdated";
             self.remarks
-                .note("repeated-charge-sign", &here, extent, text);
+                .note_allowed("repeated-charge-sign", &here, extent, text);
         }
         if element == Element::HYDROGEN && hydrogens > 0 {
             let text = "a hydrogen that counts hydrogens is read as bonded to them";
             self.remarks
-                .nonstandard("hydrogen-on-hydrogen", &here, extent, text)?;
+                .note("hydrogen-on-hydrogen", &here, extent, text)?;
         }
         if token.atom.aromatic && (element == Element::TELLURIUM || element == Element::SILICON) {
             let text = format!("{} has no aromatic symbol in the standard", element.name());
             self.remarks
-                .nonstandard("nonstandard-aromatic-symbol", &here, extent, text)?;
+                .note("nonstandard-aromatic-symbol", &here, extent, text)?;
         }
         match isotope {
             Some(0) => {
                 let text = "mass number 0 is kept and differs from none at all";
-                self.remarks.note("isotope-zero", &here, extent, text);
+                self.remarks
+                    .note_allowed("isotope-zero", &here, extent, text);
             }
             Some(mass) if element != Element::WILDCARD && element.isotope_mass(mass).is_none() => {
                 let text = format!("no nuclide {mass}{} is known", element.symbol());
-                self.remarks.note("unknown-isotope", &here, extent, text);
+                self.remarks
+                    .note_allowed("unknown-isotope", &here, extent, text);
             }
             _ => {}
         }

@@ -60,7 +60,9 @@ impl Scanner<'_> {
     /// A dot at the start, at the end, or beside another one.
     pub(super) fn odd_dot(&mut self, at: usize) -> Result<(), Fault> {
         let text = "the dot separates nothing";
+        let last = self.syntax.atoms.len().checked_sub(1);
+        let last = last.map(|atom| atom as u32);
         self.remarks
-            .nonstandard("misplaced-dot", &[], Extent::new(at, 1), text)
+            .note("misplaced-dot", last.as_slice(), Extent::new(at, 1), text)
     }
 }

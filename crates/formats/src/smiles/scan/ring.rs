@@ -29,12 +29,12 @@ impl Scanner<'_> {
         if self.syntax.atoms[self.previous as usize].branched {
             let text = "a ring label after a branch is read in text order";
             self.remarks
-                .nonstandard("ring-label-after-branch", &[self.previous], extent, text)?;
+                .note("ring-label-after-branch", &[self.previous], extent, text)?;
         }
         if rest.starts_with(b"%0") {
             let text = "a ring label is written with a leading zero";
             self.remarks
-                .note("ring-label-leading-zero", &[self.previous], extent, text);
+                .note_allowed("ring-label-leading-zero", &[self.previous], extent, text);
         }
         let symbol = self
             .pending

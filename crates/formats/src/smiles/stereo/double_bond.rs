@@ -36,14 +36,23 @@ pub(super) fn add_marks(
     builder: &mut MoleculeBuilder,
     remarks: &mut Remarks,
 ) -> Result<(), Fault> {
+    let mut doubly_marked = Vec::new();
     for bond in 0..syntax.bonds.len() as u32 {
-        if let Some([one, two]) = ends(syntax, bond) {
-            mark(syntax, one, two, remarks)?
-                .into_iter()
-                .for_each(|mark| builder.add_stereo(mark));
+        if let Some([one, two]) = ends(syntax, bond)
+            && let Some(mark) = mark(syntax, one, two, remarks)?
+        {
+            builder.add_stereo(mark);
+            let both = |end: &End| end.bonds.iter().all(|&bond| has_slope(syntax, bond));
+            doubly_marked.extend([one, two].into_iter().filter(both));
         }
     }
+    remark_on_redundant(syntax, &doubly_marked, remarks);
     remark_on_unpaired(syntax, remarks)
+}
+
+fn has_slope(syntax: &Syntax, bond: u32) -> bool {
+    let bond = syntax.bonds.get(bond as usize);
+    bond.is_some_and(|bond| bond.slope != Slope::Unmarked)
 }
 
 /// The ends of the planar unit whose first bond this is; each unit is found from one of its bonds.
@@ -69,7 +78,7 @@ fn mark(
         .flat_map(|end| end.bonds)
         .filter(|&bond| bond != NONE)
     {
-        syntax.bonds[bond as usize].used = true;
+        syntax.bonds[bond as usize].uses += 1;
     }
     let centres = [one.atom, two.atom];
     if sides.contains(&Side::Contradictory) {
@@ -81,7 +90,7 @@ fn mark(
             &two
         };
         let extent = super::extent_of(&syntax.atoms[end.atom as usize]);
-        remarks.nonstandard("contradictory-marks", &centres, extent, text)?;
+        remarks.note("contradictory-marks", &centres, extent, text)?;
         return Ok(None);
     }
     Ok(Some(DrawnStereo {
@@ -127,15 +136,29 @@ fn side(syntax: &Syntax, atom: u32, bond: u32) -> Side {
     }
 }
 
+/// One slope at an end says all. A second one is redundant unless it and the first both serve
+/// another double bond as well.
+fn remark_on_redundant(syntax: &Syntax, doubly_marked: &[End], remarks: &mut Remarks) {
+    for end in doubly_marked {
+        let bonds = end.bonds.iter().rev();
+        let mut bonds = bonds.filter_map(|&bond| syntax.bonds.get(bond as usize));
+        if let Some(bond) = bonds.find(|bond| bond.uses < 2) {
+            let text = "this / or \\ repeats what another one says";
+            let extent = Extent::new(bond.offset as usize, bond.width as usize);
+            remarks.note_allowed("redundant-mark", &[end.atom], extent, text);
+        }
+    }
+}
+
 fn remark_on_unpaired(syntax: &Syntax, remarks: &mut Remarks) -> Result<(), Fault> {
     let unpaired = syntax
         .bonds
         .iter()
-        .filter(|bond| bond.slope != Slope::Unmarked && !bond.used);
+        .filter(|bond| bond.slope != Slope::Unmarked && bond.uses == 0);
     for bond in unpaired {
         let text = "this / or \\ decides nothing: no double bond has one at both of its ends here";
         let extent = Extent::new(bond.offset as usize, bond.width as usize);
-        remarks.nonstandard("unpaired-mark", &bond.ends, extent, text)?;
+        remarks.note("unpaired-mark", &bond.ends, extent, text)?;
     }
     Ok(())
 }

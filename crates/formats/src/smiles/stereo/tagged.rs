@@ -6,15 +6,11 @@ use molkin_graph::{DrawnStereo, Ligand, Parity, Shape};
 use super::{
     cumulene::{self, Row},
     end::End,
-    extent_of,
 };
-use crate::{
-    ReadErrorKind,
-    smiles::{
-        remarks::{Fault, Remarks},
-        syntax::{AtomSyntax, StereoTag, Syntax, TagClass},
-        valence,
-    },
+use crate::smiles::{
+    remarks::{Fault, Remarks},
+    syntax::{StereoTag, Syntax, TagClass},
+    valence,
 };
 
 /// What a tag says; `None`, with a remark, where it can say nothing. `allenes` are those of the whole
@@ -23,46 +19,25 @@ pub(super) fn mark(
     syntax: &Syntax,
     allenes: &[Row],
     atom: u32,
+    tag: StereoTag,
     remarks: &mut Remarks,
 ) -> Result<Option<DrawnStereo>, Fault> {
     let here = &syntax.atoms[atom as usize];
-    let Some(tag) = here.tag else { return Ok(None) };
-    let count = here.degree.saturating_add(u32::from(here.atom.hydrogens));
-    if count > 4 && tag.class != TagClass::Allene {
-        return Err(too_many(atom, here, count, tag));
-    }
     let meaning = match (syntax.is_cumulated(atom), tag.class) {
         (true, TagClass::Plain | TagClass::Allene) => axis(syntax, allenes, atom),
         (false, TagClass::Plain | TagClass::Tetrahedral) => tetrahedral(syntax, atom),
         (true, TagClass::Tetrahedral) => Err("the atom is part of a row of double bonds"),
         (false, TagClass::Allene) => Err("the atom is not inside a row of double bonds"),
+        // Told apart by the caller.
+        (_, TagClass::Polyhedral(_)) => return Ok(None),
     };
     match meaning {
         Ok(mark) => Ok(Some(DrawnStereo {
-            parity: Some(Parity::from_odd(tag.clockwise)),
+            parity: Some(Parity::from_odd(tag.number == 2)),
             ..mark
         })),
-        Err(reason) => {
-            let text = format!("the stereo tag has no meaning and is left out: {reason}");
-            remarks.note("meaningless-stereo-tag", &[atom], extent_of(here), text);
-            Ok(None)
-        }
+        Err(reason) => super::remark_on_meaningless(atom, here, reason, remarks).map(|()| None),
     }
-}
-
-/// `@` and `@@` are short for classes of two pairs of ends or four ligands only; for more ligands
-/// the standard contradicts itself, so nothing is guessed.
-fn too_many(atom: u32, here: &AtomSyntax, count: u32, tag: StereoTag) -> Fault {
-    let kind = match (count, tag.class) {
-        (5, TagClass::Plain) => ReadErrorKind::UnsupportedStereo {
-            class: "trigonal-bipyramidal",
-        },
-        (6, TagClass::Plain) => ReadErrorKind::UnsupportedStereo {
-            class: "octahedral",
-        },
-        _ => ReadErrorKind::BadStereo { atom },
-    };
-    Fault::new(kind, here.offset as usize, here.width as usize)
 }
 
 /// Four ligands in text order. A hydrogen, or else a lone pair, that is not an atom of its own

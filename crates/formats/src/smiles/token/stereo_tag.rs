@@ -1,5 +1,6 @@
 //! The stereo tag of a bracket atom.
 
+use molkin_graph::Polyhedron;
 use nom::{Parser, bytes::complete::tag, combinator::opt};
 
 use super::{Refusal, Token, number};
@@ -8,13 +9,12 @@ use crate::{
     smiles::syntax::{StereoTag, TagClass},
 };
 
-/// A class of tags: its letters, how many numbers it has, the tags in words, and what they are read
-/// as or else the name of what is not read.
+/// A class of tags: its letters, how many numbers it has, the tags in words, and what they speak of.
 struct Class {
     letters: &'static [u8],
-    most: u32,
+    most: u8,
     tags: &'static str,
-    meaning: Result<TagClass, &'static str>,
+    meaning: TagClass,
 }
 
 const CLASSES: [Class; 5] = [
@@ -22,31 +22,31 @@ const CLASSES: [Class; 5] = [
         letters: b"TH",
         most: 2,
         tags: "@TH1 or @TH2",
-        meaning: Ok(TagClass::Tetrahedral),
+        meaning: TagClass::Tetrahedral,
     },
     Class {
         letters: b"AL",
         most: 2,
         tags: "@AL1 or @AL2",
-        meaning: Ok(TagClass::Allene),
+        meaning: TagClass::Allene,
     },
     Class {
         letters: b"SP",
         most: 3,
         tags: "@SP1 to @SP3",
-        meaning: Err("square-planar"),
+        meaning: TagClass::Polyhedral(Polyhedron::SquarePlanar),
     },
     Class {
         letters: b"TB",
         most: 20,
         tags: "@TB1 to @TB20",
-        meaning: Err("trigonal-bipyramidal"),
+        meaning: TagClass::Polyhedral(Polyhedron::TrigonalBipyramidal),
     },
     Class {
         letters: b"OH",
         most: 30,
         tags: "@OH1 to @OH30",
-        meaning: Err("octahedral"),
+        meaning: TagClass::Polyhedral(Polyhedron::Octahedral),
     },
 ];
 
@@ -56,46 +56,39 @@ pub(super) fn stereo_tag(input: &[u8]) -> Token<'_, Option<StereoTag>> {
     if at.is_none() {
         return Ok((input, None));
     }
+    let plain = |number| {
+        Some(StereoTag {
+            class: TagClass::Plain,
+            number,
+        })
+    };
     let (rest, second) = opt(tag(&b"@"[..])).parse(rest)?;
     if second.is_some() {
-        return Ok((
-            rest,
-            Some(StereoTag {
-                class: TagClass::Plain,
-                clockwise: true,
-            }),
-        ));
+        return Ok((rest, plain(2)));
     }
     match CLASSES.iter().find(|class| rest.starts_with(class.letters)) {
         Some(class) => named(class, input, &rest[class.letters.len()..]),
-        None => Ok((
-            rest,
-            Some(StereoTag {
-                class: TagClass::Plain,
-                clockwise: false,
-            }),
-        )),
+        None => Ok((rest, plain(1))),
     }
 }
 
 /// The number of a named class. `start` is where its `@` stands.
 fn named<'a>(class: &Class, start: &'a [u8], input: &'a [u8]) -> Token<'a, Option<StereoTag>> {
     let (rest, number) = opt(|text| number(text, "a stereo tag", u32::MAX)).parse(input)?;
-    let width = start.len() - rest.len();
-    let refuse = |kind| Err(Refusal::failure(start, width, kind));
-    let Some(number) = number.filter(|number| (1..=class.most).contains(number)) else {
-        return refuse(ReadErrorKind::BadStereoTag {
-            expected: class.tags,
-        });
-    };
-    match class.meaning {
-        Ok(meaning) => Ok((
+    let number = number.and_then(|number| u8::try_from(number).ok());
+    match number.filter(|number| (1..=class.most).contains(number)) {
+        Some(number) => Ok((
             rest,
             Some(StereoTag {
-                class: meaning,
-                clockwise: number == 2,
+                class: class.meaning,
+                number,
             }),
         )),
-        Err(class) => refuse(ReadErrorKind::UnsupportedStereo { class }),
+        None => {
+            let kind = ReadErrorKind::BadStereoTag {
+                expected: class.tags,
+            };
+            Err(Refusal::failure(start, start.len() - rest.len(), kind))
+        }
     }
 }

@@ -2,10 +2,10 @@
 
 use std::fmt::Write;
 
-use molkin_graph::{Element, FormAtom};
+use molkin_graph::{Element, FormAtom, Polyhedron};
 
 use crate::smiles::{
-    syntax::{AtomSyntax, AtomToken},
+    syntax::{StereoTag, TagClass},
     valence,
 };
 
@@ -25,16 +25,16 @@ pub(super) fn shown_hydrogens(atom: &FormAtom) -> u8 {
 /// Writes an atom: the bare symbol where that gives exactly its hydrogens, and brackets otherwise.
 ///
 /// `counted` are the hydrogens that are not atoms of their own in the text, `order_sum` the orders of
-/// all bonds that are, and `clockwise` is the stereo tag.
+/// all bonds that are, all as written.
 pub(super) fn write(
     text: &mut String,
     atom: &FormAtom,
     counted: u8,
     order_sum: u32,
-    clockwise: Option<bool>,
+    tag: Option<StereoTag>,
 ) {
     let symbol = atom.element.symbol();
-    let plain = atom.charge == 0 && atom.isotope.is_none() && clockwise.is_none();
+    let plain = atom.charge == 0 && atom.isotope.is_none() && tag.is_none();
     if plain && counted_when_bare(atom.element, order_sum) == Some(counted) {
         text.push_str(symbol);
         return;
@@ -44,10 +44,8 @@ pub(super) fn write(
         push_number(text, u32::from(isotope));
     }
     text.push_str(symbol);
-    match clockwise {
-        Some(true) => text.push_str("@@"),
-        Some(false) => text.push('@'),
-        None => {}
+    if let Some(tag) = tag {
+        write_tag(text, tag);
     }
     if counted > 0 {
         text.push('H');
@@ -64,10 +62,29 @@ pub(super) fn write(
     text.push(']');
 }
 
+fn write_tag(text: &mut String, StereoTag { class, number }: StereoTag) {
+    text.push('@');
+    let letters = match class {
+        TagClass::Polyhedral(Polyhedron::SquarePlanar) => "SP",
+        TagClass::Polyhedral(Polyhedron::TrigonalBipyramidal) => "TB",
+        TagClass::Polyhedral(Polyhedron::Octahedral) => "OH",
+        TagClass::Plain | TagClass::Tetrahedral | TagClass::Allene => {
+            text.push_str(if number > 1 { "@" } else { "" });
+            return;
+        }
+    };
+    text.push_str(letters);
+    push_number(text, u32::from(number));
+}
+
 /// Writes a number in decimal digits.
 pub(super) fn push_number(text: &mut String, number: u32) {
-    // Writing to a string does not fail.
-    let _ = write!(text, "{number}");
+    if let Some(digit) = char::from_digit(number, 10) {
+        text.push(digit);
+    } else {
+        // Writing to a string does not fail.
+        let _ = write!(text, "{number}");
+    }
 }
 
 /// The hydrogens that a reader gives to the bare symbol; `None` where the element always needs
@@ -87,9 +104,5 @@ fn counted_when_bare(element: Element, order_sum: u32) -> Option<u8> {
             | Element::BROMINE
             | Element::IODINE
     );
-    organic.then(|| {
-        let mut syntax = AtomSyntax::new(AtomToken::bare(element, false), false, (0, 0));
-        syntax.order_sum = order_sum;
-        valence::implicit_hydrogens(&syntax)
-    })
+    organic.then(|| valence::hydrogens_beside(element, order_sum))
 }

@@ -31,8 +31,8 @@ enum Step {
 impl Emitter<'_> {
     pub(super) fn emit(mut self) -> String {
         let layout = self.layout;
-        let mut stack = Vec::new();
-        for (at, &root) in layout.roots.iter().enumerate() {
+        let mut stack = Vec::with_capacity(self.structure.len());
+        for (at, &root) in layout.roots().iter().enumerate() {
             if at > 0 {
                 self.text.push('.');
             }

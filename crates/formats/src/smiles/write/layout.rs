@@ -1,14 +1,17 @@
 //! Where everything stands in the text: the spanning tree, the order of branches, ring labels.
 
-use std::{cmp::Reverse, collections::BinaryHeap};
+use std::{cmp::Reverse, collections::BinaryHeap, ops::Range};
 
-use super::structure::{Arc, Structure};
+use super::{
+    structure::{Arc, Structure},
+    tree::{Closure, Tree},
+};
 
 /// The highest label that the standard has.
 pub(super) const LAST_LABEL: u32 = 99;
 
 /// One end of a ring bond, at its atom.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
 pub(super) struct RingEnd {
     /// To the other end.
     pub(super) arc: Arc,
@@ -19,54 +22,59 @@ pub(super) struct RingEnd {
     closure: u32,
 }
 
-/// The plan of the text.
-#[derive(Debug)]
+/// The plan of the text; storage that is filled anew for every form.
+#[derive(Debug, Default)]
 pub(super) struct Layout {
-    /// The first atom of each component, in text order.
-    pub(super) roots: Vec<u32>,
     pub(super) highest_label: u32,
-    /// Per atom: the bond to the atom before it in its chain.
-    parent: Vec<Option<Arc>>,
+    tree: Tree,
+    /// Atoms in text order.
+    sequence: Vec<u32>,
     /// Per atom: its place among the atoms of the form in the text.
     place: Vec<u32>,
-    starts: Vec<u32>,
-    children: Vec<Arc>,
-    /// Per atom: its ring bonds in written order.
-    rings: Vec<Vec<RingEnd>>,
+    stack: Vec<u32>,
+    /// Per atom: where its ring bonds begin.
+    ring_starts: Vec<u32>,
+    /// By atom: ring bonds in written order.
+    rings: Vec<RingEnd>,
+    /// Per ring bond: its label.
+    given: Vec<u32>,
+    labels: Labels,
 }
 
 impl Layout {
-    pub(super) fn new(structure: &Structure) -> Self {
-        let tree = Tree::new(structure);
-        let (starts, children) = children(&tree);
-        let mut layout = Self {
-            roots: tree.roots,
-            highest_label: 0,
-            parent: tree.parent,
-            place: vec![0; structure.len()],
-            starts,
-            children,
-            rings: vec![Vec::new(); structure.len()],
-        };
-        let sequence = layout.set_places();
-        layout.set_rings(&sequence, &tree.closures);
-        layout
+    pub(super) fn plan(&mut self, structure: &Structure) {
+        self.tree.grow(structure);
+        self.set_places();
+        self.highest_label = 0;
+        self.ring_starts.clear();
+        self.rings.clear();
+        if !self.tree.closures.is_empty() {
+            self.collect_rings();
+            self.set_labels();
+        }
     }
 
     /// The bond to the atom before this one in its chain.
     pub(super) fn parent(&self, atom: u32) -> Option<Arc> {
-        self.parent[atom as usize]
+        self.tree.parent[atom as usize]
     }
 
     /// The bonds to the atoms that follow, in text order: branches, then the chain.
     pub(super) fn children(&self, atom: u32) -> &[Arc] {
-        let at = atom as usize;
-        &self.children[self.starts[at] as usize..self.starts[at + 1] as usize]
+        self.tree.children(atom)
     }
 
     /// The ring bonds of an atom in the order in which their labels are written.
     pub(super) fn rings(&self, atom: u32) -> &[RingEnd] {
-        &self.rings[atom as usize]
+        &self.rings[self.ring_range(atom)]
+    }
+
+    fn ring_range(&self, atom: u32) -> Range<usize> {
+        let at = atom as usize;
+        match self.ring_starts.get(at..at + 2) {
+            Some(&[start, end]) => start as usize..end as usize,
+            _ => 0..0,
+        }
     }
 
     /// The place of an atom in the text, from 0.
@@ -80,38 +88,84 @@ impl Layout {
             .all(|&atom| self.parent(atom).is_none_or(|arc| arc.bond != bond))
     }
 
-    /// Numbers the atoms in text order and returns them in it.
-    fn set_places(&mut self) -> Vec<u32> {
-        let mut sequence = Vec::with_capacity(self.place.len());
-        let mut stack: Vec<u32> = self.roots.iter().rev().copied().collect();
+    /// The first atom of each component, in text order.
+    pub(super) fn roots(&self) -> &[u32] {
+        &self.tree.roots
+    }
+
+    /// Numbers the atoms in text order.
+    fn set_places(&mut self) {
+        let Self {
+            tree,
+            sequence,
+            place,
+            stack,
+            ..
+        } = self;
+        sequence.clear();
+        place.clear();
+        place.resize(tree.parent.len(), 0);
+        stack.clear();
+        stack.extend(tree.roots.iter().rev());
         while let Some(atom) = stack.pop() {
-            self.place[atom as usize] = sequence.len() as u32;
+            place[atom as usize] = sequence.len() as u32;
             sequence.push(atom);
-            stack.extend(self.children(atom).iter().rev().map(|arc| arc.to));
+            stack.extend(tree.children(atom).iter().rev().map(|arc| arc.to));
         }
-        sequence
+    }
+
+    /// Lists both ends of each ring bond by atom, by counting.
+    fn collect_rings(&mut self) {
+        let Self {
+            tree,
+            ring_starts,
+            rings,
+            ..
+        } = self;
+        let ends = |&Closure { from, arc }: &Closure| {
+            let back = Arc { to: from, ..arc };
+            [(arc.to, back, true), (from, arc, false)]
+        };
+        ring_starts.resize(tree.parent.len() + 1, 0);
+        for (atom, ..) in tree.closures.iter().flat_map(ends) {
+            ring_starts[atom as usize] += 1;
+        }
+        let mut sum = 0;
+        for start in ring_starts.iter_mut() {
+            sum += *start;
+            *start = sum;
+        }
+        rings.resize(sum as usize, RingEnd::default());
+        for (closure, ring) in (0..).zip(&tree.closures) {
+            for (atom, arc, opens) in ends(ring) {
+                let start = &mut ring_starts[atom as usize];
+                *start -= 1;
+                rings[*start as usize] = RingEnd {
+                    arc,
+                    opens,
+                    label: 0,
+                    closure,
+                };
+            }
+        }
     }
 
     /// Gives each ring bond the lowest label that is free where it opens. At an atom the labels that
     /// close come first; they are free again only after those that open there, so that no atom has
     /// the same label twice.
-    fn set_rings(&mut self, sequence: &[u32], closures: &[Closure]) {
-        for (closure, &Closure { from, arc }) in (0..).zip(closures) {
-            let back = Arc { to: from, ..arc };
-            for (atom, arc, opens) in [(arc.to, back, true), (from, arc, false)] {
-                self.rings[atom as usize].push(RingEnd {
-                    arc,
-                    opens,
-                    label: 0,
-                    closure,
-                });
-            }
-        }
-        let mut labels = Labels::default();
-        let mut given = vec![0; closures.len()];
-        for &atom in sequence {
-            let place = &self.place;
-            let ends = &mut self.rings[atom as usize];
+    fn set_labels(&mut self) {
+        self.given.clear();
+        self.given.resize(self.tree.closures.len(), 0);
+        self.labels.clear();
+        for at in 0..self.sequence.len() {
+            let range = self.ring_range(self.sequence[at]);
+            let Self {
+                place,
+                given,
+                labels,
+                ..
+            } = self;
+            let ends = &mut self.rings[range];
             ends.sort_unstable_by_key(|end| {
                 let within = if end.opens {
                     place[end.arc.to as usize]
@@ -131,90 +185,8 @@ impl Layout {
                 .filter(|end| !end.opens)
                 .for_each(|end| labels.put_back(end.label));
         }
-        self.highest_label = labels.highest;
+        self.highest_label = self.labels.highest;
     }
-}
-
-/// A bond that is not in the tree: from the later atom to the earlier one.
-#[derive(Debug, Clone, Copy)]
-struct Closure {
-    from: u32,
-    arc: Arc,
-}
-
-/// A depth-first spanning forest, so that every other bond joins an atom to one it descends from.
-#[derive(Debug, Default)]
-struct Tree {
-    roots: Vec<u32>,
-    parent: Vec<Option<Arc>>,
-    /// Every atom after its parent.
-    visited: Vec<u32>,
-    closures: Vec<Closure>,
-}
-
-impl Tree {
-    fn new(structure: &Structure) -> Self {
-        let mut tree = Self {
-            parent: vec![None; structure.len()],
-            ..Self::default()
-        };
-        let mut seen = vec![false; structure.len()];
-        let mut used = vec![false; structure.form.bonds.len()];
-        // Atom and how many of its bonds have been looked at.
-        let mut stack: Vec<(u32, usize)> = Vec::new();
-        for root in 0..structure.len() as u32 {
-            if seen[root as usize] {
-                continue;
-            }
-            tree.roots.push(root);
-            let mut next = Some(root);
-            loop {
-                if let Some(atom) = next.take() {
-                    seen[atom as usize] = true;
-                    tree.visited.push(atom);
-                    stack.push((atom, 0));
-                }
-                let Some((atom, at)) = stack.last_mut() else {
-                    break;
-                };
-                let atom = *atom;
-                let Some(&arc) = structure.arcs(atom).get(*at) else {
-                    stack.pop();
-                    continue;
-                };
-                *at += 1;
-                if std::mem::replace(&mut used[arc.bond as usize], true) {
-                    continue;
-                }
-                if seen[arc.to as usize] {
-                    tree.closures.push(Closure { from: atom, arc });
-                } else {
-                    tree.parent[arc.to as usize] = Some(Arc { to: atom, ..arc });
-                    next = Some(arc.to);
-                }
-            }
-        }
-        tree
-    }
-}
-
-/// The bonds to children by atom, smaller branches first and equal ones by number.
-fn children(tree: &Tree) -> (Vec<u32>, Vec<Arc>) {
-    let mut size = vec![1u32; tree.parent.len()];
-    let mut starts = vec![0u32; tree.parent.len() + 1];
-    let mut found: Vec<(u32, Arc)> = Vec::new();
-    for &atom in tree.visited.iter().rev() {
-        if let Some(arc) = tree.parent[atom as usize] {
-            size[arc.to as usize] += size[atom as usize];
-            starts[arc.to as usize + 1] += 1;
-            found.push((arc.to, Arc { to: atom, ..arc }));
-        }
-    }
-    for at in 1..starts.len() {
-        starts[at] += starts[at - 1];
-    }
-    found.sort_unstable_by_key(|&(parent, arc)| (parent, size[arc.to as usize], arc.to));
-    (starts, found.into_iter().map(|(_, arc)| arc).collect())
 }
 
 /// Ring labels from 1.
@@ -225,6 +197,11 @@ struct Labels {
 }
 
 impl Labels {
+    fn clear(&mut self) {
+        self.free.clear();
+        self.highest = 0;
+    }
+
     fn take(&mut self) -> u32 {
         self.free.pop().map_or_else(
             || {

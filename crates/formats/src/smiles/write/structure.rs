@@ -2,16 +2,26 @@
 
 use std::cmp::Reverse;
 
-use molkin_graph::{CanonicalForm, FormAtom};
+use molkin_graph::{BondOrder, CanonicalForm, FormAtom};
+
+use super::Lost;
 
 /// A bond seen from one of its atoms.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
 pub(super) struct Arc {
     /// The atom at the other end.
     pub(super) to: u32,
     /// The bond, by its index in the form.
     pub(super) bond: u32,
+    /// As it is written: 1 to 4.
     pub(super) order: u8,
+}
+
+/// The bonds of each atom; storage that is filled anew for every form.
+#[derive(Debug, Default)]
+pub(super) struct ArcTable {
+    starts: Vec<u32>,
+    arcs: Vec<Arc>,
 }
 
 /// Atoms and bonds. Every atom number in an [`Arc`] is that of an atom of the form: bonds that name
@@ -19,36 +29,79 @@ pub(super) struct Arc {
 #[derive(Debug)]
 pub(super) struct Structure<'a> {
     pub(super) form: &'a CanonicalForm,
-    starts: Vec<u32>,
-    arcs: Vec<Arc>,
+    table: &'a ArcTable,
 }
 
-impl<'a> Structure<'a> {
-    pub(super) fn new(form: &'a CanonicalForm) -> Self {
+const COORDINATION: u8 = BondOrder::Coordination as u8;
+const HYDROGEN: u8 = BondOrder::Hydrogen as u8;
+
+/// The order that a bond is written with; `None` for one that is left out.
+fn written_order(order: u8) -> Option<u8> {
+    match order {
+        COORDINATION => Some(1),
+        HYDROGEN => None,
+        order => Some(order),
+    }
+}
+
+impl ArcTable {
+    /// Counts the arcs of each atom, makes room, and fills it from the back. Linear.
+    fn load(&mut self, form: &CanonicalForm) {
+        let Self { starts, arcs } = self;
         let count = form.atoms.len() as u32;
         let bonds = || {
             (0u32..)
                 .zip(&form.bonds)
                 .filter(|&(_, &(a, b, _))| a < b && b < count)
-                .flat_map(|(bond, &(a, b, order))| {
-                    [(a, b), (b, a)].map(|(from, to)| (from, Arc { to, bond, order }))
-                })
+                .filter_map(|(bond, &(a, b, order))| Some((bond, a, b, written_order(order)?)))
         };
-        let mut arcs: Vec<(u32, Arc)> = bonds().collect();
+        starts.clear();
+        starts.resize(form.atoms.len() + 1, 0);
+        for (_, a, b, _) in bonds() {
+            starts[a as usize] += 1;
+            starts[b as usize] += 1;
+        }
+        let mut sum = 0;
+        for start in starts.iter_mut() {
+            sum += *start;
+            *start = sum;
+        }
+        arcs.clear();
+        arcs.resize(sum as usize, Arc::default());
+        for (bond, a, b, order) in bonds() {
+            for (from, to) in [(a, b), (b, a)] {
+                let start = &mut starts[from as usize];
+                *start -= 1;
+                arcs[*start as usize] = Arc { to, bond, order };
+            }
+        }
         // Multiple bonds first: the tree then follows them, and rings close at single bonds.
-        arcs.sort_unstable_by_key(|&(from, arc)| (from, Reverse(arc.order), arc.to, arc.bond));
-        let mut starts = vec![0; form.atoms.len() + 1];
-        for &(from, _) in &arcs {
-            starts[from as usize + 1] += 1;
+        for ends in starts.windows(2) {
+            arcs[ends[0] as usize..ends[1] as usize]
+                .sort_unstable_by_key(|arc| (Reverse(arc.order), arc.to, arc.bond));
         }
-        for at in 1..starts.len() {
-            starts[at] += starts[at - 1];
-        }
-        Self {
-            form,
-            starts,
-            arcs: arcs.into_iter().map(|(_, arc)| arc).collect(),
-        }
+    }
+}
+
+impl<'a> Structure<'a> {
+    /// The form, its bonds sorted into the table.
+    pub(super) fn new(form: &'a CanonicalForm, table: &'a mut ArcTable) -> Self {
+        table.load(form);
+        Self { form, table }
+    }
+
+    /// Says of each bond that the notation has no symbol for that it is lost.
+    pub(super) fn report_lost_bonds(&self, lost: &mut Vec<Lost>) {
+        let bonds = self.form.bonds.iter();
+        lost.extend(bonds.filter_map(|&(a, b, order)| {
+            let order = match order {
+                COORDINATION => BondOrder::Coordination,
+                HYDROGEN => BondOrder::Hydrogen,
+                _ => return None,
+            };
+            let atoms = [a, b];
+            Some(Lost::Bond { atoms, order })
+        }));
     }
 
     pub(super) fn len(&self) -> usize {
@@ -62,7 +115,8 @@ impl<'a> Structure<'a> {
     /// The bonds of an atom, those of higher order first, then by the other atom.
     pub(super) fn arcs(&self, atom: u32) -> &[Arc] {
         let at = atom as usize;
-        &self.arcs[self.starts[at] as usize..self.starts[at + 1] as usize]
+        let ArcTable { starts, arcs } = self.table;
+        &arcs[starts[at] as usize..starts[at + 1] as usize]
     }
 
     /// Whether an atom lies inside a row of cumulated double bonds: two of them and nothing else.

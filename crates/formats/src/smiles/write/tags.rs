@@ -1,6 +1,7 @@
-//! `@` and `@@`: tetrahedral atoms, and the middle atoms of allenes and longer rows.
+//! Stereo tags: tetrahedral atoms, the middle atoms of allenes and longer rows, and centres with more
+//! ligands.
 
-use molkin_graph::{FormStereo, Ligand, Shape};
+use molkin_graph::{DrawnCoordination, FormStereo, Ligand, Shape};
 
 use super::{
     Lost,
@@ -8,11 +9,15 @@ use super::{
     rows::{Row, RowIndex},
     structure::Structure,
 };
+use crate::smiles::{
+    polyhedra,
+    syntax::{StereoTag, TagClass},
+};
 
-/// The tag of each atom: whether it is `@@`.
+/// The tag of each atom.
 #[derive(Debug)]
 pub(super) struct Tags {
-    clockwise: Vec<Option<bool>>,
+    tags: Vec<Option<StereoTag>>,
 }
 
 impl Tags {
@@ -30,7 +35,7 @@ impl Tags {
             shown,
             rows: RowIndex::new(rows),
         };
-        let mut clockwise = vec![None; structure.len()];
+        let mut tags = vec![None; structure.len()];
         for element in &structure.form.stereo {
             let tag = match element.shape {
                 Shape::Tetrahedral => context.tetrahedral(element),
@@ -39,7 +44,10 @@ impl Tags {
             };
             match tag {
                 Some((atom, odd)) => {
-                    clockwise[atom as usize] = Some(element.parity.is_odd() ^ odd);
+                    tags[atom as usize] = Some(StereoTag {
+                        class: TagClass::Plain,
+                        number: 1 + u8::from(element.parity.is_odd() ^ odd),
+                    });
                 }
                 None => lost.push(Lost::Arrangement {
                     shape: element.shape,
@@ -47,12 +55,21 @@ impl Tags {
                 }),
             }
         }
-        Self { clockwise }
+        for mark in &structure.form.coordination {
+            match context.coordination(mark) {
+                Some(tag) => tags[mark.centre as usize] = Some(tag),
+                None => lost.push(Lost::Coordination {
+                    polyhedron: mark.polyhedron,
+                    centre: mark.centre,
+                }),
+            }
+        }
+        Self { tags }
     }
 
-    /// The tag of an atom: true for `@@`.
-    pub(super) fn of(&self, atom: u32) -> Option<bool> {
-        self.clockwise[atom as usize]
+    /// The tag of an atom.
+    pub(super) fn of(&self, atom: u32) -> Option<StereoTag> {
+        self.tags[atom as usize]
     }
 }
 
@@ -68,8 +85,8 @@ impl Context<'_> {
     /// of those of the element.
     fn tetrahedral(&self, element: &FormStereo) -> Option<(u32, bool)> {
         let atom = element.centres[0];
-        let has_lone_pair = element.ligands.contains(&Ligand::LonePair);
-        let written = self.ligands(atom, has_lone_pair)?;
+        let lone_pairs = count(&element.ligands, Ligand::LonePair);
+        let written = self.ligands(atom, lone_pairs)?;
         Some((atom, is_odd(&element.ligands, &written)?))
     }
 
@@ -91,15 +108,36 @@ impl Context<'_> {
     }
 
     fn is_end_odd(&self, atom: u32, inner: u32, ligands: [Ligand; 2]) -> Option<bool> {
-        let has_lone_pair = ligands.contains(&Ligand::LonePair);
-        let mut written = self.ligands(atom, has_lone_pair)?;
+        let mut written = self.ligands(atom, count(&ligands, Ligand::LonePair))?;
         written.retain(|&ligand| ligand != Ligand::Atom(inner));
         is_odd(&ligands, &written)
     }
 
+    /// The tag that puts the ligands, in text order, where the mark has them. Ligands that are alike
+    /// may stand for each other. More than one empty site is not read back.
+    fn coordination(&self, mark: &DrawnCoordination) -> Option<StereoTag> {
+        let lone_pairs = count(&mark.ligands, Ligand::LonePair);
+        let written = self.ligands(mark.centre, lone_pairs)?;
+        let positions = mark.polyhedron.positions();
+        if lone_pairs > 1 || written.len() != positions || mark.ligands.len() != positions {
+            return None;
+        }
+        let mut placement = [0; 6];
+        let mut free = written.iter().copied().map(Some).collect::<Vec<_>>();
+        for (ligand, place) in mark.ligands.iter().zip(&mut placement) {
+            let at = free.iter().position(|other| *other == Some(*ligand))?;
+            free[at] = None;
+            *place = u8::try_from(at).ok()?;
+        }
+        Some(StereoTag {
+            class: TagClass::Polyhedral(mark.polyhedron),
+            number: polyhedra::tag(mark.polyhedron, placement)?,
+        })
+    }
+
     /// The ligands of an atom in the order of the text: the atom before it; its hydrogen or lone
     /// pair that is no atom; ring labels; branches; the chain.
-    fn ligands(&self, atom: u32, has_lone_pair: bool) -> Option<Vec<Ligand>> {
+    fn ligands(&self, atom: u32, lone_pairs: usize) -> Option<Vec<Ligand>> {
         let hydrogens = self.structure.form.atoms.get(atom as usize)?.hydrogens;
         let shown = self.shown[atom as usize];
         let repeat = |ligand, count: u8| std::iter::repeat_n(ligand, usize::from(count));
@@ -111,13 +149,17 @@ impl Context<'_> {
             parent
                 .into_iter()
                 .chain(repeat(Ligand::Hydrogen, hydrogens.saturating_sub(shown)))
-                .chain(repeat(Ligand::LonePair, u8::from(has_lone_pair)))
+                .chain(std::iter::repeat_n(Ligand::LonePair, lone_pairs))
                 .chain(rings.map(|end| bonded(end.arc.to)))
                 .chain(repeat(Ligand::Hydrogen, shown))
                 .chain(children.map(|arc| bonded(arc.to)))
                 .collect(),
         )
     }
+}
+
+fn count(ligands: &[Ligand], wanted: Ligand) -> usize {
+    ligands.iter().filter(|&&ligand| ligand == wanted).count()
 }
 
 /// Whether `written` is an odd permutation of `ligands`; `None` if it is no permutation of them.

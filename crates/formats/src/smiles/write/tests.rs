@@ -6,6 +6,7 @@ use molkin_graph::{CanonicalForm, FormAtom, FormStereo, Limits, Molecule, Ordere
 use super::{Written, write};
 use crate::smiles::parse;
 
+mod coordination;
 mod lost;
 mod round_trip;
 mod stereo;
@@ -35,6 +36,7 @@ fn as_drawn(text: &str) -> CanonicalForm {
         atoms: atoms.collect(),
         bonds,
         stereo: stereo.collect(),
+        coordination: molecule.drawn_coordination().to_vec(),
     }
 }
 
