@@ -112,7 +112,7 @@ pub fn write(form: &CanonicalForm) -> Written {
     Writer::default().write(form)
 }
 
-/// Writes canonical forms and reuses its storage from one to the next; see [`write`].
+/// Writes canonical forms and reuses its storage from one to the next; see [`write()`].
 ///
 /// # Examples
 /// ```
@@ -136,7 +136,7 @@ pub struct Writer {
 }
 
 impl Writer {
-    /// Writes a canonical form as [`write`] does.
+    /// Writes a canonical form as [`write()`] does.
     pub fn write(&mut self, form: &CanonicalForm) -> Written {
         let structure = Structure::new(form, &mut self.arcs);
         self.layout.plan(&structure);
