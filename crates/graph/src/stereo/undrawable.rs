@@ -1,4 +1,5 @@
-//! What a plain drawing cannot say although it may matter.
+//! What a plain drawing cannot say although it may matter: rules of thumb, which decide a note and
+//! whether the record is open, and never a relation.
 
 use crate::{Element, mesomer::Mesomer, order::Permutation, skeleton::Skeleton};
 
@@ -61,7 +62,8 @@ fn is_marked(perception: &Perception, centres: [u32; 2]) -> bool {
 
 impl Perception {
     /// Keeps the hindered axes at whose two ends the ortho places differ; the others have a plane
-    /// of symmetry through the axis. `generators` are automorphisms of the constitution.
+    /// of symmetry through the axis. A rule of thumb like the rest of this file: it asks the
+    /// `generators` of the automorphisms of the constitution, not their products.
     pub(crate) fn keep_unequal_axes(&mut self, skeleton: &Skeleton, generators: &[Permutation]) {
         self.undrawable.retain(|place| match *place {
             Undrawable::HinderedAxis { atoms: [a, b] } => {
