@@ -19,6 +19,7 @@ const LIMITS: Limits = Limits {
     atoms: 200,
     order_steps: 20_000,
     open_elements: 4,
+    stereo_pieces: 4,
     map_steps: 100,
     stop: None,
 };

@@ -31,11 +31,11 @@ pub use crate::{
     distance::{least_distance, stated_distance},
     molfile::{molfiles, renumbered_molfile},
     numbers::Numbers,
-    pairs::{Expected, Pair, definition_pairs, fixture_pairs},
+    pairs::{Expected, Pair, definition_pairs, fixture_pairs, grouped_pairs},
     renumber::{renumbered, renumbered_form, with_hydrogens_written},
     small::small_isomers,
     spelling::random_spelling,
-    stereo::{Markings, all_markings, completions, mirrored},
+    stereo::{Markings, all_markings, completions, grouped, mirrored},
     tally::Tally,
     text::{Table, first_word, read_text, shared, workspace},
 };

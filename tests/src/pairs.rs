@@ -1,5 +1,6 @@
 //! Pairs with a known verdict, from fixtures and from docs/definitions.md.
 
+use molkin_graph::{GroupKind, StereoGroup};
 use molkin_relate::{Relation, Verdict};
 
 use crate::{Table, read_text, workspace};
@@ -124,6 +125,49 @@ pub fn definition_pairs() -> Vec<Pair> {
         }
     }
     pairs
+}
+
+/// Pairs with stereo groups on docs/definitions.md: the rows of every table with the header
+/// `pair, A, groups of A, B, groups of B, relation, kind, open, why`.
+///
+/// # Panics
+/// If a row of such a table has another form.
+pub fn grouped_pairs() -> Vec<(Pair, [Vec<StereoGroup>; 2])> {
+    let page = read_text(&workspace("docs/definitions.md"));
+    let rows = page.lines().filter_map(cells).filter(|row| row.len() == 9);
+    let rows = rows.filter(|row| row[0] != "pair" && !is_rule(row[0]));
+    rows.map(|row| {
+        let code = |cell: &str| cell.trim_matches('`').to_owned();
+        let pair = Pair {
+            name: row[0].to_owned(),
+            a: code(row[1]),
+            b: code(row[3]),
+            expected: Expected::of_words(row[5], row[6], row[7]),
+        };
+        (pair, [stereo_groups(row[2]), stereo_groups(row[4])])
+    })
+    .collect()
+}
+
+/// `AND 2 4, OR 5`: atoms from 1.
+fn stereo_groups(text: &str) -> Vec<StereoGroup> {
+    let group = |text: &str| {
+        let (kind, atoms) = text.trim().split_once(' ').unwrap();
+        let atoms = atoms
+            .split(' ')
+            .map(|atom| atom.parse::<u32>().unwrap() - 1);
+        StereoGroup {
+            kind: match kind {
+                "AND" => GroupKind::And,
+                "OR" => GroupKind::Or,
+                "REL" => GroupKind::Relative,
+                other => panic!("no kind of group: {other}"),
+            },
+            atoms: atoms.collect(),
+        }
+    };
+    let groups = text.split(',').filter(|_| text != "-");
+    groups.map(group).collect()
 }
 
 fn cells(line: &str) -> Option<Vec<&str>> {

@@ -92,6 +92,7 @@ pub fn renumbered_form(form: &CanonicalForm, numbers: &mut Numbers) -> Canonical
         bonds,
         stereo,
         coordination,
+        groups: form.groups.clone(),
     }
 }
 

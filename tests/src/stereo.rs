@@ -2,7 +2,7 @@
 
 use molkin_graph::{
     DrawnStereo, Element, Ligand, Molecule, MoleculeBuilder, Parity, Polyhedron, Shape,
-    StereoElement,
+    StereoElement, StereoGroup,
 };
 
 /// The mirror image.
@@ -93,6 +93,26 @@ impl<'m> Markings<'m> {
         builder.build().unwrap()
     }
 
+    /// The molecule with the given marks and stereo groups.
+    ///
+    /// # Panics
+    /// If the molecule cannot be rebuilt.
+    pub fn grouped(&self, marks: &[Option<Parity>], groups: &[StereoGroup]) -> Molecule {
+        let mut builder = skeleton(self.molecule);
+        for (place, &parity) in self.places.iter().zip(marks) {
+            builder.add_stereo(DrawnStereo { parity, ..*place });
+        }
+        for group in groups {
+            builder.add_group(group.clone());
+        }
+        builder.build().unwrap()
+    }
+
+    /// The atom by which a stereo group names a place.
+    pub fn centre(&self, place: usize) -> u32 {
+        self.places[place].centres[0]
+    }
+
     /// Every way to mark all places; 2 to the number of places.
     pub fn full(&self) -> impl Iterator<Item = Vec<Option<Parity>>> + use<> {
         completions(&vec![None; self.places()])
@@ -124,6 +144,21 @@ pub fn all_markings(molecule: &Molecule) -> Vec<Molecule> {
     let markings = Markings::new(molecule, &[]);
     let full = markings.full();
     full.map(|marks| markings.marked(&marks)).collect()
+}
+
+/// A molecule with other stereo groups.
+///
+/// # Panics
+/// If the molecule cannot be rebuilt.
+pub fn grouped(molecule: &Molecule, groups: &[StereoGroup]) -> Molecule {
+    let mut builder = skeleton(molecule);
+    for mark in molecule.drawn_stereo() {
+        builder.add_stereo(*mark);
+    }
+    for group in groups {
+        builder.add_group(group.clone());
+    }
+    builder.build().unwrap()
 }
 
 /// Atoms and bonds of a molecule, without marks.

@@ -27,5 +27,6 @@ mod hostile;
 mod pages;
 mod relations;
 mod renumbering;
+mod samples;
 mod smiles;
 mod symmetry;

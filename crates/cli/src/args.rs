@@ -118,6 +118,8 @@ pub(crate) enum FlagZero {
     Absolute,
     /// A mixture of that and its mirror image
     Mixture,
+    /// That, its mirror image, or both
+    Relative,
 }
 
 /// Say what is known about each record.

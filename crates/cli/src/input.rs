@@ -63,6 +63,7 @@ pub(crate) fn read_options(reading: &Reading) -> ReadOptions {
     options.molfile.flag_zero = match reading.flag_zero {
         FlagZero::Absolute => molfile::FlagZero::Absolute,
         FlagZero::Mixture => molfile::FlagZero::Mixture,
+        FlagZero::Relative => molfile::FlagZero::Relative,
     };
     options.columns.structure.clone_from(&reading.structure);
     options.columns.name.clone_from(&reading.name);

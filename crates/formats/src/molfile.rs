@@ -67,8 +67,11 @@ pub enum FlagZero {
     #[default]
     Absolute,
     /// As a mixture of the drawn arrangement and its mirror image: all tetrahedral centres and axes
-    /// of the record are one group.
+    /// of the record are one AND group.
     Mixture,
+    /// As one arrangement, its mirror image, or both: all tetrahedral centres and axes of the record
+    /// are one group of relative configuration.
+    Relative,
 }
 
 /// Reads one molfile with the default [`ReadOptions`].

@@ -6,6 +6,7 @@ mod elements;
 mod form;
 mod normal;
 mod placement;
+mod samples;
 
 #[cfg(test)]
 mod tests;
@@ -57,9 +58,24 @@ pub enum OrderError {
         "of equivalent centres beside an arrangement about a metal only some are marked; such records are not compared yet"
     )]
     PartlyMarkedCentres,
-    /// The record has stereo groups (AND, OR), which are not compared yet.
-    #[error("the record has stereo groups (AND, OR), which are not compared yet")]
+    /// A stereo group names an arrangement about a metal, or two groups of different kinds share
+    /// bridgeheads that determine each other, or groups meet cages marked in a way that no cage can
+    /// have.
+    #[error(
+        "a stereo group names an arrangement about a metal, or bridgeheads that cannot be inverted apart"
+    )]
     StereoGroups,
+    /// Too many stereo groups, and unmarked elements beside them, in positions that symmetry relates.
+    #[error(
+        "more than {limit} stereo groups and unmarked elements in positions related by symmetry"
+    )]
+    TooManyPieces {
+        /// The limit.
+        limit: u32,
+    },
+    /// The stereo groups of the record stand for too many sets of stereoisomers to tell apart.
+    #[error("the stereo groups stand for too many sets of stereoisomers")]
+    TooManySamples,
     /// A vertex has more neighbours than the search can count.
     #[error("an atom has more than 511 neighbours")]
     TooManyNeighbours,
@@ -173,9 +189,6 @@ impl Orderer {
         view.perception
             .keep_unequal_axes(&view.skeleton, &view.bare.generators);
         view.variables = claims::variables(&view.perception);
-        if !molecule.stereo_groups().is_empty() {
-            return Err(OrderError::StereoGroups);
-        }
         // Arrangements about metals are given, not open: they are part of the graph whose
         // automorphisms relate the other elements.
         let placed = if view.perception.placed.is_empty() {
@@ -193,19 +206,23 @@ impl Orderer {
                 .label(&self.graph, &self.limits, &mut steps, &mut labelling)?;
             Some(labelling)
         };
-        Solver {
+        let mut solver = Solver {
             graph: &mut self.graph,
             labeller: &mut self.labeller,
             perception: &view.perception,
             variables: &view.variables,
             limits: &self.limits,
             steps: &mut steps,
+        };
+        let bare = placed.as_ref().unwrap_or(&view.bare);
+        let groups =
+            claims::of_groups(&view.skeleton, &view.perception, &view.variables, molecule)?;
+        let (claims, written) = (&mut view.claims, &mut view.written);
+        if groups.is_empty() {
+            solver.solve(bare, claims, written)?;
+        } else {
+            solver.solve_groups(bare, groups, claims, written)?;
         }
-        .solve(
-            placed.as_ref().unwrap_or(&view.bare),
-            &mut view.claims,
-            &mut view.written,
-        )?;
         let constitution = key::digest(&view.constitution.certificate);
         view.constitution_key = Key::of(0, std::iter::once(constitution));
         let certificates = view.claims.certificates.iter();

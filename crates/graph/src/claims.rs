@@ -9,16 +9,32 @@
 //! * What remains is a list of assignments of the other elements, one for each canonical certificate
 //!   in the set. For almost every record it has one member; only unmarked elements that an
 //!   automorphism takes to marked ones make it longer, up to a limit.
+//!
+//! Records with stereo groups stand for sets of samples, see [`family`] and [`grouped`].
 
 use crate::{order::Permutation, stereo::Perception};
 
 mod action;
+mod family;
+mod grouped;
 mod orbits;
+mod pieces;
+mod place;
+mod primes;
+mod roles;
 mod solve;
+mod space;
 mod status;
+mod symmetries;
 mod variables;
 
+pub(crate) use family::{Alternative, Family, leaves_room};
+pub(crate) use grouped::{Point, masked};
+pub(crate) use pieces::{Freedom, Piece, of_groups};
+pub(crate) use place::{Place, place};
+pub(crate) use roles::Roles;
 pub(crate) use solve::{Claims, Solver};
+pub(crate) use space::{Space, Vector};
 pub(crate) use status::Status;
 pub(crate) use variables::{Variable, variables};
 

@@ -112,6 +112,9 @@ pub enum GroupKind {
     And,
     /// The drawn arrangement or that with the whole group inverted: one of the two.
     Or,
+    /// The drawn arrangement, that with the whole group inverted, or both: only the configuration
+    /// relative to each other is known.
+    Relative,
 }
 
 /// A group of stereo elements whose marks are meant relative to each other.

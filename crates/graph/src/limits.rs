@@ -27,6 +27,9 @@ pub struct Limits {
     /// Unmarked stereo elements in positions that symmetry relates to marked ones: the stereoisomers
     /// they allow are listed, two to this power. 8 by default.
     pub open_elements: u32,
+    /// In a record with stereo groups: groups, and unmarked elements, in positions that symmetry relates
+    /// to each other or to marked ones. Their arrangements are listed, two to this power. 12 by default.
+    pub stereo_pieces: u32,
     /// Steps of the search for the atom map of one pair: 500,000 by default, some 60 ns each.
     pub map_steps: u64,
     /// Raised from outside to end searches early, as if their limit had been reached.
@@ -41,6 +44,7 @@ impl Default for Limits {
             atoms: 200_000,
             order_steps: 100_000_000,
             open_elements: 8,
+            stereo_pieces: 12,
             map_steps: 500_000,
             stop: None,
         }

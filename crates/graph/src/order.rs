@@ -10,7 +10,7 @@ mod permutation;
 mod refine;
 mod search;
 
-pub(crate) use coloured::{Coloured, Placed, Unit};
+pub(crate) use coloured::{Coloured, Placed, Unit, ranked_parity};
 pub(crate) use permutation::Permutation;
 use refine::Inside;
 use search::Search;

@@ -3,6 +3,7 @@
 mod branching;
 mod constitution;
 mod coordination;
+mod groups;
 mod named;
 mod stereo;
 

@@ -26,6 +26,9 @@ pub enum StereoKind {
     Enantiomers,
     /// Stereoisomers that are not mirror images.
     Diastereomers,
+    /// Different mixtures that always have a stereoisomer in common: a racemate and one of its
+    /// enantiomers, say.
+    Composition,
     /// They may be the same: some sample that one record stands for is one of the other's.
     Undetermined,
     /// Surely different, but how is open.
@@ -58,6 +61,7 @@ impl StereoKind {
         match self {
             Self::Enantiomers => "enantiomers",
             Self::Diastereomers => "diastereomers",
+            Self::Composition => "composition",
             Self::Undetermined => "undetermined",
             Self::Unresolved => "unresolved",
         }
@@ -117,7 +121,8 @@ pub fn relate(orderer: &mut Orderer, a: &Structure, b: &Structure) -> Result<Ver
         Arrangement::Overlapping => StereoKind::Undetermined,
         Arrangement::MirrorImages => StereoKind::Enantiomers,
         Arrangement::Unlike => StereoKind::Diastereomers,
-        Arrangement::PossiblyMirrorImages => StereoKind::Unresolved,
+        Arrangement::Composition => StereoKind::Composition,
+        Arrangement::Unresolved => StereoKind::Unresolved,
     };
     Ok(closed(Relation::Stereo(kind)))
 }

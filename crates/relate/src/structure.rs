@@ -28,6 +28,8 @@ impl PrepareError {
             Self::Order(OrderError::TooManyAtoms { .. }) => "atom-limit",
             Self::Order(OrderError::TooManyNeighbours) => "neighbour-limit",
             Self::Order(OrderError::Stopped) => "stopped",
+            Self::Order(OrderError::TooManyPieces { .. }) => "stereo-group-limit",
+            Self::Order(OrderError::TooManySamples) => "sample-limit",
             Self::Order(OrderError::StereoGroups) => "stereo-groups",
             Self::Order(OrderError::PartlyMarkedCentres) => "partly-marked-centres",
             Self::Order(_) => "out-of-range",

@@ -12,7 +12,7 @@ use serde::Serialize;
 
 use crate::remarks::Noted;
 
-pub use describe::{Describe, Masses, Stereo, Unsaturation, describe};
+pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
 pub use keys::{KeyRow, key_row};
 pub use pair::{
     BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair, StereoEntry,

@@ -26,6 +26,9 @@ fn stereo(kind: StereoKind, explained: Option<&Explanation>) -> String {
         StereoKind::Diastereomers => {
             "Diastereomers: the same connectivity, a different arrangement in space, and not mirror images."
         }
+        StereoKind::Composition => {
+            "Composition: the same connectivity, and always a stereoisomer in common, but not the same mixture."
+        }
         StereoKind::Undetermined => {
             "Undetermined: the same connectivity; as marked, the two may or may not be the same stereoisomer."
         }

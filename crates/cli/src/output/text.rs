@@ -8,7 +8,7 @@ pub(crate) mod pair;
 use std::io::{self, Write};
 
 use molkin_formats::source::Format;
-use molkin_relate::wire::{Error, Prepared};
+use molkin_relate::wire::{Error, Group, Prepared};
 
 use layout::printable;
 
@@ -28,6 +28,16 @@ fn place(source: &str, record: u64, name: &str) -> String {
         text.push_str(&printable(name));
     }
     text
+}
+
+/// "AND group 1".
+fn group(group: Group) -> String {
+    let kind = match group.kind {
+        "and" => "AND",
+        "or" => "OR",
+        other => other,
+    };
+    format!("{kind} group {}", group.number)
 }
 
 /// The code, the place where there is one, and the message.

@@ -191,6 +191,7 @@ fn read_flag_zero(
     let reading = match flag_zero {
         FlagZero::Absolute => "as absolute",
         FlagZero::Mixture => "as a mixture with its mirror image",
+        FlagZero::Relative => "as relative: this, its mirror image, or both",
     };
     notes.push(Note {
         code: "chiral-flag-unset",
@@ -198,8 +199,12 @@ fn read_flag_zero(
         span: None,
         text: format!("the chiral flag is not set; the drawn configuration is read {reading}"),
     });
-    let kind = GroupKind::And;
-    (flag_zero == FlagZero::Mixture).then_some(StereoGroup { kind, atoms })
+    let kind = match flag_zero {
+        FlagZero::Absolute => return None,
+        FlagZero::Mixture => GroupKind::And,
+        FlagZero::Relative => GroupKind::Relative,
+    };
+    Some(StereoGroup { kind, atoms })
 }
 
 /// The parity of four ligands from the signed volume of their positions, the first being the

@@ -69,6 +69,8 @@ pub enum Lost {
         /// What it is.
         order: BondOrder,
     },
+    /// The stereo groups: marks are written as those of an absolute arrangement.
+    StereoGroups,
     /// More ring bonds are open at once than there are labels, 1 to 99. Those beyond are written as
     /// `%(100)` and so on, which is outside the standard and is not read back.
     RingLabels {
@@ -143,6 +145,9 @@ impl Writer {
         let layout = &self.layout;
         let mut lost = Vec::new();
         structure.report_lost_bonds(&mut lost);
+        if !form.groups.is_empty() {
+            lost.push(Lost::StereoGroups);
+        }
         let mut elements = form.stereo.iter();
         let mut rows = Vec::new();
         if elements.any(|element| element.shape != Shape::Tetrahedral) {

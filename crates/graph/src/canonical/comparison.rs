@@ -2,24 +2,31 @@
 
 use std::collections::BTreeSet;
 
-use crate::{Canonical, OrderError, Orderer, Shape, order::Labelling, stereo::Candidate};
+use crate::{
+    Canonical, OrderError, Orderer, Shape,
+    claims::{self, Place},
+    order::Labelling,
+    stereo::Candidate,
+};
 
-use super::colour;
+use super::{colour, samples};
 
-/// How two sets of stereoisomers of one constitution lie to each other.
+/// How the samples that two records of one constitution stand for lie to each other.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum Arrangement {
-    /// The same set.
+    /// The same samples.
     Same,
-    /// They share a stereoisomer, but are not the same set.
+    /// Some sample of one is a sample of the other, but not all are.
     Overlapping,
-    /// One stereoisomer each, mirror images of each other.
+    /// One sample each, mirror images of each other.
     MirrorImages,
-    /// No stereoisomer of one is one of the other or its mirror image.
+    /// No sample of one shares a stereoisomer with one of the other, or is its mirror image.
     Unlike,
-    /// Nothing shared, but some stereoisomer of one is the mirror image of one of the other, and one
-    /// of the sets has more than one.
-    PossiblyMirrorImages,
+    /// Two samples never the same, but always with a stereoisomer in common.
+    Composition,
+    /// Surely different, but not in one way: samples of the two may be mirror images, or may have a
+    /// stereoisomer in common, or nothing.
+    Unresolved,
 }
 
 /// Compares the claims of two records of the same labelled constitution.
@@ -36,6 +43,9 @@ pub fn arrangement(
 ) -> Result<Arrangement, OrderError> {
     if a.same_compound(b) {
         return Ok(Arrangement::Same);
+    }
+    if !a.claims.groups.is_empty() || !b.claims.groups.is_empty() {
+        return samples::compare(orderer, a, b);
     }
     // Elements that either side leaves free agree with anything: the free set of each side is a
     // union of orbits, so only the elements that both fix have to be compared.
@@ -66,7 +76,7 @@ pub fn arrangement(
     Ok(if ours.is_disjoint(&mirrored) {
         Arrangement::Unlike
     } else if a.claims.open || b.claims.open || !both_fix_all {
-        Arrangement::PossiblyMirrorImages
+        Arrangement::Unresolved
     } else {
         Arrangement::MirrorImages
     })
@@ -79,14 +89,15 @@ struct Common {
     metals: BTreeSet<u32>,
 }
 
-/// A stereo element by shape and the canonical places of its centres. Sets of elements closed under
-/// automorphisms have the same places whichever of the equivalent orders was found.
-type Place = (Shape, u32, u32);
-
 impl Canonical {
-    fn place(&self, candidate: &Candidate) -> Place {
-        let [a, b] = candidate.centres.map(|atom| self.bare.rank[atom as usize]);
-        (candidate.shape, a.min(b), a.max(b))
+    pub(super) fn place(&self, candidate: &Candidate) -> Place {
+        claims::place(candidate, &self.bare)
+    }
+
+    /// The places of a variable's candidates.
+    pub(super) fn candidate_places(&self, variable: usize) -> impl Iterator<Item = Place> {
+        let members = self.variables[variable].members.iter();
+        members.map(|&(index, _)| self.place(&self.perception.candidates[index]))
     }
 
     /// Whether automorphisms of the constitution take what is fixed to what is fixed: only then do
@@ -133,8 +144,7 @@ impl Canonical {
         let tied = self.tied_cages(other);
         (0..self.variables.len())
             .filter(|v| !self.claims.free[*v] || tied.contains(v))
-            .flat_map(|v| &self.variables[v].members)
-            .map(|&(index, _)| self.place(&self.perception.candidates[index]))
+            .flat_map(|v| self.candidate_places(v))
             .collect()
     }
 

@@ -1,7 +1,7 @@
 //! The stereo elements of a record as callers see them, on the atoms of the molecule.
 
 use crate::{
-    Canonical, DrawnCoordination, Ligand, Parity, Shape, Undrawable,
+    Canonical, DrawnCoordination, GroupKind, Ligand, Parity, Shape, Undrawable,
     claims::{Status, Variable},
     stereo::{Candidate, slot},
 };
@@ -34,6 +34,9 @@ pub struct StereoElement {
     pub quiet: bool,
     /// Elements with the same number are bridgeheads that determine each other.
     pub variable: usize,
+    /// The stereo group that its mark belongs to, if that makes a difference: its kind, and a number
+    /// that elements of one group share.
+    pub group: Option<(GroupKind, usize)>,
 }
 
 /// What is to be said about a record beside its stereo elements. Atoms count from 0.
@@ -96,11 +99,19 @@ impl Canonical {
                     mark,
                     quiet: candidate.quiet,
                     variable: number,
+                    group: self.group_of(number),
                 });
             }
         }
         found.sort_by_key(|element| element.centres);
         found
+    }
+
+    /// The stereo group of a variable, with its place among the groups.
+    pub(super) fn group_of(&self, variable: usize) -> Option<(GroupKind, usize)> {
+        let mut groups = self.claims.groups.iter().zip(0..);
+        let (group, number) = groups.find(|(group, _)| group.variables.contains(&variable))?;
+        Some((group.freedom.group(), number))
     }
 
     /// The arrangements about centres that are not tetrahedral, as far as they make a difference, on

@@ -3,7 +3,8 @@
 use std::collections::HashSet;
 
 use crate::{
-    Canonical, DrawnCoordination, Element, Ligand, Parity, Shape, claims::Status, stereo::slot,
+    Canonical, DrawnCoordination, Element, GroupKind, Ligand, Parity, Shape, claims::Status,
+    stereo::slot,
 };
 
 use super::placement;
@@ -49,6 +50,9 @@ pub struct CanonicalForm {
     /// Arrangements about centres that are not tetrahedral, by centre; each turned so that it is
     /// least.
     pub coordination: Vec<DrawnCoordination>,
+    /// The kinds of the stereo groups that make a difference, sorted. The marks show one arrangement
+    /// of each.
+    pub groups: Vec<GroupKind>,
 }
 
 impl Canonical {
@@ -113,8 +117,8 @@ impl Canonical {
 
     fn add_stereo(&self, form: &mut CanonicalForm, labelled: &[(u32, u32, u32)]) {
         let rank = |atom: u32| self.written.rank[atom as usize];
-        for (variable, status) in self.variables.iter().zip(&self.claims.statuses) {
-            let (Status::Marked, Some(odd)) = (status, variable.odd) else {
+        for (variable, shown) in self.variables.iter().zip(&self.claims.shown) {
+            let Some(odd) = *shown else {
                 continue;
             };
             for &(index, opposite) in &variable.members {
@@ -136,6 +140,9 @@ impl Canonical {
             }
         }
         form.stereo.sort_by_key(|element| element.centres);
+        let groups = self.claims.groups.iter();
+        form.groups = groups.map(|group| group.freedom.group()).collect();
+        form.groups.sort_unstable();
         for placed in &self.perception.placed {
             let centre = rank(placed.centre);
             let own = |ligand: u32| {

@@ -60,6 +60,15 @@ impl Action {
         }
     }
 
+    /// Variables that some automorphism moves or inverts.
+    pub(super) fn touched(&self, variables: usize) -> Vec<bool> {
+        let mut touched = vec![false; variables];
+        for entry in self.moves.iter().flatten() {
+            touched[entry.from] = true;
+        }
+        touched
+    }
+
     /// Variables that some automorphism inverts while it leaves all others as they are: they are
     /// not stereogenic in any record. Removing one may uncover the next.
     pub(super) fn never_stereogenic(&self, variables: usize) -> Vec<bool> {

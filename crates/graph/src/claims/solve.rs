@@ -6,7 +6,7 @@ use crate::{
     stereo::Perception,
 };
 
-use super::{Status, Variable, action::Action, orbits::Orbits};
+use super::{Piece, Status, Variable, action::Action, orbits::Orbits};
 
 /// The set of stereoisomers in normal form.
 #[derive(Debug, Default, Clone)]
@@ -21,10 +21,14 @@ pub(crate) struct Claims {
     /// Whether the set has more than one stereoisomer, quiet elements aside.
     pub(crate) open: bool,
     pub(crate) statuses: Vec<Status>,
+    /// Per variable: the arrangement that canonical text gives it, if any.
+    pub(crate) shown: Vec<Option<bool>>,
+    /// The stereo groups that make a difference, with the variables that count.
+    pub(crate) groups: Vec<Piece>,
 }
 
 /// Unmarked elements that are listed at the most, whatever the limits say: 2 to this power.
-const MOST_OPEN: u32 = 24;
+pub(super) const MOST_OPEN: u32 = 24;
 
 /// Labels one molecule under changing marks.
 pub(crate) struct Solver<'a> {
@@ -75,7 +79,8 @@ impl Solver<'_> {
         let action = Action::of(&bare.generators, self.perception, self.variables);
         let orbits = Orbits::of(&action, self.variables.len());
         let never = action.never_stereogenic(self.variables.len());
-        let mut free = self.surely_free(&orbits, &never);
+        let marked: Vec<bool> = self.variables.iter().map(|v| v.odd.is_some()).collect();
+        let mut free = self.surely_free(&orbits, &never, &marked);
         let assignments = self.assignments(&free)?;
         let mut found = self.distinct(assignments, &free, bare)?;
         let more = self.further_free(&found, &orbits, &free)?;
@@ -88,20 +93,31 @@ impl Solver<'_> {
         }
         *written = self.written(bare, &found, &free)?;
         claims.statuses = self.statuses(&orbits, &free, &never)?;
-        claims.open = self.differs_beside_quiet(&found, &free)?
-            || self.is_open(&found, &orbits, &free, &never)?;
+        let beside_quiet = self.differs_beside_quiet(&found, &free)?;
         (claims.assignments, claims.certificates) = found
             .into_iter()
             .map(|m| (m.assignment, m.labelling.certificate))
             .unzip();
+        // Where the set has several members it is open by that; else the inversions of one tell.
+        let first = claims.assignments.get(..1).unwrap_or_default();
+        claims.open = beside_quiet || self.is_open(first, &orbits, &free, &never)?;
+        let shown = self.variables.iter().zip(&free);
+        let shown = shown.map(|(variable, &free)| variable.odd.filter(|_| !free));
+        claims.shown = shown.collect();
+        claims.groups.clear();
         claims.free = free;
         Ok(())
     }
 
     /// Variables that are free without a doubt: never stereogenic, or unmarked with all their
     /// images.
-    fn surely_free(&self, orbits: &Orbits, never: &[bool]) -> Vec<bool> {
-        let marked = |v: usize| self.variables[v].odd.is_some() && !never[v];
+    pub(super) fn surely_free(
+        &self,
+        orbits: &Orbits,
+        never: &[bool],
+        marked: &[bool],
+    ) -> Vec<bool> {
+        let marked = |v: usize| marked[v] && !never[v];
         let mut orbit_marked = vec![false; self.variables.len()];
         for v in (0..self.variables.len()).filter(|&v| marked(v)) {
             orbit_marked[orbits.root[v]] = true;
@@ -245,6 +261,8 @@ impl Claims {
         self.assignments.clear();
         self.certificates.clear();
         self.statuses.clear();
+        self.shown.clear();
+        self.groups.clear();
         self.open = false;
     }
 }

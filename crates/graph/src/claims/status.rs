@@ -22,12 +22,12 @@ pub(crate) enum Status {
 }
 
 impl Solver<'_> {
-    /// Whether some inversion of a free element gives another stereoisomer. If none does from one
-    /// member of the set, the set has one member: each further inversion starts from an equivalent
-    /// assignment.
+    /// Whether some inversion of a free element gives another stereoisomer from one of the given
+    /// assignments. If none does from an assignment, it allows one stereoisomer: each further
+    /// inversion starts from an equivalent assignment.
     pub(super) fn is_open(
         &mut self,
-        found: &[Member],
+        assignments: &[Vec<bool>],
         orbits: &Orbits,
         free: &[bool],
         never: &[bool],
@@ -40,17 +40,16 @@ impl Solver<'_> {
         if !(0..free.len()).any(counts) {
             return Ok(false);
         }
-        let Some(member) = found.first() else {
-            return Ok(false);
-        };
-        let value = |v: usize| (!free[v] || counts(v)).then(|| member.assignment[v]);
-        let base = self.label(value)?;
-        let own = Action::of(&base.generators, self.perception, self.variables);
-        let own = Orbits::of(&own, free.len());
-        for v in (0..free.len()).filter(|&v| counts(v) && own.root[v] == v) {
-            let flipped = self.label(|w| value(w).map(|odd| odd ^ (w == v)))?;
-            if flipped.certificate != base.certificate {
-                return Ok(true);
+        for assignment in assignments {
+            let value = |v: usize| (!free[v] || counts(v)).then(|| assignment[v]);
+            let base = self.label(value)?;
+            let own = Action::of(&base.generators, self.perception, self.variables);
+            let own = Orbits::of(&own, free.len());
+            for v in (0..free.len()).filter(|&v| counts(v) && own.root[v] == v) {
+                let flipped = self.label(|w| value(w).map(|odd| odd ^ (w == v)))?;
+                if flipped.certificate != base.certificate {
+                    return Ok(true);
+                }
             }
         }
         Ok(false)

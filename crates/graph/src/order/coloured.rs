@@ -101,7 +101,7 @@ impl Coloured {
 
 /// The parity of a unit when its ligands are put in the order of `rank`, and its centres in that
 /// order too: `None` while two of its ligands share a rank.
-pub(super) fn ranked_parity(unit: &Unit, rank: impl Fn(u32) -> u32) -> Option<bool> {
+pub(crate) fn ranked_parity(unit: &Unit, rank: impl Fn(u32) -> u32) -> Option<bool> {
     let mut ranks = unit.ligands.map(&rank);
     let mut odd = unit.odd;
     // Exchanging the two ends moves two ligands past two others, which is even, so only the order

@@ -2,12 +2,13 @@
 
 use std::collections::{HashMap, HashSet, VecDeque};
 
-use molkin_graph::{Ligand, Mark, Polyhedron, Shape, StereoElement};
+use molkin_graph::{GroupKind, Ligand, Mark, Polyhedron, Shape, StereoElement};
 
 use crate::Structure;
 
 use super::{
     BondDifference, Explanation, coordination,
+    groups::{self, Marked},
     named::{named, unfolded},
 };
 
@@ -46,6 +47,8 @@ pub enum StereoChange {
     MarkedOnlyInA,
     /// Only B marks it.
     MarkedOnlyInB,
+    /// Both mark it, but in stereo groups of different kind or extent, or in a group and absolutely.
+    GroupDiffers,
 }
 
 impl StereoChange {
@@ -56,6 +59,7 @@ impl StereoChange {
             Self::Rearranged => "rearranged",
             Self::MarkedOnlyInA => "marked-only-in-a",
             Self::MarkedOnlyInB => "marked-only-in-b",
+            Self::GroupDiffers => "group-differs",
         }
     }
 }
@@ -71,6 +75,8 @@ pub struct StereoDifference {
     pub b: Vec<u32>,
     /// What happens.
     pub change: StereoChange,
+    /// The stereo groups of the mark in A and in B: kind and number.
+    pub groups: [Option<(GroupKind, usize)>; 2],
 }
 
 /// Work for one pair, in atoms mapped: some 4,000 maps of a hundred atoms.
@@ -232,31 +238,32 @@ fn differences(
         .map(|element| (sorted(element.centres), element))
         .collect();
     let mut found = Vec::new();
+    let mut marked = Vec::new();
     for element in in_a {
         let Some([x, y]) = both(element.centres.map(image)) else {
             continue;
         };
         let other = rest.remove(&sorted([x, y]));
-        let change = match (element.mark, other.map(|o| o.mark)) {
-            (Mark::Given(_), Some(Mark::Given(_))) => {
-                let turned = other.is_some_and(|other| opposed(a, b, element, other, image));
-                if !turned {
-                    continue;
-                }
-                StereoChange::Inverted
-            }
-            (Mark::Given(_), _) => StereoChange::MarkedOnlyInA,
-            (Mark::Absent, Some(Mark::Given(_))) => StereoChange::MarkedOnlyInB,
-            (Mark::Absent, _) => continue,
-        };
-        let atoms = (distinct(element.centres), distinct([x, y]));
-        found.push(StereoDifference {
+        let difference = |change| StereoDifference {
             geometry: Geometry::Element(element.shape),
-            a: atoms.0,
-            b: atoms.1,
+            a: distinct(element.centres),
+            b: distinct([x, y]),
             change,
-        });
+            groups: [element.group, other.and_then(|o| o.group)],
+        };
+        match (element.mark, other.map(|o| (o, o.mark))) {
+            (Mark::Given(_), Some((other, Mark::Given(_)))) => marked.push(Marked {
+                opposed: opposed(a, b, element, other, image),
+                difference: difference(StereoChange::Inverted),
+            }),
+            (Mark::Given(_), _) => found.push(difference(StereoChange::MarkedOnlyInA)),
+            (Mark::Absent, Some((_, Mark::Given(_)))) => {
+                found.push(difference(StereoChange::MarkedOnlyInB));
+            }
+            (Mark::Absent, _) => {}
+        }
     }
+    found.extend(groups::differences(marked));
     let inverse: HashMap<u32, u32> = if rest.is_empty() {
         HashMap::new()
     } else {
@@ -278,6 +285,7 @@ fn differences(
                 a: distinct(back),
                 b: distinct(element.centres),
                 change: StereoChange::MarkedOnlyInB,
+                groups: [None, element.group],
             });
         }
     }

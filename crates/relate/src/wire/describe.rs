@@ -1,6 +1,8 @@
 //! One described record.
 
-use molkin_graph::{Element, Mark, Molecule, StereoElement, average_mass, monoisotopic_mass};
+use molkin_graph::{
+    Element, GroupKind, Mark, Molecule, StereoElement, average_mass, monoisotopic_mass,
+};
 use serde::Serialize;
 
 use crate::{Geometry, Structure};
@@ -78,6 +80,18 @@ pub struct Stereo {
     pub element: &'static str,
     /// `given` or `absent`.
     pub mark: &'static str,
+    /// The stereo group of the mark, where it has one.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub group: Option<Group>,
+}
+
+/// A stereo group.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+pub struct Group {
+    /// `and`, `or` or `relative`.
+    pub kind: &'static str,
+    /// Equal for the elements of one group; from 1.
+    pub number: usize,
 }
 
 /// Describes a record in the terms of the contract; what cannot be described comes with `errors`.
@@ -129,6 +143,7 @@ impl Describe {
             atoms: from_one(&[element.centre]),
             element: Geometry::Coordination(element.polyhedron).as_str(),
             mark: "given",
+            group: None,
         });
         self.stereo = Some(elements.iter().map(Stereo::of).chain(metals).collect());
     }
@@ -149,6 +164,20 @@ impl Stereo {
                 Mark::Given(_) => "given",
                 Mark::Absent => "absent",
             },
+            group: element.group.map(Group::of),
+        }
+    }
+}
+
+impl Group {
+    pub(super) fn of((kind, number): (GroupKind, usize)) -> Self {
+        Self {
+            kind: match kind {
+                GroupKind::And => "and",
+                GroupKind::Or => "or",
+                GroupKind::Relative => "relative",
+            },
+            number: number + 1,
         }
     }
 }

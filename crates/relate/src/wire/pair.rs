@@ -10,7 +10,7 @@ use crate::{
     words,
 };
 
-use super::{Error, Input, Note, Prepared, VERSION, Which, from_one};
+use super::{Error, Group, Input, Note, Prepared, VERSION, Which, from_one};
 
 /// The result for one pair. Either `errors` or the fields from `relation` on are there.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize)]
@@ -144,8 +144,14 @@ pub struct StereoEntry {
     pub b: Vec<u32>,
     /// `tetrahedral`, `double-bond`, `axis`, `square-planar`, `trigonal-bipyramidal` or `octahedral`.
     pub element: &'static str,
-    /// `inverted`, `rearranged`, `marked-only-in-a` or `marked-only-in-b`.
+    /// `inverted`, `rearranged`, `marked-only-in-a`, `marked-only-in-b` or `group-differs`.
     pub change: &'static str,
+    /// The stereo group of the mark in A, where it has one.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub group_a: Option<Group>,
+    /// The stereo group of the mark in B, where it has one.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub group_b: Option<Group>,
 }
 
 /// Compares two records and says it in the terms of the contract. With `brief` the map and all that
@@ -293,6 +299,8 @@ impl Pair {
                         b: from_one(&difference.b),
                         element: difference.geometry.as_str(),
                         change: difference.change.as_str(),
+                        group_a: difference.groups[0].map(Group::of),
+                        group_b: difference.groups[1].map(Group::of),
                     })
                     .collect(),
             );

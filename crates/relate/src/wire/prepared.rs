@@ -168,6 +168,11 @@ fn noted(lost: &Lost, order: &[u32]) -> Noted {
                 text,
             }
         }
+        Lost::StereoGroups => Noted {
+            code: "smiles-loses-groups",
+            atoms: Vec::new(),
+            text: "SMILES cannot say stereo groups: it shows one arrangement of them.".to_owned(),
+        },
         Lost::RingLabels { .. } => Noted {
             code: "smiles-ring-labels",
             atoms: Vec::new(),

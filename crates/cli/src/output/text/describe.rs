@@ -33,10 +33,14 @@ pub(crate) fn write(
                 "absent" => "unmarked",
                 other => other,
             };
+            let group = entry
+                .group
+                .map(|group| format!(", {}", super::group(group)));
             let text = format!(
-                "{}: {}, {mark}",
+                "{}: {}, {mark}{}",
                 labels.element(&entry.atoms),
-                entry.element
+                entry.element,
+                group.unwrap_or_default()
             );
             labelled(out, style, (None, "stereo"), &text)?;
         }

@@ -2,13 +2,13 @@
 
 use std::io::{self, Write};
 
-use molkin_relate::wire::{Bonds, Branching, Pair, Prepared, StereoEntry, Which};
+use molkin_relate::wire::{Bonds, Branching, Group, Pair, Prepared, StereoEntry, Which};
 
 use crate::output::style::{Role, Style};
 
 use super::{
     atoms::{Labels, MOBILE},
-    excerpt, fault,
+    excerpt, fault, group as group_in_words,
     layout::{HARD_BLANK, labelled, sentence},
     place,
 };
@@ -147,6 +147,12 @@ impl Differences<'_> {
             ("inverted", _) => "inverted",
             ("marked-only-in-a", _) => "marked in A, open in B",
             ("marked-only-in-b", _) => "open in A, marked in B",
+            ("group-differs", _) => {
+                let said = |group: Option<Group>| {
+                    group.map_or_else(|| "absolute".to_owned(), group_in_words)
+                };
+                &format!("{} in A, {} in B", said(entry.group_a), said(entry.group_b))
+            }
             (other, _) => other,
         };
         let (in_a, in_b) = (a.element(&entry.a), b.element(&entry.b));
