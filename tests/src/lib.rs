@@ -13,6 +13,8 @@
 mod alkanes;
 mod comparer;
 mod distance;
+mod extent;
+mod kekule;
 mod molfile;
 mod numbers;
 mod pairs;
@@ -29,6 +31,8 @@ pub use crate::{
     alkanes::{Tree, alkanes},
     comparer::Comparer,
     distance::{least_distance, stated_distance},
+    extent::is_full_run,
+    kekule::other_kekule_form,
     molfile::{molfiles, renumbered_molfile},
     numbers::Numbers,
     pairs::{Expected, Pair, definition_pairs, fixture_pairs},
