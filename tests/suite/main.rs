@@ -13,6 +13,7 @@
 mod bounds;
 mod claims;
 mod collections;
+mod coordination;
 mod counts;
 mod ctfile;
 mod damaged;
