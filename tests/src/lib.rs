@@ -11,6 +11,7 @@
 )]
 
 mod alkanes;
+mod collections;
 mod comparer;
 mod distance;
 mod extent;
@@ -29,6 +30,7 @@ pub mod fuzz;
 
 pub use crate::{
     alkanes::{Tree, alkanes},
+    collections::collection,
     comparer::Comparer,
     distance::{least_distance, stated_distance},
     extent::is_full_run,

@@ -25,6 +25,7 @@ mod fixtures;
 mod golden;
 mod graphs;
 mod hostile;
+mod mirror;
 mod pages;
 mod relations;
 mod renumbering;
