@@ -30,4 +30,5 @@ mod pages;
 mod relations;
 mod renumbering;
 mod smiles;
+mod stability;
 mod symmetry;
