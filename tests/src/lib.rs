@@ -11,8 +11,11 @@
 )]
 
 mod alkanes;
+mod collections;
 mod comparer;
 mod distance;
+mod extent;
+mod kekule;
 mod molfile;
 mod numbers;
 mod pairs;
@@ -27,8 +30,11 @@ pub mod fuzz;
 
 pub use crate::{
     alkanes::{Tree, alkanes},
+    collections::collection,
     comparer::Comparer,
     distance::{least_distance, stated_distance},
+    extent::is_full_run,
+    kekule::other_kekule_form,
     molfile::{molfiles, renumbered_molfile},
     numbers::Numbers,
     pairs::{Expected, Pair, definition_pairs, fixture_pairs, grouped_pairs},

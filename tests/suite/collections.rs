@@ -1,16 +1,10 @@
 //! Collections of real structures: what is read, and what canonical SMILES keeps.
 
-use std::{
-    collections::BTreeMap,
-    io::{Cursor, Read, Seek},
-};
+use std::collections::BTreeMap;
 
-use molkin_formats::{
-    smiles,
-    source::{self, Format, RecordOutcome},
-};
+use molkin_formats::{smiles, source::RecordOutcome};
 use molkin_graph::Canonical;
-use molkin_tests::{Comparer, Table, Tally, read_text, shared, workspace};
+use molkin_tests::{Comparer, Table, Tally, collection, workspace};
 use rstest::rstest;
 
 /// The reason for each refused record of a file, by its number.
@@ -24,21 +18,6 @@ fn refusals(file: &str) -> BTreeMap<u64, String> {
             (record.parse().unwrap(), code.to_owned())
         })
         .collect()
-}
-
-/// The records of a file. That of drugs is a table of one column under a header.
-fn records(file: &str) -> Option<source::Records<'static>> {
-    let path = shared("collections")?.join(file);
-    let options = source::ReadOptions::default();
-    if file.ends_with(".csv") {
-        let mut text = Cursor::new(read_text(&path));
-        let mut header = [0; 7];
-        text.read_exact(&mut header).unwrap();
-        assert_eq!(&header, b"smiles\n");
-        text.seek(std::io::SeekFrom::Start(7)).unwrap();
-        return Some(source::Records::new(file, text, Format::Smiles, options));
-    }
-    Some(source::Records::open(&path, options).unwrap())
 }
 
 /// The canonical view of a record, or the code of the error.
@@ -76,7 +55,7 @@ fn read_back(comparer: &mut Comparer, canonical: &Canonical) -> Result<bool, Str
 #[case::nci("nci200.sdf.gz", 200)]
 #[case::mols("mols.1000.sdf.gz", 1_000)]
 fn collections_are_read_and_written(#[case] file: &'static str, #[case] stated: usize) {
-    let Some(records) = records(file) else {
+    let Some(records) = collection(file) else {
         return;
     };
     let mut refusals = refusals(file);

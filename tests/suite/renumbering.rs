@@ -6,8 +6,8 @@ use molkin_formats::{molfile, smiles};
 use molkin_graph::{Atom, BondOrder, Element, Key, Molecule, MoleculeBuilder};
 use molkin_tests::{
     Comparer, Numbers, Tally, all_markings, definition_pairs, first_word, molfiles,
-    random_spelling, read_text, renumbered, renumbered_form, renumbered_molfile, shared,
-    with_hydrogens_written,
+    other_kekule_form, random_spelling, read_text, renumbered, renumbered_form, renumbered_molfile,
+    shared, with_hydrogens_written,
 };
 use rstest::rstest;
 
@@ -46,6 +46,23 @@ fn molecule_copies(
     let key = comparer.key(molecule)?;
     for _ in 0..times {
         let copy = renumbered(molecule, numbers);
+        if comparer.key(&copy)? != key {
+            return Err(format!("another key: {copy:?}"));
+        }
+    }
+    Ok(true)
+}
+
+/// The same with double bonds elsewhere in their rings.
+fn kekule_forms(
+    comparer: &mut Comparer,
+    molecule: &Molecule,
+    numbers: &mut Numbers,
+    times: usize,
+) -> Result<bool, String> {
+    let key = comparer.key(molecule)?;
+    for _ in 0..times {
+        let copy = renumbered(&other_kekule_form(molecule, numbers), numbers);
         if comparer.key(&copy)? != key {
             return Err(format!("another key: {copy:?}"));
         }
@@ -116,6 +133,7 @@ type Check = fn(&mut Comparer, &Molecule, &mut Numbers, usize) -> Result<bool, S
 
 #[rstest]
 #[case::molecules("renumbered molecules", molecule_copies)]
+#[case::kekule_forms("other Kekulé forms", kekule_forms)]
 #[case::hydrogens("written hydrogens", hydrogens)]
 #[case::spellings("respelled SMILES", spellings)]
 #[case::random_spellings("random spellings", random_spellings)]
@@ -195,6 +213,7 @@ fn buckminsterfullerene() -> Molecule {
 
 #[rstest]
 #[case::molecules("renumbered cages", molecule_copies)]
+#[case::kekule_forms("Kekulé forms of cages", kekule_forms)]
 #[case::hydrogens("cages with written hydrogens", hydrogens)]
 #[case::spellings("respelled cages", spellings)]
 #[case::random_spellings("random spellings of cages", random_spellings)]

@@ -4,18 +4,14 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use molkin_formats::smiles::{ReadOptions, Reader};
 use molkin_graph::Molecule;
-use molkin_tests::{Comparer, Table, Tally, first_word, read_text, shared, workspace};
+use molkin_tests::{Comparer, Table, Tally, first_word, is_full_run, read_text, shared, workspace};
 use rstest::rstest;
 
 /// Of the records in the big files the default run reads one in so many; `MOLKIN_FULL=1` all.
 const SAMPLE: usize = 20;
 
 fn stride() -> usize {
-    if std::env::var_os("MOLKIN_FULL").is_some_and(|value| value == "1") {
-        1
-    } else {
-        SAMPLE
-    }
+    if is_full_run() { 1 } else { SAMPLE }
 }
 
 /// Everything that the specification sets as code behind its grammar, each text once. Characters in
