@@ -60,12 +60,17 @@ impl ReadError {
     }
 
     /// The same error for a text that is part of another one: `moved` says where its places are
-    /// there, and `line` is the line at the first.
+    /// there, and `line` gives the lines there by their numbers.
     #[cfg(feature = "table")]
-    pub(crate) fn moved(self, moved: impl Fn(Span) -> Span, line: &[u8]) -> Self {
+    pub(crate) fn moved<'a>(
+        self,
+        moved: impl Fn(Span) -> Span,
+        line: impl Fn(u32) -> &'a [u8],
+    ) -> Self {
+        let span = moved(self.span);
         Self {
             related: self.related.map(&moved),
-            ..Self::new(self.kind, moved(self.span), line)
+            ..Self::new(self.kind, span, line(span.line))
         }
     }
 

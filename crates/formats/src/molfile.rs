@@ -35,9 +35,10 @@ use block::Fault;
 pub(crate) use block::{Block, Line, Lines};
 pub(crate) use field::decode;
 use header::Version;
+pub(crate) use header::states_version;
 use molkin_graph::Limits;
 
-use crate::{Note, ReadError, ReadErrorKind, Record};
+use crate::{Note, ReadError, ReadErrorKind, Record, Span};
 
 /// How molfiles are read.
 ///
@@ -108,6 +109,8 @@ pub fn parse(text: &[u8]) -> Result<Record, ReadError> {
 /// As [`parse`], and what exceeds [`ReadOptions::limits`].
 pub fn parse_with(text: &[u8], options: &ReadOptions) -> Result<Record, ReadError> {
     let block = Block::new(strip_signature(text), 1);
+    check_lines(&block, text.len(), options.limits.line_bytes)
+        .map_err(|fault| block.error(fault))?;
     let mut lines = block.lines();
     let mut record = read(&mut lines, options, text.len()).map_err(|fault| block.error(fault))?;
     if let Some(line) = lines.find(|line| !line.is_blank()) {
@@ -154,6 +157,21 @@ pub(crate) fn read(
         notes: drawing.notes,
         properties: Vec::new(),
     })
+}
+
+/// Refuses a line of more bytes than `limit`. Sources check their lines as they come; of a text in
+/// memory, only one that is longer than the limit is looked at.
+fn check_lines(block: &Block<'_>, length: usize, limit: usize) -> Result<(), Fault> {
+    if length <= limit {
+        return Ok(());
+    }
+    match block.lines().find(|line| line.text.len() > limit) {
+        None => Ok(()),
+        Some(line) => {
+            let place = Span::at_offset(line.number, limit, 0);
+            Err(Fault::new(ReadErrorKind::LineTooLong { limit }, place))
+        }
+    }
 }
 
 /// Takes off the signature that some editors put in front of UTF-8.

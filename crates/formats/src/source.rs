@@ -2,7 +2,7 @@
 //!
 //! ```text
 //! .smi .smiles     one SMILES a line           .mol          one molfile
-//! .sdf .sd         molfiles with data items    .csv .tsv     tables with a column of SMILES (feature `table`)
+//! .sdf .sd         molfiles with data items    .csv .tsv     tables with a column of structures (feature `table`)
 //! ```
 //! and `.gz` behind any of them (feature `gzip`).
 
@@ -28,9 +28,9 @@ pub use self::{error::SourceError, format::Format};
 /// How records are read, by format.
 #[derive(Debug, Clone, Default)]
 pub struct ReadOptions {
-    /// For SMILES, those in tables included.
+    /// For SMILES, those in tables included, and the bounds on the rows of tables.
     pub smiles: smiles::ReadOptions,
-    /// For molfiles, those in SDF included.
+    /// For molfiles, those in SDF and in tables included.
     pub molfile: molfile::ReadOptions,
     /// For tables.
     pub columns: Columns,
@@ -87,6 +87,7 @@ impl<'s> Reader<'s> {
     fn table(name: &str, source: Source<'s>, delimiter: Delimiter, options: ReadOptions) -> Self {
         let options = table::ReadOptions {
             smiles: options.smiles,
+            molfile: options.molfile,
             columns: options.columns,
         };
         match table::Records::new(source, delimiter, &options) {

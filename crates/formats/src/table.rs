@@ -1,4 +1,4 @@
-//! Tables: rows of delimited fields, one of which holds a SMILES.
+//! Tables: rows of delimited fields, one of which holds a structure: a SMILES or a molfile.
 //!
 //! ```text
 //! table  := header row*                      row := field { delimiter field } line-end
@@ -18,7 +18,7 @@ mod rows;
 
 use thiserror::Error;
 
-use crate::{ReadError, smiles};
+use crate::{ReadError, molfile, smiles};
 
 #[cfg(feature = "table")]
 pub use records::Records;
@@ -31,7 +31,8 @@ pub(crate) use header::is_header;
 /// A column that is asked for must be there: as it is written, or else whatever its case. Where none
 /// is asked for, the first of a list of usual titles is taken that the table has, whatever its case
 /// and with blanks, `-` and `_` left out: for structures *isomeric SMILES, SMILES, canonical SMILES,
-/// smi, structure, molecule, mol, compound structure*, for names *name, title, compound name, ID,
+/// smi, molfile, molblock, structure,
+/// molecule, mol, compound structure*, for names *name, title, compound name, ID,
 /// identifier, compound ID, code, compound, sample, sample ID, molecule name, catalog number, number*.
 /// A table may lack names, but no structures.
 #[derive(Debug, Clone, Default, PartialEq, Eq)]
@@ -57,6 +58,8 @@ pub enum Delimiter {
 pub struct ReadOptions {
     /// How the SMILES are read, and the bounds on rows.
     pub smiles: smiles::ReadOptions,
+    /// How the molfiles are read.
+    pub molfile: molfile::ReadOptions,
     /// Which columns are read.
     pub columns: Columns,
 }

@@ -77,6 +77,11 @@ fn looks_like_counts(line: Line<'_>) -> bool {
     count(1) && count(4) && (stated.is_empty() || stated.starts_with(b"V"))
 }
 
+/// Whether a line states a version of the format where a counts line has it.
+pub(crate) fn states_version(line: Line<'_>) -> bool {
+    matches!(line.field(34, 6).text(), b"V2000" | b"V3000")
+}
+
 fn version(counts: Line<'_>) -> Result<Version, Fault> {
     let field = counts.field(34, 6);
     match field.text() {

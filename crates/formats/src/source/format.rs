@@ -56,11 +56,12 @@ impl Format {
     pub fn guess(start: &[u8]) -> Self {
         let start = start.strip_prefix(b"\xEF\xBB\xBF").unwrap_or(start);
         let counts = molfile::Block::new(start, 1).lines().nth(3);
-        let version = counts.map(|line| line.field(34, 6).text());
-        match version {
-            Some(b"V2000" | b"V3000") => Self::Sdf,
-            _ if is_table(start) => Self::Csv,
-            _ => Self::Smiles,
+        if counts.is_some_and(molfile::states_version) {
+            Self::Sdf
+        } else if is_table(start) {
+            Self::Csv
+        } else {
+            Self::Smiles
         }
     }
 }

@@ -5,11 +5,13 @@ use super::{Columns, HeaderError};
 /// Titles of structure columns, as [`plain`] writes them, the first choice first: what states the
 /// stereo comes before what may have lost it, and a statement of the format before a word that may
 /// mean anything.
-const STRUCTURES: [&str; 8] = [
+const STRUCTURES: [&str; 10] = [
     "isomericsmiles",
     "smiles",
     "canonicalsmiles",
     "smi",
+    "molfile",
+    "molblock",
     "structure",
     "molecule",
     "mol",
@@ -149,6 +151,8 @@ mod tests {
     #[case("Molecule,Compound-ID,title", 0, Some(2))]
     #[case("price,MOL,MOL", 1, None)]
     #[case("smiles,molecule", 0, None)]
+    #[case("molfile,smiles", 1, None)]
+    #[case("mol,Mol Block", 1, None)]
     fn columns_by_usual_titles(
         #[case] line: &str,
         #[case] structure: usize,

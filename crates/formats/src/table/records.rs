@@ -7,7 +7,11 @@ use super::{
     header::Header,
     rows::{MOST_COLUMNS, Rows},
 };
-use crate::{ReadError, ReadErrorKind, Record, Span, molfile::decode, smiles};
+use crate::{
+    ReadError, ReadErrorKind, Record, Span,
+    molfile::{self, Block, decode},
+    smiles,
+};
 
 /// The records of a table, one for each row after the header.
 ///
@@ -37,6 +41,7 @@ pub struct Records<R> {
     pub(super) rows: Rows<R>,
     header: Header,
     reader: smiles::Reader,
+    molfile: molfile::ReadOptions,
     title: String,
     ended: bool,
 }
@@ -59,6 +64,7 @@ impl<R: BufRead> Records<R> {
             rows,
             header,
             reader: smiles::Reader::new(options.smiles),
+            molfile: options.molfile,
             title: String::new(),
             ended: false,
         })
@@ -140,22 +146,34 @@ impl<R: BufRead> Records<R> {
         let Some((field, value)) = self.rows.row().field(self.header.structure) else {
             return Ok(Record::default());
         };
-        let text = value.trim_ascii_start();
-        let blanks = value.len() - text.len();
-        let moved = |span: Span| {
-            let offset = (span.column as usize).saturating_sub(1);
-            field.part(blanks + offset, span.width as usize)
+        // Blank lines in front belong to a molfile.
+        let (text, outcome) = if is_molfile(value) {
+            (value, molfile::parse_with(value, &self.molfile))
+        } else {
+            let text = value.trim_ascii_start();
+            (text, self.reader.read(text.trim_ascii_end(), 1))
         };
-        match self.reader.read(text.trim_ascii_end(), 1) {
+        let blanks = value.len() - text.len();
+        let moved = |span: Span| field.place(span, blanks);
+        match outcome {
             Ok(mut record) => {
                 for note in &mut record.notes {
                     note.span = note.span.map(moved);
                 }
                 Ok(record)
             }
-            Err(error) => Err(error.moved(moved, self.rows.line_of(field))),
+            Err(error) => Err(error.moved(moved, |line| self.rows.line_at(field, line))),
         }
     }
+}
+
+/// Whether a value of several lines is a molfile: one of its first lines states a version, or it
+/// has an end. Not just the fourth line, so that one whose first line is lost is an error with that
+/// reason.
+fn is_molfile(value: &[u8]) -> bool {
+    let lines = || Block::new(value, 1).lines();
+    value.contains(&b'\n')
+        && (lines().take(4).any(molfile::states_version) || lines().any(|line| line.is_end()))
 }
 
 impl<R: BufRead> Iterator for Records<R> {

@@ -77,15 +77,20 @@ impl Field {
         Span::at_offset(self.line, self.raw.start - self.line_start, self.raw.len())
     }
 
-    /// The place of a stretch of the value: exact where the file has the value as it is, or else the
-    /// whole field.
-    pub(super) fn part(&self, offset: usize, width: usize) -> Span {
-        let quotes = self.raw.len() - self.value.len();
-        let start = self.raw.start - self.line_start + offset;
-        match quotes {
-            0 => Span::at_offset(self.line, start, width),
-            2 => Span::at_offset(self.line, start + 1, width),
-            _ => self.span(),
+    /// Where in the file a place of the value stands that is counted behind its first `blanks`
+    /// bytes: exact where the file has the value as it is, or else the whole field.
+    pub(super) fn place(&self, span: Span, blanks: usize) -> Span {
+        let quote = match self.raw.len() - self.value.len() {
+            0 => 0,
+            2 => 1,
+            _ => return self.span(),
+        };
+        let line = self.line.saturating_add(span.line.saturating_sub(1));
+        if line > self.line {
+            return Span { line, ..span };
         }
+        let column = (span.column as usize).saturating_sub(1);
+        let start = self.raw.start - self.line_start + quote + blanks;
+        Span::at_offset(line, start + column, span.width as usize)
     }
 }

@@ -274,9 +274,14 @@ impl<R> Rows<R> {
 
     /// The line on which a field begins.
     pub(super) fn line_of(&self, field: &Field) -> &[u8] {
-        let line = &self.held[field.line_start..];
-        let end = line.iter().position(|&byte| byte == b'\n');
-        &line[..end.unwrap_or(line.len())]
+        self.line_at(field, field.line)
+    }
+
+    /// The line with a number, at or behind the start of a field.
+    pub(super) fn line_at(&self, field: &Field, line: u32) -> &[u8] {
+        let mut lines = self.held[field.line_start..].split(|&byte| byte == b'\n');
+        let ahead = line.saturating_sub(field.line) as usize;
+        lines.nth(ahead).unwrap_or_default()
     }
 }
 

@@ -16,7 +16,7 @@ fn options(limits: Limits) -> ReadOptions {
             limits,
             ..smiles::ReadOptions::default()
         },
-        columns: Columns::default(),
+        ..ReadOptions::default()
     }
 }
 
@@ -94,6 +94,58 @@ fn places_are_those_of_the_file() {
     g! field-count: 10:2: the row has 1 field, but the header names 3
     h! field-count: 11:6: the row has 4 fields, but the header names 3
     i: 1 remark="fine"
+    "#);
+}
+
+/// Water of version 2000, methylamine of version 3000 with a doubled quote, both without a name.
+const MOLFILES: &str = "remark,molfile,id
+,\"
+
+  first comment
+  1  0  0  0  0  0            999 V2000
+    0.0000    0.0000    0.0000 O   0  0
+M  END
+\",a
+,\"
+
+a \"\"quoted\"\" comment
+  0  0  0     0  0            999 V3000
+M  V30 BEGIN CTAB
+M  V30 COUNTS 2 1 0 0 0
+M  V30 BEGIN ATOM
+M  V30 1 C 0 0 0 0
+M  V30 2 N 1 0 0 0
+M  V30 END ATOM
+M  V30 BEGIN BOND
+M  V30 1 1 1 2
+M  V30 END BOND
+M  V30 END CTAB
+M  END\",b
+";
+
+#[rstest]
+fn molfiles_in_fields(#[values("\n", "\r\n", "\r")] line_end: &str, #[values(5, 64)] piece: usize) {
+    let text = MOLFILES.replace('\n', line_end);
+    let found = rows(text.as_bytes(), Limits::default(), piece);
+    assert_eq!(found, [r#"a: 1 remark="""#, r#"b: 2 remark="""#]);
+}
+
+/// The title of a molfile is the name where no column has names; places are lines of the file.
+#[test]
+fn molfiles_have_names_and_places() {
+    let text = "x,mol\n1,\"water\n\n\n  1  0  0  0  0  0            999 V2000\n    0.0000    0.0000    0.0000 O   0  0\nM  END\"\n\
+        2,\"none\n\n\n  1  0  0  0  0  0            999 V2000\n    0.0000    0.0000    0.0000 Xx  0  0\nM  END\"\n\
+        3,\"a \"\"b\"\"\n\n\n  1  0  0  0  0  0            999 V2000\n    0.0000    0.0000    0.0000 Xx  0  0\nM  END\"\n\
+        4,\"\n\n  0  0  0  0  0  0            999 V2000\nM  END\"\n\
+        5,\"$RXN\n\n\n\nM  END\"\n\
+        6,\"C\nM  EN\"\n";
+    assert_snapshot!(read(text), @r#"
+    water: 1 x="1"
+    ! unknown-element: 12:32: "Xx" is not the symbol of an element
+    ! unknown-element: 14:3: "Xx" is not the symbol of an element
+    ! header-line-missing: 22:1: this is the counts line, but three lines belong before it: is a blank first line missing?
+    ! unsupported: 24:4: a reaction file is not read
+    M  EN: 1 x="6"
     "#);
 }
 

@@ -214,6 +214,29 @@ fn query_lines(#[case] line: &str, #[case] code: &str) {
 }
 
 #[test]
+fn a_line_in_memory_is_bounded_as_one_of_a_source() {
+    let text = format!(
+        "{}\n>  <long>\n{}\n",
+        draw_solid(&[("C", 0.0, 0.0, 0.0)], &[], ""),
+        "x".repeat(70)
+    );
+    let read = |line_bytes| {
+        let limits = Limits {
+            line_bytes,
+            ..Limits::default()
+        };
+        let options = molfile::ReadOptions {
+            limits,
+            ..molfile::ReadOptions::default()
+        };
+        molfile::parse_with(text.as_bytes(), &options)
+    };
+    assert!(read(70).is_ok());
+    let error = read(69).unwrap_err();
+    assert_eq!(error.to_string(), "9:70: the line is longer than 69 bytes");
+}
+
+#[test]
 fn limits() {
     let limits = Limits {
         atoms: 2,
