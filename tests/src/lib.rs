@@ -13,6 +13,7 @@
 mod alkanes;
 mod comparer;
 mod distance;
+mod graph6;
 mod molfile;
 mod numbers;
 mod pairs;
@@ -29,6 +30,7 @@ pub use crate::{
     alkanes::{Tree, alkanes},
     comparer::Comparer,
     distance::{least_distance, stated_distance},
+    graph6::Graph,
     molfile::{molfiles, renumbered_molfile},
     numbers::Numbers,
     pairs::{Expected, Pair, definition_pairs, fixture_pairs},

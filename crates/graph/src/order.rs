@@ -10,6 +10,7 @@ mod level;
 mod partition;
 mod parts;
 mod permutation;
+mod plain;
 mod refine;
 mod search;
 #[cfg(test)]
@@ -18,6 +19,7 @@ mod trace;
 
 pub(crate) use coloured::{Coloured, Placed, Unit};
 pub(crate) use permutation::Permutation;
+pub use plain::{GraphError, GraphOrder, GraphOrderer};
 
 use certificate::write_certificate;
 use level::Level;
