@@ -15,6 +15,7 @@ mod collections;
 mod comparer;
 mod distance;
 mod extent;
+mod graph6;
 mod kekule;
 mod molfile;
 mod numbers;
@@ -34,6 +35,7 @@ pub use crate::{
     comparer::Comparer,
     distance::{least_distance, stated_distance},
     extent::is_full_run,
+    graph6::Graph,
     kekule::other_kekule_form,
     molfile::{molfiles, renumbered_molfile},
     numbers::Numbers,

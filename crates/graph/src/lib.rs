@@ -45,6 +45,7 @@ pub use crate::{
     limits::Limits,
     mass::{Mass, MassError, average_mass, monoisotopic_mass},
     molecule::Molecule,
+    order::{GraphError, GraphOrder, GraphOrderer},
     stereo::Undrawable,
     unsaturation::Unsaturation,
 };

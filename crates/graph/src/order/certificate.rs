@@ -1,46 +1,44 @@
 //! A graph written in the order of its vertices: equal exactly for isomorphic graphs.
 
-use super::{
-    coloured::{Coloured, ranked_parity},
-    partition::Partition,
-    refine::Inside,
-};
+use super::coloured::{Coloured, ranked_parity};
 
 /// Stands between the edges and the units of a certificate.
 const SEPARATOR: u64 = u64::MAX;
 
-/// Writes colours, edges and units in the order of a discrete partition.
+/// Writes colours, edges and units in the given order of the vertices, appending to `words`. `pos`
+/// becomes the inverse of `order`.
 pub(super) fn write_certificate(
     graph: &Coloured,
-    partition: &Partition,
-    inside: &Inside,
+    order: &[u32],
+    pos: &mut Vec<u32>,
     words: &mut Vec<u64>,
 ) {
-    words.clear();
-    words.push(partition.lab.len() as u64);
-    words.extend(partition.lab.iter().map(|&v| graph.colours[v as usize]));
-    for (at, &vertex) in partition.lab.iter().enumerate() {
+    pos.resize(order.len(), 0);
+    for (at, &vertex) in (0..).zip(order) {
+        pos[vertex as usize] = at;
+    }
+    words.push(order.len() as u64);
+    words.extend(order.iter().map(|&v| graph.colours[v as usize]));
+    for (at, &vertex) in (0..).zip(order) {
         let from = words.len();
         for &(to, class) in graph.arcs(vertex) {
-            let position = partition.pos[to as usize];
-            if (position as usize) < at {
-                words.push((at as u64) << 32 | u64::from(position) << 8 | u64::from(class));
+            let position = pos[to as usize];
+            if position < at {
+                words.push(u64::from(at) << 32 | u64::from(position) << 8 | u64::from(class));
             }
         }
-        words[from..].sort_unstable();
+        if words.len() > from + 1 {
+            words[from..].sort_unstable();
+        }
     }
     words.push(SEPARATOR);
+    write_units(graph, pos, words);
+}
+
+fn write_units(graph: &Coloured, pos: &[u32], words: &mut Vec<u64>) {
+    let rank = |v: u32| pos.get(v as usize).copied().unwrap_or(v);
     let from = words.len();
-    let vertices = graph.len() as u32;
-    let rank = |v: u32| {
-        if v < vertices {
-            partition.pos[v as usize]
-        } else {
-            v
-        }
-    };
-    for &index in &inside.units {
-        let unit = &graph.units[index as usize];
+    for unit in &graph.units {
         let mut ends = unit.centres.map(rank);
         ends.sort_unstable();
         let orientation = match ranked_parity(unit, rank) {
@@ -51,20 +49,16 @@ pub(super) fn write_certificate(
         words.push(u64::from(ends[0]) << 36 | u64::from(ends[1]) << 8 | colour << 2 | orientation);
     }
     words[from..].sort_unstable();
-    if inside.placed.is_empty() {
+    if graph.placed.is_empty() {
         return;
     }
-    let mut placed: Vec<Vec<u64>> = inside
-        .placed
-        .iter()
-        .map(|&index| {
-            let placed = &graph.placed[index as usize];
-            let mut row = vec![rank(placed.centre).into(), placed.polyhedron as u64];
-            row.extend(placed.ranks(rank).into_iter().map(u64::from));
-            row
-        })
-        .collect();
-    placed.sort_unstable();
+    let rows = graph.placed.iter().map(|placed| {
+        let mut row = vec![rank(placed.centre).into(), placed.polyhedron as u64];
+        row.extend(placed.ranks(rank).into_iter().map(u64::from));
+        row
+    });
+    let mut rows: Vec<Vec<u64>> = rows.collect();
+    rows.sort_unstable();
     words.push(SEPARATOR);
-    words.extend(placed.into_iter().flatten());
+    words.extend(rows.into_iter().flatten());
 }

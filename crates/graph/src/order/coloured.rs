@@ -2,6 +2,8 @@
 
 use crate::Polyhedron;
 
+use super::{partition::Partition, parts::Parts};
+
 /// Bits that the count of one edge class takes in a refinement key, so there is room for seven
 /// classes and a vertex may have at most 511 neighbours.
 pub(super) const COUNT_BITS: u32 = 9;
@@ -19,6 +21,22 @@ pub(crate) struct Unit {
     pub(crate) colour: u32,
 }
 
+impl Unit {
+    /// All that the unit is about; some may be no vertices.
+    pub(super) fn vertices(&self) -> impl Iterator<Item = u32> {
+        self.centres.into_iter().chain(self.ligands)
+    }
+
+    /// Renames all that the unit is about.
+    fn renamed(&self, name: impl Fn(u32) -> u32) -> Self {
+        Self {
+            centres: self.centres.map(&name),
+            ligands: self.ligands.map(&name),
+            ..*self
+        }
+    }
+}
+
 /// A centre with its ligands placed on a polyhedron: vertices, or numbers above all vertices.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub(crate) struct Placed {
@@ -28,6 +46,11 @@ pub(crate) struct Placed {
 }
 
 impl Placed {
+    /// The centre and the ligands; some may be no vertices.
+    pub(super) fn vertices(&self) -> impl Iterator<Item = u32> + '_ {
+        std::iter::once(self.centre).chain(self.ligands.iter().copied())
+    }
+
     /// The least sequence of ranks that rotation can bring about: invariant, and complete once all
     /// ligands have ranks of their own.
     pub(super) fn ranks(&self, rank: impl Fn(u32) -> u32) -> Vec<u32> {
@@ -44,6 +67,8 @@ pub(crate) struct Coloured {
     arcs: Vec<(u32, u8)>,
     pub(crate) units: Vec<Unit>,
     pub(crate) placed: Vec<Placed>,
+    /// Below this lie the numbers that stand for vertices outside of a part, if this is one.
+    outside: u32,
 }
 
 impl Coloured {
@@ -57,6 +82,7 @@ impl Coloured {
         self.placed.clear();
         self.colours.clear();
         self.colours.extend(colours);
+        self.outside = self.colours.len() as u32;
         self.start.clear();
         self.start.resize(self.colours.len() + 1, 0);
         let mut sum = 0;
@@ -77,6 +103,65 @@ impl Coloured {
                 self.start[from as usize] -= 1;
                 self.arcs[self.start[from as usize] as usize] = (to, class);
             }
+        }
+    }
+
+    /// Loads a part of a graph, coloured by the cells of a partition. Vertex `i` of the part is
+    /// `vertices[i]`, and `local` is filled with the inverse. Whatever units need from outside of
+    /// the part is in a cell of its own, and gets a number above all vertices that says which.
+    pub(super) fn load_part(
+        &mut self,
+        graph: &Self,
+        partition: &Partition,
+        parts: &Parts,
+        part: u32,
+        local: &mut Vec<u32>,
+    ) {
+        let vertices = &parts.vertices[parts.parts[part as usize].range()];
+        local.resize(graph.len().max(local.len()), 0);
+        for (at, &vertex) in (0..).zip(vertices) {
+            local[vertex as usize] = at;
+        }
+        let inside = |v: u32| vertices.get(local[v as usize] as usize) == Some(&v);
+        self.colours.clear();
+        self.start.clear();
+        self.arcs.clear();
+        for &vertex in vertices {
+            self.colours.push(partition.cell[vertex as usize].into());
+            self.start.push(self.arcs.len() as u32);
+            let arcs = graph.arcs(vertex).iter();
+            let own = arcs.filter(|&&(to, _)| inside(to));
+            self.arcs
+                .extend(own.map(|&(to, class)| (local[to as usize], class)));
+        }
+        self.start.push(self.arcs.len() as u32);
+        let all = graph.len() as u32;
+        self.outside = graph.outside + all;
+        let name = |v: u32| match v {
+            v if v >= all => v,
+            v if inside(v) => local[v as usize],
+            v => graph.outside + partition.cell[v as usize],
+        };
+        // The numbers from outside rank otherwise than in the whole; the parity takes that up.
+        let before = |v: u32| match v {
+            v if v < all && inside(v) => (partition.cell[v as usize], local[v as usize]),
+            v => (partition.rank(v, all), 0),
+        };
+        self.units.clear();
+        for index in Parts::entries(&parts.units, part) {
+            let unit = &graph.units[index as usize];
+            let mut own = unit.renamed(name);
+            own.odd ^= ranked_parity(unit, before) != ranked_parity(&own, |v| v);
+            self.units.push(own);
+        }
+        self.placed.clear();
+        for index in Parts::entries(&parts.placed, part) {
+            let placed = &graph.placed[index as usize];
+            self.placed.push(Placed {
+                centre: name(placed.centre),
+                polyhedron: placed.polyhedron,
+                ligands: placed.ligands.iter().map(|&v| name(v)).collect(),
+            });
         }
     }
 
@@ -101,7 +186,7 @@ impl Coloured {
 
 /// The parity of a unit when its ligands are put in the order of `rank`, and its centres in that
 /// order too: `None` while two of its ligands share a rank.
-pub(crate) fn ranked_parity(unit: &Unit, rank: impl Fn(u32) -> u32) -> Option<bool> {
+pub(crate) fn ranked_parity<R: Ord + Copy>(unit: &Unit, rank: impl Fn(u32) -> R) -> Option<bool> {
     let mut ranks = unit.ligands.map(&rank);
     let mut odd = unit.odd;
     // Exchanging the two ends moves two ligands past two others, which is even, so only the order

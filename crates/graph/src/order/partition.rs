@@ -17,21 +17,17 @@ pub(crate) struct Partition {
 }
 
 impl Partition {
-    /// Starts with the given vertices, ordered by `colour`, equal colours in one cell. `vertices`
-    /// bounds all vertex numbers.
-    pub(super) fn load<C: Ord + Copy>(
-        &mut self,
-        members: &[u32],
-        vertices: usize,
-        colour: impl Fn(u32) -> C,
-    ) {
+    /// Starts with all vertices, ordered by colour, equal colours in one cell.
+    pub(super) fn load(&mut self, colours: &[u64]) {
+        let colour = |vertex: u32| colours[vertex as usize];
         self.lab.clear();
-        self.lab.extend_from_slice(members);
+        self.lab.extend(0..colours.len() as u32);
         self.lab.sort_unstable_by_key(|&v| colour(v));
-        self.pos.resize(vertices.max(self.pos.len()), 0);
-        self.cell.resize(vertices.max(self.cell.len()), 0);
+        for table in [&mut self.pos, &mut self.cell] {
+            table.resize(colours.len(), 0);
+        }
         self.len.clear();
-        self.len.resize(members.len(), 0);
+        self.len.resize(colours.len(), 0);
         self.cells = 0;
         self.log.clear();
         let mut start = 0;
@@ -57,6 +53,21 @@ impl Partition {
         &self.lab[start as usize..(start + self.len[start as usize]) as usize]
     }
 
+    /// Whether the vertex shares its cell with others.
+    pub(super) fn is_open(&self, vertex: u32) -> bool {
+        self.len[self.cell[vertex as usize] as usize] > 1
+    }
+
+    /// The rank of a vertex as far as it is known: its cell. Numbers from `vertices` upwards, which
+    /// are no vertices, rank as they are.
+    pub(super) fn rank(&self, number: u32, vertices: u32) -> u32 {
+        if number < vertices {
+            self.cell[number as usize]
+        } else {
+            number
+        }
+    }
+
     /// The starts of all cells in order.
     pub(super) fn starts(&self) -> impl Iterator<Item = u32> {
         let mut next = 0;
@@ -67,12 +78,11 @@ impl Partition {
         })
     }
 
-    /// The first cell from `start` on that has two or more vertices; there must be one.
-    pub(super) fn first_open_cell(&self, mut start: u32) -> u32 {
-        while self.len[start as usize] == 1 {
-            start += 1;
-        }
-        start
+    /// The first of the smallest cells that have two or more vertices.
+    pub(super) fn smallest_open_cell(&self) -> u32 {
+        let open = self.starts().filter(|&start| self.len[start as usize] > 1);
+        open.min_by_key(|&start| self.len[start as usize])
+            .unwrap_or(0)
     }
 
     /// Splits a vertex off the end of its cell and returns the start of its new cell.
@@ -114,22 +124,22 @@ impl Partition {
         }
     }
 
-    /// Splits a cell by keys: `keyed` lists those of its vertices whose key is not zero, ascending.
-    /// Vertices with key zero stay in front. Costs only what `keyed` is long. Calls `fragment` with
-    /// start, size and key of each part in order, if there is more than one.
+    /// Splits a cell by keys: `keyed` lists cell, key and number of those of its vertices whose key
+    /// is not zero, ascending. Vertices with key zero stay in front. Costs only what `keyed` is long.
+    /// Calls `fragment` with start, size and key of each part in order, if there is more than one.
     pub(super) fn split(
         &mut self,
         cell: u32,
-        keyed: &[(u64, u32)],
+        keyed: &[(u32, u64, u32)],
         mut fragment: impl FnMut(u32, u32, u64),
     ) -> bool {
         let size = self.len[cell as usize];
         let rest = size - keyed.len() as u32;
-        let one_key = keyed.first().map(|&(key, _)| key) == keyed.last().map(|&(key, _)| key);
+        let one_key = keyed.first().map(|entry| entry.1) == keyed.last().map(|entry| entry.1);
         if keyed.is_empty() || (rest == 0 && one_key) {
             return false;
         }
-        for (at, &(_, vertex)) in (cell + rest..).zip(keyed) {
+        for (at, &(_, _, vertex)) in (cell + rest..).zip(keyed) {
             // Later vertices of the list are still where they were, so nothing placed is moved.
             self.exchange(self.pos[vertex as usize], at);
         }
@@ -139,17 +149,17 @@ impl Partition {
         }
         let mut at = cell + rest;
         let logged = self.log.len();
-        for group in keyed.chunk_by(|a, b| a.0 == b.0) {
+        for group in keyed.chunk_by(|a, b| a.1 == b.1) {
             let length = group.len() as u32;
             self.len[at as usize] = length;
-            for &(_, vertex) in group {
+            for &(_, _, vertex) in group {
                 self.cell[vertex as usize] = at;
             }
             if at > cell {
                 self.cells += 1;
                 self.log.push((cell, at));
             }
-            fragment(at, length, group[0].0);
+            fragment(at, length, group[0].1);
             at += length;
         }
         // Undone from the back, parts have to join the cell from its near end onwards.

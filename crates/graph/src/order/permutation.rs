@@ -22,6 +22,16 @@ impl Permutation {
         }
     }
 
+    /// Whether a vertex stays.
+    pub(super) fn fixes(&self, vertex: u32) -> bool {
+        self.image(vertex) == vertex
+    }
+
+    /// The same with all vertices renamed.
+    pub(super) fn renamed(&self, name: impl Fn(u32) -> u32) -> Self {
+        Self::of(self.moved.iter().map(|&(from, to)| (name(from), name(to))))
+    }
+
     /// The vertices that are moved, with their images.
     pub(crate) fn moved(&self) -> &[(u32, u32)] {
         &self.moved

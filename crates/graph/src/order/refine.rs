@@ -3,49 +3,43 @@
 use super::{
     coloured::{COUNT_BITS, Coloured, ranked_parity},
     partition::Partition,
+    trace::{Watch, mix},
 };
 
-/// The units and placed centres of the component that is being ordered, by index.
-#[derive(Debug, Default, Clone)]
-pub(crate) struct Inside {
-    pub(super) units: Vec<u32>,
-    pub(super) placed: Vec<u32>,
-}
-
-/// Scratch of the refinement, and the running invariant of what it did.
+/// Scratch of the refinement.
 #[derive(Debug, Default, Clone)]
 pub(super) struct Refiner {
+    /// Cells to split others by; those before `front` are done.
     queue: Vec<u32>,
+    front: usize,
     queued: Vec<bool>,
     key: Vec<u64>,
     touched: Vec<u32>,
-    /// Cell, key and number of each touched vertex.
+    /// Cell, key and number of each touched vertex that shares its cell.
     keyed: Vec<(u32, u64, u32)>,
-    /// Key and number of the touched vertices of one cell.
-    group: Vec<(u64, u32)>,
-    parts: Vec<u32>,
+    parts: Vec<(u32, u32)>,
     splitter: Vec<u32>,
-    invariant: u64,
-    /// Edges looked at since the last reset.
+    /// Centres of units: what the unit is, the cell of the other centre, the centre.
+    oriented: Vec<(u32, u32, u32)>,
+    /// Edges and units looked at since it was last taken.
     pub(super) work: u64,
-}
-
-/// One step of a hash that is invariant because its inputs come in an invariant order.
-fn mix(state: u64, word: u64) -> u64 {
-    let product = u128::from(state ^ word.wrapping_mul(0x9e37_79b9_7f4a_7c15))
-        .wrapping_mul(0xd6e8_feb8_6659_fd93_a076_1d64_78bd_642f);
-    (product >> 64) as u64 ^ product as u64
 }
 
 impl Refiner {
     /// Gets ready for a graph with this many vertices.
     pub(super) fn reset(&mut self, vertices: usize) {
-        self.work = 0;
+        self.forget();
+        self.queued.resize(vertices.max(self.queued.len()), false);
+        self.key.resize(vertices.max(self.key.len()), 0);
+    }
+
+    /// Empties the queue.
+    fn forget(&mut self) {
+        for &start in &self.queue[self.front..] {
+            self.queued[start as usize] = false;
+        }
         self.queue.clear();
-        self.queued.clear();
-        self.queued.resize(vertices, false);
-        self.key.clear();
-        self.key.resize(vertices, 0);
+        self.front = 0;
     }
 
     /// Puts a cell into the queue of splitters.
@@ -56,53 +50,67 @@ impl Refiner {
         }
     }
 
-    /// Refines until the partition is equitable and no unit tells more. Returns an invariant of the
-    /// refinement: nodes of the search tree that are images of each other give the same.
+    /// Refines until the partition is equitable and units tell no more: then vertices of a cell have
+    /// equal numbers of edges of each class into each cell, and equal numbers of units of each
+    /// colour and orientation with the other centre in each cell. `watch` learns what is done, in
+    /// words that are the same for images of a node. `false` if it ended the refinement early.
     pub(super) fn refine(
         &mut self,
         graph: &Coloured,
-        inside: &Inside,
         partition: &mut Partition,
-    ) -> u64 {
-        self.invariant = mix(0, partition.cells.into());
+        watch: &mut impl Watch,
+    ) -> bool {
         loop {
-            self.equitable(graph, partition);
-            if partition.is_discrete() || !self.orient(graph, inside, partition) {
-                break;
+            if !self.equitable(graph, partition, watch) {
+                self.forget();
+                return false;
+            }
+            let settled = partition.is_discrete()
+                || (graph.units.is_empty() && graph.placed.is_empty())
+                || !self.orient(graph, partition, watch);
+            if settled {
+                watch.note(partition.cells.into());
+                return watch.goes_on();
             }
         }
-        mix(self.invariant, partition.cells.into())
     }
 
-    fn equitable(&mut self, graph: &Coloured, partition: &mut Partition) {
-        let mut at = 0;
-        while at < self.queue.len() {
-            let start = self.queue[at];
-            at += 1;
+    fn equitable(
+        &mut self,
+        graph: &Coloured,
+        partition: &mut Partition,
+        watch: &mut impl Watch,
+    ) -> bool {
+        while let Some(&start) = self.queue.get(self.front) {
+            self.front += 1;
             self.queued[start as usize] = false;
             if partition.is_discrete() {
-                continue;
+                break;
             }
             self.splitter.clear();
             self.splitter.extend_from_slice(partition.members(start));
+            watch.note(start.into());
             self.touch(graph);
-            self.invariant = mix(self.invariant, start.into());
-            self.split_touched(partition);
-            // The queue is drained from the front; forget the drained part before it grows large.
-            if at > 64 && at * 2 > self.queue.len() {
-                self.queue.drain(..at);
-                at = 0;
+            self.split_touched(partition, watch);
+            if !watch.goes_on() {
+                return false;
+            }
+            // Forget the part of the queue that is done before it grows large.
+            if self.front > 64 && self.front * 2 > self.queue.len() {
+                self.queue.drain(..self.front);
+                self.front = 0;
             }
         }
-        self.queue.clear();
+        self.forget();
+        true
     }
 
     /// Counts, for each vertex next to the splitter, its edges into it by class.
     fn touch(&mut self, graph: &Coloured) {
-        self.touched.clear();
         for &from in &self.splitter {
-            self.work += graph.arcs(from).len() as u64;
-            for &(to, class) in graph.arcs(from) {
+            let arcs = graph.arcs(from);
+            self.work += arcs.len() as u64;
+            for &(to, class) in arcs {
                 let key = &mut self.key[to as usize];
                 if *key == 0 {
                     self.touched.push(to);
@@ -113,22 +121,26 @@ impl Refiner {
     }
 
     /// Splits all cells that have touched vertices by the keys of these, in an invariant order.
-    fn split_touched(&mut self, partition: &mut Partition) -> bool {
+    fn split_touched(&mut self, partition: &mut Partition, watch: &mut impl Watch) -> bool {
         self.keyed.clear();
+        let mut alone = 0u64;
         for &vertex in &self.touched {
             let key = std::mem::take(&mut self.key[vertex as usize]);
-            self.keyed
-                .push((partition.cell[vertex as usize], key, vertex));
+            let cell = partition.cell[vertex as usize];
+            if partition.len[cell as usize] > 1 {
+                self.keyed.push((cell, key, vertex));
+            } else {
+                // Only a sum does not depend on the order of the list.
+                alone = alone.wrapping_add(mix(key, cell.into()));
+            }
         }
+        self.touched.clear();
+        watch.note(alone);
         self.keyed.sort_unstable();
         let keyed = std::mem::take(&mut self.keyed);
         let mut split = false;
         for group in keyed.chunk_by(|a, b| a.0 == b.0) {
-            let cell = group[0].0;
-            self.group.clear();
-            self.group
-                .extend(group.iter().map(|&(_, key, vertex)| (key, vertex)));
-            split |= self.split_cell(cell, partition);
+            split |= self.split_cell(group, partition, watch);
         }
         self.keyed = keyed;
         split
@@ -136,80 +148,94 @@ impl Refiner {
 
     /// Splits a cell by the keys in `group` and queues the parts: all if the cell was waiting, else
     /// all but the first of the largest (Hopcroft 1971).
-    fn split_cell(&mut self, cell: u32, partition: &mut Partition) -> bool {
-        let (mut invariant, mut largest) = (self.invariant, (0, 0));
-        let waiting = self.queued[cell as usize];
+    fn split_cell(
+        &mut self,
+        group: &[(u32, u64, u32)],
+        partition: &mut Partition,
+        watch: &mut impl Watch,
+    ) -> bool {
+        let (cell, key, _) = group[0];
         self.parts.clear();
         let parts = &mut self.parts;
-        let split = partition.split(cell, &self.group, |start, size, key| {
-            invariant = mix(
-                mix(invariant, key),
-                u64::from(start) << 32 | u64::from(size),
-            );
-            if size > largest.1 {
-                largest = (start, size);
-            }
-            parts.push(start);
+        let split = partition.split(cell, group, |start, size, key| {
+            watch.note(key);
+            watch.note(u64::from(start) << 32 | u64::from(size));
+            parts.push((size, start));
         });
-        if split {
-            for at in 0..self.parts.len() {
-                let start = self.parts[at];
-                if waiting || start != largest.0 {
-                    self.enqueue(start);
-                }
-            }
-        } else {
-            let key = self.group.first().map_or(0, |&(key, _)| key);
-            invariant = mix(
-                mix(invariant, key),
-                u64::from(cell) << 32 | self.group.len() as u64,
-            );
-        }
-        self.invariant = invariant;
-        split
-    }
-
-    /// Splits cells by the orientation of the units centred on their vertices. A unit whose ligands
-    /// are not yet told apart counts as such.
-    fn orient(&mut self, graph: &Coloured, inside: &Inside, partition: &mut Partition) -> bool {
-        if inside.units.is_empty() && inside.placed.is_empty() {
+        if !split {
+            watch.note(key);
+            watch.note(u64::from(cell) << 32 | group.len() as u64);
             return false;
         }
-        self.touched.clear();
-        self.work += (inside.units.len() + inside.placed.len()) as u64;
+        let waiting = self.queued[cell as usize];
+        let mut largest = self.parts[0];
+        for &part in &self.parts {
+            if part.0 > largest.0 {
+                largest = part;
+            }
+        }
+        for at in 0..self.parts.len() {
+            let part = self.parts[at];
+            if waiting || part != largest {
+                self.enqueue(part.1);
+            }
+        }
+        true
+    }
+
+    /// Splits cells by the units centred on their vertices, and by the arrangement of their ligands.
+    /// A unit whose ligands are not yet told apart counts as such.
+    fn orient(
+        &mut self,
+        graph: &Coloured,
+        partition: &mut Partition,
+        watch: &mut impl Watch,
+    ) -> bool {
+        self.work += (graph.units.len() + graph.placed.len()) as u64;
         let vertices = graph.len() as u32;
-        let rank = |v: u32| {
-            if v < vertices {
-                partition.cell[v as usize]
-            } else {
-                v
-            }
-        };
-        for &index in &inside.units {
-            let unit = &graph.units[index as usize];
-            let word = match ranked_parity(unit, rank) {
-                None => 1,
-                Some(false) => 1 << 16,
-                Some(true) => 1 << 32,
-            };
-            let ends = if unit.centres[0] == unit.centres[1] {
-                1
-            } else {
-                2
-            };
-            for &centre in &unit.centres[..ends] {
-                self.add(centre, word);
+        self.oriented.clear();
+        for unit in &graph.units {
+            let rank = |v: u32| partition.rank(v, vertices);
+            let orientation = ranked_parity(unit, rank).map_or(0, |odd| 1 + u32::from(odd));
+            let word = unit.colour << 2 | orientation;
+            let [a, b] = unit.centres;
+            for (centre, other) in [(a, b), (b, a)] {
+                if centre < vertices && partition.is_open(centre) {
+                    self.oriented.push((word, rank(other), centre));
+                }
             }
         }
-        for &index in &inside.placed {
-            let placed = &graph.placed[index as usize];
-            let ranks = placed.ranks(rank);
+        self.oriented.sort_unstable();
+        let oriented = std::mem::take(&mut self.oriented);
+        let mut split = false;
+        for group in oriented.chunk_by(|a, b| (a.0, a.1) == (b.0, b.1)) {
+            watch.note(u64::from(group[0].0) << 32 | u64::from(group[0].1));
+            for &(_, _, centre) in group {
+                self.add(centre, 1);
+            }
+            split |= self.split_touched(partition, watch);
+        }
+        self.oriented = oriented;
+        split | self.arrange(graph, partition, watch)
+    }
+
+    /// Splits cells by the arrangement of ligands placed about their vertices.
+    fn arrange(
+        &mut self,
+        graph: &Coloured,
+        partition: &mut Partition,
+        watch: &mut impl Watch,
+    ) -> bool {
+        let vertices = graph.len() as u32;
+        for placed in &graph.placed {
+            let ranks = placed.ranks(|v| partition.rank(v, vertices));
+            // Equal hashes of different arrangements split less, that is all.
             let word = ranks.iter().fold(1, |state, &rank| mix(state, rank.into()));
-            // Bits above those of units; equal hashes of different arrangements split less, that is
-            // all.
-            self.add(placed.centre, word << 48 | 1 << 47);
+            if placed.centre < vertices {
+                self.add(placed.centre, word >> 32 | 1);
+            }
         }
-        self.split_touched(partition)
+        self.split_touched(partition, watch)
     }
 
     fn add(&mut self, vertex: u32, word: u64) {

@@ -1,67 +1,59 @@
 //! The search tree: individualise, refine, compare leaves, prune by automorphisms.
 //!
-//! McKay & Piperno, J. Symb. Comput. 2014, 60, 94. The canonical leaf is the least of (invariants of
-//! the path, certificate). Two leaves with equal certificates give an automorphism; an automorphism
-//! cuts off whatever it maps onto explored ground. Steps (refinements) are counted; when the limit
-//! is reached there is no order at all.
+//! McKay & Piperno, J. Symb. Comput. 2014, 60, 94. A leaf is a node at which the graph falls apart;
+//! its parts are ordered on their own, which gives the leaf an order that is canonical for it. The
+//! canonical leaf is the least of (trace of the path, certificate). Two leaves with equal
+//! certificates give an automorphism; an automorphism cuts off whatever it maps onto explored ground.
 
 use std::cmp::Ordering;
 
-use crate::{Limits, OrderError};
-
 use super::{
+    Work,
     certificate::write_certificate,
     coloured::Coloured,
-    partition::Partition,
+    level::Level,
     permutation::Permutation,
-    refine::{Inside, Refiner},
+    trace::{Standing, Trace, Watch},
 };
+use crate::OrderError;
 
 /// A leaf: the vertex at each position, and the graph written in that order.
 #[derive(Debug, Default, Clone)]
 struct Leaf {
-    lab: Vec<u32>,
+    order: Vec<u32>,
     path: Vec<u32>,
-    traces: Vec<u64>,
     certificate: Vec<u64>,
 }
 
 /// A node on the present path.
-#[derive(Debug, Clone)]
+#[derive(Debug, Default, Clone)]
 struct Node {
     /// Splits of the partition at this node.
     splits: usize,
-    /// The cell whose vertices are the children.
-    target: u32,
+    /// The trace at this node.
+    mark: (usize, u64, Standing),
+    /// The vertices of the target cell.
     children: Vec<u32>,
     next: usize,
     /// The vertex individualised to leave this node towards the present one.
     chosen: u32,
-    /// Whether the path so far has the invariants of the first leaf's path.
-    like_first: bool,
-    /// The path so far against the best leaf's path.
-    against_best: Ordering,
 }
 
-/// Searches one connected component at a time; all vectors are reused.
+/// The state of a search; all vectors are reused.
 #[derive(Debug, Default, Clone)]
-pub(crate) struct Search {
-    partition: Partition,
-    refiner: Refiner,
+pub(super) struct Tree {
     nodes: Vec<Node>,
     depth: usize,
-    traces: Vec<u64>,
+    trace: Trace,
     first: Leaf,
     best: Leaf,
     current: Vec<u64>,
-    inside: Inside,
-    generators: Vec<Permutation>,
+    pos: Vec<u32>,
     /// Union-find over vertices, of the automorphisms found so far.
     orbit: Vec<u32>,
     pruning: Vec<u32>,
     /// The deepest node, by index, that lies on the first path.
     on_first: usize,
-    pub(crate) steps: u64,
 }
 
 fn find(parent: &mut [u32], mut vertex: u32) -> u32 {
@@ -72,170 +64,45 @@ fn find(parent: &mut [u32], mut vertex: u32) -> u32 {
     vertex
 }
 
-fn unite(parent: &mut [u32], a: u32, b: u32) {
-    let (a, b) = (find(parent, a), find(parent, b));
-    let (low, high) = (a.min(b), a.max(b));
-    parent[high as usize] = low;
+fn unite(parent: &mut [u32], permutation: &Permutation) {
+    for &(from, to) in permutation.moved() {
+        let (a, b) = (find(parent, from), find(parent, to));
+        parent[a.max(b) as usize] = a.min(b);
+    }
 }
 
-impl Search {
-    /// Orders the vertices of one component, whose units and placed centres `inside` lists, after
-    /// [`Search::prepare`].
-    ///
-    /// Afterwards [`Search::order`], [`Search::certificate`] and [`Search::generators`] hold the
-    /// answer. `steps` counts on from its present value up to the limit.
-    pub(crate) fn run(
-        &mut self,
-        graph: &Coloured,
-        members: &[u32],
-        inside: &Inside,
-        limits: &Limits,
-    ) -> Result<(), OrderError> {
-        self.inside.clone_from(inside);
-        self.start(graph, members);
-        for start in self.partition.starts().collect::<Vec<_>>() {
-            self.refiner.enqueue(start);
-        }
-        self.step(graph, limits)?;
+impl Tree {
+    fn clear(&mut self, vertices: usize) {
         self.depth = 0;
         self.on_first = 0;
-        if self.partition.is_discrete() {
-            self.leaf(graph, true, Ordering::Equal);
-            return Ok(());
+        self.trace.clear();
+        for leaf in [&mut self.first, &mut self.best] {
+            leaf.certificate.clear();
         }
-        self.open_node(true, Ordering::Equal);
-        while self.depth > 0 {
-            self.advance(graph, limits)?;
-        }
-        Ok(())
-    }
-
-    /// Gets ready for the components of a graph: all that costs as much as the whole graph is done
-    /// here, once.
-    pub(crate) fn prepare(&mut self, graph: &Coloured) {
-        self.refiner.reset(graph.len());
         for identity in [&mut self.orbit, &mut self.pruning] {
             identity.clear();
-            identity.extend(0..graph.len() as u32);
+            identity.extend(0..vertices as u32);
         }
     }
 
-    fn start(&mut self, graph: &Coloured, members: &[u32]) {
-        self.partition
-            .load(members, graph.len(), |v| graph.colours[v as usize]);
-        self.traces.clear();
-        self.generators.clear();
-        self.first.certificate.clear();
-        self.best.certificate.clear();
-    }
-
-    /// Refines once. Work is counted in edges and vertices looked at, so that a step costs about
-    /// the same on small and large graphs.
-    fn step(&mut self, graph: &Coloured, limits: &Limits) -> Result<u64, OrderError> {
-        if self.steps > limits.order_steps {
-            return Err(OrderError::StepLimit {
-                limit: limits.order_steps,
-            });
-        }
-        if limits.stopped() {
-            return Err(OrderError::Stopped);
-        }
-        let trace = self
-            .refiner
-            .refine(graph, &self.inside, &mut self.partition);
-        self.steps += 1 + std::mem::take(&mut self.refiner.work);
-        Ok(trace)
-    }
-
-    /// Makes the present partition a node whose children are the vertices of its first cell of two
-    /// or more. Cells before that of the node above have one vertex each and keep it, so the look
-    /// starts there: all levels of a path together look at each cell once.
-    fn open_node(&mut self, like_first: bool, against_best: Ordering) {
-        let from = self
-            .depth
-            .checked_sub(1)
-            .map_or(0, |above| self.nodes[above].target);
-        if self.nodes.len() == self.depth {
-            self.nodes.push(Node {
-                splits: 0,
-                target: 0,
-                children: Vec::new(),
-                next: 0,
-                chosen: 0,
-                like_first,
-                against_best,
-            });
-        }
-        let target = self.partition.first_open_cell(from);
-        let node = &mut self.nodes[self.depth];
-        node.splits = self.partition.splits();
-        node.target = target;
-        node.children.clear();
-        node.children
-            .extend_from_slice(self.partition.members(target));
-        self.steps += node.children.len() as u64;
-        node.next = 0;
-        node.like_first = like_first;
-        node.against_best = against_best;
-        self.depth += 1;
-    }
-
-    /// Takes the next child of the deepest node, or leaves that node.
-    fn advance(&mut self, graph: &Coloured, limits: &Limits) -> Result<(), OrderError> {
-        let level = self.depth - 1;
-        let Some(vertex) = self.next_child(level) else {
-            self.depth = level;
-            self.on_first = self.on_first.min(level.saturating_sub(1));
-            return Ok(());
-        };
-        let node = &mut self.nodes[level];
-        node.chosen = vertex;
-        let (like_first, against_best) = (node.like_first, node.against_best);
-        self.partition.undo_to(node.splits);
-        let cell = self.partition.individualise(vertex);
-        // The individualised vertex alone refines as far as it and the rest of its cell would.
-        self.refiner.enqueue(cell);
-        let trace = self.step(graph, limits)?;
-        self.traces.truncate(level);
-        self.traces.push(trace);
-        let has_first = !self.first.certificate.is_empty();
-        let like_first = like_first && (!has_first || self.first.traces.get(level) == Some(&trace));
-        let against_best = if has_first && against_best.is_eq() {
-            self.best
-                .traces
-                .get(level)
-                .map_or(Ordering::Greater, |best| trace.cmp(best))
-        } else {
-            against_best
-        };
-        if !like_first && against_best.is_gt() {
-            return Ok(());
-        }
-        if self.partition.is_discrete() {
-            self.leaf(graph, like_first, against_best);
-        } else {
-            self.open_node(like_first, against_best);
-        }
-        Ok(())
-    }
-
-    /// The next child worth visiting: the least of each orbit under the automorphisms that fix the
+    /// The next child worth visiting: the first of each orbit under the automorphisms that fix the
     /// path to this node.
-    fn next_child(&mut self, level: usize) -> Option<u32> {
+    fn next_child(&mut self, generators: &[Permutation]) -> Option<u32> {
+        let level = self.depth - 1;
         let on_first_path = level <= self.on_first;
-        if !on_first_path && self.nodes[level].next > 0 && !self.generators.is_empty() {
-            self.pruning_orbits(level);
+        if !on_first_path && self.nodes[level].next > 0 && !generators.is_empty() {
+            self.pruning_orbits(level, generators);
         }
         let node = &mut self.nodes[level];
+        let orbit = if on_first_path {
+            &mut self.orbit
+        } else {
+            &mut self.pruning
+        };
         while let Some(&vertex) = node.children.get(node.next) {
             let tried = &node.children[..node.next];
             node.next += 1;
-            let orbit = if on_first_path {
-                &mut self.orbit
-            } else {
-                &mut self.pruning
-            };
-            if tried.is_empty() || self.generators.is_empty() {
+            if tried.is_empty() || generators.is_empty() {
                 return Some(vertex);
             }
             let own = find(orbit, vertex);
@@ -246,95 +113,157 @@ impl Search {
         None
     }
 
-    fn pruning_orbits(&mut self, level: usize) {
-        for &vertex in &self.partition.lab {
-            self.pruning[vertex as usize] = vertex;
+    fn pruning_orbits(&mut self, level: usize, generators: &[Permutation]) {
+        for (vertex, parent) in (0..).zip(&mut self.pruning) {
+            *parent = vertex;
         }
-        for generator in &self.generators {
-            let fixes = self.nodes[..level]
-                .iter()
-                .all(|node| generator.image(node.chosen) == node.chosen);
-            if fixes {
-                for &(from, to) in generator.moved() {
-                    unite(&mut self.pruning, from, to);
-                }
+        for generator in generators {
+            let path = &self.nodes[..level];
+            if path.iter().all(|node| generator.fixes(node.chosen)) {
+                unite(&mut self.pruning, generator);
             }
         }
     }
 
-    fn leaf(&mut self, graph: &Coloured, like_first: bool, against_best: Ordering) {
-        let mut certificate = std::mem::take(&mut self.current);
-        write_certificate(graph, &self.partition, &self.inside, &mut certificate);
-        self.steps += certificate.len() as u64;
-        self.current = certificate;
-        if self.first.certificate.is_empty() {
-            self.keep_best();
-            self.first.clone_from(&self.best);
-            self.on_first = self.depth.saturating_sub(1);
-            return;
-        }
-        if like_first && self.current == self.first.certificate {
-            self.automorphism(true);
-            return;
-        }
-        // A leaf that was reached only because it is like the first one may not become the best.
-        let order = against_best.then_with(|| self.current.cmp(&self.best.certificate));
-        match order {
-            Ordering::Less => self.keep_best(),
-            Ordering::Equal => self.automorphism(false),
-            Ordering::Greater => {}
-        }
-    }
-
-    fn keep_best(&mut self) {
-        self.best.lab.clone_from(&self.partition.lab);
+    /// Makes the present leaf the best one.
+    fn keep_best(&mut self, order: &[u32]) {
+        self.best.order.clear();
+        self.best.order.extend_from_slice(order);
         self.best.certificate.clone_from(&self.current);
-        self.best.traces.clone_from(&self.traces);
         self.best.path.clear();
-        self.best
-            .path
-            .extend(self.nodes[..self.depth].iter().map(|node| node.chosen));
+        let path = self.nodes[..self.depth].iter();
+        self.best.path.extend(path.map(|node| node.chosen));
+        self.trace.keep_best();
         // From here on the present path is the best one.
         for node in &mut self.nodes[..self.depth] {
-            node.against_best = Ordering::Equal;
+            node.mark.2.against_best = Ordering::Equal;
         }
     }
 
-    /// Records the automorphism that takes an earlier leaf to this one, and goes back to where the
+    /// Takes the automorphism that maps an earlier leaf onto this one, and goes back to where the
     /// two paths part: everything in between is an image of what was explored.
-    fn automorphism(&mut self, with_first: bool) {
+    fn automorphism(&mut self, order: &[u32], with_first: bool) -> Permutation {
         let earlier = if with_first { &self.first } else { &self.best };
-        let pairs = earlier
-            .lab
-            .iter()
-            .copied()
-            .zip(self.partition.lab.iter().copied());
+        let pairs = earlier.order.iter().copied().zip(order.iter().copied());
         let generator = Permutation::of(pairs);
-        for &(from, to) in generator.moved() {
-            unite(&mut self.orbit, from, to);
-        }
+        unite(&mut self.orbit, &generator);
         let common = self.nodes[..self.depth]
             .iter()
             .zip(&earlier.path)
             .take_while(|(node, chosen)| node.chosen == **chosen)
             .count();
-        self.generators.push(generator);
         self.depth = self.depth.min(common + 1);
         self.on_first = self.on_first.min(common);
+        generator
+    }
+}
+
+impl Level {
+    /// Orders a graph in one part, all of whose vertices are open, by search.
+    pub(super) fn search(
+        &mut self,
+        graph: &Coloured,
+        work: &mut Work<'_>,
+    ) -> Result<(), OrderError> {
+        self.tree.clear(graph.len());
+        self.open_node(work);
+        while self.tree.depth > 0 {
+            self.advance(graph, work)?;
+        }
+        self.order.clone_from(&self.tree.best.order);
+        Ok(())
     }
 
-    /// The vertices in canonical order.
-    pub(crate) fn order(&self) -> &[u32] {
-        &self.best.lab
+    /// Makes the present partition a node whose children are the vertices of its first smallest open
+    /// cell.
+    fn open_node(&mut self, work: &mut Work<'_>) {
+        let Tree {
+            nodes,
+            depth,
+            trace,
+            ..
+        } = &mut self.tree;
+        if nodes.len() == *depth {
+            nodes.push(Node::default());
+        }
+        let target = self.partition.smallest_open_cell();
+        let node = &mut nodes[*depth];
+        node.splits = self.partition.splits();
+        node.mark = trace.mark();
+        node.children.clear();
+        node.children
+            .extend_from_slice(self.partition.members(target));
+        node.next = 0;
+        *depth += 1;
+        work.steps += node.children.len() as u64;
     }
 
-    /// The graph written in canonical order: equal exactly for isomorphic components.
-    pub(crate) fn certificate(&self) -> &[u64] {
-        &self.best.certificate
+    /// Takes the next child of the deepest node, or leaves that node.
+    fn advance(&mut self, graph: &Coloured, work: &mut Work<'_>) -> Result<(), OrderError> {
+        let tree = &mut self.tree;
+        let level = tree.depth - 1;
+        let Some(vertex) = tree.next_child(&self.generators) else {
+            tree.depth = level;
+            tree.on_first = tree.on_first.min(level.saturating_sub(1));
+            return Ok(());
+        };
+        let node = &mut tree.nodes[level];
+        node.chosen = vertex;
+        tree.trace.back_to(node.mark);
+        self.partition.undo_to(node.splits);
+        let cell = self.partition.individualise(vertex);
+        // The individualised vertex alone refines as far as it and the rest of its cell would.
+        self.refiner.enqueue(cell);
+        let goes_on = self
+            .refiner
+            .refine(graph, &mut self.partition, &mut tree.trace);
+        work.spend(&mut self.refiner.work)?;
+        if !goes_on {
+            return Ok(());
+        }
+        self.parts.find(graph, &self.partition);
+        work.spend(&mut self.parts.work)?;
+        let parts = self.parts.parts.len();
+        tree.trace.note(parts as u64);
+        match (tree.trace.goes_on(), parts) {
+            (false, _) => Ok(()),
+            (true, 1) => {
+                self.open_node(work);
+                Ok(())
+            }
+            (true, _) => self.leaf(graph, work),
+        }
     }
 
-    /// Generators of the automorphism group.
-    pub(crate) fn generators(&self) -> &[Permutation] {
-        &self.generators
+    fn leaf(&mut self, graph: &Coloured, work: &mut Work<'_>) -> Result<(), OrderError> {
+        let is_first = self.tree.first.certificate.is_empty();
+        self.arrange(graph, work, is_first)?;
+        let tree = &mut self.tree;
+        tree.current.clear();
+        write_certificate(graph, &self.order, &mut tree.pos, &mut tree.current);
+        work.steps += tree.current.len() as u64;
+        if is_first {
+            tree.trace.keep_first();
+            tree.keep_best(&self.order);
+            tree.first.clone_from(&tree.best);
+            tree.on_first = tree.depth.saturating_sub(1);
+            for generator in &self.generators {
+                unite(&mut tree.orbit, generator);
+            }
+            return Ok(());
+        }
+        let standing = tree.trace.at_leaf();
+        if standing.like_first && tree.current == tree.first.certificate {
+            self.generators.push(tree.automorphism(&self.order, true));
+            return Ok(());
+        }
+        // A leaf that was reached only because it is like the first one may not become the best.
+        let order = standing.against_best;
+        match order.then_with(|| tree.current.cmp(&tree.best.certificate)) {
+            Ordering::Less => tree.keep_best(&self.order),
+            Ordering::Equal => self.generators.push(tree.automorphism(&self.order, false)),
+            Ordering::Greater => {}
+        }
+        Ok(())
     }
 }

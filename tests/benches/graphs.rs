@@ -1,0 +1,46 @@
+//! Time to order plain graphs: `cargo bench -p molkin-tests --bench graphs -- FILE...`, files of
+//! graph6 or sparse6. One line a file: name, graphs, ordered ones, steps, seconds (best of several
+//! rounds, reading aside). `tests/scripts/beside_nauty.py` sets the lines beside another program's.
+#![allow(
+    clippy::print_stdout,
+    clippy::unwrap_used,
+    reason = "a bench prints, and fails by panicking"
+)]
+
+use std::{
+    path::Path,
+    time::{Duration, Instant},
+};
+
+use molkin_graph::{GraphOrderer, Limits};
+use molkin_tests::Graph;
+
+/// Rounds go on until they took this long together, but there are at least three.
+const ENOUGH: Duration = Duration::from_millis(400);
+
+fn main() {
+    // Cargo adds options of its own.
+    let files = std::env::args().skip(1).filter(|arg| !arg.starts_with("--"));
+    for file in files {
+        let graphs = Graph::read(Path::new(&file));
+        let colours = vec![0; graphs.iter().map(|g| g.vertices).max().unwrap_or(0) as usize];
+        let mut orderer = GraphOrderer::new(Limits::default());
+        let (mut best, mut spent, mut rounds) = (Duration::MAX, Duration::ZERO, 0);
+        let (mut ordered, mut steps) = (0, 0);
+        while rounds < 3 || spent < ENOUGH {
+            (ordered, steps) = (0, 0);
+            let start = Instant::now();
+            for graph in &graphs {
+                let own = &colours[..graph.vertices as usize];
+                if let Ok(order) = orderer.order(own, &graph.edges) {
+                    ordered += 1;
+                    steps += order.steps;
+                }
+            }
+            let time = start.elapsed();
+            (best, spent, rounds) = (best.min(time), spent + time, rounds + 1);
+        }
+        let seconds = best.as_secs_f64();
+        println!("{file}\t{}\t{ordered}\t{steps}\t{seconds}", graphs.len());
+    }
+}
