@@ -35,9 +35,9 @@ struct Path {
 }
 
 /// All pairs, among atoms that can be centres.
-pub(super) fn thetas(skeleton: &Skeleton, can_be: &[bool]) -> Vec<Theta> {
+pub(super) fn thetas(skeleton: &Skeleton, can_be: impl Fn(u32) -> bool) -> Vec<Theta> {
     let branching = |atom: u32| {
-        can_be[atom as usize]
+        can_be(atom)
             && skeleton
                 .arcs(atom)
                 .iter()
