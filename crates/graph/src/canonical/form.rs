@@ -99,21 +99,7 @@ impl Canonical {
         form.coordination.clear();
         labelled.clear();
         self.add_atoms(form, placed, labelled);
-        let rank = |atom: u32| self.written.rank[atom as usize];
-        for (bond, &order) in self.skeleton.bonds.iter().zip(&placed.orders) {
-            let (a, b) = (rank(bond.a), rank(bond.b));
-            form.bonds.push((a.min(b), a.max(b), order));
-        }
-        for &Labelled { host, mass, atom } in labelled.iter() {
-            form.atoms.push(FormAtom {
-                element: Element::HYDROGEN,
-                isotope: Some(mass as u16),
-                charge: 0,
-                hydrogens: 0,
-            });
-            form.bonds.push((host, atom, 1));
-        }
-        form.bonds.sort_unstable();
+        self.add_bonds(form, placed, labelled);
         self.add_stereo(form, labelled);
     }
 
@@ -136,6 +122,30 @@ impl Canonical {
                     next += 1;
                 }
             }
+        }
+        form.atoms.extend(labelled.iter().map(|own| FormAtom {
+            element: Element::HYDROGEN,
+            isotope: Some(own.mass as u16),
+            charge: 0,
+            hydrogens: 0,
+        }));
+    }
+
+    /// Adds the bonds by their lower atom, each with its labelled hydrogens, so that all are sorted.
+    fn add_bonds(&self, form: &mut CanonicalForm, placed: &Placed, labelled: &[Labelled]) {
+        let mut labelled = labelled.iter().peekable();
+        for (host, &atom) in (0..).zip(&self.written.order) {
+            let from = form.bonds.len();
+            for &(to, bond) in self.skeleton.arcs(atom) {
+                let to = self.written.rank[to as usize];
+                if to > host {
+                    form.bonds.push((host, to, placed.orders[bond as usize]));
+                }
+            }
+            while let Some(own) = labelled.next_if(|own| own.host == host) {
+                form.bonds.push((host, own.atom, 1));
+            }
+            form.bonds[from..].sort_unstable();
         }
     }
 
