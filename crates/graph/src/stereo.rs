@@ -108,6 +108,7 @@ pub(crate) struct Scratch {
     marks: Vec<Mark>,
     /// Per atom: what it is as a possible centre.
     eligible: Vec<Option<Eligible>>,
+    bridgeheads: bridgehead::Scratch,
     /// Atoms that the search for a small ring has seen.
     seen: Vec<u32>,
 }
@@ -124,6 +125,7 @@ impl Perception {
         let Scratch {
             marks,
             eligible,
+            bridgeheads,
             seen,
         } = scratch;
         self.candidates.clear();
@@ -131,7 +133,7 @@ impl Perception {
         self.impossible.clear();
         self.cages.clear();
         marks::on_skeleton(marks, skeleton, molecule.drawn_stereo());
-        let thetas = tetrahedral::find(self, skeleton, mesomer, marks, eligible);
+        let thetas = tetrahedral::find(self, skeleton, mesomer, marks, eligible, bridgeheads);
         double_bond::find(self, skeleton, mesomer, marks, seen);
         let places = self.candidates.iter().enumerate();
         self.places.clear();

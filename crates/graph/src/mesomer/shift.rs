@@ -20,6 +20,8 @@ pub(super) struct Shift {
     /// Per atom: its bonds to others that take part.
     degree: Vec<u32>,
     ends: Vec<u32>,
+    /// Atoms of a walk, each with the bond that leads on.
+    walked: Vec<(u32, u32)>,
 }
 
 impl Shift {
@@ -38,7 +40,12 @@ impl Shift {
         mobile: &mut Vec<u32>,
     ) -> Result<(), OrderError> {
         mobile.clear();
-        if !self.pair(skeleton, takes_part) || !self.prune(skeleton) {
+        if !self.pair(skeleton, takes_part) {
+            return Ok(());
+        }
+        self.prune(skeleton);
+        self.take_lone_rings(skeleton, orders, mobile);
+        if self.partner.iter().all(|&other| other == NONE) {
             return Ok(());
         }
         self.connect(skeleton, matching);
@@ -76,8 +83,8 @@ impl Shift {
     }
 
     /// Takes out double bonds with an end that has no other bond, as these are on no cycle, until
-    /// there are none; whether anything is left.
-    fn prune(&mut self, skeleton: &Skeleton) -> bool {
+    /// there are none.
+    fn prune(&mut self, skeleton: &Skeleton) {
         self.degree.clear();
         self.degree.resize(skeleton.len(), 0);
         for bond in 0..skeleton.bonds.len() as u32 {
@@ -108,7 +115,46 @@ impl Shift {
                 self.partner[atom as usize] = NONE;
             }
         }
-        self.partner.iter().any(|&other| other != NONE)
+    }
+
+    /// Marks the rings that have no bond to anything else that is left, as most benzene rings do:
+    /// each is an alternating cycle. They leave the graph, so that only fused rings need a matching.
+    fn take_lone_rings(&mut self, skeleton: &Skeleton, orders: &mut [u8], mobile: &mut Vec<u32>) {
+        for start in 0..skeleton.len() as u32 {
+            if self.partner[start as usize] == NONE {
+                continue;
+            }
+            let closed = self.walk(skeleton, start);
+            for &(atom, bond) in &self.walked {
+                if closed {
+                    self.partner[atom as usize] = NONE;
+                    orders[bond as usize] = MOBILE;
+                    mobile.push(bond);
+                } else {
+                    // No later walk comes this way again.
+                    self.degree[atom as usize] = 0;
+                }
+            }
+        }
+    }
+
+    /// Walks on over atoms with two bonds; whether that leads back to the start.
+    fn walk(&mut self, skeleton: &Skeleton, start: u32) -> bool {
+        self.walked.clear();
+        let (mut at, mut came) = (start, None);
+        while self.degree[at as usize] == 2 {
+            let mut arcs = skeleton.arcs(at).iter();
+            let onward = arcs.find(|&&(_, bond)| Some(bond) != came && self.joins(skeleton, bond));
+            let Some(&(to, bond)) = onward else {
+                return false;
+            };
+            self.walked.push((at, bond));
+            if to == start {
+                return true;
+            }
+            (at, came) = (to, Some(bond));
+        }
+        false
     }
 
     fn connect(&self, skeleton: &Skeleton, matching: &mut Matching) {

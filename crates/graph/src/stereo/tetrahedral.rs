@@ -24,13 +24,14 @@ pub(super) enum Eligible {
 }
 
 /// Adds the tetrahedral candidates; returns the bridgehead relations found on the way.
-/// `eligibles` is scratch.
+/// `eligibles` and `bridgeheads` are scratch.
 pub(super) fn find(
     perception: &mut Perception,
     skeleton: &Skeleton,
     mesomer: &Mesomer,
     marks: &[Mark],
     eligibles: &mut Vec<Option<Eligible>>,
+    bridgeheads: &mut bridgehead::Scratch,
 ) -> Vec<Theta> {
     let atoms = 0..skeleton.len() as u32;
     eligibles.clear();
@@ -41,9 +42,8 @@ pub(super) fn find(
             && mark.parity.is_some()
             && is(mark.centres[0], Eligible::Unruled)
     });
-    let thetas = bridgehead::thetas(skeleton, |atom| {
-        is(atom, Eligible::Stable) || is(atom, Eligible::HeldNitrogen)
-    });
+    let can_be = |atom| is(atom, Eligible::Stable) || is(atom, Eligible::HeldNitrogen);
+    let thetas = bridgehead::thetas(skeleton, can_be, bridgeheads);
     for atom in atoms {
         let quiet = match eligibles[atom as usize] {
             Some(Eligible::Stable) => false,
