@@ -8,11 +8,15 @@
     reason = "a bench fails by panicking"
 )]
 
-use divan::{Bencher, black_box};
-use molkin_formats::{molfile, smiles};
-use molkin_graph::{Limits, Molecule, Orderer};
+use divan::{AllocProfiler, Bencher, black_box};
+use molkin_formats::{Record, molfile, smiles};
+use molkin_graph::{Canonical, CanonicalForm, Limits, Molecule, Orderer};
 use molkin_relate::{Relation, StereoKind, Structure, explain, relate};
 use molkin_tests::{Comparer, read_text, workspace};
+
+/// Counts allocations, so that a stage which forgets to reuse its memory shows.
+#[global_allocator]
+static ALLOCATOR: AllocProfiler = AllocProfiler::system();
 
 /// A drug-sized molecule, a highly symmetric cage, a long chain, many stereo elements.
 const INPUTS: [&str; 4] = ["imatinib", "dodecahedrane", "chain-1000", "sugar"];
@@ -77,6 +81,29 @@ fn write_smiles(bencher: Bencher<'_, '_>, name: &str) {
         .form();
     assert!(smiles::write(&form).lost.is_empty());
     bencher.bench_local(|| smiles::write(black_box(&form)));
+}
+
+/// From text to keys and canonical text as a long run does it, all memory reused.
+#[divan::bench(args = INPUTS)]
+fn record_after_record(bencher: Bencher<'_, '_>, name: &str) {
+    let text = text(name);
+    let mut reader = smiles::Reader::default();
+    let mut orderer = Orderer::new(Limits::default());
+    let mut writer = smiles::Writer::default();
+    let mut record = Record::default();
+    let mut view = Canonical::default();
+    let mut form = CanonicalForm::default();
+    let mut written = smiles::Written::default();
+    let mut run = || {
+        reader.read_into(black_box(&text), 1, &mut record).unwrap();
+        orderer.order_into(&record.molecule, &mut view).unwrap();
+        orderer.form_into(&view, &mut form);
+        writer.write_into(&form, &mut written);
+        view.compound_key()
+    };
+    let key = run();
+    assert_eq!(run(), key);
+    bencher.bench_local(run);
 }
 
 /// Two spellings, two enantiomers, an open centre against a marked one.

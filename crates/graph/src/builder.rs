@@ -61,6 +61,7 @@ pub struct MoleculeBuilder {
     demand: Vec<PiDemand>,
     delocalised: Vec<Delocalised>,
     adjacency: Adjacency,
+    ring: Vec<bool>,
     matching: Matching,
 }
 
@@ -215,7 +216,8 @@ impl MoleculeBuilder {
             .iter()
             .map(|edge| (edge.source().index() as u32, edge.target().index() as u32));
         self.adjacency.load(graph.node_count(), ends);
-        let ring = self.adjacency.ring_bonds(graph.edge_count(), |_| true);
+        let ring = &mut self.ring;
+        self.adjacency.ring_bonds(graph.edge_count(), ring);
         for &(bond, a, b) in &self.delocalised {
             // Both atoms of a ring bond are in a ring; only bonds between rings need a look.
             if ring[bond as usize] {
@@ -229,9 +231,9 @@ impl MoleculeBuilder {
                 return Err(BuildError::AromaticOutsideRing { atom });
             }
         }
-        let double = kekule::assign(&self.demand, &ring, &self.delocalised, &mut self.matching)?;
-        for (&(bond, _, _), double) in self.delocalised.iter().zip(double) {
-            if double {
+        kekule::assign(&self.demand, ring, &self.delocalised, &mut self.matching)?;
+        for &(bond, a, b) in &self.delocalised {
+            if self.matching.mate(a) == b {
                 let edge = petgraph::graph::EdgeIndex::new(bond as usize);
                 graph[edge] = BondOrder::Double;
             }

@@ -17,10 +17,10 @@ use crate::{
     Key, Limits, Molecule,
     claims::{self, Claims, Solver, Variable},
     key,
-    mesomer::Mesomer,
+    mesomer::{self, Mesomer},
     order::{Coloured, Labeller, Labelling, Unit},
     skeleton::Skeleton,
-    stereo::Perception,
+    stereo::{self, Perception},
 };
 
 pub use comparison::{Arrangement, arrangement};
@@ -96,6 +96,9 @@ pub struct Orderer {
     limits: Limits,
     labeller: Labeller,
     graph: Coloured,
+    mesomer: mesomer::Scratch,
+    stereo: stereo::Scratch,
+    form: form::Scratch,
 }
 
 /// The canonical view of one molecule.
@@ -159,7 +162,9 @@ impl Orderer {
             });
         }
         view.skeleton.load(molecule);
-        view.mesomer.load(&mut view.skeleton, &self.limits)?;
+        let scratch = &mut self.mesomer;
+        view.mesomer
+            .load(&mut view.skeleton, &self.limits, scratch)?;
         let mut steps = 0;
         self.label(
             &view.skeleton,
@@ -184,8 +189,9 @@ impl Orderer {
         } else {
             view.bare.clone_from(&view.constitution);
         }
+        let scratch = &mut self.stereo;
         view.perception
-            .load(&view.skeleton, &view.mesomer, molecule);
+            .load(&view.skeleton, &view.mesomer, molecule, scratch);
         view.perception
             .keep_unequal_axes(&view.skeleton, &view.bare.generators);
         view.variables = claims::variables(&view.perception);

@@ -2,6 +2,7 @@
 
 mod isotopes;
 mod nuclide;
+mod place;
 mod symbol;
 mod table;
 mod weights;
@@ -91,17 +92,8 @@ impl Element {
     /// of them stands in group 3.
     #[must_use]
     pub const fn group(self) -> Option<u8> {
-        Some(match self.0 {
-            1 => 1,
-            2 => 18,
-            // Two elements of the s block, a gap where the d block will be, six of the p block.
-            number @ (3..=4 | 11..=12) => (number - 3) % 8 + 1,
-            number @ (5..=10 | 13..=18) => (number - 5) % 8 + 13,
-            number @ 19..=54 => (number - 19) % 18 + 1,
-            number @ (55..=56 | 87..=88) => (number - 55) % 32 + 1,
-            number @ (72..=86 | 104..=118) => (number - 72) % 32 + 4,
-            _ => return None,
-        })
+        // No constructor lets a number above LAST through.
+        place::GROUPS[self.0 as usize]
     }
 
     /// Whether the element keeps its bonds as drawn: metals, and the few others (noble gases, the
@@ -109,29 +101,13 @@ impl Element {
     /// selenium, tellurium and the halogens down to astatine are not among them.
     #[must_use]
     pub const fn is_metal(self) -> bool {
-        let nonmetal = match self.group() {
-            Some(13) => self.0 == Self::BORON.0,
-            Some(14) => self.period() <= 4,
-            Some(15 | 16) => self.period() <= 5,
-            Some(17) => true,
-            _ => self.0 == Self::HYDROGEN.0,
-        };
-        !nonmetal
+        place::METALS[self.0 as usize]
     }
 
     /// The period 1..=7; 0 for the wildcard.
     #[must_use]
     pub const fn period(self) -> u8 {
-        match self.0 {
-            0 => 0,
-            1..=2 => 1,
-            3..=10 => 2,
-            11..=18 => 3,
-            19..=36 => 4,
-            37..=54 => 5,
-            55..=86 => 6,
-            _ => 7,
-        }
+        place::PERIODS[self.0 as usize]
     }
 
     /// The standard atomic weight, abridged where CIAAW gives an interval; `None` where an element has

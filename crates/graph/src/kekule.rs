@@ -24,59 +24,36 @@ pub(crate) type Delocalised = (u32, u32, u32);
 /// (OpenSMILES, aromaticity algorithm; Edmonds 1965). Bonds outside rings are used only where no
 /// matching exists without them, so that a bond between two rings stays single.
 ///
-/// Returns for each delocalised bond whether it is double.
+/// The matching then holds the double bonds; its vertices are the atoms.
 pub(crate) fn assign(
     demand: &[PiDemand],
     ring: &[bool],
     delocalised: &[Delocalised],
     matching: &mut Matching,
-) -> Result<Vec<bool>, BuildError> {
-    // Excluded atoms take no part: the others are numbered among themselves.
-    let mut number = vec![NONE; demand.len()];
-    let mut members = Vec::new();
-    for (atom, slot) in (0..).zip(&mut number) {
-        if demand[atom as usize] != PiDemand::Excluded {
-            *slot = members.len() as u32;
-            members.push(atom);
-        }
-    }
+) -> Result<(), BuildError> {
     matching.budget = u64::MAX;
-    matching.reset(members.len());
-    for (vertex, &atom) in (0..).zip(&members) {
-        if demand[atom as usize] == PiDemand::Optional {
-            matching.set_optional(vertex);
+    matching.reset(demand.len());
+    for (atom, demand) in (0..).zip(demand) {
+        match demand {
+            PiDemand::Needed => {}
+            PiDemand::Excluded => matching.set_removed(atom, true),
+            PiDemand::Optional => matching.set_optional(atom),
         }
     }
-    let ends = |a: u32, b: u32| [number[a as usize], number[b as usize]];
-    let mut exposed = usize::MAX;
+    let takes_part = |atom: u32| demand[atom as usize] != PiDemand::Excluded;
     for in_rings in [true, false] {
         for &(bond, a, b) in delocalised {
-            let [a, b] = ends(a, b);
-            if ring[bond as usize] == in_rings && a != NONE && b != NONE {
+            if ring[bond as usize] == in_rings && takes_part(a) && takes_part(b) {
                 matching.add_edge(a, b);
             }
         }
-        exposed = matching.maximise();
-        if exposed == 0 {
-            break;
+        matching.connect();
+        if matching.maximise() == 0 {
+            return Ok(());
         }
     }
-    if exposed > 0 {
-        let left_over = |vertex: u32, atom: u32| {
-            demand[atom as usize] == PiDemand::Needed && matching.mate(vertex) == NONE
-        };
-        let atoms = (0..)
-            .zip(&members)
-            .filter(|&(vertex, &atom)| left_over(vertex, atom))
-            .map(|(_, &atom)| atom)
-            .collect();
-        return Err(BuildError::NoKekuleStructure { atoms });
-    }
-    Ok(delocalised
-        .iter()
-        .map(|&(_, a, b)| {
-            let [a, b] = ends(a, b);
-            a != NONE && b != NONE && matching.mate(a) == b
-        })
-        .collect())
+    let left_over =
+        |&atom: &u32| demand[atom as usize] == PiDemand::Needed && matching.mate(atom) == NONE;
+    let atoms = (0..demand.len() as u32).filter(left_over).collect();
+    Err(BuildError::NoKekuleStructure { atoms })
 }

@@ -14,7 +14,11 @@ pub(crate) const NONE: u32 = u32::MAX;
 /// cost what they look at.
 #[derive(Debug, Default, Clone)]
 pub(crate) struct Matching {
-    neighbours: Vec<Vec<u32>>,
+    /// Edges that were added; [`Matching::connect`] sorts them into the lists of neighbours.
+    edges: Vec<(u32, u32)>,
+    /// Per vertex: where its neighbours begin and end in `arcs`.
+    lists: Vec<(u32, u32)>,
+    arcs: Vec<u32>,
     vertices: usize,
     mate: Vec<u32>,
     /// Changes of mates since the last reset: vertex and mate before.
@@ -40,14 +44,6 @@ pub(crate) struct Matching {
 }
 
 impl Matching {
-    /// Scratch whose searches never give up.
-    pub(crate) fn unbounded() -> Self {
-        Self {
-            budget: u64::MAX,
-            ..Self::default()
-        }
-    }
-
     /// Whether work went beyond the budget, so that answers since then mean nothing.
     pub(crate) fn is_exhausted(&self) -> bool {
         self.work > self.budget
@@ -55,13 +51,10 @@ impl Matching {
 
     /// Empties the graph and gives it `vertices` isolated vertices.
     pub(crate) fn reset(&mut self, vertices: usize) {
-        for list in self.neighbours.iter_mut().take(self.vertices) {
-            list.clear();
-        }
+        self.edges.clear();
+        self.arcs.clear();
+        fill(&mut self.lists, vertices, (0, 0));
         self.vertices = vertices;
-        if self.neighbours.len() < vertices {
-            self.neighbours.resize_with(vertices, Vec::new);
-        }
         fill(&mut self.mate, vertices, NONE);
         fill(&mut self.removed, vertices, false);
         fill(&mut self.optional, vertices, false);
@@ -107,26 +100,57 @@ impl Matching {
         })
     }
 
-    /// Adds an edge. The caller adds each edge once.
+    /// Adds an edge. The caller adds each edge once, and connects them when all are there.
     pub(crate) fn add_edge(&mut self, a: u32, b: u32) {
-        self.work += 1;
-        self.neighbours[a as usize].push(b);
-        self.neighbours[b as usize].push(a);
+        self.edges.push((a, b));
+    }
+
+    /// Makes the edges added since the last reset part of the graph.
+    pub(crate) fn connect(&mut self) {
+        self.work += self.edges.len() as u64;
+        self.lists.fill((0, 0));
+        for &(a, b) in &self.edges {
+            self.lists[a as usize].1 += 1;
+            self.lists[b as usize].1 += 1;
+        }
+        let mut sum = 0;
+        for list in &mut self.lists {
+            let count = list.1;
+            *list = (sum, sum);
+            sum += count;
+        }
+        fill(&mut self.arcs, sum as usize, NONE);
+        for &(a, b) in &self.edges {
+            for (from, to) in [(a, b), (b, a)] {
+                let end = &mut self.lists[from as usize].1;
+                self.arcs[*end as usize] = to;
+                *end += 1;
+            }
+        }
     }
 
     /// Deletes all edges between two ranges of vertices, save those with a kept end.
     pub(crate) fn cut(&mut self, a: Range<u32>, b: Range<u32>, kept: &[bool]) {
         for (from, to) in [(a.clone(), b.clone()), (b, a)] {
             for vertex in from.filter(|&v| !kept[v as usize]) {
-                self.neighbours[vertex as usize]
-                    .retain(|other| kept[*other as usize] || !to.contains(other));
+                let (start, end) = self.lists[vertex as usize];
+                let mut left = start;
+                for at in start..end {
+                    let other = self.arcs[at as usize];
+                    if kept[other as usize] || !to.contains(&other) {
+                        self.arcs[left as usize] = other;
+                        left += 1;
+                    }
+                }
+                self.lists[vertex as usize].1 = left;
             }
         }
     }
 
     /// The neighbours of a vertex.
     pub(crate) fn neighbours(&self, vertex: u32) -> &[u32] {
-        &self.neighbours[vertex as usize]
+        let (start, end) = self.lists[vertex as usize];
+        &self.arcs[start as usize..end as usize]
     }
 
     /// The partner of a vertex, [`NONE`] if it is exposed.
@@ -160,6 +184,16 @@ impl Matching {
         self.journal.len()
     }
 
+    /// The changes since, each a vertex and its mate before; some vertices several times.
+    pub(crate) fn changes_since(&self, changes: usize) -> impl Iterator<Item = (u32, u32)> + '_ {
+        self.journal[changes..].iter().copied()
+    }
+
+    /// Takes all changes as made for good: there is nothing to undo any more.
+    pub(crate) fn keep_changes(&mut self) {
+        self.journal.clear();
+    }
+
     /// The vertices whose mate was changed since; some several times.
     pub(crate) fn changed_since(&self, changes: usize) -> impl Iterator<Item = u32> + '_ {
         self.journal[changes..].iter().map(|&(vertex, _)| vertex)
@@ -179,9 +213,9 @@ impl Matching {
         self.removed[vertex as usize] = removed;
     }
 
-    /// The whole matching, to be put back by [`Matching::restore`].
-    pub(crate) fn saved(&self) -> Vec<u32> {
-        self.mate.clone()
+    /// The partners of all vertices, to be put back by [`Matching::restore`].
+    pub(crate) fn mates(&self) -> &[u32] {
+        &self.mate
     }
 
     /// Puts a saved matching back.
@@ -198,12 +232,13 @@ impl Matching {
             if self.is_settled(vertex) {
                 continue;
             }
-            self.work += self.neighbours[vertex as usize].len() as u64;
-            let free = self.neighbours[vertex as usize]
+            let neighbours = self.neighbours(vertex);
+            let free = neighbours
                 .iter()
                 .copied()
                 .filter(|&n| self.mate[n as usize] == NONE && !self.removed[n as usize])
-                .min_by_key(|&n| self.neighbours[n as usize].len());
+                .min_by_key(|&n| self.neighbours(n).len());
+            self.work += neighbours.len() as u64;
             if let Some(other) = free {
                 self.join(vertex, other);
             }
@@ -235,6 +270,24 @@ impl Matching {
         true
     }
 
+    /// Brings an edge into a perfect matching if some perfect matching has it, else leaves all as it
+    /// was.
+    pub(crate) fn force(&mut self, x: u32, y: u32) -> bool {
+        let before = self.changes();
+        let (u, v) = (self.part(x), self.part(y));
+        self.set_removed(x, true);
+        self.set_removed(y, true);
+        let done = u != NONE && v != NONE && self.augment(u) && self.mate(v) != NONE;
+        self.set_removed(x, false);
+        self.set_removed(y, false);
+        if done {
+            self.join(x, y);
+        } else {
+            self.undo_to(before);
+        }
+        done
+    }
+
     /// Breadth-first search with blossom shrinking; returns the far end of an augmenting path.
     fn search(&mut self, root: u32) -> Option<u32> {
         for vertex in self.touched.drain(..) {
@@ -248,12 +301,13 @@ impl Matching {
             if self.optional[vertex as usize] && vertex != root {
                 return Some(self.part(vertex));
             }
-            self.work += self.neighbours[vertex as usize].len() as u64;
+            let (start, end) = self.lists[vertex as usize];
+            self.work += u64::from(end - start);
             if self.work > self.budget {
                 return None;
             }
-            for at in 0..self.neighbours[vertex as usize].len() {
-                let to = self.neighbours[vertex as usize][at];
+            for at in start..end {
+                let to = self.arcs[at as usize];
                 if self.removed[to as usize]
                     || self.base[vertex as usize] == self.base[to as usize]
                     || self.mate[vertex as usize] == to
@@ -345,11 +399,15 @@ mod tests {
     use super::*;
 
     fn exposed(vertices: usize, edges: &[(u32, u32)]) -> usize {
-        let mut matching = Matching::unbounded();
+        let mut matching = Matching {
+            budget: u64::MAX,
+            ..Matching::default()
+        };
         matching.reset(vertices);
         for &(a, b) in edges {
             matching.add_edge(a, b);
         }
+        matching.connect();
         matching.maximise()
     }
 

@@ -5,12 +5,14 @@
 //! charges are considered that are best in this order: most π bonds, least total charge, fewest
 //! open valences, fewest negative charges on carbon. What all best placements share is fixed, what
 //! differs among them is mobile. [`placement`] makes this a perfect-matching question, so that the
-//! answer is exact and polynomial; [`mobile`] asks it bond by bond.
+//! answer is exact and polynomial; [`mobile`] asks it bond by bond. Neutral closed-shell systems,
+//! nearly all, are best as drawn and have a shorter way: [`shift`].
 
 mod first;
 mod mobile;
 mod octet;
 mod placement;
+mod shift;
 mod systems;
 mod valence;
 
@@ -19,9 +21,11 @@ mod tests;
 
 use crate::{Limits, OrderError, matching::Matching, skeleton::Skeleton};
 
-pub(crate) use placement::System;
-use valence::Valence;
+pub(crate) use first::First;
+use placement::System;
+use shift::Shift;
 pub(crate) use valence::neutral as neutral_valence;
+use valence::{Drawn, Valence};
 
 /// The order of a bond that differs among the best placements.
 pub(crate) const MOBILE: u8 = 5;
@@ -45,9 +49,23 @@ pub(crate) struct Mesomer {
     /// Per bond: 1 to 4, or [`MOBILE`].
     pub(crate) orders: Vec<u8>,
     pub(crate) states: Vec<AtomState>,
-    /// The conjugated systems whose placement is not settled by the drawing alone.
-    pub(crate) systems: Vec<System>,
+    /// The conjugated systems with charges or open valences, whose placement the drawing alone does
+    /// not settle.
+    systems: Vec<System>,
+    /// The mobile bonds outside of them.
+    shifting: Vec<u32>,
+}
+
+/// Scratch that is reused from one molecule to the next.
+#[derive(Debug, Default)]
+pub(crate) struct Scratch {
+    over_full: Vec<bool>,
+    drawn: Vec<Drawn>,
     valences: Vec<Valence>,
+    /// Per atom: in one of the systems with charges or open valences.
+    in_system: Vec<bool>,
+    spare_systems: Vec<System>,
+    shift: Shift,
     matching: Matching,
 }
 
@@ -90,36 +108,49 @@ impl Mesomer {
         &mut self,
         skeleton: &mut Skeleton,
         limits: &Limits,
+        scratch: &mut Scratch,
     ) -> Result<(), OrderError> {
-        octet::separate(skeleton);
+        let Scratch {
+            over_full,
+            drawn,
+            valences,
+            in_system,
+            spare_systems,
+            shift,
+            matching,
+        } = scratch;
+        octet::separate(skeleton, over_full);
         self.orders.clear();
         self.orders
             .extend(skeleton.bonds.iter().map(|bond| bond.order));
-        valence::load(&mut self.valences, skeleton);
+        valence::load(valences, drawn, skeleton);
+        let atoms = skeleton.atoms.iter().zip(valences.iter());
         self.states.clear();
-        self.states.extend(
-            skeleton
-                .atoms
-                .iter()
-                .zip(&self.valences)
-                .map(|(atom, valence)| AtomState {
-                    charge: atom.charge,
-                    open: valence.open,
-                    ..AtomState::default()
-                }),
+        self.states.extend(atoms.map(|(atom, valence)| AtomState {
+            charge: atom.charge,
+            open: valence.open,
+            ..AtomState::default()
+        }));
+        systems::find(
+            skeleton,
+            valences,
+            in_system,
+            &mut self.systems,
+            spare_systems,
         );
-        self.systems.clear();
-        systems::find_systems(skeleton, &self.valences, &mut self.systems);
         // An edge of a matching costs some four times as much as one of a refinement.
-        self.matching.work = 0;
-        self.matching.budget = limits.order_steps / 4;
-        for at in 0..self.systems.len() {
-            let system = &mut self.systems[at];
-            if system.settle(skeleton, &self.valences, &mut self.matching, limits)? {
-                let (orders, states) = (&mut self.orders, &mut self.states);
-                mobile::mark(system, &mut self.matching, limits, orders, states)?;
+        matching.work = 0;
+        matching.budget = limits.order_steps / 4;
+        let (orders, states) = (&mut self.orders, &mut self.states);
+        for system in &mut self.systems {
+            if system.settle(valences, matching, limits)? {
+                mobile::mark(system, matching, limits, orders, states)?;
             }
         }
-        Ok(())
+        // A ring shift that would turn a triple bond into cumulated ones relates valence isomers, not
+        // mesomers (docs/definitions.md), so atoms with room for two π bonds stay out here.
+        let takes_part = |atom: u32| valences[atom as usize].pi == 1 && !in_system[atom as usize];
+        let shifting = &mut self.shifting;
+        shift.mark(skeleton, takes_part, matching, limits, orders, shifting)
     }
 }

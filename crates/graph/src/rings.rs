@@ -1,13 +1,41 @@
 //! Ring membership and small rings; no ring set is ever needed for identity.
 
-use std::collections::VecDeque;
-
 /// Compressed adjacency: the arcs of vertex `v` are `arcs[start[v]..start[v + 1]]`, each with the
 /// neighbour and the index of the bond.
 #[derive(Debug, Default, Clone)]
 pub(crate) struct Adjacency {
     start: Vec<u32>,
     arcs: Vec<(u32, u32)>,
+    /// Scratch of the search for rings.
+    visits: Vec<Visit>,
+}
+
+/// What the search for bridges knows of a vertex.
+#[derive(Debug, Clone, Copy)]
+struct Visit {
+    depth: u32,
+    /// The least depth that the vertices beyond it reach.
+    low: u32,
+    /// The bond it was entered by.
+    entered: u32,
+    parent: u32,
+    /// The arc to look at next.
+    next: u32,
+}
+
+const UNSEEN: u32 = u32::MAX;
+const NO_BOND: u32 = u32::MAX;
+
+impl Default for Visit {
+    fn default() -> Self {
+        Self {
+            depth: UNSEEN,
+            low: UNSEEN,
+            entered: NO_BOND,
+            parent: 0,
+            next: 0,
+        }
+    }
 }
 
 impl Adjacency {
@@ -48,75 +76,88 @@ impl Adjacency {
         &self.arcs[self.start[at] as usize..self.start[at + 1] as usize]
     }
 
-    /// The number of vertices.
-    pub(crate) fn len(&self) -> usize {
-        self.start.len().saturating_sub(1)
-    }
-
     /// For each bond whether it lies in a ring: a depth-first search for bridges (Tarjan 1974),
-    /// without recursion, linear in the bonds. `keep` selects the bonds that exist.
-    pub(crate) fn ring_bonds(&self, bonds: usize, keep: impl Fn(u32) -> bool) -> Vec<bool> {
-        const UNSEEN: u32 = u32::MAX;
-        let mut in_ring = vec![false; bonds];
-        let mut depth = vec![UNSEEN; self.len()];
-        let mut low = vec![UNSEEN; self.len()];
-        // Vertex, the bond it was entered by, and the range of arcs still to be looked at.
-        let range = |vertex: u32| (self.start[vertex as usize], self.start[vertex as usize + 1]);
-        let mut stack: Vec<(u32, u32, (u32, u32))> = Vec::with_capacity(self.len());
-        for root in 0..self.len() as u32 {
-            if depth[root as usize] != UNSEEN {
+    /// without recursion, linear in the bonds.
+    pub(crate) fn ring_bonds(&mut self, bonds: usize, in_ring: &mut Vec<bool>) {
+        in_ring.clear();
+        in_ring.resize(bonds, false);
+        let Self {
+            start,
+            arcs,
+            visits,
+        } = self;
+        visits.clear();
+        visits.extend(start.iter().map(|&next| Visit {
+            next,
+            ..Visit::default()
+        }));
+        for root in 0..start.len().saturating_sub(1) {
+            if visits[root].depth != UNSEEN {
                 continue;
             }
-            depth[root as usize] = 0;
-            low[root as usize] = 0;
-            stack.push((root, u32::MAX, range(root)));
-            while let Some(&mut (vertex, entered, (ref mut next, end))) = stack.last_mut() {
-                if *next < end {
-                    let (to, bond) = self.arcs[*next as usize];
-                    *next += 1;
-                    if bond == entered || !keep(bond) {
-                        continue;
-                    }
-                    if depth[to as usize] == UNSEEN {
-                        depth[to as usize] = depth[vertex as usize] + 1;
-                        low[to as usize] = depth[to as usize];
-                        stack.push((to, bond, range(to)));
-                    } else {
+            visits[root].depth = 0;
+            visits[root].low = 0;
+            let mut vertex = root;
+            loop {
+                let Visit {
+                    depth,
+                    low,
+                    entered,
+                    parent,
+                    next,
+                } = visits[vertex];
+                if next < start[vertex + 1] {
+                    visits[vertex].next += 1;
+                    let (to, bond) = arcs[next as usize];
+                    let other = &mut visits[to as usize];
+                    if other.depth == UNSEEN {
+                        other.depth = depth + 1;
+                        other.low = depth + 1;
+                        other.entered = bond;
+                        other.parent = vertex as u32;
+                        vertex = to as usize;
+                    } else if bond != entered {
                         in_ring[bond as usize] = true;
-                        low[vertex as usize] = low[vertex as usize].min(depth[to as usize]);
+                        let reached = other.depth;
+                        visits[vertex].low = low.min(reached);
                     }
+                } else if entered == NO_BOND {
+                    break;
                 } else {
-                    stack.pop();
-                    if let Some(&(parent, _, _)) = stack.last() {
-                        if low[vertex as usize] <= depth[parent as usize] {
-                            in_ring[entered as usize] = true;
-                        }
-                        low[parent as usize] = low[parent as usize].min(low[vertex as usize]);
-                    }
+                    in_ring[entered as usize] |= low < depth;
+                    vertex = parent as usize;
+                    visits[vertex].low = visits[vertex].low.min(low);
                 }
             }
         }
-        in_ring
     }
 
-    /// The number of atoms of the smallest ring through a bond, if it is at most `limit`.
-    pub(crate) fn smallest_ring(&self, a: u32, b: u32, limit: u32) -> Option<u32> {
-        let mut seen: Vec<(u32, u32)> = vec![(a, 1)];
-        let mut queue = VecDeque::from([(a, 1u32)]);
-        while let Some((vertex, size)) = queue.pop_front() {
-            if size == limit {
-                break;
-            }
-            for &(to, _) in self.of(vertex) {
-                if (vertex == a && to == b) || seen.iter().any(|&(v, _)| v == to) {
-                    continue;
+    /// The number of atoms of the smallest ring through a bond, if it is at most `limit`: breadth
+    /// first, in layers. `seen` is scratch.
+    pub(crate) fn smallest_ring(
+        &self,
+        [a, b]: [u32; 2],
+        limit: u32,
+        seen: &mut Vec<u32>,
+    ) -> Option<u32> {
+        seen.clear();
+        seen.push(a);
+        let mut layer = 0;
+        for size in 2..=limit {
+            let reached = seen.len();
+            for at in layer..reached {
+                let vertex = seen[at];
+                for &(to, _) in self.of(vertex) {
+                    if to == b {
+                        if vertex != a {
+                            return Some(size);
+                        }
+                    } else if !seen.contains(&to) {
+                        seen.push(to);
+                    }
                 }
-                if to == b {
-                    return Some(size + 1);
-                }
-                seen.push((to, size + 1));
-                queue.push_back((to, size + 1));
             }
+            layer = reached;
         }
         None
     }
@@ -135,8 +176,9 @@ mod tests {
     #[test]
     fn bridges_are_not_in_rings() {
         let bonds = [(0, 1), (1, 2), (2, 0), (2, 3), (3, 4), (4, 5), (5, 3)];
-        let table = adjacency(6, &bonds);
-        let found = table.ring_bonds(bonds.len(), |_| true);
+        let mut table = adjacency(6, &bonds);
+        let mut found = Vec::new();
+        table.ring_bonds(bonds.len(), &mut found);
         assert_eq!(found, [true, true, true, false, true, true, true]);
     }
 
@@ -144,7 +186,8 @@ mod tests {
     fn smallest_ring_within_a_limit() {
         let ring: Vec<_> = (0..8).map(|i| (i, (i + 1) % 8)).collect();
         let table = adjacency(8, &ring);
-        assert_eq!(table.smallest_ring(0, 1, 8), Some(8));
-        assert_eq!(table.smallest_ring(0, 1, 7), None);
+        let mut seen = Vec::new();
+        assert_eq!(table.smallest_ring([0, 1], 8, &mut seen), Some(8));
+        assert_eq!(table.smallest_ring([0, 1], 7, &mut seen), None);
     }
 }

@@ -31,6 +31,16 @@ pub(crate) struct SkeletonBond {
     pub(crate) order: u8,
 }
 
+impl SkeletonBond {
+    /// Electron pairs that count as valence: none for coordination and hydrogen bonds.
+    pub(crate) fn pairs(&self) -> u8 {
+        match self.order {
+            order @ 1..=4 => order,
+            _ => 0,
+        }
+    }
+}
+
 /// Flat molecule. All vectors are reused from one molecule to the next.
 #[derive(Debug, Default, Clone)]
 pub(crate) struct Skeleton {
@@ -80,7 +90,7 @@ impl Skeleton {
         }
         let ends = self.bonds.iter().map(|bond| (bond.a, bond.b));
         self.adjacency.load(self.atoms.len(), ends);
-        self.ring = self.adjacency.ring_bonds(self.bonds.len(), |_| true);
+        self.adjacency.ring_bonds(self.bonds.len(), &mut self.ring);
     }
 
     /// Decides which hydrogen atoms fold: neutral, one single bond, and few enough on their
@@ -133,10 +143,7 @@ impl Skeleton {
 
     /// Electron pairs of a bond that count as valence: none for coordination and hydrogen bonds.
     pub(crate) fn pairs(&self, bond: u32) -> u8 {
-        match self.bonds[bond as usize].order {
-            order @ 1..=4 => order,
-            _ => 0,
-        }
+        self.bonds[bond as usize].pairs()
     }
 
     /// The number of atoms.

@@ -19,6 +19,8 @@ use crate::{
 };
 
 pub(crate) use bridgehead::Cage;
+use marks::Mark;
+use tetrahedral::Eligible;
 pub use undrawable::Undrawable;
 
 /// Ligands that are no atoms, as numbers above every atom. Hydrogens by isotope first.
@@ -100,22 +102,45 @@ pub(crate) struct Perception {
     places: Vec<([u32; 2], usize)>,
 }
 
+/// Scratch that is reused from one molecule to the next.
+#[derive(Debug, Default)]
+pub(crate) struct Scratch {
+    marks: Vec<Mark>,
+    /// Per atom: what it is as a possible centre.
+    eligible: Vec<Option<Eligible>>,
+    bridgeheads: bridgehead::Scratch,
+    /// Atoms that the search for a small ring has seen.
+    seen: Vec<u32>,
+}
+
 impl Perception {
     /// Finds all candidates and puts the record's marks on them.
-    pub(crate) fn load(&mut self, skeleton: &Skeleton, mesomer: &Mesomer, molecule: &Molecule) {
+    pub(crate) fn load(
+        &mut self,
+        skeleton: &Skeleton,
+        mesomer: &Mesomer,
+        molecule: &Molecule,
+        scratch: &mut Scratch,
+    ) {
+        let Scratch {
+            marks,
+            eligible,
+            bridgeheads,
+            seen,
+        } = scratch;
         self.candidates.clear();
         self.dropped.clear();
         self.impossible.clear();
         self.cages.clear();
-        let marks = marks::on_skeleton(skeleton, molecule.drawn_stereo());
-        let thetas = tetrahedral::find(self, skeleton, mesomer, &marks);
-        double_bond::find(self, skeleton, mesomer, &marks);
+        marks::on_skeleton(marks, skeleton, molecule.drawn_stereo());
+        let thetas = tetrahedral::find(self, skeleton, mesomer, marks, eligible, bridgeheads);
+        double_bond::find(self, skeleton, mesomer, marks, seen);
         let places = self.candidates.iter().enumerate();
         self.places.clear();
         self.places
             .extend(places.map(|(index, c)| (ascending(c.centres), index)));
         self.places.sort_unstable();
-        marks::apply(self, skeleton, mesomer, &marks);
+        marks::apply(self, skeleton, mesomer, marks, seen);
         bridgehead::bind(self, &thetas);
         coordination::load(self, skeleton, molecule.drawn_coordination());
         undrawable::find(self, skeleton, mesomer);

@@ -23,7 +23,7 @@ mod tests;
 use molkin_graph::{BondOrder, CanonicalForm, Polyhedron, Shape};
 
 use self::{
-    emit::Emitter,
+    emit::{Emitter, Step},
     layout::Layout,
     slopes::Slopes,
     structure::{ArcTable, Structure},
@@ -135,16 +135,29 @@ pub fn write(form: &CanonicalForm) -> Written {
 pub struct Writer {
     arcs: ArcTable,
     layout: Layout,
+    /// Per atom: the hydrogens that are written as atoms.
+    shown: Vec<u8>,
+    tags: Tags,
+    steps: Vec<Step>,
 }
 
 impl Writer {
     /// Writes a canonical form as [`write()`] does.
     pub fn write(&mut self, form: &CanonicalForm) -> Written {
+        let mut written = Written::default();
+        self.write_into(form, &mut written);
+        written
+    }
+
+    /// As [`Writer::write`], in place of a text whose storage is reused.
+    pub fn write_into(&mut self, form: &CanonicalForm, written: &mut Written) {
+        let Written { text, lost } = written;
+        text.clear();
+        lost.clear();
         let structure = Structure::new(form, &mut self.arcs);
         self.layout.plan(&structure);
         let layout = &self.layout;
-        let mut lost = Vec::new();
-        structure.report_lost_bonds(&mut lost);
+        structure.report_lost_bonds(lost);
         if !form.groups.is_empty() {
             lost.push(Lost::StereoGroups);
         }
@@ -153,25 +166,27 @@ impl Writer {
         if elements.any(|element| element.shape != Shape::Tetrahedral) {
             rows = rows::find(&structure);
         }
-        let mut shown: Vec<u8> = form.atoms.iter().map(atom::shown_hydrogens).collect();
-        let mut slopes = Slopes::solve(&structure, layout, &rows, &mut lost);
-        slopes.show_hydrogens(&structure, &mut shown);
-        let tags = Tags::new(&structure, layout, &rows, &shown, &mut lost);
+        let shown = &mut self.shown;
+        shown.clear();
+        shown.extend(form.atoms.iter().map(atom::shown_hydrogens));
+        let mut slopes = Slopes::solve(&structure, layout, &rows, lost);
+        slopes.show_hydrogens(&structure, shown);
+        self.tags.load(&structure, layout, &rows, shown, lost);
         if layout.highest_label > layout::LAST_LABEL {
             lost.push(Lost::RingLabels {
                 highest: layout.highest_label,
             });
         }
         lost.sort_unstable();
-        let emitter = Emitter {
+        let mut emitter = Emitter {
             structure: &structure,
             layout,
-            shown: &shown,
-            tags: &tags,
+            shown,
+            tags: &self.tags,
             slopes: &mut slopes,
-            text: String::with_capacity(2 * form.atoms.len()),
+            steps: &mut self.steps,
+            text,
         };
-        let text = emitter.emit();
-        Written { text, lost }
+        emitter.emit();
     }
 }

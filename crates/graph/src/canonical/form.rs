@@ -1,13 +1,11 @@
 //! The canonical form: the molecule as canonical text writes it, numbered in canonical order.
 
-use std::collections::HashSet;
-
 use crate::{
-    Canonical, DrawnCoordination, Element, GroupKind, Ligand, Parity, Shape, claims::Status,
-    stereo::slot,
+    Canonical, DrawnCoordination, Element, GroupKind, Ligand, Orderer, Parity, Shape,
+    claims::Status, stereo::slot,
 };
 
-use super::placement;
+use super::placement::Placed;
 
 /// An atom of the canonical form.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -55,19 +53,62 @@ pub struct CanonicalForm {
     pub groups: Vec<GroupKind>,
 }
 
+/// Scratch that is reused from one form to the next.
+#[derive(Debug, Default)]
+pub(super) struct Scratch {
+    placed: Placed,
+    /// Labelled hydrogens, for stereo ligands.
+    labelled: Vec<Labelled>,
+    /// Mobile bonds that carry a mark.
+    marked: Vec<u32>,
+}
+
+/// A hydrogen that is an atom of the form.
+#[derive(Debug, Clone, Copy)]
+struct Labelled {
+    host: u32,
+    mass: u32,
+    atom: u32,
+}
+
+impl Orderer {
+    /// As [`Canonical::form`], into a form whose storage is reused.
+    pub fn form_into(&mut self, view: &Canonical, form: &mut CanonicalForm) {
+        view.load_form(&mut self.form, form);
+    }
+}
+
 impl Canonical {
     /// The canonical form.
     pub fn form(&self) -> CanonicalForm {
-        let marked = self.marked_mobile_bonds();
-        let placed = placement::place(&self.skeleton, &self.mesomer, &self.written.rank, |bond| {
+        let mut form = CanonicalForm::default();
+        self.load_form(&mut Scratch::default(), &mut form);
+        form
+    }
+
+    fn load_form(&self, scratch: &mut Scratch, form: &mut CanonicalForm) {
+        let Scratch {
+            placed,
+            labelled,
+            marked,
+        } = scratch;
+        self.list_marked_mobile_bonds(marked);
+        placed.place(&self.skeleton, &self.mesomer, &self.written, |bond| {
             marked.contains(&bond)
         });
-        let rank = |atom: u32| self.written.rank[atom as usize];
-        let mut form = CanonicalForm::default();
-        // A labelled hydrogen of each host, for stereo ligands: host rank, mass, atom.
-        let mut labelled: Vec<(u32, u32, u32)> = Vec::new();
+        form.atoms.clear();
+        form.bonds.clear();
+        form.stereo.clear();
+        form.coordination.clear();
+        labelled.clear();
+        self.add_atoms(form, placed, labelled);
+        self.add_bonds(form, placed, labelled);
+        self.add_stereo(form, labelled);
+    }
+
+    fn add_atoms(&self, form: &mut CanonicalForm, placed: &Placed, labelled: &mut Vec<Labelled>) {
         let mut next = self.skeleton.len() as u32;
-        for &atom in &self.written.order {
+        for (host, &atom) in (0..).zip(&self.written.order) {
             let record = &self.skeleton.atoms[atom as usize];
             let counts = [0, 4, 8].map(|shift| record.labelled >> shift & 15);
             let natural = u16::from(record.hydrogens).saturating_sub(counts.iter().sum());
@@ -77,45 +118,54 @@ impl Canonical {
                 charge: placed.charges[atom as usize],
                 hydrogens: natural as u8,
             });
-            for (mass, count) in (1u32..).zip(counts) {
+            for (mass, count) in (1..).zip(counts) {
                 for _ in 0..count {
-                    labelled.push((rank(atom), mass, next));
+                    let atom = next;
+                    labelled.push(Labelled { host, mass, atom });
                     next += 1;
                 }
             }
         }
-        for (bond, &order) in self.skeleton.bonds.iter().zip(&placed.orders) {
-            let (a, b) = (rank(bond.a), rank(bond.b));
-            form.bonds.push((a.min(b), a.max(b), order));
-        }
-        for &(host, mass, atom) in &labelled {
-            form.atoms.push(FormAtom {
-                element: Element::HYDROGEN,
-                isotope: Some(mass as u16),
-                charge: 0,
-                hydrogens: 0,
-            });
-            form.bonds.push((host, atom, 1));
-        }
-        form.bonds.sort_unstable();
-        self.add_stereo(&mut form, &labelled);
-        form
+        form.atoms.extend(labelled.iter().map(|own| FormAtom {
+            element: Element::HYDROGEN,
+            isotope: Some(own.mass as u16),
+            charge: 0,
+            hydrogens: 0,
+        }));
     }
 
-    /// Mobile bonds that carry a mark.
-    fn marked_mobile_bonds(&self) -> HashSet<u32> {
+    /// Adds the bonds by their lower atom, each with its labelled hydrogens, so that all are sorted.
+    fn add_bonds(&self, form: &mut CanonicalForm, placed: &Placed, labelled: &[Labelled]) {
+        let mut labelled = labelled.iter().peekable();
+        for (host, &atom) in (0..).zip(&self.written.order) {
+            let from = form.bonds.len();
+            for &(to, bond) in self.skeleton.arcs(atom) {
+                let to = self.written.rank[to as usize];
+                if to > host {
+                    form.bonds.push((host, to, placed.orders[bond as usize]));
+                }
+            }
+            while let Some(own) = labelled.next_if(|own| own.host == host) {
+                form.bonds.push((host, own.atom, 1));
+            }
+            form.bonds[from..].sort_unstable();
+        }
+    }
+
+    fn list_marked_mobile_bonds(&self, marked: &mut Vec<u32>) {
         let places = self.variables.iter().zip(&self.claims.statuses);
-        places
+        let bonds = places
             .filter(|(variable, status)| variable.quiet && **status == Status::Marked)
             .flat_map(|(variable, _)| &variable.members)
             .filter_map(|&(index, _)| {
                 let [a, b] = self.perception.candidates[index].centres;
                 self.skeleton.bond_between(a, b)
-            })
-            .collect()
+            });
+        marked.clear();
+        marked.extend(bonds);
     }
 
-    fn add_stereo(&self, form: &mut CanonicalForm, labelled: &[(u32, u32, u32)]) {
+    fn add_stereo(&self, form: &mut CanonicalForm, labelled: &[Labelled]) {
         let rank = |atom: u32| self.written.rank[atom as usize];
         for (variable, shown) in self.variables.iter().zip(&self.claims.shown) {
             let Some(odd) = *shown else {
@@ -170,7 +220,7 @@ impl Canonical {
     }
 
     /// A skeleton ligand in the numbering of the form; `labelled` lists hydrogens that are atoms.
-    fn ligand(&self, ligand: u32, centre: u32, labelled: &[(u32, u32, u32)]) -> Ligand {
+    fn ligand(&self, ligand: u32, centre: u32, labelled: &[Labelled]) -> Ligand {
         match ligand {
             slot::LONE_PAIR => Ligand::LonePair,
             slot::HYDROGEN => Ligand::Hydrogen,
@@ -178,8 +228,8 @@ impl Canonical {
                 let mass = l - slot::HYDROGEN;
                 let own = labelled
                     .iter()
-                    .find(|&&(host, m, _)| host == centre && m == mass);
-                own.map_or(Ligand::Hydrogen, |&(_, _, atom)| Ligand::Atom(atom))
+                    .find(|own| own.host == centre && own.mass == mass);
+                own.map_or(Ligand::Hydrogen, |own| Ligand::Atom(own.atom))
             }
             atom => Ligand::Atom(self.written.rank[atom as usize]),
         }

@@ -1,14 +1,105 @@
 //! The first of the best placements in a given order of atoms.
 
-use crate::matching::{Matching, NONE};
+use crate::{
+    matching::{Matching, NONE},
+    skeleton::Skeleton,
+};
 
-use super::placement::{Pool, System, SystemBond};
+use super::{
+    MOBILE, Mesomer,
+    placement::{Pool, System, SystemBond},
+};
+
+/// Finds first placements; owns the scratch.
+#[derive(Debug, Default)]
+pub(crate) struct First {
+    matching: Matching,
+    /// Bonds to settle: whether after the others, the ranks of the two atoms, the bond.
+    bonds: Vec<(bool, u32, u32, u32)>,
+}
+
+impl First {
+    /// Of the best placements the one that is first: bonds that `marked` names come before the
+    /// others, and each sort goes by the ranks of their atoms; each gets the highest order that is
+    /// still possible, then charges the same way. Orders and charges that are fixed stay as they are.
+    pub(crate) fn place(
+        &mut self,
+        (skeleton, mesomer): (&Skeleton, &Mesomer),
+        rank: &[u32],
+        marked: impl Fn(u32) -> bool,
+        orders: &mut [u8],
+        charges: &mut [i8],
+    ) {
+        self.matching.budget = u64::MAX;
+        for system in &mesomer.systems {
+            let mobile = system
+                .bonds
+                .iter()
+                .any(|bond| mesomer.orders[bond.bond as usize] == MOBILE)
+                || system
+                    .atoms
+                    .iter()
+                    .any(|&atom| mesomer.states[atom as usize].mobile);
+            if mobile && !system.mate.is_empty() {
+                system.first_placement(
+                    &mut self.matching,
+                    rank,
+                    &marked,
+                    |bond, order| orders[bond as usize] = order,
+                    |atom, charge| charges[atom as usize] = charge,
+                );
+            }
+        }
+        if !mesomer.shifting.is_empty() {
+            self.shift((skeleton, mesomer), rank, marked, orders);
+        }
+    }
+
+    /// The same for bonds that ring shifts move. The fixed bonds are the same in all placements, so
+    /// the placements are the perfect matchings of the graph of the mobile ones, of which the drawing
+    /// shows one.
+    fn shift(
+        &mut self,
+        (skeleton, mesomer): (&Skeleton, &Mesomer),
+        rank: &[u32],
+        marked: impl Fn(u32) -> bool,
+        orders: &mut [u8],
+    ) {
+        let Self { matching, bonds } = self;
+        matching.reset(skeleton.len());
+        bonds.clear();
+        for &bond in &mesomer.shifting {
+            let ends = &skeleton.bonds[bond as usize];
+            matching.add_edge(ends.a, ends.b);
+            if ends.order == 2 {
+                matching.join(ends.a, ends.b);
+            }
+            let (a, b) = (rank[ends.a as usize], rank[ends.b as usize]);
+            bonds.push((!marked(bond), a.min(b), a.max(b), bond));
+        }
+        matching.connect();
+        bonds.sort_unstable();
+        for &(_, _, _, bond) in bonds.iter() {
+            let ends = &skeleton.bonds[bond as usize];
+            let (a, b) = (ends.a, ends.b);
+            // Neither end is settled yet, and a perfect matching of the rest has the bond. A bond
+            // that none has will not come back: what is left only shrinks.
+            let double = matching.mate(a) != NONE
+                && matching.mate(b) != NONE
+                && (matching.mate(a) == b || matching.force(a, b));
+            orders[bond as usize] = 1 + u8::from(double);
+            if double {
+                matching.part(a);
+                for atom in [a, b] {
+                    matching.set_removed(atom, true);
+                }
+            }
+        }
+    }
+}
 
 impl System {
-    /// Walks through the bonds, those that `first` names before the others and each sort by the ranks
-    /// of their atoms, and gives each the highest order that is
-    /// still possible, then does the same with charges; reports orders and charges.
-    pub(crate) fn first_placement(
+    fn first_placement(
         &self,
         matching: &mut Matching,
         rank: &[u32],
@@ -16,44 +107,35 @@ impl System {
         mut set_order: impl FnMut(u32, u8),
         mut set_charge: impl FnMut(u32, i8),
     ) {
-        let mut system = self.clone();
-        system.build(matching);
+        self.connect(matching);
         matching.restore(&self.mate);
+        let rank_of = |at: u32| rank[self.atoms[at as usize] as usize];
         let mut order: Vec<(bool, u32, u32, SystemBond)> = self
             .bonds
             .iter()
-            .map(|bond| {
-                let ranks = [bond.a, bond.b].map(|at| rank[self.atoms[at as usize] as usize]);
-                let ordered = if ranks[0] < ranks[1] {
-                    *bond
+            .map(|&SystemBond { bond, a, b }| {
+                let (a, b) = if rank_of(a) < rank_of(b) {
+                    (a, b)
                 } else {
-                    SystemBond {
-                        a: bond.b,
-                        b: bond.a,
-                        ..*bond
-                    }
+                    (b, a)
                 };
-                let later = !first(bond.bond);
                 (
-                    later,
-                    ranks[0].min(ranks[1]),
-                    ranks[0].max(ranks[1]),
-                    ordered,
+                    !first(bond),
+                    rank_of(a),
+                    rank_of(b),
+                    SystemBond { bond, a, b },
                 )
             })
             .collect();
         order.sort_unstable_by_key(|&(later, a, b, _)| (later, a, b));
         let mut choice = Choice {
-            system: &system,
+            system: self,
             matching,
             settled: vec![false; self.mate.len()],
         };
         for (_, _, _, bond) in order {
             let pi = choice.raise(bond.a, bond.b);
             set_order(bond.bond, 1 + pi);
-        }
-        if self.is_closed() {
-            return;
         }
         let mut groups: Vec<u32> = (0..self.atoms.len() as u32).collect();
         groups.sort_unstable_by_key(|&at| rank[self.atoms[at as usize] as usize]);
@@ -64,10 +146,10 @@ impl System {
                 Pool::Positive,
                 Pool::Open,
             ] {
-                choice.raise(group, system.pool_group(pool));
+                choice.raise(group, self.pool_group(pool));
             }
         }
-        let mate = choice.matching.saved();
+        let mate = choice.matching.mates();
         for group in groups {
             let (charge, _) = self.charge_and_open(|v| mate[v as usize], group);
             set_charge(self.atoms[group as usize], charge as i8);
@@ -114,7 +196,7 @@ impl Choice<'_> {
         // vertices of an atom are not all alike, and the choice may not depend on the drawing.
         let found = edges
             .into_iter()
-            .find(|&(x, y)| self.matching.mate(x) == y || self.force((x, y)));
+            .find(|&(x, y)| self.matching.mate(x) == y || self.matching.force(x, y));
         if let Some((x, y)) = found {
             for vertex in [x, y] {
                 self.settled[vertex as usize] = true;
@@ -122,23 +204,5 @@ impl Choice<'_> {
             }
         }
         found.is_some()
-    }
-
-    /// Brings an edge into the perfect matching if that is possible, else leaves all as it was.
-    fn force(&mut self, (x, y): (u32, u32)) -> bool {
-        let before = self.matching.changes();
-        let (u, v) = (self.matching.part(x), self.matching.part(y));
-        self.matching.set_removed(x, true);
-        self.matching.set_removed(y, true);
-        let done =
-            u != NONE && v != NONE && self.matching.augment(u) && self.matching.mate(v) != NONE;
-        self.matching.set_removed(x, false);
-        self.matching.set_removed(y, false);
-        if done {
-            self.matching.join(x, y);
-        } else {
-            self.matching.undo_to(before);
-        }
-        done
     }
 }

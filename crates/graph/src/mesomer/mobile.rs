@@ -60,9 +60,6 @@ pub(super) fn mark(
         let pi = system.placed(bond.a, bond.b) as u8;
         orders[bond.bond as usize] = if mobile { MOBILE } else { 1 + pi };
     }
-    if system.is_closed() {
-        return Ok(());
-    }
     mark_atoms(system, matching, limits, states)
 }
 

@@ -12,19 +12,19 @@ use super::valence;
 ///
 /// A π bond between two over-full atoms waits until one of them is full: giving the charge to either
 /// would let the numbering decide. So the table is applied in rounds, each decided by what was
-/// over-full at its start; what is left between two over-full atoms stays as drawn.
-pub(super) fn separate(skeleton: &mut Skeleton) {
+/// over-full at its start; what is left between two over-full atoms stays as drawn. `over_full` is
+/// scratch.
+pub(super) fn separate(skeleton: &mut Skeleton, over_full: &mut Vec<bool>) {
     loop {
-        let over_full: Vec<bool> = (0..skeleton.len() as u32)
-            .map(|atom| is_over_full(skeleton, atom))
-            .collect();
+        over_full.clear();
+        over_full.extend((0..skeleton.len() as u32).map(|atom| is_over_full(skeleton, atom)));
         let mut changed = false;
         for atom in 0..skeleton.len() as u32 {
             if !over_full[atom as usize] {
                 continue;
             }
             while excess(skeleton, atom) > 0
-                && let Some(bond) = pi_bond(skeleton, atom, &over_full)
+                && let Some(bond) = pi_bond(skeleton, atom, over_full)
             {
                 separate_bond(skeleton, atom, bond);
                 changed = true;
@@ -52,10 +52,11 @@ fn separate_bond(skeleton: &mut Skeleton, centre: u32, bond: u32) {
 /// the electrons for. (With more bonds than valence electrons a drawing means nothing; it stays.)
 fn is_over_full(skeleton: &Skeleton, atom: u32) -> bool {
     let record = &skeleton.atoms[atom as usize];
+    if !valence::is_group_15_to_17(record.element) {
+        return false;
+    }
     let electrons = 8 - valence::neutral(record.element);
-    valence::is_group_15_to_17(record.element)
-        && excess(skeleton, atom) > 0
-        && drawn(skeleton, atom) + i32::from(record.charge) <= electrons
+    excess(skeleton, atom) > 0 && drawn(skeleton, atom) + i32::from(record.charge) <= electrons
 }
 
 /// Electron pairs in the bonds of an atom.

@@ -13,11 +13,7 @@
 //! order of preference is a short loop: `k` from the largest down, `t + p` from the least up, `p`
 //! from the largest down, negative carbons from none up.
 
-use crate::{
-    Limits, OrderError,
-    matching::{Matching, NONE},
-    skeleton::Skeleton,
-};
+use crate::{Limits, OrderError, matching::Matching};
 
 use super::{mobile::within, valence::Valence};
 
@@ -72,47 +68,22 @@ pub(crate) struct System {
     pub(super) first: Vec<u32>,
     /// The placement that was found.
     pub(crate) mate: Vec<u32>,
-    /// Neutral and closed-shell: the drawing is a best placement already.
-    pub(super) closed: bool,
 }
 
 impl System {
+    /// Takes the matching as the placement that was found.
+    fn keep(&mut self, matching: &mut Matching) {
+        self.mate.clear();
+        self.mate.extend_from_slice(matching.mates());
+        matching.keep_changes();
+    }
+
     /// Finds a best placement, which the matching holds afterwards. `false` where the model has none
     /// and the drawing stands.
     ///
     /// # Errors
     /// [`OrderError::StepLimit`] when the matching has looked at more edges than the limits allow.
     pub(super) fn settle(
-        &mut self,
-        skeleton: &Skeleton,
-        valences: &[Valence],
-        matching: &mut Matching,
-        limits: &Limits,
-    ) -> Result<bool, OrderError> {
-        if !self.closed {
-            return self.search(valences, matching, limits);
-        }
-        self.build(matching);
-        for at in 0..self.bonds.len() {
-            let SystemBond { bond, a, b } = self.bonds[at];
-            for _ in 1..skeleton.bonds[bond as usize].order {
-                let free = |group: u32| self.vertices(group).find(|&v| matching.mate(v) == NONE);
-                if let (Some(x), Some(y)) = (free(a), free(b)) {
-                    matching.join(x, y);
-                }
-            }
-        }
-        self.keep(matching);
-        Ok(true)
-    }
-
-    /// Takes the matching as the placement that was found.
-    fn keep(&mut self, matching: &mut Matching) {
-        self.mate = matching.saved();
-        matching.restore(&self.mate);
-    }
-
-    fn search(
         &mut self,
         valences: &[Valence],
         matching: &mut Matching,
@@ -229,7 +200,12 @@ impl System {
             next += size;
         }
         self.first.push(next);
-        matching.reset(next as usize);
+        self.connect(matching);
+    }
+
+    /// Puts the graph into the matching.
+    pub(super) fn connect(&self, matching: &mut Matching) {
+        matching.reset(self.first.last().map_or(0, |&count| count as usize));
         for group in 0..self.first.len() as u32 - 1 {
             for vertex in self.vertices(group) {
                 matching.set_group(vertex, group);
@@ -251,6 +227,7 @@ impl System {
                 }
             }
         }
+        matching.connect();
     }
 
     /// The vertices of an atom that a π bond can cover.
@@ -311,10 +288,5 @@ impl System {
     /// Open valences of the whole system.
     pub(crate) fn open_total(&self) -> u32 {
         self.pools[Pool::Open as usize]
-    }
-
-    /// Whether the drawing was a best placement from the start.
-    pub(crate) fn is_closed(&self) -> bool {
-        self.closed
     }
 }

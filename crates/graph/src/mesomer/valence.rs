@@ -1,6 +1,9 @@
 //! What valence leaves open at each atom: room for π bonds, charges and radicals.
 
-use crate::{Element, skeleton::Skeleton};
+use crate::{
+    Element,
+    skeleton::{Skeleton, SkeletonAtom},
+};
 
 /// The room at one atom. Atoms outside the model keep what is drawn and have no room.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
@@ -59,22 +62,36 @@ fn charged(element: Element, charge: i32) -> i32 {
     }
 }
 
+/// What is drawn at an atom.
+#[derive(Debug, Clone, Copy, Default)]
+pub(super) struct Drawn {
+    /// Open valences; `None` where the octet model does not cover the atom.
+    open: Option<u8>,
+    /// Hydrogens and the electron pairs of all bonds.
+    pairs: i32,
+    /// A bond of order 4, of which the model knows nothing.
+    quadruple: bool,
+    /// Hydrogens, one for each bond to a covered atom, and bonds to others in full.
+    sigma: i32,
+}
+
 /// Fills the table.
 ///
 /// An atom whose drawn π bonds do not fit the model drops out, and its bonds then count in full at
-/// its neighbours; so the table is made again until no further atom drops out.
-pub(crate) fn load(table: &mut Vec<Valence>, skeleton: &Skeleton) {
-    let mut open: Vec<Option<u8>> = (0..skeleton.len() as u32)
-        .map(|atom| open_valence(skeleton, atom))
-        .collect();
+/// its neighbours; so the table is made again until no further atom drops out. `drawn` is scratch.
+pub(super) fn load(table: &mut Vec<Valence>, drawn: &mut Vec<Drawn>, skeleton: &Skeleton) {
+    count_pairs(drawn, skeleton);
+    for (drawn, atom) in drawn.iter_mut().zip(&skeleton.atoms) {
+        drawn.open = open_valence(atom, drawn);
+    }
     loop {
+        count_sigma(drawn, skeleton);
         table.clear();
         let mut dropped = false;
-        for atom in 0..skeleton.len() as u32 {
-            let valence = open[atom as usize].and_then(|left| room(skeleton, &open, atom, left));
-            if valence.is_none() && open[atom as usize].is_some() {
-                open[atom as usize] = None;
-                dropped = true;
+        for (drawn, atom) in drawn.iter_mut().zip(&skeleton.atoms) {
+            let valence = drawn.open.and_then(|open| room(atom, drawn, open));
+            if valence.is_none() {
+                dropped |= drawn.open.take().is_some();
             }
             table.push(valence.unwrap_or_default());
         }
@@ -84,55 +101,65 @@ pub(crate) fn load(table: &mut Vec<Valence>, skeleton: &Skeleton) {
     }
 }
 
+fn count_pairs(drawn: &mut Vec<Drawn>, skeleton: &Skeleton) {
+    drawn.clear();
+    drawn.extend(skeleton.atoms.iter().map(|atom| Drawn {
+        pairs: atom.hydrogens.into(),
+        ..Drawn::default()
+    }));
+    for bond in &skeleton.bonds {
+        for atom in [bond.a, bond.b] {
+            let drawn = &mut drawn[atom as usize];
+            drawn.pairs += i32::from(bond.pairs());
+            drawn.quadruple |= bond.order == 4;
+        }
+    }
+}
+
+fn count_sigma(drawn: &mut [Drawn], skeleton: &Skeleton) {
+    for (drawn, atom) in drawn.iter_mut().zip(&skeleton.atoms) {
+        drawn.sigma = atom.hydrogens.into();
+    }
+    for bond in &skeleton.bonds {
+        let pairs = i32::from(bond.pairs());
+        for (atom, other) in [(bond.a, bond.b), (bond.b, bond.a)] {
+            let covered = drawn[other as usize].open.is_some();
+            drawn[atom as usize].sigma += if covered { pairs.min(1) } else { pairs };
+        }
+    }
+}
+
 /// Open valences of an atom as drawn, if the octet model covers it.
-fn open_valence(skeleton: &Skeleton, atom: u32) -> Option<u8> {
-    let record = &skeleton.atoms[atom as usize];
-    if record.element.is_metal() || record.element == Element::HYDROGEN {
+fn open_valence(atom: &SkeletonAtom, drawn: &Drawn) -> Option<u8> {
+    if atom.element.is_metal() || atom.element == Element::HYDROGEN || drawn.quadruple {
         return None;
     }
-    let mut drawn = i32::from(record.hydrogens);
-    for &(_, bond) in skeleton.arcs(atom) {
-        let order = skeleton.pairs(bond);
-        if order > 3 {
-            return None;
-        }
-        drawn += i32::from(order);
-    }
-    u8::try_from(charged(record.element, i32::from(record.charge)) - drawn).ok()
+    u8::try_from(charged(atom.element, atom.charge.into()) - drawn.pairs).ok()
 }
 
 /// The room at an atom; `None` if what is drawn does not fit in it.
-fn room(skeleton: &Skeleton, covered: &[Option<u8>], atom: u32, open: u8) -> Option<Valence> {
-    let record = &skeleton.atoms[atom as usize];
-    let mut sigma = i32::from(record.hydrogens);
-    let mut pi_drawn = 0;
-    for &(to, bond) in skeleton.arcs(atom) {
-        let order = i32::from(skeleton.pairs(bond));
-        if order > 0 && covered[to as usize].is_some() {
-            sigma += 1;
-            pi_drawn += order - 1;
-        } else {
-            sigma += order;
-        }
-    }
-    let left = neutral(record.element) - sigma;
+fn room(atom: &SkeletonAtom, drawn: &Drawn, open: u8) -> Option<Valence> {
+    let sigma = drawn.sigma;
+    let pi_drawn = drawn.pairs - sigma;
+    let left = neutral(atom.element) - sigma;
     let pi = left.clamp(0, 2);
-    let hetero = is_group_15_to_17(record.element);
+    let hetero = is_group_15_to_17(atom.element);
+    let boron = atom.element == Element::BORON;
     // Four pairs are an octet. Centres below the second row may take a π bond beyond the charge that
     // their σ bonds enforce (sulfur trioxide).
     let octet_room = (4 - sigma).clamp(0, 2) > pi;
-    let onium = hetero && octet_room && (left >= 0 || (left == -1 && record.element.period() >= 3));
-    let outside = pi_drawn > pi + i32::from(onium) + i32::from(record.element == Element::BORON)
-        || (record.element == Element::BORON && (record.charge > 0 || sigma > 3));
+    let onium = hetero && octet_room && (left >= 0 || (left == -1 && atom.element.period() >= 3));
+    let outside = pi_drawn > pi + i32::from(onium) + i32::from(boron)
+        || (boron && (atom.charge > 0 || sigma > 3));
     (!outside).then_some(Valence {
         pi: pi as u8,
         spare: (left - pi).max(0) as u8,
         onium,
         intrinsic: if hetero { (-left).clamp(0, 4) as i8 } else { 0 },
         open,
-        can_be_negative: record.element != Element::BORON,
+        can_be_negative: !boron,
         can_be_positive: !hetero,
-        acceptor: record.element == Element::BORON,
+        acceptor: boron,
         hetero,
     })
 }

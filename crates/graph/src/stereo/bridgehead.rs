@@ -28,33 +28,55 @@ pub(crate) struct Cage {
 }
 
 /// A path between two possible bridgeheads.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Copy)]
 struct Path {
     end: u32,
-    inner: Vec<u32>,
+    length: usize,
+    atoms: [u32; LONGEST_PATH],
+}
+
+impl Path {
+    /// The atoms between the bridgeheads.
+    fn inner(&self) -> &[u32] {
+        &self.atoms[..self.length]
+    }
+}
+
+/// Scratch that is reused from one molecule to the next.
+#[derive(Debug, Default)]
+pub(super) struct Scratch {
+    heads: Vec<u32>,
+    paths: Vec<Path>,
+    /// Atoms of the path that is being followed, each with the place of the arc to look at next.
+    trail: Vec<(u32, usize)>,
 }
 
 /// All pairs, among atoms that can be centres.
-pub(super) fn thetas(skeleton: &Skeleton, can_be: &[bool]) -> Vec<Theta> {
-    let branching = |atom: u32| {
-        can_be[atom as usize]
-            && skeleton
-                .arcs(atom)
-                .iter()
-                .filter(|&&(_, b)| skeleton.ring[b as usize])
-                .count()
-                >= 3
-    };
-    let heads: Vec<u32> = (0..skeleton.len() as u32)
-        .filter(|&atom| branching(atom))
-        .collect();
+pub(super) fn thetas(
+    skeleton: &Skeleton,
+    can_be: impl Fn(u32) -> bool,
+    scratch: &mut Scratch,
+) -> Vec<Theta> {
+    let Scratch {
+        heads,
+        paths,
+        trail,
+    } = scratch;
+    let in_ring = |&&(_, bond): &&(u32, u32)| skeleton.ring[bond as usize];
+    let branching =
+        |&atom: &u32| can_be(atom) && skeleton.arcs(atom).iter().filter(in_ring).count() >= 3;
+    heads.clear();
+    heads.extend((0..skeleton.len() as u32).filter(branching));
     let mut found = Vec::new();
     if heads.len() < 2 {
         return found;
     }
-    for &head in &heads {
-        let mut paths = paths_from(skeleton, head, |atom| atom > head && branching(atom));
-        paths.sort_by_key(|path| (path.end, path.inner.len()));
+    for (at, &head) in heads.iter().enumerate() {
+        find_paths(skeleton, head, &heads[at + 1..], trail, paths);
+        if paths.len() < 3 {
+            continue;
+        }
+        paths.sort_by_key(|path| (path.end, path.length));
         for group in paths.chunk_by(|a, b| a.end == b.end) {
             disjoint_triples(head, group, &mut found);
         }
@@ -62,41 +84,49 @@ pub(super) fn thetas(skeleton: &Skeleton, can_be: &[bool]) -> Vec<Theta> {
     found
 }
 
-/// Simple paths over ring bonds with one to [`LONGEST_PATH`] inner atoms, to atoms that `ends`
-/// accepts. Depth-first without recursion; the depth is bounded.
-fn paths_from(skeleton: &Skeleton, head: u32, ends: impl Fn(u32) -> bool) -> Vec<Path> {
-    let mut found = Vec::new();
-    let mut trail = vec![head];
-    let mut next = vec![0usize];
-    while let (Some(&atom), Some(at)) = (trail.last(), next.last_mut()) {
-        let Some(&(to, bond)) = skeleton.arcs(atom).get(*at) else {
+/// Simple paths over ring bonds with one to [`LONGEST_PATH`] inner atoms, to atoms among `ends`,
+/// which are ascending. Depth-first without recursion; the depth is bounded.
+fn find_paths(
+    skeleton: &Skeleton,
+    head: u32,
+    ends: &[u32],
+    trail: &mut Vec<(u32, usize)>,
+    paths: &mut Vec<Path>,
+) {
+    paths.clear();
+    trail.clear();
+    trail.push((head, 0));
+    while let Some((atom, at)) = trail.last_mut() {
+        let Some(&(to, bond)) = skeleton.arcs(*atom).get(*at) else {
             trail.pop();
-            next.pop();
             continue;
         };
         *at += 1;
-        if !skeleton.ring[bond as usize] || trail.contains(&to) {
+        if !skeleton.ring[bond as usize] || trail.iter().any(|&(atom, _)| atom == to) {
             continue;
         }
-        if trail.len() > 1 && ends(to) {
-            found.push(Path {
+        if trail.len() > 1 && ends.binary_search(&to).is_ok() {
+            let mut atoms = [0; LONGEST_PATH];
+            for (place, &(atom, _)) in atoms.iter_mut().zip(&trail[1..]) {
+                *place = atom;
+            }
+            paths.push(Path {
                 end: to,
-                inner: trail[1..].to_vec(),
+                length: trail.len() - 1,
+                atoms,
             });
         }
         // Cages of main-group atoms have no more than four bonds at an atom; a metal cluster is no
         // such cage, and its paths would multiply.
         if trail.len() <= LONGEST_PATH && skeleton.degree(to) <= 4 {
-            trail.push(to);
-            next.push(0);
+            trail.push((to, 0));
         }
     }
-    found
 }
 
 /// Triples of disjoint paths, shortest first, with rings small enough.
 fn disjoint_triples(head: u32, paths: &[Path], found: &mut Vec<Theta>) {
-    let disjoint = |a: &Path, b: &Path| a.inner.iter().all(|atom| !b.inner.contains(atom));
+    let disjoint = |a: &Path, b: &Path| a.inner().iter().all(|atom| !b.inner().contains(atom));
     for (i, a) in paths.iter().enumerate() {
         for (j, b) in paths.iter().enumerate().skip(i + 1) {
             if !disjoint(a, b) {
@@ -104,9 +134,9 @@ fn disjoint_triples(head: u32, paths: &[Path], found: &mut Vec<Theta>) {
             }
             for c in &paths[j + 1..] {
                 // Paths come by length, so the two smallest rings are a with b and a with c.
-                let ring = a.inner.len() + c.inner.len() + 2;
+                let ring = a.length + c.length + 2;
                 if ring <= LARGEST_FORCED_RING && disjoint(a, c) && disjoint(b, c) {
-                    let ends = |p: &Path| [p.inner[0], p.inner[p.inner.len() - 1]];
+                    let ends = |p: &Path| [p.atoms[0], p.atoms[p.length - 1]];
                     let paths = [ends(a), ends(b), ends(c)];
                     found.push(Theta {
                         ends: [head, a.end],

@@ -12,17 +12,20 @@ use super::{Candidate, Perception, labile, marks::Mark, slot, tetrahedral::hydro
 const SMALLEST_FREE_RING: u32 = 8;
 
 /// Adds the candidates. Mobile bonds, and single bonds as hindered axes, are candidates only in a
-/// record that marks one; the absence of a mark on them leaves nothing open.
+/// record that marks one; the absence of a mark on them leaves nothing open. `seen` is scratch.
 pub(super) fn find(
     perception: &mut Perception,
     skeleton: &Skeleton,
     mesomer: &Mesomer,
     marks: &[Mark],
+    seen: &mut Vec<u32>,
 ) {
     let marked = |shape: Shape, order: u8| {
         marks.iter().any(|mark| {
-            let bond = skeleton.bond_between(mark.centres[0], mark.centres[1]);
-            mark.shape == shape && bond.is_some_and(|bond| mesomer.orders[bond as usize] == order)
+            mark.shape == shape
+                && skeleton
+                    .bond_between(mark.centres[0], mark.centres[1])
+                    .is_some_and(|bond| mesomer.orders[bond as usize] == order)
         })
     };
     let marked_mobile = marked(Shape::DoubleBond, MOBILE);
@@ -45,7 +48,7 @@ pub(super) fn find(
             },
             _ => continue,
         };
-        if let Some(candidate) = candidate(skeleton, mesomer, index as u32, &chain) {
+        if let Some(candidate) = candidate(skeleton, mesomer, index as u32, &chain, seen) {
             perception.candidates.push(candidate);
         }
     }
@@ -111,16 +114,17 @@ fn candidate(
     mesomer: &Mesomer,
     bond: u32,
     chain: &Chain,
+    seen: &mut Vec<u32>,
 ) -> Option<Candidate> {
     let [a, b] = chain.ends;
     if a == b || (chain.bonds == 1 && labile::is_labile_imine(skeleton, mesomer, a, b)) {
         return None;
     }
-    if in_small_ring(skeleton, bond) {
-        return None;
-    }
     let [first, second] = end_ligands(skeleton, mesomer, a, chain.inner[0])?;
     let [third, fourth] = end_ligands(skeleton, mesomer, b, chain.inner[1])?;
+    if in_small_ring(skeleton, bond, seen) {
+        return None;
+    }
     Some(Candidate {
         shape: if chain.bonds % 2 == 1 {
             Shape::DoubleBond
@@ -135,12 +139,12 @@ fn candidate(
 }
 
 /// Whether a bond lies in a ring too small for a free choice of geometry.
-pub(super) fn in_small_ring(skeleton: &Skeleton, bond: u32) -> bool {
+pub(super) fn in_small_ring(skeleton: &Skeleton, bond: u32, seen: &mut Vec<u32>) -> bool {
     let ends = &skeleton.bonds[bond as usize];
     skeleton.ring[bond as usize]
         && skeleton
             .adjacency
-            .smallest_ring(ends.a, ends.b, SMALLEST_FREE_RING - 1)
+            .smallest_ring([ends.a, ends.b], SMALLEST_FREE_RING - 1, seen)
             .is_some()
 }
 

@@ -18,21 +18,15 @@ pub(super) struct Mark {
 }
 
 /// Translates marks: folded hydrogens become ligands that are no atoms.
-pub(super) fn on_skeleton(skeleton: &Skeleton, drawn: &[DrawnStereo]) -> Vec<Mark> {
+pub(super) fn on_skeleton(marks: &mut Vec<Mark>, skeleton: &Skeleton, drawn: &[DrawnStereo]) {
     let home = |atom: u32| skeleton.home.get(atom as usize).copied().unwrap_or(NO_ATOM);
-    drawn
-        .iter()
-        .map(|mark| {
-            let centres = mark.centres.map(home);
-            let ligands = mark.ligands.map(|ligand| slot_of(skeleton, ligand));
-            Mark {
-                shape: mark.shape,
-                centres,
-                ligands,
-                parity: mark.parity,
-            }
-        })
-        .collect()
+    marks.clear();
+    marks.extend(drawn.iter().map(|mark| Mark {
+        shape: mark.shape,
+        centres: mark.centres.map(home),
+        ligands: mark.ligands.map(|ligand| slot_of(skeleton, ligand)),
+        parity: mark.parity,
+    }));
 }
 
 /// A ligand as the skeleton knows it.
@@ -47,17 +41,19 @@ pub(super) fn slot_of(skeleton: &Skeleton, ligand: Ligand) -> u32 {
     }
 }
 
-/// Sets the parity of candidates from marks and records the marks that fall away.
+/// Sets the parity of candidates from marks and records the marks that fall away. `seen` is
+/// scratch.
 pub(super) fn apply(
     perception: &mut Perception,
     skeleton: &Skeleton,
     mesomer: &Mesomer,
     marks: &[Mark],
+    seen: &mut Vec<u32>,
 ) {
     for mark in marks {
         let Some(parity) = mark.parity else { continue };
         let Some(index) = perception.candidate_at(mark.centres) else {
-            let reason = reason(skeleton, mesomer, mark);
+            let reason = reason(skeleton, mesomer, mark, seen);
             perception.dropped.push((reason, mark.centres));
             continue;
         };
@@ -126,7 +122,7 @@ fn end_parity(ligands: &[u32; 4], named: &[u32; 4]) -> Option<bool> {
     Some(odd)
 }
 
-fn reason(skeleton: &Skeleton, mesomer: &Mesomer, mark: &Mark) -> Dropped {
+fn reason(skeleton: &Skeleton, mesomer: &Mesomer, mark: &Mark, seen: &mut Vec<u32>) -> Dropped {
     let [a, b] = mark.centres;
     if mark.shape == Shape::Tetrahedral {
         let record = &skeleton.atoms[a as usize];
@@ -147,7 +143,7 @@ fn reason(skeleton: &Skeleton, mesomer: &Mesomer, mark: &Mark) -> Dropped {
         return Dropped::LabileDoubleBond;
     }
     match skeleton.bond_between(a, b) {
-        Some(bond) if double_bond::in_small_ring(skeleton, bond) => Dropped::SmallRing,
+        Some(bond) if double_bond::in_small_ring(skeleton, bond, seen) => Dropped::SmallRing,
         Some(bond) if mesomer.orders[bond as usize] == MOBILE => Dropped::LabileDoubleBond,
         _ => Dropped::NotStereogenic,
     }

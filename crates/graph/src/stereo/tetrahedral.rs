@@ -11,7 +11,8 @@ use super::{
 };
 
 /// What an atom is as a possible centre.
-enum Eligible {
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(super) enum Eligible {
     /// Configurationally stable.
     Stable,
     /// Nitrogen that is stable only where its ligands are held back: a bridgehead.
@@ -23,29 +24,27 @@ enum Eligible {
 }
 
 /// Adds the tetrahedral candidates; returns the bridgehead relations found on the way.
+/// `eligibles` and `bridgeheads` are scratch.
 pub(super) fn find(
     perception: &mut Perception,
     skeleton: &Skeleton,
     mesomer: &Mesomer,
     marks: &[Mark],
+    eligibles: &mut Vec<Option<Eligible>>,
+    bridgeheads: &mut bridgehead::Scratch,
 ) -> Vec<Theta> {
+    let atoms = 0..skeleton.len() as u32;
+    eligibles.clear();
+    eligibles.extend(atoms.clone().map(|atom| eligible(skeleton, mesomer, atom)));
+    let is = |atom: u32, kind: Eligible| eligibles.get(atom as usize) == Some(&Some(kind));
     let unruled_marks = marks.iter().any(|mark| {
         mark.shape == Shape::Tetrahedral
             && mark.parity.is_some()
-            && matches!(
-                eligible(skeleton, mesomer, mark.centres[0]),
-                Some(Eligible::Unruled)
-            )
+            && is(mark.centres[0], Eligible::Unruled)
     });
-    let eligibles: Vec<Option<Eligible>> = (0..skeleton.len() as u32)
-        .map(|atom| eligible(skeleton, mesomer, atom))
-        .collect();
-    let can_be: Vec<bool> = eligibles
-        .iter()
-        .map(|e| matches!(e, Some(Eligible::Stable | Eligible::HeldNitrogen)))
-        .collect();
-    let thetas = bridgehead::thetas(skeleton, &can_be);
-    for atom in 0..skeleton.len() as u32 {
+    let can_be = |atom| is(atom, Eligible::Stable) || is(atom, Eligible::HeldNitrogen);
+    let thetas = bridgehead::thetas(skeleton, can_be, bridgeheads);
+    for atom in atoms {
         let quiet = match eligibles[atom as usize] {
             Some(Eligible::Stable) => false,
             Some(Eligible::HeldNitrogen) if thetas.iter().any(|t| t.ends.contains(&atom)) => false,
@@ -140,8 +139,10 @@ fn is_ruled(element: Element) -> bool {
 }
 
 fn in_three_ring(skeleton: &Skeleton, atom: u32) -> bool {
-    skeleton.arcs(atom).iter().any(|&(to, bond)| {
-        skeleton.ring[bond as usize] && skeleton.adjacency.smallest_ring(atom, to, 3).is_some()
+    let arcs = skeleton.arcs(atom);
+    arcs.iter().enumerate().any(|(at, &(a, _))| {
+        let mut others = arcs[..at].iter();
+        others.any(|&(b, _)| skeleton.bond_between(a, b).is_some())
     })
 }
 

@@ -16,11 +16,14 @@ pub(super) struct Emitter<'a> {
     pub(super) shown: &'a [u8],
     pub(super) tags: &'a Tags,
     pub(super) slopes: &'a mut Slopes,
-    pub(super) text: String,
+    /// Scratch.
+    pub(super) steps: &'a mut Vec<Step>,
+    pub(super) text: &'a mut String,
 }
 
 /// What remains to be written.
-enum Step {
+#[derive(Debug)]
+pub(super) enum Step {
     Atom(u32),
     /// A bond and the atom that it leads to.
     Bond(Arc),
@@ -29,37 +32,36 @@ enum Step {
 }
 
 impl Emitter<'_> {
-    pub(super) fn emit(mut self) -> String {
+    pub(super) fn emit(&mut self) {
         let layout = self.layout;
-        let mut stack = Vec::with_capacity(self.structure.len());
+        self.steps.clear();
         for (at, &root) in layout.roots().iter().enumerate() {
             if at > 0 {
                 self.text.push('.');
             }
-            stack.push(Step::Atom(root));
-            while let Some(step) = stack.pop() {
+            self.steps.push(Step::Atom(root));
+            while let Some(step) = self.steps.pop() {
                 match step {
                     Step::Open => self.text.push('('),
                     Step::Close => self.text.push(')'),
                     Step::Bond(arc) => {
                         self.bond(arc);
-                        self.atom(arc.to, &mut stack);
+                        self.atom(arc.to);
                     }
-                    Step::Atom(atom) => self.atom(atom, &mut stack),
+                    Step::Atom(atom) => self.atom(atom),
                 }
             }
         }
-        self.text
     }
 
     /// Writes an atom with its labels and hydrogens, and leaves its branches to be written.
-    fn atom(&mut self, atom: u32, stack: &mut Vec<Step>) {
+    fn atom(&mut self, atom: u32) {
         let form = self.structure.atom(atom);
         let shown = self.shown[atom as usize];
         let counted = form.hydrogens.saturating_sub(shown);
         let orders = self.structure.arcs(atom).iter();
         let order_sum = orders.map(|arc| u32::from(arc.order)).sum::<u32>() + u32::from(shown);
-        atom::write(&mut self.text, form, counted, order_sum, self.tags.of(atom));
+        atom::write(self.text, form, counted, order_sum, self.tags.of(atom));
         let layout = self.layout;
         for end in layout.rings(atom) {
             self.ring_end(end);
@@ -70,9 +72,10 @@ impl Emitter<'_> {
             self.hydrogen(atom, at == 0, !ends_chain);
         }
         if let Some((&chain, branches)) = children.split_last() {
-            stack.push(Step::Bond(chain));
+            self.steps.push(Step::Bond(chain));
             for &branch in branches.iter().rev() {
-                stack.extend([Step::Close, Step::Bond(branch), Step::Open]);
+                self.steps
+                    .extend([Step::Close, Step::Bond(branch), Step::Open]);
             }
         }
     }
@@ -87,7 +90,7 @@ impl Emitter<'_> {
             10..=LAST_LABEL => self.text.push('%'),
             _ => self.text.push_str("%("),
         }
-        atom::push_number(&mut self.text, end.label);
+        atom::push_number(self.text, end.label);
         if end.label > LAST_LABEL {
             self.text.push(')');
         }

@@ -49,15 +49,13 @@ impl ArcTable {
     fn load(&mut self, form: &CanonicalForm) {
         let Self { starts, arcs } = self;
         let count = form.atoms.len() as u32;
-        let bonds = || {
-            (0u32..)
-                .zip(&form.bonds)
-                .filter(|&(_, &(a, b, _))| a < b && b < count)
-                .filter_map(|(bond, &(a, b, order))| Some((bond, a, b, written_order(order)?)))
-        };
+        let bonds = form.bonds.iter().enumerate();
+        let written = bonds
+            .filter(|&(_, &(a, b, _))| a < b && b < count)
+            .filter_map(|(bond, &(a, b, order))| Some((bond as u32, a, b, written_order(order)?)));
         starts.clear();
         starts.resize(form.atoms.len() + 1, 0);
-        for (_, a, b, _) in bonds() {
+        for (_, a, b, _) in written.clone() {
             starts[a as usize] += 1;
             starts[b as usize] += 1;
         }
@@ -68,7 +66,8 @@ impl ArcTable {
         }
         arcs.clear();
         arcs.resize(sum as usize, Arc::default());
-        for (bond, a, b, order) in bonds() {
+        // Bonds come sorted, so the arcs of each atom now are by the other atom.
+        for (bond, a, b, order) in written.rev() {
             for (from, to) in [(a, b), (b, a)] {
                 let start = &mut starts[from as usize];
                 *start -= 1;
@@ -77,8 +76,11 @@ impl ArcTable {
         }
         // Multiple bonds first: the tree then follows them, and rings close at single bonds.
         for ends in starts.windows(2) {
-            arcs[ends[0] as usize..ends[1] as usize]
-                .sort_unstable_by_key(|arc| (Reverse(arc.order), arc.to, arc.bond));
+            let own = &mut arcs[ends[0] as usize..ends[1] as usize];
+            let key = |arc: &Arc| (Reverse(arc.order), arc.to, arc.bond);
+            if !own.is_sorted_by_key(key) {
+                own.sort_unstable_by_key(key);
+            }
         }
     }
 }

@@ -15,27 +15,30 @@ use crate::smiles::{
 };
 
 /// The tag of each atom.
-#[derive(Debug)]
+#[derive(Debug, Default)]
 pub(super) struct Tags {
     tags: Vec<Option<StereoTag>>,
 }
 
 impl Tags {
     /// Finds the tags. `shown` counts the hydrogens of each atom that the text has as atoms.
-    pub(super) fn new(
+    pub(super) fn load(
+        &mut self,
         structure: &Structure,
         layout: &Layout,
         rows: &[Row],
         shown: &[u8],
         lost: &mut Vec<Lost>,
-    ) -> Self {
+    ) {
         let context = Context {
             structure,
             layout,
             shown,
             rows: RowIndex::new(rows),
         };
-        let mut tags = vec![None; structure.len()];
+        let tags = &mut self.tags;
+        tags.clear();
+        tags.resize(structure.len(), None);
         for element in &structure.form.stereo {
             let tag = match element.shape {
                 Shape::Tetrahedral => context.tetrahedral(element),
@@ -64,7 +67,6 @@ impl Tags {
                 }),
             }
         }
-        Self { tags }
     }
 
     /// The tag of an atom.
@@ -86,7 +88,7 @@ impl Context<'_> {
     fn tetrahedral(&self, element: &FormStereo) -> Option<(u32, bool)> {
         let atom = element.centres[0];
         let lone_pairs = count(&element.ligands, Ligand::LonePair);
-        let written = self.ligands(atom, lone_pairs)?;
+        let written = listed(self.ligands(atom, lone_pairs)?)?;
         Some((atom, is_odd(&element.ligands, &written)?))
     }
 
@@ -108,22 +110,21 @@ impl Context<'_> {
     }
 
     fn is_end_odd(&self, atom: u32, inner: u32, ligands: [Ligand; 2]) -> Option<bool> {
-        let mut written = self.ligands(atom, count(&ligands, Ligand::LonePair))?;
-        written.retain(|&ligand| ligand != Ligand::Atom(inner));
-        is_odd(&ligands, &written)
+        let written = self.ligands(atom, count(&ligands, Ligand::LonePair))?;
+        let own = written.filter(|&ligand| ligand != Ligand::Atom(inner));
+        is_odd(&ligands, &listed(own)?)
     }
 
     /// The tag that puts the ligands, in text order, where the mark has them. Ligands that are alike
     /// may stand for each other. More than one empty site is not read back.
     fn coordination(&self, mark: &DrawnCoordination) -> Option<StereoTag> {
         let lone_pairs = count(&mark.ligands, Ligand::LonePair);
-        let written = self.ligands(mark.centre, lone_pairs)?;
         let positions = mark.polyhedron.positions();
-        if lone_pairs > 1 || written.len() != positions || mark.ligands.len() != positions {
+        let mut free: Vec<_> = self.ligands(mark.centre, lone_pairs)?.map(Some).collect();
+        if lone_pairs > 1 || free.len() != positions || mark.ligands.len() != positions {
             return None;
         }
         let mut placement = [0; 6];
-        let mut free = written.iter().copied().map(Some).collect::<Vec<_>>();
         for (ligand, place) in mark.ligands.iter().zip(&mut placement) {
             let at = free.iter().position(|other| *other == Some(*ligand))?;
             free[at] = None;
@@ -137,7 +138,7 @@ impl Context<'_> {
 
     /// The ligands of an atom in the order of the text: the atom before it; its hydrogen or lone
     /// pair that is no atom; ring labels; branches; the chain.
-    fn ligands(&self, atom: u32, lone_pairs: usize) -> Option<Vec<Ligand>> {
+    fn ligands(&self, atom: u32, lone_pairs: usize) -> Option<impl Iterator<Item = Ligand>> {
         let hydrogens = self.structure.form.atoms.get(atom as usize)?.hydrogens;
         let shown = self.shown[atom as usize];
         let repeat = |ligand, count: u8| std::iter::repeat_n(ligand, usize::from(count));
@@ -150,10 +151,9 @@ impl Context<'_> {
                 .into_iter()
                 .chain(repeat(Ligand::Hydrogen, hydrogens.saturating_sub(shown)))
                 .chain(std::iter::repeat_n(Ligand::LonePair, lone_pairs))
-                .chain(rings.map(|end| bonded(end.arc.to)))
+                .chain(rings.map(move |end| bonded(end.arc.to)))
                 .chain(repeat(Ligand::Hydrogen, shown))
-                .chain(children.map(|arc| bonded(arc.to)))
-                .collect(),
+                .chain(children.map(move |arc| bonded(arc.to))),
         )
     }
 }
@@ -162,11 +162,17 @@ fn count(ligands: &[Ligand], wanted: Ligand) -> usize {
     ligands.iter().filter(|&&ligand| ligand == wanted).count()
 }
 
-/// Whether `written` is an odd permutation of `ligands`; `None` if it is no permutation of them.
-fn is_odd(ligands: &[Ligand], written: &[Ligand]) -> Option<bool> {
-    if ligands.len() != written.len() {
-        return None;
+/// Exactly `N` ligands in an array; `None` where there are more or fewer.
+fn listed<const N: usize>(mut ligands: impl Iterator<Item = Ligand>) -> Option<[Ligand; N]> {
+    let mut list = [Ligand::LonePair; N];
+    for place in &mut list {
+        *place = ligands.next()?;
     }
+    ligands.next().is_none().then_some(list)
+}
+
+/// Whether `written` is an odd permutation of `ligands`; `None` if it is no permutation of them.
+fn is_odd<const N: usize>(ligands: &[Ligand; N], written: &[Ligand; N]) -> Option<bool> {
     let mut odd = false;
     for (at, ligand) in ligands.iter().enumerate() {
         let place = written.iter().position(|other| other == ligand)?;

@@ -120,8 +120,10 @@ impl Tree {
             }
         }
         for ends in starts.windows(2) {
-            children[ends[0] as usize..ends[1] as usize]
-                .sort_unstable_by_key(|arc| (size[arc.to as usize], arc.to));
+            let own = &mut children[ends[0] as usize..ends[1] as usize];
+            if own.len() > 1 {
+                own.sort_unstable_by_key(|arc| (size[arc.to as usize], arc.to));
+            }
         }
     }
 }
