@@ -20,6 +20,7 @@ const LIMITS: Limits = Limits {
     order_steps: 20_000,
     open_elements: 4,
     map_steps: 100,
+    label_steps: 2_000,
     stop: None,
 };
 
