@@ -157,8 +157,8 @@ fn hydrogens(record: &SkeletonAtom) -> [u8; 4] {
 }
 
 /// P-92.1.4.4: where the double bonds of an atom are in several places, its duplicate has the mean of
-/// the atomic numbers that it would have in each. A place where the atom has a charge instead of the
-/// double bond counts as zero.
+/// the atomic numbers that it would have in each. That the atom bears a charge instead of the double
+/// bond counts as a place with nothing.
 fn averaged(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Averaged> {
     let arcs = skeleton.arcs(atom).iter();
     let mobile = arcs.filter(|&&(_, bond)| mesomer.orders[bond as usize] == MOBILE);
@@ -173,13 +173,12 @@ fn averaged(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Average
     if places == 0 {
         return None;
     }
-    let charged = mesomer.states[atom as usize].mobile;
-    let count = if charged {
+    let count = if mesomer.states[atom as usize].mobile {
         most_pi_bonds(skeleton, mesomer, atom)
     } else {
         drawn
     };
-    let places = places + u32::from(charged);
+    let places = places + u32::from(bears_charge(skeleton, mesomer, atom));
     Some(Averaged {
         count,
         substance: Substance {
@@ -187,6 +186,45 @@ fn averaged(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Average
             mass: mass / u64::from(places),
         },
     })
+}
+
+/// Whether a mobile charge stays at an atom. Of the atoms that it reaches over mobile bonds, a negative
+/// one prefers the most electronegative, a positive one the least.
+fn bears_charge(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> bool {
+    if !mesomer.states[atom as usize].mobile {
+        return false;
+    }
+    let negative = mesomer.states[atom as usize].system.0 < 0;
+    let preference = |atom: u32| {
+        let order = electronegativity(skeleton.atoms[atom as usize].element);
+        if negative { order } else { -order }
+    };
+    let mut seen = vec![atom];
+    let mut at = 0;
+    while let Some(&here) = seen.get(at) {
+        at += 1;
+        for &(to, bond) in skeleton.arcs(here) {
+            if mesomer.orders[bond as usize] == MOBILE && !seen.contains(&to) {
+                seen.push(to);
+            }
+        }
+    }
+    let mut bearers = seen.iter().filter(|&&other| mesomer.states[other as usize].mobile);
+    bearers.all(|&other| preference(other) <= preference(atom))
+}
+
+/// The order of electronegativity on Pauling's scale among the elements that bear mobile charges.
+fn electronegativity(element: Element) -> i8 {
+    match element {
+        Element::FLUORINE => 7,
+        Element::OXYGEN => 6,
+        Element::CHLORINE => 5,
+        Element::NITROGEN => 4,
+        Element::BROMINE => 3,
+        Element::SULFUR => 2,
+        Element::CARBON => 1,
+        _ => 0,
+    }
 }
 
 /// The most π bonds over mobile bonds that an atom of mobile charge has in any placement.

@@ -14,7 +14,8 @@ type Reference = bool;
 /// In each ligand the descriptor of the highest-ranked node, or set of nodes of equal rank, in the
 /// nearest sphere that has any is the reference; where a set has as many of both, each is tried. All
 /// descriptors of the ligand are paired with it. Ligands are compared by the sequences of pairs, best
-/// first.
+/// first. Branches inside a ligand are not ranked by pairs of their own: with what they would be paired
+/// depends on the ligand.
 pub(super) fn rank(
     ranking: &mut Ranking,
     digraph: &Digraph<'_>,
@@ -24,26 +25,17 @@ pub(super) fn rank(
         return Ok(());
     }
     let mut keys = vec![Vec::new(); ranking.ligand_count()];
-    let mut settled = vec![None; ranking.ligand_count()];
     for class in ranking.tied_ligands() {
         for ligand in class {
-            let references = references(ranking, digraph, ligand);
-            for &reference in &references {
+            for reference in references(ranking, digraph, ligand) {
                 let pairs = sequence(ranking, digraph, ligand, reference, budget)?;
                 keys[ligand as usize].push(pairs);
             }
             keys[ligand as usize].sort_by(|a, b| b.cmp(a));
-            if let [reference] = references[..] {
-                settled[ligand as usize] = Some(reference);
-            }
         }
     }
     ranking.split_ligands(&keys);
-    // Branches inside a ligand are ranked by the same pairs for the rules to come.
-    ranking.refine(digraph, budget, |entry, node| {
-        let reference = settled[entry.ligand as usize];
-        reference.map_or(0, |reference| pair(node.handedness(), reference))
-    })
+    Ok(())
 }
 
 fn pair(handedness: Option<bool>, reference: Reference) -> u64 {
@@ -75,7 +67,7 @@ fn sequence(
     budget: &mut Budget,
 ) -> Result<Vec<u64>, Exhausted> {
     let mut own = ranking.clone();
-    own.refine(digraph, budget, |entry, node| {
+    own.refine_throughout(digraph, budget, |entry, node| {
         if entry.ligand == ligand { pair(node.handedness(), reference) } else { 0 }
     })?;
     let levels = own.levels(ligand);

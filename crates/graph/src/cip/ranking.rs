@@ -135,11 +135,33 @@ impl Ranking {
             if !self.is_tied() {
                 break;
             }
-            budget.spend(self.sphere(sphere).len())?;
-            let by_value = |entry: &Entry, node: &Node| (entry.rank, value(entry, node));
-            if self.sort_sphere(sphere, digraph, by_value) {
-                self.carry_inward(sphere);
-            }
+            self.refine_sphere(sphere, digraph, budget, &value)?;
+        }
+        Ok(())
+    }
+
+    /// As [`Ranking::refine`], and does not stop where the ligands are told apart.
+    pub(super) fn refine_throughout(
+        &mut self,
+        digraph: &Digraph<'_>,
+        budget: &mut Budget,
+        value: impl Fn(&Entry, &Node) -> u64,
+    ) -> Result<(), Exhausted> {
+        (0..self.spheres.len())
+            .try_for_each(|sphere| self.refine_sphere(sphere, digraph, budget, &value))
+    }
+
+    fn refine_sphere(
+        &mut self,
+        sphere: usize,
+        digraph: &Digraph<'_>,
+        budget: &mut Budget,
+        value: impl Fn(&Entry, &Node) -> u64,
+    ) -> Result<(), Exhausted> {
+        budget.spend(self.sphere(sphere).len())?;
+        let by_value = |entry: &Entry, node: &Node| (entry.rank, value(entry, node));
+        if self.sort_sphere(sphere, digraph, by_value) {
+            self.carry_inward(sphere);
         }
         Ok(())
     }
