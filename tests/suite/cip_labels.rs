@@ -42,7 +42,9 @@ fn from_smiles() -> Option<Vec<Case>> {
 
 fn from_sdf(name: &str) -> Option<Vec<Case>> {
     let text = read_text(&shared("cip")?.join(name));
-    let records = text.split("$$$$").filter(|record| record.contains("M  END"));
+    let records = text
+        .split("$$$$")
+        .filter(|record| record.contains("M  END"));
     let case = |record: &str| {
         let record = record.trim_start_matches(['\r', '\n']);
         let item = |name: &str| {

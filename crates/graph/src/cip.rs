@@ -76,7 +76,10 @@ impl Label {
 
     /// Whether it is a centre or axis that reflection leaves alone.
     fn is_pseudoasymmetric(self) -> bool {
-        matches!(self, Self::PseudoR | Self::PseudoS | Self::PseudoM | Self::PseudoP)
+        matches!(
+            self,
+            Self::PseudoR | Self::PseudoS | Self::PseudoM | Self::PseudoP
+        )
     }
 
     /// Of labels that reflection changes, whether it is R or one that goes with R.

@@ -209,7 +209,9 @@ fn bears_charge(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> bool {
             }
         }
     }
-    let mut bearers = seen.iter().filter(|&&other| mesomer.states[other as usize].mobile);
+    let mut bearers = seen
+        .iter()
+        .filter(|&&other| mesomer.states[other as usize].mobile);
     bearers.all(|&other| preference(other) <= preference(atom))
 }
 

@@ -3,8 +3,7 @@
 use crate::Shape;
 
 use super::{
-    Label,
-    auxiliary,
+    Label, auxiliary,
     budget::{Budget, Exhausted},
     digraph::{Digraph, NONE},
     ranking::Ranking,
@@ -36,7 +35,12 @@ pub(super) fn label(
 ) -> Result<Option<Label>, Exhausted> {
     let mut ends = Vec::with_capacity(digraphs.len());
     for (index, digraph) in digraphs.iter_mut().enumerate() {
-        ends.push(End::new(digraph, Digraph::ROOT, unit.ligands_at(index), budget)?);
+        ends.push(End::new(
+            digraph,
+            Digraph::ROOT,
+            unit.ligands_at(index),
+            budget,
+        )?);
     }
     if units.len() > 1 {
         for (digraph, end) in digraphs.iter_mut().zip(&ends) {
@@ -116,16 +120,20 @@ impl Contest {
             rules::rank_by_geometry(&mut end.ranking, digraph, budget)?;
         }
         if !self.is_tied() {
-            return Ok(Some(Label::new(unit.shape, unit.odd ^ self.is_odd(), false)));
+            return Ok(Some(Label::new(
+                unit.shape,
+                unit.odd ^ self.is_odd(),
+                false,
+            )));
         }
         // Rule 5 is the one rule that reflection reverses. A label that the mirror image would share is
         // reflection-invariant.
         let mut image = self.clone();
         let odd = self.finish(digraphs, false, budget)?;
         let reflected = image.finish(digraphs, true, budget)?;
-        Ok(odd.zip(reflected).map(|(odd, reflected)| {
-            Label::new(unit.shape, unit.odd ^ odd, odd != reflected)
-        }))
+        Ok(odd
+            .zip(reflected)
+            .map(|(odd, reflected)| Label::new(unit.shape, unit.odd ^ odd, odd != reflected)))
     }
 
     fn is_odd(&self) -> bool {

@@ -43,7 +43,10 @@ pub(super) struct Node {
 impl Node {
     /// Of the descriptors that reflection changes, whether it is R or one that goes with R.
     pub(super) fn handedness(&self) -> Option<bool> {
-        self.labels.iter().flatten().find_map(|label| label.handedness())
+        self.labels
+            .iter()
+            .flatten()
+            .find_map(|label| label.handedness())
     }
 }
 
@@ -105,12 +108,7 @@ impl<'a> Digraph<'a> {
             let arc = atoms.arc(index);
             if arc.to != from {
                 if self.is_on_path(arc.to, node) {
-                    self.push(
-                        Kind::RingClosure,
-                        arc.to,
-                        node,
-                        atoms.duplicate(arc.to),
-                    );
+                    self.push(Kind::RingClosure, arc.to, node, atoms.duplicate(arc.to));
                 } else {
                     self.push(Kind::Atom, arc.to, node, atoms.substance(arc.to));
                 }

@@ -44,7 +44,9 @@ fn pair(handedness: Option<bool>, reference: Reference) -> u64 {
 
 fn references(ranking: &Ranking, digraph: &Digraph<'_>, ligand: u32) -> Vec<Reference> {
     for class in ranking.levels(ligand).iter().flatten() {
-        let nodes = class.iter().map(|&entry| digraph.node(ranking.node_of(entry)));
+        let nodes = class
+            .iter()
+            .map(|&entry| digraph.node(ranking.node_of(entry)));
         let found: Vec<bool> = nodes.filter_map(|node| node.handedness()).collect();
         if !found.is_empty() {
             let first = found.iter().filter(|&&first| first).count();
@@ -68,7 +70,11 @@ fn sequence(
 ) -> Result<Vec<u64>, Exhausted> {
     let mut own = ranking.clone();
     own.refine_throughout(digraph, budget, |entry, node| {
-        if entry.ligand == ligand { pair(node.handedness(), reference) } else { 0 }
+        if entry.ligand == ligand {
+            pair(node.handedness(), reference)
+        } else {
+            0
+        }
     })?;
     let levels = own.levels(ligand);
     let entries = levels.iter().flatten().flatten();

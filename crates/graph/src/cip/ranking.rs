@@ -74,7 +74,8 @@ impl Ranking {
         ranking.sort_sphere(0, digraph, by_number);
         while ranking.is_tied() && ranking.grow(digraph, budget)? {
             let last = ranking.spheres.len() - 1;
-            let by_number = |entry: &Entry, node: &Node| (entry.rank, u64::from(node.substance.number));
+            let by_number =
+                |entry: &Entry, node: &Node| (entry.rank, u64::from(node.substance.number));
             ranking.sort_sphere(last, digraph, by_number);
             ranking.carry_inward(last);
         }
@@ -99,21 +100,28 @@ impl Ranking {
     /// Whether two ligands have equal rank.
     pub(super) fn is_tied(&self) -> bool {
         let ligands = self.sphere(0);
-        ligands.clone().any(|ligand| self.is_ligand_tied(ligand as u32))
+        ligands
+            .clone()
+            .any(|ligand| self.is_ligand_tied(ligand as u32))
     }
 
     /// The ligands of equal rank, highest first.
     pub(super) fn tied_ligands(&self) -> Vec<Vec<u32>> {
         let order: Vec<u32> = self.order[self.sphere(0)].iter().rev().copied().collect();
         let classes = order.chunk_by(|&a, &b| self.rank(a) == self.rank(b));
-        classes.filter(|class| class.len() > 1).map(<[u32]>::to_vec).collect()
+        classes
+            .filter(|class| class.len() > 1)
+            .map(<[u32]>::to_vec)
+            .collect()
     }
 
     /// Whether another ligand has the same rank.
     fn is_ligand_tied(&self, ligand: u32) -> bool {
         let rank = self.rank(ligand);
         let others = self.sphere(0).map(|other| other as u32);
-        others.into_iter().any(|other| other != ligand && self.rank(other) == rank)
+        others
+            .into_iter()
+            .any(|other| other != ligand && self.rank(other) == rank)
     }
 
     /// The nodes of ligands that are tied.
@@ -173,9 +181,8 @@ impl Ranking {
             let own = |ligand: u32| (self.rank(ligand), &keys[ligand as usize]);
             own(a).cmp(&own(b))
         });
-        let same = |a: u32, b: u32| {
-            self.rank(a) == self.rank(b) && keys[a as usize] == keys[b as usize]
-        };
+        let same =
+            |a: u32, b: u32| self.rank(a) == self.rank(b) && keys[a as usize] == keys[b as usize];
         let mut ranks = Vec::with_capacity(order.len());
         for (at, &ligand) in order.iter().enumerate() {
             let tied = at > 0 && same(order[at - 1], ligand);
@@ -215,7 +222,10 @@ impl Ranking {
     }
 
     fn sphere(&self, sphere: usize) -> Range<usize> {
-        let end = self.spheres.get(sphere + 1).map_or(self.entries.len(), |&end| end as usize);
+        let end = self
+            .spheres
+            .get(sphere + 1)
+            .map_or(self.entries.len(), |&end| end as usize);
         self.spheres[sphere] as usize..end
     }
 
@@ -230,7 +240,11 @@ impl Ranking {
         let start = self.entries.len();
         for index in last {
             let Entry {
-                node, from, ligand, rank, ..
+                node,
+                from,
+                ligand,
+                rank,
+                ..
             } = self.entries[index];
             if !self.is_ligand_tied(ligand) {
                 continue;

@@ -28,7 +28,9 @@ pub(super) fn rank_by_geometry(
     budget: &mut Budget,
 ) -> Result<(), Exhausted> {
     ranking.refine(digraph, budget, |_, node| cis_before_trans(node))?;
-    ranking.refine(digraph, budget, |_, node| chiral_before_pseudoasymmetric(node))?;
+    ranking.refine(digraph, budget, |_, node| {
+        chiral_before_pseudoasymmetric(node)
+    })?;
     likeness::rank(ranking, digraph, budget)?;
     ranking.refine(digraph, budget, |_, node| r_before_s(node))
 }
@@ -41,7 +43,8 @@ pub(super) fn rank_by_handedness(
     budget: &mut Budget,
 ) -> Result<(), Exhausted> {
     ranking.refine(digraph, budget, |_, node| {
-        node.handedness().map_or(0, |first| 1 + u64::from(first != mirrored))
+        node.handedness()
+            .map_or(0, |first| 1 + u64::from(first != mirrored))
     })
 }
 
@@ -76,8 +79,18 @@ fn cis_before_trans(node: &Node) -> u64 {
 
 /// Rule 4a.
 fn chiral_before_pseudoasymmetric(node: &Node) -> u64 {
-    let value = |label: Label| if label.is_chiral() { 2 } else { u64::from(label.is_pseudoasymmetric()) };
-    node.labels.iter().flatten().map(|&label| value(label)).sum()
+    let value = |label: Label| {
+        if label.is_chiral() {
+            2
+        } else {
+            u64::from(label.is_pseudoasymmetric())
+        }
+    };
+    node.labels
+        .iter()
+        .flatten()
+        .map(|&label| value(label))
+        .sum()
 }
 
 /// Rule 4c.

@@ -77,7 +77,11 @@ impl Unit {
         let far = self.ends[1 - end];
         let forward = self.chain.iter().copied().chain([far]);
         let backward = self.chain.iter().rev().copied().chain([far]);
-        let path: Vec<u32> = if end == 0 { forward.collect() } else { backward.collect() };
+        let path: Vec<u32> = if end == 0 {
+            forward.collect()
+        } else {
+            backward.collect()
+        };
         let mut node = near;
         for atom in path {
             let children = digraph.children(node, budget)?;
@@ -141,7 +145,11 @@ fn chain(skeleton: &Skeleton, [first, last]: [u32; 2], ligands: &[Place; 4]) -> 
             return None;
         }
         chain.push(atom);
-        let next = skeleton.arcs(atom).iter().map(|&(to, _)| to).find(|&to| to != before)?;
+        let next = skeleton
+            .arcs(atom)
+            .iter()
+            .map(|&(to, _)| to)
+            .find(|&to| to != before)?;
         (before, atom) = (atom, next);
     }
     Some(chain)

@@ -55,6 +55,7 @@ fn difference(
         a: vec![a],
         b: vec![b],
         change,
+        labels: [None; 2],
     }
 }
 

@@ -33,8 +33,11 @@ pub(crate) fn write(
                 "absent" => "unmarked",
                 other => other,
             };
+            let label = entry
+                .label
+                .map_or_else(String::new, |label| format!(", {label}"));
             let text = format!(
-                "{}: {}, {mark}",
+                "{}: {}, {mark}{label}",
                 labels.element(&entry.atoms),
                 entry.element
             );
