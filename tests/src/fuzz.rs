@@ -21,6 +21,7 @@ const LIMITS: Limits = Limits {
     open_elements: 4,
     stereo_pieces: 4,
     map_steps: 100,
+    label_steps: 2_000,
     stop: None,
 };
 

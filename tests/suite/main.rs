@@ -11,6 +11,7 @@
 )]
 
 mod bounds;
+mod cip_labels;
 mod claims;
 mod collections;
 mod coordination;

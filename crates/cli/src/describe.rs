@@ -14,13 +14,14 @@ use crate::{
 
 /// Describes every record of every input, in order.
 pub(crate) fn run(options: &Describe, report: &mut Report) -> io::Result<()> {
-    let mut orderer = Orderer::new(Limits::default());
+    let limits = Limits::default();
+    let mut orderer = Orderer::new(limits);
     let mut objects = Objects::new(options.format);
     let reading = input::read_options(&options.reading);
     let inputs = &options.inputs;
     input::each_record(inputs, &reading, report, |report, source, outcome| {
         let prepared = Prepared::new(&mut orderer, source, outcome);
-        let described = wire::describe(&prepared);
+        let described = wire::describe(&prepared, &limits);
         match options.format {
             Format::Text => {
                 let style = report.style();

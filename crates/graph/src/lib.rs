@@ -7,6 +7,7 @@ mod atom;
 mod bond;
 mod builder;
 mod canonical;
+mod cip;
 mod claims;
 mod drawn;
 mod element;
@@ -35,6 +36,7 @@ pub use crate::{
         Arrangement, Canonical, CanonicalForm, Dropped, FormAtom, FormStereo, Mark, NormalAtom,
         NormalBond, NormalForm, OrderError, Orderer, Remark, StereoElement, arrangement,
     },
+    cip::{Label, Labelling},
     drawn::{
         DrawnCoordination, DrawnStereo, GroupKind, Ligand, Parity, Polyhedron, Shape, StereoGroup,
     },

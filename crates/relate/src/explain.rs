@@ -66,6 +66,6 @@ pub fn explain(a: &Structure, b: &Structure, relation: Relation, limits: &Limits
             ..Explanation::default()
         },
         Relation::Constitutional => constitution::explain(a, b, limits),
-        Relation::Stereo(_) => stereo::explain(a, b),
+        Relation::Stereo(_) => stereo::explain(a, b, limits),
     }
 }

@@ -1,6 +1,6 @@
 //! Remarks on records and pairs: a stable code, the atoms, a sentence.
 
-use molkin_graph::{Dropped, Mark, Remark, Undrawable};
+use molkin_graph::{Dropped, Labelling, Mark, Remark, Undrawable};
 
 use crate::{Relation, Structure};
 
@@ -131,6 +131,48 @@ pub(crate) fn unmarked(structure: &Structure) -> Option<Noted> {
         text: format!("Stereogenic but unmarked: {}.", atoms_in_words(&atoms)),
         atoms,
     })
+}
+
+/// The remarks on marked elements without a CIP label. `labels` are those of the stereo elements.
+pub(crate) fn unlabelled(structure: &Structure, labels: &[Labelling]) -> Vec<Noted> {
+    let elements = structure.canonical().stereo_elements();
+    let atoms = |of: Labelling| {
+        let found = elements
+            .iter()
+            .zip(labels)
+            .filter(|&(_, label)| *label == of);
+        let mut atoms: Vec<u32> = found.flat_map(|(element, _)| element.centres).collect();
+        atoms.sort_unstable();
+        atoms.dedup();
+        atoms
+    };
+    let metals = structure.canonical().coordination_elements();
+    let metals: Vec<u32> = metals.iter().map(|element| element.centre).collect();
+    let causes = [
+        (
+            "label-limit",
+            atoms(Labelling::OverLimit),
+            "the step limit was reached",
+        ),
+        (
+            "label-undecided",
+            atoms(Labelling::Undecided),
+            "the sequence rules do not rank the ligands as far as the record marks them",
+        ),
+        (
+            "label-undefined",
+            metals,
+            "R and S are for tetrahedral centres",
+        ),
+    ];
+    let without_label = causes.into_iter().filter(|(_, atoms, _)| !atoms.is_empty());
+    without_label
+        .map(|(code, atoms, why)| Noted {
+            code,
+            text: format!("No CIP label at {}: {why}.", atoms_in_words(&atoms)),
+            atoms,
+        })
+        .collect()
 }
 
 /// Remarks on a pair as such.

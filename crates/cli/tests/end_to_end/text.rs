@@ -71,7 +71,7 @@ fn enantiomers() {
                         C8H10O  C1([C@@H](O)C)=CC=CC=C1
       B                 hand-arrived.mol: QM-0422 bottle
                         C8H10O  C1([C@H](O)C)=CC=CC=C1
-      stereo            C2 → C2: centre, inverted
+      stereo            C2 → C2: centre, inverted: S in A, R in B
       atoms, A → B      the same numbers in both
     ");
 }
@@ -84,7 +84,7 @@ fn diastereomers() {
                         C10H16O  C(/C)(=C/C=O)CCC=C(C)C
       B                 O=C/C=C(C)\CCC=C(C)C neral
                         C10H16O  C(/C)(=C\C=O)CCC=C(C)C
-      stereo            C3=C4 → C3=C4: double bond, opposite geometry
+      stereo            C3=C4 → C3=C4: double bond, opposite geometry: E in A, Z in B
       atoms, A → B      the same numbers in both
     ");
 }
@@ -97,7 +97,7 @@ fn undetermined() {
                         C10H10O  C1(C=CC(=O)C)=CC=CC=C1
       B                 crossed-arrived.mol: QM-0430 bottle
                         C10H10O  C1(/C=C/C(=O)C)=CC=CC=C1
-      stereo            C4=C5 → C4=C5: double bond, open in A, marked in B
+      stereo            C4=C5 → C4=C5: double bond, open in A, marked in B: E in B
       atoms, A → B      the same numbers in both
       note on A         Stereogenic but unmarked: atoms 4 and 5. [unmarked-stereo]
     ");
@@ -111,7 +111,7 @@ fn unresolved() {
                         C7H14O  C1(C)CCC[C@@H](O)C1
       B                 half-arrived.mol: QM-0433 bottle
                         C7H14O  C1(C)CCC[C@H](O)C1
-      stereo            C6 → C6: centre, inverted
+      stereo            C6 → C6: centre, inverted: R in A, S in B
       atoms, A → B      the same numbers in both
       note on A         Stereogenic but unmarked: atom 2. [unmarked-stereo]
       note on B         Stereogenic but unmarked: atom 2. [unmarked-stereo]
@@ -199,7 +199,7 @@ fn described() {
       compound key      1-ca7d01a49a560e502acd8ddbb8615be4
       open              The record stands for more than one possible sample.
       stereo            C2: tetrahedral, unmarked
-      stereo            C6: tetrahedral, marked
+      stereo            C6: tetrahedral, marked, R
 
     CC[O-] ethoxide
       formula           C2H5O-

@@ -56,6 +56,7 @@ fn difference(
         b: vec![b],
         change,
         groups: [None, None],
+        labels: [None; 2],
     }
 }
 

@@ -2,7 +2,7 @@
 
 use std::collections::{HashMap, HashSet, VecDeque};
 
-use molkin_graph::{GroupKind, Ligand, Mark, Polyhedron, Shape, StereoElement};
+use molkin_graph::{GroupKind, Label, Ligand, Limits, Mark, Polyhedron, Shape, StereoElement};
 
 use crate::Structure;
 
@@ -77,12 +77,14 @@ pub struct StereoDifference {
     pub change: StereoChange,
     /// The stereo groups of the mark in A and in B: kind and number.
     pub groups: [Option<(GroupKind, usize)>; 2],
+    /// Its CIP labels in A and B, where it has them.
+    pub labels: [Option<Label>; 2],
 }
 
 /// Work for one pair, in atoms mapped: some 4,000 maps of a hundred atoms.
 const MOST_WORK: usize = 400_000;
 
-pub(super) fn explain(a: &Structure, b: &Structure) -> Explanation {
+pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanation {
     let (elements_a, elements_b) = (
         a.canonical().stereo_elements(),
         b.canonical().stereo_elements(),
@@ -93,7 +95,15 @@ pub(super) fn explain(a: &Structure, b: &Structure) -> Explanation {
             map.get(&atom).copied()
         })
     });
-    let (map, stereo) = found;
+    let (map, mut stereo) = found;
+    let labels = [
+        labels(a, &elements_a, limits),
+        labels(b, &elements_b, limits),
+    ];
+    for difference in &mut stereo {
+        let places = [&difference.a, &difference.b];
+        difference.labels = [0, 1].map(|side| labels[side].get(places[side]).copied());
+    }
     let mut atom_map: Vec<(u32, u32)> = map.into_iter().collect();
     atom_map.sort_unstable();
     let form = a.canonical().normal_form();
@@ -121,6 +131,19 @@ pub(super) fn explain(a: &Structure, b: &Structure) -> Explanation {
         stereo_least: least,
         ..Explanation::default()
     }
+}
+
+/// The CIP labels of a record by centre or ends.
+fn labels(
+    structure: &Structure,
+    elements: &[StereoElement],
+    limits: &Limits,
+) -> HashMap<Vec<u32>, Label> {
+    let labels = structure.canonical().labels(limits);
+    let labelled = elements.iter().zip(labels);
+    labelled
+        .filter_map(|(element, labelling)| Some((distinct(element.centres), labelling.label()?)))
+        .collect()
 }
 
 /// The maps from A to B that keep the constitution: one of them, and the automorphisms of B.
@@ -250,6 +273,7 @@ fn differences(
             b: distinct([x, y]),
             change,
             groups: [element.group, other.and_then(|o| o.group)],
+            labels: [None; 2],
         };
         match (element.mark, other.map(|o| (o, o.mark))) {
             (Mark::Given(_), Some((other, Mark::Given(_)))) => marked.push(Marked {
@@ -286,6 +310,7 @@ fn differences(
                 b: distinct(element.centres),
                 change: StereoChange::MarkedOnlyInB,
                 groups: [None, element.group],
+                labels: [None; 2],
             });
         }
     }

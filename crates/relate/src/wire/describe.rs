@@ -1,11 +1,12 @@
 //! One described record.
 
 use molkin_graph::{
-    Element, GroupKind, Mark, Molecule, StereoElement, average_mass, monoisotopic_mass,
+    Element, GroupKind, Label, Labelling, Limits, Mark, Molecule, StereoElement, average_mass,
+    monoisotopic_mass,
 };
 use serde::Serialize;
 
-use crate::{Geometry, Structure};
+use crate::{Geometry, Structure, remarks};
 
 use super::{Error, Note, Prepared, VERSION, from_one};
 
@@ -78,6 +79,9 @@ pub struct Stereo {
     pub atoms: Vec<u32>,
     /// `tetrahedral`, `double-bond`, `axis`, `square-planar`, `trigonal-bipyramidal` or `octahedral`.
     pub element: &'static str,
+    /// CIP label, where it has one.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub label: Option<&'static str>,
     /// `given` or `absent`.
     pub mark: &'static str,
     /// The stereo group of the mark, where it has one.
@@ -95,7 +99,7 @@ pub struct Group {
 }
 
 /// Describes a record in the terms of the contract; what cannot be described comes with `errors`.
-pub fn describe(prepared: &Prepared) -> Describe {
+pub fn describe(prepared: &Prepared, limits: &Limits) -> Describe {
     let input = prepared.input();
     let mut described = Describe {
         version: VERSION,
@@ -116,15 +120,18 @@ pub fn describe(prepared: &Prepared) -> Describe {
     match prepared.parts() {
         Err(error) => described.errors = Some(vec![error.clone()]),
         Ok((structure, notes)) => {
-            described.fill(structure);
-            described.notes = Some(notes.to_vec());
+            let labels = structure.canonical().labels(limits);
+            described.fill(structure, &labels);
+            let unlabelled = remarks::unlabelled(structure, &labels);
+            let unlabelled = unlabelled.into_iter().map(Note::of);
+            described.notes = Some(notes.iter().cloned().chain(unlabelled).collect());
         }
     }
     described
 }
 
 impl Describe {
-    fn fill(&mut self, structure: &Structure) {
+    fn fill(&mut self, structure: &Structure, labels: &[Labelling]) {
         let canonical = structure.canonical();
         self.masses = masses(structure.molecule());
         let unsaturation = structure.molecule().unsaturation();
@@ -142,15 +149,18 @@ impl Describe {
         let metals = metals.iter().map(|element| Stereo {
             atoms: from_one(&[element.centre]),
             element: Geometry::Coordination(element.polyhedron).as_str(),
+            label: None,
             mark: "given",
             group: None,
         });
-        self.stereo = Some(elements.iter().map(Stereo::of).chain(metals).collect());
+        let elements = elements.iter().zip(labels);
+        let elements = elements.map(|(element, labelling)| Stereo::of(element, labelling.label()));
+        self.stereo = Some(elements.chain(metals).collect());
     }
 }
 
 impl Stereo {
-    fn of(element: &StereoElement) -> Self {
+    fn of(element: &StereoElement, label: Option<Label>) -> Self {
         let [a, b] = element.centres;
         let atoms = if a == b {
             vec![a]
@@ -160,6 +170,7 @@ impl Stereo {
         Self {
             atoms: from_one(&atoms),
             element: Geometry::Element(element.shape).as_str(),
+            label: label.map(Label::as_str),
             mark: match element.mark {
                 Mark::Given(_) => "given",
                 Mark::Absent => "absent",

@@ -1,6 +1,6 @@
 //! One compared pair.
 
-use molkin_graph::{Limits, OrderError, Orderer};
+use molkin_graph::{Label, Limits, OrderError, Orderer};
 use serde::Serialize;
 
 use crate::{
@@ -144,6 +144,12 @@ pub struct StereoEntry {
     pub b: Vec<u32>,
     /// `tetrahedral`, `double-bond`, `axis`, `square-planar`, `trigonal-bipyramidal` or `octahedral`.
     pub element: &'static str,
+    /// CIP label in A, where it has one.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub label_a: Option<&'static str>,
+    /// CIP label in B, where it has one.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub label_b: Option<&'static str>,
     /// `inverted`, `rearranged`, `marked-only-in-a`, `marked-only-in-b` or `group-differs`.
     pub change: &'static str,
     /// The stereo group of the mark in A, where it has one.
@@ -231,6 +237,10 @@ impl Pair {
         let of_pair = remarks::of_pair(a, b, verdict.relation);
         notes.extend(of_pair.into_iter().map(Note::of));
         if let Some(explained) = explained {
+            for (which, structure) in [(Which::A, a), (Which::B, b)] {
+                let own = unlabelled(structure, which, &explained, limits);
+                notes.extend(own.into_iter().map(|note| Note::of(note).on(which)));
+            }
             self.add_explanation(verdict.relation, explained, &mut notes);
         }
         self.notes = Some(notes);
@@ -298,6 +308,8 @@ impl Pair {
                         a: from_one(&difference.a),
                         b: from_one(&difference.b),
                         element: difference.geometry.as_str(),
+                        label_a: difference.labels[0].map(Label::as_str),
+                        label_b: difference.labels[1].map(Label::as_str),
                         change: difference.change.as_str(),
                         group_a: difference.groups[0].map(Group::of),
                         group_b: difference.groups[1].map(Group::of),
@@ -306,6 +318,30 @@ impl Pair {
             );
         }
     }
+}
+
+/// Why elements of one side that differ have no label.
+fn unlabelled(
+    structure: &Structure,
+    which: Which,
+    explained: &Explanation,
+    limits: &Limits,
+) -> Vec<Noted> {
+    let differing = explained.stereo.iter().map(|difference| match which {
+        Which::A => (&difference.a, difference.labels[0]),
+        Which::B => (&difference.b, difference.labels[1]),
+    });
+    let without_label = differing.filter(|(_, label)| label.is_none());
+    let atoms: Vec<u32> = without_label
+        .flat_map(|(atoms, _)| atoms)
+        .copied()
+        .collect();
+    if atoms.is_empty() {
+        return Vec::new();
+    }
+    let mut notes = remarks::unlabelled(structure, &structure.canonical().labels(limits));
+    notes.retain(|note| note.atoms.iter().any(|atom| atoms.contains(atom)));
+    notes
 }
 
 impl Branching {

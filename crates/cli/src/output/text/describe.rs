@@ -33,11 +33,14 @@ pub(crate) fn write(
                 "absent" => "unmarked",
                 other => other,
             };
+            let label = entry
+                .label
+                .map_or_else(String::new, |label| format!(", {label}"));
             let group = entry
                 .group
                 .map(|group| format!(", {}", super::group(group)));
             let text = format!(
-                "{}: {}, {mark}{}",
+                "{}: {}, {mark}{label}{}",
                 labels.element(&entry.atoms),
                 entry.element,
                 group.unwrap_or_default()

@@ -156,7 +156,18 @@ impl Differences<'_> {
             (other, _) => other,
         };
         let (in_a, in_b) = (a.element(&entry.a), b.element(&entry.b));
-        format!("{in_a} → {in_b}: {element}, {change}")
+        let labels = [(entry.label_a, "A"), (entry.label_b, "B")];
+        let labels = labels
+            .into_iter()
+            .filter_map(|(label, side)| Some((label?, side)));
+        let labels: Vec<String> = labels
+            .map(|(label, side)| format!("{label} in {side}"))
+            .collect();
+        let labels = match labels.is_empty() {
+            true => String::new(),
+            false => format!(": {}", labels.join(", ")),
+        };
+        format!("{in_a} → {in_b}: {element}, {change}{labels}")
     }
 
     fn branching(
