@@ -25,7 +25,7 @@ pub struct Limits {
     /// 100 million by default, which takes about a second.
     pub order_steps: u64,
     /// Unmarked stereo elements in positions that symmetry relates to marked ones: the stereoisomers
-    /// they allow are listed, two to this power. 8 by default.
+    /// they allow are listed, two to this power. 10 by default.
     pub open_elements: u32,
     /// In a record with stereo groups: groups, and unmarked elements, in positions that symmetry relates
     /// to each other or to marked ones. Their arrangements are listed, two to this power. 12 by default.
@@ -46,7 +46,7 @@ impl Default for Limits {
             record_bytes: 16 << 20,
             atoms: 200_000,
             order_steps: 100_000_000,
-            open_elements: 8,
+            open_elements: 10,
             stereo_pieces: 12,
             map_steps: 500_000,
             label_steps: 500_000,

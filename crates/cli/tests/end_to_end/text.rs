@@ -149,7 +149,7 @@ fn not_isomers() {
       A                 salt-label.mol: QM-0444 label
                         C7H6O3  C(=O)(O)C1=C(O)C=CC=C1
       B                 salt-arrived.mol: QM-0444 bottle
-                        C7H5NaO3  [Na+].O=C([O-])C1=C(O)C=CC=C1
+                        C7H5NaO3  O=C([O-])C1=C(O)C=CC=C1.[Na+]
     ");
 }
 

@@ -36,6 +36,7 @@ fn as_drawn(text: &str) -> CanonicalForm {
         atoms: atoms.collect(),
         bonds,
         stereo: stereo.collect(),
+        groups: Vec::new(),
         coordination: molecule.drawn_coordination().to_vec(),
     }
 }
