@@ -33,6 +33,8 @@ fn turned(explanation: &Explanation) -> Explanation {
     }
     for entry in &mut turned.stereo {
         std::mem::swap(&mut entry.a, &mut entry.b);
+        entry.groups.reverse();
+        entry.labels.reverse();
         entry.change = match entry.change {
             StereoChange::MarkedOnlyInA => StereoChange::MarkedOnlyInB,
             StereoChange::MarkedOnlyInB => StereoChange::MarkedOnlyInA,
