@@ -5,7 +5,7 @@ use serde::Serialize;
 
 use crate::{Geometry, Structure};
 
-use super::{Error, Note, Prepared, VERSION, from_one};
+use super::{Error, Note, Prepared, VERSION, numbers};
 
 /// What is known about one record. Either `errors` or the fields from `formula` on are there.
 #[derive(Debug, Clone, PartialEq, Serialize)]
@@ -125,17 +125,19 @@ impl Describe {
         self.open = Some(canonical.is_open());
         let elements = canonical.stereo_elements();
         let metals = canonical.coordination_elements();
+        let molecule = structure.molecule();
         let metals = metals.iter().map(|element| Stereo {
-            atoms: from_one(&[element.centre]),
+            atoms: numbers(molecule, &[element.centre]),
             element: Geometry::Coordination(element.polyhedron).as_str(),
             mark: "given",
         });
-        self.stereo = Some(elements.iter().map(Stereo::of).chain(metals).collect());
+        let elements = elements.iter().map(|element| Stereo::of(molecule, element));
+        self.stereo = Some(elements.chain(metals).collect());
     }
 }
 
 impl Stereo {
-    fn of(element: &StereoElement) -> Self {
+    fn of(molecule: &Molecule, element: &StereoElement) -> Self {
         let [a, b] = element.centres;
         let atoms = if a == b {
             vec![a]
@@ -143,7 +145,7 @@ impl Stereo {
             vec![a.min(b), a.max(b)]
         };
         Self {
-            atoms: from_one(&atoms),
+            atoms: numbers(molecule, &atoms),
             element: Geometry::Element(element.shape).as_str(),
             mark: match element.mark {
                 Mark::Given(_) => "given",
