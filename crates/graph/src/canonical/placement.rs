@@ -1,7 +1,7 @@
 //! The placement of π bonds and charges that canonical text writes.
 
 use crate::{
-    Element,
+    Element, Limits,
     matching::Matching,
     mesomer::{self, MOBILE, Mesomer},
     skeleton::Skeleton,
@@ -67,51 +67,96 @@ pub(super) fn place(
             );
         }
     }
-    customary(skeleton, rank, &mut placed);
+    customary(skeleton, mesomer, rank, &mut placed);
     placed
 }
 
-/// Neutralises charge-separated pairs at third-row and heavier centres of groups 15–17: oxygen
-/// first, then its group, then nitrogen; a phosphorus ylide is written with a double bond as well.
-fn customary(skeleton: &Skeleton, rank: &[u32], placed: &mut Placed) {
-    let mut centres: Vec<u32> = (0..skeleton.len() as u32).collect();
+/// Writes charge-separated pairs at third-row and heavier centres of groups 15–17 without charges,
+/// wherever reading that separates them again. The octet rule may give up another π bond than the
+/// one that is written; a centre where it does keeps its charges.
+fn customary(skeleton: &Skeleton, mesomer: &Mesomer, rank: &[u32], placed: &mut Placed) {
+    let is_centre = |&atom: &u32| {
+        let element = skeleton.atoms[atom as usize].element;
+        placed.charges[atom as usize] > 0
+            && !element.is_metal()
+            && matches!(element.group(), Some(15..=17))
+            && element.period() >= 3
+    };
+    let mut centres: Vec<u32> = (0..skeleton.len() as u32).filter(is_centre).collect();
+    if centres.is_empty() {
+        return;
+    }
     centres.sort_unstable_by_key(|&atom| rank[atom as usize]);
+    let separated = placed.clone();
+    for &centre in &centres {
+        neutralise(skeleton, rank, centre, placed);
+    }
+    if *placed == separated || is_restored(skeleton, mesomer, placed) {
+        return;
+    }
+    *placed = separated;
     for centre in centres {
-        let element = skeleton.atoms[centre as usize].element;
-        if element.is_metal() || !matches!(element.group(), Some(15..=17)) || element.period() < 3 {
-            continue;
-        }
-        // Only where reading the customary form would separate the charges again.
-        if !is_full(skeleton, placed, centre) {
-            continue;
-        }
-        let mut partners: Vec<(u8, u32, u32, u32)> = skeleton
-            .arcs(centre)
-            .iter()
-            .filter_map(|&(to, bond)| {
-                let class = match skeleton.atoms[to as usize].element {
-                    Element::OXYGEN => 0,
-                    other if other.group() == Some(16) => 1,
-                    Element::NITROGEN => 2,
-                    Element::CARBON if element == Element::PHOSPHORUS => 3,
-                    _ => return None,
-                };
-                Some((class, rank[to as usize], to, bond))
-            })
-            .collect();
-        partners.sort_unstable();
-        for (_, _, to, bond) in partners {
-            while placed.charges[centre as usize] > 0
-                && placed.charges[to as usize] < 0
-                && is_full(skeleton, placed, to)
-                && (1..3).contains(&placed.orders[bond as usize])
-            {
-                placed.charges[centre as usize] -= 1;
-                placed.charges[to as usize] += 1;
-                placed.orders[bond as usize] += 1;
-            }
+        let before = placed.clone();
+        neutralise(skeleton, rank, centre, placed);
+        if *placed != before && !is_restored(skeleton, mesomer, placed) {
+            *placed = before;
         }
     }
+}
+
+/// Neutralises a centre against its neighbours: oxygen first, then its group, then nitrogen; a
+/// phosphorus ylide is written with a double bond as well.
+fn neutralise(skeleton: &Skeleton, rank: &[u32], centre: u32, placed: &mut Placed) {
+    if !is_full(skeleton, placed, centre) {
+        return;
+    }
+    let element = skeleton.atoms[centre as usize].element;
+    let mut partners: Vec<(u8, u32, u32, u32)> = skeleton
+        .arcs(centre)
+        .iter()
+        .filter_map(|&(to, bond)| {
+            let class = match skeleton.atoms[to as usize].element {
+                Element::OXYGEN => 0,
+                other if other.group() == Some(16) => 1,
+                Element::NITROGEN => 2,
+                Element::CARBON if element == Element::PHOSPHORUS => 3,
+                _ => return None,
+            };
+            Some((class, rank[to as usize], to, bond))
+        })
+        .collect();
+    partners.sort_unstable();
+    for (_, _, to, bond) in partners {
+        while placed.charges[centre as usize] > 0
+            && placed.charges[to as usize] < 0
+            && is_full(skeleton, placed, to)
+            && (1..3).contains(&placed.orders[bond as usize])
+        {
+            placed.charges[centre as usize] -= 1;
+            placed.charges[to as usize] += 1;
+            placed.orders[bond as usize] += 1;
+        }
+    }
+}
+
+/// Whether a placement, read as a drawing, has the normal form that it was made from.
+fn is_restored(skeleton: &Skeleton, mesomer: &Mesomer, placed: &Placed) -> bool {
+    let mut drawn = skeleton.clone();
+    for (atom, &charge) in drawn.atoms.iter_mut().zip(&placed.charges) {
+        atom.charge = charge;
+    }
+    for (bond, &order) in drawn.bonds.iter_mut().zip(&placed.orders) {
+        bond.order = order;
+    }
+    // The normal form was found within the caller's limits; finding it again takes about as much.
+    let unbounded = Limits {
+        order_steps: u64::MAX,
+        ..Limits::default()
+    };
+    let mut read = Mesomer::default();
+    read.load(&mut drawn, &unbounded).is_ok()
+        && read.orders == mesomer.orders
+        && read.states == mesomer.states
 }
 
 /// Whether an atom has exactly the bonds that its charge gives room for: no open valence, no octet
