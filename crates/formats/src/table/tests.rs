@@ -7,7 +7,7 @@ use insta::assert_snapshot;
 use molkin_graph::Limits;
 use rstest::rstest;
 
-use super::{Columns, Delimiter, ReadOptions, Records};
+use super::{Delimiter, ReadOptions, Records};
 use crate::smiles;
 
 fn options(limits: Limits) -> ReadOptions {
