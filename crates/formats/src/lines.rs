@@ -5,6 +5,8 @@ use std::{
     ops::Range,
 };
 
+use memchr::memchr2;
+
 /// Reads lines that end in LF, CR LF or CR, also mixed, and takes off a UTF-8 signature in front.
 /// Memory follows the bytes read, up to the limit for one line.
 #[derive(Debug)]
@@ -93,7 +95,7 @@ impl<R: BufRead> Lines<R> {
             if chunk.is_empty() && taken == 0 {
                 return Ok((length > 0).then_some(length));
             }
-            let end = chunk.iter().position(|&byte| matches!(byte, b'\n' | b'\r'));
+            let end = memchr2(b'\n', b'\r', chunk);
             let line = &chunk[..end.unwrap_or(chunk.len())];
             length = length.saturating_add(line.len());
             let room = most - self.buffer.len();

@@ -22,6 +22,7 @@ mod group_type;
 mod header;
 mod lower;
 mod neighbours;
+mod placeholder;
 mod site;
 mod stereo;
 mod symbol;

@@ -77,6 +77,7 @@ impl MoleculeBuilder {
         self.molecule.stereo.clear();
         self.molecule.coordination.clear();
         self.molecule.groups.clear();
+        self.molecule.skipped.clear();
         self.demand.clear();
         self.delocalised.clear();
     }
@@ -97,6 +98,13 @@ impl MoleculeBuilder {
     pub fn add_atom(&mut self, atom: Atom) -> u32 {
         self.demand.push(PiDemand::Excluded);
         self.molecule.graph.add_node(atom).index() as u32
+    }
+
+    /// Leaves out the number of the next atom, which the record gives to something that is no atom;
+    /// see [`Molecule::number`].
+    pub fn skip_number(&mut self) {
+        let before = self.atom_count() as u32;
+        self.molecule.skipped.push(before);
     }
 
     /// An atom added before, to be completed.

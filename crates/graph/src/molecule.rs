@@ -29,6 +29,8 @@ pub struct Molecule {
     pub(crate) stereo: Vec<DrawnStereo>,
     pub(crate) coordination: Vec<DrawnCoordination>,
     pub(crate) groups: Vec<StereoGroup>,
+    /// For each number of the record that belongs to no atom, how many atoms come before it.
+    pub(crate) skipped: Vec<u32>,
 }
 
 impl Molecule {
@@ -40,6 +42,26 @@ impl Molecule {
     /// The atom with this index, if there is one.
     pub fn atom(&self, index: u32) -> Option<&Atom> {
         self.graph.node_weight(NodeIndex::new(index as usize))
+    }
+
+    /// The number of an atom in its record, from 1: the index and one, and one more for each number
+    /// before it that the record gives to something that is no atom.
+    ///
+    /// # Examples
+    /// ```
+    /// use molkin_graph::{Atom, Element, MoleculeBuilder};
+    ///
+    /// let mut builder = MoleculeBuilder::new();
+    /// let first = builder.add_atom(Atom::new(Element::IRON));
+    /// builder.skip_number();
+    /// let second = builder.add_atom(Atom::new(Element::CARBON));
+    /// let molecule = builder.build()?;
+    /// assert_eq!([first, second].map(|atom| molecule.number(atom)), [1, 3]);
+    /// # Ok::<(), molkin_graph::BuildError>(())
+    /// ```
+    pub fn number(&self, index: u32) -> u32 {
+        let before = self.skipped.partition_point(|&atoms| atoms <= index);
+        index.saturating_add(1).saturating_add(before as u32)
     }
 
     /// All atoms in input order.

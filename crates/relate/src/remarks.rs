@@ -1,10 +1,10 @@
 //! Remarks on records and pairs: a stable code, the atoms, a sentence.
 
-use molkin_graph::{Dropped, Labelling, Mark, Remark, Undrawable};
+use molkin_graph::{Dropped, Labelling, Mark, Molecule, Remark, Undrawable};
 
 use crate::{Relation, Structure};
 
-/// A remark about one record. Atoms from 0; in the text they count from 1.
+/// A remark about one record. Atoms from 0; in the text they have their numbers.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub(crate) struct Noted {
     pub(crate) code: &'static str,
@@ -13,8 +13,9 @@ pub(crate) struct Noted {
 }
 
 /// "atom 3", "atoms 3 and 4", "atoms 3, 4 and 7".
-pub(crate) fn atoms_in_words(atoms: &[u32]) -> String {
-    let numbers: Vec<String> = atoms.iter().map(|atom| (atom + 1).to_string()).collect();
+pub(crate) fn atoms_in_words(molecule: &Molecule, atoms: &[u32]) -> String {
+    let numbers = atoms.iter().map(|&atom| molecule.number(atom).to_string());
+    let numbers: Vec<String> = numbers.collect();
     match numbers.as_slice() {
         [] => "no atom".to_owned(),
         [one] => format!("atom {one}"),
@@ -28,17 +29,17 @@ pub(crate) fn of_record(structure: &Structure) -> Vec<Noted> {
         .canonical()
         .remarks()
         .iter()
-        .filter_map(of_remark)
+        .filter_map(|remark| of_remark(structure.molecule(), remark))
         .collect()
 }
 
-fn of_remark(remark: &Remark) -> Option<Noted> {
+fn of_remark(molecule: &Molecule, remark: &Remark) -> Option<Noted> {
     let (code, atoms, text) = match remark {
         Remark::MarkDropped { reason, atoms } => {
             let (code, why) = dropped(*reason);
             let text = format!(
                 "The stereo mark at {} counts for nothing: {why}.",
-                atoms_in_words(atoms)
+                atoms_in_words(molecule, atoms)
             );
             (code, atoms.clone(), text)
         }
@@ -47,7 +48,7 @@ fn of_remark(remark: &Remark) -> Option<Noted> {
             atoms.clone(),
             format!(
                 "The stereo mark at {} says nothing: by symmetry, or because other elements are unmarked, both arrangements give the same.",
-                atoms_in_words(atoms)
+                atoms_in_words(molecule, atoms)
             ),
         ),
         Remark::ImpossibleCage { atoms } => (
@@ -55,7 +56,7 @@ fn of_remark(remark: &Remark) -> Option<Noted> {
             atoms.clone(),
             format!(
                 "The bridgeheads ({}) are marked in a way that rings of this size cannot have; the marks count as drawn.",
-                atoms_in_words(atoms)
+                atoms_in_words(molecule, atoms)
             ),
         ),
         Remark::PartlyMarkedMobileBonds { atoms } => (
@@ -63,7 +64,7 @@ fn of_remark(remark: &Remark) -> Option<Noted> {
             atoms.clone(),
             format!(
                 "Only some of the mobile double bonds carry a mark; those at {} do not.",
-                atoms_in_words(atoms)
+                atoms_in_words(molecule, atoms)
             ),
         ),
         Remark::BondShiftRing { atoms } => (
@@ -71,7 +72,7 @@ fn of_remark(remark: &Remark) -> Option<Noted> {
             atoms.clone(),
             format!(
                 "The two bond-shift forms of the ring ({}) count as one structure.",
-                atoms_in_words(atoms)
+                atoms_in_words(molecule, atoms)
             ),
         ),
         Remark::NotDrawn(Undrawable::HinderedAxis { atoms }) => (
@@ -79,7 +80,7 @@ fn of_remark(remark: &Remark) -> Option<Noted> {
             atoms.to_vec(),
             format!(
                 "Rotation about the bond between {} may be hindered; the record does not say which arrangement is meant.",
-                atoms_in_words(atoms)
+                atoms_in_words(molecule, atoms)
             ),
         ),
         Remark::NotDrawn(Undrawable::MetalCentre { atom }) => (
@@ -87,7 +88,7 @@ fn of_remark(remark: &Remark) -> Option<Noted> {
             vec![*atom],
             format!(
                 "The arrangement about the metal (atom {}) is not said by this record.",
-                atom + 1
+                molecule.number(*atom)
             ),
         ),
         _ => return None,
@@ -128,7 +129,10 @@ pub(crate) fn unmarked(structure: &Structure) -> Option<Noted> {
     atoms.dedup();
     (!atoms.is_empty()).then(|| Noted {
         code: "unmarked-stereo",
-        text: format!("Stereogenic but unmarked: {}.", atoms_in_words(&atoms)),
+        text: format!(
+            "Stereogenic but unmarked: {}.",
+            atoms_in_words(structure.molecule(), &atoms)
+        ),
         atoms,
     })
 }
@@ -169,7 +173,10 @@ pub(crate) fn unlabelled(structure: &Structure, labels: &[Labelling]) -> Vec<Not
     without_label
         .map(|(code, atoms, why)| Noted {
             code,
-            text: format!("No CIP label at {}: {why}.", atoms_in_words(&atoms)),
+            text: format!(
+                "No CIP label at {}: {why}.",
+                atoms_in_words(structure.molecule(), &atoms)
+            ),
             atoms,
         })
         .collect()

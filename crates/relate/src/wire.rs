@@ -8,6 +8,7 @@ mod pair;
 mod prepared;
 
 use molkin_formats::{Note as ReadNote, ReadError};
+use molkin_graph::Molecule;
 use serde::Serialize;
 
 use crate::remarks::Noted;
@@ -83,20 +84,20 @@ pub struct Error {
 }
 
 impl Note {
-    fn of(noted: Noted) -> Self {
+    fn of(molecule: &Molecule, noted: Noted) -> Self {
         Self {
             code: noted.code.to_owned(),
             input: None,
-            atoms: from_one(&noted.atoms),
+            atoms: numbers(molecule, &noted.atoms),
             text: noted.text,
         }
     }
 
-    fn of_reader(note: &ReadNote) -> Self {
+    fn of_reader(molecule: &Molecule, note: &ReadNote) -> Self {
         Self {
             code: note.code.to_owned(),
             input: None,
-            atoms: from_one(&note.atoms),
+            atoms: numbers(molecule, &note.atoms),
             text: note.text.clone(),
         }
     }
@@ -141,6 +142,7 @@ impl Error {
     }
 }
 
-fn from_one(atoms: &[u32]) -> Vec<u32> {
-    atoms.iter().map(|atom| atom + 1).collect()
+/// The numbers of atoms in their record.
+fn numbers(molecule: &Molecule, atoms: &[u32]) -> Vec<u32> {
+    atoms.iter().map(|&atom| molecule.number(atom)).collect()
 }

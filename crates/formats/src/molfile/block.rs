@@ -1,5 +1,7 @@
 //! The text of one record, taken line by line.
 
+use memchr::memchr2;
+
 use crate::{ReadError, ReadErrorKind, Span, molfile::field::Field};
 
 /// What is wrong and where; [`Block::error`] adds the source line.
@@ -102,6 +104,11 @@ impl<'a> Lines<'a> {
         Span::new(self.next, 1, 0)
     }
 
+    /// A bound on the lines of at least `length` bytes that may follow, for making room.
+    pub(crate) fn at_most(&self, length: usize) -> usize {
+        self.rest.len() / length
+    }
+
     /// The next line, which the format demands.
     pub(crate) fn demand(&mut self, expected: &'static str) -> Result<Line<'a>, Fault> {
         let end = self.place();
@@ -122,10 +129,7 @@ impl<'a> Iterator for Lines<'a> {
         if self.rest.is_empty() {
             return None;
         }
-        let length = self
-            .rest
-            .iter()
-            .position(|&byte| matches!(byte, b'\n' | b'\r'));
+        let length = memchr2(b'\n', b'\r', self.rest);
         let (text, rest) = self.rest.split_at(length.unwrap_or(self.rest.len()));
         self.rest = rest
             .strip_prefix(b"\r\n")

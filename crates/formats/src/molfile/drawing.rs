@@ -11,6 +11,8 @@ use crate::{Note, Span};
 pub(super) struct Drawing {
     pub(super) atoms: Vec<DrawnAtom>,
     pub(super) bonds: Vec<DrawnBond>,
+    /// Atoms without bonds that stand in the midst of others and are none, in order.
+    pub(super) placeholders: Vec<u32>,
     /// The chiral flag of the counts line.
     pub(super) chiral: bool,
     /// Groups of centres with relative marks.

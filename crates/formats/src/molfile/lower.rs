@@ -9,6 +9,7 @@ use crate::{
         block::Fault,
         drawing::{BondKind, Drawing},
         neighbours::Neighbours,
+        placeholder,
         site::{self, AtomBonds, Site},
         stereo,
     },
@@ -45,7 +46,16 @@ pub(super) fn molecule(drawing: &mut Drawing, options: &ReadOptions) -> Result<M
     let molecule = molecule.map_err(|(error, place)| fault(error, drawing, place))?;
     drawing.notes.append(&mut notes);
     drawing.notes.append(&mut more);
-    Ok(molecule)
+    if drawing.placeholders.is_empty() {
+        return Ok(molecule);
+    }
+    let Drawing {
+        placeholders,
+        notes,
+        ..
+    } = drawing;
+    placeholder::leave_out(placeholders, &molecule, notes)
+        .map_err(|error| fault(error, drawing, None))
 }
 
 /// What a molecule is put together from.
@@ -63,6 +73,7 @@ impl Assembly<'_> {
         notes: &mut Vec<Note>,
     ) -> Result<Molecule, (BuildError, Option<Span>)> {
         let mut builder = MoleculeBuilder::new();
+        builder.reserve(self.drawing.atoms.len(), self.drawing.bonds.len());
         for (atom, site) in self.drawing.atoms.iter().zip(sites) {
             let index = builder.add_atom(Atom {
                 element: atom.element,

@@ -96,7 +96,14 @@ pub(super) fn read(
         Some(valence) => stated(index, atom, valence, &bonding, bonds.received, notes),
         None => {
             let hydrogens = bonding.hydrogens(table);
-            note_table(index, atom, &bonding, notes);
+            let other = bonding.hydrogens(table.other());
+            if hydrogens != other {
+                let [early, late] = match table {
+                    ValenceTable::Early => [hydrogens, other],
+                    ValenceTable::Late => [other, hydrogens],
+                };
+                notes.push(table_note(index, atom, early, late));
+            }
             (
                 hydrogens,
                 aromatic && bonding.takes_double_bond(table, hydrogens),
@@ -163,19 +170,15 @@ fn stated(
     (room - u8::from(delocalised), delocalised)
 }
 
-fn note_table(index: u32, atom: &DrawnAtom, bonding: &Bonding, notes: &mut Vec<Note>) {
-    let early = bonding.hydrogens(ValenceTable::Early);
-    let late = bonding.hydrogens(ValenceTable::Late);
-    if early != late {
-        notes.push(Note {
-            code: "valence-table-dependent",
-            atoms: vec![index],
-            span: Some(atom.span),
-            text: format!(
-                "atom {} ({}) has {early} unwritten H by the valences used before 2014 and {late} by the later ones",
-                index.saturating_add(1),
-                atom.element
-            ),
-        });
+fn table_note(index: u32, atom: &DrawnAtom, early: u8, late: u8) -> Note {
+    Note {
+        code: "valence-table-dependent",
+        atoms: vec![index],
+        span: Some(atom.span),
+        text: format!(
+            "atom {} ({}) has {early} unwritten H by the valences used before 2014 and {late} by the later ones",
+            index.saturating_add(1),
+            atom.element
+        ),
     }
 }

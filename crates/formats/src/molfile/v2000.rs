@@ -42,7 +42,12 @@ pub(super) fn read(
         chiral: counts.field(13, 3).number("the chiral flag", -999, 999)? == 1,
         ..Drawing::default()
     };
-    let mut states = Vec::new();
+    // Room for what is claimed, if there is as much text. An atom line has 34 bytes or more.
+    let room = usize::try_from(atom_count)
+        .unwrap_or(0)
+        .min(lines.at_most(34));
+    drawing.atoms.reserve_exact(room);
+    let mut states = Vec::with_capacity(room);
     for _ in 0..atom_count {
         let line = counted(lines, "an atom line", atoms.span())?;
         let (atom, state) = atom::read(line, states.len(), &mut drawing.notes)?;
@@ -50,6 +55,10 @@ pub(super) fn read(
         states.push(state);
     }
     let declared = (u32::try_from(atom_count).unwrap_or(0), atoms.span());
+    let room = usize::try_from(bond_count)
+        .unwrap_or(0)
+        .min(lines.at_most(9));
+    drawing.bonds.reserve_exact(room);
     for _ in 0..bond_count {
         let line = counted(lines, "a bond line", bonds.span())?;
         let bond = bond::read(line, declared, &mut drawing.notes)?;

@@ -22,6 +22,16 @@ pub enum ValenceTable {
     Late,
 }
 
+impl ValenceTable {
+    /// The one of the two that this is not.
+    pub(super) fn other(self) -> Self {
+        match self {
+            Self::Early => Self::Late,
+            Self::Late => Self::Early,
+        }
+    }
+}
+
 /// What decides the hydrogens of an atom whose valence the record does not state.
 #[derive(Debug, Clone, Copy)]
 pub(super) struct Bonding {

@@ -1,7 +1,7 @@
 //! The placement of π bonds and charges that canonical text writes.
 
 use crate::{
-    Element,
+    Element, Limits,
     mesomer::{self, First, Mesomer},
     order::Labelling,
     skeleton::Skeleton,
@@ -13,8 +13,6 @@ pub(super) struct Placed {
     pub(super) orders: Vec<u8>,
     pub(super) charges: Vec<i8>,
     first: First,
-    /// Neighbours that may take a charge: how soon, rank, atom, bond.
-    partners: Vec<(u8, u32, u32, u32)>,
 }
 
 impl Placed {
@@ -52,7 +50,7 @@ impl Placed {
             orders,
             charges,
         );
-        self.customary(skeleton, labelling);
+        customary(skeleton, mesomer, &labelling.rank, self);
     }
 
     /// Electron pairs of a bond that count as valence.
@@ -63,47 +61,98 @@ impl Placed {
         }
     }
 
-    /// Neutralises charge-separated pairs at third-row and heavier centres of groups 15–17: oxygen
-    /// first, then its group, then nitrogen; a phosphorus ylide is written with a double bond as well.
-    fn customary(&mut self, skeleton: &Skeleton, labelling: &Labelling) {
-        let rank = &labelling.rank;
-        for &centre in &labelling.order {
-            let element = skeleton.atoms[centre as usize].element;
-            // Only where reading the customary form would separate the charges again.
-            if self.charges[centre as usize] <= 0
-                || element.is_metal()
-                || !matches!(element.group(), Some(15..=17))
-                || element.period() < 3
-                || !is_full(skeleton, self, centre)
-            {
-                continue;
-            }
-            self.partners.clear();
-            for &(to, bond) in skeleton.arcs(centre) {
-                let class = match skeleton.atoms[to as usize].element {
-                    Element::OXYGEN => 0,
-                    other if other.group() == Some(16) => 1,
-                    Element::NITROGEN => 2,
-                    Element::CARBON if element == Element::PHOSPHORUS => 3,
-                    _ => continue,
-                };
-                self.partners.push((class, rank[to as usize], to, bond));
-            }
-            self.partners.sort_unstable();
-            for at in 0..self.partners.len() {
-                let (_, _, to, bond) = self.partners[at];
-                while self.charges[centre as usize] > 0
-                    && self.charges[to as usize] < 0
-                    && is_full(skeleton, self, to)
-                    && (1..3).contains(&self.orders[bond as usize])
-                {
-                    self.charges[centre as usize] -= 1;
-                    self.charges[to as usize] += 1;
-                    self.orders[bond as usize] += 1;
-                }
-            }
+    fn bonds_and_charges(&self) -> (Vec<u8>, Vec<i8>) {
+        (self.orders.clone(), self.charges.clone())
+    }
+}
+
+/// Writes charge-separated pairs at third-row and heavier centres of groups 15–17 without charges,
+/// wherever reading that separates them again. The octet rule may give up another π bond than the
+/// one that is written; a centre where it does keeps its charges.
+fn customary(skeleton: &Skeleton, mesomer: &Mesomer, rank: &[u32], placed: &mut Placed) {
+    let is_centre = |&atom: &u32| {
+        let element = skeleton.atoms[atom as usize].element;
+        placed.charges[atom as usize] > 0
+            && !element.is_metal()
+            && matches!(element.group(), Some(15..=17))
+            && element.period() >= 3
+    };
+    let mut centres: Vec<u32> = (0..skeleton.len() as u32).filter(is_centre).collect();
+    if centres.is_empty() {
+        return;
+    }
+    centres.sort_unstable_by_key(|&atom| rank[atom as usize]);
+    let separated = placed.bonds_and_charges();
+    for &centre in &centres {
+        neutralise(skeleton, rank, centre, placed);
+    }
+    if placed.bonds_and_charges() == separated || is_restored(skeleton, mesomer, placed) {
+        return;
+    }
+    (placed.orders, placed.charges) = separated;
+    for centre in centres {
+        let before = placed.bonds_and_charges();
+        neutralise(skeleton, rank, centre, placed);
+        if placed.bonds_and_charges() != before && !is_restored(skeleton, mesomer, placed) {
+            (placed.orders, placed.charges) = before;
         }
     }
+}
+
+/// Neutralises a centre against its neighbours: oxygen first, then its group, then nitrogen; a
+/// phosphorus ylide is written with a double bond as well.
+fn neutralise(skeleton: &Skeleton, rank: &[u32], centre: u32, placed: &mut Placed) {
+    if !is_full(skeleton, placed, centre) {
+        return;
+    }
+    let element = skeleton.atoms[centre as usize].element;
+    let mut partners: Vec<(u8, u32, u32, u32)> = skeleton
+        .arcs(centre)
+        .iter()
+        .filter_map(|&(to, bond)| {
+            let class = match skeleton.atoms[to as usize].element {
+                Element::OXYGEN => 0,
+                other if other.group() == Some(16) => 1,
+                Element::NITROGEN => 2,
+                Element::CARBON if element == Element::PHOSPHORUS => 3,
+                _ => return None,
+            };
+            Some((class, rank[to as usize], to, bond))
+        })
+        .collect();
+    partners.sort_unstable();
+    for (_, _, to, bond) in partners {
+        while placed.charges[centre as usize] > 0
+            && placed.charges[to as usize] < 0
+            && is_full(skeleton, placed, to)
+            && (1..3).contains(&placed.orders[bond as usize])
+        {
+            placed.charges[centre as usize] -= 1;
+            placed.charges[to as usize] += 1;
+            placed.orders[bond as usize] += 1;
+        }
+    }
+}
+
+/// Whether a placement, read as a drawing, has the normal form that it was made from.
+fn is_restored(skeleton: &Skeleton, mesomer: &Mesomer, placed: &Placed) -> bool {
+    let mut drawn = skeleton.clone();
+    for (atom, &charge) in drawn.atoms.iter_mut().zip(&placed.charges) {
+        atom.charge = charge;
+    }
+    for (bond, &order) in drawn.bonds.iter_mut().zip(&placed.orders) {
+        bond.order = order;
+    }
+    // The normal form was found within the caller's limits; finding it again takes about as much.
+    let unbounded = Limits {
+        order_steps: u64::MAX,
+        ..Limits::default()
+    };
+    let mut read = Mesomer::default();
+    read.load(&mut drawn, &unbounded, &mut mesomer::Scratch::default())
+        .is_ok()
+        && read.orders == mesomer.orders
+        && read.states == mesomer.states
 }
 
 /// Whether an atom has exactly the bonds that its charge gives room for: no open valence, no octet

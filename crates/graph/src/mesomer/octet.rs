@@ -74,18 +74,41 @@ fn excess(skeleton: &Skeleton, atom: u32) -> i32 {
     drawn(skeleton, atom) - valence::neutral(record.element) - i32::from(record.charge)
 }
 
-/// A π bond to give up: one to a neighbour of oxygen's group if there is one. Among equals the choice
-/// does not matter: where not all are given up, the centre and its neighbours are one conjugated
-/// system.
+/// A π bond to give up: one to a neighbour of oxygen's group if there is one, and to one that the
+/// charge leaves within its valence. Among equals of these the choice does not matter: where not all
+/// are given up, the centre and its neighbours are one conjugated system. Neighbours with more bonds
+/// than their valence are in none; if not all bonds to them are given up, none is.
 fn pi_bond(skeleton: &Skeleton, atom: u32, over_full: &[bool]) -> Option<u32> {
-    skeleton
-        .arcs(atom)
-        .iter()
-        .filter(|&&(to, bond)| {
+    let preference = |to: u32| {
+        let oxygen_group = valence::neutral(skeleton.atoms[to as usize].element) == 2;
+        (oxygen_group, fits(skeleton, to))
+    };
+    let candidates = || {
+        let arcs = skeleton.arcs(atom).iter().copied();
+        arcs.filter(|&(to, bond)| {
             !over_full[to as usize]
                 && skeleton.pairs(bond) > 1
                 && !skeleton.atoms[to as usize].element.is_metal()
         })
-        .max_by_key(|&&(to, _)| valence::neutral(skeleton.atoms[to as usize].element) == 2)
-        .map(|&(_, bond)| bond)
+    };
+    let (to, bond) = candidates().max_by_key(|&(to, _)| preference(to))?;
+    let best = preference(to);
+    if !best.1 {
+        let equals = candidates().filter(|&(to, _)| preference(to) == best);
+        let held: i32 = equals
+            .map(|(_, bond)| i32::from(skeleton.pairs(bond)) - 1)
+            .sum();
+        // Each bond that is given up takes two from the excess.
+        if held > (excess(skeleton, atom) + 1) / 2 {
+            return None;
+        }
+    }
+    Some(bond)
+}
+
+/// Whether an atom that takes the electrons of one of its π bonds keeps to its valence.
+fn fits(skeleton: &Skeleton, atom: u32) -> bool {
+    let record = &skeleton.atoms[atom as usize];
+    let charge = i32::from(record.charge) - 1;
+    drawn(skeleton, atom) - 1 <= valence::charged(record.element, charge)
 }

@@ -53,7 +53,7 @@ pub(crate) fn neutral(element: Element) -> i32 {
 }
 
 /// The valence of an atom with a charge.
-fn charged(element: Element, charge: i32) -> i32 {
+pub(super) fn charged(element: Element, charge: i32) -> i32 {
     match element.group() {
         Some(13) => 3 - charge,
         Some(14) => 4 - charge.abs(),

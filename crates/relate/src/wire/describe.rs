@@ -8,7 +8,7 @@ use serde::Serialize;
 
 use crate::{Geometry, Structure, remarks};
 
-use super::{Error, Note, Prepared, VERSION, from_one};
+use super::{Error, Note, Prepared, VERSION, numbers};
 
 /// What is known about one record. Either `errors` or the fields from `formula` on are there.
 #[derive(Debug, Clone, PartialEq, Serialize)]
@@ -123,7 +123,8 @@ pub fn describe(prepared: &Prepared, limits: &Limits) -> Describe {
             let labels = structure.canonical().labels(limits);
             described.fill(structure, &labels);
             let unlabelled = remarks::unlabelled(structure, &labels);
-            let unlabelled = unlabelled.into_iter().map(Note::of);
+            let note = |noted| Note::of(structure.molecule(), noted);
+            let unlabelled = unlabelled.into_iter().map(note);
             described.notes = Some(notes.iter().cloned().chain(unlabelled).collect());
         }
     }
@@ -146,21 +147,23 @@ impl Describe {
         self.open = Some(canonical.is_open());
         let elements = canonical.stereo_elements();
         let metals = canonical.coordination_elements();
+        let molecule = structure.molecule();
         let metals = metals.iter().map(|element| Stereo {
-            atoms: from_one(&[element.centre]),
+            atoms: numbers(molecule, &[element.centre]),
             element: Geometry::Coordination(element.polyhedron).as_str(),
             label: None,
             mark: "given",
             group: None,
         });
         let elements = elements.iter().zip(labels);
-        let elements = elements.map(|(element, labelling)| Stereo::of(element, labelling.label()));
+        let elements =
+            elements.map(|(element, labelling)| Stereo::of(molecule, element, labelling.label()));
         self.stereo = Some(elements.chain(metals).collect());
     }
 }
 
 impl Stereo {
-    fn of(element: &StereoElement, label: Option<Label>) -> Self {
+    fn of(molecule: &Molecule, element: &StereoElement, label: Option<Label>) -> Self {
         let [a, b] = element.centres;
         let atoms = if a == b {
             vec![a]
@@ -168,7 +171,7 @@ impl Stereo {
             vec![a.min(b), a.max(b)]
         };
         Self {
-            atoms: from_one(&atoms),
+            atoms: numbers(molecule, &atoms),
             element: Geometry::Element(element.shape).as_str(),
             label: label.map(Label::as_str),
             mark: match element.mark {

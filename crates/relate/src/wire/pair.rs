@@ -1,6 +1,6 @@
 //! One compared pair.
 
-use molkin_graph::{Label, Limits, OrderError, Orderer};
+use molkin_graph::{Label, Limits, Molecule, OrderError, Orderer};
 use serde::Serialize;
 
 use crate::{
@@ -10,7 +10,7 @@ use crate::{
     words,
 };
 
-use super::{Error, Group, Input, Note, Prepared, VERSION, Which, from_one};
+use super::{Error, Group, Input, Note, Prepared, VERSION, Which, numbers};
 
 /// The result for one pair. Either `errors` or the fields from `relation` on are there.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize)]
@@ -231,17 +231,23 @@ impl Pair {
         let mut notes = Vec::new();
         for (which, structure, own) in [(Which::A, a, notes_a), (Which::B, b, notes_b)] {
             let unmarked = unsettled.then(|| remarks::unmarked(structure)).flatten();
-            let own = own.iter().cloned().chain(unmarked.map(Note::of));
+            let own = own
+                .iter()
+                .cloned()
+                .chain(unmarked.map(|noted| Note::of(structure.molecule(), noted)));
             notes.extend(own.map(|note| note.on(which)));
         }
-        let of_pair = remarks::of_pair(a, b, verdict.relation);
-        notes.extend(of_pair.into_iter().map(Note::of));
+        let molecules = [a.molecule(), b.molecule()];
+        // Notes on the pair name no atoms, so that either molecule will do.
+        let of_pair = remarks::of_pair(a, b, verdict.relation).into_iter();
+        notes.extend(of_pair.map(|noted| Note::of(molecules[0], noted)));
         if let Some(explained) = explained {
             for (which, structure) in [(Which::A, a), (Which::B, b)] {
                 let own = unlabelled(structure, which, &explained, limits);
-                notes.extend(own.into_iter().map(|note| Note::of(note).on(which)));
+                let note = |noted| Note::of(structure.molecule(), noted).on(which);
+                notes.extend(own.into_iter().map(note));
             }
-            self.add_explanation(verdict.relation, explained, &mut notes);
+            self.add_explanation(verdict.relation, explained, molecules, &mut notes);
         }
         self.notes = Some(notes);
         Ok(())
@@ -251,34 +257,46 @@ impl Pair {
         &mut self,
         relation: Relation,
         explained: Explanation,
+        [a, b]: [&Molecule; 2],
         notes: &mut Vec<Note>,
     ) {
         if matches!(relation, Relation::Identical | Relation::NotIsomers) {
             return;
         }
         if !explained.stereo_least {
-            notes.push(Note::of(Noted {
+            let noted = Noted {
                 code: "stereo-map-limit",
                 atoms: Vec::new(),
                 text: "There are too many equivalent atom maps to look at all; another may disturb fewer stereo elements.".to_owned(),
-            }));
+            };
+            notes.push(Note::of(a, noted));
         }
         self.atom_map = Some(
             explained
                 .atom_map
                 .iter()
-                .map(|&(a, b)| [a + 1, b + 1])
+                .map(|&(from, to)| [a.number(from), b.number(to)])
                 .collect(),
         );
-        let bond = |&(a, b): &(u32, u32)| [a + 1, b + 1];
+        let bond_in = |molecule: &Molecule, &(first, second): &(u32, u32)| {
+            [first, second].map(|atom| molecule.number(atom))
+        };
         self.bonds = explained.bonds.map(|bonds| Bonds {
             kept: bonds.kept,
-            only_in_a: bonds.only_in_a.iter().map(bond).collect(),
-            only_in_b: bonds.only_in_b.iter().map(bond).collect(),
+            only_in_a: bonds
+                .only_in_a
+                .iter()
+                .map(|bond| bond_in(a, bond))
+                .collect(),
+            only_in_b: bonds
+                .only_in_b
+                .iter()
+                .map(|bond| bond_in(b, bond))
+                .collect(),
             order_changed: bonds
                 .order_changed
                 .iter()
-                .map(|(a, b)| [bond(a), bond(b)])
+                .map(|(old, new)| [bond_in(a, old), bond_in(b, new)])
                 .collect(),
             minimal: bonds.minimal,
             at_least: bonds.at_least,
@@ -288,16 +306,16 @@ impl Pair {
                 .hydrogens
                 .iter()
                 .map(|h| Hydrogens {
-                    a: h.a + 1,
-                    b: h.b + 1,
+                    a: a.number(h.a),
+                    b: b.number(h.b),
                     count_a: h.count_a,
                     count_b: h.count_b,
                 })
                 .collect(),
         );
-        self.branch_points = explained.branching.map(|[a, b]| BranchPoints {
-            a: Branching::of(&a),
-            b: Branching::of(&b),
+        self.branch_points = explained.branching.map(|[in_a, in_b]| BranchPoints {
+            a: Branching::of(a, &in_a),
+            b: Branching::of(b, &in_b),
         });
         if relation != Relation::Constitutional {
             self.stereo = Some(
@@ -305,8 +323,8 @@ impl Pair {
                     .stereo
                     .iter()
                     .map(|difference| StereoEntry {
-                        a: from_one(&difference.a),
-                        b: from_one(&difference.b),
+                        a: numbers(a, &difference.a),
+                        b: numbers(b, &difference.b),
                         element: difference.geometry.as_str(),
                         label_a: difference.labels[0].map(Label::as_str),
                         label_b: difference.labels[1].map(Label::as_str),
@@ -345,13 +363,14 @@ fn unlabelled(
 }
 
 impl Branching {
-    fn of(branching: &DomainBranching) -> Self {
+    fn of(molecule: &Molecule, branching: &DomainBranching) -> Self {
         let points = branching.points.iter().map(|point| BranchPoint {
-            atom: point.atom + 1,
+            atom: molecule.number(point.atom),
             branches: point.branches.clone(),
             ring_bonds: point.ring_bonds,
         });
-        let chains = branching.chains.iter().map(|chain| from_one(chain));
+        let chains = branching.chains.iter();
+        let chains = chains.map(|chain| numbers(molecule, chain));
         Self {
             points: points.collect(),
             chains: chains.collect(),

@@ -5,7 +5,7 @@ use molkin_formats::{
     smiles::{self, Lost},
     source::RecordOutcome,
 };
-use molkin_graph::Orderer;
+use molkin_graph::{Molecule, Orderer};
 
 use crate::{
     Structure,
@@ -85,8 +85,11 @@ impl Prepared {
                 let written = smiles::write(&structure.canonical().form());
                 let own = remarks::of_record(&structure);
                 let lost = lost_in_smiles(&structure, &written.lost);
-                let read = record.notes.iter().map(Note::of_reader);
-                let notes = read.chain(own.into_iter().chain(lost).map(Note::of));
+                let molecule = structure.molecule();
+                let read = record.notes.iter();
+                let read = read.map(|note| Note::of_reader(molecule, note));
+                let ours = own.into_iter().chain(lost);
+                let notes = read.chain(ours.map(|noted| Note::of(molecule, noted)));
                 let notes = notes.collect();
                 input.formula = Some(structure.formula().to_string());
                 input.smiles = Some(written.text);
@@ -132,10 +135,13 @@ fn lost_in_smiles(structure: &Structure, lost: &[Lost]) -> Vec<Noted> {
     }
     // The writer numbers atoms by the canonical form.
     let order: Vec<u32> = structure.canonical().order().collect();
-    lost.iter().map(|lost| noted(lost, &order)).collect()
+    let molecule = structure.molecule();
+    lost.iter()
+        .map(|lost| noted(molecule, lost, &order))
+        .collect()
 }
 
-fn noted(lost: &Lost, order: &[u32]) -> Noted {
+fn noted(molecule: &Molecule, lost: &Lost, order: &[u32]) -> Noted {
     let sources = |places: &[u32]| -> Vec<u32> {
         let atoms = places
             .iter()
@@ -149,7 +155,7 @@ fn noted(lost: &Lost, order: &[u32]) -> Noted {
         code: "smiles-loses-stereo",
         text: format!(
             "SMILES cannot say the arrangement at {}.",
-            atoms_in_words(&atoms)
+            atoms_in_words(molecule, &atoms)
         ),
         atoms,
     };
@@ -160,7 +166,7 @@ fn noted(lost: &Lost, order: &[u32]) -> Noted {
             let atoms = sources(atoms);
             let text = format!(
                 "SMILES has no symbol for the coordination or hydrogen bond between {}.",
-                atoms_in_words(&atoms)
+                atoms_in_words(molecule, &atoms)
             );
             Noted {
                 code: "smiles-loses-bond",

@@ -166,12 +166,70 @@ fn bonds_to_several_atoms(#[case] bond: &str) {
     assert_eq!(bonds, [(0, 2, coordination), (1, 2, coordination)]);
 }
 
+/// Wherever the placeholder stands, all others have the numbers of their lines, in notes and errors
+/// too. Where it is drawn says nothing.
+#[test]
+fn placeholders_before_other_atoms() {
+    let atoms = |valence: &str| {
+        let lines = [
+            "1 C 0 0 0 0",
+            "2 * 0.7 0 9 0",
+            "3 C 1.3 0 0 0",
+            "4 * 0.7 0 9 0",
+            "5 Pt 0.7 1.5 0 0",
+        ];
+        let methane = format!("6 C 9 9 0 0 {valence}");
+        lines.map(str::to_owned).into_iter().chain([methane])
+    };
+    let bonds = [
+        "1 2 1 3",
+        "2 9 4 5 ENDPTS=(2 1 3) ATTACH=ALL",
+        "3 9 5 2 ENDPTS=(1 6) ATTACH=ALL",
+        "4 1 6 5",
+    ];
+    let drawn = |valence: &str, bonds: &[&str]| {
+        let atoms: Vec<String> = atoms(valence).collect();
+        let atoms: Vec<&str> = atoms.iter().map(String::as_str).collect();
+        molfile::parse(draw(&atoms, bonds, "").as_bytes())
+    };
+    let record = drawn("VAL=0", &bonds[..3]).unwrap();
+    let molecule = &record.molecule;
+    assert_eq!(formula(&record), "C3H8Pt");
+    let numbers: Vec<_> = (0..4).map(|atom| molecule.number(atom)).collect();
+    assert_eq!(numbers, [1, 3, 5, 6]);
+    let bonds_of = |record: &Record| {
+        record
+            .molecule
+            .bonds()
+            .map(|(a, b, _)| (a, b))
+            .collect::<Vec<_>>()
+    };
+    assert_eq!(bonds_of(&record), [(0, 1), (0, 2), (1, 2), (3, 2)]);
+    // A flat drawing, though the placeholders are not in its plane.
+    assert!(
+        molecule
+            .drawn_stereo()
+            .iter()
+            .all(|mark| mark.shape == Shape::DoubleBond)
+    );
+
+    let noted = drawn("VAL=4 HCOUNT=2", &bonds[..3]).unwrap();
+    assert_eq!(noted.notes[0].atoms, [3]);
+    assert!(
+        noted.notes[0].text.starts_with("atom 6 "),
+        "{}",
+        noted.notes[0].text
+    );
+    // Bonded once by the list and once more.
+    assert_eq!(drawn("VAL=0", &bonds).unwrap_err().code(), "duplicate-bond");
+}
+
 #[rstest]
 #[case::any_of_them(&["4 * 0 0 0 0"], &["2 9 4 3 ENDPTS=(2 1 2) ATTACH=ANY"], "query")]
 #[case::single(&["4 * 0 0 0 0"], &["2 1 4 3 ENDPTS=(2 1 2) ATTACH=ALL"], "unsupported")]
 #[case::no_attachment(&["4 * 0 0 0 0"], &["2 9 4 3 ENDPTS=(2 1 2)"], "missing-field")]
 #[case::no_placeholder(&["4 C 0 0 0 0"], &["2 9 4 3 ENDPTS=(2 1 2) ATTACH=ALL"], "unsupported")]
-#[case::not_the_last(&["4 * 0 0 0 0", "5 C 0 0 0 0"], &["2 9 4 3 ENDPTS=(2 1 2) ATTACH=ALL"], "unsupported")]
+#[case::bonded_before_others(&["4 * 0 0 0 0", "5 C 0 0 0 0"], &["2 9 4 3 ENDPTS=(2 1 2) ATTACH=ALL", "3 1 5 4"], "unsupported")]
 #[case::bonded(&["4 * 0 0 0 0"], &["2 9 4 3 ENDPTS=(2 1 2) ATTACH=ALL", "3 1 4 1"], "unsupported")]
 #[case::wrong_count(&["4 * 0 0 0 0"], &["2 9 4 3 ENDPTS=(3 1 2) ATTACH=ALL"], "malformed")]
 #[case::no_list(&["4 * 0 0 0 0"], &["2 9 4 3 ENDPTS=1 ATTACH=ALL"], "malformed")]

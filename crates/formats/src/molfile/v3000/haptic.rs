@@ -25,15 +25,15 @@ impl Haptic {
     }
 }
 
-/// Puts a coordination bond to each of the atoms in the place of every such bond and takes the
-/// placeholders out. They must be the last atoms, so that all others keep their numbers.
+/// Puts a coordination bond to each of the atoms in the place of every such bond and lists the
+/// placeholders. They stay among the atoms until there is a molecule, so that all others have the
+/// numbers of their lines in whatever is said about them; where they are drawn says nothing.
 ///
 /// Memory and time follow the lists that were read.
 pub(super) fn expand(drawing: &mut Drawing, bonds: &[Haptic]) -> Result<(), Fault> {
     if bonds.is_empty() {
         return Ok(());
     }
-    let mut left_out = vec![false; drawing.atoms.len()];
     for bond in bonds {
         let [first, second] = bond.ends;
         let (placeholder, metal) = match bond.ends.map(|end| is_placeholder(drawing, end)) {
@@ -41,7 +41,7 @@ pub(super) fn expand(drawing: &mut Drawing, bonds: &[Haptic]) -> Result<(), Faul
             [false, true] => (second, first),
             _ => return Err(bond.unsupported("a bond to several atoms without one placeholder")),
         };
-        left_out[placeholder as usize] = true;
+        drawing.placeholders.push(placeholder);
         for &target in &bond.targets {
             drawing.bonds.push(DrawnBond {
                 span: bond.span,
@@ -51,20 +51,19 @@ pub(super) fn expand(drawing: &mut Drawing, bonds: &[Haptic]) -> Result<(), Faul
             });
         }
     }
-    let kept = left_out
-        .iter()
-        .position(|&out| out)
-        .unwrap_or(left_out.len());
-    if left_out[kept..].contains(&false) {
-        let what = "a placeholder of a bond to several atoms that stands before other atoms";
-        return Err(bonds[0].unsupported(what));
-    }
-    let dangling = |bond: &&DrawnBond| bond.ends.iter().any(|&end| end as usize >= kept);
+    drawing.placeholders.sort_unstable();
+    drawing.placeholders.dedup();
+    let dangling = |bond: &&DrawnBond| {
+        let mut ends = bond.ends.iter();
+        ends.any(|end| drawing.placeholders.binary_search(end).is_ok())
+    };
     if let Some(bond) = drawing.bonds.iter().find(dangling) {
         let what = "a further bond to the placeholder of a bond to several atoms";
         return Err(Fault::new(ReadErrorKind::Unsupported { what }, bond.span));
     }
-    drawing.atoms.truncate(kept);
+    for &placeholder in &drawing.placeholders {
+        drawing.atoms[placeholder as usize].position = [0.0; 3];
+    }
     Ok(())
 }
 

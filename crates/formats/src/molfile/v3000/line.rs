@@ -73,6 +73,21 @@ impl<'a> Entry<'a> {
     /// The bytes between two offsets, for pointing at those of them that are on the first line.
     pub(super) fn field(&self, start: usize, end: usize) -> Field<'_> {
         let bytes = self.text.get(start..end).unwrap_or_default();
+        Field::new(bytes, self.place(start, end))
+    }
+
+    /// The same for bytes that have no blanks round them.
+    pub(super) fn word(&self, start: usize, end: usize) -> Field<'_> {
+        let bytes = self.text.get(start..end).unwrap_or_default();
+        Field::of_word(bytes, self.place(start, end))
+    }
+
+    fn place(&self, start: usize, end: usize) -> Span {
+        // Most entries are one line.
+        if self.more.is_empty() {
+            let column = self.first.indent.saturating_add(start);
+            return Span::at_offset(self.first.line, column, end.saturating_sub(start));
+        }
         let next = self.more.partition_point(|piece| piece.offset <= start);
         let piece = match next.checked_sub(1) {
             Some(last) => self.more.get(last).copied().unwrap_or(self.first),
@@ -86,7 +101,7 @@ impl<'a> Entry<'a> {
             .indent
             .saturating_add(start.saturating_sub(piece.offset));
         let width = stop.saturating_sub(start);
-        Field::new(bytes, Span::at_offset(piece.line, column, width))
+        Span::at_offset(piece.line, column, width)
     }
 
     /// All of it, as far as the first line goes.
@@ -96,6 +111,13 @@ impl<'a> Entry<'a> {
 
     /// The section that the line begins or ends.
     pub(super) fn bracket(&self) -> Result<Option<Bracket<'_>>, Fault> {
+        // Most lines are neither, and their first word is looked at by who reads them.
+        if !matches!(
+            self.text.trim_ascii_start().first(),
+            Some(b'B' | b'E') | None
+        ) {
+            return Ok(None);
+        }
         let mut words = self.words();
         let begins = match words.demand("the content of the line")?.value().text() {
             b"BEGIN" => true,

@@ -10,6 +10,7 @@ use crate::{
 pub(super) struct Word<'e> {
     entry: &'e Entry<'e>,
     key: &'e [u8],
+    value: Field<'e>,
     /// The offsets of the value.
     start: usize,
     end: usize,
@@ -23,7 +24,7 @@ impl<'e> Word<'e> {
 
     /// The value as it is written.
     pub(super) fn value(&self) -> Field<'e> {
-        self.entry.field(self.start, self.end)
+        self.value
     }
 
     /// The numbers of a list `(n v1 … vn)`.
@@ -61,8 +62,8 @@ impl<'e> Iterator for Members<'e> {
 
     fn next(&mut self) -> Option<Field<'e>> {
         let text = self.entry.text().get(..self.end)?;
-        let start = skip(text, self.start, |byte| byte.is_ascii_whitespace());
-        let end = skip(text, start, |byte| !byte.is_ascii_whitespace());
+        let start = skip(text, self.start, is_blank);
+        let end = skip(text, start, |byte| !is_blank(byte));
         self.start = end;
         (start < end).then(|| self.entry.field(start, end))
     }
@@ -72,29 +73,28 @@ impl<'e> Iterator for Members<'e> {
 #[derive(Debug)]
 pub(super) struct Words<'e> {
     entry: &'e Entry<'e>,
+    text: &'e [u8],
     at: usize,
 }
 
 impl<'e> Words<'e> {
     pub(super) fn new(entry: &'e Entry<'e>) -> Self {
-        Self { entry, at: 0 }
+        let text = entry.text();
+        Self { entry, text, at: 0 }
     }
 
     /// The next value by position, which has to be there.
     pub(super) fn demand(&mut self, what: &'static str) -> Result<Word<'e>, Fault> {
-        let missing = ReadErrorKind::MissingField { what };
-        let word = match self.next() {
-            Some(word) => word?,
+        let place = match self.next() {
+            Some(Ok(word)) if word.key.is_empty() => return Ok(word),
+            Some(Ok(word)) => word.value(),
+            Some(Err(fault)) => return Err(fault),
             None => {
                 let end = self.entry.text().len();
-                return Err(self.entry.field(end, end).fault(missing));
+                self.entry.field(end, end)
             }
         };
-        if word.key.is_empty() {
-            Ok(word)
-        } else {
-            Err(word.value().fault(missing))
-        }
+        Err(place.fault(ReadErrorKind::MissingField { what }))
     }
 }
 
@@ -102,18 +102,20 @@ impl<'e> Iterator for Words<'e> {
     type Item = Result<Word<'e>, Fault>;
 
     fn next(&mut self) -> Option<Self::Item> {
-        let text = self.entry.text();
-        let first = skip(text, self.at, |byte| byte.is_ascii_whitespace());
+        let text = self.text;
+        let first = skip(text, self.at, is_blank);
         if first >= text.len() {
             return None;
         }
-        let name = skip(text, first, |byte| {
-            byte.is_ascii_alphanumeric() || byte == b'_'
-        });
-        let (key, start) = if name > first && text.get(name) == Some(&b'=') {
-            (text.get(first..name).unwrap_or_default(), name + 1)
+        // A key starts with a letter; most words are numbers.
+        let key = match text.get(first) {
+            Some(byte) if byte.is_ascii_alphabetic() => key(text, first),
+            _ => &[],
+        };
+        let start = if key.is_empty() {
+            first
         } else {
-            (&text[..0], first)
+            first + key.len() + 1
         };
         let Some(end) = value_end(text, start) else {
             self.at = text.len();
@@ -125,9 +127,21 @@ impl<'e> Iterator for Words<'e> {
         Some(Ok(Word {
             entry: self.entry,
             key,
+            value: self.entry.word(start, end),
             start,
             end,
         }))
+    }
+}
+
+/// The letters, digits and `_` from an offset on, if `=` follows; or else nothing.
+fn key(text: &[u8], first: usize) -> &[u8] {
+    let end = skip(text, first, |byte| {
+        byte.is_ascii_alphanumeric() || byte == b'_'
+    });
+    match text.get(end) {
+        Some(b'=') => text.get(first..end).unwrap_or_default(),
+        _ => &[],
     }
 }
 
@@ -137,7 +151,7 @@ fn value_end(text: &[u8], start: usize) -> Option<usize> {
         Some(b'"') => closing_quote(text, start + 1),
         Some(b'(') => closing_bracket(text, start, b'(', b')'),
         Some(b'[') => closing_bracket(text, start, b'[', b']'),
-        _ => Some(skip(text, start, |byte| !byte.is_ascii_whitespace())),
+        _ => Some(skip(text, start, |byte| !is_blank(byte))),
     }
 }
 
@@ -169,7 +183,16 @@ fn closing_bracket(text: &[u8], start: usize, open: u8, close: u8) -> Option<usi
 
 /// The first offset from `at` on whose byte is of another kind.
 fn skip(text: &[u8], at: usize, kind: impl Fn(u8) -> bool) -> usize {
-    let rest = text.get(at..).unwrap_or_default();
-    let length = rest.iter().position(|&byte| !kind(byte));
-    at + length.unwrap_or(rest.len())
+    let mut rest = text.get(at..).unwrap_or_default();
+    while let [byte, more @ ..] = rest
+        && kind(*byte)
+    {
+        rest = more;
+    }
+    text.len() - rest.len()
+}
+
+/// Whether a byte separates words. One comparison tells for nearly all that don't.
+fn is_blank(byte: u8) -> bool {
+    byte <= b' ' && byte.is_ascii_whitespace()
 }
