@@ -25,6 +25,8 @@ mod fixtures;
 mod golden;
 mod graphs;
 mod hostile;
+mod label_examples;
+mod label_laws;
 mod pages;
 mod relations;
 mod renumbering;
