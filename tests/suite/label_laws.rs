@@ -27,7 +27,10 @@ fn structures(each: usize) -> Vec<String> {
     ];
     for path in files.into_iter().filter_map(shared) {
         let text = read_text(&path);
-        let marked: Vec<&str> = text.lines().filter(|line| line.contains(['@', '/'])).collect();
+        let marked: Vec<&str> = text
+            .lines()
+            .filter(|line| line.contains(['@', '/']))
+            .collect();
         let step = (marked.len() / each).max(1);
         let chosen = marked.into_iter().step_by(step);
         texts.extend(chosen.map(|line| first_word(line).to_owned()));
@@ -73,7 +76,9 @@ fn other_placement(
     }
     let source = |at: u32| form.atoms[at as usize].source;
     let mobile = form.bonds.iter().filter(|bond| bond.order.is_none());
-    let mut edges: Vec<(u32, u32)> = mobile.map(|bond| (source(bond.a), source(bond.b))).collect();
+    let mut edges: Vec<(u32, u32)> = mobile
+        .map(|bond| (source(bond.a), source(bond.b)))
+        .collect();
     numbers.shuffle(&mut edges);
     let mut mates = BTreeMap::new();
     if edges.is_empty() || !place(&edges, &mut mates) {

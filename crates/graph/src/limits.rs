@@ -29,8 +29,9 @@ pub struct Limits {
     pub open_elements: u32,
     /// Steps of the search for the atom map of one pair: 500,000 by default, some 60 ns each.
     pub map_steps: u64,
-    /// Steps of the search for one CIP label, a step being a node made or looked at: 500,000 by
-    /// default, some 20 ns each. An element beyond it has no label and a note says so.
+    /// Steps of the search for the CIP labels of one record, a step being a node made or looked at:
+    /// 4 million by default, which takes about a second. The marked elements share them evenly; one
+    /// that would need more has no label, and a note says so.
     pub label_steps: u64,
     /// Raised from outside to end searches early, as if their limit had been reached.
     pub stop: Option<&'static AtomicBool>,
@@ -45,7 +46,7 @@ impl Default for Limits {
             order_steps: 100_000_000,
             open_elements: 8,
             map_steps: 500_000,
-            label_steps: 500_000,
+            label_steps: 4_000_000,
             stop: None,
         }
     }

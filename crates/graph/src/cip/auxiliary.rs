@@ -25,7 +25,7 @@ pub(super) fn describe(
     digraph: &mut Digraph<'_>,
     nodes: impl Iterator<Item = u32>,
     units: &[Unit],
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<(), Exhausted> {
     let mut sites = sites(digraph, nodes, units);
     sites.sort_by_key(|site| std::cmp::Reverse(digraph.node(site.node).sphere));
@@ -69,7 +69,7 @@ fn label(
     digraph: &mut Digraph<'_>,
     site: &Site,
     units: &[Unit],
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<Option<super::Label>, Exhausted> {
     let unit = &units[site.unit];
     if unit.end_count() == 1 {

@@ -82,7 +82,7 @@ impl<'a> Digraph<'a> {
     pub(super) fn children(
         &mut self,
         node: u32,
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
     ) -> Result<std::ops::Range<u32>, Exhausted> {
         if let Some((first, count)) = self.node(node).children {
             return Ok(first..first + count);
