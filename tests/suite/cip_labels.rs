@@ -60,7 +60,7 @@ fn from_sdf(name: &str) -> Option<Vec<Case>> {
 }
 
 /// Structures whose labels differ from the published ones, with the reason; docs/labels.md says more.
-const SETTLED: [(&str, &str); 2] = [
+const SETTLED: &[(&str, &str)] = &[
     (
         "VS014",
         "a nitro group in one conjugated system with sulfur makes its charge mobile",
@@ -72,14 +72,14 @@ const SETTLED: [(&str, &str); 2] = [
 ];
 
 /// The same for drawings, which mark neither a helix nor a ring bond as an axis.
-const SETTLED_DRAWN: [(&str, &str); 3] = [
+const SETTLED_DRAWN: &[(&str, &str)] = &[
     ("VS010", "a helix"),
     ("VS011", "a helix"),
     ("VS023", "an axis inside a ring"),
 ];
 
 /// The same for structures in space, of which axes are not read.
-const SETTLED_IN_SPACE: [(&str, &str); 6] = [
+const SETTLED_IN_SPACE: &[(&str, &str)] = &[
     ("VS055", "an axis"),
     ("VS057", "an axis"),
     ("VS072", "an axis"),
@@ -89,12 +89,12 @@ const SETTLED_IN_SPACE: [(&str, &str); 6] = [
 ];
 
 #[rstest]
-#[case::smiles("suite as SMILES", from_smiles, &[&SETTLED], 291)]
-#[case::drawn("suite as drawings", || from_sdf("compounds_2d.sdf"), &[&SETTLED, &SETTLED_DRAWN], 300)]
+#[case::smiles("suite as SMILES", from_smiles, &[SETTLED], 291)]
+#[case::drawn("suite as drawings", || from_sdf("compounds_2d.sdf"), &[SETTLED, SETTLED_DRAWN], 300)]
 #[case::in_space(
     "suite in three dimensions",
     || from_sdf("compounds_3d.sdf"),
-    &[&SETTLED, &SETTLED_DRAWN, &SETTLED_IN_SPACE],
+    &[SETTLED, SETTLED_DRAWN, SETTLED_IN_SPACE],
     300
 )]
 fn published_labels(

@@ -4,6 +4,8 @@
 //! that rules 3 to 5 find descriptors farther out. One atom may have other descriptors in other
 //! branches.
 
+use std::collections::HashMap;
+
 use crate::Shape;
 
 use super::{
@@ -49,18 +51,20 @@ pub(super) fn describe(
 }
 
 fn sites(digraph: &Digraph<'_>, nodes: impl Iterator<Item = u32>, units: &[Unit]) -> Vec<Site> {
+    let mut places: HashMap<u32, Vec<(usize, usize)>> = HashMap::new();
+    for (unit, of) in units.iter().enumerate() {
+        for (end, &atom) in of.ends[..of.end_count()].iter().enumerate() {
+            places.entry(atom).or_default().push((unit, end));
+        }
+    }
     let mut sites = Vec::new();
     for node in nodes {
         let here = digraph.node(node);
         if here.kind != Kind::Atom {
             continue;
         }
-        for (unit, of) in units.iter().enumerate() {
-            let ends = &of.ends[..of.end_count()];
-            if let Some(end) = ends.iter().position(|&end| end == here.atom) {
-                sites.push(Site { node, unit, end });
-            }
-        }
+        let found = places.get(&here.atom).into_iter().flatten();
+        sites.extend(found.map(|&(unit, end)| Site { node, unit, end }));
     }
     sites
 }

@@ -77,7 +77,7 @@ impl Ranking {
             let by_number =
                 |entry: &Entry, node: &Node| (entry.rank, u64::from(node.substance.number));
             ranking.sort_sphere(last, digraph, by_number);
-            ranking.carry_inward(last);
+            ranking.carry_inward(last, budget)?;
         }
         Ok(ranking)
     }
@@ -168,7 +168,7 @@ impl Ranking {
         budget.spend(self.sphere(sphere).len())?;
         let by_value = |entry: &Entry, node: &Node| (entry.rank, value(entry, node));
         if self.sort_sphere(sphere, digraph, by_value) {
-            self.carry_inward(sphere);
+            self.carry_inward(sphere, budget)?;
         }
         Ok(())
     }
@@ -310,12 +310,14 @@ impl Ranking {
     }
 
     /// Splits ranks by the ranks of the branches, from the sphere inside the given one to the ligands.
-    fn carry_inward(&mut self, sphere: usize) {
+    fn carry_inward(&mut self, sphere: usize, budget: &mut Budget<'_>) -> Result<(), Exhausted> {
         for inner in (0..sphere).rev() {
+            budget.spend(self.sphere(inner).len())?;
             if !self.split_by_branches(inner) {
                 break;
             }
         }
+        Ok(())
     }
 
     fn split_by_branches(&mut self, sphere: usize) -> bool {
