@@ -1,11 +1,13 @@
-"""Labels of published collections by the reference library: RDKit from the Python package index.
+"""Labels of published collections by the reference library: RDKit 2026.09.1 from the Python package
+index, `rdCIPLabeler`.
 
-    python3 cip_labels.py COLLECTION FIRST LAST > labels.tsv
+    python3 cip_labels.py | gzip -9n > fixtures/labels/digests.tsv.gz
 
-reads records FIRST to LAST (from 1) of `../shared/data/collections/COLLECTION`, of which only those
-with a stereo mark count, and writes a line for each: record number, and the labels as
-`<atom><label>`, sorted, atoms from 1 in input order, both ends of a double bond. `!` stands for a record
-that the library gives up.
+reads the records of `../shared/data/collections` that carry a stereo mark, a fixed part of each
+collection, and writes collection, record (from 1) and a digest of its labels. The labels of a record
+are written as `<atom><label>`, sorted by atom, with single blanks; atoms from 1 in input order, both
+ends of a double bond. With `--labels` they stand in place of the digest. Records that the library gives
+up are left out.
 """
 
 import gzip
@@ -16,6 +18,8 @@ from rdkit import Chem, RDLogger
 from rdkit.Chem import rdCIPLabeler
 
 RDLogger.DisableLog("rdApp.*")
+# Each collection and the last of its records that counts.
+COLLECTIONS = [("chiral", 40_000), ("natural_products", 50_000)]
 # Steps after which the library gives up a record.
 STEPS = 1_250_000
 
@@ -25,13 +29,13 @@ def labels(text):
     options.removeHs = False
     molecule = Chem.MolFromSmiles(text, options)
     if molecule is None:
-        return "!"
+        return None
     for place in [*molecule.GetAtoms(), *molecule.GetBonds()]:
         place.ClearProp("_CIPCode")
     try:
         rdCIPLabeler.AssignCIPLabels(molecule, maxRecursiveIterations=STEPS)
     except RuntimeError:
-        return "!"
+        return None
     found = []
     for atom in molecule.GetAtoms():
         if atom.HasProp("_CIPCode"):
@@ -43,14 +47,26 @@ def labels(text):
     return " ".join(f"{atom}{label}" for atom, label in sorted(found))
 
 
+def digest(text):
+    """FNV-1a, 32 bits, both halves folded into 16."""
+    value = 0x811C9DC5
+    for byte in text.encode():
+        value = (value ^ byte) * 0x01000193 & 0xFFFFFFFF
+    return f"{(value >> 16) ^ (value & 0xFFFF):04x}"
+
+
 def main():
-    collection, first, last = sys.argv[1], int(sys.argv[2]), int(sys.argv[3])
+    shown = (lambda text: text) if "--labels" in sys.argv else digest
+    print("collection", "record", "labels" if "--labels" in sys.argv else "digest", sep="\t")
     here = pathlib.Path(__file__).resolve().parent
-    path = here / "../../../shared/data/collections" / collection
-    with gzip.open(path, "rt") as lines:
-        for number, line in enumerate(lines, start=1):
-            if first <= number <= last and any(mark in line for mark in "@/\\"):
-                print(number, labels(line.split()[0]), sep="\t", flush=True)
+    for collection, last in COLLECTIONS:
+        path = here / "../../../shared/data/collections" / f"{collection}.smi.gz"
+        with gzip.open(path, "rt") as lines:
+            for number, line in zip(range(1, last + 1), lines):
+                if any(mark in line for mark in "@/\\"):
+                    found = labels(line.split()[0])
+                    if found is not None:
+                        print(collection, number, shown(found), sep="\t")
 
 
 main()

@@ -29,6 +29,8 @@ mod graphs_growth;
 mod graphs_plain;
 mod graphs_reference;
 mod hostile;
+mod label_examples;
+mod label_laws;
 mod mirror;
 mod pages;
 mod relations;

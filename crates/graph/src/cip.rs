@@ -13,6 +13,8 @@ mod digraph;
 mod likeness;
 mod ranking;
 mod rules;
+#[cfg(test)]
+mod tests;
 mod units;
 
 use std::fmt;
@@ -132,7 +134,8 @@ impl Canonical {
     /// they leave a choice.
     ///
     /// # Complexity
-    /// The digraph grows as far as ligands are alike; at most [`Limits::label_steps`] for an element.
+    /// The digraph grows as far as ligands are alike; at most
+    /// [`Limits::label_steps`] in all.
     pub fn labels(&self, limits: &Limits) -> Vec<Labelling> {
         let elements = self.stereo_elements();
         if elements.iter().all(|element| element.mark == Mark::Absent) {
@@ -155,7 +158,7 @@ impl Canonical {
 }
 
 fn label(atoms: &Atoms, unit: &Unit, units: &[Unit], limits: &Limits) -> Labelling {
-    let mut budget = Budget::new(limits.label_steps);
+    let mut budget = Budget::share(limits, units.len());
     let roots = unit.ends[..unit.end_count()].iter();
     let mut digraphs: Vec<Digraph<'_>> = roots.map(|&root| Digraph::new(atoms, root)).collect();
     match decision::label(&mut digraphs, unit, units, &mut budget) {

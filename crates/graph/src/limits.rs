@@ -32,8 +32,9 @@ pub struct Limits {
     pub stereo_pieces: u32,
     /// Steps of the search for the atom map of one pair: 500,000 by default, some 60 ns each.
     pub map_steps: u64,
-    /// Steps of the search for one CIP label, a step being a node made or looked at: 500,000 by
-    /// default, some 20 ns each. An element beyond it has no label and a note says so.
+    /// Steps of the search for the CIP labels of one record, a step being a node made or looked at:
+    /// 4 million by default, which takes about a second. The marked elements share them evenly; one
+    /// that would need more has no label, and a note says so.
     pub label_steps: u64,
     /// Raised from outside to end searches early, as if their limit had been reached.
     pub stop: Option<&'static AtomicBool>,
@@ -49,7 +50,7 @@ impl Default for Limits {
             open_elements: 10,
             stereo_pieces: 12,
             map_steps: 500_000,
-            label_steps: 500_000,
+            label_steps: 4_000_000,
             stop: None,
         }
     }

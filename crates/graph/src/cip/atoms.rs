@@ -50,6 +50,8 @@ impl Substance {
 pub(super) struct Arc {
     pub(super) to: u32,
     pub(super) duplicates: u8,
+    /// Whether the bond lies in a ring.
+    pub(super) in_ring: bool,
 }
 
 /// Duplicates that stand for π bonds which are in several places.
@@ -90,6 +92,7 @@ impl Atoms {
             facts: Vec::with_capacity(skeleton.len()),
             arcs: Vec::with_capacity(2 * skeleton.bonds.len()),
         };
+        let bearers = charge_bearers(skeleton, mesomer);
         for (index, record) in (0u32..).zip(&skeleton.atoms) {
             let start = atoms.arcs.len() as u32;
             for &(to, bond) in skeleton.arcs(index) {
@@ -98,7 +101,11 @@ impl Atoms {
                     order @ 2..=4 => order - 1,
                     _ => 0,
                 };
-                atoms.arcs.push(Arc { to, duplicates });
+                atoms.arcs.push(Arc {
+                    to,
+                    duplicates,
+                    in_ring: skeleton.ring[bond as usize],
+                });
             }
             let natural = Substance::new(record.element, None);
             atoms.facts.push(AtomFacts {
@@ -108,7 +115,7 @@ impl Atoms {
                 },
                 natural,
                 arcs: start..atoms.arcs.len() as u32,
-                averaged: averaged(skeleton, mesomer, index),
+                averaged: averaged(skeleton, mesomer, index, bearers[index as usize]),
                 hydrogens: hydrogens(record),
             });
         }
@@ -159,7 +166,12 @@ fn hydrogens(record: &SkeletonAtom) -> [u8; 4] {
 /// P-92.1.4.4: where the double bonds of an atom are in several places, its duplicate has the mean of
 /// the atomic numbers that it would have in each. That the atom bears a charge instead of the double
 /// bond counts as a place with nothing.
-fn averaged(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Averaged> {
+fn averaged(
+    skeleton: &Skeleton,
+    mesomer: &Mesomer,
+    atom: u32,
+    bears_charge: bool,
+) -> Option<Averaged> {
     let arcs = skeleton.arcs(atom).iter();
     let mobile = arcs.filter(|&&(_, bond)| mesomer.orders[bond as usize] == MOBILE);
     let (mut places, mut number, mut mass, mut drawn) = (0u32, 0u32, 0u64, 0u8);
@@ -178,7 +190,7 @@ fn averaged(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Average
     } else {
         drawn
     };
-    let places = places + u32::from(bears_charge(skeleton, mesomer, atom));
+    let places = places + u32::from(bears_charge);
     Some(Averaged {
         count,
         substance: Substance {
@@ -188,31 +200,39 @@ fn averaged(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Average
     })
 }
 
-/// Whether a mobile charge stays at an atom. Of the atoms that it reaches over mobile bonds, a negative
-/// one prefers the most electronegative, a positive one the least.
-fn bears_charge(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> bool {
-    if !mesomer.states[atom as usize].mobile {
-        return false;
-    }
-    let negative = mesomer.states[atom as usize].system.0 < 0;
+/// The atoms at which mobile charges stay. Of the atoms that it reaches over mobile bonds, a negative one
+/// prefers the most electronegative, a positive one the least.
+fn charge_bearers(skeleton: &Skeleton, mesomer: &Mesomer) -> Vec<bool> {
+    let mut bears = vec![false; skeleton.len()];
+    let mut seen = vec![false; skeleton.len()];
+    let is_mobile = |atom: u32| mesomer.states[atom as usize].mobile;
     let preference = |atom: u32| {
         let order = electronegativity(skeleton.atoms[atom as usize].element);
-        if negative { order } else { -order }
+        let (charge, _) = mesomer.states[atom as usize].system;
+        if charge < 0 { order } else { -order }
     };
-    let mut seen = vec![atom];
-    let mut at = 0;
-    while let Some(&here) = seen.get(at) {
-        at += 1;
-        for &(to, bond) in skeleton.arcs(here) {
-            if mesomer.orders[bond as usize] == MOBILE && !seen.contains(&to) {
-                seen.push(to);
+    for start in (0..skeleton.len() as u32).filter(|&atom| is_mobile(atom)) {
+        if std::mem::replace(&mut seen[start as usize], true) {
+            continue;
+        }
+        let mut reached = vec![start];
+        let mut at = 0;
+        while let Some(&here) = reached.get(at) {
+            at += 1;
+            for &(to, bond) in skeleton.arcs(here) {
+                if mesomer.orders[bond as usize] == MOBILE && !seen[to as usize] {
+                    seen[to as usize] = true;
+                    reached.push(to);
+                }
             }
         }
+        reached.retain(|&atom| is_mobile(atom));
+        let most = reached.iter().map(|&atom| preference(atom)).max();
+        for &atom in &reached {
+            bears[atom as usize] = Some(preference(atom)) == most;
+        }
     }
-    let mut bearers = seen
-        .iter()
-        .filter(|&&other| mesomer.states[other as usize].mobile);
-    bearers.all(|&other| preference(other) <= preference(atom))
+    bears
 }
 
 /// The order of electronegativity on Pauling's scale among the elements that bear mobile charges.

@@ -4,6 +4,8 @@
 //! that rules 3 to 5 find descriptors farther out. One atom may have other descriptors in other
 //! branches.
 
+use std::collections::HashMap;
+
 use crate::Shape;
 
 use super::{
@@ -25,7 +27,7 @@ pub(super) fn describe(
     digraph: &mut Digraph<'_>,
     nodes: impl Iterator<Item = u32>,
     units: &[Unit],
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<(), Exhausted> {
     let mut sites = sites(digraph, nodes, units);
     sites.sort_by_key(|site| std::cmp::Reverse(digraph.node(site.node).sphere));
@@ -49,18 +51,20 @@ pub(super) fn describe(
 }
 
 fn sites(digraph: &Digraph<'_>, nodes: impl Iterator<Item = u32>, units: &[Unit]) -> Vec<Site> {
+    let mut places: HashMap<u32, Vec<(usize, usize)>> = HashMap::new();
+    for (unit, of) in units.iter().enumerate() {
+        for (end, &atom) in of.ends[..of.end_count()].iter().enumerate() {
+            places.entry(atom).or_default().push((unit, end));
+        }
+    }
     let mut sites = Vec::new();
     for node in nodes {
         let here = digraph.node(node);
         if here.kind != Kind::Atom {
             continue;
         }
-        for (unit, of) in units.iter().enumerate() {
-            let ends = &of.ends[..of.end_count()];
-            if let Some(end) = ends.iter().position(|&end| end == here.atom) {
-                sites.push(Site { node, unit, end });
-            }
-        }
+        let found = places.get(&here.atom).into_iter().flatten();
+        sites.extend(found.map(|&(unit, end)| Site { node, unit, end }));
     }
     sites
 }
@@ -69,7 +73,7 @@ fn label(
     digraph: &mut Digraph<'_>,
     site: &Site,
     units: &[Unit],
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<Option<super::Label>, Exhausted> {
     let unit = &units[site.unit];
     if unit.end_count() == 1 {

@@ -31,7 +31,7 @@ pub(super) fn label(
     digraphs: &mut [Digraph<'_>],
     unit: &Unit,
     units: &[Unit],
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<Option<Label>, Exhausted> {
     let mut ends = Vec::with_capacity(digraphs.len());
     for (index, digraph) in digraphs.iter_mut().enumerate() {
@@ -58,7 +58,7 @@ pub(super) fn auxiliary_label(
     digraph: &mut Digraph<'_>,
     unit: &Unit,
     nodes: &[(u32, usize)],
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<Option<Label>, Exhausted> {
     let mut ends = Vec::with_capacity(nodes.len());
     for &(node, index) in nodes {
@@ -73,7 +73,7 @@ impl End {
         digraph: &mut Digraph<'_>,
         centre: u32,
         ligands: &[Place],
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
     ) -> Result<Self, Exhausted> {
         let nodes = ligand_nodes(digraph, centre, ligands, budget)?;
         let present = nodes.iter().flatten().copied();
@@ -114,7 +114,7 @@ impl Contest {
         mut self,
         digraphs: &[&Digraph<'_>],
         unit: &Unit,
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
     ) -> Result<Option<Label>, Exhausted> {
         for (end, digraph) in self.ends.iter_mut().zip(digraphs) {
             rules::rank_by_geometry(&mut end.ranking, digraph, budget)?;
@@ -145,7 +145,7 @@ impl Contest {
         &mut self,
         digraphs: &[&Digraph<'_>],
         mirrored: bool,
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
     ) -> Result<Option<bool>, Exhausted> {
         for (end, digraph) in self.ends.iter_mut().zip(digraphs) {
             rules::rank_by_handedness(&mut end.ranking, digraph, mirrored, budget)?;
@@ -158,7 +158,7 @@ impl Contest {
     fn break_symmetry(
         &self,
         digraphs: &[&Digraph<'_>],
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
     ) -> Result<Option<bool>, Exhausted> {
         let tied = self.ends.iter().zip(digraphs).find_map(|(end, digraph)| {
             let class = end.ranking.tied_ligands().into_iter().next()?;

@@ -82,14 +82,14 @@ impl<'a> Digraph<'a> {
     pub(super) fn children(
         &mut self,
         node: u32,
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
     ) -> Result<std::ops::Range<u32>, Exhausted> {
         if let Some((first, count)) = self.node(node).children {
             return Ok(first..first + count);
         }
         let first = self.nodes.len() as u32;
         if self.node(node).kind == Kind::Atom {
-            self.expand(node);
+            self.expand(node, budget)?;
         }
         let count = self.nodes.len() as u32 - first;
         budget.spend(count as usize)?;
@@ -97,8 +97,13 @@ impl<'a> Digraph<'a> {
         Ok(first..first + count)
     }
 
-    fn expand(&mut self, node: u32) {
-        let Node { atom, parent, .. } = *self.node(node);
+    fn expand(&mut self, node: u32, budget: &mut Budget<'_>) -> Result<(), Exhausted> {
+        let Node {
+            atom,
+            parent,
+            sphere,
+            ..
+        } = *self.node(node);
         let from = match parent {
             NONE => NONE,
             parent => self.node(parent).atom,
@@ -107,7 +112,11 @@ impl<'a> Digraph<'a> {
         for index in atoms.arcs(atom) {
             let arc = atoms.arc(index);
             if arc.to != from {
-                if self.is_on_path(arc.to, node) {
+                // Only over ring bonds can a path meet itself. Eight links of it are about one step.
+                if arc.in_ring {
+                    budget.spend(sphere as usize / 8)?;
+                }
+                if arc.in_ring && self.is_on_path(arc.to, node) {
                     self.push(Kind::RingClosure, arc.to, node, atoms.duplicate(arc.to));
                 } else {
                     self.push(Kind::Atom, arc.to, node, atoms.substance(arc.to));
@@ -129,6 +138,7 @@ impl<'a> Digraph<'a> {
                 self.push(Kind::Hydrogen(mass), NONE, node, substance);
             }
         }
+        Ok(())
     }
 
     fn push(&mut self, kind: Kind, atom: u32, parent: u32, substance: Substance) {

@@ -19,7 +19,7 @@ type Reference = bool;
 pub(super) fn rank(
     ranking: &mut Ranking,
     digraph: &Digraph<'_>,
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<(), Exhausted> {
     if !ranking.is_tied() {
         return Ok(());
@@ -66,7 +66,7 @@ fn sequence(
     digraph: &Digraph<'_>,
     ligand: u32,
     reference: Reference,
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<Vec<u64>, Exhausted> {
     let mut own = ranking.clone();
     own.refine_throughout(digraph, budget, |entry, node| {

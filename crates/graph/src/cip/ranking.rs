@@ -51,7 +51,7 @@ impl Ranking {
         digraph: &mut Digraph<'_>,
         centre: u32,
         ligands: impl Iterator<Item = u32>,
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
     ) -> Result<Self, Exhausted> {
         let entries: Vec<Entry> = (0u32..)
             .zip(ligands)
@@ -77,7 +77,7 @@ impl Ranking {
             let by_number =
                 |entry: &Entry, node: &Node| (entry.rank, u64::from(node.substance.number));
             ranking.sort_sphere(last, digraph, by_number);
-            ranking.carry_inward(last);
+            ranking.carry_inward(last, budget)?;
         }
         Ok(ranking)
     }
@@ -85,6 +85,10 @@ impl Ranking {
     /// The number of ligands.
     pub(super) fn ligand_count(&self) -> usize {
         self.sphere(0).len()
+    }
+
+    fn ligands(&self) -> Range<u32> {
+        0..self.ligand_count() as u32
     }
 
     /// The rank of a ligand; higher comes first.
@@ -99,10 +103,7 @@ impl Ranking {
 
     /// Whether two ligands have equal rank.
     pub(super) fn is_tied(&self) -> bool {
-        let ligands = self.sphere(0);
-        ligands
-            .clone()
-            .any(|ligand| self.is_ligand_tied(ligand as u32))
+        self.ligands().any(|ligand| self.is_ligand_tied(ligand))
     }
 
     /// The ligands of equal rank, highest first.
@@ -118,9 +119,7 @@ impl Ranking {
     /// Whether another ligand has the same rank.
     fn is_ligand_tied(&self, ligand: u32) -> bool {
         let rank = self.rank(ligand);
-        let others = self.sphere(0).map(|other| other as u32);
-        others
-            .into_iter()
+        self.ligands()
             .any(|other| other != ligand && self.rank(other) == rank)
     }
 
@@ -136,7 +135,7 @@ impl Ranking {
     pub(super) fn refine(
         &mut self,
         digraph: &Digraph<'_>,
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
         value: impl Fn(&Entry, &Node) -> u64,
     ) -> Result<(), Exhausted> {
         for sphere in 0..self.spheres.len() {
@@ -152,7 +151,7 @@ impl Ranking {
     pub(super) fn refine_throughout(
         &mut self,
         digraph: &Digraph<'_>,
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
         value: impl Fn(&Entry, &Node) -> u64,
     ) -> Result<(), Exhausted> {
         (0..self.spheres.len())
@@ -163,13 +162,13 @@ impl Ranking {
         &mut self,
         sphere: usize,
         digraph: &Digraph<'_>,
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
         value: impl Fn(&Entry, &Node) -> u64,
     ) -> Result<(), Exhausted> {
         budget.spend(self.sphere(sphere).len())?;
         let by_value = |entry: &Entry, node: &Node| (entry.rank, value(entry, node));
         if self.sort_sphere(sphere, digraph, by_value) {
-            self.carry_inward(sphere);
+            self.carry_inward(sphere, budget)?;
         }
         Ok(())
     }
@@ -235,7 +234,11 @@ impl Ranking {
     }
 
     /// Adds a sphere below the tied ligands; `false` when there is nothing farther out.
-    fn grow(&mut self, digraph: &mut Digraph<'_>, budget: &mut Budget) -> Result<bool, Exhausted> {
+    fn grow(
+        &mut self,
+        digraph: &mut Digraph<'_>,
+        budget: &mut Budget<'_>,
+    ) -> Result<bool, Exhausted> {
         let last = self.sphere(self.spheres.len() - 1);
         let start = self.entries.len();
         for index in last {
@@ -307,12 +310,14 @@ impl Ranking {
     }
 
     /// Splits ranks by the ranks of the branches, from the sphere inside the given one to the ligands.
-    fn carry_inward(&mut self, sphere: usize) {
+    fn carry_inward(&mut self, sphere: usize, budget: &mut Budget<'_>) -> Result<(), Exhausted> {
         for inner in (0..sphere).rev() {
+            budget.spend(self.sphere(inner).len())?;
             if !self.split_by_branches(inner) {
                 break;
             }
         }
+        Ok(())
     }
 
     fn split_by_branches(&mut self, sphere: usize) -> bool {

@@ -15,7 +15,7 @@ use super::{
 pub(super) fn rank_by_constitution(
     ranking: &mut Ranking,
     digraph: &Digraph<'_>,
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<(), Exhausted> {
     ranking.refine(digraph, budget, |_, node| nearness(node))?;
     ranking.refine(digraph, budget, |_, node| node.substance.mass)
@@ -25,7 +25,7 @@ pub(super) fn rank_by_constitution(
 pub(super) fn rank_by_geometry(
     ranking: &mut Ranking,
     digraph: &Digraph<'_>,
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<(), Exhausted> {
     ranking.refine(digraph, budget, |_, node| cis_before_trans(node))?;
     ranking.refine(digraph, budget, |_, node| {
@@ -40,7 +40,7 @@ pub(super) fn rank_by_handedness(
     ranking: &mut Ranking,
     digraph: &Digraph<'_>,
     mirrored: bool,
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<(), Exhausted> {
     ranking.refine(digraph, budget, |_, node| {
         node.handedness()
@@ -53,7 +53,7 @@ pub(super) fn rank_by_reference(
     ranking: &mut Ranking,
     digraph: &Digraph<'_>,
     reference: u32,
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<(), Exhausted> {
     ranking.refine(digraph, budget, |_, node| {
         u64::from(node.atom == reference && node.kind != Kind::MultipleBond)

@@ -72,7 +72,7 @@ impl Unit {
         digraph: &mut Digraph<'_>,
         near: u32,
         end: usize,
-        budget: &mut Budget,
+        budget: &mut Budget<'_>,
     ) -> Result<Option<u32>, Exhausted> {
         let far = self.ends[1 - end];
         let forward = self.chain.iter().copied().chain([far]);
@@ -101,7 +101,7 @@ pub(super) fn ligand_nodes(
     digraph: &mut Digraph<'_>,
     centre: u32,
     ligands: &[Place],
-    budget: &mut Budget,
+    budget: &mut Budget<'_>,
 ) -> Result<Vec<Option<u32>>, Exhausted> {
     let children = digraph.children(centre, budget)?;
     let parent = digraph.node(centre).parent;
