@@ -16,7 +16,7 @@ use thiserror::Error;
 use crate::{
     Key, Limits, Molecule,
     claims::{self, Claims, Solver, Variable},
-    key,
+    key::{Digester, Named},
     mesomer::{self, Mesomer},
     order::{Coloured, Labeller, Labelling, Unit},
     skeleton::Skeleton,
@@ -99,6 +99,7 @@ pub struct Orderer {
     mesomer: mesomer::Scratch,
     stereo: stereo::Scratch,
     form: form::Scratch,
+    digester: Digester,
 }
 
 /// The canonical view of one molecule.
@@ -229,8 +230,9 @@ impl Orderer {
         } else {
             solver.solve_groups(bare, groups, claims, written)?;
         }
-        let constitution = key::digest(&view.constitution.certificate);
-        view.constitution_key = Key::of(0, std::iter::once(constitution));
+        let digester = &mut self.digester;
+        let constitution = digester.digest(&view.constitution.certificate);
+        view.constitution_key = Key::of(Named::Constitution, std::iter::once(constitution));
         let certificates = view.claims.certificates.iter();
         // Most records have neither isotopes nor stereo: one certificate serves both keys.
         let digests = certificates.map(|certificate| {
@@ -238,10 +240,10 @@ impl Orderer {
             if known {
                 constitution
             } else {
-                key::digest(certificate)
+                digester.digest(certificate)
             }
         });
-        view.compound_key = Key::of(1, digests);
+        view.compound_key = Key::of(Named::Compound, digests);
         Ok(())
     }
 

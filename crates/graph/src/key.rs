@@ -11,31 +11,82 @@ pub const KEY_VERSION: u8 = 1;
 /// The digest of one certificate.
 pub(crate) type Digest = [u8; 32];
 
-/// The SHA-256 digest of a certificate.
-pub(crate) fn digest(certificate: &[u64]) -> Digest {
-    let mut bytes = Vec::with_capacity(8 * certificate.len());
-    bytes.extend(certificate.iter().flat_map(|word| word.to_le_bytes()));
-    Sha256::digest(&bytes).into()
+/// What a digest is of, so that one thing never has the digest of the other.
+const CERTIFICATE: u8 = 0;
+const LIST: u8 = 1;
+
+/// Makes digests; owns the scratch.
+#[derive(Debug, Default)]
+pub(crate) struct Digester {
+    bytes: Vec<u8>,
 }
 
-/// A 128-bit key: the first half of a SHA-256 digest (FIPS 180-4) of the key version and the digests
-/// of canonical certificates.
+impl Digester {
+    /// The SHA-256 digest of a certificate.
+    pub(crate) fn digest(&mut self, certificate: &[u64]) -> Digest {
+        self.bytes.clear();
+        self.bytes.extend([KEY_VERSION, CERTIFICATE]);
+        pack(certificate, &mut self.bytes);
+        Sha256::digest(&self.bytes).into()
+    }
+}
+
+/// Writes words in few bytes, as hashing costs by the byte: of each word those bytes in which it
+/// differs from the word before, after a byte that says which these are. Different lists of words
+/// give different bytes.
+fn pack(words: &[u64], bytes: &mut Vec<u8>) {
+    let mut before = 0;
+    for &word in words {
+        let mut change = word ^ before;
+        let head = bytes.len();
+        let mut places = 0;
+        bytes.push(0);
+        while change != 0 {
+            let place = change.trailing_zeros() / 8;
+            places |= 1 << place;
+            bytes.push((change >> (8 * place)) as u8);
+            change &= !(0xff << (8 * place));
+        }
+        bytes[head] = places;
+        before = word;
+    }
+}
+
+/// What a key names; each takes its own half of a digest.
+#[derive(Debug, Clone, Copy)]
+pub(crate) enum Named {
+    Constitution,
+    Compound,
+}
+
+/// A 128-bit key: half of a SHA-256 digest (FIPS 180-4) of the key version and a canonical
+/// certificate, the first half for constitutions and the second for compounds. Where a compound is a
+/// list of certificates, it is a half of the digest of their digests.
 ///
 /// Written as the version, a hyphen and 32 hexadecimal digits.
 #[derive(Debug, Clone, Copy, Default, PartialEq, Eq, PartialOrd, Ord, Hash)]
 pub struct Key([u8; 16]);
 
 impl Key {
-    /// The key of a list of certificates. `domain` keeps keys of different kinds apart.
-    pub(crate) fn of(domain: u8, certificates: impl Iterator<Item = Digest>) -> Self {
-        let mut hash = Sha256::new();
-        hash.update([KEY_VERSION, domain]);
-        for digest in certificates {
-            hash.update(digest);
+    /// The key of a list of certificates, one or more, by their digests.
+    pub(crate) fn of(named: Named, mut digests: impl Iterator<Item = Digest>) -> Self {
+        let first = digests.next().unwrap_or_default();
+        let mut digest = first;
+        if let Some(second) = digests.next() {
+            let mut hash = Sha256::new();
+            hash.update([KEY_VERSION, LIST]);
+            [first, second]
+                .iter()
+                .for_each(|digest| hash.update(digest));
+            digests.for_each(|digest| hash.update(digest));
+            digest = hash.finalize().into();
         }
-        let digest = hash.finalize();
+        let half = match named {
+            Named::Constitution => 0..16,
+            Named::Compound => 16..32,
+        };
         let mut key = [0; 16];
-        key.copy_from_slice(&digest[..16]);
+        key.copy_from_slice(&digest[half]);
         Self(key)
     }
 
@@ -49,5 +100,48 @@ impl fmt::Display for Key {
     fn fmt(&self, out: &mut fmt::Formatter<'_>) -> fmt::Result {
         write!(out, "{KEY_VERSION}-")?;
         self.0.iter().try_for_each(|byte| write!(out, "{byte:02x}"))
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+
+    use super::pack;
+
+    fn packed(words: &[u64]) -> Vec<u8> {
+        let mut bytes = Vec::new();
+        pack(words, &mut bytes);
+        bytes
+    }
+
+    /// Reads what `pack` wrote; that it can be read is what keeps different words apart.
+    fn unpacked(bytes: &[u8]) -> Vec<u64> {
+        let mut bytes = bytes.iter().copied();
+        let mut before = 0;
+        let mut words = Vec::new();
+        while let Some(places) = bytes.next() {
+            for place in (0..8).filter(|place| places >> place & 1 == 1) {
+                before ^= u64::from(bytes.next().unwrap()) << (8 * place);
+            }
+            words.push(before);
+        }
+        words
+    }
+
+    #[test]
+    fn equal_words_take_one_byte() {
+        assert_eq!(packed(&[0x0102, 0x0102, u64::MAX]).len(), 3 + 1 + 9);
+        assert_eq!(packed(&[0, 0]), [0, 0]);
+    }
+
+    proptest! {
+        #[test]
+        fn packed_words_can_be_read(words in proptest::collection::vec(
+            prop_oneof![any::<u64>(), 0..1_000_u64, any::<u64>().prop_map(|word| word << 32)],
+            0..40,
+        )) {
+            prop_assert_eq!(unpacked(&packed(&words)), words);
+        }
     }
 }
