@@ -90,8 +90,15 @@ impl Refiner {
             self.splitter.clear();
             self.splitter.extend_from_slice(partition.members(start));
             watch.note(start.into());
-            self.touch::<W>(graph, partition);
-            self.split_touched(partition, watch);
+            self.keyed.clear();
+            let alone = if let [only] = self.splitter[..] {
+                self.key_neighbours::<W>(graph, partition, only)
+            } else {
+                self.touch::<W>(graph, partition);
+                self.key_touched(partition)
+            };
+            watch.note(alone);
+            self.split_keyed(partition, watch);
             if !watch.goes_on() {
                 return false;
             }
@@ -124,23 +131,54 @@ impl Refiner {
         }
     }
 
-    /// Splits all cells that have touched vertices by the keys of these, in an invariant order.
-    fn split_touched(&mut self, partition: &mut Partition, watch: &mut impl Watch) -> bool {
+    /// Lists the open neighbours of a vertex by cell and class. Returns a word on the others.
+    fn key_neighbours<W: Watch>(
+        &mut self,
+        graph: &Coloured,
+        partition: &Partition,
+        vertex: u32,
+    ) -> u64 {
+        let arcs = graph.arcs(vertex);
+        self.work += arcs.len() as u64;
         let mut alone = 0u64;
-        let mut keyed = std::mem::take(&mut self.keyed);
-        keyed.clear();
+        for &(to, class) in arcs {
+            let key = 1 << (COUNT_BITS * u32::from(class));
+            let cell = partition.cell[to as usize];
+            if partition.len[cell as usize] > 1 {
+                self.keyed.push(Keyed::new(cell, key, to));
+            } else if W::LISTENS {
+                alone = alone.wrapping_add(mix(key, cell.into()));
+            }
+        }
+        alone
+    }
+
+    /// Lists the open vertices that were touched by cell and key. Returns a word on the others.
+    fn key_touched(&mut self, partition: &Partition) -> u64 {
+        let mut alone = 0u64;
         for &vertex in &self.touched {
             let key = std::mem::take(&mut self.key[vertex as usize]);
             let cell = partition.cell[vertex as usize];
             if partition.len[cell as usize] > 1 {
-                keyed.push(Keyed::new(cell, key, vertex));
+                self.keyed.push(Keyed::new(cell, key, vertex));
             } else {
                 // Only a sum does not depend on the order of the list.
                 alone = alone.wrapping_add(mix(key, cell.into()));
             }
         }
         self.touched.clear();
-        watch.note(alone);
+        alone
+    }
+
+    /// Splits all cells that have touched vertices by the keys of these, in an invariant order.
+    fn split_touched(&mut self, partition: &mut Partition, watch: &mut impl Watch) -> bool {
+        self.keyed.clear();
+        watch.note(self.key_touched(partition));
+        self.split_keyed(partition, watch)
+    }
+
+    fn split_keyed(&mut self, partition: &mut Partition, watch: &mut impl Watch) -> bool {
+        let mut keyed = std::mem::take(&mut self.keyed);
         if keyed.len() > 1 {
             keyed.sort_unstable();
         }
