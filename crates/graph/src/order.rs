@@ -92,8 +92,8 @@ impl Labeller {
         let outcome = self.level.order(graph, &mut work);
         *steps = work.steps;
         outcome?;
-        labelling.order.clone_from(&self.level.order);
-        labelling.generators.clone_from(&self.level.generators);
+        std::mem::swap(&mut labelling.order, &mut self.level.order);
+        std::mem::swap(&mut labelling.generators, &mut self.level.generators);
         labelling.certificate.clear();
         write_certificate(
             graph,

@@ -17,6 +17,10 @@ use super::{
 };
 use crate::OrderError;
 
+/// Parts of parts are ordered on their own down to here; below, all that is open is searched at once.
+/// Sizes at least halve where like parts are told apart, so this is for the sake of the stack alone.
+pub(super) const MOST_NESTED: u32 = 64;
+
 /// All scratch of one level of nesting, and its answer.
 #[derive(Debug, Default, Clone)]
 pub(super) struct Level {
@@ -40,6 +44,8 @@ pub(super) struct Level {
     /// The part that is ordered at the deeper level.
     part: Coloured,
     deeper: Option<Box<Level>>,
+    /// How many levels lie above.
+    pub(super) nested: u32,
 }
 
 impl Level {
@@ -75,11 +81,21 @@ impl Level {
         }
         self.parts.find(graph, &self.partition);
         work.spend(&mut self.parts.work)?;
-        if self.parts.parts.len() == 1 && self.parts.vertices.len() == graph.len() {
+        if self.is_whole() && self.parts.vertices.len() == graph.len() || self.is_last() {
             self.search(graph, work)
         } else {
             self.arrange(graph, work, true)
         }
+    }
+
+    /// Whether the open vertices are one part.
+    pub(super) fn is_whole(&self) -> bool {
+        self.parts.parts.len() == 1
+    }
+
+    /// Whether parts are not ordered on their own.
+    pub(super) fn is_last(&self) -> bool {
+        self.nested == MOST_NESTED
     }
 
     /// Orders the parts found and sorts them: vertices of a cell follow each other by part, and
@@ -141,6 +157,7 @@ impl Level {
         } = self;
         own.load_part(graph, &self.partition, &self.parts, part, local);
         let deeper = self.deeper.get_or_insert_default();
+        deeper.nested = self.nested + 1;
         deeper.order_equitable(own, work)?;
         let vertices = &mut self.parts.vertices[self.parts.parts[part as usize].range()];
         if generators {

@@ -1,5 +1,27 @@
 //! An ordered partition of vertices and its equitable refinement.
 
+/// A vertex with its cell and a key, in one word that sorts by cell, then key.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
+pub(super) struct Keyed(u128);
+
+impl Keyed {
+    pub(super) fn new(cell: u32, key: u64, vertex: u32) -> Self {
+        Self(u128::from(cell) << 96 | u128::from(key) << 32 | u128::from(vertex))
+    }
+
+    pub(super) fn cell(self) -> u32 {
+        (self.0 >> 96) as u32
+    }
+
+    pub(super) fn key(self) -> u64 {
+        (self.0 >> 32) as u64
+    }
+
+    pub(super) fn vertex(self) -> u32 {
+        self.0 as u32
+    }
+}
+
 /// An ordered partition: `lab` lists the vertices cell by cell. Cells are named by where they start.
 #[derive(Debug, Default, Clone)]
 pub(crate) struct Partition {
@@ -124,43 +146,47 @@ impl Partition {
         }
     }
 
-    /// Splits a cell by keys: `keyed` lists cell, key and number of those of its vertices whose key
-    /// is not zero, ascending. Vertices with key zero stay in front. Costs only what `keyed` is long.
-    /// Calls `fragment` with start, size and key of each part in order, if there is more than one.
+    /// Splits a cell by keys: `keyed` lists those of its vertices whose key is not zero, ascending.
+    /// Vertices with key zero stay in front. Costs only what `keyed` is long. Calls `fragment` with
+    /// start, size and key of each part in order, if there is more than one.
     pub(super) fn split(
         &mut self,
         cell: u32,
-        keyed: &[(u32, u64, u32)],
+        keyed: &[Keyed],
         mut fragment: impl FnMut(u32, u32, u64),
     ) -> bool {
         let size = self.len[cell as usize];
         let rest = size - keyed.len() as u32;
-        let one_key = keyed.first().map(|entry| entry.1) == keyed.last().map(|entry| entry.1);
+        let one_key = keyed.first().map(|k| k.key()) == keyed.last().map(|k| k.key());
         if keyed.is_empty() || (rest == 0 && one_key) {
             return false;
-        }
-        for (at, &(_, _, vertex)) in (cell + rest..).zip(keyed) {
-            // Later vertices of the list are still where they were, so nothing placed is moved.
-            self.exchange(self.pos[vertex as usize], at);
         }
         if rest > 0 {
             self.len[cell as usize] = rest;
             fragment(cell, rest, 0);
         }
-        let mut at = cell + rest;
         let logged = self.log.len();
-        for group in keyed.chunk_by(|a, b| a.1 == b.1) {
-            let length = group.len() as u32;
-            self.len[at as usize] = length;
-            for &(_, _, vertex) in group {
-                self.cell[vertex as usize] = at;
+        let mut start = cell + rest;
+        let mut from = 0;
+        while let Some(first) = keyed.get(from) {
+            let key = first.key();
+            let mut end = from;
+            while let Some(next) = keyed.get(end).filter(|next| next.key() == key) {
+                // Later vertices of the list are still where they were, so nothing placed is moved.
+                let at = cell + rest + end as u32;
+                self.exchange(self.pos[next.vertex() as usize], at);
+                self.cell[next.vertex() as usize] = start;
+                end += 1;
             }
-            if at > cell {
+            let length = (end - from) as u32;
+            self.len[start as usize] = length;
+            if start > cell {
                 self.cells += 1;
-                self.log.push((cell, at));
+                self.log.push((cell, start));
             }
-            fragment(at, length, group[0].1);
-            at += length;
+            fragment(start, length, key);
+            start += length;
+            from = end;
         }
         // Undone from the back, parts have to join the cell from its near end onwards.
         self.log[logged..].reverse();

@@ -15,6 +15,14 @@ pub enum GraphError {
         /// The edge, from 0.
         index: usize,
     },
+    /// Two edges join the same vertices.
+    #[error("vertices {a} and {b} (from 0) are joined twice")]
+    Repeated {
+        /// One vertex.
+        a: u32,
+        /// The other.
+        b: u32,
+    },
     /// A limit was reached.
     #[error(transparent)]
     Order(#[from] OrderError),
@@ -37,6 +45,8 @@ pub struct GraphOrderer {
     labeller: Labeller,
     graph: Coloured,
     labelling: Labelling,
+    /// Per vertex: the last one found to be joined to it.
+    joined: Vec<u32>,
 }
 
 /// The canonical order of a graph.
@@ -81,6 +91,9 @@ impl GraphOrderer {
         }
         self.graph
             .load(colours.iter().copied(), edges.iter().copied());
+        if let Some((a, b)) = self.repeated() {
+            return Err(GraphError::Repeated { a, b });
+        }
         let mut steps = 0;
         self.labeller
             .label(&self.graph, &self.limits, &mut steps, &mut self.labelling)?;
@@ -91,9 +104,43 @@ impl GraphOrderer {
         })
     }
 
+    fn repeated(&mut self) -> Option<(u32, u32)> {
+        self.joined.clear();
+        self.joined.resize(self.graph.len(), u32::MAX);
+        for vertex in 0..self.graph.len() as u32 {
+            for &(to, _) in self.graph.arcs(vertex) {
+                if std::mem::replace(&mut self.joined[to as usize], vertex) == vertex {
+                    return Some((vertex, to));
+                }
+            }
+        }
+        None
+    }
+
     /// Generators of the automorphism group of the graph ordered last: each lists the vertices that
     /// it moves, ascending, with their images.
     pub fn generators(&self) -> impl ExactSizeIterator<Item = &[(u32, u32)]> {
         self.labelling.generators.iter().map(|g| g.moved())
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn edges_that_cannot_be() {
+        let mut orderer = GraphOrderer::default();
+        let mut outcome =
+            |edges: &[_]| orderer.order(&[0; 3], edges).map(|order| order.order.len());
+        assert_eq!(
+            outcome(&[(0, 1, 0), (1, 1, 0)]),
+            Err(GraphError::Edge { index: 1 })
+        );
+        assert_eq!(outcome(&[(0, 3, 0)]), Err(GraphError::Edge { index: 0 }));
+        assert_eq!(outcome(&[(0, 1, 7)]), Err(GraphError::Edge { index: 0 }));
+        let repeated = outcome(&[(0, 1, 0), (2, 1, 0), (1, 0, 1)]);
+        assert_eq!(repeated, Err(GraphError::Repeated { a: 0, b: 1 }));
+        assert_eq!(outcome(&[(0, 1, 6)]), Ok(3));
     }
 }

@@ -2,7 +2,7 @@
 
 use super::{
     coloured::{COUNT_BITS, Coloured, ranked_parity},
-    partition::Partition,
+    partition::{Keyed, Partition},
     trace::{Watch, mix},
 };
 
@@ -15,8 +15,8 @@ pub(super) struct Refiner {
     queued: Vec<bool>,
     key: Vec<u64>,
     touched: Vec<u32>,
-    /// Cell, key and number of each touched vertex that shares its cell.
-    keyed: Vec<(u32, u64, u32)>,
+    /// The touched vertices that share their cells.
+    keyed: Vec<Keyed>,
     parts: Vec<(u32, u32)>,
     splitter: Vec<u32>,
     /// Centres of units: what the unit is, the cell of the other centre, the centre.
@@ -75,11 +75,11 @@ impl Refiner {
         }
     }
 
-    fn equitable(
+    fn equitable<W: Watch>(
         &mut self,
         graph: &Coloured,
         partition: &mut Partition,
-        watch: &mut impl Watch,
+        watch: &mut W,
     ) -> bool {
         while let Some(&start) = self.queue.get(self.front) {
             self.front += 1;
@@ -90,8 +90,15 @@ impl Refiner {
             self.splitter.clear();
             self.splitter.extend_from_slice(partition.members(start));
             watch.note(start.into());
-            self.touch(graph);
-            self.split_touched(partition, watch);
+            self.keyed.clear();
+            let alone = if let [only] = self.splitter[..] {
+                self.key_neighbours::<W>(graph, partition, only)
+            } else {
+                self.touch::<W>(graph, partition);
+                self.key_touched(partition)
+            };
+            watch.note(alone);
+            self.split_keyed(partition, watch);
             if !watch.goes_on() {
                 return false;
             }
@@ -105,12 +112,16 @@ impl Refiner {
         true
     }
 
-    /// Counts, for each vertex next to the splitter, its edges into it by class.
-    fn touch(&mut self, graph: &Coloured) {
+    /// Counts, for each vertex next to the splitter, its edges into it by class. Vertices in cells of
+    /// their own matter only to one who listens.
+    fn touch<W: Watch>(&mut self, graph: &Coloured, partition: &Partition) {
         for &from in &self.splitter {
             let arcs = graph.arcs(from);
             self.work += arcs.len() as u64;
             for &(to, class) in arcs {
+                if !W::LISTENS && !partition.is_open(to) {
+                    continue;
+                }
                 let key = &mut self.key[to as usize];
                 if *key == 0 {
                     self.touched.push(to);
@@ -120,27 +131,65 @@ impl Refiner {
         }
     }
 
-    /// Splits all cells that have touched vertices by the keys of these, in an invariant order.
-    fn split_touched(&mut self, partition: &mut Partition, watch: &mut impl Watch) -> bool {
-        self.keyed.clear();
+    /// Lists the open neighbours of a vertex by cell and class. Returns a word on the others.
+    fn key_neighbours<W: Watch>(
+        &mut self,
+        graph: &Coloured,
+        partition: &Partition,
+        vertex: u32,
+    ) -> u64 {
+        let arcs = graph.arcs(vertex);
+        self.work += arcs.len() as u64;
+        let mut alone = 0u64;
+        for &(to, class) in arcs {
+            let key = 1 << (COUNT_BITS * u32::from(class));
+            let cell = partition.cell[to as usize];
+            if partition.len[cell as usize] > 1 {
+                self.keyed.push(Keyed::new(cell, key, to));
+            } else if W::LISTENS {
+                alone = alone.wrapping_add(mix(key, cell.into()));
+            }
+        }
+        alone
+    }
+
+    /// Lists the open vertices that were touched by cell and key. Returns a word on the others.
+    fn key_touched(&mut self, partition: &Partition) -> u64 {
         let mut alone = 0u64;
         for &vertex in &self.touched {
             let key = std::mem::take(&mut self.key[vertex as usize]);
             let cell = partition.cell[vertex as usize];
             if partition.len[cell as usize] > 1 {
-                self.keyed.push((cell, key, vertex));
+                self.keyed.push(Keyed::new(cell, key, vertex));
             } else {
                 // Only a sum does not depend on the order of the list.
                 alone = alone.wrapping_add(mix(key, cell.into()));
             }
         }
         self.touched.clear();
-        watch.note(alone);
-        self.keyed.sort_unstable();
-        let keyed = std::mem::take(&mut self.keyed);
+        alone
+    }
+
+    /// Splits all cells that have touched vertices by the keys of these, in an invariant order.
+    fn split_touched(&mut self, partition: &mut Partition, watch: &mut impl Watch) -> bool {
+        self.keyed.clear();
+        watch.note(self.key_touched(partition));
+        self.split_keyed(partition, watch)
+    }
+
+    fn split_keyed(&mut self, partition: &mut Partition, watch: &mut impl Watch) -> bool {
+        let mut keyed = std::mem::take(&mut self.keyed);
+        if keyed.len() > 1 {
+            keyed.sort_unstable();
+        }
         let mut split = false;
-        for group in keyed.chunk_by(|a, b| a.0 == b.0) {
-            split |= self.split_cell(group, partition, watch);
+        let mut from = 0;
+        while let Some(first) = keyed.get(from) {
+            let cell = first.cell();
+            let rest = &keyed[from..];
+            let count = rest.iter().take_while(|entry| entry.cell() == cell).count();
+            split |= self.split_cell(cell, &rest[..count], partition, watch);
+            from += count;
         }
         self.keyed = keyed;
         split
@@ -150,21 +199,22 @@ impl Refiner {
     /// all but the first of the largest (Hopcroft 1971).
     fn split_cell(
         &mut self,
-        group: &[(u32, u64, u32)],
+        cell: u32,
+        group: &[Keyed],
         partition: &mut Partition,
         watch: &mut impl Watch,
     ) -> bool {
-        let (cell, key, _) = group[0];
         self.parts.clear();
         let parts = &mut self.parts;
         let split = partition.split(cell, group, |start, size, key| {
-            watch.note(key);
-            watch.note(u64::from(start) << 32 | u64::from(size));
+            watch.note(mix(key, u64::from(start) << 32 | u64::from(size)));
             parts.push((size, start));
         });
         if !split {
-            watch.note(key);
-            watch.note(u64::from(cell) << 32 | group.len() as u64);
+            watch.note(mix(
+                group[0].key(),
+                u64::from(cell) << 32 | group.len() as u64,
+            ));
             return false;
         }
         let waiting = self.queued[cell as usize];

@@ -159,7 +159,7 @@ impl Tree {
 }
 
 impl Level {
-    /// Orders a graph in one part, all of whose vertices are open, by search.
+    /// Orders a graph that does not fall apart by search.
     pub(super) fn search(
         &mut self,
         graph: &Coloured,
@@ -223,16 +223,15 @@ impl Level {
         }
         self.parts.find(graph, &self.partition);
         work.spend(&mut self.parts.work)?;
-        let parts = self.parts.parts.len();
-        tree.trace.note(parts as u64);
-        match (tree.trace.goes_on(), parts) {
-            (false, _) => Ok(()),
-            (true, 1) => {
-                self.open_node(work);
-                Ok(())
-            }
-            (true, _) => self.leaf(graph, work),
+        tree.trace.note(self.parts.parts.len() as u64);
+        if !tree.trace.goes_on() {
+            return Ok(());
         }
+        if self.is_whole() || (self.is_last() && !self.partition.is_discrete()) {
+            self.open_node(work);
+            return Ok(());
+        }
+        self.leaf(graph, work)
     }
 
     fn leaf(&mut self, graph: &Coloured, work: &mut Work<'_>) -> Result<(), OrderError> {

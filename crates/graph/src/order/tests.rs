@@ -84,6 +84,13 @@ impl Sketch {
         label(&self.graph(), &mut Labeller::default())
     }
 
+    /// The labelling without parts.
+    fn label_in_one(&self) -> Labelling {
+        let mut labeller = Labeller::default();
+        labeller.level.nested = level::MOST_NESTED;
+        label(&self.graph(), &mut labeller)
+    }
+
     /// The certificate that an order gives.
     fn written(&self, order: &[u32]) -> Vec<u64> {
         let (mut pos, mut words) = (Vec::new(), Vec::new());
@@ -223,6 +230,9 @@ fn small_graphs_with_units_against_all_permutations() {
         let kept = all[vertices as usize].iter().filter(keeps).count();
         assert_eq!(group_order(&own.generators, vertices), kept, "{sketch:?}");
         symmetric += usize::from(kept > 1);
+        let in_one = [&sketch, &copy].map(Sketch::label_in_one);
+        assert_eq!(in_one[0].certificate, in_one[1].certificate, "{sketch:?}");
+        assert_eq!(group_order(&in_one[0].generators, vertices), kept);
 
         let mut other = sketch.clone();
         for unit in &mut other.units {

@@ -4,6 +4,9 @@ use std::cmp::Ordering;
 
 /// Is told what a refinement does, and may end it.
 pub(super) trait Watch {
+    /// Whether anything is done with what is noted.
+    const LISTENS: bool;
+
     /// Takes note of a word.
     fn note(&mut self, word: u64);
 
@@ -16,6 +19,8 @@ pub(super) trait Watch {
 pub(super) struct Unwatched;
 
 impl Watch for Unwatched {
+    const LISTENS: bool = false;
+
     fn note(&mut self, _: u64) {}
 
     fn goes_on(&mut self) -> bool {
@@ -63,11 +68,13 @@ impl Standing {
 /// One step of a hash that is invariant because its inputs come in an invariant order.
 pub(super) fn mix(state: u64, word: u64) -> u64 {
     let product = u128::from(state ^ word.wrapping_mul(0x9e37_79b9_7f4a_7c15))
-        .wrapping_mul(0xd6e8_feb8_6659_fd93_a076_1d64_78bd_642f);
+        * u128::from(0xd6e8_feb8_6659_fd93u64);
     (product >> 64) as u64 ^ product as u64
 }
 
 impl Watch for Trace {
+    const LISTENS: bool = true;
+
     fn note(&mut self, word: u64) {
         self.state = mix(self.state, word);
     }
