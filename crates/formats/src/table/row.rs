@@ -49,11 +49,26 @@ impl Row {
         Some((field, &self.values[field.value.clone()]))
     }
 
+    /// Makes the places in the lines count from a place in them.
+    pub(super) fn rebase(&mut self, start: usize) {
+        for field in &mut self.fields {
+            field.raw = field.raw.start - start..field.raw.end - start;
+            field.line_start -= start;
+        }
+    }
+
     /// Bytes of memory set aside.
     #[cfg(test)]
     pub(super) fn capacity(&self) -> usize {
         self.values.capacity() + self.fields.capacity() * size_of::<Field>()
     }
+}
+
+/// The line on which a field begins, among the lines in which it stands.
+pub(super) fn line_of<'l>(lines: &'l [u8], field: &Field) -> &'l [u8] {
+    let line = &lines[field.line_start..];
+    let end = line.iter().position(|&byte| byte == b'\n');
+    &line[..end.unwrap_or(line.len())]
 }
 
 impl Field {

@@ -7,7 +7,8 @@ use molkin_graph::Limits;
 
 use super::{
     Delimiter, header,
-    row::{Field, Row},
+    raw::RawRow,
+    row::{self, Field, Row},
 };
 use crate::{
     ReadError, ReadErrorKind, Span,
@@ -273,10 +274,17 @@ impl<R> Rows<R> {
     }
 
     /// The line on which a field begins.
-    pub(super) fn line_of(&self, field: &Field) -> &[u8] {
-        let line = &self.held[field.line_start..];
-        let end = line.iter().position(|&byte| byte == b'\n');
-        &line[..end.unwrap_or(line.len())]
+    fn line_of(&self, field: &Field) -> &[u8] {
+        row::line_of(&self.held, field)
+    }
+
+    /// Exchanges the row read last, and its lines, for the storage of one that is done with.
+    pub(super) fn hand_over(&mut self, raw: &mut RawRow) {
+        raw.raw.begin(self.row.first_line);
+        let lines = &self.held[self.start..self.next];
+        raw.raw.text.extend_from_slice(lines);
+        std::mem::swap(&mut self.row, &mut raw.row);
+        raw.row.rebase(self.start);
     }
 }
 
