@@ -72,11 +72,13 @@ pub(crate) fn is_standard(argument: &OsStr) -> bool {
     Meaning::of(argument) == Meaning::Standard
 }
 
-/// The length of the file that the argument means, where it is known.
+/// The length of the file that the argument means, where it is known; 0 where there is no file.
 pub(crate) fn length(argument: &OsStr) -> Option<u64> {
     match Meaning::of(argument) {
         Meaning::KnownFile(path) | Meaning::AnyFile(path) => {
-            let metadata = fs::metadata(path).ok()?;
+            let Ok(metadata) = fs::metadata(path) else {
+                return Some(0);
+            };
             metadata.is_file().then_some(metadata.len())
         }
         Meaning::Standard => None,

@@ -93,7 +93,7 @@ impl<R: BufRead> Lines<R> {
             if chunk.is_empty() && taken == 0 {
                 return Ok((length > 0).then_some(length));
             }
-            let end = chunk.iter().position(|&byte| matches!(byte, b'\n' | b'\r'));
+            let end = line_end(chunk);
             let line = &chunk[..end.unwrap_or(chunk.len())];
             length = length.saturating_add(line.len());
             let room = most - self.buffer.len();
@@ -107,6 +107,28 @@ impl<R: BufRead> Lines<R> {
             self.source.consume(taken);
         }
     }
+}
+
+/// Where the first line end stands. Eight bytes are looked at together: a word has a byte of zeros
+/// exactly if taking one from each byte sets a high bit that was not set (H. S. Warren, Hacker's
+/// Delight, section 6-1).
+fn line_end(text: &[u8]) -> Option<usize> {
+    const ONES: u64 = u64::MAX / 255;
+    let has = |word: u64, byte: u8| {
+        let zeros = word ^ (ONES * u64::from(byte));
+        zeros.wrapping_sub(ONES) & !zeros & (ONES << 7) != 0
+    };
+    let (words, _) = text.as_chunks::<8>();
+    let found = words.iter().position(|&bytes| {
+        let word = u64::from_le_bytes(bytes);
+        has(word, b'\n') || has(word, b'\r')
+    });
+    let start = 8 * found.unwrap_or(words.len());
+    let rest = text[start..].iter();
+    let place = rest
+        .copied()
+        .position(|byte| matches!(byte, b'\n' | b'\r'))?;
+    Some(start + place)
 }
 
 #[cfg(test)]
@@ -165,6 +187,24 @@ mod tests {
         let lines = collect(b"\xEF\xBB\xBFabcd", 3, chunk);
         assert_eq!(lines, [("abc".to_owned(), false)]);
         assert_eq!(collect(b"\xEF\xBB\xBF", 3, chunk), [(String::new(), true)]);
+    }
+
+    /// Every length up to three words, every byte at every place, among bytes that are nearly line ends.
+    #[test]
+    fn the_first_line_end_is_found() {
+        for length in 0..24 {
+            for place in 0..length {
+                for byte in 0..=u8::MAX {
+                    for around in [0, 0x09, 0x0b, 0x0c, 0x0e, 0x8a, 0x8d, 0xff] {
+                        let mut text = vec![around; length];
+                        text[place] = byte;
+                        let expected = matches!(byte, 0x0a | 0x0d).then_some(place);
+                        assert_eq!(line_end(&text), expected, "{text:?}");
+                    }
+                }
+            }
+        }
+        assert_eq!(line_end(b"12345678\r234567\n"), Some(8));
     }
 
     #[test]

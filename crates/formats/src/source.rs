@@ -212,10 +212,10 @@ impl<'s> Records<'s> {
         let cut = match &mut self.reader {
             Reader::Smiles(records) => records
                 .cut(&mut text)
-                .map(|is| is.then(|| Cut::Smiles(text))),
+                .map(|is| is.then_some(Cut::Smiles(text))),
             Reader::Sdf(records) => records
                 .cut(&mut text)
-                .map(|is| is.then(|| Cut::Molfile(text))),
+                .map(|is| is.then_some(Cut::Molfile(text))),
             #[cfg(feature = "table")]
             Reader::Table(records) => records.cut().map(|row| row.map(Cut::Row)),
             Reader::Refused(error) => return error.take().map(Err),

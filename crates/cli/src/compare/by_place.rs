@@ -48,12 +48,12 @@ fn one_against_many(
     };
     let names = ordered([one.name(), many.name()], swapped).map(str::to_owned);
     let verdicts = comparison.verdicts(names.each_ref().map(String::as_str));
-    let ready = verdicts.scratch().ready(one.name(), Side::Raw(record));
+    let ready = verdicts.scratch().ready(one.name(), Side::raw(record));
     let progress = comparison.report.progress().clone();
     let pairs = std::iter::from_fn(|| {
         let record = many.next()?;
         progress.reach(one.bytes_taken() + many.bytes_taken());
-        Some(ordered([Side::Ready(&ready), Side::Raw(record)], swapped))
+        Some(ordered([Side::Ready(&ready), Side::raw(record)], swapped))
     });
     comparison.pairs(&verdicts, pairs)?;
     comparison.broke_off(&many).map(|_| ())
@@ -71,7 +71,7 @@ fn in_step(comparison: &mut Comparison<'_>, mut a: Input, mut b: Input) -> io::R
     let pairs = std::iter::from_fn(|| {
         progress.reach(a.bytes_taken() + b.bytes_taken());
         match (a.next(), b.next()) {
-            (Some(left), Some(right)) => Some([Side::Raw(left), Side::Raw(right)]),
+            (Some(left), Some(right)) => Some([Side::raw(left), Side::raw(right)]),
             ends => {
                 last = ends;
                 None

@@ -22,11 +22,17 @@ use super::tally::Outcome;
 /// One side of a pair, worked up as far as it had to be.
 pub(super) enum Side<'p> {
     /// Not parsed.
-    Raw(RawRecord),
+    Raw(Box<RawRecord>),
     /// Parsed.
     Read(Box<RecordOutcome>),
     /// Ready, for many pairs.
     Ready(&'p Prepared),
+}
+
+impl Side<'_> {
+    pub(super) fn raw(record: RawRecord) -> Self {
+        Self::Raw(Box::new(record))
+    }
 }
 
 /// What came of a pair.
@@ -58,7 +64,7 @@ impl Scratch {
         let outcome = match side {
             Side::Ready(prepared) => return Cow::Borrowed(prepared),
             Side::Read(outcome) => *outcome,
-            Side::Raw(raw) => self.parser.parse(raw),
+            Side::Raw(raw) => self.parser.parse(*raw),
         };
         Cow::Owned(Prepared::new(&mut self.orderer, source, outcome))
     }
