@@ -1,6 +1,6 @@
 //! What may be typed.
 
-use std::ffi::OsString;
+use std::{ffi::OsString, num::NonZeroUsize, thread};
 
 use clap::{Args, Parser, Subcommand, ValueEnum};
 
@@ -62,6 +62,8 @@ pub(crate) struct Compare {
     #[arg(long, value_enum, default_value_t = Format::Text)]
     pub(crate) format: Format,
     #[command(flatten)]
+    pub(crate) working: Working,
+    #[command(flatten)]
     pub(crate) reading: Reading,
 }
 
@@ -78,7 +80,26 @@ pub(crate) struct Keys {
     #[arg(long, value_enum, default_value_t = TableFormat::Csv)]
     pub(crate) format: TableFormat,
     #[command(flatten)]
+    pub(crate) working: Working,
+    #[command(flatten)]
     pub(crate) reading: Reading,
+}
+
+/// How the work is done.
+#[derive(Debug, Args)]
+pub(crate) struct Working {
+    /// Threads that work; the output does not depend on it (default: one for each core)
+    #[arg(long, value_name = "N")]
+    threads: Option<NonZeroUsize>,
+}
+
+impl Working {
+    /// Threads that work.
+    pub(crate) fn threads(&self) -> NonZeroUsize {
+        self.threads
+            .or_else(|| thread::available_parallelism().ok())
+            .unwrap_or(NonZeroUsize::MIN)
+    }
 }
 
 /// How inputs are read.
@@ -132,6 +153,8 @@ pub(crate) struct Describe {
     /// Form of the output
     #[arg(long, value_enum, default_value_t = Format::Text)]
     pub(crate) format: Format,
+    #[command(flatten)]
+    pub(crate) working: Working,
     #[command(flatten)]
     pub(crate) reading: Reading,
 }

@@ -3,25 +3,29 @@
 mod by_name;
 mod by_place;
 mod tally;
+mod verdicts;
 
 use std::{
     ffi::OsStr,
     io::{self, Write},
+    num::NonZeroUsize,
 };
 
-use molkin_formats::source::{ReadOptions, RecordOutcome};
-use molkin_graph::{Limits, Orderer};
-use molkin_relate::wire::{self, Pair, Prepared};
+use molkin_formats::source::ReadOptions;
+use molkin_graph::Limits;
+use molkin_relate::parallel::{Plan, in_order};
 
 use crate::{
     args::{Compare, Format, PairBy},
-    exit::Status,
     input::{self, Input},
-    output::{CAUTION, json::Objects, text},
+    output::{CAUTION, json::Objects},
     report::Report,
 };
 
-use tally::Tally;
+use self::{
+    tally::Tally,
+    verdicts::{Side, Verdicts},
+};
 
 /// Compares two inputs.
 pub(crate) fn run(options: &Compare, report: &mut Report) -> io::Result<()> {
@@ -36,7 +40,9 @@ pub(crate) fn run(options: &Compare, report: &mut Report) -> io::Result<()> {
     let (Some(a), Some(b)) = opened else {
         return Ok(());
     };
-    let mut comparison = Comparison::new(options, report);
+    let lengths = [&options.a, &options.b].map(|argument| input::length(argument));
+    report.progress().expect(lengths.into_iter().sum());
+    let mut comparison = Comparison::new(options, &reading, report);
     match options.by {
         None => by_place::compare(&mut comparison, a, b)?,
         Some(PairBy::Name) => by_name::compare(&mut comparison, a, b)?,
@@ -54,50 +60,72 @@ fn open(argument: &OsStr, reading: &ReadOptions, report: &mut Report) -> io::Res
 /// A comparison under way.
 struct Comparison<'r> {
     report: &'r mut Report,
-    orderer: Orderer,
+    reading: &'r ReadOptions,
     limits: Limits,
     brief: bool,
     format: Format,
+    threads: NonZeroUsize,
     objects: Objects,
     tally: Tally,
 }
 
 impl<'r> Comparison<'r> {
-    fn new(options: &Compare, report: &'r mut Report) -> Self {
+    fn new(options: &Compare, reading: &'r ReadOptions, report: &'r mut Report) -> Self {
         let mut limits = Limits::default();
         if let Some(steps) = options.steps {
             limits.map_steps = steps;
         }
         Self {
             report,
-            orderer: Orderer::new(limits),
+            reading,
             limits,
             brief: options.brief,
             format: options.format,
+            threads: options.working.threads(),
             objects: Objects::new(options.format),
             tally: Tally::default(),
         }
     }
 
-    /// Makes a record ready.
-    fn prepare(&mut self, source: &str, outcome: RecordOutcome) -> Prepared {
-        Prepared::new(&mut self.orderer, source, outcome)
+    /// What turns pairs of records from these sources into results.
+    fn verdicts<'v>(&self, sources: [&'v str; 2]) -> Verdicts<'v>
+    where
+        'r: 'v,
+    {
+        Verdicts {
+            sources,
+            reading: self.reading,
+            limits: self.limits,
+            brief: self.brief,
+            format: self.format,
+            style: self.report.style(),
+        }
     }
 
-    /// Compares two records and writes the result.
-    fn pair(&mut self, sides: [&Prepared; 2]) -> io::Result<()> {
-        let pair = wire::compare(&mut self.orderer, &self.limits, sides, self.brief);
-        self.tally.add(&pair);
-        self.report.count(status(&pair));
-        match self.format {
-            Format::Text => {
-                let style = self.report.style();
-                let out = self.report.out();
-                text::pair::write(out, style, &pair, sides)?;
-                writeln!(out)
-            }
-            Format::Json | Format::Jsonl => self.objects.write(self.report.out(), &pair),
-        }
+    /// Compares pairs and writes the results, in order.
+    fn pairs<'v>(
+        &mut self,
+        verdicts: &Verdicts<'v>,
+        pairs: impl Iterator<Item = [Side<'v>; 2]>,
+    ) -> io::Result<()> {
+        // An atom map may take thousands of times as long as a pair without one.
+        let chunk = if self.brief { 32 } else { 1 };
+        let plan = Plan {
+            threads: self.threads,
+            chunk: NonZeroUsize::new(chunk).unwrap_or(NonZeroUsize::MIN),
+        };
+        let Self {
+            report,
+            objects,
+            tally,
+            ..
+        } = self;
+        in_order(verdicts, plan, pairs, |verdict| {
+            tally.add(verdict.outcome);
+            report.count(verdict.outcome.status());
+            report.progress().done();
+            objects.write(report.out(), &verdict.text?)
+        })
     }
 
     /// Says why an input broke off, if it did; whether it did.
@@ -132,13 +160,5 @@ impl<'r> Comparison<'r> {
             report.say(CAUTION)?;
         }
         Ok(())
-    }
-}
-
-fn status(pair: &Pair) -> Status {
-    match pair.relation {
-        Some("identical") => Status::Same,
-        Some(_) => Status::Different,
-        None => Status::Trouble,
     }
 }

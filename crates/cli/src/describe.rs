@@ -2,34 +2,81 @@
 
 use std::io;
 
+use molkin_formats::source::{Parser, RawRecord, ReadOptions};
 use molkin_graph::{Limits, Orderer};
-use molkin_relate::wire::{self, Prepared};
+use molkin_relate::{
+    parallel::Work,
+    wire::{self, Prepared},
+};
 
 use crate::{
     args::{Describe, Format},
     input,
-    output::{json::Objects, text},
+    output::{Style, json, text},
+    records::{self, Event, Inputs, Written},
     report::Report,
 };
 
 /// Describes every record of every input, in order.
 pub(crate) fn run(options: &Describe, report: &mut Report) -> io::Result<()> {
-    let limits = Limits::default();
-    let mut orderer = Orderer::new(limits);
-    let mut objects = Objects::new(options.format);
+    let mut objects = json::Objects::new(options.format);
     let reading = input::read_options(&options.reading);
-    let inputs = &options.inputs;
-    input::each_record(inputs, &reading, report, |report, source, outcome| {
-        let prepared = Prepared::new(&mut orderer, source, outcome);
-        let described = wire::describe(&prepared, &limits);
-        match options.format {
-            Format::Text => {
-                let style = report.style();
-                text::describe::write(report.out(), style, &described, &prepared)?;
-            }
-            Format::Json | Format::Jsonl => objects.write(report.out(), &described)?,
-        }
-        Ok(described.errors.is_none())
+    let inputs = Inputs::new(&options.inputs, &reading);
+    let work = Descriptions {
+        reading: &reading,
+        format: options.format,
+        style: report.style(),
+    };
+    records::each(&work, inputs, &options.working, report, |report, object| {
+        objects.write(report.out(), object)
     })?;
     objects.finish(report.out())
+}
+
+/// From records to descriptions.
+struct Descriptions<'r> {
+    reading: &'r ReadOptions,
+    format: Format,
+    style: Style,
+}
+
+impl Descriptions<'_> {
+    fn text(&self, described: &wire::Describe, prepared: &Prepared) -> io::Result<Vec<u8>> {
+        let mut text = Vec::new();
+        match self.format {
+            Format::Text => text::describe::write(&mut text, self.style, described, prepared)?,
+            Format::Json | Format::Jsonl => serde_json::to_writer(&mut text, described)?,
+        }
+        Ok(text)
+    }
+}
+
+impl Work for Descriptions<'_> {
+    type Item = Event<RawRecord>;
+    type Output = Event<Written>;
+    type Scratch = (Parser, Orderer);
+
+    fn scratch(&self) -> (Parser, Orderer) {
+        let orderer = Orderer::new(Limits::default());
+        (Parser::new(self.reading), orderer)
+    }
+
+    fn run(
+        &self,
+        (parser, orderer): &mut (Parser, Orderer),
+        event: Event<RawRecord>,
+    ) -> Event<Written> {
+        event.map(|source, raw| {
+            let prepared = Prepared::new(orderer, source, parser.parse(raw));
+            let described = wire::describe(&prepared, &Limits::default());
+            Written {
+                text: self.text(&described, &prepared),
+                fine: described.errors.is_none(),
+            }
+        })
+    }
+
+    fn bytes(event: &Event<RawRecord>) -> usize {
+        event.bytes()
+    }
 }

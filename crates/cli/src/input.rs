@@ -2,7 +2,8 @@
 
 use std::{
     collections::VecDeque,
-    ffi::{OsStr, OsString},
+    ffi::OsStr,
+    fs,
     io::{self, BufRead, BufReader, Cursor, Read},
     path::Path,
 };
@@ -10,14 +11,11 @@ use std::{
 use molkin_formats::{
     molfile::{self, ValenceTable},
     smiles,
-    source::{Format, ReadOptions, RecordOutcome, Records, SourceError},
+    source::{Format, RawRecord, ReadOptions, Records, SourceError},
 };
 use thiserror::Error;
 
-use crate::{
-    args::{FlagZero, Reading, Valences},
-    report::Report,
-};
+use crate::args::{FlagZero, Reading, Valences};
 
 /// What an argument means.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -75,6 +73,20 @@ pub(crate) fn is_standard(argument: &OsStr) -> bool {
     Meaning::of(argument) == Meaning::Standard
 }
 
+/// The length of the file that the argument means, where it is known; 0 where there is no file.
+pub(crate) fn length(argument: &OsStr) -> Option<u64> {
+    match Meaning::of(argument) {
+        Meaning::KnownFile(path) | Meaning::AnyFile(path) => {
+            let Ok(metadata) = fs::metadata(path) else {
+                return Some(0);
+            };
+            metadata.is_file().then_some(metadata.len())
+        }
+        Meaning::Standard => None,
+        Meaning::Smiles(_) => Some(0),
+    }
+}
+
 /// Why an input cannot be opened.
 #[derive(Debug, Error)]
 pub(crate) enum OpenError {
@@ -89,13 +101,14 @@ pub(crate) enum OpenError {
     },
 }
 
-/// The records of one input. One record is in memory at a time, those looked at ahead aside.
+/// The records of one input, not parsed yet. They are read as they are asked for, those looked at
+/// ahead aside.
 ///
 /// An input that breaks off ends there; [`Input::failure`] then says why.
 pub(crate) struct Input {
     name: String,
     records: Records<'static>,
-    ahead: VecDeque<RecordOutcome>,
+    ahead: VecDeque<RawRecord>,
     failure: Option<SourceError>,
     ended: bool,
 }
@@ -127,6 +140,11 @@ impl Input {
         &self.name
     }
 
+    /// Bytes of the file that have been taken; see [`length`].
+    pub(crate) fn bytes_taken(&self) -> u64 {
+        self.records.bytes_taken()
+    }
+
     /// Why the input broke off, once it has.
     pub(crate) fn failure(&self) -> Option<&SourceError> {
         self.failure.as_ref()
@@ -135,19 +153,19 @@ impl Input {
     /// How many records are still to come, if fewer than `most`; otherwise `most`.
     pub(crate) fn look_ahead(&mut self, most: usize) -> usize {
         while self.ahead.len() < most
-            && let Some(outcome) = self.read()
+            && let Some(record) = self.read()
         {
-            self.ahead.push_back(outcome);
+            self.ahead.push_back(record);
         }
         self.ahead.len().min(most)
     }
 
-    fn read(&mut self) -> Option<RecordOutcome> {
+    fn read(&mut self) -> Option<RawRecord> {
         if self.ended {
             return None;
         }
-        match self.records.next() {
-            Some(Ok(outcome)) => return Some(outcome),
+        match self.records.cut() {
+            Some(Ok(record)) => return Some(record),
             Some(Err(failure)) => self.failure = Some(failure),
             None => {}
         }
@@ -157,9 +175,9 @@ impl Input {
 }
 
 impl Iterator for Input {
-    type Item = RecordOutcome;
+    type Item = RawRecord;
 
-    fn next(&mut self) -> Option<RecordOutcome> {
+    fn next(&mut self) -> Option<RawRecord> {
         self.ahead.pop_front().or_else(|| self.read())
     }
 }
@@ -196,46 +214,6 @@ fn standard(options: ReadOptions) -> Result<Records<'static>, SourceError> {
     let format = Format::guess(&start);
     let stream = Cursor::new(start).chain(stream);
     Ok(Records::new("-", stream, format, options))
-}
-
-/// Hands each record of each input to `work`, which says whether it went well. Inputs that cannot be
-/// opened or that break off are reported, and the next one is read. Ends with the count of records
-/// that failed.
-pub(crate) fn each_record(
-    arguments: &[OsString],
-    options: &ReadOptions,
-    report: &mut Report,
-    mut work: impl FnMut(&mut Report, &str, RecordOutcome) -> io::Result<bool>,
-) -> io::Result<()> {
-    let (mut records, mut failed) = (0_u64, 0_u64);
-    let mut standard_taken = false;
-    for argument in arguments {
-        if is_standard(argument) && std::mem::replace(&mut standard_taken, true) {
-            report.trouble("standard input (-) can be read only once")?;
-            continue;
-        }
-        let mut input = match Input::open(argument, options.clone()) {
-            Ok(input) => input,
-            Err(error) => {
-                report.trouble(error)?;
-                continue;
-            }
-        };
-        let name = input.name().to_owned();
-        for outcome in input.by_ref() {
-            records += 1;
-            if !work(report, &name, outcome)? {
-                failed += 1;
-            }
-        }
-        if let Some(failure) = input.failure() {
-            report.trouble(failure)?;
-        }
-    }
-    if failed > 0 {
-        report.trouble(format_args!("{failed} of {records} records failed"))?;
-    }
-    Ok(())
 }
 
 #[cfg(test)]

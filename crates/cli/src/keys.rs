@@ -1,32 +1,68 @@
 //! `molkin keys`.
 
-use std::io;
+use std::io::{self, Write};
 
-use molkin_graph::{Limits, Orderer};
-use molkin_relate::wire;
+use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
+use molkin_graph::Limits;
+use molkin_relate::{parallel::Work, wire::KeyRows};
 
 use crate::{
     args::{Keys, TableFormat},
-    exit::Status,
     input,
     output::csv::Table,
+    records::{self, Event, Inputs, Written},
     report::Report,
 };
 
 /// Writes one row for every record of every input, in order.
 pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
     let TableFormat::Csv = options.format;
-    let mut table = Table::default();
-    let mut orderer = Orderer::new(Limits::default());
-    table.header(report.out())?;
+    report.out().write_all(&Table::default().header()?)?;
     let reading = input::read_options(&options.reading);
-    let inputs = &options.inputs;
-    input::each_record(inputs, &reading, report, |report, source, outcome| {
-        let row = wire::key_row(&mut orderer, source, outcome);
-        if row.status != "ok" {
-            report.count(Status::Trouble);
-        }
-        table.row(report.out(), &row)?;
-        Ok(row.status == "ok")
+    let inputs = Inputs::new(&options.inputs, &reading);
+    let work = Rows { reading: &reading };
+    records::each(&work, inputs, &options.working, report, |report, row| {
+        report.out().write_all(row)
     })
+}
+
+/// From records to rows.
+struct Rows<'r> {
+    reading: &'r ReadOptions,
+}
+
+struct Scratch {
+    parser: Parser,
+    outcome: RecordOutcome,
+    rows: KeyRows,
+    table: Table,
+}
+
+impl Work for Rows<'_> {
+    type Item = Event<RawRecord>;
+    type Output = Event<Written>;
+    type Scratch = Scratch;
+
+    fn scratch(&self) -> Scratch {
+        Scratch {
+            parser: Parser::new(self.reading),
+            outcome: RecordOutcome::default(),
+            rows: KeyRows::new(Limits::default()),
+            table: Table::default(),
+        }
+    }
+
+    fn run(&self, scratch: &mut Scratch, event: Event<RawRecord>) -> Event<Written> {
+        event.map(|source, raw| {
+            scratch.parser.parse_into(raw, &mut scratch.outcome);
+            let row = scratch.rows.row(source, &mut scratch.outcome);
+            let fine = row.status == "ok";
+            let text = scratch.table.row(row);
+            Written { text, fine }
+        })
+    }
+
+    fn bytes(event: &Event<RawRecord>) -> usize {
+        event.bytes()
+    }
 }

@@ -8,6 +8,8 @@ mod exit;
 mod input;
 mod keys;
 mod output;
+mod progress;
+mod records;
 mod report;
 mod run;
 

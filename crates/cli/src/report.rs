@@ -5,13 +5,14 @@ use std::{
     io::{self, BufWriter, IsTerminal, StdoutLock, Write},
 };
 
-use crate::{exit::Status, output::Style};
+use crate::{exit::Status, output::Style, progress::Progress};
 
 /// One run: buffered standard output, standard error, and the status earned so far.
 pub(crate) struct Report {
     out: BufWriter<StdoutLock<'static>>,
     style: Style,
     status: Status,
+    progress: Progress,
 }
 
 impl Report {
@@ -23,6 +24,7 @@ impl Report {
             out: BufWriter::with_capacity(1 << 16, stdout.lock()),
             style,
             status: Status::Same,
+            progress: Progress::new(),
         }
     }
 
@@ -34,6 +36,11 @@ impl Report {
     /// How text on standard output looks.
     pub(crate) fn style(&self) -> Style {
         self.style
+    }
+
+    /// How far the work has come.
+    pub(crate) fn progress(&self) -> &Progress {
+        &self.progress
     }
 
     /// What the run has come to so far.
@@ -50,7 +57,7 @@ impl Report {
     pub(crate) fn say(&mut self, message: impl Display) -> io::Result<()> {
         // On a terminal both streams meet; their order should be that of the events.
         self.out.flush()?;
-        words(message);
+        self.progress.aside(|| words(message));
         Ok(())
     }
 

@@ -19,6 +19,7 @@ pub(crate) fn run(arguments: &Arguments) -> Status {
         Command::Keys(options) => keys::run(options, &mut report),
         Command::Describe(options) => describe::run(options, &mut report),
     };
+    report.progress().end();
     match outcome.and_then(|()| report.flush()) {
         Ok(()) => {}
         // Whoever reads has seen enough. What was found up to here stands.

@@ -8,6 +8,7 @@ mod error;
 mod excerpt;
 mod lines;
 mod note;
+mod raw;
 mod record;
 mod span;
 

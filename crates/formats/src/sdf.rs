@@ -15,6 +15,7 @@ use crate::{
     ReadError, ReadErrorKind, Record, Span,
     lines::{Line, Lines},
     molfile::{self, Block, ReadOptions, decode},
+    raw::RawText,
 };
 
 /// The records of an SDF source.
@@ -53,10 +54,8 @@ use crate::{
 pub struct Records<R> {
     lines: Lines<R>,
     options: ReadOptions,
-    /// The lines of the record at hand, each ended by LF.
-    text: Vec<u8>,
-    /// The number of its first line.
-    first_line: u32,
+    /// The record at hand.
+    raw: RawText,
     ended: bool,
     /// Whether a source without any text is a record that fails.
     one_expected: bool,
@@ -76,8 +75,7 @@ impl<R: BufRead> Records<R> {
         Self {
             lines: Lines::new(source, options.limits.line_bytes),
             options,
-            text: Vec::new(),
-            first_line: 1,
+            raw: RawText::default(),
             ended: false,
             one_expected: false,
         }
@@ -94,32 +92,52 @@ impl<R: BufRead> Records<R> {
     /// The name line of the record read last, whether it could be read or not; empty before the
     /// first.
     pub fn title(&self) -> String {
-        let line = Block::new(&self.text, 1).lines().next();
-        line.map_or_else(String::new, |line| decode(line.text.trim_ascii()))
+        title(&self.raw)
+    }
+
+    /// Cuts the next record out of the source; false at its end.
+    ///
+    /// # Errors
+    /// Those of the source itself, after which nothing more is read.
+    pub(crate) fn cut(&mut self, raw: &mut RawText) -> Result<bool, ReadError> {
+        let before = self.lines.number();
+        raw.begin(before.saturating_add(1));
+        if self.ended {
+            return Ok(false);
+        }
+        match self.collect(raw) {
+            Ok(stop) => {
+                self.ended = matches!(stop, Stop::End);
+                let nothing = self.ended && raw.fault.is_none() && raw.text.trim_ascii().is_empty();
+                Ok(!nothing || (before == 0 && self.one_expected))
+            }
+            Err(error) => {
+                self.ended = true;
+                let line = self.lines.number().saturating_add(1);
+                Err(ReadError::of_source(&error, line))
+            }
+        }
     }
 
     /// Collects the lines of the next record; a fault if they exceed a limit.
-    fn collect(&mut self) -> std::io::Result<(Stop, Result<(), ReadError>)> {
-        self.text.clear();
-        self.first_line = self.lines.number().saturating_add(1);
+    fn collect(&mut self, raw: &mut RawText) -> std::io::Result<Stop> {
         let limit = self.options.limits.record_bytes;
-        let mut outcome = Ok(());
         loop {
             let (line, whole) = match self.lines.next()? {
                 Some(Line::Whole(line)) => (line, true),
                 Some(Line::TooLong(line)) => (line, false),
-                None => return Ok((Stop::End, outcome)),
+                None => return Ok(Stop::End),
             };
             if whole && line.trim_ascii_end() == b"$$$$" {
-                return Ok((Stop::Delimiter, outcome));
+                return Ok(Stop::Delimiter);
             }
-            if outcome.is_err() {
+            if raw.fault.is_some() {
                 continue;
             }
-            let fits = self.text.len().saturating_add(line.len()) < limit;
+            let fits = raw.text.len().saturating_add(line.len()) < limit;
             if whole && fits {
-                self.text.extend_from_slice(line);
-                self.text.push(b'\n');
+                raw.text.extend_from_slice(line);
+                raw.text.push(b'\n');
                 continue;
             }
             let kind = match whole {
@@ -131,43 +149,42 @@ impl<R: BufRead> Records<R> {
             let offset = if whole { 0 } else { line.len() };
             let line = line.to_vec();
             let span = Span::at_offset(self.lines.number(), offset, 0);
-            outcome = Err(ReadError::new(kind, span, &line));
+            raw.fault = Some(ReadError::new(kind, span, &line));
         }
     }
+}
 
-    fn parse(&self) -> Result<Record, ReadError> {
-        let block = Block::new(&self.text, self.first_line);
-        let mut lines = block.lines();
-        let mut record = molfile::read(&mut lines, &self.options, self.text.len())
-            .map_err(|fault| block.error(fault))?;
-        data::read(&mut lines, &mut record);
-        Ok(record)
+/// The name line of a record.
+pub(crate) fn title(raw: &RawText) -> String {
+    let line = Block::new(&raw.text, 1).lines().next();
+    line.map_or_else(String::new, |line| decode(line.text.trim_ascii()))
+}
+
+/// Parses a record that has been cut out.
+pub(crate) fn parse(raw: &mut RawText, options: &ReadOptions) -> Result<Record, ReadError> {
+    if let Some(fault) = raw.fault.take() {
+        return Err(fault);
     }
+    let block = Block::new(&raw.text, raw.first_line);
+    let mut lines = block.lines();
+    let mut record =
+        molfile::read(&mut lines, options, raw.text.len()).map_err(|fault| block.error(fault))?;
+    data::read(&mut lines, &mut record);
+    Ok(record)
 }
 
 impl<R: BufRead> Iterator for Records<R> {
     type Item = Result<Record, ReadError>;
 
     fn next(&mut self) -> Option<Self::Item> {
-        if self.ended {
-            return None;
-        }
-        let first = self.lines.number() == 0;
-        match self.collect() {
-            Ok((stop, outcome)) => {
-                self.ended = matches!(stop, Stop::End);
-                let nothing = self.ended && outcome.is_ok() && self.text.trim_ascii().is_empty();
-                if nothing && !(first && self.one_expected) {
-                    return None;
-                }
-                Some(outcome.and_then(|()| self.parse()))
-            }
-            Err(error) => {
-                self.ended = true;
-                let line = self.lines.number().saturating_add(1);
-                Some(Err(ReadError::of_source(&error, line)))
-            }
-        }
+        let mut raw = std::mem::take(&mut self.raw);
+        let outcome = match self.cut(&mut raw) {
+            Ok(true) => Some(parse(&mut raw, &self.options)),
+            Ok(false) => None,
+            Err(failure) => Some(Err(failure)),
+        };
+        self.raw = raw;
+        outcome
     }
 }
 

@@ -38,6 +38,7 @@ use molkin_graph::Molecule;
 
 use crate::ReadError;
 
+pub(crate) use self::file::{parse_line, title};
 pub use self::{
     file::Records,
     reader::{ReadOptions, Reader},

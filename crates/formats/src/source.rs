@@ -6,8 +6,11 @@
 //! ```
 //! and `.gz` behind any of them (feature `gzip`).
 
+mod counted;
 mod error;
 mod format;
+mod parser;
+mod raw;
 
 use std::{
     fmt,
@@ -19,11 +22,16 @@ use std::{
 #[cfg(feature = "table")]
 use crate::table;
 use crate::{
-    ReadError, Record, molfile, sdf, smiles,
+    ReadError, Record, molfile,
+    raw::RawText,
+    sdf, smiles,
     table::{Columns, Delimiter},
 };
 
-pub use self::{error::SourceError, format::Format};
+use counted::{Counted, Taken};
+use raw::Cut;
+
+pub use self::{error::SourceError, format::Format, parser::Parser, raw::RawRecord};
 
 /// How records are read, by format.
 #[derive(Debug, Clone, Default)]
@@ -47,6 +55,17 @@ pub struct RecordOutcome {
     pub result: Result<Record, ReadError>,
 }
 
+impl Default for RecordOutcome {
+    /// Storage for [`Parser::parse_into`].
+    fn default() -> Self {
+        Self {
+            index: 0,
+            name: String::new(),
+            result: Ok(Record::default()),
+        }
+    }
+}
+
 /// The records of a source in their order, whatever its format.
 ///
 /// Every record gives one [`RecordOutcome`]; one that fails does not end the sequence. An error of
@@ -68,6 +87,9 @@ pub struct Records<'s> {
     name: String,
     index: u64,
     reader: Reader<'s>,
+    parser: Parser,
+    /// Bytes taken from the file, where it is one.
+    taken: Taken,
 }
 
 type Source<'s> = Box<dyn BufRead + Send + 's>;
@@ -114,6 +136,7 @@ impl<'s> Records<'s> {
     ) -> Self {
         let name = name.into();
         let source: Source<'s> = Box::new(source);
+        let parser = Parser::new(&options);
         let reader = match format {
             Format::Smiles => {
                 Reader::Smiles(Box::new(smiles::Records::new(source, options.smiles)))
@@ -127,6 +150,8 @@ impl<'s> Records<'s> {
             name,
             index: 0,
             reader,
+            parser,
+            taken: Taken::default(),
         }
     }
 
@@ -160,6 +185,52 @@ impl<'s> Records<'s> {
     pub fn name(&self) -> &str {
         &self.name
     }
+
+    /// How many bytes of the file have been taken, those of a compressed file as they stand in it; 0
+    /// where the source was not opened here. Somewhat ahead of the records.
+    pub fn bytes_taken(&self) -> u64 {
+        self.taken.bytes()
+    }
+
+    /// Cuts the next record out of the source without parsing it, which any [`Parser`] with the same
+    /// options can do later, on another thread too. The iterator does both.
+    ///
+    /// # Examples
+    /// ```
+    /// use molkin_formats::source::{Format, Parser, ReadOptions, Records};
+    ///
+    /// let options = ReadOptions::default();
+    /// let mut records = Records::new("stdin", &b"CCO\nO\n"[..], Format::Smiles, options.clone());
+    /// let first = records.cut().ok_or("a record")??;
+    /// let second = records.cut().ok_or("a record")??;
+    /// let mut parser = Parser::new(&options);
+    /// assert_eq!(parser.parse(second).result?.molecule.atom_count(), 1);
+    /// assert_eq!(parser.parse(first).result?.molecule.atom_count(), 3);
+    /// # Ok::<(), Box<dyn std::error::Error>>(())
+    /// ```
+    pub fn cut(&mut self) -> Option<Result<RawRecord, SourceError>> {
+        let mut text = RawText::default();
+        let cut = match &mut self.reader {
+            Reader::Smiles(records) => records
+                .cut(&mut text)
+                .map(|is| is.then_some(Cut::Smiles(text))),
+            Reader::Sdf(records) => records
+                .cut(&mut text)
+                .map(|is| is.then_some(Cut::Molfile(text))),
+            #[cfg(feature = "table")]
+            Reader::Table(records) => records.cut().map(|row| row.map(Cut::Row)),
+            Reader::Refused(error) => return error.take().map(Err),
+        };
+        match cut {
+            Ok(None) => None,
+            Ok(Some(cut)) => {
+                self.index += 1;
+                let index = self.index;
+                Some(Ok(RawRecord { index, cut }))
+            }
+            Err(error) => SourceError::of_record(&self.name, &error).map(Err),
+        }
+    }
 }
 
 impl Records<'static> {
@@ -180,12 +251,12 @@ impl Records<'static> {
             return Err(SourceError::NoGzip { name });
         }
         match File::open(path) {
-            Ok(file) => Ok(Self::new(
-                name,
-                decompress(file, compressed),
-                format,
-                options,
-            )),
+            Ok(file) => {
+                let (file, taken) = Counted::new(file);
+                let source = decompress(file, compressed);
+                let records = Self::new(name, source, format, options);
+                Ok(Self { taken, ..records })
+            }
             Err(error) => Err(SourceError::Open { name, error }),
         }
     }
@@ -201,14 +272,18 @@ impl Records<'static> {
             return Self::open(path, options);
         }
         match File::open(path) {
-            Ok(file) => Self::guess(name, BufReader::new(file), options),
+            Ok(file) => {
+                let (file, taken) = Counted::new(file);
+                let records = Self::guess(name, BufReader::new(file), options)?;
+                Ok(Self { taken, ..records })
+            }
             Err(error) => Err(SourceError::Open { name, error }),
         }
     }
 }
 
 #[cfg(feature = "gzip")]
-fn decompress(file: File, compressed: bool) -> Source<'static> {
+fn decompress(file: Counted<File>, compressed: bool) -> Source<'static> {
     if compressed {
         // A .gz file may be several streams in a row.
         Box::new(BufReader::new(flate2::bufread::MultiGzDecoder::new(
@@ -220,7 +295,7 @@ fn decompress(file: File, compressed: bool) -> Source<'static> {
 }
 
 #[cfg(not(feature = "gzip"))]
-fn decompress(file: File, _compressed: bool) -> Source<'static> {
+fn decompress(file: Counted<File>, _compressed: bool) -> Source<'static> {
     Box::new(BufReader::new(file))
 }
 
@@ -228,24 +303,8 @@ impl Iterator for Records<'_> {
     type Item = Result<RecordOutcome, SourceError>;
 
     fn next(&mut self) -> Option<Self::Item> {
-        let (result, title) = match &mut self.reader {
-            Reader::Smiles(records) => (records.next()?, records.title()),
-            Reader::Sdf(records) => (records.next()?, records.title()),
-            #[cfg(feature = "table")]
-            Reader::Table(records) => (records.next()?, records.title()),
-            Reader::Refused(error) => return error.take().map(Err),
-        };
-        if let Err(error) = &result
-            && let Some(failure) = SourceError::of_record(&self.name, error)
-        {
-            return Some(Err(failure));
-        }
-        self.index += 1;
-        Some(Ok(RecordOutcome {
-            index: self.index,
-            name: title,
-            result,
-        }))
+        let raw = self.cut()?;
+        Some(raw.map(|raw| self.parser.parse(raw)))
     }
 }
 

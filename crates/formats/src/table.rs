@@ -10,6 +10,8 @@
 #[cfg(feature = "table")]
 mod header;
 #[cfg(feature = "table")]
+mod raw;
+#[cfg(feature = "table")]
 mod records;
 #[cfg(feature = "table")]
 mod row;
@@ -24,7 +26,7 @@ use crate::{ReadError, molfile, smiles};
 pub use records::Records;
 
 #[cfg(feature = "table")]
-pub(crate) use header::is_header;
+pub(crate) use {header::is_header, raw::RawRow};
 
 /// Which columns of a table are read as what.
 ///

@@ -116,11 +116,18 @@ impl Molecule {
 
     /// The molecular formula, hydrogens that are only counted included.
     pub fn formula(&self) -> Formula {
+        let mut formula = Formula::default();
+        self.formula_into(&mut formula);
+        formula
+    }
+
+    /// As [`Molecule::formula`], in place of a formula whose memory is reused.
+    pub fn formula_into(&self, formula: &mut Formula) {
         let heavy = self.atoms().map(|atom| (atom.element, 1));
         let hydrogens = self
             .atoms()
             .map(|atom| (Element::HYDROGEN, u32::from(atom.hydrogens)));
-        Formula::new(heavy.chain(hydrogens), self.charge())
+        formula.refill(heavy.chain(hydrogens), self.charge());
     }
 
     /// The net charge.

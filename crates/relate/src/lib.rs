@@ -1,7 +1,8 @@
 //! How two molecules are related, and what makes the difference.
 //!
 //! [`relate`] is cheap and gives the verdict; [`explain()`] finds what accounts for it; [`wire`] is the
-//! output contract of docs/output.md.
+//! output contract of docs/output.md. With the feature `parallel`, module `parallel` shares work out
+//! among threads.
 #![forbid(unsafe_code)]
 
 mod explain;
@@ -11,6 +12,8 @@ mod remarks;
 mod structure;
 mod words;
 
+#[cfg(feature = "parallel")]
+pub mod parallel;
 pub mod wire;
 
 pub use crate::{
@@ -19,5 +22,5 @@ pub use crate::{
         StereoChange, StereoDifference, explain,
     },
     relation::{Relation, StereoKind, Verdict, relate},
-    structure::{PrepareError, Structure},
+    structure::{PrepareError, Preparer, Structure},
 };

@@ -14,7 +14,7 @@ use serde::Serialize;
 use crate::remarks::Noted;
 
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
-pub use keys::{KeyRow, key_row};
+pub use keys::{KeyRow, KeyRows};
 pub use pair::{
     BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair, StereoEntry,
     compare,

@@ -2,11 +2,11 @@
 
 use std::{collections::HashMap, io};
 
-use molkin_formats::source::RecordOutcome;
+use molkin_formats::source::{Parser, RecordOutcome};
 
 use crate::input::Input;
 
-use super::Comparison;
+use super::{Comparison, verdicts::Side};
 
 /// Compares records of the same name, in the order of A. Records without a name, with a name that
 /// is not alone on its side, or without a partner are listed, and the run is trouble: which of them
@@ -18,21 +18,19 @@ pub(super) fn compare(
     mut a: Input,
     mut b: Input,
 ) -> io::Result<()> {
-    let mut sides = [Side::read(&mut a), Side::read(&mut b)];
+    let mut parser = Parser::new(comparison.reading);
+    let mut sides = [&mut a, &mut b].map(|input| Records::read(input, &mut parser));
     comparison.broke_off(&a)?;
     comparison.broke_off(&b)?;
     let [left, right] = &sides;
-    let pairs: Vec<(usize, usize)> = left.pairs(right).collect();
+    let places: Vec<(usize, usize)> = left.pairs(right).collect();
     let lists = [left.list(right), right.list(left)];
-    for (at, to) in pairs {
+    let verdicts = comparison.verdicts([a.name(), b.name()]);
+    let pairs = places.into_iter().filter_map(|(at, to)| {
         let [left, right] = &mut sides;
-        let (Some(outcome_a), Some(outcome_b)) = (left.take(at), right.take(to)) else {
-            continue;
-        };
-        let prepared_a = comparison.prepare(&left.source, outcome_a);
-        let prepared_b = comparison.prepare(&right.source, outcome_b);
-        comparison.pair([&prepared_a, &prepared_b])?;
-    }
+        Some([left.take(at)?, right.take(to)?].map(Side::Read))
+    });
+    comparison.pairs(&verdicts, pairs)?;
     for message in lists.into_iter().flatten() {
         comparison.report.trouble(message)?;
     }
@@ -40,36 +38,37 @@ pub(super) fn compare(
 }
 
 /// All records of an input.
-struct Side {
+struct Records {
     source: String,
     /// Taken out as they are compared.
-    records: Vec<Option<RecordOutcome>>,
+    records: Vec<Option<Box<RecordOutcome>>>,
     names: Vec<String>,
     /// The places of each name, in order.
     places: HashMap<String, Vec<usize>>,
 }
 
-impl Side {
-    fn read(input: &mut Input) -> Self {
+impl Records {
+    fn read(input: &mut Input, parser: &mut Parser) -> Self {
         let mut side = Self {
             source: input.name().to_owned(),
             records: Vec::new(),
             names: Vec::new(),
             places: HashMap::new(),
         };
-        for outcome in input {
+        for raw in input {
+            let outcome = parser.parse(raw);
             let place = side.records.len();
             side.places
                 .entry(outcome.name.clone())
                 .or_default()
                 .push(place);
             side.names.push(outcome.name.clone());
-            side.records.push(Some(outcome));
+            side.records.push(Some(Box::new(outcome)));
         }
         side
     }
 
-    fn take(&mut self, place: usize) -> Option<RecordOutcome> {
+    fn take(&mut self, place: usize) -> Option<Box<RecordOutcome>> {
         self.records.get_mut(place)?.take()
     }
 

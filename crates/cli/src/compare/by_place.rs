@@ -2,9 +2,11 @@
 
 use std::io;
 
+use molkin_relate::parallel::Work;
+
 use crate::input::Input;
 
-use super::Comparison;
+use super::{Comparison, verdicts::Side};
 
 /// Compares record by record; or, where one input holds a single record and the other more, that
 /// one with each of the others. Records are read as they are needed.
@@ -41,36 +43,48 @@ fn one_against_many(
     mut many: Input,
     swapped: bool,
 ) -> io::Result<()> {
-    let Some(outcome) = one.next() else {
+    let Some(record) = one.next() else {
         return Ok(());
     };
-    let one = comparison.prepare(one.name(), outcome);
-    while let Some(outcome) = many.next() {
-        let other = comparison.prepare(many.name(), outcome);
-        let sides = if swapped {
-            [&other, &one]
-        } else {
-            [&one, &other]
-        };
-        comparison.pair(sides)?;
-    }
+    let names = ordered([one.name(), many.name()], swapped).map(str::to_owned);
+    let verdicts = comparison.verdicts(names.each_ref().map(String::as_str));
+    let ready = verdicts.scratch().ready(one.name(), Side::raw(record));
+    let progress = comparison.report.progress().clone();
+    let pairs = std::iter::from_fn(|| {
+        let record = many.next()?;
+        progress.reach(one.bytes_taken() + many.bytes_taken());
+        Some(ordered([Side::Ready(&ready), Side::raw(record)], swapped))
+    });
+    comparison.pairs(&verdicts, pairs)?;
     comparison.broke_off(&many).map(|_| ())
 }
 
+fn ordered<T>([one, other]: [T; 2], swapped: bool) -> [T; 2] {
+    if swapped { [other, one] } else { [one, other] }
+}
+
 fn in_step(comparison: &mut Comparison<'_>, mut a: Input, mut b: Input) -> io::Result<()> {
-    loop {
+    let names = [a.name().to_owned(), b.name().to_owned()];
+    let verdicts = comparison.verdicts(names.each_ref().map(String::as_str));
+    let progress = comparison.report.progress().clone();
+    let mut last = (None, None);
+    let pairs = std::iter::from_fn(|| {
+        progress.reach(a.bytes_taken() + b.bytes_taken());
         match (a.next(), b.next()) {
-            (Some(left), Some(right)) => {
-                let left = comparison.prepare(a.name(), left);
-                let right = comparison.prepare(b.name(), right);
-                comparison.pair([&left, &right])?;
+            (Some(left), Some(right)) => Some([Side::raw(left), Side::raw(right)]),
+            ends => {
+                last = ends;
+                None
             }
-            (Some(left), None) => return left_over(comparison, left.index, a, b),
-            (None, Some(right)) => return left_over(comparison, right.index, b, a),
-            (None, None) => {
-                comparison.broke_off(&a)?;
-                return comparison.broke_off(&b).map(|_| ());
-            }
+        }
+    });
+    comparison.pairs(&verdicts, pairs)?;
+    match last {
+        (Some(left), _) => left_over(comparison, left.index(), a, b),
+        (_, Some(right)) => left_over(comparison, right.index(), b, a),
+        (None, None) => {
+            comparison.broke_off(&a)?;
+            comparison.broke_off(&b).map(|_| ())
         }
     }
 }
@@ -83,7 +97,7 @@ fn left_over(
     short: Input,
 ) -> io::Result<()> {
     comparison.broke_off(&short)?;
-    let last = long.by_ref().last().map_or(first, |outcome| outcome.index);
+    let last = long.by_ref().last().map_or(first, |record| record.index());
     let which = if first == last {
         format!("record {first} of {} has", long.name())
     } else {

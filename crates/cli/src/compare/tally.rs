@@ -4,6 +4,35 @@ use std::fmt::{self, Display};
 
 use molkin_relate::wire::Pair;
 
+use crate::exit::Status;
+
+/// How a pair came out.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct Outcome {
+    /// None where there is no verdict.
+    relation: Option<&'static str>,
+    open: bool,
+}
+
+impl Outcome {
+    /// How a pair came out.
+    pub(super) fn of(pair: &Pair) -> Self {
+        Self {
+            relation: pair.relation,
+            open: pair.open == Some(true),
+        }
+    }
+
+    /// What that means for the exit status.
+    pub(super) fn status(self) -> Status {
+        match self.relation {
+            Some("identical") => Status::Same,
+            Some(_) => Status::Different,
+            None => Status::Trouble,
+        }
+    }
+}
+
 /// Counts of verdicts.
 #[derive(Debug, Default)]
 pub(super) struct Tally {
@@ -17,8 +46,8 @@ pub(super) struct Tally {
 
 impl Tally {
     /// Counts a pair.
-    pub(super) fn add(&mut self, pair: &Pair) {
-        let count = match pair.relation {
+    pub(super) fn add(&mut self, outcome: Outcome) {
+        let count = match outcome.relation {
             Some("identical") => &mut self.identical,
             Some("stereo") => &mut self.stereo,
             Some("constitutional") => &mut self.constitutional,
@@ -26,7 +55,7 @@ impl Tally {
             None => &mut self.failed,
         };
         *count += 1;
-        self.open += u64::from(pair.open == Some(true));
+        self.open += u64::from(outcome.open);
     }
 
     /// All pairs, those without a verdict included.

@@ -21,7 +21,7 @@ const COLUMNS: [&str; 9] = [
     "message",
 ];
 
-/// Writes rows to an output that others write to as well.
+/// Writes rows, each on its own.
 pub(crate) struct Table {
     writer: Writer<Line>,
 }
@@ -52,23 +52,20 @@ impl Default for Table {
 }
 
 impl Table {
-    /// Writes the header.
-    pub(crate) fn header(&mut self, out: &mut impl Write) -> io::Result<()> {
+    /// The header.
+    pub(crate) fn header(&mut self) -> io::Result<Vec<u8>> {
         self.writer.write_record(COLUMNS)?;
-        self.pass_on(out)
+        self.line()
     }
 
-    /// Writes a row.
-    pub(crate) fn row(&mut self, out: &mut impl Write, row: &KeyRow<'_>) -> io::Result<()> {
+    /// A row.
+    pub(crate) fn row(&mut self, row: &KeyRow) -> io::Result<Vec<u8>> {
         self.writer.serialize(row)?;
-        self.pass_on(out)
+        self.line()
     }
 
-    fn pass_on(&mut self, out: &mut impl Write) -> io::Result<()> {
+    fn line(&mut self) -> io::Result<Vec<u8>> {
         self.writer.flush()?;
-        let mut line = self.writer.get_ref().0.borrow_mut();
-        out.write_all(&line)?;
-        line.clear();
-        Ok(())
+        Ok(self.writer.get_ref().0.take())
     }
 }

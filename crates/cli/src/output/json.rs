@@ -2,11 +2,9 @@
 
 use std::io::{self, Write};
 
-use serde::Serialize;
-
 use crate::args::Format;
 
-/// Writes objects one after another as they come.
+/// Writes objects one after another as they come. Text goes out as it is.
 #[derive(Debug)]
 pub(crate) struct Objects {
     layout: Layout,
@@ -17,17 +15,17 @@ pub(crate) struct Objects {
 enum Layout {
     Array,
     Lines,
-    /// Not asked for.
-    Nothing,
+    /// Text, no objects.
+    Text,
 }
 
 impl Objects {
-    /// A writer for the format; for text it writes nothing.
+    /// A writer for the format.
     pub(crate) fn new(format: Format) -> Self {
         let layout = match format {
             Format::Json => Layout::Array,
             Format::Jsonl => Layout::Lines,
-            Format::Text => Layout::Nothing,
+            Format::Text => Layout::Text,
         };
         Self {
             layout,
@@ -35,20 +33,15 @@ impl Objects {
         }
     }
 
-    /// Writes an object.
-    pub(crate) fn write(
-        &mut self,
-        out: &mut impl Write,
-        object: &impl Serialize,
-    ) -> io::Result<()> {
+    /// Writes an object, which comes as text.
+    pub(crate) fn write(&mut self, out: &mut impl Write, object: &[u8]) -> io::Result<()> {
         match (self.layout, self.written) {
-            (Layout::Nothing, _) => return Ok(()),
             (Layout::Array, false) => out.write_all(b"[\n")?,
             (Layout::Array, true) => out.write_all(b",\n")?,
-            (Layout::Lines, _) => {}
+            (Layout::Lines | Layout::Text, _) => {}
         }
         self.written = true;
-        serde_json::to_writer(&mut *out, object)?;
+        out.write_all(object)?;
         if self.layout == Layout::Lines {
             out.write_all(b"\n")?;
         }
@@ -60,7 +53,7 @@ impl Objects {
         match (self.layout, self.written) {
             (Layout::Array, true) => out.write_all(b"\n]\n"),
             (Layout::Array, false) => out.write_all(b"[]\n"),
-            (Layout::Lines | Layout::Nothing, _) => Ok(()),
+            (Layout::Lines | Layout::Text, _) => Ok(()),
         }
     }
 }
@@ -69,11 +62,11 @@ impl Objects {
 mod tests {
     use super::*;
 
-    fn written(format: Format, objects: &[u8]) -> String {
+    fn written(format: Format, objects: &[&str]) -> String {
         let mut out = Vec::new();
         let mut writer = Objects::new(format);
         for object in objects {
-            writer.write(&mut out, object).unwrap();
+            writer.write(&mut out, object.as_bytes()).unwrap();
         }
         writer.finish(&mut out).unwrap();
         String::from_utf8(out).unwrap()
@@ -82,8 +75,8 @@ mod tests {
     #[test]
     fn arrays_and_lines() {
         assert_eq!(written(Format::Json, &[]), "[]\n");
-        assert_eq!(written(Format::Json, &[1, 2]), "[\n1,\n2\n]\n");
-        assert_eq!(written(Format::Jsonl, &[1, 2]), "1\n2\n");
-        assert_eq!(written(Format::Text, &[1]), "");
+        assert_eq!(written(Format::Json, &["1", "2"]), "[\n1,\n2\n]\n");
+        assert_eq!(written(Format::Jsonl, &["1", "2"]), "1\n2\n");
+        assert_eq!(written(Format::Text, &["a\n", "b\n"]), "a\nb\n");
     }
 }

@@ -9,3 +9,4 @@ mod schema;
 mod status;
 mod streams;
 mod text;
+mod threads;

@@ -27,6 +27,11 @@ impl Folder {
         self
     }
 
+    /// Where it is.
+    pub(crate) fn path(&self) -> &Path {
+        &self.0
+    }
+
     /// Runs the program there.
     pub(crate) fn run(&self, arguments: &[&str]) -> Outcome {
         run_in(&self.0, arguments, "")

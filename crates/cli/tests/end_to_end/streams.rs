@@ -2,6 +2,8 @@
 
 use std::io::Read;
 
+use rstest::rstest;
+
 use crate::runner::{Folder, demo, program, repository, run};
 
 #[test]
@@ -26,25 +28,28 @@ fn names_cannot_steer_a_terminal() {
     assert!(outcome.out.contains("\u{fffd}[31mred"));
 }
 
-/// Whoever reads may stop. What was compared up to there counts.
-#[test]
-fn a_closed_pipe_is_no_trouble() {
-    let folder = repository();
-    for (smiles, expected) in [("C\n", 0), ("CC\n", 1)] {
-        let lines = smiles.repeat(20_000);
-        let name = format!("closed_pipe_{expected}");
-        let _scratch = Folder::new(&name).with("many.smi", lines);
-        let many = format!("{}/{name}/many.smi", env!("CARGO_TARGET_TMPDIR"));
-        let arguments = ["compare", "C", &many, "--brief"];
-        let mut child = program(&folder, &arguments).spawn().unwrap();
-        drop(child.stdin.take());
-        let mut out = child.stdout.take().unwrap();
-        out.read_exact(&mut [0; 100]).unwrap();
-        drop(out);
-        let output = child.wait_with_output().unwrap();
-        assert_eq!(output.status.code(), Some(expected));
-        assert_eq!(String::from_utf8(output.stderr).unwrap(), "");
-    }
+/// Whoever reads may stop. What was found up to there counts.
+#[rstest]
+#[case::identical("C\n", &["compare", "C", "many.smi", "--brief"], 0)]
+#[case::different("CC\n", &["compare", "C", "many.smi", "--brief", "--threads", "3"], 1)]
+#[case::alone("CC\n", &["compare", "C", "many.smi", "--brief", "--threads", "1"], 1)]
+#[case::keys("C\n", &["keys", "many.smi", "--threads", "3"], 0)]
+#[case::describe("C\n", &["describe", "many.smi", "--threads", "3"], 0)]
+fn a_closed_pipe_is_no_trouble(
+    #[case] line: &str,
+    #[case] arguments: &[&str],
+    #[case] expected: i32,
+) {
+    let name = format!("closed_pipe_{}", arguments.join("_").replace(' ', ""));
+    let folder = Folder::new(&name).with("many.smi", line.repeat(20_000));
+    let mut child = program(folder.path(), arguments).spawn().unwrap();
+    drop(child.stdin.take());
+    let mut out = child.stdout.take().unwrap();
+    out.read_exact(&mut [0; 100]).unwrap();
+    drop(out);
+    let output = child.wait_with_output().unwrap();
+    assert_eq!(output.status.code(), Some(expected));
+    assert_eq!(String::from_utf8(output.stderr).unwrap(), "");
 }
 
 #[cfg(target_os = "linux")]

@@ -6,6 +6,7 @@ use super::{ReadOptions, Reader};
 use crate::{
     ReadError, ReadErrorKind, Record, Span,
     lines::{Line, Lines},
+    raw::RawText,
 };
 
 /// The records of a SMILES file, one for each line.
@@ -31,6 +32,8 @@ pub struct Records<R> {
     lines: Lines<R>,
     reader: Reader,
     limit: usize,
+    /// The line at hand.
+    raw: RawText,
     ended: bool,
 }
 
@@ -42,6 +45,7 @@ impl<R: BufRead> Records<R> {
             lines: Lines::new(source, limit),
             reader: Reader::new(options),
             limit,
+            raw: RawText::default(),
             ended: false,
         }
     }
@@ -53,10 +57,61 @@ impl<R: BufRead> Records<R> {
 
     /// The name on the line read last, also where its SMILES could not be read.
     pub fn title(&self) -> String {
-        let line = self.lines.current();
-        let white = line.iter().position(u8::is_ascii_whitespace);
-        let rest = white.map_or(&[][..], |at| &line[at..]);
-        String::from_utf8_lossy(rest.trim_ascii()).into_owned()
+        title(&self.raw)
+    }
+
+    /// Cuts the next line out of the source; false at its end.
+    ///
+    /// # Errors
+    /// Those of the source itself, after which nothing more is read.
+    pub(crate) fn cut(&mut self, raw: &mut RawText) -> Result<bool, ReadError> {
+        let number = self.lines.number().saturating_add(1);
+        raw.begin(number);
+        if self.ended {
+            return Ok(false);
+        }
+        let (line, whole) = match self.lines.next() {
+            Ok(Some(Line::Whole(line))) => (line, true),
+            Ok(Some(Line::TooLong(line))) => (line, false),
+            Ok(None) => {
+                self.ended = true;
+                return Ok(false);
+            }
+            Err(error) => {
+                self.ended = true;
+                return Err(ReadError::of_source(&error, number));
+            }
+        };
+        raw.text.extend_from_slice(line);
+        if !whole {
+            let kind = ReadErrorKind::LineTooLong { limit: self.limit };
+            let span = Span::at_offset(number, self.limit, 0);
+            raw.fault = Some(ReadError::new(kind, span, line));
+        }
+        Ok(true)
+    }
+}
+
+/// The name on a line: what follows the first white space.
+pub(crate) fn title(raw: &RawText) -> String {
+    let line = &raw.text;
+    let white = line.iter().position(u8::is_ascii_whitespace);
+    let rest = white.map_or(&[][..], |at| &line[at..]);
+    String::from_utf8_lossy(rest.trim_ascii()).into_owned()
+}
+
+/// Parses a line; the storage of a record that is done with is reused.
+pub(crate) fn parse_line(
+    raw: &mut RawText,
+    reader: &mut Reader,
+    mut record: Record,
+) -> Result<Record, ReadError> {
+    match raw.fault.take() {
+        Some(fault) => Err(fault),
+        None => {
+            reader.read_into(&raw.text, raw.first_line, &mut record)?;
+            Ok(record)
+        }
     }
 }
 
@@ -64,25 +119,14 @@ impl<R: BufRead> Iterator for Records<R> {
     type Item = Result<Record, ReadError>;
 
     fn next(&mut self) -> Option<Self::Item> {
-        if self.ended {
-            return None;
-        }
-        let number = self.lines.number().saturating_add(1);
-        match self.lines.next() {
-            Ok(Some(Line::Whole(text))) => Some(self.reader.read(text, number)),
-            Ok(Some(Line::TooLong(text))) => {
-                let kind = ReadErrorKind::LineTooLong { limit: self.limit };
-                let span = Span::at_offset(number, self.limit, 0);
-                Some(Err(ReadError::new(kind, span, text)))
-            }
-            Ok(None) => {
-                self.ended = true;
-                None
-            }
-            Err(error) => {
-                self.ended = true;
-                Some(Err(ReadError::of_source(&error, number)))
-            }
-        }
+        let mut raw = std::mem::take(&mut self.raw);
+        let cut = self.cut(&mut raw);
+        let outcome = match cut {
+            Ok(true) => Some(parse_line(&mut raw, &mut self.reader, Record::default())),
+            Ok(false) => None,
+            Err(failure) => Some(Err(failure)),
+        };
+        self.raw = raw;
+        outcome
     }
 }

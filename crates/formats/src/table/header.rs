@@ -39,7 +39,7 @@ const NAMES: [&str; 13] = [
 const DELIMITERS: [u8; 4] = [b',', b';', b'\t', b'|'];
 
 /// The columns of a table and their meaning.
-#[derive(Debug)]
+#[derive(Debug, Default)]
 pub(super) struct Header {
     pub(super) titles: Vec<String>,
     pub(super) structure: usize,

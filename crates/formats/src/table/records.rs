@@ -1,15 +1,16 @@
 //! Records: rows whose structure is read.
 
-use std::io::BufRead;
+use std::{io::BufRead, sync::Arc};
 
 use super::{
     Columns, Delimiter, HeaderError, ReadOptions,
     header::Header,
+    raw::RawRow,
     rows::{MOST_COLUMNS, Rows},
 };
 use crate::{
-    ReadError, ReadErrorKind, Record, Span,
-    molfile::{self, Block, decode},
+    ReadError, Record,
+    molfile::{self, decode},
     smiles,
 };
 
@@ -39,9 +40,11 @@ use crate::{
 #[derive(Debug)]
 pub struct Records<R> {
     pub(super) rows: Rows<R>,
-    header: Header,
+    header: Arc<Header>,
     reader: smiles::Reader,
     molfile: molfile::ReadOptions,
+    /// The row at hand.
+    raw: RawRow,
     title: String,
     ended: bool,
 }
@@ -59,12 +62,13 @@ impl<R: BufRead> Records<R> {
         let limits = options.smiles.limits;
         let mut rows = Rows::new(source, delimiter, limits)
             .map_err(|error| ReadError::of_source(&error, 1))?;
-        let header = Self::header(&mut rows, &options.columns)?;
+        let header = Arc::new(Self::header(&mut rows, &options.columns)?);
         Ok(Self {
             rows,
-            header,
             reader: smiles::Reader::new(options.smiles),
             molfile: options.molfile,
+            raw: RawRow::new(Arc::clone(&header)),
+            header,
             title: String::new(),
             ended: false,
         })
@@ -97,105 +101,52 @@ impl<R: BufRead> Records<R> {
         self.title.clone()
     }
 
-    fn parse(&mut self) -> Result<Record, ReadError> {
-        let named = self
-            .header
-            .name
-            .and_then(|column| self.rows.row().field(column));
-        self.title = named.map_or_else(String::new, |(_, name)| decode(name.trim_ascii()));
-        self.check_count()?;
-        let mut record = self.read_structure()?;
-        if self.header.name.is_some() {
-            record.name.clone_from(&self.title);
-        } else {
-            self.title.clone_from(&record.name);
-        }
-        let Header {
-            titles,
-            structure,
-            name,
-        } = &self.header;
-        let others = self.rows.row().fields().zip(titles).enumerate();
-        record.properties = others
-            .filter(|(column, _)| column != structure && Some(*column) != *name)
-            .map(|(_, ((_, value), title))| (title.clone(), decode(value)))
-            .collect();
-        Ok(record)
+    /// Cuts the next row out of the source, with an end where there is none.
+    ///
+    /// # Errors
+    /// Those of the source itself, after which nothing more is read.
+    pub(crate) fn cut(&mut self) -> Result<Option<RawRow>, ReadError> {
+        let mut raw = RawRow::new(Arc::clone(&self.header));
+        Ok(self.cut_into(&mut raw)?.then_some(raw))
     }
 
-    fn check_count(&self) -> Result<(), ReadError> {
-        let (found, expected) = (self.rows.row().count, self.header.titles.len());
-        if found == expected {
-            return Ok(());
+    fn cut_into(&mut self, raw: &mut RawRow) -> Result<bool, ReadError> {
+        if self.ended {
+            return Ok(false);
         }
-        let kind = ReadErrorKind::FieldCount { found, expected };
-        // At the first field too many, or behind the last one.
-        let place = expected.min(found.saturating_sub(1));
-        let Some((field, _)) = self.rows.row().field(place) else {
-            return Err(ReadError::new(kind, Span::new(self.rows.line(), 1, 0), b""));
-        };
-        let mut span = field.span();
-        if found < expected {
-            span.column = span.column.saturating_add(span.width);
-            span.width = 0;
-        }
-        Err(ReadError::new(kind, span, self.rows.line_of(field)))
-    }
-
-    fn read_structure(&mut self) -> Result<Record, ReadError> {
-        let Some((field, value)) = self.rows.row().field(self.header.structure) else {
-            return Ok(Record::default());
-        };
-        // Blank lines in front belong to a molfile.
-        let (text, outcome) = if is_molfile(value) {
-            (value, molfile::parse_with(value, &self.molfile))
-        } else {
-            let text = value.trim_ascii_start();
-            (text, self.reader.read(text.trim_ascii_end(), 1))
-        };
-        let blanks = value.len() - text.len();
-        let moved = |span: Span| field.place(span, blanks);
-        match outcome {
-            Ok(mut record) => {
-                for note in &mut record.notes {
-                    note.span = note.span.map(moved);
-                }
-                Ok(record)
+        match self.rows.read() {
+            Ok(Ok(true)) => self.rows.hand_over(raw),
+            Ok(Ok(false)) => {
+                self.ended = true;
+                return Ok(false);
             }
-            Err(error) => Err(error.moved(moved, |line| self.rows.line_at(field, line))),
+            Ok(Err(error)) => raw.refuse(error),
+            Err(error) => {
+                self.ended = true;
+                let line = self.rows.line().saturating_add(1);
+                return Err(ReadError::of_source(&error, line));
+            }
         }
+        Ok(true)
     }
-}
-
-/// Whether a value of several lines is a molfile: one of its first lines states a version, or it
-/// has an end. Not just the fourth line, so that one whose first line is lost is an error with that
-/// reason.
-fn is_molfile(value: &[u8]) -> bool {
-    let lines = || Block::new(value, 1).lines();
-    value.contains(&b'\n')
-        && (lines().take(4).any(molfile::states_version) || lines().any(|line| line.is_end()))
 }
 
 impl<R: BufRead> Iterator for Records<R> {
     type Item = Result<Record, ReadError>;
 
     fn next(&mut self) -> Option<Self::Item> {
-        if self.ended {
-            return None;
-        }
         self.title.clear();
-        match self.rows.read() {
-            Ok(Ok(true)) => Some(self.parse()),
-            Ok(Ok(false)) => {
-                self.ended = true;
-                None
+        let mut raw = std::mem::take(&mut self.raw);
+        let outcome = match self.cut_into(&mut raw) {
+            Ok(true) => {
+                let (title, outcome) = raw.parse(&mut self.reader, &self.molfile);
+                self.title = title;
+                Some(outcome)
             }
-            Ok(Err(error)) => Some(Err(error)),
-            Err(error) => {
-                self.ended = true;
-                let line = self.rows.line().saturating_add(1);
-                Some(Err(ReadError::of_source(&error, line)))
-            }
-        }
+            Ok(false) => None,
+            Err(failure) => Some(Err(failure)),
+        };
+        self.raw = raw;
+        outcome
     }
 }

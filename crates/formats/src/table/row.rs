@@ -49,11 +49,26 @@ impl Row {
         Some((field, &self.values[field.value.clone()]))
     }
 
+    /// Makes the places in the lines count from a place in them.
+    pub(super) fn rebase(&mut self, start: usize) {
+        for field in &mut self.fields {
+            field.raw = field.raw.start - start..field.raw.end - start;
+            field.line_start -= start;
+        }
+    }
+
     /// Bytes of memory set aside.
     #[cfg(test)]
     pub(super) fn capacity(&self) -> usize {
         self.values.capacity() + self.fields.capacity() * size_of::<Field>()
     }
+}
+
+/// The line with a number, at or behind the start of a field, among the lines in which it stands.
+pub(super) fn line_at<'l>(lines: &'l [u8], field: &Field, line: u32) -> &'l [u8] {
+    let mut lines = lines[field.line_start..].split(|&byte| byte == b'\n');
+    let ahead = line.saturating_sub(field.line) as usize;
+    lines.nth(ahead).unwrap_or_default()
 }
 
 impl Field {

@@ -7,7 +7,8 @@ use molkin_graph::Limits;
 
 use super::{
     Delimiter, header,
-    row::{Field, Row},
+    raw::RawRow,
+    row::{self, Field, Row},
 };
 use crate::{
     ReadError, ReadErrorKind, Span,
@@ -273,15 +274,17 @@ impl<R> Rows<R> {
     }
 
     /// The line on which a field begins.
-    pub(super) fn line_of(&self, field: &Field) -> &[u8] {
-        self.line_at(field, field.line)
+    fn line_of(&self, field: &Field) -> &[u8] {
+        row::line_at(&self.held, field, field.line)
     }
 
-    /// The line with a number, at or behind the start of a field.
-    pub(super) fn line_at(&self, field: &Field, line: u32) -> &[u8] {
-        let mut lines = self.held[field.line_start..].split(|&byte| byte == b'\n');
-        let ahead = line.saturating_sub(field.line) as usize;
-        lines.nth(ahead).unwrap_or_default()
+    /// Exchanges the row read last, and its lines, for the storage of one that is done with.
+    pub(super) fn hand_over(&mut self, raw: &mut RawRow) {
+        raw.raw.begin(self.row.first_line);
+        let lines = &self.held[self.start..self.next];
+        raw.raw.text.extend_from_slice(lines);
+        std::mem::swap(&mut self.row, &mut raw.row);
+        raw.row.rebase(self.start);
     }
 }
 

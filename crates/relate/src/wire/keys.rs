@@ -1,19 +1,19 @@
 //! One line of the table of keys.
 
-use std::borrow::Cow;
+use std::fmt::{Display, Write as _};
 
 use molkin_formats::{ReadError, smiles, source::RecordOutcome};
-use molkin_graph::Orderer;
+use molkin_graph::{CanonicalForm, Limits};
 use serde::Serialize;
 
-use crate::Structure;
+use crate::{Preparer, Structure};
 
 /// A record and its keys: the columns of `molkin keys`, in their order. Later columns are added at
 /// the end.
-#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
-pub struct KeyRow<'s> {
+#[derive(Debug, Clone, Default, PartialEq, Eq, Serialize)]
+pub struct KeyRow {
     /// File name, `-`, or the SMILES text as given.
-    pub source: Cow<'s, str>,
+    pub source: String,
     /// Number of the record in its source, from 1.
     pub record: u64,
     /// Name or title; empty where there is none.
@@ -32,39 +32,109 @@ pub struct KeyRow<'s> {
     pub message: String,
 }
 
-/// The row of one record. What cannot be read, or ordered within the limits, becomes a row with
-/// status `error`; this function does not fail.
-pub fn key_row<'s>(orderer: &mut Orderer, source: &'s str, outcome: RecordOutcome) -> KeyRow<'s> {
-    let mut row = KeyRow {
-        source: Cow::Borrowed(source),
-        record: outcome.index,
-        name: outcome.name,
-        status: "error",
-        formula: String::new(),
-        smiles: String::new(),
-        constitution_key: String::new(),
-        compound_key: String::new(),
-        message: String::new(),
-    };
-    match outcome.result {
-        Err(error) => row.message = placed(&error),
-        Ok(record) => match Structure::new(orderer, record.molecule) {
-            Err(error) => row.message = format!("{}: {error}", error.code()),
-            Ok(structure) => {
-                let canonical = structure.canonical();
-                row.status = "ok";
-                row.formula = structure.formula().to_string();
-                row.smiles = smiles::write(&canonical.form()).text;
-                row.constitution_key = canonical.constitution_key().to_string();
-                row.compound_key = canonical.compound_key().to_string();
-            }
-        },
-    }
-    row
+/// Makes one row after another in the same memory. One per thread.
+///
+/// # Examples
+/// ```
+/// use molkin_formats::source::{Format, ReadOptions, Records};
+/// use molkin_graph::Limits;
+/// use molkin_relate::wire::KeyRows;
+///
+/// let mut rows = KeyRows::new(Limits::default());
+/// let file = "OCC\nC1CC\n";
+/// let mut records = Records::new("a.smi", file.as_bytes(), Format::Smiles, ReadOptions::default());
+/// let mut ethanol = records.next().ok_or("a record")??;
+/// let row = rows.row("a.smi", &mut ethanol);
+/// assert_eq!((row.status, row.formula.as_str()), ("ok", "C2H6O"));
+/// let mut broken = records.next().ok_or("a record")??;
+/// assert_eq!(rows.row("a.smi", &mut broken).status, "error");
+/// # Ok::<(), Box<dyn std::error::Error>>(())
+/// ```
+#[derive(Debug)]
+pub struct KeyRows {
+    preparer: Preparer,
+    form: CanonicalForm,
+    writer: smiles::Writer,
+    written: smiles::Written,
+    row: KeyRow,
 }
 
-fn placed(error: &ReadError) -> String {
-    let span = error.span();
-    let (line, column) = (span.line, span.column);
-    format!("{line}:{column}: {}: {}", error.code(), error.kind())
+impl KeyRows {
+    /// Rows within the given limits.
+    pub fn new(limits: Limits) -> Self {
+        Self {
+            preparer: Preparer::new(limits),
+            form: CanonicalForm::default(),
+            writer: smiles::Writer::default(),
+            written: smiles::Written::default(),
+            row: KeyRow::default(),
+        }
+    }
+
+    /// The row of one record. What cannot be read, or ordered within the limits, becomes a row with
+    /// status `error`; this function does not fail.
+    ///
+    /// The outcome is left as storage for [`parse_into`](molkin_formats::source::Parser::parse_into).
+    pub fn row(&mut self, source: &str, outcome: &mut RecordOutcome) -> &KeyRow {
+        let row = &mut self.row;
+        row.begin(source, outcome);
+        match &mut outcome.result {
+            Err(error) => set(&mut row.message, Placed(error)),
+            Ok(record) => match self.preparer.prepare(&mut record.molecule) {
+                Err(error) => set(&mut row.message, format_args!("{}: {error}", error.code())),
+                Ok(_) => {
+                    let structure = self.preparer.form_into(&mut self.form);
+                    self.writer.write_into(&self.form, &mut self.written);
+                    row.fill(structure, &self.written.text);
+                }
+            },
+        }
+        row
+    }
+}
+
+impl KeyRow {
+    fn begin(&mut self, source: &str, outcome: &RecordOutcome) {
+        set(&mut self.source, source);
+        self.record = outcome.index;
+        self.name.clone_from(&outcome.name);
+        self.status = "error";
+        for field in [
+            &mut self.formula,
+            &mut self.smiles,
+            &mut self.constitution_key,
+            &mut self.compound_key,
+            &mut self.message,
+        ] {
+            field.clear();
+        }
+    }
+
+    fn fill(&mut self, structure: &Structure, smiles: &str) {
+        let canonical = structure.canonical();
+        self.status = "ok";
+        set(&mut self.formula, structure.formula());
+        self.smiles.push_str(smiles);
+        set(&mut self.constitution_key, canonical.constitution_key());
+        set(&mut self.compound_key, canonical.compound_key());
+    }
+}
+
+/// Puts a value's text into a field whose memory is reused.
+fn set(field: &mut String, value: impl Display) {
+    field.clear();
+    // Writing to a string does not fail.
+    let _ = write!(field, "{value}");
+}
+
+/// An error with its place and code.
+struct Placed<'e>(&'e ReadError);
+
+impl Display for Placed<'_> {
+    fn fmt(&self, out: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        let Self(error) = self;
+        let span = error.span();
+        let (line, column) = (span.line, span.column);
+        write!(out, "{line}:{column}: {}: {}", error.code(), error.kind())
+    }
 }
