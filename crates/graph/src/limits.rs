@@ -33,7 +33,7 @@ pub struct Limits {
     /// Steps of the search for the atom map of one pair: 500,000 by default, some 60 ns each.
     pub map_steps: u64,
     /// Steps of the search for the CIP labels of one record, a step being a node made or looked at:
-    /// 4 million by default, which takes about a second. The marked elements share them evenly; one
+    /// 4 million by default, which takes less than a second. The marked elements share them evenly; one
     /// that would need more has no label, and a note says so.
     pub label_steps: u64,
     /// Raised from outside to end searches early, as if their limit had been reached.
