@@ -210,7 +210,7 @@ def main():
             _, graphs, ordered, steps, seconds = line.split("\t")
             own = float(seconds) / int(graphs) * 1e6
             other = labelg(file.name, int(graphs))
-            beside = f"> {SLOW} s | –" if other is None else f"{other / int(graphs) * 1e6:,.1f} | {own / (other / int(graphs) * 1e6):.2f}"
+            beside = f"> {SLOW} s | –" if other is None else "too short for the clock | –" if other == 0 else f"{other / int(graphs) * 1e6:,.1f} | {own / (other / int(graphs) * 1e6):.2f}"
             print(f"| {name} | {graphs} | {ordered} | {int(steps) // int(graphs):,} | {own:,.1f} | {beside} |", flush=True)
 
 
