@@ -27,7 +27,7 @@ pub struct Limits {
     /// Unmarked stereo elements in positions that symmetry relates to marked ones: the stereoisomers
     /// they allow are listed, two to this power. 8 by default.
     pub open_elements: u32,
-    /// Steps of the search for the atom map of one pair: 500,000 by default, some 60 ns each.
+    /// Steps of the search for the atom map of one pair: 3 million by default, some 70 ns each.
     pub map_steps: u64,
     /// Raised from outside to end searches early, as if their limit had been reached.
     pub stop: Option<&'static AtomicBool>,
@@ -41,7 +41,7 @@ impl Default for Limits {
             atoms: 200_000,
             order_steps: 100_000_000,
             open_elements: 8,
-            map_steps: 500_000,
+            map_steps: 3_000_000,
             stop: None,
         }
     }

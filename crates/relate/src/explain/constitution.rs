@@ -59,17 +59,18 @@ pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanat
         stop: limits.stop,
     };
     let branching = Some([branching::of(a), branching::of(b)]);
-    // Constitutional isomers have equal formulae and each side lists its bonds once, so the only
-    // error left is a bridging hydrogen that one side counts and the other bonds; then there is no
-    // map to show.
-    let Ok(mapping) = mapping::map_atoms(&sides[0], &sides[1], &effort) else {
+    // Constitutional isomers have equal formulae and each side lists its bonds once, so all atoms
+    // are mapped. Should one be left over all the same, there is no map to show.
+    let found = mapping::map_atoms(&sides[0], &sides[1], &effort).ok();
+    let whole = found.filter(|found| found.left_over_a.is_empty() && found.left_over_b.is_empty());
+    let Some(mapping) = whole else {
         return Explanation {
             branching,
             stereo_least: true,
             ..Explanation::default()
         };
     };
-    let pairs = mapping.pairs;
+    let pairs: Vec<u32> = mapping.pairs.iter().map(|&(_, image)| image).collect();
     let mut atom_map: Vec<(u32, u32)> = left
         .atoms
         .iter()
