@@ -7,10 +7,12 @@
 //!
 //! - `pairs` lists what may be laid on what, `bound` turns it into one linear assignment per element (`assignment`) over
 //!   small neighbour matchings (`local`). The reward of a kept bond is shared between its two ends, and shares move until
-//!   the bound is tight: the dual ascent for quadratic assignment of Hahn & Grant, Oper. Res. 46, 912 (1998), applied to
-//!   graphs.
-//! - `search` branches on one atom at a time and leaves out what `symmetry` shows to be a repetition.
-//! - `grow` and `polish` give good maps early. They decide nothing.
+//!   the bound is tight: first by the dual ascent for quadratic assignment of Hahn & Grant, Oper. Res. 46, 912 (1998),
+//!   applied to graphs, then along subgradients (`descent`), which come near to the least bound of all shares.
+//! - `search` branches on one atom at a time and leaves out what `symmetry` shows to be a repetition; `node` says what is
+//!   done in between, `stage` what is proved one after the other.
+//! - `grow` and `polish` give good maps early. They decide nothing. `coherence` chooses among equally distant ones.
+//! - Where the formulae differ, each side gets absent atoms for what only the other has: without bonds and without cost.
 //!
 //! Invariant of the whole module: atom indices come from `problem`, which checks every index of the input, and pair and
 //! slot indices come from `pairs`, which is built from it. All other files index by them without a test.
@@ -31,6 +33,7 @@ mod problem;
 mod search;
 mod shares;
 mod stage;
+mod structures;
 mod symmetry;
 
 #[cfg(test)]
@@ -41,6 +44,9 @@ mod tests;
 use std::sync::atomic::AtomicBool;
 
 use self::{meter::Meter, problem::Problem};
+
+pub use self::structures::map_structures;
+pub(crate) use self::structures::{Heavy, sides};
 
 /// One structure as the search sees it: non-hydrogen atoms in canonical order.
 ///
