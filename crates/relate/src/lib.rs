@@ -6,7 +6,7 @@
 #![forbid(unsafe_code)]
 
 mod explain;
-mod mapping;
+pub mod mapping;
 mod relation;
 mod remarks;
 mod structure;

@@ -4,14 +4,16 @@
 //! without charge, spare ones where more valences are open than π bonds can fill, and one *onium*
 //! vertex where a lone pair can be lent at the price of a positive charge. Pools of further
 //! vertices take what is left over: negative charges (on heteroatoms, on carbon), open valences,
-//! positive charges on carbon or boron, and unused onium vertices. For given pool sizes the
-//! placements are exactly the perfect matchings of that graph.
+//! positive charges on carbon or boron, and unused onium vertices (of atoms without other charge, and
+//! of those that the σ skeleton charges already). For given pool sizes the placements are exactly the
+//! perfect matchings of that graph.
 //!
 //! Pool sizes follow from counting electrons. With `base` vertices that are not onium, charge `q`
 //! beyond what the σ skeleton enforces, `k` π bonds, `t` onium vertices used and `p` positive
 //! carbons there are `t + p − q` negative charges and `q + base − 2k − 2p` open valences. So the
 //! order of preference is a short loop: `k` from the largest down, `t + p` from the least up, `p`
-//! from the largest down, negative carbons from none up.
+//! from the largest down, onium vertices of atoms charged already from none up, negative carbons from
+//! none up.
 
 use crate::{Limits, OrderError, matching::Matching};
 
@@ -25,15 +27,18 @@ pub(crate) enum Pool {
     Open,
     Positive,
     Idle,
+    /// An unused onium vertex of an atom that the σ skeleton charges already.
+    IdleCharged,
 }
 
 impl Pool {
-    pub(crate) const ALL: [Self; 5] = [
+    pub(crate) const ALL: [Self; 6] = [
         Self::NegativeHetero,
         Self::NegativeCarbon,
         Self::Open,
         Self::Positive,
         Self::Idle,
+        Self::IdleCharged,
     ];
 }
 
@@ -63,7 +68,7 @@ pub(crate) struct System {
     /// Net charge of the atoms of the system.
     pub(crate) charge: i32,
     pub(super) rooms: Vec<Room>,
-    pub(super) pools: [u32; 5],
+    pub(super) pools: [u32; 6],
     /// First vertex of each group; groups are the atoms, then the pools.
     pub(super) first: Vec<u32>,
     /// The placement that was found.
@@ -91,6 +96,7 @@ impl System {
     ) -> Result<bool, OrderError> {
         let sum = |of: fn(&Room) -> u32| self.rooms.iter().map(of).sum::<u32>() as i32;
         let (base, onium) = (sum(|r| r.pi + r.spare), sum(|r| r.onium));
+        let twice = sum(|r| if r.valence.intrinsic > 0 { r.onium } else { 0 });
         let on_hetero = sum(|r| if r.valence.hetero { r.pi + r.spare } else { 0 });
         let intrinsic: i32 = self
             .atoms
@@ -113,13 +119,19 @@ impl System {
                     if open < 0 || base - (2 * pi_bonds - used) != open + positive + negative {
                         continue;
                     }
-                    for on_carbon in (negative - on_hetero).max(0)..=negative {
+                    // Atoms that bear two charges, then carbons that bear a negative one.
+                    let doubled = (used - (onium - twice)).max(0)..=used.min(twice);
+                    let carbons = (negative - on_hetero).max(0)..=negative;
+                    for (charged, on_carbon) in
+                        doubled.flat_map(|charged| carbons.clone().map(move |c| (charged, c)))
+                    {
                         let sizes = [
                             negative - on_carbon,
                             on_carbon,
                             open,
                             positive,
-                            onium - used,
+                            onium - twice - (used - charged),
+                            twice - charged,
                         ];
                         self.pools = sizes.map(|size| size as u32);
                         if self.is_placement(matching, limits)? {
@@ -163,7 +175,7 @@ impl System {
 
     /// The size of a largest matching by π bonds alone: an upper bound.
     fn most_pi_bonds(&mut self, with_onium: bool, matching: &mut Matching) -> i32 {
-        self.pools = [0; 5];
+        self.pools = [0; 6];
         self.build(matching);
         let mut vertices = 0;
         for (group, room) in self.rooms.iter().enumerate() {
@@ -248,7 +260,14 @@ impl System {
             Pool::NegativeCarbon => room.valence.can_be_negative && !room.valence.hetero,
             Pool::Open => true,
             Pool::Positive => room.valence.can_be_positive,
-            Pool::Idle => return base.end..all.end,
+            Pool::Idle | Pool::IdleCharged => {
+                let charged = room.valence.intrinsic > 0;
+                return if charged == (pool == Pool::IdleCharged) {
+                    base.end..all.end
+                } else {
+                    all.end..all.end
+                };
+            }
         };
         if allowed {
             base
@@ -274,7 +293,7 @@ impl System {
     pub(crate) fn charge_and_open(&self, mate: impl Fn(u32) -> u32, group: u32) -> (i32, u32) {
         let room = &self.rooms[group as usize];
         let count = |pool| self.multiplicity(&mate, group, self.pool_group(pool)) as i32;
-        let onium = room.onium as i32 - count(Pool::Idle);
+        let onium = room.onium as i32 - count(Pool::Idle) - count(Pool::IdleCharged);
         let negative = count(Pool::NegativeHetero) + count(Pool::NegativeCarbon);
         let charge = i32::from(room.valence.intrinsic) + onium + count(Pool::Positive) - negative;
         (charge, count(Pool::Open) as u32)

@@ -146,11 +146,9 @@ fn room(atom: &SkeletonAtom, drawn: &Drawn, open: u8) -> Option<Valence> {
     let hetero = is_group_15_to_17(atom.element);
     let boron = atom.element == Element::BORON;
     // Four pairs are an octet. Centres below the second row may take a π bond beyond the charge that
-    // their σ bonds enforce (sulfur trioxide), but only where they are drawn with it: a sulfoxide
-    // would give up its lone pair for it.
+    // their σ bonds enforce (sulfur trioxide).
     let octet_room = (4 - sigma).clamp(0, 2) > pi;
-    let beyond = left == -1 && atom.element.period() >= 3 && pi_drawn > 0;
-    let onium = hetero && octet_room && (left >= 0 || beyond);
+    let onium = hetero && octet_room && (left >= 0 || (left == -1 && atom.element.period() >= 3));
     let outside = pi_drawn > pi + i32::from(onium) + i32::from(boron)
         || (boron && (atom.charge > 0 || sigma > 3));
     (!outside).then_some(Valence {

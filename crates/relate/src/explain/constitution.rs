@@ -2,11 +2,11 @@
 
 use std::collections::HashMap;
 
-use molkin_graph::{Element, Limits, NormalAtom, NormalForm};
+use molkin_graph::Limits;
 
 use crate::{
     Structure,
-    mapping::{self, Effort, Side},
+    mapping::{self, Effort, Heavy, sides},
 };
 
 use super::{Explanation, branching};
@@ -41,17 +41,8 @@ pub struct HydrogenDifference {
     pub count_b: u8,
 }
 
-/// The order class of a mobile bond, beside 1 to 4.
-const MOBILE: u8 = 5;
-
-/// Non-hydrogen atoms and bonds of a record in canonical order.
-struct Heavy {
-    atoms: Vec<NormalAtom>,
-    bonds: Vec<(u32, u32, u8)>,
-}
-
 pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanation {
-    let heavy = [a, b].map(|side| Heavy::of(&side.canonical().normal_form()));
+    let heavy = [a, b].map(Heavy::of);
     let [left, right] = &heavy;
     let sides = sides(left, right);
     let effort = Effort {
@@ -59,17 +50,18 @@ pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanat
         stop: limits.stop,
     };
     let branching = Some([branching::of(a), branching::of(b)]);
-    // Constitutional isomers have equal formulae and each side lists its bonds once, so the only
-    // error left is a bridging hydrogen that one side counts and the other bonds; then there is no
-    // map to show.
-    let Ok(mapping) = mapping::map_atoms(&sides[0], &sides[1], &effort) else {
+    // Constitutional isomers have equal formulae and each side lists its bonds once, so all atoms
+    // are mapped. Should one be left over all the same, there is no map to show.
+    let found = mapping::map_atoms(&sides[0], &sides[1], &effort).ok();
+    let whole = found.filter(|found| found.left_over_a.is_empty() && found.left_over_b.is_empty());
+    let Some(mapping) = whole else {
         return Explanation {
             branching,
             stereo_least: true,
             ..Explanation::default()
         };
     };
-    let pairs = mapping.pairs;
+    let pairs: Vec<u32> = mapping.pairs.iter().map(|&(_, image)| image).collect();
     let mut atom_map: Vec<(u32, u32)> = left
         .atoms
         .iter()
@@ -104,57 +96,6 @@ pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanat
         stereo_least: true,
         steps: mapping.steps,
     }
-}
-
-impl Heavy {
-    fn of(form: &NormalForm) -> Self {
-        let mut place = vec![None; form.atoms.len()];
-        let mut atoms = Vec::new();
-        for (slot, atom) in place.iter_mut().zip(&form.atoms) {
-            if atom.element != Element::HYDROGEN {
-                *slot = Some(atoms.len() as u32);
-                atoms.push(*atom);
-            }
-        }
-        let mut bonds: Vec<(u32, u32, u8)> = form
-            .bonds
-            .iter()
-            .filter_map(|bond| {
-                let (a, b) = (place[bond.a as usize]?, place[bond.b as usize]?);
-                Some((a.min(b), a.max(b), bond.order.unwrap_or(MOBILE)))
-            })
-            .collect();
-        bonds.sort_unstable();
-        Self { atoms, bonds }
-    }
-}
-
-/// What an atom carries beside element and hydrogens.
-type AtomMark = (Option<i8>, Option<u8>, Option<u16>, [u8; 3]);
-
-fn mark(atom: &NormalAtom) -> AtomMark {
-    (atom.charge, atom.open, atom.isotope, atom.labelled)
-}
-
-/// Both sides for the search; equal marks get equal numbers, whichever side they are on.
-fn sides(left: &Heavy, right: &Heavy) -> [Side; 2] {
-    let mut known: Vec<AtomMark> = left.atoms.iter().chain(&right.atoms).map(mark).collect();
-    known.sort_unstable();
-    known.dedup();
-    [left, right].map(|side| Side {
-        elements: side
-            .atoms
-            .iter()
-            .map(|atom| atom.element.number())
-            .collect(),
-        hydrogens: side.atoms.iter().map(|atom| atom.hydrogens).collect(),
-        marks: side
-            .atoms
-            .iter()
-            .map(|atom| known.binary_search(&mark(atom)).unwrap_or_else(|at| at) as u32)
-            .collect(),
-        bonds: side.bonds.clone(),
-    })
 }
 
 fn difference(left: &Heavy, right: &Heavy, pairs: &[u32]) -> BondDifference {

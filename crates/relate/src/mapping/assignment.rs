@@ -3,41 +3,55 @@
 //! Maximises the summed profit of the chosen pairs. Duals and assignment are kept between calls: only atoms whose profits
 //! changed are assigned anew, along shortest augmenting paths (Jonker & Volgenant, Computing 38, 325 (1987)). The sum of
 //! the duals is at least the profit of any assignment.
+//!
+//! A column is a right atom; the columns of one element stand side by side.
 
 use super::{
     domain::Domain,
     meter::Meter,
     pairs::{PairIndex, Pairs},
-    problem::{Class, Problem},
+    problem::Problem,
 };
 
 const NONE: u32 = u32::MAX;
+
+/// So many pairs looked at count as one step.
+const PAIRS_A_STEP: usize = 32;
+
+/// A right atom with its dual, and where the present search for a path stands with it.
+#[derive(Debug, Clone, Copy)]
+struct Column {
+    dual: i64,
+    /// The left atom that has it.
+    owner: u32,
+    /// The left atom from which the path comes.
+    before: u32,
+    distance: i64,
+}
 
 /// What can be put back with [`Assignment::restore`].
 #[derive(Debug, Clone)]
 pub(super) struct Duals {
     left: Vec<i64>,
-    right: Vec<i64>,
+    columns: Vec<Column>,
     image: Vec<u32>,
-    origin: Vec<u32>,
 }
 
 /// An assignment with its dual prices: `left + right >= profit` for every possible pair once solved, equal for chosen ones.
 #[derive(Debug)]
 pub(super) struct Assignment {
     duals: Duals,
+    /// Column of each right atom, and right atom of each column.
+    column_of: Vec<u32>,
+    right_of: Vec<u32>,
+    /// What makes a pair of a left atom its column, modulo 2^32.
+    offset: Vec<u32>,
     /// Left atoms whose profits or possibilities changed since they were last assigned.
     stale: Vec<bool>,
     any_stale: bool,
-    path: Path,
-}
-
-/// Scratch of the shortest-path search, by right atom.
-#[derive(Debug)]
-struct Path {
-    distance: Vec<i64>,
-    before: Vec<u32>,
-    done: Vec<bool>,
+    /// Columns at the present distance that are yet to be looked at, and those that were.
+    ready: Vec<u32>,
+    done: Vec<u32>,
 }
 
 /// What the solver reads.
@@ -50,26 +64,58 @@ pub(super) struct Input<'p> {
 }
 
 impl Assignment {
-    pub(super) fn new(atoms: usize) -> Self {
+    pub(super) fn new(problem: &Problem, pairs: &Pairs) -> Self {
+        let atoms = problem.left.atoms();
+        let mut column_of = vec![0; atoms];
+        let mut offset = vec![0; atoms];
+        let mut right_of = Vec::with_capacity(atoms);
+        for class in &problem.classes {
+            let first = right_of.len() as u32;
+            for &left in &class.left {
+                offset[left as usize] = first.wrapping_sub(pairs.of(left, class.right[0]));
+            }
+            for &right in &class.right {
+                column_of[right as usize] = right_of.len() as u32;
+                right_of.push(right);
+            }
+        }
+        let column = Column {
+            dual: 0,
+            owner: NONE,
+            before: NONE,
+            distance: i64::MAX,
+        };
         Self {
             duals: Duals {
                 left: vec![0; atoms],
-                right: vec![0; atoms],
+                columns: vec![column; atoms],
                 image: vec![NONE; atoms],
-                origin: vec![NONE; atoms],
             },
+            column_of,
+            right_of,
+            offset,
             stale: vec![true; atoms],
             any_stale: true,
-            path: Path {
-                distance: vec![i64::MAX; atoms],
-                before: vec![NONE; atoms],
-                done: vec![false; atoms],
-            },
+            ready: Vec::new(),
+            done: Vec::new(),
         }
     }
 
-    /// Notes that the profits or possibilities of a left atom changed.
-    pub(super) fn touch(&mut self, left: u32) {
+    /// Notes a new profit of a pair. If it is neither chosen nor above its duals, nothing changes.
+    pub(super) fn note_profit(&mut self, atoms: (u32, u32), profit: i64) {
+        if self.duals.image[atoms.0 as usize] == atoms.1 || self.slack(atoms, profit) < 0 {
+            self.touch(atoms.0);
+        }
+    }
+
+    /// Notes that a pair is no longer possible.
+    pub(super) fn note_removal(&mut self, atoms: (u32, u32)) {
+        if self.duals.image[atoms.0 as usize] == atoms.1 {
+            self.touch(atoms.0);
+        }
+    }
+
+    fn touch(&mut self, left: u32) {
         self.stale[left as usize] = true;
         self.any_stale = true;
     }
@@ -80,7 +126,8 @@ impl Assignment {
 
     /// The sum of the duals: no assignment has a higher profit.
     pub(super) fn value(&self) -> i64 {
-        self.duals.left.iter().sum::<i64>() + self.duals.right.iter().sum::<i64>()
+        let right = self.duals.columns.iter().map(|column| column.dual);
+        self.duals.left.iter().sum::<i64>() + right.sum::<i64>()
     }
 
     /// The chosen right atom of each left atom. Complete after a successful [`Assignment::solve`].
@@ -90,7 +137,8 @@ impl Assignment {
 
     /// By how much the profit of a pair may grow before the bound grows.
     pub(super) fn slack(&self, atoms: (u32, u32), profit: i64) -> i64 {
-        self.duals.left[atoms.0 as usize] + self.duals.right[atoms.1 as usize] - profit
+        let column = self.column_of[atoms.1 as usize];
+        self.duals.left[atoms.0 as usize] + self.duals.columns[column as usize].dual - profit
     }
 
     pub(super) fn duals(&self) -> &Duals {
@@ -106,133 +154,162 @@ impl Assignment {
 
     /// Assigns all atoms. Returns false if that is impossible.
     pub(super) fn solve(&mut self, input: Input<'_>, meter: &mut Meter<'_>) -> bool {
+        let mut first = 0;
+        let mut looked_at = 0;
+        let mut possible = true;
         for class in &input.problem.classes {
+            let columns = first..first + class.right.len();
+            first = columns.end;
             for &left in &class.left {
                 if self.stale[left as usize] {
                     self.price(left, input);
-                    meter.spend(1 + input.domain.pairs_of(left).len() / 32);
+                    looked_at += input.domain.pairs_of(left).len();
                 }
             }
             for &left in &class.left {
-                if self.stale[left as usize] {
-                    self.stale[left as usize] = false;
-                    if self.duals.image[left as usize] == NONE
-                        && !self.augment(left, class, input, meter)
-                    {
-                        return false;
-                    }
+                if std::mem::take(&mut self.stale[left as usize])
+                    && self.duals.image[left as usize] == NONE
+                {
+                    possible &= self.augment(left, columns.clone(), input, &mut looked_at);
                 }
             }
         }
+        meter.spend(1 + looked_at / PAIRS_A_STEP);
         self.any_stale = false;
-        true
+        possible
     }
 
     /// Gives a left atom the least valid dual and frees it if its chosen pair is no longer the best.
     fn price(&mut self, left: u32, input: Input<'_>) {
+        let offset = self.offset[left as usize];
         let mut best = i64::MIN;
         for &pair in input.domain.pairs_of(left) {
-            let (_, right) = input.pairs.atoms(pair);
-            best = best.max(input.profit[pair as usize] - self.duals.right[right as usize]);
+            let column = &self.duals.columns[pair.wrapping_add(offset) as usize];
+            best = best.max(input.profit[pair as usize] - column.dual);
         }
         let image = self.duals.image[left as usize];
         if image != NONE {
             let pair = input.pairs.of(left, image);
-            let own = input.profit[pair as usize] - self.duals.right[image as usize];
+            let column = &mut self.duals.columns[self.column_of[image as usize] as usize];
+            let own = input.profit[pair as usize] - column.dual;
             if !input.domain.contains(pair) || own < best {
                 self.duals.image[left as usize] = NONE;
-                self.duals.origin[image as usize] = NONE;
+                column.owner = NONE;
             }
         }
         // An atom without possibilities makes the augmentation fail; its dual is of no use then.
         self.duals.left[left as usize] = best.max(i64::MIN / 4);
     }
 
-    /// Finds the cheapest way to give a free left atom a right atom and moves the atoms on that way.
+    /// Finds the cheapest way to give a free left atom a column and moves the atoms on that way.
     fn augment(
         &mut self,
         left: u32,
-        class: &Class,
+        columns: std::ops::Range<usize>,
         input: Input<'_>,
-        meter: &mut Meter<'_>,
+        looked_at: &mut usize,
     ) -> bool {
-        for &right in &class.right {
-            self.path.distance[right as usize] = i64::MAX;
-            self.path.done[right as usize] = false;
+        for column in &mut self.duals.columns[columns.clone()] {
+            column.distance = i64::MAX;
         }
+        *looked_at += columns.len() / 2;
+        self.ready.clear();
+        self.done.clear();
         let mut current = left;
         let mut reached = 0;
         loop {
-            self.relax(current, reached, input);
-            meter.spend(1 + (class.right.len() + input.domain.pairs_of(current).len()) / 32);
-            let Some(nearest) = self.nearest(class) else {
-                return false;
-            };
-            reached = self.path.distance[nearest as usize];
-            let owner = self.duals.origin[nearest as usize];
-            if owner == NONE {
-                self.move_duals(left, reached, class);
-                self.flip(nearest);
+            *looked_at += input.domain.pairs_of(current).len();
+            let mut free = self.relax(current, reached, input);
+            if free.is_none() && self.ready.is_empty() {
+                *looked_at += columns.len();
+                let Some(next) = self.next_distance(columns.clone(), reached) else {
+                    return false;
+                };
+                reached = next;
+                free = self.make_ready(columns.clone(), reached);
+            }
+            if let Some(free) = free {
+                self.move_duals(left, reached);
+                self.flip(free);
                 return true;
             }
-            self.path.done[nearest as usize] = true;
-            current = owner;
+            let Some(column) = self.ready.pop() else {
+                return false;
+            };
+            self.done.push(column);
+            current = self.duals.columns[column as usize].owner;
         }
     }
 
-    /// Shortens the ways to right atoms by going over `current`, which is `reached` away.
-    fn relax(&mut self, current: u32, reached: i64, input: Input<'_>) {
+    /// Shortens the ways to columns by going over `current`, which is `reached` away. Returns a free column at that
+    /// distance; the others there become ready.
+    fn relax(&mut self, current: u32, reached: i64, input: Input<'_>) -> Option<u32> {
         let dual = self.duals.left[current as usize] + reached;
+        let offset = self.offset[current as usize];
         for &pair in input.domain.pairs_of(current) {
-            let (_, right) = input.pairs.atoms(pair);
-            let right = right as usize;
-            let distance = dual + self.duals.right[right] - input.profit[pair as usize];
-            if !self.path.done[right] && distance < self.path.distance[right] {
-                self.path.distance[right] = distance;
-                self.path.before[right] = current;
+            let index = pair.wrapping_add(offset);
+            let column = &mut self.duals.columns[index as usize];
+            let distance = dual + column.dual - input.profit[pair as usize];
+            if distance < column.distance {
+                column.distance = distance;
+                column.before = current;
+                if distance == reached {
+                    if column.owner == NONE {
+                        return Some(index);
+                    }
+                    self.ready.push(index);
+                }
             }
         }
+        None
     }
 
-    /// The nearest right atom that is not done, a free one if several are equally near.
-    fn nearest(&self, class: &Class) -> Option<u32> {
-        let open = class
-            .right
+    /// The least distance beyond `reached`, up to which all columns are done.
+    fn next_distance(&self, columns: std::ops::Range<usize>, reached: i64) -> Option<i64> {
+        let distances = self.duals.columns[columns]
             .iter()
-            .copied()
-            .filter(|&right| !self.path.done[right as usize]);
-        open.map(|right| {
-            (
-                self.path.distance[right as usize],
-                self.duals.origin[right as usize] != NONE,
-                right,
-            )
-        })
-        .filter(|&(distance, ..)| distance < i64::MAX)
-        .min()
-        .map(|(.., right)| right)
+            .map(|column| column.distance);
+        let next = distances.filter(|&distance| distance > reached).min();
+        next.filter(|&next| next < i64::MAX)
+    }
+
+    /// Returns a free column at a distance, or makes all columns there ready.
+    fn make_ready(&mut self, columns: std::ops::Range<usize>, distance: i64) -> Option<u32> {
+        let first = columns.start as u32;
+        for (index, column) in (first..).zip(&self.duals.columns[columns]) {
+            if column.distance == distance {
+                if column.owner == NONE {
+                    return Some(index);
+                }
+                self.ready.push(index);
+            }
+        }
+        None
     }
 
     /// Makes the pairs on all shortest ways up to `reached` tight.
-    fn move_duals(&mut self, left: u32, reached: i64, class: &Class) {
+    fn move_duals(&mut self, left: u32, reached: i64) {
         self.duals.left[left as usize] -= reached;
-        for &right in &class.right {
-            if self.path.done[right as usize] {
-                let by = reached - self.path.distance[right as usize];
-                self.duals.right[right as usize] += by;
-                let owner = self.duals.origin[right as usize];
-                self.duals.left[owner as usize] -= by;
-            }
+        for &column in &self.done {
+            let column = &mut self.duals.columns[column as usize];
+            let by = reached - column.distance;
+            column.dual += by;
+            self.duals.left[column.owner as usize] -= by;
         }
     }
 
-    /// Moves every left atom on the way to `right` one step on.
-    fn flip(&mut self, right: u32) {
-        let mut right = right;
-        while right != NONE {
-            let left = self.path.before[right as usize];
-            self.duals.origin[right as usize] = left;
-            right = std::mem::replace(&mut self.duals.image[left as usize], right);
+    /// Moves every left atom on the way to a column one step on.
+    fn flip(&mut self, column: u32) {
+        let mut column = column;
+        loop {
+            let left = self.duals.columns[column as usize].before;
+            self.duals.columns[column as usize].owner = left;
+            let right = self.right_of[column as usize];
+            let old = std::mem::replace(&mut self.duals.image[left as usize], right);
+            if old == NONE {
+                return;
+            }
+            column = self.column_of[old as usize];
         }
     }
 }

@@ -7,6 +7,7 @@
 
 use super::{
     assignment::{Assignment, Duals, Input},
+    descent::Direction,
     domain::Domain,
     goal::Weights,
     local,
@@ -15,6 +16,9 @@ use super::{
     problem::Problem,
     shares::{self, Shares},
 };
+
+/// Hopeless pairs are looked for whenever the bound came nearer to what is needed, and once in so many times otherwise.
+const HOPELESS_EVERY: u32 = 4;
 
 /// What can be put back with [`Bound::undo`].
 #[derive(Debug)]
@@ -27,8 +31,8 @@ pub(super) struct Mark {
 /// The bound, its shares and the possible pairs.
 #[derive(Debug)]
 pub(super) struct Bound<'p> {
-    problem: &'p Problem,
-    pairs: &'p Pairs,
+    pub(super) problem: &'p Problem,
+    pub(super) pairs: &'p Pairs,
     pub(super) domain: Domain,
     pub(super) assignment: Assignment,
     shares: Shares<'p>,
@@ -37,8 +41,12 @@ pub(super) struct Bound<'p> {
     /// Pairs whose profit has to be computed anew.
     queue: Vec<PairIndex>,
     queued: Vec<bool>,
-    weights: Vec<i32>,
+    pub(super) weights: Vec<i32>,
     gaps: Vec<i32>,
+    pub(super) direction: Direction,
+    /// Times that the bound settled, and by how much it was above what is needed the last time.
+    settled: u32,
+    spare: i64,
 }
 
 impl<'p> Bound<'p> {
@@ -48,6 +56,7 @@ impl<'p> Bound<'p> {
         pairs: &'p Pairs,
         weights: Weights,
         earlier: Option<(&[i32], Weights)>,
+        allowed: &[bool],
     ) -> Self {
         let cost = (0..pairs.none()).map(|pair| {
             let (left, right) = pairs.atoms(pair);
@@ -56,14 +65,17 @@ impl<'p> Bound<'p> {
         Self {
             problem,
             pairs,
-            domain: Domain::new(problem, pairs),
-            assignment: Assignment::new(problem.left.atoms()),
+            domain: Domain::new(problem, pairs, allowed),
+            assignment: Assignment::new(problem, pairs),
             shares: Shares::new(pairs, weights, earlier),
             cost: cost.collect(),
             queue: (0..pairs.none()).collect(),
             queued: vec![true; pairs.len()],
             weights: Vec::new(),
             gaps: Vec::new(),
+            direction: Direction::new(pairs.slots()),
+            settled: 0,
+            spare: i64::MAX,
         }
     }
 
@@ -131,10 +143,14 @@ impl<'p> Bound<'p> {
                 domain: &self.domain,
                 profit: self.shares.profits(),
             };
-            if !self.assignment.solve(input, meter)
-                || self.value() < needed
-                || !self.remove_hopeless(needed)
-            {
+            if !self.assignment.solve(input, meter) || self.value() < needed {
+                return false;
+            }
+            let spare = self.value() - needed;
+            self.settled = self.settled.wrapping_add(1);
+            let worthwhile = spare < self.spare || self.settled.is_multiple_of(HOPELESS_EVERY);
+            self.spare = spare;
+            if worthwhile && !self.remove_hopeless(needed) {
                 return false;
             }
             if meter.ended() || (self.queue.is_empty() && !self.assignment.is_stale()) {
@@ -158,6 +174,17 @@ impl<'p> Bound<'p> {
         }
     }
 
+    /// Moves a part of a reward, or as much of it as there is, from one end to the other.
+    pub(super) fn move_share(&mut self, to: usize, from: usize, part: i64) {
+        let part = part.min(i64::from(self.shares.share(from))) as i32;
+        if part > 0 {
+            let (gains, loses) = (self.pairs.partner(from), self.pairs.partner(to));
+            self.shares.take(gains, to, part);
+            self.enqueue(gains);
+            self.enqueue(loses);
+        }
+    }
+
     /// Takes shares from the partners of a pair, as far as it can grow for nothing: a part of its slack in the assignment
     /// and of the gap of each slot in the matching.
     fn take_shares(&mut self, pair: PairIndex, meter: &mut Meter<'_>) {
@@ -174,11 +201,8 @@ impl<'p> Bound<'p> {
             // Three quarters of the slack and half of the gap: all of both would swing back and forth.
             let wanted = (3 * slack + 2 * i64::from(self.gaps[index])) / (4 * few);
             let left_to_take = self.shares.share(self.pairs.mirror(slot));
-            let part = wanted.min(i64::from(left_to_take)) as i32;
-            if part > 0 {
-                self.shares.take(pair, slot, part);
-                self.enqueue(partner);
-                self.enqueue(pair);
+            if wanted > 0 && left_to_take > 0 {
+                self.move_share(slot, self.pairs.mirror(slot), wanted);
             }
         }
     }
@@ -190,7 +214,7 @@ impl<'p> Bound<'p> {
         }
         for index in 0..self.domain.removed_since(mark).len() {
             let pair = self.domain.removed_since(mark)[index];
-            self.assignment.touch(self.pairs.atoms(pair).0);
+            self.assignment.note_removal(self.pairs.atoms(pair));
             for slot in self.pairs.block(pair) {
                 let partner = self.pairs.partner(slot);
                 if self.domain.contains(partner) && self.shares.share(self.pairs.mirror(slot)) > 0 {
@@ -233,24 +257,29 @@ impl<'p> Bound<'p> {
                 i64::from(local::best(&self.weights, rows, columns)) - self.cost[pair as usize];
             if profit != self.shares.profit(pair) {
                 self.shares.set_profit(pair, profit);
-                self.assignment.touch(self.pairs.atoms(pair).0);
+                self.assignment.note_profit(self.pairs.atoms(pair), profit);
             }
         }
     }
 
     /// Collects the shares of a pair that can still be earned; its size comes back.
-    fn gather(&mut self, pair: PairIndex, meter: &mut Meter<'_>) -> (usize, usize) {
+    pub(super) fn gather(&mut self, pair: PairIndex, meter: &mut Meter<'_>) -> (usize, usize) {
         let (left, right) = self.pairs.atoms(pair);
         let size = (
             self.problem.left.degree(left),
             self.problem.right.degree(right),
         );
         self.weights.clear();
-        for slot in self.pairs.block(pair) {
-            let earned = self.domain.contains(self.pairs.partner(slot));
-            self.weights
-                .push(if earned { self.shares.share(slot) } else { 0 });
-        }
+        let shares = &self.shares.shares()[self.pairs.block(pair)];
+        let partners = self.pairs.partners(pair);
+        let earned = shares.iter().zip(partners).map(|(&share, &partner)| {
+            if self.domain.contains(partner) {
+                share
+            } else {
+                0
+            }
+        });
+        self.weights.extend(earned);
         meter.spend(local::steps(size.0, size.1));
         size
     }

@@ -29,8 +29,8 @@ pub(super) struct Domain {
 }
 
 impl Domain {
-    /// Everything is possible.
-    pub(super) fn new(problem: &Problem, pairs: &Pairs) -> Self {
+    /// Exactly the allowed pairs are possible.
+    pub(super) fn new(problem: &Problem, pairs: &Pairs, allowed: &[bool]) -> Self {
         let atoms = problem.left.atoms();
         let mut domain = Self {
             order: (0..pairs.none()).collect(),
@@ -50,6 +50,11 @@ impl Domain {
                 domain.left_count[left as usize] = size;
                 domain.right_count[right as usize] = size;
                 domain.class[left as usize] = index;
+            }
+        }
+        for (pair, &allowed) in (0..).zip(allowed) {
+            if !allowed {
+                domain.remove(pair, pairs);
             }
         }
         domain

@@ -1,9 +1,9 @@
 //! What a search is to prove, and the best map that it has.
 
-use super::{Distance, problem::Problem, symmetry::Kept};
+use super::{Distance, coherence::Coherence, problem::Problem, symmetry::Kept};
 
 /// How many parts the unit of cost is split into, so that integer shares of it are fine enough.
-pub(super) const SCALE: i64 = 256;
+pub(super) const SCALE: i64 = 4096;
 
 /// What the parts of the distance weigh. A bond that only one side has costs `bond`, and so on.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -48,28 +48,37 @@ pub(super) struct Goal {
     pub(super) kept: Kept,
 }
 
-/// The best map so far.
+/// The best map so far: the nearest, of these the most coherent, of these the lexicographically least.
 #[derive(Debug)]
 pub(super) struct Incumbent {
     pub(super) map: Vec<u32>,
     pub(super) distance: Distance,
+    pub(super) coherence: Coherence,
 }
 
 impl Incumbent {
     pub(super) fn new(problem: &Problem, map: Vec<u32>) -> Self {
         Self {
             distance: problem.distance(&map),
+            coherence: Coherence::of(problem, &map),
             map,
         }
     }
 
-    /// Takes a map if it is nearer, or equally near and lexicographically less.
-    pub(super) fn offer(&mut self, problem: &Problem, map: &[u32]) {
+    /// Takes a map if it is better. Returns its distance.
+    pub(super) fn offer(&mut self, problem: &Problem, map: &[u32]) -> Distance {
         let distance = problem.distance(map);
-        if (distance, map) < (self.distance, self.map.as_slice()) {
+        if distance > self.distance || map == self.map {
+            return distance;
+        }
+        let coherence = Coherence::of(problem, map);
+        let own = (self.distance, self.coherence, self.map.as_slice());
+        if (distance, coherence, map) < own {
             self.distance = distance;
+            self.coherence = coherence;
             self.map.clear();
             self.map.extend_from_slice(map);
         }
+        distance
     }
 }

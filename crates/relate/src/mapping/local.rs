@@ -47,7 +47,7 @@ pub(super) fn best(weights: &[i32], rows: usize, columns: usize) -> i32 {
         0 | 1 => weights.iter().copied().max().unwrap_or(0),
         2 => (weights[0] + weights[3]).max(weights[1] + weights[2]),
         3 => largest(&square::<3>(weights, columns), &PERMUTATIONS_3),
-        SMALL => largest(&square::<4>(weights, columns), &PERMUTATIONS_4),
+        SMALL => largest_of_4(&square::<4>(weights, columns)),
         _ => hungarian(weights, rows, columns, None),
     }
 }
@@ -102,6 +102,66 @@ pub(super) fn best_and_gaps(
     }
 }
 
+/// The places in `weights` of one best matching.
+pub(super) fn choose(weights: &[i32], rows: usize, columns: usize, chosen: &mut Vec<usize>) {
+    chosen.clear();
+    match rows.max(columns) {
+        _ if rows.min(columns) == 0 => {}
+        ..=3 => choose_from(
+            &square::<3>(weights, columns),
+            &PERMUTATIONS_3,
+            (rows, columns),
+            chosen,
+        ),
+        SMALL => choose_from(
+            &square::<4>(weights, columns),
+            &PERMUTATIONS_4,
+            (rows, columns),
+            chosen,
+        ),
+        _ => {
+            let (matching, turned) = match_all(weights, rows, columns);
+            for (column, &row) in matching.row_at.iter().enumerate().skip(1) {
+                if row != 0 {
+                    let (row, column) = if turned { (column, row) } else { (row, column) };
+                    chosen.push((row - 1) * columns + column - 1);
+                }
+            }
+        }
+    }
+}
+
+fn choose_from<const N: usize>(
+    square: &[[i32; N]; N],
+    permutations: &[[usize; N]],
+    (rows, columns): (usize, usize),
+    chosen: &mut Vec<usize>,
+) {
+    let sum =
+        |permutation: &&[usize; N]| (0..N).map(|row| square[row][permutation[row]]).sum::<i32>();
+    if let Some(best) = permutations.iter().max_by_key(sum) {
+        let places = best.iter().enumerate().take(rows);
+        let inside = places.filter(|&(_, &column)| column < columns);
+        chosen.extend(inside.map(|(row, column)| row * columns + column));
+    }
+}
+
+/// Matches all rows or all columns, whichever are fewer; whether they were exchanged.
+fn match_all(weights: &[i32], rows: usize, columns: usize) -> (Matching, bool) {
+    let turned = rows > columns;
+    let matrix = Matrix {
+        weights,
+        columns,
+        turned,
+    };
+    let (short, long) = (rows.min(columns), rows.max(columns));
+    let mut matching = Matching::new(short, long);
+    for row in 1..=short {
+        matching.add(row, &matrix);
+    }
+    (matching, turned)
+}
+
 /// How many steps a matching of this size counts.
 pub(super) fn steps(rows: usize, columns: usize) -> usize {
     let large = rows.max(columns);
@@ -132,6 +192,25 @@ fn largest<const N: usize>(square: &[[i32; N]; N], permutations: &[[usize; N]]) 
     best
 }
 
+/// As [`largest`]: the first two rows take two columns, the last two rows the others.
+fn largest_of_4(square: &[[i32; 4]; 4]) -> i32 {
+    const SPLITS: [[usize; 4]; 6] = [
+        [0, 1, 2, 3],
+        [0, 2, 1, 3],
+        [0, 3, 1, 2],
+        [1, 2, 0, 3],
+        [1, 3, 0, 2],
+        [2, 3, 0, 1],
+    ];
+    let [first, second, third, fourth] = square;
+    let pair = |rows: [&[i32; 4]; 2], one: usize, other: usize| {
+        (rows[0][one] + rows[1][other]).max(rows[0][other] + rows[1][one])
+    };
+    let split =
+        |[a, b, c, d]: [usize; 4]| pair([first, second], a, b) + pair([third, fourth], c, d);
+    SPLITS.into_iter().map(split).max().unwrap_or(0)
+}
+
 fn gaps_of<const N: usize>(
     square: &[[i32; N]; N],
     permutations: &[[usize; N]],
@@ -160,16 +239,13 @@ fn gaps_of<const N: usize>(
 
 /// Any size. Gaps are the reduced costs.
 fn hungarian(weights: &[i32], rows: usize, columns: usize, gaps: Option<&mut Vec<i32>>) -> i32 {
+    let (matching, turned) = match_all(weights, rows, columns);
     let matrix = Matrix {
         weights,
         columns,
-        turned: rows > columns,
+        turned,
     };
-    let (short, long) = (rows.min(columns), rows.max(columns));
-    let mut matching = Matching::new(short, long);
-    for row in 1..=short {
-        matching.add(row, &matrix);
-    }
+    let long = rows.max(columns);
     if let Some(gaps) = gaps {
         for row in 0..rows {
             for column in 0..columns {
@@ -305,6 +381,11 @@ mod tests {
                     assert_eq!(best(&weights, rows, columns), expected);
                     assert_eq!(best_and_gaps(&weights, rows, columns, &mut gaps), expected);
                     assert_eq!(hungarian(&weights, rows, columns, None), expected);
+                    let mut chosen = Vec::new();
+                    choose(&weights, rows, columns, &mut chosen);
+                    let total: i32 = chosen.iter().map(|&place| weights[place]).sum();
+                    assert_eq!(total, expected);
+                    assert_eq!(chosen.len(), rows.min(columns));
                     assert_eq!(gaps.len(), weights.len());
                     assert!(gaps.iter().all(|&gap| gap >= 0));
                 }

@@ -33,9 +33,9 @@ impl<'s> Meter<'s> {
         self.limit = self.spent.saturating_add(steps).min(self.budget);
     }
 
-    /// What is left of the whole budget.
-    pub(super) fn left(&self) -> u64 {
-        self.budget.saturating_sub(self.spent)
+    /// Allows a part of the whole budget from here on, in sixteenths, as far as there is so much left.
+    pub(super) fn allow_sixteenths(&mut self, part: u64) {
+        self.allow(self.budget / 16 * part);
     }
 
     /// Steps spent so far.

@@ -2,10 +2,11 @@
 
 use super::{Distance, Side};
 
-/// The least distance over all one-to-one maps that keep the elements; (iv) is that of the best of them.
+/// The least distance over all maps that keep the elements and map as many atoms as these allow; (iv) is that of the best
+/// of them.
 pub(super) fn least_distance(a: &Side, b: &Side) -> Distance {
-    let atoms = a.elements.len();
     let table = |side: &Side| {
+        let atoms = side.elements.len();
         let mut table = vec![vec![0_u8; atoms]; atoms];
         for &(first, second, class) in &side.bonds {
             table[first as usize][second as usize] = class;
@@ -13,47 +14,67 @@ pub(super) fn least_distance(a: &Side, b: &Side) -> Distance {
         }
         table
     };
-    let (left, right) = (table(a), table(b));
-    let mut best: Option<Distance> = None;
-    let mut image: Vec<usize> = Vec::new();
-    let mut next = 0;
-    // Counts through all injections: `image` holds the atoms laid so far, `next` the first candidate for the one after.
-    loop {
-        if image.len() == atoms {
-            let distance = distance(a, b, &left, &right, &image);
-            best = Some(best.map_or(distance, |best| best.min(distance)));
+    let tables = [table(a), table(b)];
+    let count = |side: &Side, element| side.elements.iter().filter(|&&e| e == element).count();
+    // How many atoms of each element may stay unmapped on the first side.
+    let mut spare: Vec<usize> = (0..=u8::MAX)
+        .map(|element| count(a, element).saturating_sub(count(b, element)))
+        .collect();
+    let mut least = None;
+    extend(a, b, &tables, &mut Vec::new(), &mut spare, &mut least);
+    least.unwrap_or_default()
+}
+
+/// Lays the next atom of the first side in every way.
+fn extend(
+    a: &Side,
+    b: &Side,
+    tables: &[Vec<Vec<u8>>; 2],
+    image: &mut Vec<Option<usize>>,
+    spare: &mut [usize],
+    least: &mut Option<Distance>,
+) {
+    let Some(&element) = a.elements.get(image.len()) else {
+        let distance = distance(a, b, tables, image);
+        *least = Some(least.map_or(distance, |least| least.min(distance)));
+        return;
+    };
+    for to in 0..b.elements.len() {
+        if b.elements[to] == element && !image.contains(&Some(to)) {
+            image.push(Some(to));
+            extend(a, b, tables, image, spare, least);
+            image.pop();
         }
-        let fits = |&to: &usize| a.elements[image.len()] == b.elements[to] && !image.contains(&to);
-        let candidate = if image.len() == atoms {
-            None
-        } else {
-            (next..atoms).find(fits)
-        };
-        match (candidate, image.last()) {
-            (Some(to), _) => {
-                image.push(to);
-                next = 0;
-            }
-            (None, Some(&last)) => {
-                image.pop();
-                next = last + 1;
-            }
-            (None, None) => return best.unwrap_or_default(),
-        }
+    }
+    if spare[usize::from(element)] > 0 {
+        spare[usize::from(element)] -= 1;
+        image.push(None);
+        extend(a, b, tables, image, spare, least);
+        image.pop();
+        spare[usize::from(element)] += 1;
     }
 }
 
-fn distance(a: &Side, b: &Side, left: &[Vec<u8>], right: &[Vec<u8>], image: &[usize]) -> Distance {
+fn distance(
+    a: &Side,
+    b: &Side,
+    [left, right]: &[Vec<Vec<u8>>; 2],
+    image: &[Option<usize>],
+) -> Distance {
     let mut distance = Distance::default();
-    for (atom, &to) in image.iter().enumerate() {
+    let mut kept = 0;
+    for (atom, to) in image.iter().enumerate() {
+        let Some(to) = *to else { continue };
         distance.hydrogens += u32::from(a.hydrogens[atom].abs_diff(b.hydrogens[to]));
         distance.marks += u32::from(a.marks[atom] != b.marks[to]);
-        for (other, &far) in image.iter().enumerate().take(atom) {
+        for (other, far) in image.iter().enumerate().take(atom) {
+            let Some(far) = *far else { continue };
             let (own, others) = (left[atom][other], right[to][far]);
-            distance.bonds += u32::from((own == 0) != (others == 0));
+            kept += u32::from(own != 0 && others != 0);
             distance.orders += u32::from(own != 0 && others != 0 && own != others);
         }
     }
+    distance.bonds = (a.bonds.len() + b.bonds.len()) as u32 - 2 * kept;
     distance
 }
 
@@ -95,6 +116,18 @@ pub(super) fn isomers(numbers: &mut Numbers, atoms: usize) -> (Side, Side) {
     )
 }
 
+/// Two graphs that share most of their elements: each lacks some atoms that the other has.
+pub(super) fn relatives(numbers: &mut Numbers, atoms: usize) -> (Side, Side) {
+    let mut one = || {
+        let elements: Vec<u8> = (0..1 + numbers.below(atoms))
+            .map(|_| [6, 6, 6, 7, 8, 17][numbers.below(6)])
+            .collect();
+        let hydrogens: Vec<u8> = elements.iter().map(|_| numbers.below(4) as u8).collect();
+        side(numbers, &elements, &hydrogens)
+    };
+    (one(), one())
+}
+
 /// A random tree with some more bonds, or with one bond less; elements and hydrogens shuffled.
 fn side(numbers: &mut Numbers, elements: &[u8], hydrogens: &[u8]) -> Side {
     let atoms = elements.len();
@@ -129,7 +162,7 @@ fn side(numbers: &mut Numbers, elements: &[u8], hydrogens: &[u8]) -> Side {
             side.bonds.push((first, second, class(numbers)));
         }
     }
-    if more == 3 {
+    if more == 3 && !side.bonds.is_empty() {
         side.bonds.swap_remove(0);
     }
     side

@@ -123,6 +123,11 @@ impl Pairs {
         self.atoms[pair as usize]
     }
 
+    /// The partners of all slots of a pair.
+    pub(super) fn partners(&self, pair: PairIndex) -> &[PairIndex] {
+        &self.partner[self.block(pair)]
+    }
+
     /// The slots of a pair, row by row.
     pub(super) fn block(&self, pair: PairIndex) -> std::ops::Range<usize> {
         self.block[pair as usize] as usize..self.block[pair as usize + 1] as usize
@@ -131,6 +136,11 @@ impl Pairs {
     /// The pair that shares the reward of a slot, or [`Pairs::none`].
     pub(super) fn partner(&self, slot: usize) -> PairIndex {
         self.partner[slot]
+    }
+
+    /// The two neighbours of a slot, if they can be laid on each other.
+    pub(super) fn partner_atoms(&self, slot: usize) -> Option<(u32, u32)> {
+        self.atoms.get(self.partner[slot] as usize).copied()
     }
 
     /// The partner's slot for the same two bonds. Meaningless without a partner.

@@ -1,20 +1,38 @@
 //! Makes a map better by exchanging the images of two atoms, as long as that helps.
 
-use super::{meter::Meter, problem::Problem};
+use super::{goal::Incumbent, meter::Meter, problem::Problem};
 
-/// The parts of a distance, or of a change in it, in order of weight.
-type Parts = [i64; 4];
+/// A distance, or a change in it, as one number: hydrogens and marks of 20 bits each, orders of 10 and bonds above.
+///
+/// Around two atoms no part comes near its bits, so numbers compare as distances do.
+type Packed = i64;
+
+const BOND: Packed = 1 << 50;
+const ORDER: Packed = 1 << 40;
+const HYDROGEN: Packed = 1 << 20;
+
+/// What tidying may spend, whatever is left of the budget: a sixtieth of the usual one.
+const TIDY_STEPS: usize = 50_000;
 
 /// Exchanges images until no exchange brings the map nearer, or the meter ends.
 pub(super) fn polish(problem: &Problem, map: &mut [u32], meter: &mut Meter<'_>) {
+    let mut costs: Vec<Packed> = (0..map.len() as u32)
+        .map(|atom| around(problem, map, atom))
+        .collect();
     let mut improved = true;
     while improved && !meter.ended() {
         improved = false;
         for class in &problem.classes {
             for (index, &first) in class.left.iter().enumerate() {
                 for &second in &class.left[..index] {
-                    if exchange(problem, map, first, second) {
+                    // A bond between the two is counted from both, before and after alike.
+                    let before = costs[first as usize] + costs[second as usize];
+                    map.swap(first as usize, second as usize);
+                    if around(problem, map, first) + around(problem, map, second) < before {
                         improved = true;
+                        renew(problem, map, [first, second], &mut costs);
+                    } else {
+                        map.swap(first as usize, second as usize);
                     }
                 }
                 meter.spend(1 + index * (4 + problem.left.degree(first)) / 16);
@@ -26,33 +44,60 @@ pub(super) fn polish(problem: &Problem, map: &mut [u32], meter: &mut Meter<'_>) 
     }
 }
 
-/// Exchanges the images of two atoms if that brings the map nearer.
-fn exchange(problem: &Problem, map: &mut [u32], first: u32, second: u32) -> bool {
-    // A bond between the two is counted from both, before and after alike.
-    let before = add(around(problem, map, first), around(problem, map, second));
-    map.swap(first as usize, second as usize);
-    let after = add(around(problem, map, first), around(problem, map, second));
-    let nearer = after < before;
-    if !nearer {
-        map.swap(first as usize, second as usize);
+/// Exchanges images as long as the distance stays and the map becomes better otherwise, or the meter ends.
+///
+/// Only single exchanges are tried, so a better one of equally distant maps may be missed.
+pub(super) fn tidy(problem: &Problem, incumbent: &mut Incumbent, meter: &mut Meter<'_>) {
+    let mut steps = 0;
+    let mut improved = incumbent.distance.bonds > 0;
+    while improved && steps < TIDY_STEPS {
+        improved = false;
+        for class in &problem.classes {
+            for (index, &first) in class.left.iter().enumerate() {
+                steps += index * (4 + problem.left.degree(first)) / 16;
+                for &second in &class.left[..index] {
+                    let mut map = std::mem::take(&mut incumbent.map);
+                    let before = around(problem, &map, first) + around(problem, &map, second);
+                    map.swap(first as usize, second as usize);
+                    let after = around(problem, &map, first) + around(problem, &map, second);
+                    let swapped = (after <= before).then(|| map.clone());
+                    map.swap(first as usize, second as usize);
+                    incumbent.map = map;
+                    if let Some(map) = swapped {
+                        steps += 1 + map.len() / 8;
+                        incumbent.offer(problem, &map);
+                        improved |= incumbent.map == map;
+                    }
+                }
+            }
+        }
     }
-    nearer
+    meter.spend(steps);
+}
+
+/// Computes the costs of two atoms and of their neighbours anew.
+fn renew(problem: &Problem, map: &[u32], atoms: [u32; 2], costs: &mut [Packed]) {
+    for atom in atoms {
+        costs[atom as usize] = around(problem, map, atom);
+        for near in problem.left.neighbours(atom) {
+            costs[near.atom as usize] = around(problem, map, near.atom);
+        }
+    }
 }
 
 /// What one atom and its bonds add to the distance, apart from a constant.
-fn around(problem: &Problem, map: &[u32], atom: u32) -> Parts {
+fn around(problem: &Problem, map: &[u32], atom: u32) -> Packed {
     let image = map[atom as usize];
     let (hydrogens, mark) = problem.atom_cost(atom, image);
-    let mut parts = [0, 0, i64::from(hydrogens), i64::from(mark)];
+    let mut cost = HYDROGEN * Packed::from(hydrogens) + Packed::from(mark);
     for near in problem.left.neighbours(atom) {
         if let Some(class) = problem.right.class_between(image, map[near.atom as usize]) {
-            parts[0] -= 2;
-            parts[1] += i64::from(class != near.class);
+            cost += if class == near.class {
+                -2 * BOND
+            } else {
+                ORDER - 2 * BOND
+            };
         }
     }
-    parts
-}
-
-fn add(first: Parts, second: Parts) -> Parts {
-    std::array::from_fn(|part| first[part] + second[part])
+    cost
 }

@@ -1,9 +1,12 @@
 //! The two graphs, checked, and the distance of a map between them.
 
-use super::{Distance, MappingError, Side};
+use super::{Distance, MappingError, Side, coherence::bridges};
 
-/// Neighbours are looked through one by one up to this number; beyond it, they are halved, as they are sorted.
-const SHORT: usize = 8;
+/// Up to this many atoms a graph keeps a square table of its bonds.
+const TABLED: usize = 256;
+
+/// Stands for no bond in the table.
+const NO_BOND: u16 = u16::MAX;
 
 /// One end of a bond, seen from the other.
 #[derive(Debug, Clone, Copy)]
@@ -21,6 +24,12 @@ pub(super) struct Graph {
     /// Atom `u` owns `neighbours[start[u]..start[u + 1]]`.
     start: Vec<u32>,
     neighbours: Vec<Neighbour>,
+    /// Atoms from here on stand for what only the other side has: they have no bonds, and cost nothing.
+    present: usize,
+    /// Bonds outside rings, lower atom first, sorted.
+    bridges: Vec<(u32, u32)>,
+    /// The class of the bond between any two atoms, row by row; empty for large graphs.
+    table: Vec<u16>,
 }
 
 /// The atoms of one element on both sides, equally many.
@@ -49,10 +58,11 @@ pub(super) fn normal(side: &Side) -> Side {
 }
 
 impl Graph {
-    /// Builds the graph of a side in its [`normal`] form.
-    fn new(side: &Side) -> Result<Self, MappingError> {
+    /// Builds the graph of a side in its [`normal`] form, with the elements that it lacks of the other.
+    fn new(side: &Side, lacking: &[u8]) -> Result<Self, MappingError> {
         check(side)?;
-        let atoms = side.elements.len();
+        let present = side.elements.len();
+        let atoms = present + lacking.len();
         let mut start = vec![0_u32; atoms + 1];
         for &(first, second, _) in &side.bonds {
             start[first as usize + 1] += 1;
@@ -69,13 +79,28 @@ impl Graph {
                 next[from as usize] += 1;
             }
         }
-        Ok(Self {
-            elements: side.elements.clone(),
+        let mut table = Vec::new();
+        if atoms <= TABLED {
+            table.resize(atoms * atoms, NO_BOND);
+            for &(first, second, class) in &side.bonds {
+                table[first as usize * atoms + second as usize] = u16::from(class);
+                table[second as usize * atoms + first as usize] = u16::from(class);
+            }
+        }
+        let mut graph = Self {
+            table,
+            elements: side.elements.iter().chain(lacking).copied().collect(),
             hydrogens: side.hydrogens.clone(),
             marks: side.marks.clone(),
             start,
             neighbours,
-        })
+            present,
+            bridges: Vec::new(),
+        };
+        graph.hydrogens.resize(atoms, 0);
+        graph.marks.resize(atoms, 0);
+        graph.bridges = bridges(&graph);
+        Ok(graph)
     }
 
     /// All atoms, those of one element together and in order.
@@ -87,6 +112,27 @@ impl Graph {
 
     pub(super) fn atoms(&self) -> usize {
         self.elements.len()
+    }
+
+    /// The number of atoms that are really there; they come first.
+    pub(super) fn present(&self) -> usize {
+        self.present
+    }
+
+    /// Whether an atom stands for one that only the other side has.
+    pub(super) fn is_absent(&self, atom: u32) -> bool {
+        atom as usize >= self.present
+    }
+
+    /// Whether the bond between two atoms lies in a ring.
+    pub(super) fn in_ring(&self, first: u32, second: u32) -> bool {
+        let bond = (first.min(second), first.max(second));
+        self.bridges.binary_search(&bond).is_err()
+    }
+
+    /// The number of bonds in rings.
+    pub(super) fn ring_bonds(&self) -> u32 {
+        (self.bonds() - self.bridges.len()) as u32
     }
 
     pub(super) fn bonds(&self) -> usize {
@@ -116,14 +162,13 @@ impl Graph {
 
     /// The order class of the bond between two atoms, if there is one.
     pub(super) fn class_between(&self, first: u32, second: u32) -> Option<u8> {
-        let near = self.neighbours(first);
-        let found = if near.len() <= SHORT {
-            near.iter().find(|near| near.atom == second)
-        } else {
+        if self.table.is_empty() {
+            let near = self.neighbours(first);
             let place = near.binary_search_by_key(&second, |near| near.atom);
-            place.ok().and_then(|place| near.get(place))
-        };
-        found.map(|near| near.class)
+            return place.ok().map(|place| near[place].class);
+        }
+        let class = self.table[first as usize * self.atoms() + second as usize];
+        u8::try_from(class).ok()
     }
 }
 
@@ -154,19 +199,31 @@ fn check(side: &Side) -> Result<(), MappingError> {
     Ok(())
 }
 
+/// The elements that a side has fewer of than the other, as often as they are missing.
+fn lacking(side: &Side, other: &Side) -> Vec<u8> {
+    let mut counts = [0_usize; 256];
+    for &element in &other.elements {
+        counts[usize::from(element)] += 1;
+    }
+    for &element in &side.elements {
+        let count = &mut counts[usize::from(element)];
+        *count = count.saturating_sub(1);
+    }
+    (0..=u8::MAX)
+        .zip(counts)
+        .flat_map(|(element, count)| std::iter::repeat_n(element, count))
+        .collect()
+}
+
 impl Problem {
     /// Builds the problem of two sides in their [`normal`] form.
     pub(super) fn new(left: &Side, right: &Side) -> Result<Self, MappingError> {
-        let (left, right) = (Graph::new(left)?, Graph::new(right)?);
+        let (left, right) = (
+            Graph::new(left, &lacking(left, right))?,
+            Graph::new(right, &lacking(right, left))?,
+        );
         let (left_atoms, right_atoms) = (left.by_element(), right.by_element());
         let element = |&atom: &u32| left.element(atom);
-        if !left_atoms
-            .iter()
-            .map(element)
-            .eq(right_atoms.iter().map(|&atom| right.element(atom)))
-        {
-            return Err(MappingError::ElementsDiffer);
-        }
         let mut classes = Vec::new();
         let mut rest = right_atoms.as_slice();
         for group in left_atoms.chunk_by(|first, second| element(first) == element(second)) {
@@ -182,6 +239,11 @@ impl Problem {
             right,
             classes,
         })
+    }
+
+    /// Whether atoms are left over on either side.
+    pub(super) fn leaves_over(&self) -> bool {
+        self.left.present() < self.left.atoms() || self.right.present() < self.right.atoms()
     }
 
     /// The number of bonds on both sides together, the distance (i) of a map that keeps none.
@@ -213,6 +275,9 @@ impl Problem {
 
     /// What laying one atom on another adds to (iii) and (iv).
     pub(super) fn atom_cost(&self, left: u32, right: u32) -> (u32, u32) {
+        if self.left.is_absent(left) || self.right.is_absent(right) {
+            return (0, 0);
+        }
         let hydrogens = self
             .left
             .hydrogens(left)

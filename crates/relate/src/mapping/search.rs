@@ -3,27 +3,19 @@
 use super::{
     assignment,
     bound::{Bound, Mark},
-    goal::{Goal, Incumbent, SCALE, Weights},
+    goal::{Goal, Incumbent, SCALE},
     grow::Grower,
     meter::Meter,
     pairs::{PairIndex, Pairs},
-    polish::polish,
     problem::Problem,
     symmetry::Orbits,
 };
 
-/// Ascents at the root, at most.
-const ROOT_ASCENTS: usize = 40;
-/// Ascents at any other node, at most.
-const ASCENTS: usize = 12;
-/// Another ascent is worth its steps only if the last one closed this part of the open gap: one in so many.
-const WORTHWHILE: i64 = 5;
-/// An ascent at the root that lowers the bound by less than this stalls.
-const STALL: i64 = SCALE / 64;
-/// Maps grown from single pairs at the root, at most.
-const GROWN: usize = 40;
-/// Maps are polished down to this depth.
-const POLISHED_DEPTH: usize = 3;
+/// A search is given up once so many nodes held maps that cost less than the incumbent but are not better.
+const MOST_MISLEADING: usize = 8;
+
+/// Weights that reached this do not grow: the search goes on.
+const LARGEST_WEIGHT: i32 = 256;
 
 /// What a search came to.
 #[derive(Debug)]
@@ -34,10 +26,19 @@ pub(super) struct Outcome {
     pub(super) cost_at_least: i64,
     /// The shares at the root, a good start for the next search.
     pub(super) shares: Vec<i32>,
+    /// The search was given up, as too many maps cost less than the incumbent without being better.
+    pub(super) misled: Option<Misled>,
+}
+
+/// By which part of the distance most maps are worse that cost less: its weight is too small.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(super) enum Misled {
+    Bonds,
+    Orders,
 }
 
 /// One decision on the way from the root.
-struct Frame {
+pub(super) struct Frame {
     pair: PairIndex,
     mark: Mark,
     /// The bound when the decision was taken.
@@ -51,24 +52,26 @@ struct BothOrbits {
 }
 
 pub(super) struct Search<'p, 's, 'm> {
-    problem: &'p Problem,
-    pairs: &'p Pairs,
-    goal: Goal,
-    bound: Bound<'p>,
-    incumbent: &'m mut Incumbent,
-    meter: &'m mut Meter<'s>,
-    frames: Vec<Frame>,
+    pub(super) problem: &'p Problem,
+    pub(super) pairs: &'p Pairs,
+    pub(super) goal: Goal,
+    pub(super) bound: Bound<'p>,
+    pub(super) incumbent: &'m mut Incumbent,
+    pub(super) meter: &'m mut Meter<'s>,
+    pub(super) frames: Vec<Frame>,
     /// By depth, found when first needed.
     orbits: Vec<Option<BothOrbits>>,
     /// Cost of a map without any reward.
     base: i64,
+    /// Nodes with a map that costs less than the incumbent but has more bonds, or more orders, that differ.
+    pub(super) misleading: [usize; 2],
 }
 
 impl<'p, 's, 'm> Search<'p, 's, 'm> {
     pub(super) fn new(
         (problem, pairs): (&'p Problem, &'p Pairs),
         goal: Goal,
-        earlier: Option<(&[i32], Weights)>,
+        bound: Bound<'p>,
         incumbent: &'m mut Incumbent,
         meter: &'m mut Meter<'s>,
     ) -> Self {
@@ -76,12 +79,13 @@ impl<'p, 's, 'm> Search<'p, 's, 'm> {
             problem,
             pairs,
             goal,
-            bound: Bound::new(problem, pairs, goal.weights, earlier),
+            bound,
             incumbent,
             meter,
             frames: Vec::new(),
             orbits: Vec::new(),
             base: i64::from(goal.weights.bond) * problem.all_bonds() as i64,
+            misleading: [0; 2],
         }
     }
 
@@ -93,6 +97,9 @@ impl<'p, 's, 'm> Search<'p, 's, 'm> {
             return self.outcome(shares);
         }
         while let Some(frame) = self.frames.last() {
+            if self.misled().is_some() {
+                break;
+            }
             let pair = frame.pair;
             let open = self.bound.fix(pair) && self.visit();
             if self.meter.ended() {
@@ -135,102 +142,26 @@ impl<'p, 's, 'm> Search<'p, 's, 'm> {
             proved: open.is_none(),
             cost_at_least: open.map_or(own, |value| own.min(self.base - value.div_euclid(SCALE))),
             shares,
+            misled: self.misled(),
         }
+    }
+
+    fn misled(&self) -> Option<Misled> {
+        let [bonds, orders] = self.misleading;
+        let part = if bonds > orders {
+            Misled::Bonds
+        } else {
+            Misled::Orders
+        };
+        let weights = self.goal.weights;
+        let may_grow = weights.bond.max(weights.order) < LARGEST_WEIGHT;
+        (may_grow && bonds + orders >= MOST_MISLEADING).then_some(part)
     }
 
     /// The reward a map needs to be better by a step, in parts of the unit.
-    fn needed(&self) -> i64 {
+    pub(super) fn needed(&self) -> i64 {
         let cost = self.goal.weights.cost(self.incumbent.distance);
         (self.base - cost + i64::from(self.goal.step)) * SCALE
-    }
-
-    /// Tightens the bound as far as it goes and looks for good maps. Returns whether anything is left to search.
-    fn root(&mut self, grower: Option<&Grower<'_>>) -> bool {
-        let mut stalled = 0;
-        if !self.settle() {
-            return false;
-        }
-        self.offer_assignment(true);
-        for _ in 0..ROOT_ASCENTS {
-            let before = self.bound.value();
-            self.bound.ascend(self.meter);
-            if !self.settle() {
-                return false;
-            }
-            self.offer_assignment(false);
-            stalled = if before - self.bound.value() < STALL {
-                stalled + 1
-            } else {
-                0
-            };
-            if stalled == 2 || self.meter.ended() {
-                break;
-            }
-        }
-        self.offer_assignment(true);
-        if let Some(grower) = grower {
-            self.offer_grown(grower);
-        }
-        self.settle()
-    }
-
-    /// Settles a node, tightens its bound and offers its assignment. Returns whether anything is left to search in it.
-    fn visit(&mut self) -> bool {
-        if !self.settle() {
-            return false;
-        }
-        for _ in 0..ASCENTS {
-            let before = self.bound.value();
-            self.bound.ascend(self.meter);
-            if !self.settle() {
-                return false;
-            }
-            let (gain, gap) = (
-                before - self.bound.value(),
-                self.bound.value() - self.needed(),
-            );
-            if gain * WORTHWHILE <= gap || self.meter.ended() {
-                break;
-            }
-        }
-        self.offer_assignment(self.frames.len() <= POLISHED_DEPTH);
-        true
-    }
-
-    fn settle(&mut self) -> bool {
-        self.bound.settle(self.needed(), self.meter)
-    }
-
-    fn offer_assignment(&mut self, polished: bool) {
-        if self.meter.ended() {
-            return;
-        }
-        self.incumbent
-            .offer(self.problem, self.bound.assignment.image());
-        if polished {
-            let mut map = self.bound.assignment.image().to_vec();
-            polish(self.problem, &mut map, self.meter);
-            self.incumbent.offer(self.problem, &map);
-        }
-    }
-
-    /// Grows maps from the pairs that the bound likes best.
-    fn offer_grown(&mut self, grower: &Grower<'_>) {
-        let possible = (0..self.pairs.none()).filter(|&pair| self.bound.domain.contains(pair));
-        let mut anchors: Vec<(i64, PairIndex)> = possible
-            .map(|pair| (self.bound.slack(pair), pair))
-            .collect();
-        anchors.sort_unstable();
-        for &(_, pair) in anchors.iter().take(GROWN) {
-            if self.bound.value() < self.needed() || self.meter.ended() {
-                return;
-            }
-            let (left, right) = self.pairs.atoms(pair);
-            let mut map = grower.around_pair(left, right);
-            self.meter.spend(self.problem.left.atoms());
-            polish(self.problem, &mut map, self.meter);
-            self.incumbent.offer(self.problem, &map);
-        }
     }
 
     /// Takes the next decision. Returns false if all atoms are fixed.
@@ -252,21 +183,20 @@ impl<'p, 's, 'm> Search<'p, 's, 'm> {
         true
     }
 
-    /// The atom to lay next: one next to a fixed atom, with few possibilities and many bonds.
+    /// The atom to lay next: one with few possibilities and many bonds.
     ///
-    /// Taking the square of the bonds halves the steps against taking the fewest possibilities alone.
+    /// Taking the square of the bonds halves the steps against taking the fewest possibilities alone. Whether the atom is
+    /// next to a fixed one does not help.
     fn next_atom(&self) -> Option<u32> {
         let domain = &self.bound.domain;
         let gap = (self.bound.value() - self.needed()).max(1);
         let open = (0..self.problem.left.atoms() as u32).filter(|&left| !domain.is_fixed(left));
         open.min_by_key(|&left| {
-            let near = self.problem.left.neighbours(left);
-            let touches = near.iter().any(|near| domain.is_fixed(near.atom));
             // The less its slack, the more of the tree hangs on a possibility.
             let weight = |&pair: &PairIndex| 1 + 64 * (gap - self.bound.slack(pair)).max(0) / gap;
             let possibilities: i64 = domain.pairs_of(left).iter().map(weight).sum();
-            let bonds = near.len() as i64;
-            (!touches, (possibilities + 64) * 16 / (1 + bonds * bonds))
+            let bonds = self.problem.left.degree(left) as i64;
+            (possibilities + 64) * 16 / (1 + bonds * bonds)
         })
     }
 

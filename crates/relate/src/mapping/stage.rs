@@ -4,14 +4,15 @@
 //! reach them too can be better, and all of these that are better cost less. Small weights prove sooner than large ones.
 
 use super::{
-    Mapping, Proved,
-    goal::{Goal, Incumbent, Weights},
+    Distance, Proved,
+    bound::Bound,
+    goal::{Goal, Incumbent, SCALE, Weights},
     grow::Grower,
     meter::Meter,
     pairs::Pairs,
-    polish::polish,
+    polish::{polish, tidy},
     problem::Problem,
-    search::{Outcome, Search},
+    search::{Misled, Outcome, Search},
     symmetry::Kept,
 };
 
@@ -19,13 +20,25 @@ use super::{
 const MOST_PAIRS: usize = 250_000;
 const MOST_SLOTS: usize = 2_500_000;
 
-/// What the proof of (i) may spend of the budget, in sixteenths; the rest finds good (ii) and (iii) where it fails.
+/// What each proof may spend of the budget, in sixteenths: (i), then (ii) and (iii). Where (i) fails the rest finds good
+/// (ii) and (iii).
 const SHARE_OF_BONDS: u64 = 14;
+const SHARE_OF_OTHERS: u64 = 6;
 /// Steps for fewer differences in (iv), which nobody asks to be proved.
 const STEPS_FOR_MARKS: u64 = 50_000;
 
+/// A map of all atoms, absent ones included, and what is known about it.
+pub(super) struct Solution {
+    /// For each left atom, the right one.
+    pub(super) image: Vec<u32>,
+    pub(super) distance: Distance,
+    pub(super) proved: Proved,
+    pub(super) bonds_at_least: u32,
+    pub(super) steps: u64,
+}
+
 /// Finds the map of least distance within the meter.
-pub(super) fn solve(problem: &Problem, meter: &mut Meter<'_>) -> Mapping {
+pub(super) fn solve(problem: &Problem, meter: &mut Meter<'_>) -> Solution {
     let grower = Grower::new(problem);
     let mut incumbent = first_map(problem, &grower, meter);
     let mut proved = Proved::default();
@@ -35,15 +48,17 @@ pub(super) fn solve(problem: &Problem, meter: &mut Meter<'_>) -> Mapping {
             problem,
             pairs: &pairs,
             earlier: None,
+            allowed: vec![true; pairs.len()],
         };
         (proved, at_least) = stages.run(&grower, &mut incumbent, meter);
     }
+    tidy(problem, &mut incumbent, meter);
     let distance = incumbent.distance;
     proved.bonds |= distance.bonds <= at_least;
     proved.orders |= proved.bonds && distance.orders == 0;
     proved.hydrogens |= proved.orders && distance.hydrogens == 0;
-    Mapping {
-        pairs: incumbent.map,
+    Solution {
+        image: incumbent.map,
         distance,
         proved,
         bonds_at_least: if proved.bonds {
@@ -78,6 +93,8 @@ struct Stages<'p> {
     pairs: &'p Pairs,
     /// Shares of the proof before, and its weights.
     earlier: Option<(Vec<i32>, Weights)>,
+    /// Pairs that a map as good as the incumbent can have.
+    allowed: Vec<bool>,
 }
 
 impl Stages<'_> {
@@ -89,119 +106,156 @@ impl Stages<'_> {
         meter: &mut Meter<'_>,
     ) -> (Proved, u32) {
         let mut proved = Proved::default();
-        meter.allow(meter.left() / 16 * SHARE_OF_BONDS);
-        // Every kept bond takes one bond from each side: (i) moves in steps of two.
-        let weights = Weights {
-            bond: 1,
-            order: 0,
-            hydrogen: 0,
-            mark: 0,
-        };
-        let outcome = self.prove(
-            Goal {
-                weights,
-                step: 2,
-                kept: Kept::default(),
-            },
-            Some(grower),
-            incumbent,
-            meter,
-        );
+        meter.allow_sixteenths(SHARE_OF_BONDS);
+        let outcome = self.prove(self.goal_of_bonds(), Some(grower), incumbent, meter);
         proved.bonds = outcome.proved;
         let at_least = u32::try_from(outcome.cost_at_least).unwrap_or(0);
 
-        meter.allow(meter.left());
-        let kept = Kept {
-            orders: true,
-            ..Kept::default()
-        };
-        let weights = Weights {
-            bond: 2,
-            order: 1,
-            hydrogen: 0,
-            mark: 0,
-        };
+        meter.allow_sixteenths(SHARE_OF_OTHERS);
         proved.orders = incumbent.distance.orders == 0
             || self
-                .prove(
-                    Goal {
-                        weights,
-                        step: 1,
-                        kept,
-                    },
-                    None,
-                    incumbent,
-                    meter,
-                )
+                .prove(self.goal_of_orders(), None, incumbent, meter)
                 .proved;
         proved.orders &= proved.bonds;
 
-        // (iii) is odd or even as the difference of the hydrogen totals is: steps of two again.
-        let kept = Kept {
-            hydrogens: true,
-            ..kept
-        };
-        let weights = Weights {
-            bond: 4,
-            order: 2,
-            hydrogen: 1,
-            mark: 0,
-        };
+        meter.allow_sixteenths(SHARE_OF_OTHERS);
         proved.hydrogens = incumbent.distance.hydrogens == 0
             || self
-                .prove(
-                    Goal {
-                        weights,
-                        step: 2,
-                        kept,
-                    },
-                    None,
-                    incumbent,
-                    meter,
-                )
+                .prove(self.goal_of_hydrogens(), None, incumbent, meter)
                 .proved;
         proved.hydrogens &= proved.orders;
 
         if proved.hydrogens && incumbent.distance.marks > 0 {
             meter.allow(STEPS_FOR_MARKS);
-            let kept = Kept {
-                marks: true,
-                ..kept
-            };
-            let weights = Weights {
-                bond: 8,
-                order: 4,
-                hydrogen: 2,
-                mark: 1,
-            };
-            self.prove(
-                Goal {
-                    weights,
-                    step: 1,
-                    kept,
-                },
-                None,
-                incumbent,
-                meter,
-            );
+            self.prove(self.goal_of_marks(), None, incumbent, meter);
         }
         (proved, at_least)
     }
 
+    /// Every kept bond takes one bond from each side: (i) moves in steps of two.
+    fn goal_of_bonds(&self) -> Goal {
+        Goal {
+            weights: Weights {
+                bond: 1,
+                order: 0,
+                hydrogen: 0,
+                mark: 0,
+            },
+            step: 2,
+            kept: Kept::default(),
+        }
+    }
+
+    fn goal_of_orders(&self) -> Goal {
+        Goal {
+            weights: Weights {
+                bond: 2,
+                order: 1,
+                hydrogen: 0,
+                mark: 0,
+            },
+            step: 1,
+            kept: Kept {
+                orders: true,
+                ..Kept::default()
+            },
+        }
+    }
+
+    /// Where all atoms are mapped, (iii) is odd or even as the difference of the hydrogen totals is: steps of two again.
+    fn goal_of_hydrogens(&self) -> Goal {
+        Goal {
+            weights: Weights {
+                bond: 4,
+                order: 2,
+                hydrogen: 1,
+                mark: 0,
+            },
+            step: if self.problem.leaves_over() { 1 } else { 2 },
+            kept: Kept {
+                orders: true,
+                hydrogens: true,
+                marks: false,
+            },
+        }
+    }
+
+    fn goal_of_marks(&self) -> Goal {
+        Goal {
+            weights: Weights {
+                bond: 8,
+                order: 4,
+                hydrogen: 2,
+                mark: 1,
+            },
+            step: 1,
+            kept: Kept {
+                orders: true,
+                hydrogens: true,
+                marks: true,
+            },
+        }
+    }
+
+    /// Proves with small weights, and with larger ones where these turn out to be too small.
     fn prove(
         &mut self,
+        mut goal: Goal,
+        grower: Option<&Grower<'_>>,
+        incumbent: &mut Incumbent,
+        meter: &mut Meter<'_>,
+    ) -> Outcome {
+        loop {
+            let mut outcome = self.search(goal, grower, incumbent, meter);
+            self.earlier = Some((std::mem::take(&mut outcome.shares), goal.weights));
+            if meter.ended() {
+                return outcome;
+            }
+            self.keep_survivors(goal, incumbent, meter);
+            match outcome.misled {
+                Some(Misled::Bonds) => goal.weights.bond *= 2,
+                Some(Misled::Orders) => {
+                    goal.weights.order *= 2;
+                    // A kept bond always earns something.
+                    goal.weights.bond = goal.weights.bond.max(goal.weights.order);
+                }
+                None => return outcome,
+            }
+        }
+    }
+
+    fn search(
+        &self,
         goal: Goal,
         grower: Option<&Grower<'_>>,
         incumbent: &mut Incumbent,
         meter: &mut Meter<'_>,
     ) -> Outcome {
-        let earlier = self
-            .earlier
-            .as_ref()
-            .map(|(shares, weights)| (shares.as_slice(), *weights));
-        let search = Search::new((self.problem, self.pairs), goal, earlier, incumbent, meter);
-        let mut outcome = search.run(grower);
-        self.earlier = Some((std::mem::take(&mut outcome.shares), goal.weights));
-        outcome
+        let bound = self.bound(goal);
+        Search::new((self.problem, self.pairs), goal, bound, incumbent, meter).run(grower)
+    }
+
+    fn bound(&self, goal: Goal) -> Bound<'_> {
+        let earlier = self.earlier.as_ref();
+        let earlier = earlier.map(|(shares, weights)| (shares.as_slice(), *weights));
+        Bound::new(
+            self.problem,
+            self.pairs,
+            goal.weights,
+            earlier,
+            &self.allowed,
+        )
+    }
+
+    /// Strikes out the pairs of which the bound shows that no map as good as the incumbent has them. That holds for good,
+    /// as later parts of the distance weigh less.
+    fn keep_survivors(&mut self, goal: Goal, incumbent: &Incumbent, meter: &mut Meter<'_>) {
+        let mut bound = self.bound(goal);
+        let cost = goal.weights.cost(incumbent.distance);
+        let base = i64::from(goal.weights.bond) * self.problem.all_bonds() as i64;
+        if bound.settle((base - cost) * SCALE, meter) {
+            let survivors = (0..self.pairs.none()).map(|pair| bound.domain.contains(pair));
+            self.allowed = survivors.collect();
+        }
     }
 }

@@ -192,7 +192,10 @@ fn label(graph: &Graph, kept: Kept, atom: u32) -> u64 {
         0
     };
     let mark = if kept.marks { graph.mark(atom) } else { 0 };
-    u64::from(mark) << 16 | u64::from(hydrogens) << 8 | u64::from(graph.element(atom))
+    u64::from(graph.is_absent(atom)) << 48
+        | u64::from(mark) << 16
+        | u64::from(hydrogens) << 8
+        | u64::from(graph.element(atom))
 }
 
 /// Mixes neighbours into the colours until the number of colours stands still.
