@@ -171,6 +171,7 @@ impl Writer {
         shown.extend(form.atoms.iter().map(atom::shown_hydrogens));
         let mut slopes = Slopes::solve(&structure, layout, &rows, lost);
         slopes.show_hydrogens(&structure, shown);
+        tags::show_hydrogens(&form.stereo, shown);
         self.tags.load(&structure, layout, &rows, shown, lost);
         if layout.highest_label > layout::LAST_LABEL {
             lost.push(Lost::RingLabels {

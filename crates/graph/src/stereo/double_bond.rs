@@ -11,6 +11,10 @@ use super::{Candidate, Perception, labile, marks::Mark, slot, tetrahedral::hydro
 /// Rings below this size hold their double bonds cis.
 const SMALLEST_FREE_RING: u32 = 8;
 
+/// Rings of this size let a single bond between two flat ends be an axis, as the biaryl bond of
+/// colchicine is.
+const SMALLEST_AXIS_RING: u32 = 7;
+
 /// Adds the candidates. Mobile bonds, and single bonds as hindered axes, are candidates only in a
 /// record that marks one; the absence of a mark on them leaves nothing open. `seen` is scratch.
 pub(super) fn find(
@@ -122,7 +126,7 @@ fn candidate(
     }
     let [first, second] = end_ligands(skeleton, mesomer, a, chain.inner[0])?;
     let [third, fourth] = end_ligands(skeleton, mesomer, b, chain.inner[1])?;
-    if in_small_ring(skeleton, bond, seen) {
+    if in_small_ring(skeleton, mesomer, bond, seen) {
         return None;
     }
     Some(Candidate {
@@ -139,12 +143,21 @@ fn candidate(
 }
 
 /// Whether a bond lies in a ring too small for a free choice of geometry.
-pub(super) fn in_small_ring(skeleton: &Skeleton, bond: u32, seen: &mut Vec<u32>) -> bool {
+pub(super) fn in_small_ring(
+    skeleton: &Skeleton,
+    mesomer: &Mesomer,
+    bond: u32,
+    seen: &mut Vec<u32>,
+) -> bool {
     let ends = &skeleton.bonds[bond as usize];
+    let smallest = match mesomer.orders[bond as usize] {
+        1 => SMALLEST_AXIS_RING,
+        _ => SMALLEST_FREE_RING,
+    };
     skeleton.ring[bond as usize]
         && skeleton
             .adjacency
-            .smallest_ring([ends.a, ends.b], SMALLEST_FREE_RING - 1, seen)
+            .smallest_ring([ends.a, ends.b], smallest - 1, seen)
             .is_some()
 }
 

@@ -143,7 +143,9 @@ fn reason(skeleton: &Skeleton, mesomer: &Mesomer, mark: &Mark, seen: &mut Vec<u3
         return Dropped::LabileDoubleBond;
     }
     match skeleton.bond_between(a, b) {
-        Some(bond) if double_bond::in_small_ring(skeleton, bond, seen) => Dropped::SmallRing,
+        Some(bond) if double_bond::in_small_ring(skeleton, mesomer, bond, seen) => {
+            Dropped::SmallRing
+        }
         Some(bond) if mesomer.orders[bond as usize] == MOBILE => Dropped::LabileDoubleBond,
         _ => Dropped::NotStereogenic,
     }

@@ -75,6 +75,18 @@ impl Tags {
     }
 }
 
+/// Asks for a hydrogen as an atom where a tagged centre has a lone pair beside it (a secondary
+/// phosphine): the standard gives the order of one unwritten ligand, not of two.
+pub(super) fn show_hydrogens(stereo: &[FormStereo], shown: &mut [u8]) {
+    for element in stereo.iter().filter(|e| e.shape == Shape::Tetrahedral) {
+        let has = |ligand| element.ligands.contains(&ligand);
+        if has(Ligand::Hydrogen) && has(Ligand::LonePair) {
+            let own = &mut shown[element.centres[0] as usize];
+            *own = (*own).max(1);
+        }
+    }
+}
+
 struct Context<'a> {
     structure: &'a Structure<'a>,
     layout: &'a Layout,
