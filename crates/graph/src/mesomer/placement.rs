@@ -4,7 +4,7 @@
 //! without charge, spare ones where more valences are open than π bonds can fill, and one *onium*
 //! vertex where a lone pair can be lent at the price of a positive charge. Pools of further
 //! vertices take what is left over: negative charges (on heteroatoms, on carbon), open valences,
-//! positive charges on carbon or boron, and unused onium vertices (of atoms without other charge, and
+//! positive charges on carbon, and unused onium vertices (of atoms without other charge, and
 //! of those that the σ skeleton charges already). For given pool sizes the placements are exactly the
 //! perfect matchings of that graph.
 //!

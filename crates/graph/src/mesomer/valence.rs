@@ -158,7 +158,7 @@ fn room(atom: &SkeletonAtom, drawn: &Drawn, open: u8) -> Option<Valence> {
         intrinsic: if hetero { (-left).clamp(0, 4) as i8 } else { 0 },
         open,
         can_be_negative: !boron,
-        can_be_positive: !hetero,
+        can_be_positive: !hetero && !boron,
         acceptor: boron,
         hetero,
     })
