@@ -19,6 +19,7 @@ mod counts;
 mod ctfile;
 mod damaged;
 mod demo;
+mod dependences;
 mod distances;
 mod drawings;
 mod findings;

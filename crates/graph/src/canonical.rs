@@ -2,6 +2,7 @@
 
 mod colour;
 mod comparison;
+mod dependence;
 mod elements;
 mod form;
 mod normal;

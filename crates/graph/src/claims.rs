@@ -36,6 +36,7 @@ pub(crate) use roles::Roles;
 pub(crate) use solve::{Claims, Solver};
 pub(crate) use space::{Space, Vector};
 pub(crate) use status::Status;
+pub(crate) use symmetries::Symmetries;
 pub(crate) use variables::{Variable, variables};
 
 /// Per variable: whether some automorphism inverts it and leaves all others as they are.

@@ -1,6 +1,6 @@
 //! Remarks on records and pairs: a stable code, the atoms, a sentence.
 
-use molkin_graph::{Dropped, Labelling, Mark, Molecule, Remark, Undrawable};
+use molkin_graph::{Dropped, Labelling, Mark, Molecule, Remark, Shape, Undrawable};
 
 use crate::{Relation, Structure};
 
@@ -131,6 +131,26 @@ pub(crate) fn unmarked(structure: &Structure) -> Option<Noted> {
         code: "unmarked-stereo",
         text: format!(
             "Stereogenic but unmarked: {}.",
+            atoms_in_words(structure.molecule(), &atoms)
+        ),
+        atoms,
+    })
+}
+
+/// The remark on a meso compound.
+pub(crate) fn meso(structure: &Structure) -> Option<Noted> {
+    if structure.canonical().is_meso() != Some(true) {
+        return None;
+    }
+    let elements = structure.canonical().stereo_elements();
+    let centres = elements.iter().filter(|element| {
+        element.shape == Shape::Tetrahedral && matches!(element.mark, Mark::Given(_))
+    });
+    let atoms: Vec<u32> = centres.map(|element| element.centres[0]).collect();
+    Some(Noted {
+        code: "meso",
+        text: format!(
+            "A meso compound: it has stereocentres ({}), but its mirror image is itself.",
             atoms_in_words(structure.molecule(), &atoms)
         ),
         atoms,

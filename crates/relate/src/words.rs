@@ -1,6 +1,13 @@
 //! The verdict in plain sentences.
 
-use crate::{Explanation, Relation, StereoKind, Structure, Verdict};
+mod groups;
+mod places;
+mod stereo;
+
+#[cfg(test)]
+mod tests;
+
+use crate::{Explanation, Relation, Structure, Verdict};
 
 /// One or two sentences for a chemist.
 pub(crate) fn summary(
@@ -14,33 +21,9 @@ pub(crate) fn summary(
             "The two records say the same, but they leave stereo open: the samples may still differ.".to_owned()
         }
         Relation::Identical => "The two records are the same compound.".to_owned(),
-        Relation::Stereo(kind) => stereo(kind, explained),
+        Relation::Stereo(kind) => stereo::summary(a, b, kind, explained),
         Relation::Constitutional => constitutional(a, explained),
         Relation::NotIsomers => not_isomers(a, b),
-    }
-}
-
-fn stereo(kind: StereoKind, explained: Option<&Explanation>) -> String {
-    let verdict = match kind {
-        StereoKind::Enantiomers => "Enantiomers: mirror images that do not coincide.",
-        StereoKind::Diastereomers => {
-            "Diastereomers: the same connectivity, a different arrangement in space, and not mirror images."
-        }
-        StereoKind::Composition => {
-            "Composition: the same connectivity, and always a stereoisomer in common, but not the same mixture."
-        }
-        StereoKind::Undetermined => {
-            "Undetermined: the same connectivity; as marked, the two may or may not be the same stereoisomer."
-        }
-        StereoKind::Unresolved => {
-            "Unresolved: surely different stereoisomers, but the marks do not settle whether they are mirror images."
-        }
-    };
-    let count = explained.map_or(0, |e| e.stereo.len());
-    match count {
-        0 => verdict.to_owned(),
-        1 => format!("{verdict} One stereo element differs."),
-        n => format!("{verdict} {n} stereo elements differ."),
     }
 }
 
@@ -70,6 +53,15 @@ fn constitutional(a: &Structure, explained: Option<&Explanation>) -> String {
         format!("{verdict} The least difference: {differences}.")
     } else {
         format!("{verdict} One way to see it, not proved the least: {differences}.")
+    }
+}
+
+/// "C2", "C2 and C3", "C2, C3 and C5".
+fn listed(items: &[String]) -> String {
+    match items {
+        [] => String::new(),
+        [one] => one.clone(),
+        [rest @ .., last] => format!("{} and {last}", rest.join(", ")),
     }
 }
 

@@ -79,6 +79,7 @@ fn described_records_keep_to_the_schema() {
         "held.smi",
         "vendor.sdf",
         "C[13CH3]",
+        "C[C@H](O)C(O)[C@H](O)C",
         "[Og]",
         "[300C]",
         "C*",
@@ -86,7 +87,7 @@ fn described_records_keep_to_the_schema() {
         "--format",
         "jsonl",
     ];
-    check_all("Describe", &demo(&arguments), 35);
+    check_all("Describe", &demo(&arguments), 36);
 }
 
 #[test]

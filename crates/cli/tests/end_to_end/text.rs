@@ -66,7 +66,7 @@ fn chains() {
 #[test]
 fn enantiomers() {
     assert_snapshot!(compared("hand-label.mol", "hand-arrived.mol"), @r"
-    Enantiomers: mirror images that do not coincide. One stereo element differs.
+    Enantiomers: mirror images that do not coincide; the only stereocentre is inverted: C2 (S in A, R in B).
       A                 hand-label.mol: QM-0422 label
                         C8H10O  C1([C@@H](O)C)=CC=CC=C1
       B                 hand-arrived.mol: QM-0422 bottle
@@ -79,7 +79,7 @@ fn enantiomers() {
 #[test]
 fn diastereomers() {
     assert_snapshot!(compared("O=C/C=C(C)/CCC=C(C)C geranial", "O=C/C=C(C)\\CCC=C(C)C neral"), @r"
-    Diastereomers: the same connectivity, a different arrangement in space, and not mirror images. One stereo element differs.
+    Diastereomers (cis/trans isomers): the only double bond is of opposite geometry: C3=C4 (E in A, Z in B).
       A                 O=C/C=C(C)/CCC=C(C)C geranial
                         C10H16O  C(/C)(=C/C=O)CCC=C(C)C
       B                 O=C/C=C(C)\CCC=C(C)C neral
@@ -90,14 +90,32 @@ fn diastereomers() {
 }
 
 #[test]
+fn epimers() {
+    assert_snapshot!(compared("OC[C@H](O)[C@H](O)[C@H](O)CO ribitol", "OC[C@@H](O)[C@H](O)[C@H](O)CO arabinitol"), @r"
+    Diastereomers (epimers): 1 of 2 stereocentres is inverted: C3 (S in A, R in B). C5 is not stereogenic in B.
+      A                 OC[C@H](O)[C@H](O)[C@H](O)CO ribitol
+                        C5H12O5  [C@H](O)(CO)[C@H](O)[C@H](O)CO
+      B                 OC[C@@H](O)[C@H](O)[C@H](O)CO arabinitol
+                        C5H12O5  [C@@H](O)(CO)C(O)[C@H](O)CO
+      stereo            C3 → C3: centre, inverted: S in A, R in B
+      stereo            C5 → C5: centre, s in A, not stereogenic in B
+      atoms, A → B      the same numbers in both
+      note on A         A meso compound: it has stereocentres (atoms 3, 5 and 7), but its mirror
+                        image is itself. [meso]
+      note on B         The stereo mark at atom 5 says nothing: by symmetry, or because other
+                        elements are unmarked, both arrangements give the same. [mark-idle]
+    ");
+}
+
+#[test]
 fn undetermined() {
     assert_snapshot!(compared("crossed-label.mol", "crossed-arrived.mol"), @r"
-    Undetermined: the same connectivity; as marked, the two may or may not be the same stereoisomer. One stereo element differs.
+    Undetermined: the same connectivity; as marked, the two may or may not be the same stereoisomer. Open in A, marked in B: C4=C5 (E).
       A                 crossed-label.mol: QM-0430 label
                         C10H10O  C1(C=CC(=O)C)=CC=CC=C1
       B                 crossed-arrived.mol: QM-0430 bottle
                         C10H10O  C1(/C=C/C(=O)C)=CC=CC=C1
-      stereo            C4=C5 → C4=C5: double bond, open in A, marked in B: E in B
+      stereo            C4=C5 → C4=C5: double bond, open in A, E in B
       atoms, A → B      the same numbers in both
       note on A         Stereogenic but unmarked: atoms 4 and 5. [unmarked-stereo]
     ");
@@ -106,7 +124,7 @@ fn undetermined() {
 #[test]
 fn unresolved() {
     assert_snapshot!(compared("half-label.mol", "half-arrived.mol"), @r"
-    Unresolved: surely different stereoisomers, but the marks do not settle whether they are mirror images. One stereo element differs.
+    Unresolved: surely different stereoisomers, but the marks do not settle whether they are mirror images. Inverted: C6 (R in A, S in B). Open in both: C2.
       A                 half-label.mol: QM-0433 label
                         C7H14O  C1(C)CCC[C@@H](O)C1
       B                 half-arrived.mol: QM-0433 bottle
@@ -213,6 +231,19 @@ fn described() {
       error             ring-not-closed at line 1, column 2: ring label 1 is opened and never closed
         1 | C1CC
           |  ^
+    ");
+}
+
+#[test]
+fn dependent_centre() {
+    let text = demo(&["describe", "C[C@H](O)[C@H](O)[C@H](O)C"]).out;
+    let stereo = text.lines().skip_while(|line| !line.contains("stereo"));
+    assert_snapshot!(stereo.collect::<Vec<_>>().join("\n"), @r"
+      stereo            C2: tetrahedral, marked, S
+      stereo            C4: tetrahedral, marked, s, depends on C2 and C6
+      stereo            C6: tetrahedral, marked, R
+      note              A meso compound: it has stereocentres (atoms 2, 4 and 6), but its mirror
+                        image is itself. [meso]
     ");
 }
 

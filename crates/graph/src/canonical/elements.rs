@@ -196,7 +196,7 @@ impl Canonical {
         Some(Remark::PartlyMarkedMobileBonds { atoms })
     }
 
-    fn shape(&self, variable: &Variable) -> Shape {
+    pub(super) fn shape(&self, variable: &Variable) -> Shape {
         let first = variable.members.first();
         first.map_or(Shape::Tetrahedral, |&(index, _)| {
             self.perception.candidates[index].shape
@@ -229,7 +229,7 @@ impl Canonical {
         }
     }
 
-    fn source(&self, atom: u32) -> u32 {
+    pub(super) fn source(&self, atom: u32) -> u32 {
         self.skeleton.atoms[atom as usize].source
     }
 

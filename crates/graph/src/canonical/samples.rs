@@ -340,7 +340,8 @@ impl<'p, 'c> Pair<'p, 'c> {
 }
 
 impl Canonical {
-    fn is_chiral(&self, variable: usize) -> bool {
+    /// Whether reflection inverts a variable.
+    pub(super) fn is_chiral(&self, variable: usize) -> bool {
         let mut members = self.variables[variable].members.iter();
         members.any(|&(index, _)| self.perception.candidates[index].is_chiral())
     }

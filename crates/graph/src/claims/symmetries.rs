@@ -61,6 +61,24 @@ impl Symmetries {
         })
     }
 
+    /// The variables that some automorphism moves or inverts, in canonical order.
+    pub(crate) fn variables(&self) -> impl Iterator<Item = usize> + '_ {
+        self.coordinates.iter().map(|&(variable, _)| variable)
+    }
+
+    /// For each automorphism that leaves a variable in its place and inverts it, the other variables
+    /// that it moves or inverts.
+    pub(crate) fn inverting(&self, variable: usize) -> impl Iterator<Item = BTreeSet<usize>> + '_ {
+        let own = self.variables().position(|other| other == variable);
+        let inverts = move |element: &&Signed| own.is_some_and(|at| element[at] == (at, true));
+        self.elements.iter().filter(inverts).map(move |element| {
+            let changed = element.iter().enumerate().filter(move |&(at, &image)| {
+                Some(at) != own && image != (at, false)
+            });
+            changed.map(|(at, _)| self.coordinates[at].0).collect()
+        })
+    }
+
     /// The least image of an assignment; equal exactly for assignments that an automorphism relates.
     pub(crate) fn least(&self, value: impl Fn(usize) -> Option<bool>) -> Vec<u64> {
         let own: Vec<Option<bool>> = self

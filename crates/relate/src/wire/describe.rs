@@ -87,6 +87,10 @@ pub struct Stereo {
     /// The stereo group of the mark, where it has one.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub group: Option<Group>,
+    /// Centre or ends of each element without which this one were not stereogenic; none where that is
+    /// not worked out.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub depends_on: Option<Vec<Vec<u32>>>,
 }
 
 /// A stereo group.
@@ -124,8 +128,8 @@ pub fn describe(prepared: &Prepared, limits: &Limits) -> Describe {
             described.fill(structure, &labels);
             let unlabelled = remarks::unlabelled(structure, &labels);
             let note = |noted| Note::of(structure.molecule(), noted);
-            let unlabelled = unlabelled.into_iter().map(note);
-            described.notes = Some(notes.iter().cloned().chain(unlabelled).collect());
+            let own = remarks::meso(structure).into_iter().chain(unlabelled);
+            described.notes = Some(notes.iter().cloned().chain(own.map(note)).collect());
         }
     }
     described
@@ -154,24 +158,27 @@ impl Describe {
             label: None,
             mark: "given",
             group: None,
+            depends_on: None,
         });
         let elements = elements.iter().zip(labels);
         let elements =
             elements.map(|(element, labelling)| Stereo::of(molecule, element, labelling.label()));
-        self.stereo = Some(elements.chain(metals).collect());
+        let mut elements: Vec<Stereo> = elements.collect();
+        for (element, supports) in elements
+            .iter_mut()
+            .zip(canonical.dependences().unwrap_or_default())
+        {
+            let supports = supports.into_iter().map(|ends| centres(molecule, ends));
+            element.depends_on = Some(supports.collect());
+        }
+        self.stereo = Some(elements.into_iter().chain(metals).collect());
     }
 }
 
 impl Stereo {
     fn of(molecule: &Molecule, element: &StereoElement, label: Option<Label>) -> Self {
-        let [a, b] = element.centres;
-        let atoms = if a == b {
-            vec![a]
-        } else {
-            vec![a.min(b), a.max(b)]
-        };
         Self {
-            atoms: numbers(molecule, &atoms),
+            atoms: centres(molecule, element.centres),
             element: Geometry::Element(element.shape).as_str(),
             label: label.map(Label::as_str),
             mark: match element.mark {
@@ -179,6 +186,7 @@ impl Stereo {
                 Mark::Absent => "absent",
             },
             group: element.group.map(Group::of),
+            depends_on: None,
         }
     }
 }
@@ -193,6 +201,14 @@ impl Group {
             },
             number: number + 1,
         }
+    }
+}
+
+/// The numbers of a centre, or of both ends.
+fn centres(molecule: &Molecule, [a, b]: [u32; 2]) -> Vec<u32> {
+    match a == b {
+        true => numbers(molecule, &[a]),
+        false => numbers(molecule, &[a.min(b), a.max(b)]),
     }
 }
 

@@ -231,10 +231,12 @@ impl Pair {
         let mut notes = Vec::new();
         for (which, structure, own) in [(Which::A, a, notes_a), (Which::B, b, notes_b)] {
             let unmarked = unsettled.then(|| remarks::unmarked(structure)).flatten();
+            let meso = (!brief).then(|| remarks::meso(structure)).flatten();
+            let further = unmarked.into_iter().chain(meso);
             let own = own
                 .iter()
                 .cloned()
-                .chain(unmarked.map(|noted| Note::of(structure.molecule(), noted)));
+                .chain(further.map(|noted| Note::of(structure.molecule(), noted)));
             notes.extend(own.map(|note| note.on(which)));
         }
         let molecules = [a.molecule(), b.molecule()];

@@ -59,6 +59,16 @@ impl<'s> Labels<'s> {
         }
     }
 
+    /// Whether an atom, or the ends of a bond or axis, are stereogenic.
+    pub(super) fn is_stereogenic(&self, atoms: &[u32]) -> bool {
+        let molecule = self.structure.molecule();
+        let named = |centre: &u32| atoms.contains(&molecule.number(*centre));
+        let elements = self.structure.canonical().stereo_elements();
+        elements
+            .iter()
+            .any(|element| element.centres.iter().all(named))
+    }
+
     /// A chain of bonded atoms.
     pub(super) fn chain(&self, atoms: &[u32]) -> String {
         let names: Vec<String> = atoms.iter().map(|&atom| self.atom(atom)).collect();

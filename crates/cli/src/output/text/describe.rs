@@ -2,7 +2,7 @@
 
 use std::io::{self, Write};
 
-use molkin_relate::wire::{Describe, Prepared};
+use molkin_relate::wire::{Describe, Prepared, Stereo};
 
 use crate::output::style::{Role, Style};
 
@@ -28,23 +28,7 @@ pub(crate) fn write(
     if let Some(structure) = prepared.structure() {
         let labels = Labels::new(structure);
         for entry in described.stereo.iter().flatten() {
-            let mark = match entry.mark {
-                "given" => "marked",
-                "absent" => "unmarked",
-                other => other,
-            };
-            let label = entry
-                .label
-                .map_or_else(String::new, |label| format!(", {label}"));
-            let group = entry
-                .group
-                .map(|group| format!(", {}", super::group(group)));
-            let text = format!(
-                "{}: {}, {mark}{label}{}",
-                labels.element(&entry.atoms),
-                entry.element,
-                group.unwrap_or_default()
-            );
+            let text = element(&labels, entry);
             labelled(out, style, (None, "stereo"), &text)?;
         }
     }
@@ -57,6 +41,33 @@ pub(crate) fn write(
     }
     super::excerpt(out, prepared)?;
     writeln!(out)
+}
+
+/// "C3: tetrahedral, marked, r, depends on C2 and C4".
+fn element(labels: &Labels<'_>, entry: &Stereo) -> String {
+    let mark = match entry.mark {
+        "given" => "marked",
+        "absent" => "unmarked",
+        other => other,
+    };
+    let mut text = format!(
+        "{}: {}, {mark}",
+        labels.element(&entry.atoms),
+        entry.element
+    );
+    if let Some(label) = entry.label {
+        text.push_str(&format!(", {label}"));
+    }
+    if let Some(group) = entry.group {
+        text.push_str(&format!(", {}", super::group(group)));
+    }
+    let supports = entry.depends_on.iter().flatten();
+    let supports: Vec<String> = supports.map(|atoms| labels.element(atoms)).collect();
+    if let Some((last, rest)) = supports.split_last() {
+        let and = if rest.is_empty() { "" } else { " and " };
+        text.push_str(&format!(", depends on {}{and}{last}", rest.join(", ")));
+    }
+    text
 }
 
 fn facts(described: &Describe) -> Vec<(&'static str, String)> {

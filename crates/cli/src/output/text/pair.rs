@@ -142,32 +142,29 @@ impl Differences<'_> {
             "double-bond" => "double bond",
             other => other,
         };
+        let labels = [entry.label_a, entry.label_b];
         let change = match (entry.change, entry.element) {
-            ("inverted", "double-bond") => "opposite geometry",
-            ("inverted", _) => "inverted",
-            ("marked-only-in-a", _) => "marked in A, open in B",
-            ("marked-only-in-b", _) => "open in A, marked in B",
+            ("inverted", "double-bond") => format!("opposite geometry{}", in_both(labels)),
+            ("inverted", _) => format!("inverted{}", in_both(labels)),
+            ("marked-only-in-a", _) => {
+                let other = unmarked(entry, b, &entry.b);
+                format!("{} in A, {other} in B", labels[0].unwrap_or("marked"))
+            }
+            ("marked-only-in-b", _) => {
+                let other = unmarked(entry, a, &entry.a);
+                format!("{other} in A, {} in B", labels[1].unwrap_or("marked"))
+            }
             ("group-differs", _) => {
                 let said = |group: Option<Group>| {
                     group.map_or_else(|| "absolute".to_owned(), group_in_words)
                 };
-                &format!("{} in A, {} in B", said(entry.group_a), said(entry.group_b))
+                let (in_a, in_b) = (said(entry.group_a), said(entry.group_b));
+                format!("{in_a} in A, {in_b} in B{}", in_both(labels))
             }
-            (other, _) => other,
+            (other, _) => format!("{other}{}", in_both(labels)),
         };
         let (in_a, in_b) = (a.element(&entry.a), b.element(&entry.b));
-        let labels = [(entry.label_a, "A"), (entry.label_b, "B")];
-        let labels = labels
-            .into_iter()
-            .filter_map(|(label, side)| Some((label?, side)));
-        let labels: Vec<String> = labels
-            .map(|(label, side)| format!("{label} in {side}"))
-            .collect();
-        let labels = match labels.is_empty() {
-            true => String::new(),
-            false => format!(": {}", labels.join(", ")),
-        };
-        format!("{in_a} → {in_b}: {element}, {change}{labels}")
+        format!("{in_a} → {in_b}: {element}, {change}")
     }
 
     fn branching(
@@ -235,6 +232,27 @@ fn list(
         return Ok(());
     }
     labelled(out, style, label, &items.join(", "))
+}
+
+/// ": R in A, S in B", or nothing without labels.
+fn in_both(labels: [Option<&str>; 2]) -> String {
+    match labels {
+        [Some(a), Some(b)] if a == b => format!(": {a} in both"),
+        [Some(a), Some(b)] => format!(": {a} in A, {b} in B"),
+        [Some(a), None] => format!(": {a} in A"),
+        [None, Some(b)] => format!(": {b} in B"),
+        [None, None] => String::new(),
+    }
+}
+
+/// What a side that does not mark an element makes of it. Arrangements about centres that are not
+/// tetrahedral are known by their marks alone.
+fn unmarked(entry: &StereoEntry, side: &Labels<'_>, atoms: &[u32]) -> &'static str {
+    let may_lapse = matches!(entry.element, "tetrahedral" | "double-bond" | "axis");
+    match may_lapse && !side.is_stereogenic(atoms) {
+        true => "not stereogenic",
+        false => "open",
+    }
 }
 
 fn hydrogens(count: u8) -> String {
