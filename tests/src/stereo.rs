@@ -1,5 +1,7 @@
 //! Molecules with other marks.
 
+use std::collections::BTreeMap;
+
 use molkin_graph::{
     DrawnStereo, Element, Ligand, Molecule, MoleculeBuilder, Parity, Polyhedron, Shape,
     StereoElement, StereoGroup,
@@ -41,6 +43,8 @@ pub fn mirrored(molecule: &Molecule) -> Molecule {
 pub struct Markings<'m> {
     molecule: &'m Molecule,
     places: Vec<DrawnStereo>,
+    /// Per place the centres that it stands for.
+    named: Vec<Vec<u32>>,
 }
 
 impl<'m> Markings<'m> {
@@ -70,15 +74,44 @@ impl<'m> Markings<'m> {
                 ligands: element.ligands,
                 parity: None,
             });
+        let places: Vec<DrawnStereo> = centres.chain(others).collect();
         Self {
             molecule,
-            places: centres.chain(others).collect(),
+            named: places.iter().map(|own| own.centres.to_vec()).collect(),
+            places,
+        }
+    }
+
+    /// One place for each element that is independent of the others: of bridgeheads that determine
+    /// each other the first.
+    pub fn independent(molecule: &'m Molecule, elements: &[StereoElement]) -> Self {
+        let mut own: BTreeMap<usize, (DrawnStereo, Vec<u32>)> = BTreeMap::new();
+        for element in elements {
+            let place = DrawnStereo {
+                shape: element.shape,
+                centres: element.centres,
+                ligands: element.ligands,
+                parity: None,
+            };
+            let (_, named) = own.entry(element.variable).or_insert((place, Vec::new()));
+            named.extend(element.centres);
+        }
+        let (places, named) = own.into_values().unzip();
+        Self {
+            molecule,
+            places,
+            named,
         }
     }
 
     /// The number of places.
     pub fn places(&self) -> usize {
         self.places.len()
+    }
+
+    /// The number of atoms.
+    pub fn atoms(&self) -> u32 {
+        self.molecule.atom_count() as u32
     }
 
     /// The molecule with the given marks, one for each place.
@@ -111,6 +144,11 @@ impl<'m> Markings<'m> {
     /// The atom by which a stereo group names a place.
     pub fn centre(&self, place: usize) -> u32 {
         self.places[place].centres[0]
+    }
+
+    /// All atoms by which a stereo group may name a place.
+    pub fn names(&self, place: usize) -> &[u32] {
+        &self.named[place]
     }
 
     /// Every way to mark all places; 2 to the number of places.
@@ -154,6 +192,9 @@ pub fn grouped(molecule: &Molecule, groups: &[StereoGroup]) -> Molecule {
     let mut builder = skeleton(molecule);
     for mark in molecule.drawn_stereo() {
         builder.add_stereo(*mark);
+    }
+    for mark in molecule.drawn_coordination() {
+        builder.add_coordination(mark.clone());
     }
     for group in groups {
         builder.add_group(group.clone());

@@ -29,7 +29,7 @@ mod symmetries;
 mod variables;
 
 pub(crate) use family::{Alternative, Family, leaves_room};
-pub(crate) use grouped::{Point, masked};
+pub(crate) use grouped::{Point, masked, most_pieces};
 pub(crate) use pieces::{Freedom, Piece, of_groups};
 pub(crate) use place::{Place, place};
 pub(crate) use roles::Roles;

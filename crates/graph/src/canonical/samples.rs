@@ -13,7 +13,7 @@ use crate::{
     Canonical, OrderError, Orderer, Shape,
     claims::{
         Alternative, Family, Freedom, Piece, Place, Point, Roles, Space, Vector, leaves_room,
-        masked,
+        masked, most_pieces,
     },
     order::Labelling,
 };
@@ -28,7 +28,8 @@ pub(super) fn compare(
 ) -> Result<Arrangement, OrderError> {
     let (a, b) = (Side::of(a), Side::of(b));
     let pair = Pair::of(&a, &b)?;
-    let lists = pair.families(orderer, false)?;
+    let mut steps = 0;
+    let lists = pair.families(orderer, false, &mut steps)?;
     let (ours, theirs) = (pair.plane(&a, false), pair.plane(&b, false));
     if ours.meets(&theirs) && lists.a.meets(&lists.b) {
         return Ok(Arrangement::Overlapping);
@@ -47,11 +48,13 @@ pub(super) fn compare(
         return Ok(Arrangement::Unlike);
     }
     let always = ours.always_shares(&theirs) && lists.a.pairs(&lists.b).all(share);
-    Ok(if always && !pair.may_be_apart(orderer, &ours, &theirs)? {
-        Arrangement::Composition
-    } else {
-        Arrangement::Unresolved
-    })
+    Ok(
+        if always && !pair.may_be_apart(orderer, &ours, &theirs, &mut steps)? {
+            Arrangement::Composition
+        } else {
+            Arrangement::Unresolved
+        },
+    )
 }
 
 /// One record with the part each of its variables plays.
@@ -209,7 +212,12 @@ impl<'p, 'c> Pair<'p, 'c> {
 
     /// The families of both sides and of the mirror image of B. With `loose` also what is free and
     /// not settled is listed; without, only elements that neither side leaves free are told apart.
-    fn families(&self, orderer: &mut Orderer, loose: bool) -> Result<Families, OrderError> {
+    fn families(
+        &self,
+        orderer: &mut Orderer,
+        loose: bool,
+        steps: &mut u64,
+    ) -> Result<Families, OrderError> {
         let common: BTreeSet<Place> = if loose {
             let all = self.a.variables();
             all.flat_map(|v| self.a.canonical.candidate_places(v))
@@ -228,7 +236,7 @@ impl<'p, 'c> Pair<'p, 'c> {
                 .filter(|p| self.is_listed(side, p));
             let free = side.loose().filter(|_| loose).map(Piece::unmarked);
             let pieces: Vec<Piece> = pieces.chain(free).collect();
-            let points = self.points(orderer, side, &pieces, &common, mirrored)?;
+            let points = self.points(orderer, side, &pieces, &common, mirrored, steps)?;
             Ok::<_, OrderError>((pieces, points))
         };
         let lists = [
@@ -258,8 +266,9 @@ impl<'p, 'c> Pair<'p, 'c> {
         pieces: &[Piece],
         common: &BTreeSet<Place>,
         mirrored: bool,
+        steps: &mut u64,
     ) -> Result<Vec<Point>, OrderError> {
-        let limit = orderer.limits.stereo_pieces;
+        let limit = most_pieces(&orderer.limits);
         if pieces.len() > limit as usize {
             return Err(OrderError::TooManyPieces { limit });
         }
@@ -280,7 +289,7 @@ impl<'p, 'c> Pair<'p, 'c> {
             };
             let certificate = match &side.roles.symmetries {
                 Some(symmetries) => symmetries.least(value),
-                None => orderer.certificate(side.canonical, value)?,
+                None => orderer.certificate(side.canonical, value, steps)?,
             };
             let settled = side.variables().filter_map(|v| {
                 let (place, odd) = side.roles.settled[v]?;
@@ -305,6 +314,7 @@ impl<'p, 'c> Pair<'p, 'c> {
         orderer: &mut Orderer,
         ours: &Plane,
         theirs: &Plane,
+        steps: &mut u64,
     ) -> Result<bool, OrderError> {
         let copies = match ours.room_beside(theirs) {
             Room::Always => return Ok(true),
@@ -323,7 +333,7 @@ impl<'p, 'c> Pair<'p, 'c> {
         if self.a.loose().any(apart) {
             return Ok(true);
         }
-        let lists = self.families(orderer, true)?;
+        let lists = self.families(orderer, true, steps)?;
         let limit = orderer.limits.order_steps;
         let mut steps = 0;
         for (a, b) in lists.a.pairs(&lists.b) {
@@ -353,6 +363,7 @@ impl Orderer {
         &mut self,
         canonical: &Canonical,
         value: impl Fn(usize) -> Option<bool>,
+        steps: &mut u64,
     ) -> Result<Vec<u64>, OrderError> {
         colour::load(
             &mut self.graph,
@@ -370,7 +381,7 @@ impl Orderer {
         }
         let mut labelling = Labelling::default();
         self.labeller
-            .label(&self.graph, &self.limits, &mut 0, &mut labelling)?;
+            .label(&self.graph, &self.limits, steps, &mut labelling)?;
         Ok(labelling.certificate)
     }
 }

@@ -14,7 +14,7 @@
 
 use std::collections::BTreeMap;
 
-use crate::{OrderError, order::Labelling};
+use crate::{Limits, OrderError, order::Labelling};
 
 use super::{
     Claims, Freedom, Piece,
@@ -66,6 +66,11 @@ fn listed(roles: &Roles, state: &State) -> Vec<Piece> {
         .collect()
 }
 
+/// Pieces that are listed at the most.
+pub(crate) fn most_pieces(limits: &Limits) -> u32 {
+    limits.stereo_pieces.min(MOST_OPEN)
+}
+
 /// An assignment with some variables inverted.
 pub(crate) fn inverted(assignment: &[bool], variables: &[usize]) -> Vec<bool> {
     let mut turned = assignment.to_vec();
@@ -112,7 +117,7 @@ impl Solver<'_> {
         claims.statuses = self.statuses(&roles.orbits, &state.free, &roles.never)?;
         claims.open = self.grouped_is_open(&roles, &listing, &state)?;
         (claims.shown, *written) = self.shown(&roles, &state)?;
-        claims.certificates = self.statement(&roles, &listing, &state)?;
+        claims.certificates = self.statement(bare, &roles, &listing, &state)?;
         claims.assignments = listing.assignments;
         claims.free = state.free;
         state.groups.sort_by(|a, b| a.variables.cmp(&b.variables));
@@ -150,7 +155,7 @@ impl Solver<'_> {
         blind: impl Fn(usize) -> bool,
     ) -> Result<Listing, OrderError> {
         let pieces = listed(roles, state);
-        let limit = self.limits.stereo_pieces.min(MOST_OPEN);
+        let limit = most_pieces(self.limits);
         if pieces.len() > limit as usize {
             return Err(OrderError::TooManyPieces { limit });
         }
@@ -380,10 +385,12 @@ impl Solver<'_> {
     }
 
     /// What equality and keys rest on. Where the samples are all sets of some stereoisomers, that is
-    /// their certificates, as without groups; else the settled marks, the groups of settled elements,
-    /// the listed points and the family on them.
+    /// their certificates, as without groups; else the settled marks, the groups of settled elements
+    /// and the family on the listed points; the certificate of the constitution, with what is given
+    /// about metals, in which these have their places; and the points.
     fn statement(
         &mut self,
+        bare: &Labelling,
         roles: &Roles,
         listing: &Listing,
         state: &State,
@@ -431,7 +438,8 @@ impl Solver<'_> {
         }
         listing.write(&mut words);
         let points = listing.points.iter().map(|point| point.certificate.clone());
-        Ok(std::iter::once(words).chain(points).collect())
+        let constitution = bare.certificate.clone();
+        Ok([words, constitution].into_iter().chain(points).collect())
     }
 
     /// The elements of a settled group, relative to the first.

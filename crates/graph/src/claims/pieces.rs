@@ -69,7 +69,9 @@ pub(crate) fn of_groups(
     for group in molecule.stereo_groups() {
         let freedom = Freedom::of(group.kind);
         let mut own = Vec::new();
-        for &atom in &group.atoms {
+        // A hydrogen is in no element, though it is written into its neighbour's.
+        let named = group.atoms.iter();
+        for &atom in named.filter(|&&atom| skeleton.folded[atom as usize].is_none()) {
             let home = skeleton.home[atom as usize];
             if perception.placed.iter().any(|placed| placed.centre == home) {
                 return Err(OrderError::StereoGroups);
