@@ -17,6 +17,7 @@ mod distance;
 mod extent;
 mod graph6;
 mod kekule;
+mod kinds;
 mod molfile;
 mod numbers;
 mod pairs;
@@ -37,6 +38,7 @@ pub use crate::{
     extent::is_full_run,
     graph6::Graph,
     kekule::other_kekule_form,
+    kinds::{KindPair, definition_kinds, fixture_kinds},
     molfile::{molfiles, renumbered_molfile},
     numbers::Numbers,
     pairs::{Expected, Pair, definition_pairs, fixture_pairs, grouped_pairs},

@@ -30,6 +30,7 @@ mod graphs_growth;
 mod graphs_plain;
 mod graphs_reference;
 mod hostile;
+mod kinds;
 mod label_examples;
 mod label_laws;
 mod mirror;

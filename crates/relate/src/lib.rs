@@ -5,7 +5,10 @@
 //! among threads.
 #![forbid(unsafe_code)]
 
+mod constitution;
 mod explain;
+mod groups;
+mod kinds;
 pub mod mapping;
 mod relation;
 mod remarks;
@@ -21,6 +24,8 @@ pub use crate::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
         StereoChange, StereoDifference, explain,
     },
+    groups::{FunctionalGroup, functional_groups},
+    kinds::{Kind, kinds},
     relation::{Relation, StereoKind, Verdict, relate},
     structure::{PrepareError, Preparer, Structure},
 };

@@ -1,6 +1,6 @@
 //! Remarks on records and pairs: a stable code, the atoms, a sentence.
 
-use molkin_graph::{Dropped, Labelling, Mark, Molecule, Remark, Shape, Undrawable};
+use molkin_graph::{Dropped, GraphError, Labelling, Mark, Molecule, Remark, Shape, Undrawable};
 
 use crate::{Relation, Structure};
 
@@ -221,6 +221,15 @@ pub(crate) fn of_pair(a: &Structure, b: &Structure, relation: Relation) -> Vec<N
         });
     }
     notes
+}
+
+/// Why a pair has a relation and no kind.
+pub(crate) fn kind_not_found(error: &GraphError) -> Noted {
+    Noted {
+        code: "kind-limit",
+        atoms: Vec::new(),
+        text: format!("The kind was not found: {error}."),
+    }
 }
 
 fn metal_bonds(structure: &Structure) -> usize {

@@ -1,5 +1,6 @@
 //! The verdict in plain sentences.
 
+mod functional;
 mod groups;
 mod places;
 mod stereo;
@@ -7,14 +8,17 @@ mod stereo;
 #[cfg(test)]
 mod tests;
 
-use crate::{Explanation, Relation, Structure, Verdict};
+use molkin_graph::Limits;
+
+use crate::{Explanation, Kind, Relation, Structure, Verdict};
 
 /// One or two sentences for a chemist.
 pub(crate) fn summary(
-    a: &Structure,
-    b: &Structure,
+    [a, b]: [&Structure; 2],
     verdict: &Verdict,
+    kind: Option<Kind>,
     explained: Option<&Explanation>,
+    limits: &Limits,
 ) -> String {
     match verdict.relation {
         Relation::Identical if verdict.open => {
@@ -22,16 +26,34 @@ pub(crate) fn summary(
         }
         Relation::Identical => "The two records are the same compound.".to_owned(),
         Relation::Stereo(kind) => stereo::summary(a, b, kind, explained),
-        Relation::Constitutional => constitutional(a, explained),
-        Relation::NotIsomers => not_isomers(a, b),
+        Relation::Constitutional => {
+            // What needs more than the kind is left out of brief output.
+            let groups = explained.and_then(|_| functional::difference(a, b, limits));
+            constitutional(a, kind, groups, explained)
+        }
+        Relation::NotIsomers => not_isomers(a, b, kind),
     }
 }
 
-fn constitutional(a: &Structure, explained: Option<&Explanation>) -> String {
+fn constitutional(
+    a: &Structure,
+    kind: Option<Kind>,
+    groups: Option<String>,
+    explained: Option<&Explanation>,
+) -> String {
+    let what = match kind {
+        Some(Kind::Isotopomers) => "with the same isotopes in other places".to_owned(),
+        Some(Kind::RingChain) => "but a chain of one is closed to a ring in the other".to_owned(),
+        Some(Kind::Functional) => {
+            let groups = groups.map(|groups| format!(" ({groups})"));
+            format!("but other functional groups{}", groups.unwrap_or_default())
+        }
+        Some(Kind::Skeletal) => "but another carbon skeleton".to_owned(),
+        Some(Kind::Positional) => "and the same functional groups, but in other places".to_owned(),
+        _ => "but the atoms are connected differently".to_owned(),
+    };
     let formula = a.formula();
-    let verdict = format!(
-        "Constitutional isomers: the same formula {formula}, but the atoms are connected differently."
-    );
+    let verdict = format!("Constitutional isomers: the same formula {formula}, {what}.");
     let Some(bonds) = explained.and_then(|e| e.bonds.as_ref()) else {
         return verdict;
     };
@@ -73,9 +95,13 @@ fn counted(count: usize, noun: &str) -> String {
     }
 }
 
-fn not_isomers(a: &Structure, b: &Structure) -> String {
+fn not_isomers(a: &Structure, b: &Structure, kind: Option<Kind>) -> String {
     let (left, right) = (a.formula(), b.formula());
-    if left != right {
+    if kind == Some(Kind::Homologues) {
+        format!(
+            "Not isomers but homologues: the same functional groups, and formulae that differ by CH2 units ({left} and {right})."
+        )
+    } else if left != right {
         let same_atoms = left.iter().eq(right.iter());
         let why = if same_atoms {
             "the net charge differs"

@@ -5,7 +5,7 @@ use serde::Serialize;
 
 use crate::{
     Branching as DomainBranching, Explanation, PrepareError, Relation, StereoKind, Structure,
-    explain, relate,
+    explain, kinds, relate,
     remarks::{self, Noted},
     words,
 };
@@ -24,7 +24,7 @@ pub struct Pair {
     /// `identical`, `stereo`, `constitutional` or `not-isomers`.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub relation: Option<&'static str>,
-    /// The kind, where the relation has kinds.
+    /// The kind: the first that holds.
     #[serde(skip_serializing_if = "is_error")]
     pub kind: Kind,
     /// All kinds that hold.
@@ -59,7 +59,7 @@ pub struct Pair {
     pub errors: Option<Vec<Error>>,
 }
 
-/// The kind field: null for relations without kinds, absent beside errors.
+/// The kind field: null for identical records, absent beside errors.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
 #[serde(untagged)]
 pub enum Kind {
@@ -217,18 +217,29 @@ impl Pair {
     ) -> Result<(), OrderError> {
         let verdict = relate(orderer, a, b)?;
         let explained = (!brief).then(|| explain(a, b, verdict.relation, limits));
+        let mut notes = Vec::new();
+        let kinds = kinds(verdict.relation, a, b, limits).unwrap_or_else(|error| {
+            notes.push(Note::of(a.molecule(), remarks::kind_not_found(&error)));
+            Vec::new()
+        });
         self.relation = Some(verdict.relation.as_str());
-        self.kind = Kind::Verdict(verdict.relation.kind());
-        self.aspects = Some(verdict.relation.kind().into_iter().collect());
+        self.kind = Kind::Verdict(kinds.first().map(|kind| kind.as_str()));
+        self.aspects = Some(kinds.iter().map(|kind| kind.as_str()).collect());
         self.open = Some(verdict.open);
-        self.summary = Some(words::summary(a, b, &verdict, explained.as_ref()));
+        let kind = kinds.first().copied();
+        self.summary = Some(words::summary(
+            [a, b],
+            &verdict,
+            kind,
+            explained.as_ref(),
+            limits,
+        ));
         // What is unmarked is why these verdicts are not firmer.
         let unsettled = verdict.open
             || matches!(
                 verdict.relation,
                 Relation::Stereo(StereoKind::Undetermined | StereoKind::Unresolved)
             );
-        let mut notes = Vec::new();
         for (which, structure, own) in [(Which::A, a, notes_a), (Which::B, b, notes_b)] {
             let unmarked = unsettled.then(|| remarks::unmarked(structure)).flatten();
             let meso = (!brief).then(|| remarks::meso(structure)).flatten();
