@@ -34,7 +34,7 @@ fn grouped(text: &str, groups: &[(GroupKind, &[u32])]) -> Molecule {
 /// The whole summary.
 fn told(a: Molecule, b: Molecule) -> String {
     let limits = Limits::default();
-    let mut orderer = Orderer::new(limits.clone());
+    let mut orderer = Orderer::new(limits);
     let [a, b] = [a, b].map(|molecule| Structure::new(&mut orderer, molecule).unwrap());
     let verdict = relate(&mut orderer, &a, &b).unwrap();
     let explanation = explain(&a, &b, verdict.relation, &limits);
