@@ -72,9 +72,10 @@ impl Symmetries {
         let own = self.variables().position(|other| other == variable);
         let inverts = move |element: &&Signed| own.is_some_and(|at| element[at] == (at, true));
         self.elements.iter().filter(inverts).map(move |element| {
-            let changed = element.iter().enumerate().filter(move |&(at, &image)| {
-                Some(at) != own && image != (at, false)
-            });
+            let changed = element
+                .iter()
+                .enumerate()
+                .filter(move |&(at, &image)| Some(at) != own && image != (at, false));
             changed.map(|(at, _)| self.coordinates[at].0).collect()
         })
     }

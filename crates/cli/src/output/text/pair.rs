@@ -159,7 +159,9 @@ impl Differences<'_> {
                     group.map_or_else(|| "absolute".to_owned(), group_in_words)
                 };
                 let (in_a, in_b) = (said(entry.group_a), said(entry.group_b));
-                format!("{in_a} in A, {in_b} in B{}", in_both(labels))
+                // Numbers are those of each record: the same one may hold other elements.
+                let aside = if in_a == in_b { " of other extent" } else { "" };
+                format!("{in_a} in A, {in_b}{aside} in B{}", in_both(labels))
             }
             (other, _) => format!("{other}{}", in_both(labels)),
         };
