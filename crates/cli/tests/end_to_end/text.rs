@@ -14,7 +14,7 @@ fn compared(a: &str, b: &str) -> String {
 #[test]
 fn constitutional() {
     assert_snapshot!(compared("label.mol", "arrived.mol"), @r"
-    Constitutional isomers: the same formula C8H8O2, but the atoms are connected differently. The least difference: one bond only in A and one bond only in B.
+    Constitutional isomers: the same formula C8H8O2, but other functional groups (aldehyde and ether in A, carboxylic ester in B). The least difference: one bond only in A and one bond only in B.
       A                 label.mol: QM-0417 label
                         C8H8O2  C1(OC)=CC=C(C=O)C=C1
       B                 arrived.mol: QM-0417 bottle
@@ -32,7 +32,7 @@ fn constitutional() {
 #[test]
 fn bond_orders() {
     assert_snapshot!(compared("C=CCO", "C/C=C/O"), @r"
-    Constitutional isomers: the same formula C3H6O, but the atoms are connected differently. The least difference: 2 bonds of different order.
+    Constitutional isomers: the same formula C3H6O, but other functional groups (alcohol and alkene in A, enol in B). The least difference: 2 bonds of different order.
       A                 C=CCO
                         C3H6O  C(=C)CO
       B                 C/C=C/O
@@ -48,7 +48,7 @@ fn bond_orders() {
 #[test]
 fn chains() {
     assert_snapshot!(compared("CC(=O)CN", "NCCC=O"), @r"
-    Constitutional isomers: the same formula C3H7NO, but the atoms are connected differently. The least difference: one bond only in A and one bond only in B.
+    Constitutional isomers: the same formula C3H7NO, but other functional groups (ketone in A, aldehyde in B). The least difference: one bond only in A and one bond only in B.
       A                 CC(=O)CN
                         C3H7NO  C(=O)(C)CN
       B                 NCCC=O
@@ -190,7 +190,7 @@ fn budget_ended() {
     let outcome = run(&["compare", "OCC=C=CO", "O=CC=CCO", "--steps", "1"]);
     let (text, _) = outcome.out.split_once("\nThis compares").unwrap();
     assert_snapshot!(text, @r"
-    Constitutional isomers: the same formula C4H6O2, but the atoms are connected differently. One way to see it, not proved the least: 2 bonds of different order.
+    Constitutional isomers: the same formula C4H6O2, but other functional groups (a group without a name in A, enal in B). One way to see it, not proved the least: 2 bonds of different order.
       A                 OCC=C=CO
                         C4H6O2  C(=CO)=CCO
       B                 O=CC=CCO
