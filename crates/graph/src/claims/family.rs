@@ -5,7 +5,7 @@
 //! is open, and that no other stereoisomer be. So its samples are the sets that lie within all these
 //! stereoisomers and hit each *block*. Blocks that contain another ask for nothing more.
 
-use std::collections::BTreeSet;
+use std::collections::{BTreeMap, BTreeSet};
 
 use crate::OrderError;
 
@@ -26,8 +26,8 @@ impl Alternative {
     pub(crate) fn of(blocks: BTreeSet<Isomers>) -> Self {
         let all = blocks.iter().flatten().copied().collect();
         let minimal = |block: &&Isomers| {
-            let mut others = blocks.iter();
-            !others.any(|other| other != *block && other.is_subset(block))
+            let mut smaller = blocks.iter().filter(|other| other.len() < block.len());
+            !smaller.any(|other| other.is_subset(block))
         };
         Self {
             blocks: blocks.iter().filter(minimal).cloned().collect(),
@@ -156,9 +156,17 @@ impl Family {
 
 /// Alternatives that do not lie within another.
 fn reduced(all: &BTreeSet<Alternative>) -> BTreeSet<Alternative> {
+    // One that lies within another has all its stereoisomers there, the first among them.
+    let mut holding: BTreeMap<usize, Vec<&Alternative>> = BTreeMap::new();
+    for own in all {
+        for &isomer in &own.all {
+            holding.entry(isomer).or_default().push(own);
+        }
+    }
     let kept = all.iter().filter(|own| {
-        let mut others = all.iter();
-        !others.any(|other| other != *own && own.is_within(other))
+        let others = own.all.first().and_then(|first| holding.get(first));
+        let mut others = others.into_iter().flatten();
+        !others.any(|other| other != own && own.is_within(other))
     });
     kept.cloned().collect()
 }
@@ -177,7 +185,7 @@ pub(crate) fn subsets(mask: u64) -> impl Iterator<Item = u64> {
 
 /// Whether samples without a common stereoisomer exist where one side's samples are, in each of some
 /// copies of the alternative `a`, sets that hit all its blocks, and the other's need one stereoisomer
-/// of each block of `b` from any of the copies. Exact; `steps` counts the sets that are tried.
+/// of each block of `b` from any of the copies. Exact; `steps` counts the blocks that are looked at.
 pub(crate) fn leaves_room(
     a: &Alternative,
     b: &Alternative,
@@ -220,15 +228,14 @@ impl Room<'_> {
         wanted: &[&Isomers],
         copies: u64,
     ) -> Result<bool, OrderError> {
-        *self.steps += 1;
+        let mut rest = self.blocks[from..].iter().zip(from..);
+        let next = rest.find(|(block, _)| block.is_disjoint(chosen));
+        let reached = next.map_or(self.blocks.len(), |(_, at)| at);
+        *self.steps += 1 + (reached - from) as u64;
         if *self.steps > self.limit {
             return Err(OrderError::StepLimit { limit: self.limit });
         }
-        let rest = self.blocks[from..].iter();
-        let Some(next) = rest
-            .zip(from..)
-            .find(|(block, _)| block.is_disjoint(chosen))
-        else {
+        let Some(next) = next else {
             let filled = wanted.iter().filter(|block| block.is_subset(chosen));
             let filled: Vec<&Isomers> = filled.copied().collect();
             return if filled.len() < wanted.len() {

@@ -6,7 +6,7 @@
 //! function alone; iterated consensus finds them (Quine, Am. Math. Mon. 1955, 62, 627). For each of
 //! their upper ends the samples below it are one alternative again.
 
-use std::collections::BTreeSet;
+use std::collections::{BTreeMap, BTreeSet};
 
 use crate::OrderError;
 
@@ -14,7 +14,7 @@ use super::family::{Alternative, Isomers};
 
 /// Intervals that are kept at the most, and pairs that are looked at.
 const MOST_INTERVALS: usize = 4_096;
-const MOST_PAIRS: usize = 8_000_000;
+const MOST_PAIRS: usize = 2_000_000;
 
 /// All sets between two.
 #[derive(Debug, Clone, PartialEq, Eq, PartialOrd, Ord)]
@@ -55,6 +55,36 @@ impl Interval {
 pub(super) fn united(
     alternatives: BTreeSet<Alternative>,
 ) -> Result<BTreeSet<Alternative>, OrderError> {
+    let mut found = BTreeSet::new();
+    for linked in linked(alternatives) {
+        found.append(&mut united_linked(linked)?);
+    }
+    Ok(found)
+}
+
+/// Classes of alternatives that are linked by common stereoisomers. No sample is empty, so intervals of
+/// different classes neither lie within each other nor have a consensus.
+fn linked(alternatives: BTreeSet<Alternative>) -> Vec<BTreeSet<Alternative>> {
+    let mut classes: Vec<BTreeSet<Alternative>> = Vec::new();
+    let mut class_of: BTreeMap<usize, usize> = BTreeMap::new();
+    for alternative in alternatives {
+        let met = alternative.all.iter().filter_map(|i| class_of.get(i));
+        let met: BTreeSet<usize> = met.copied().collect();
+        let into = met.first().copied().unwrap_or(classes.len());
+        classes.resize_with(classes.len().max(into + 1), BTreeSet::new);
+        for other in met.into_iter().skip(1) {
+            let mut moved = std::mem::take(&mut classes[other]);
+            let isomers = moved.iter().flat_map(|own| &own.all);
+            class_of.extend(isomers.map(|&isomer| (isomer, into)));
+            classes[into].append(&mut moved);
+        }
+        class_of.extend(alternative.all.iter().map(|&isomer| (isomer, into)));
+        classes[into].insert(alternative);
+    }
+    classes
+}
+
+fn united_linked(alternatives: BTreeSet<Alternative>) -> Result<BTreeSet<Alternative>, OrderError> {
     if alternatives.len() < 2 {
         return Ok(alternatives);
     }
@@ -65,11 +95,7 @@ pub(super) fn united(
             add(&mut intervals, Interval { least, greatest })?;
         }
     }
-    let before = intervals.clone();
     close(&mut intervals)?;
-    if intervals == before {
-        return Ok(alternatives);
-    }
     let tops: BTreeSet<&Isomers> = intervals.iter().map(|own| &own.greatest).collect();
     let mut found = BTreeSet::new();
     for top in tops {
@@ -101,15 +127,15 @@ fn add(intervals: &mut Vec<Interval>, new: Interval) -> Result<bool, OrderError>
 fn close(intervals: &mut Vec<Interval>) -> Result<(), OrderError> {
     let mut pairs = 0;
     loop {
+        pairs += intervals.len() * intervals.len();
+        if pairs > MOST_PAIRS {
+            return Err(OrderError::TooManySamples);
+        }
         let mut found = Vec::new();
         for a in intervals.iter() {
             for b in intervals.iter() {
                 found.extend(a.consensus(b));
             }
-        }
-        pairs += intervals.len() * intervals.len();
-        if pairs > MOST_PAIRS {
-            return Err(OrderError::TooManySamples);
         }
         let mut changed = false;
         for new in found {
@@ -125,11 +151,16 @@ fn close(intervals: &mut Vec<Interval>) -> Result<(), OrderError> {
 /// chapter 2).
 fn blocker(sets: &BTreeSet<Isomers>) -> Result<BTreeSet<Isomers>, OrderError> {
     let mut hitting = BTreeSet::from([Isomers::new()]);
+    let mut pairs = 0;
     for set in sets {
         let (mut next, missing): (BTreeSet<Isomers>, BTreeSet<Isomers>) =
             hitting.into_iter().partition(|own| !own.is_disjoint(set));
         let done: Vec<Isomers> = next.iter().cloned().collect();
         for own in missing {
+            pairs += set.len() * (1 + done.len());
+            if pairs > MOST_PAIRS || next.len() > MOST_INTERVALS {
+                return Err(OrderError::TooManySamples);
+            }
             for &isomer in set {
                 let mut larger = own.clone();
                 larger.insert(isomer);
@@ -164,6 +195,34 @@ mod tests {
             all: set(&[0, 1]),
         };
         assert_eq!(united, BTreeSet::from([expected]));
+    }
+
+    /// Also where no two intervals have a consensus: what alternatives share may be said by either.
+    #[test]
+    fn the_form_depends_on_the_samples_alone() {
+        let own = |blocks: &[&[usize]], all: &[usize]| Alternative {
+            blocks: blocks.iter().map(|block| set(block)).collect(),
+            all: set(all),
+        };
+        let form = |own: &[Alternative]| united(own.iter().cloned().collect()).unwrap();
+        let (first, second) = (own(&[&[0]], &[0, 1]), own(&[&[1]], &[0, 1]));
+        assert_eq!(
+            form(&[first.clone(), second]),
+            form(&[own(&[&[0, 1]], &[0, 1])])
+        );
+        let beyond = own(&[&[1]], &[0, 1, 2]);
+        let either = own(&[&[0, 1]], &[0, 1]);
+        assert_eq!(form(&[first, beyond.clone()]), form(&[either, beyond]));
+    }
+
+    #[test]
+    fn alternatives_are_linked_through_others() {
+        let sets = [&[0, 1][..], &[2, 3], &[4], &[1, 2], &[5, 4]];
+        let all = sets.map(|own| Alternative::of(BTreeSet::from([set(own)])));
+        let mut found: Vec<usize> = linked(all.into()).iter().map(BTreeSet::len).collect();
+        found.retain(|&len| len > 0);
+        found.sort_unstable();
+        assert_eq!(found, [2, 3]);
     }
 
     #[test]
