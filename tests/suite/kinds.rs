@@ -2,8 +2,12 @@
 
 use std::collections::{BTreeMap, BTreeSet};
 
-use molkin_graph::Limits;
-use molkin_relate::{Kind, Structure, functional_groups, kinds};
+use molkin_formats::source::{Format, ReadOptions, Records};
+use molkin_graph::{Limits, Orderer};
+use molkin_relate::{
+    Kind, Structure, functional_groups, kinds,
+    wire::{self, Prepared, compare},
+};
 use molkin_tests::{
     Comparer, KindPair, Numbers, Tally, definition_kinds, first_word, fixture_kinds,
     other_kekule_form, read_text, renumbered, shared, with_hydrogens_written,
@@ -121,4 +125,40 @@ fn certificates(structure: &Structure) -> Result<Vec<Vec<u64>>, String> {
     let mut certificates: Vec<_> = groups.into_iter().map(|group| group.certificate).collect();
     certificates.sort_unstable();
     Ok(certificates)
+}
+
+/// Where the limit is reached there is a relation, no kind, and a note.
+#[test]
+fn a_kind_beyond_the_limit_is_null_with_a_note() {
+    let limits = Limits::default();
+    let mut orderer = Orderer::new(limits);
+    let file = "CCOC(=O)CCN a\nCCCOC(=O)CN b\n";
+    let records = Records::new(
+        "two.smi",
+        file.as_bytes(),
+        Format::Smiles,
+        ReadOptions::default(),
+    );
+    let sides: Vec<Prepared> = records
+        .map(|outcome| Prepared::new(&mut orderer, "two.smi", outcome.unwrap()))
+        .collect();
+    let short = Limits {
+        order_steps: 1,
+        ..limits
+    };
+    let mut compared =
+        |limits: &Limits| compare(&mut orderer, limits, [&sides[0], &sides[1]], true);
+    let pair = compared(&limits);
+    assert_eq!(pair.kind, wire::Kind::Verdict(Some("positional")));
+    let pair = compared(&short);
+    assert_eq!(pair.relation, Some("constitutional"));
+    assert_eq!(pair.kind, wire::Kind::Verdict(None));
+    assert_eq!(pair.aspects, Some(Vec::new()));
+    let codes: Vec<String> = pair
+        .notes
+        .unwrap()
+        .into_iter()
+        .map(|note| note.code)
+        .collect();
+    assert_eq!(codes, ["kind-limit"]);
 }

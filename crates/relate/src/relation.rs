@@ -46,7 +46,8 @@ impl Relation {
         }
     }
 
-    /// The kind, in the words of the output contract, where the relation has kinds.
+    /// The kind of a stereo relation, in the words of the output contract. The kinds of the others take
+    /// more than a verdict: [`crate::kinds()`].
     pub fn kind(self) -> Option<&'static str> {
         match self {
             Self::Stereo(kind) => Some(kind.as_str()),

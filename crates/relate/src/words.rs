@@ -42,18 +42,21 @@ fn constitutional(
     explained: Option<&Explanation>,
 ) -> String {
     let what = match kind {
-        Some(Kind::Isotopomers) => "with the same isotopes in other places".to_owned(),
-        Some(Kind::RingChain) => "but a chain of one is closed to a ring in the other".to_owned(),
+        Some(Kind::Isotopomers) => ", with the same isotopes in other places".to_owned(),
+        Some(Kind::RingChain) => ", but a chain of one is closed to a ring in the other".to_owned(),
         Some(Kind::Functional) => {
             let groups = groups.map(|groups| format!(" ({groups})"));
-            format!("but other functional groups{}", groups.unwrap_or_default())
+            format!(
+                ", but other functional groups{}",
+                groups.unwrap_or_default()
+            )
         }
-        Some(Kind::Skeletal) => "but another carbon skeleton".to_owned(),
-        Some(Kind::Positional) => "and the same functional groups, but in other places".to_owned(),
-        _ => "but the atoms are connected differently".to_owned(),
+        Some(Kind::Skeletal) => ", but another carbon skeleton".to_owned(),
+        Some(Kind::Positional) => " and the same functional groups, but in other places".to_owned(),
+        _ => ", but the atoms are connected differently".to_owned(),
     };
     let formula = a.formula();
-    let verdict = format!("Constitutional isomers: the same formula {formula}, {what}.");
+    let verdict = format!("Constitutional isomers: the same formula {formula}{what}.");
     let Some(bonds) = explained.and_then(|e| e.bonds.as_ref()) else {
         return verdict;
     };

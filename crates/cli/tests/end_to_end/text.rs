@@ -64,6 +64,31 @@ fn chains() {
 }
 
 #[test]
+fn kinds() {
+    let first_line = |a, b| compared(a, b).lines().next().unwrap().to_owned();
+    let lines = [
+        first_line("[2H]CCO", "CCO[2H]"),
+        first_line("CC=C", "C1CC1"),
+        first_line("OC(CO)CO", "COCOCO"),
+        first_line("CCCC", "CC(C)C"),
+        first_line("CCCO", "CC(C)O"),
+        first_line("CC.CCCC", "CCC.CCC"),
+        first_line("[2H]C", "C"),
+        first_line("CO", "CCCO"),
+    ];
+    assert_snapshot!(lines.join("\n"), @r"
+    Constitutional isomers: the same formula C2H6O, with the same isotopes in other places. All bonds agree; hydrogens, charges or isotopes sit elsewhere.
+    Constitutional isomers: the same formula C3H6, but a chain of one is closed to a ring in the other. The least difference: no bond only in A and one bond only in B.
+    Constitutional isomers: the same formula C3H8O3, but other functional groups (3 × alcohol in A, a group without a name in B). The least difference: 2 bonds only in A and 2 bonds only in B.
+    Constitutional isomers: the same formula C4H10, but another carbon skeleton. The least difference: one bond only in A and one bond only in B.
+    Constitutional isomers: the same formula C3H8O and the same functional groups, but in other places. The least difference: one bond only in A and one bond only in B.
+    Constitutional isomers: the same formula C6H16, but the atoms are connected differently. The least difference: one bond only in A and one bond only in B.
+    Not isomers: the same elements (CH4), but a different isotopic composition.
+    Not isomers but homologues: the same functional groups, and formulae that differ by CH2 units (CH4O and C3H8O).
+    ");
+}
+
+#[test]
 fn enantiomers() {
     assert_snapshot!(compared("hand-label.mol", "hand-arrived.mol"), @r"
     Enantiomers: mirror images that do not coincide; the only stereocentre is inverted: C2 (S in A, R in B).

@@ -8,7 +8,9 @@ use crate::constitution::Constitution;
 /// is a lone ring of 4n atoms, or in a five-membered ring like those of furan, pyrrole and thiophene.
 pub(super) fn aromatic_bonds(constitution: &Constitution) -> Vec<bool> {
     let mut aromatic = mobile_rings(constitution);
-    leave_out_bond_shift_rings(constitution, &mut aromatic);
+    if aromatic.contains(&true) {
+        leave_out_bond_shift_rings(constitution, &mut aromatic);
+    }
     add_five_membered_rings(constitution, &mut aromatic);
     aromatic
 }
@@ -54,12 +56,13 @@ fn add_five_membered_rings(constitution: &Constitution, aromatic: &mut [bool]) {
         let bond = constitution.bond(bond);
         bond.in_ring && matches!(bond.order, Some(2) | None)
     };
+    // Paths donor – atom = atom.
+    let mut arms = Vec::new();
     for donor in constitution.positions() {
         if !can_lend(constitution, donor) {
             continue;
         }
-        // Paths donor – atom = atom.
-        let mut arms = Vec::new();
+        arms.clear();
         for &(near, first) in constitution.arcs(donor) {
             let arcs = constitution.arcs(near).iter();
             let beyond = arcs.filter(|&&(far, bond)| far != donor && double(bond));
@@ -81,19 +84,24 @@ fn add_five_membered_rings(constitution: &Constitution, aromatic: &mut [bool]) {
     }
 }
 
-/// N, O, S, Se or Te without a charge or double bond of its own, in a ring.
+/// Heteroatoms whose lone pair takes part in a five-membered ring.
+const LENDERS: [Element; 5] = [
+    Element::NITROGEN,
+    Element::OXYGEN,
+    Element::SULFUR,
+    Element::SELENIUM,
+    Element::TELLURIUM,
+];
+
+/// Whether an atom of a ring is one of these, without a charge or double bond of its own.
 fn can_lend(constitution: &Constitution, atom: u32) -> bool {
     let own = constitution.atom(atom);
-    let group = own.element.group();
-    let lends =
-        own.element == Element::NITROGEN || (group == Some(16) && own.element.number() <= 52);
-    let uncharged = matches!(own.charge, Some(0) | None);
     let bonds = || {
         let arcs = constitution.arcs(atom).iter();
         arcs.map(|&(_, bond)| constitution.bond(bond))
     };
-    lends
-        && uncharged
+    LENDERS.contains(&own.element)
+        && matches!(own.charge, Some(0) | None)
         && bonds().any(|bond| bond.in_ring)
         && bonds().all(|bond| matches!(bond.order, Some(1) | None))
 }

@@ -14,31 +14,19 @@ pub(super) struct Profile {
     components: Vec<Formula>,
     rings: usize,
     ring_atoms: usize,
+    frame: Frame,
 }
 
 impl Profile {
     pub(super) fn of(structure: &Structure) -> Self {
         let constitution = Constitution::of(structure);
-        let (component, count) = constitution.components(|_| true);
-        let mut parts = vec![(Vec::new(), 0); count as usize];
-        for (&of, atom) in component.iter().zip(constitution.atoms()) {
-            let (counts, charge) = &mut parts[of as usize];
-            counts.push((atom.element, 1));
-            counts.push((Element::HYDROGEN, u32::from(atom.hydrogens)));
-            // The charge as drawn: mesomers move it within a component only.
-            let drawn = structure.molecule().atom(atom.source);
-            *charge += drawn.map_or(0, |drawn| i32::from(drawn.charge));
-        }
-        let formulae = parts.into_iter();
-        let mut components: Vec<Formula> = formulae
-            .map(|(counts, charge)| Formula::new(counts, charge))
-            .collect();
-        components.sort_unstable();
-        let on_ring = |&atom: &u32| on_ring(&constitution, atom);
+        let components = component_formulae(structure, &constitution);
+        let frame = Frame::of(&constitution);
         Self {
             rings: constitution.bonds().len() + components.len() - constitution.atoms().len(),
-            ring_atoms: constitution.positions().filter(on_ring).count(),
+            ring_atoms: frame.on_ring.iter().filter(|&&ring| ring).count(),
             components,
+            frame,
             constitution,
         }
     }
@@ -67,10 +55,8 @@ impl Profile {
 
     /// Whether heteroatoms outside rings divide the frame into pieces of the same sizes.
     pub(super) fn divides_as(&self, other: &Self) -> bool {
-        let [own, others] = [self, other].map(|profile| {
-            let frame = Frame::of(&profile.constitution);
-            frame.piece_sizes(&profile.constitution)
-        });
+        let [own, others] =
+            [self, other].map(|profile| profile.frame.piece_sizes(&profile.constitution));
         own == others
     }
 
@@ -80,18 +66,33 @@ impl Profile {
         other: &Self,
         orderer: &mut GraphOrderer,
     ) -> Result<bool, GraphError> {
-        let [own, others] = [self, other].map(|profile| {
-            let frame = Frame::of(&profile.constitution);
-            frame.skeleton(&profile.constitution)
-        });
+        let [own, others] =
+            [self, other].map(|profile| profile.frame.skeleton(&profile.constitution));
         isomorphic(&own, &others, orderer)
     }
 }
 
-fn on_ring(constitution: &Constitution, atom: u32) -> bool {
-    let arcs = constitution.arcs(atom).iter();
-    arcs.into_iter()
-        .any(|&(_, bond)| constitution.bond(bond).in_ring)
+/// The formulae of the components, sorted.
+fn component_formulae(structure: &Structure, constitution: &Constitution) -> Vec<Formula> {
+    let (component, count) = constitution.components(|_| true);
+    if count == 1 {
+        return vec![structure.formula().clone()];
+    }
+    let mut parts = vec![(Vec::new(), 0); count as usize];
+    for (&of, atom) in component.iter().zip(constitution.atoms()) {
+        let (counts, charge) = &mut parts[of as usize];
+        counts.push((atom.element, 1));
+        counts.push((Element::HYDROGEN, u32::from(atom.hydrogens)));
+        // The charge as drawn: mesomers move it within a component only.
+        let drawn = structure.molecule().atom(atom.source);
+        *charge += drawn.map_or(0, |drawn| i32::from(drawn.charge));
+    }
+    let formulae = parts.into_iter();
+    let mut formulae: Vec<Formula> = formulae
+        .map(|(counts, charge)| Formula::new(counts, charge))
+        .collect();
+    formulae.sort_unstable();
+    formulae
 }
 
 /// Carbons, and heteroatoms of rings.
@@ -104,12 +105,13 @@ struct Frame {
 
 impl Frame {
     fn of(constitution: &Constitution) -> Self {
-        let atoms = constitution.positions();
-        let on_ring: Vec<bool> = atoms.map(|atom| on_ring(constitution, atom)).collect();
-        let carbon = constitution
-            .positions()
-            .map(|atom| constitution.is_carbon(atom));
-        let within = carbon.zip(&on_ring).map(|(carbon, &ring)| carbon || ring);
+        let mut on_ring = vec![false; constitution.atoms().len()];
+        for bond in constitution.bonds().iter().filter(|bond| bond.in_ring) {
+            on_ring[bond.a as usize] = true;
+            on_ring[bond.b as usize] = true;
+        }
+        let within = constitution.atoms().iter().zip(&on_ring);
+        let within = within.map(|(atom, &ring)| ring || atom.element == Element::CARBON);
         Self {
             within: within.collect(),
             on_ring,
@@ -172,11 +174,11 @@ fn isomorphic(own: &Graph, other: &Graph, orderer: &mut GraphOrderer) -> Result<
 fn census((colours, edges): &Graph) -> (Vec<u64>, Vec<(u8, u64, u64)>) {
     let mut vertices = colours.clone();
     vertices.sort_unstable();
-    let ends = edges.iter().map(|&(a, b, class)| {
+    let mut ends = Vec::with_capacity(edges.len());
+    for &(a, b, class) in edges {
         let (a, b) = (colours[a as usize], colours[b as usize]);
-        (class, a.min(b), a.max(b))
-    });
-    let mut ends: Vec<_> = ends.collect();
+        ends.push((class, a.min(b), a.max(b)));
+    }
     ends.sort_unstable();
     (vertices, ends)
 }

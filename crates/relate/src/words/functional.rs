@@ -6,14 +6,22 @@ use molkin_graph::Limits;
 
 use crate::{Structure, functional_groups};
 
-/// "alcohol in A, ether in B": the groups that one has more often than the other.
+/// A group that the table lacks.
+const UNNAMED: &str = "a group without a name";
+
+/// "alcohol in A, ether in B": the groups that one has more often than the other. `None` where there
+/// are none, or none with a name.
 pub(super) fn difference(a: &Structure, b: &Structure, limits: &Limits) -> Option<String> {
     let mut surplus: BTreeMap<Vec<u64>, (&str, i32)> = BTreeMap::new();
     for (structure, step) in [(a, 1), (b, -1)] {
         for group in functional_groups(structure, limits).ok()? {
-            let name = group.name.unwrap_or("a group without a name");
+            let name = group.name.unwrap_or(UNNAMED);
             surplus.entry(group.certificate).or_insert((name, 0)).1 += step;
         }
+    }
+    let named = |&(name, count): &(&str, i32)| name != UNNAMED && count != 0;
+    if !surplus.values().any(named) {
+        return None;
     }
     let side = |sign: i32, place: &str| {
         let mut own: BTreeMap<&str, i32> = BTreeMap::new();
@@ -31,5 +39,5 @@ pub(super) fn difference(a: &Structure, b: &Structure, limits: &Limits) -> Optio
         .into_iter()
         .flatten()
         .collect();
-    (!sides.is_empty()).then(|| sides.join(", "))
+    Some(sides.join(", "))
 }
