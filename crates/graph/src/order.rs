@@ -18,7 +18,7 @@ mod tests;
 mod trace;
 
 pub(crate) use coloured::{Coloured, Placed, Unit, ranked_parity};
-pub(crate) use permutation::Permutation;
+pub(crate) use permutation::{Generators, Permutation};
 pub use plain::{GraphError, GraphOrder, GraphOrderer};
 
 use certificate::write_certificate;
@@ -57,7 +57,7 @@ impl Work<'_> {
 }
 
 /// The canonical order of a graph.
-#[derive(Debug, Default, Clone)]
+#[derive(Debug, Default)]
 pub(crate) struct Labelling {
     /// The vertices in canonical order.
     pub(crate) order: Vec<u32>,
@@ -66,7 +66,23 @@ pub(crate) struct Labelling {
     /// The graph written in that order; equal exactly for isomorphic graphs.
     pub(crate) certificate: Vec<u64>,
     /// Generators of the automorphism group.
-    pub(crate) generators: Vec<Permutation>,
+    pub(crate) generators: Generators,
+}
+
+impl Clone for Labelling {
+    fn clone(&self) -> Self {
+        let mut copy = Self::default();
+        copy.clone_from(self);
+        copy
+    }
+
+    /// Keeps the memory, which the derived one would not.
+    fn clone_from(&mut self, source: &Self) {
+        self.order.clone_from(&source.order);
+        self.rank.clone_from(&source.rank);
+        self.certificate.clone_from(&source.certificate);
+        self.generators.clone_from(&source.generators);
+    }
 }
 
 impl Labeller {
@@ -77,7 +93,7 @@ impl Labeller {
     /// [`OrderError::TooManyNeighbours`].
     pub(crate) fn label(
         &mut self,
-        graph: &Coloured,
+        graph: &mut Coloured,
         limits: &Limits,
         steps: &mut u64,
         labelling: &mut Labelling,

@@ -369,7 +369,7 @@ impl Orderer {
         }
         let mut labelling = Labelling::default();
         self.labeller
-            .label(&self.graph, &self.limits, &mut 0, &mut labelling)?;
+            .label(&mut self.graph, &self.limits, &mut 0, &mut labelling)?;
         Ok(labelling.certificate)
     }
 }

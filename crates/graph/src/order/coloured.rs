@@ -62,13 +62,15 @@ impl Placed {
 /// A coloured graph in compressed form. Colours are arbitrary words and part of the certificate.
 #[derive(Debug, Default, Clone)]
 pub(crate) struct Coloured {
-    pub(crate) colours: Vec<u64>,
+    pub(super) colours: Vec<u64>,
     start: Vec<u32>,
     arcs: Vec<(u32, u8)>,
     pub(crate) units: Vec<Unit>,
     pub(crate) placed: Vec<Placed>,
     /// Below this lie the numbers that stand for vertices outside of a part, if this is one.
     outside: u32,
+    root: Partition,
+    knows_root: bool,
 }
 
 impl Coloured {
@@ -78,6 +80,7 @@ impl Coloured {
         colours: impl Iterator<Item = u64>,
         edges: impl Iterator<Item = (u32, u32, u8)> + Clone,
     ) {
+        self.knows_root = false;
         self.units.clear();
         self.placed.clear();
         self.colours.clear();
@@ -163,6 +166,23 @@ impl Coloured {
                 ligands: placed.ligands.iter().map(|&v| name(v)).collect(),
             });
         }
+    }
+
+    /// The colours, to be changed.
+    pub(crate) fn colours_mut(&mut self) -> &mut [u64] {
+        self.knows_root = false;
+        &mut self.colours
+    }
+
+    /// The equitable partition that colours and edges alone give, once it was found. The same graph is
+    /// ordered under changing units and placed centres, and all these refinements start with it.
+    pub(super) fn root(&self) -> Option<&Partition> {
+        self.knows_root.then_some(&self.root)
+    }
+
+    pub(super) fn keep_root(&mut self, partition: &Partition) {
+        self.root.clone_from(partition);
+        self.knows_root = true;
     }
 
     /// The number of vertices.

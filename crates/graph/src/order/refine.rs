@@ -75,7 +75,8 @@ impl Refiner {
         }
     }
 
-    fn equitable<W: Watch>(
+    /// Refines by the edges alone.
+    pub(super) fn equitable<W: Watch>(
         &mut self,
         graph: &Coloured,
         partition: &mut Partition,
