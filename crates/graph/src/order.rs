@@ -21,7 +21,7 @@ pub(crate) use coloured::{Coloured, Placed, Unit, ranked_parity};
 pub(crate) use permutation::{Generators, Permutation};
 pub use plain::{GraphError, GraphOrder, GraphOrderer};
 
-use certificate::write_certificate;
+use certificate::{write_certificate, write_units};
 use level::Level;
 
 use crate::{Limits, OrderError};
@@ -67,6 +67,8 @@ pub(crate) struct Labelling {
     pub(crate) certificate: Vec<u64>,
     /// Generators of the automorphism group.
     pub(crate) generators: Generators,
+    /// Whether the whole graph was searched: nothing in it falls apart or is settled.
+    searched: bool,
 }
 
 impl Clone for Labelling {
@@ -82,6 +84,7 @@ impl Clone for Labelling {
         self.rank.clone_from(&source.rank);
         self.certificate.clone_from(&source.certificate);
         self.generators.clone_from(&source.generators);
+        self.searched = source.searched;
     }
 }
 
@@ -105,11 +108,28 @@ impl Labeller {
             limits,
             steps: *steps,
         };
-        let outcome = self.level.order(graph, &mut work);
+        let outcome = self.order(graph, &mut work, labelling);
         *steps = work.steps;
-        outcome?;
-        std::mem::swap(&mut labelling.order, &mut self.level.order);
-        std::mem::swap(&mut labelling.generators, &mut self.level.generators);
+        outcome
+    }
+
+    fn order(
+        &mut self,
+        graph: &mut Coloured,
+        work: &mut Work<'_>,
+        labelling: &mut Labelling,
+    ) -> Result<(), OrderError> {
+        let level = &mut self.level;
+        level.refine(graph, work)?;
+        if let Some(plain) = graph.plain_under(&level.partition) {
+            labelling.clone_from(plain);
+            write_units(graph, &labelling.rank, &mut labelling.certificate);
+            return Ok(());
+        }
+        level.complete(graph, work)?;
+        std::mem::swap(&mut labelling.order, &mut level.order);
+        std::mem::swap(&mut labelling.generators, &mut level.generators);
+        labelling.searched = level.searched;
         labelling.certificate.clear();
         write_certificate(
             graph,

@@ -235,6 +235,7 @@ impl Solver<'_> {
             }
             return Ok(());
         }
+        self.graph.keep_plain(bare);
         for Member {
             assignment,
             labelling,

@@ -32,6 +32,8 @@ pub(super) struct Level {
     pub(super) order: Vec<u32>,
     /// Generators of the automorphism group.
     pub(super) generators: Generators,
+    /// Whether the whole graph was searched.
+    pub(super) searched: bool,
     /// The parts by cells and certificate.
     ranking: Vec<u32>,
     /// Per part: where its certificate is in `words`.
@@ -49,8 +51,8 @@ pub(super) struct Level {
 }
 
 impl Level {
-    /// Orders a graph.
-    pub(super) fn order(
+    /// Refines a graph as far as that goes without a choice.
+    pub(super) fn refine(
         &mut self,
         graph: &mut Coloured,
         work: &mut Work<'_>,
@@ -69,8 +71,7 @@ impl Level {
         }
         self.refiner
             .refine(graph, &mut self.partition, &mut Unwatched);
-        work.spend(&mut self.refiner.work)?;
-        self.complete(graph, work)
+        work.spend(&mut self.refiner.work)
     }
 
     /// Orders a graph whose colours are equitable.
@@ -80,8 +81,14 @@ impl Level {
         self.complete(graph, work)
     }
 
-    fn complete(&mut self, graph: &Coloured, work: &mut Work<'_>) -> Result<(), OrderError> {
+    /// Orders a refined graph.
+    pub(super) fn complete(
+        &mut self,
+        graph: &Coloured,
+        work: &mut Work<'_>,
+    ) -> Result<(), OrderError> {
         self.generators.clear();
+        self.searched = false;
         if self.partition.is_discrete() {
             self.order.clone_from(&self.partition.lab);
             return Ok(());
@@ -89,6 +96,7 @@ impl Level {
         self.parts.find(graph, &self.partition);
         work.spend(&mut self.parts.work)?;
         if self.is_whole() && self.parts.vertices.len() == graph.len() || self.is_last() {
+            self.searched = true;
             self.search(graph, work)
         } else {
             self.arrange(graph, work, true)

@@ -99,7 +99,9 @@ impl Refiner {
                 self.key_touched(partition)
             };
             watch.note(alone);
-            self.split_keyed(partition, watch);
+            if !self.keyed.is_empty() {
+                self.split_keyed(partition, watch);
+            }
             if !watch.goes_on() {
                 return false;
             }

@@ -247,6 +247,38 @@ fn small_graphs_with_units_against_all_permutations() {
     assert!(symmetric > 500, "{symmetric}");
 }
 
+/// One graph under changing units, as claims label it: what was kept about colours and edges makes no
+/// difference. Some of these units leave the order as it is without them, and some change it.
+#[test]
+fn what_is_kept_about_a_graph_makes_no_difference() {
+    let mut numbers = Numbers::new(13);
+    let (mut alike, mut otherwise) = (0, 0);
+    for case in 0..1_500 {
+        let density = 3 + numbers.below(5);
+        let sketch = Sketch::random(&mut numbers, 3 + case % 9, density);
+        let mut labeller = Labeller::default();
+        let mut graph = sketch.graph();
+        let units = std::mem::take(&mut graph.units);
+        let plain = label(&mut graph, &mut labeller);
+        graph.keep_plain(&plain);
+        graph.units = units;
+        let own = label(&mut graph, &mut labeller);
+        let fresh = sketch.label();
+        assert_eq!(own.order, fresh.order, "{sketch:?}");
+        assert_eq!(own.rank, fresh.rank, "{sketch:?}");
+        assert_eq!(own.certificate, fresh.certificate, "{sketch:?}");
+        let moved = |own: &Labelling| -> Vec<Vec<(u32, u32)>> {
+            let generators = own.generators.iter();
+            generators.map(|g| g.moved().to_vec()).collect()
+        };
+        assert_eq!(moved(&own), moved(&fresh), "{sketch:?}");
+        let kept = graph.plain_under(&labeller.level.partition).is_some();
+        alike += usize::from(kept && !graph.units.is_empty());
+        otherwise += usize::from(!kept);
+    }
+    assert!(alike > 100 && otherwise > 100, "{alike} {otherwise}");
+}
+
 /// Larger graphs made of copies of small ones: all renumberings agree, and every generator keeps
 /// the graph.
 #[test]
