@@ -99,6 +99,7 @@ pub struct Orderer {
     graph: Coloured,
     mesomer: mesomer::Scratch,
     stereo: stereo::Scratch,
+    claims: claims::Scratch,
     form: form::Scratch,
     digester: Digester,
 }
@@ -196,7 +197,7 @@ impl Orderer {
             .load(&view.skeleton, &view.mesomer, molecule, scratch);
         view.perception
             .keep_unequal_axes(&view.skeleton, &view.bare.generators);
-        view.variables = claims::variables(&view.perception);
+        claims::list_variables(&view.perception, &mut view.variables);
         // Arrangements about metals are given, not open: they are part of the graph whose
         // automorphisms relate the other elements.
         let placed = if view.perception.placed.is_empty() {
@@ -211,7 +212,7 @@ impl Orderer {
             self.graph.placed.clone_from(&view.perception.placed);
             let mut labelling = Labelling::default();
             self.labeller
-                .label(&self.graph, &self.limits, &mut steps, &mut labelling)?;
+                .label(&mut self.graph, &self.limits, &mut steps, &mut labelling)?;
             Some(labelling)
         };
         let mut solver = Solver {
@@ -227,7 +228,7 @@ impl Orderer {
             claims::of_groups(&view.skeleton, &view.perception, &view.variables, molecule)?;
         let (claims, written) = (&mut view.claims, &mut view.written);
         if groups.is_empty() {
-            solver.solve(bare, claims, written)?;
+            solver.solve(bare, &mut self.claims, claims, written)?;
         } else {
             solver.solve_groups(bare, groups, claims, written)?;
         }
@@ -237,7 +238,7 @@ impl Orderer {
         let certificates = view.claims.certificates.iter();
         // Most records have neither isotopes nor stereo: one certificate serves both keys.
         let digests = certificates.map(|certificate| {
-            let known = *certificate == view.constitution.certificate;
+            let known = certificate == view.constitution.certificate;
             if known {
                 constitution
             } else {
@@ -281,7 +282,7 @@ impl Orderer {
                 self.graph.placed[at].ligands = ligands;
                 let mut labelling = Labelling::default();
                 self.labeller
-                    .label(&self.graph, &self.limits, steps, &mut labelling)?;
+                    .label(&mut self.graph, &self.limits, steps, &mut labelling)?;
                 if seen
                     .as_ref()
                     .is_some_and(|first| first.certificate != labelling.certificate)
@@ -311,7 +312,7 @@ impl Orderer {
     ) -> Result<(), OrderError> {
         colour::load(&mut self.graph, skeleton, mesomer, isotopes)?;
         self.labeller
-            .label(&self.graph, &self.limits, steps, labelling)
+            .label(&mut self.graph, &self.limits, steps, labelling)
     }
 }
 

@@ -12,7 +12,7 @@
 //!
 //! Records with stereo groups stand for sets of samples, see [`family`] and [`grouped`].
 
-use crate::{order::Permutation, stereo::Perception};
+use crate::{order::Generators, stereo::Perception};
 
 mod action;
 mod family;
@@ -33,15 +33,15 @@ pub(crate) use grouped::{Point, masked, most_pieces};
 pub(crate) use pieces::{Freedom, Piece, of_groups};
 pub(crate) use place::{Place, place};
 pub(crate) use roles::Roles;
-pub(crate) use solve::{Claims, Solver};
+pub(crate) use solve::{Claims, Scratch, Solver};
 pub(crate) use space::{Space, Vector};
 pub(crate) use status::Status;
 pub(crate) use symmetries::Symmetries;
-pub(crate) use variables::{Variable, variables};
+pub(crate) use variables::{Variable, list_variables};
 
 /// Per variable: whether some automorphism inverts it and leaves all others as they are.
 pub(crate) fn never_stereogenic(
-    generators: &[Permutation],
+    generators: &Generators,
     perception: &Perception,
     variables: &[Variable],
 ) -> Vec<bool> {

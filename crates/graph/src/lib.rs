@@ -22,6 +22,7 @@ mod molecule;
 mod order;
 mod polyhedron;
 mod rings;
+mod rows;
 mod skeleton;
 #[cfg(test)]
 mod sketch;

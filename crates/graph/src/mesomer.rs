@@ -22,6 +22,7 @@ mod tests;
 use crate::{Limits, OrderError, matching::Matching, skeleton::Skeleton};
 
 pub(crate) use first::First;
+pub(crate) use octet::separate;
 use placement::System;
 use shift::Shift;
 pub(crate) use valence::neutral as neutral_valence;

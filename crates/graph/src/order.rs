@@ -18,10 +18,10 @@ mod tests;
 mod trace;
 
 pub(crate) use coloured::{Coloured, Placed, Unit, ranked_parity};
-pub(crate) use permutation::Permutation;
+pub(crate) use permutation::{Generators, Permutation};
 pub use plain::{GraphError, GraphOrder, GraphOrderer};
 
-use certificate::write_certificate;
+use certificate::{write_certificate, write_units};
 use level::Level;
 
 use crate::{Limits, OrderError};
@@ -57,7 +57,7 @@ impl Work<'_> {
 }
 
 /// The canonical order of a graph.
-#[derive(Debug, Default, Clone)]
+#[derive(Debug, Default)]
 pub(crate) struct Labelling {
     /// The vertices in canonical order.
     pub(crate) order: Vec<u32>,
@@ -66,7 +66,26 @@ pub(crate) struct Labelling {
     /// The graph written in that order; equal exactly for isomorphic graphs.
     pub(crate) certificate: Vec<u64>,
     /// Generators of the automorphism group.
-    pub(crate) generators: Vec<Permutation>,
+    pub(crate) generators: Generators,
+    /// Whether the whole graph was searched: nothing in it falls apart or is settled.
+    searched: bool,
+}
+
+impl Clone for Labelling {
+    fn clone(&self) -> Self {
+        let mut copy = Self::default();
+        copy.clone_from(self);
+        copy
+    }
+
+    /// Keeps the memory, which the derived one would not.
+    fn clone_from(&mut self, source: &Self) {
+        self.order.clone_from(&source.order);
+        self.rank.clone_from(&source.rank);
+        self.certificate.clone_from(&source.certificate);
+        self.generators.clone_from(&source.generators);
+        self.searched = source.searched;
+    }
 }
 
 impl Labeller {
@@ -77,7 +96,7 @@ impl Labeller {
     /// [`OrderError::TooManyNeighbours`].
     pub(crate) fn label(
         &mut self,
-        graph: &Coloured,
+        graph: &mut Coloured,
         limits: &Limits,
         steps: &mut u64,
         labelling: &mut Labelling,
@@ -89,11 +108,28 @@ impl Labeller {
             limits,
             steps: *steps,
         };
-        let outcome = self.level.order(graph, &mut work);
+        let outcome = self.order(graph, &mut work, labelling);
         *steps = work.steps;
-        outcome?;
-        std::mem::swap(&mut labelling.order, &mut self.level.order);
-        std::mem::swap(&mut labelling.generators, &mut self.level.generators);
+        outcome
+    }
+
+    fn order(
+        &mut self,
+        graph: &mut Coloured,
+        work: &mut Work<'_>,
+        labelling: &mut Labelling,
+    ) -> Result<(), OrderError> {
+        let level = &mut self.level;
+        level.refine(graph, work)?;
+        if let Some(plain) = graph.plain_under(&level.partition) {
+            labelling.clone_from(plain);
+            write_units(graph, &labelling.rank, &mut labelling.certificate);
+            return Ok(());
+        }
+        level.complete(graph, work)?;
+        std::mem::swap(&mut labelling.order, &mut level.order);
+        std::mem::swap(&mut labelling.generators, &mut level.generators);
+        labelling.searched = level.searched;
         labelling.certificate.clear();
         write_certificate(
             graph,

@@ -39,6 +39,12 @@ impl Default for Visit {
 }
 
 impl Adjacency {
+    /// Takes over another table, in the memory at hand.
+    pub(crate) fn copy(&mut self, other: &Self) {
+        self.start.clone_from(&other.start);
+        self.arcs.clone_from(&other.arcs);
+    }
+
     /// Fills the table from a bond list.
     pub(crate) fn load(
         &mut self,

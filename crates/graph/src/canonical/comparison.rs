@@ -150,7 +150,8 @@ impl Canonical {
 
     /// The listed assignments, with both values of each tied cage.
     fn assignments(&self, other: &Self) -> Vec<Vec<bool>> {
-        let mut list = self.claims.assignments.clone();
+        let own = self.claims.assignments.iter();
+        let mut list: Vec<Vec<bool>> = own.map(<[bool]>::to_vec).collect();
         for cage in self.tied_cages(other) {
             let mut turned = list.clone();
             for assignment in &mut turned {
@@ -208,7 +209,7 @@ impl Orderer {
                 }
             }
             self.labeller
-                .label(&self.graph, &self.limits, &mut steps, &mut labelling)?;
+                .label(&mut self.graph, &self.limits, &mut steps, &mut labelling)?;
             found.insert(labelling.certificate.clone());
         }
         Ok(found)

@@ -115,7 +115,7 @@ impl Canonical {
             form.atoms.push(FormAtom {
                 element: record.element,
                 isotope: record.isotope,
-                charge: placed.charges[atom as usize],
+                charge: placed.drawing.charges[atom as usize],
                 hydrogens: natural as u8,
             });
             for (mass, count) in (1..).zip(counts) {
@@ -142,7 +142,8 @@ impl Canonical {
             for &(to, bond) in self.skeleton.arcs(atom) {
                 let to = self.written.rank[to as usize];
                 if to > host {
-                    form.bonds.push((host, to, placed.orders[bond as usize]));
+                    form.bonds
+                        .push((host, to, placed.drawing.orders[bond as usize]));
                 }
             }
             while let Some(own) = labelled.next_if(|own| own.host == host) {

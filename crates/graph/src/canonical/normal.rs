@@ -88,7 +88,7 @@ impl Canonical {
     /// lists the positions in [`Canonical::normal_form`] that it moves, ascending, with their images.
     pub fn automorphisms(&self) -> Vec<Vec<(u32, u32)>> {
         let rank = |atom: u32| self.written.rank[atom as usize];
-        let images = |generator: &Permutation| {
+        let images = |generator: Permutation<'_>| {
             let moved = generator.moved().iter();
             let mut images: Vec<_> = moved.map(|&(from, to)| (rank(from), rank(to))).collect();
             images.sort_unstable();

@@ -381,7 +381,7 @@ impl Orderer {
         }
         let mut labelling = Labelling::default();
         self.labeller
-            .label(&self.graph, &self.limits, steps, &mut labelling)?;
+            .label(&mut self.graph, &self.limits, steps, &mut labelling)?;
         Ok(labelling.certificate)
     }
 }

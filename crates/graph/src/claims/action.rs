@@ -1,7 +1,8 @@
 //! How automorphisms of the constitution act on stereo elements.
 
 use crate::{
-    order::Permutation,
+    order::{Generators, Permutation},
+    rows::Rows,
     stereo::{Candidate, Perception, slot},
 };
 
@@ -16,47 +17,72 @@ pub(super) struct Move {
 }
 
 /// The action of a list of automorphisms; per automorphism only what it moves or inverts.
-#[derive(Debug, Default, Clone)]
+#[derive(Debug, Default)]
 pub(super) struct Action {
-    pub(super) moves: Vec<Vec<Move>>,
+    pub(super) moves: Rows<Move>,
+    near: Near,
+    touched: Vec<usize>,
 }
 
 /// For each candidate its variable, and whether it is opposite there.
 pub(super) fn membership(candidates: usize, variables: &[Variable]) -> Vec<(usize, bool)> {
-    let mut table = vec![(usize::MAX, false); candidates];
+    let mut table = Vec::new();
+    list_membership(candidates, variables, &mut table);
+    table
+}
+
+fn list_membership(candidates: usize, variables: &[Variable], table: &mut Vec<(usize, bool)>) {
+    table.clear();
+    table.resize(candidates, (usize::MAX, false));
     for (index, variable) in variables.iter().enumerate() {
         for &(candidate, opposite) in &variable.members {
             table[candidate] = (index, opposite);
         }
     }
-    table
 }
 
 impl Action {
     /// Works out the action of automorphisms of the skeleton.
     pub(super) fn of(
-        generators: &[Permutation],
+        generators: &Generators,
         perception: &Perception,
         variables: &[Variable],
     ) -> Self {
-        let member = membership(perception.candidates.len(), variables);
-        let near = Near::of(perception, &member);
-        let moves = generators.iter().map(|generator| {
+        let mut action = Self::default();
+        action.load(generators, perception, variables);
+        action
+    }
+
+    /// As [`Action::of`], in the memory at hand.
+    pub(super) fn load(
+        &mut self,
+        generators: &Generators,
+        perception: &Perception,
+        variables: &[Variable],
+    ) {
+        let Self {
+            moves,
+            near,
+            touched,
+        } = self;
+        moves.clear();
+        if generators.is_empty() || variables.is_empty() {
+            return;
+        }
+        near.load(perception, variables);
+        for generator in generators.iter() {
             // Only variables with an atom that moves can be moved or inverted.
-            let mut touched: Vec<usize> = generator
-                .moved()
-                .iter()
-                .flat_map(|&(atom, _)| near.at(atom))
-                .collect();
+            let atoms = generator.moved().iter();
+            touched.clear();
+            touched.extend(atoms.flat_map(|&(atom, _)| near.at(atom)));
             touched.sort_unstable();
             touched.dedup();
-            touched
-                .into_iter()
-                .filter_map(|from| moved(generator, perception, variables, &member, from))
-                .collect()
-        });
-        Self {
-            moves: moves.collect(),
+            let touched = touched.iter();
+            moves.push(
+                touched.filter_map(|&from| {
+                    moved(generator, perception, variables, &near.member, from)
+                }),
+            );
         }
     }
 
@@ -72,10 +98,18 @@ impl Action {
     /// Variables that some automorphism inverts while it leaves all others as they are: they are
     /// not stereogenic in any record. Removing one may uncover the next.
     pub(super) fn never_stereogenic(&self, variables: usize) -> Vec<bool> {
-        let mut never = vec![false; variables];
+        let mut never = Vec::new();
+        self.list_never_stereogenic(variables, &mut never);
+        never
+    }
+
+    /// As [`Action::never_stereogenic`], in the memory at hand.
+    pub(super) fn list_never_stereogenic(&self, variables: usize, never: &mut Vec<bool>) {
+        never.clear();
+        never.resize(variables, false);
         loop {
             let mut changed = false;
-            for moves in &self.moves {
+            for moves in self.moves.iter() {
                 let mut real = moves.iter().filter(|m| !never[m.from]);
                 if let (Some(only), None) = (real.next(), real.next())
                     && only.from == only.to
@@ -85,42 +119,58 @@ impl Action {
                 }
             }
             if !changed {
-                return never;
+                return;
             }
         }
     }
 }
 
-/// Variables by the atoms that are centres or ligands of their first candidates.
+/// The end of a chain.
+const NONE: u32 = u32::MAX;
+
+/// Variables by the atoms that are centres or ligands of their candidates.
+#[derive(Debug, Default)]
 struct Near {
-    entries: Vec<(u32, usize)>,
+    /// Per candidate: its variable, and whether it is opposite there.
+    member: Vec<(usize, bool)>,
+    /// Per atom: the first of its entries.
+    first: Vec<u32>,
+    /// A variable, and the next entry of the same atom.
+    entries: Vec<(usize, u32)>,
 }
 
 impl Near {
-    fn of(perception: &Perception, member: &[(usize, bool)]) -> Self {
-        let mut entries = Vec::new();
-        for (candidate, &(variable, _)) in perception.candidates.iter().zip(member) {
+    fn load(&mut self, perception: &Perception, variables: &[Variable]) {
+        list_membership(perception.candidates.len(), variables, &mut self.member);
+        self.first.clear();
+        self.entries.clear();
+        for (candidate, &(variable, _)) in perception.candidates.iter().zip(&self.member) {
             let atoms = candidate.centres.iter().chain(&candidate.ligands);
-            let atoms = atoms.filter(|&&atom| atom < slot::HYDROGEN);
-            entries.extend(atoms.map(|&atom| (atom, variable)));
+            for &atom in atoms.filter(|&&atom| atom < slot::HYDROGEN) {
+                if self.first.len() <= atom as usize {
+                    self.first.resize(atom as usize + 1, NONE);
+                }
+                let first = &mut self.first[atom as usize];
+                let next = std::mem::replace(first, self.entries.len() as u32);
+                self.entries.push((variable, next));
+            }
         }
-        entries.sort_unstable();
-        entries.dedup();
-        Self { entries }
     }
 
+    /// The variables at an atom, some more than once.
     fn at(&self, atom: u32) -> impl Iterator<Item = usize> + '_ {
-        let from = self.entries.partition_point(|&(other, _)| other < atom);
-        let own = self.entries[from..]
-            .iter()
-            .take_while(move |&&(other, _)| other == atom);
-        own.map(|&(_, variable)| variable)
+        let mut next = self.first.get(atom as usize).copied().unwrap_or(NONE);
+        std::iter::from_fn(move || {
+            let &(variable, following) = self.entries.get(next as usize)?;
+            next = following;
+            Some(variable)
+        })
     }
 }
 
 /// What an automorphism does to a variable, if anything.
 fn moved(
-    generator: &Permutation,
+    generator: Permutation<'_>,
     perception: &Perception,
     variables: &[Variable],
     member: &[(usize, bool)],

@@ -21,7 +21,7 @@ use super::{
     family::Family,
     place::Place,
     roles::Roles,
-    solve::{MOST_OPEN, Solver},
+    solve::{MOST_OPEN, Solver, Trial},
 };
 
 /// First word of what stands for the certificates of a record with effective groups; a certificate
@@ -114,11 +114,19 @@ impl Solver<'_> {
                 break listing;
             }
         };
-        claims.statuses = self.statuses(&roles.orbits, &state.free, &roles.never)?;
+        self.list_statuses(
+            &roles.orbits,
+            &state.free,
+            &roles.never,
+            &mut claims.statuses,
+        )?;
         claims.open = self.grouped_is_open(&roles, &listing, &state)?;
         (claims.shown, *written) = self.shown(&roles, &state)?;
-        claims.certificates = self.statement(bare, &roles, &listing, &state)?;
-        claims.assignments = listing.assignments;
+        claims.certificates = self
+            .statement(bare, &roles, &listing, &state)?
+            .into_iter()
+            .collect();
+        claims.assignments = listing.assignments.into_iter().collect();
         claims.free = state.free;
         state.groups.sort_by(|a, b| a.variables.cmp(&b.variables));
         claims.groups = state.groups;
@@ -137,7 +145,8 @@ impl Solver<'_> {
             }
             state.groups.retain(|group| !group.variables.is_empty());
             let before = state.free.clone();
-            let surely = self.surely_free(&roles.orbits, &roles.never, &state.marked);
+            let mut surely = Vec::new();
+            self.surely_free(&roles.orbits, &roles.never, &state.marked, &mut surely);
             for (free, surely) in state.free.iter_mut().zip(surely) {
                 *free |= surely;
             }
@@ -334,10 +343,11 @@ impl Solver<'_> {
         };
         Ok(!single
             || self.is_open(
-                &listing.assignments,
+                listing.assignments.iter().map(Vec::as_slice),
                 &roles.orbits,
                 &state.free,
                 &roles.never,
+                &mut Trial::default(),
             )?)
     }
 

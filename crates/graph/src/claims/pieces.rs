@@ -64,8 +64,11 @@ pub(crate) fn of_groups(
     variables: &[Variable],
     molecule: &Molecule,
 ) -> Result<Vec<Piece>, OrderError> {
-    let member = action::membership(perception.candidates.len(), variables);
     let mut pieces: Vec<Piece> = Vec::new();
+    if molecule.stereo_groups().is_empty() {
+        return Ok(pieces);
+    }
+    let member = action::membership(perception.candidates.len(), variables);
     for group in molecule.stereo_groups() {
         let freedom = Freedom::of(group.kind);
         let mut own = Vec::new();

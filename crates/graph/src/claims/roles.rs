@@ -47,6 +47,6 @@ impl Roles {
     /// Whether how many elements of the variable's orbit are odd is even or odd in a stereoisomer
     /// whatever automorphisms do: no automorphism inverts any in place.
     pub(crate) fn keeps_count(&self, variable: usize) -> bool {
-        !self.orbits.inverted[self.orbits.root[variable]]
+        !self.orbits.inverts(variable)
     }
 }

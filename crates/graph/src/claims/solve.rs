@@ -3,6 +3,7 @@
 use crate::{
     Limits, OrderError,
     order::{Coloured, Labeller, Labelling},
+    rows::Rows,
     stereo::Perception,
 };
 
@@ -15,9 +16,9 @@ pub(crate) struct Claims {
     pub(crate) free: Vec<bool>,
     /// Assignments of the variables that are not free, one for each certificate. Free variables have
     /// an arbitrary value.
-    pub(crate) assignments: Vec<Vec<bool>>,
+    pub(crate) assignments: Rows<bool>,
     /// The certificates, sorted; the set is determined by them.
-    pub(crate) certificates: Vec<Vec<u64>>,
+    pub(crate) certificates: Rows<u64>,
     /// Whether the set has more than one stereoisomer, quiet elements aside.
     pub(crate) open: bool,
     pub(crate) statuses: Vec<Status>,
@@ -40,12 +41,61 @@ pub(crate) struct Solver<'a> {
     pub(crate) steps: &'a mut u64,
 }
 
+/// Scratch that is reused from one molecule to the next.
+#[derive(Debug, Default)]
+pub(crate) struct Scratch {
+    action: Action,
+    orbits: Orbits,
+    never: Vec<bool>,
+    marked: Vec<bool>,
+    found: Vec<Member>,
+    spare: Vec<Member>,
+    trial: Trial,
+}
+
+/// What single inversions of an assignment are tried with; scratch.
+#[derive(Debug, Default)]
+pub(super) struct Trial {
+    /// The automorphisms of the assignment: of inversions that they exchange one is tried.
+    action: Action,
+    pub(super) orbits: Orbits,
+    pub(super) base: Labelling,
+    pub(super) flipped: Labelling,
+}
+
+impl Trial {
+    /// Loads the orbits under the automorphisms of an assignment.
+    pub(super) fn load_orbits(&mut self, own: &Labelling, solver: &Solver<'_>) {
+        let (perception, variables) = (solver.perception, solver.variables);
+        self.action.load(&own.generators, perception, variables);
+        self.orbits.load(&self.action, variables.len());
+    }
+}
+
+/// One assignment with its labelling.
+#[derive(Debug, Default)]
+pub(super) struct Member {
+    pub(super) assignment: Vec<bool>,
+    pub(super) labelling: Labelling,
+}
+
 impl Solver<'_> {
     /// Canonical labelling with marks on the variables that `mark` gives one.
     pub(crate) fn label(
         &mut self,
         mark: impl Fn(usize) -> Option<bool>,
     ) -> Result<Labelling, OrderError> {
+        let mut labelling = Labelling::default();
+        self.label_into(mark, &mut labelling)?;
+        Ok(labelling)
+    }
+
+    /// As [`Solver::label`], into a labelling whose memory is reused.
+    pub(super) fn label_into(
+        &mut self,
+        mark: impl Fn(usize) -> Option<bool>,
+        labelling: &mut Labelling,
+    ) -> Result<(), OrderError> {
         self.graph.units.clear();
         for (index, variable) in self.variables.iter().enumerate() {
             if let Some(odd) = mark(index) {
@@ -55,10 +105,8 @@ impl Solver<'_> {
                 }
             }
         }
-        let mut labelling = Labelling::default();
         self.labeller
-            .label(self.graph, self.limits, self.steps, &mut labelling)?;
-        Ok(labelling)
+            .label(self.graph, self.limits, self.steps, labelling)
     }
 
     /// Finds the normal form, and the labelling to write the record from. `bare` is the labelling of
@@ -66,46 +114,59 @@ impl Solver<'_> {
     pub(crate) fn solve(
         &mut self,
         bare: &Labelling,
+        scratch: &mut Scratch,
         claims: &mut Claims,
         written: &mut Labelling,
     ) -> Result<(), OrderError> {
-        if self.variables.is_empty() {
-            claims.clear();
-            claims.assignments.push(Vec::new());
-            claims.certificates.push(bare.certificate.clone());
+        claims.clear();
+        let variables = self.variables;
+        if variables.is_empty() {
+            claims.assignments.push([]);
+            claims.certificates.push(bare.certificate.iter().copied());
             written.clone_from(bare);
             return Ok(());
         }
-        let action = Action::of(&bare.generators, self.perception, self.variables);
-        let orbits = Orbits::of(&action, self.variables.len());
-        let never = action.never_stereogenic(self.variables.len());
-        let marked: Vec<bool> = self.variables.iter().map(|v| v.odd.is_some()).collect();
-        let mut free = self.surely_free(&orbits, &never, &marked);
-        let assignments = self.assignments(&free)?;
-        let mut found = self.distinct(assignments, &free, bare)?;
-        let more = self.further_free(&found, &orbits, &free)?;
+        let Scratch {
+            action,
+            orbits,
+            never,
+            marked,
+            found,
+            spare,
+            trial,
+        } = scratch;
+        action.load(&bare.generators, self.perception, variables);
+        orbits.load(action, variables.len());
+        action.list_never_stereogenic(variables.len(), never);
+        marked.clear();
+        marked.extend(variables.iter().map(|v| v.odd.is_some()));
+        let free = &mut claims.free;
+        self.surely_free(orbits, never, marked, free);
+        spare.append(found);
+        self.list_assignments(free, found, spare)?;
+        self.keep_distinct(found, spare, free, bare)?;
+        let more = self.further_free(found, orbits, free, trial)?;
         if !more.is_empty() {
             for variable in more {
                 free[variable] = true;
             }
-            let assignments = found.into_iter().map(|member| member.assignment).collect();
-            found = self.distinct(assignments, &free, bare)?;
+            self.keep_distinct(found, spare, free, bare)?;
         }
-        *written = self.written(bare, &found, &free)?;
-        claims.statuses = self.statuses(&orbits, &free, &never)?;
-        let beside_quiet = self.differs_beside_quiet(&found, &free)?;
-        (claims.assignments, claims.certificates) = found
-            .into_iter()
-            .map(|m| (m.assignment, m.labelling.certificate))
-            .unzip();
+        self.write(bare, found, free, written)?;
+        self.list_statuses(orbits, free, never, &mut claims.statuses)?;
+        let beside_quiet = self.differs_beside_quiet(found, free)?;
+        for member in &*found {
+            claims.assignments.push(member.assignment.iter().copied());
+            let words = member.labelling.certificate.iter();
+            claims.certificates.push(words.copied());
+        }
         // Where the set has several members it is open by that; else the inversions of one tell.
-        let first = claims.assignments.get(..1).unwrap_or_default();
-        claims.open = beside_quiet || self.is_open(first, &orbits, &free, &never)?;
-        let shown = self.variables.iter().zip(&free);
-        let shown = shown.map(|(variable, &free)| variable.odd.filter(|_| !free));
-        claims.shown = shown.collect();
-        claims.groups.clear();
-        claims.free = free;
+        let first = claims.assignments.iter().take(1);
+        claims.open = beside_quiet || self.is_open(first, orbits, free, never, trial)?;
+        let shown = variables.iter().zip(&*free);
+        claims
+            .shown
+            .extend(shown.map(|(variable, &free)| variable.odd.filter(|_| !free)));
         Ok(())
     }
 
@@ -116,68 +177,75 @@ impl Solver<'_> {
         orbits: &Orbits,
         never: &[bool],
         marked: &[bool],
-    ) -> Vec<bool> {
-        let marked = |v: usize| marked[v] && !never[v];
-        let mut orbit_marked = vec![false; self.variables.len()];
-        for v in (0..self.variables.len()).filter(|&v| marked(v)) {
-            orbit_marked[orbits.root[v]] = true;
+        free: &mut Vec<bool>,
+    ) {
+        // First, per least variable of an orbit: whether no mark in the orbit counts.
+        free.clear();
+        free.resize(self.variables.len(), true);
+        for v in (0..free.len()).filter(|&v| marked[v] && !never[v]) {
+            free[orbits.root[v]] = false;
         }
-        (0..self.variables.len())
-            .map(|v| never[v] || !orbit_marked[orbits.root[v]])
-            .collect()
+        // No variable is less than the least of its orbit, so that one is still to be read when the
+        // others are written, from the back.
+        for v in (0..free.len()).rev() {
+            free[v] = never[v] || free[orbits.root[v]];
+        }
     }
 
-    /// All assignments of the unmarked variables that are not surely free.
-    fn assignments(&self, free: &[bool]) -> Result<Vec<Vec<bool>>, OrderError> {
-        let marked: Vec<bool> = self
-            .variables
-            .iter()
-            .map(|variable| variable.odd == Some(true))
-            .collect();
-        let listed: Vec<usize> = (0..free.len())
-            .filter(|&v| !free[v] && self.variables[v].odd.is_none())
-            .collect();
+    /// Lists all assignments of the unmarked variables that are not free, not labelled yet.
+    fn list_assignments(
+        &self,
+        free: &[bool],
+        found: &mut Vec<Member>,
+        spare: &mut Vec<Member>,
+    ) -> Result<(), OrderError> {
+        let unmarked = |v: &usize| !free[*v] && self.variables[*v].odd.is_none();
+        let listed: Vec<usize> = (0..free.len()).filter(unmarked).collect();
         if listed.len() > self.limits.open_elements.min(MOST_OPEN) as usize {
             return Err(OrderError::TooManyOpenElements {
                 limit: self.limits.open_elements,
             });
         }
-        Ok((0u64..1 << listed.len())
-            .map(|bits| {
-                let mut assignment = marked.clone();
-                for (at, &variable) in listed.iter().enumerate() {
-                    assignment[variable] = bits >> at & 1 == 1;
-                }
-                assignment
-            })
-            .collect())
+        for bits in 0u64..1 << listed.len() {
+            let mut member = spare.pop().unwrap_or_default();
+            let assignment = &mut member.assignment;
+            assignment.clear();
+            assignment.extend(self.variables.iter().map(|v| v.odd == Some(true)));
+            for (at, &variable) in listed.iter().enumerate() {
+                assignment[variable] = bits >> at & 1 == 1;
+            }
+            found.push(member);
+        }
+        Ok(())
     }
 
     /// Labels each assignment and keeps one for each certificate, sorted.
-    fn distinct(
+    fn keep_distinct(
         &mut self,
-        assignments: Vec<Vec<bool>>,
+        found: &mut Vec<Member>,
+        spare: &mut Vec<Member>,
         free: &[bool],
         bare: &Labelling,
-    ) -> Result<Vec<Member>, OrderError> {
+    ) -> Result<(), OrderError> {
         if free.iter().all(|&free| free) {
-            let assignment = assignments.into_iter().next().unwrap_or_default();
-            return Ok(vec![Member {
-                assignment,
-                labelling: bare.clone(),
-            }]);
+            // There is always one: each set of unmarked variables has assignments.
+            spare.extend(found.drain(1..));
+            for member in found {
+                member.labelling.clone_from(bare);
+            }
+            return Ok(());
         }
-        let mut found = Vec::with_capacity(assignments.len());
-        for assignment in assignments {
-            let labelling = self.label(|v| (!free[v]).then(|| assignment[v]))?;
-            found.push(Member {
-                assignment,
-                labelling,
-            });
+        self.graph.keep_plain(bare);
+        for Member {
+            assignment,
+            labelling,
+        } in &mut *found
+        {
+            self.label_into(|v| (!free[v]).then(|| assignment[v]), labelling)?;
         }
         found.sort_by(|a, b| a.labelling.certificate.cmp(&b.labelling.certificate));
         found.dedup_by(|a, b| a.labelling.certificate == b.labelling.certificate);
-        Ok(found)
+        Ok(())
     }
 
     /// Orbits of variables whose inversion, one at a time, maps the set onto itself. Inverting
@@ -188,6 +256,7 @@ impl Solver<'_> {
         found: &[Member],
         orbits: &Orbits,
         free: &[bool],
+        trial: &mut Trial,
     ) -> Result<Vec<usize>, OrderError> {
         let mut more = Vec::new();
         for root in 0..free.len() {
@@ -196,32 +265,31 @@ impl Solver<'_> {
             if orbits.root[root] != root || !orbits.inverted[root] || free[root] {
                 continue;
             }
-            let orbit: Vec<usize> = (0..free.len())
-                .filter(|&v| orbits.root[v] == root)
-                .collect();
-            if self.all_inversions_stay(found, &orbit, free)? {
-                more.extend(orbit);
+            let orbit = || (0..free.len()).filter(|&v| orbits.root[v] == root);
+            if self.all_inversions_stay(found, orbit, free, trial)? {
+                more.extend(orbit());
             }
         }
         Ok(more)
     }
 
-    fn all_inversions_stay(
+    fn all_inversions_stay<O: Iterator<Item = usize>>(
         &mut self,
         found: &[Member],
-        orbit: &[usize],
+        orbit: impl Fn() -> O,
         free: &[bool],
+        trial: &mut Trial,
     ) -> Result<bool, OrderError> {
         for member in found {
-            let own = Action::of(
-                &member.labelling.generators,
-                self.perception,
-                self.variables,
-            );
-            let own = Orbits::of(&own, free.len());
-            for &v in orbit.iter().filter(|&&v| own.root[v] == v) {
-                let flipped =
-                    self.label(|w| (!free[w]).then(|| member.assignment[w] ^ (w == v)))?;
+            trial.load_orbits(&member.labelling, self);
+            let Trial {
+                orbits: own,
+                flipped,
+                ..
+            } = &mut *trial;
+            for v in orbit().filter(|&v| own.root[v] == v) {
+                let mark = |w: usize| (!free[w]).then(|| member.assignment[w] ^ (w == v));
+                self.label_into(mark, flipped)?;
                 let inside = found
                     .binary_search_by(|m| m.labelling.certificate.cmp(&flipped.certificate))
                     .is_ok();
@@ -235,23 +303,25 @@ impl Solver<'_> {
 
     /// The labelling that canonical text is written from: the record's own marks, free ones left
     /// out.
-    fn written(
+    fn write(
         &mut self,
         bare: &Labelling,
         found: &[Member],
         free: &[bool],
-    ) -> Result<Labelling, OrderError> {
-        let marked = |v: usize| self.variables[v].odd.filter(|_| !free[v]);
-        if (0..free.len()).all(|v| marked(v).is_none()) {
-            return Ok(bare.clone());
-        }
-        if let [only] = found
-            && (0..free.len()).all(|v| free[v] || self.variables[v].odd.is_some())
-        {
-            return Ok(only.labelling.clone());
-        }
+        written: &mut Labelling,
+    ) -> Result<(), OrderError> {
         let variables = self.variables;
-        self.label(|v| variables[v].odd.filter(|_| !free[v]))
+        let marked = |v: usize| variables[v].odd.filter(|_| !free[v]);
+        if (0..free.len()).all(|v| marked(v).is_none()) {
+            written.clone_from(bare);
+        } else if let [only] = found
+            && (0..free.len()).all(|v| free[v] || variables[v].odd.is_some())
+        {
+            written.clone_from(&only.labelling);
+        } else {
+            self.label_into(marked, written)?;
+        }
+        Ok(())
     }
 }
 
@@ -265,11 +335,4 @@ impl Claims {
         self.groups.clear();
         self.open = false;
     }
-}
-
-/// One assignment with its labelling.
-#[derive(Debug, Clone)]
-pub(super) struct Member {
-    pub(super) assignment: Vec<bool>,
-    pub(super) labelling: Labelling,
 }

@@ -5,9 +5,8 @@ use std::collections::BTreeSet;
 use crate::OrderError;
 
 use super::{
-    action::Action,
     orbits::Orbits,
-    solve::{Member, Solver},
+    solve::{Member, Solver, Trial},
 };
 
 /// What became of a variable.
@@ -25,16 +24,17 @@ impl Solver<'_> {
     /// Whether some inversion of a free element gives another stereoisomer from one of the given
     /// assignments. If none does from an assignment, it allows one stereoisomer: each further
     /// inversion starts from an equivalent assignment.
-    pub(super) fn is_open(
+    pub(super) fn is_open<'a>(
         &mut self,
-        assignments: &[Vec<bool>],
+        assignments: impl Iterator<Item = &'a [bool]>,
         orbits: &Orbits,
         free: &[bool],
         never: &[bool],
+        trial: &mut Trial,
     ) -> Result<bool, OrderError> {
         let variables = self.variables;
         let counts = |v: usize| free[v] && !never[v] && !variables[v].quiet;
-        if (0..free.len()).any(|v| counts(v) && !orbits.inverted[orbits.root[v]]) {
+        if (0..free.len()).any(|v| counts(v) && !orbits.inverts(v)) {
             return Ok(true);
         }
         if !(0..free.len()).any(counts) {
@@ -42,11 +42,18 @@ impl Solver<'_> {
         }
         for assignment in assignments {
             let value = |v: usize| (!free[v] || counts(v)).then(|| assignment[v]);
-            let base = self.label(value)?;
-            let own = Action::of(&base.generators, self.perception, self.variables);
-            let own = Orbits::of(&own, free.len());
+            let mut base = std::mem::take(&mut trial.base);
+            self.label_into(value, &mut base)?;
+            trial.load_orbits(&base, self);
+            trial.base = base;
+            let Trial {
+                orbits: own,
+                base,
+                flipped,
+                ..
+            } = &mut *trial;
             for v in (0..free.len()).filter(|&v| counts(v) && own.root[v] == v) {
-                let flipped = self.label(|w| value(w).map(|odd| odd ^ (w == v)))?;
+                self.label_into(|w| value(w).map(|odd| odd ^ (w == v)), flipped)?;
                 if flipped.certificate != base.certificate {
                     return Ok(true);
                 }
@@ -74,15 +81,16 @@ impl Solver<'_> {
         Ok(certificates.len() > 1)
     }
 
-    /// What each variable is in this record. An unmarked one counts as stereogenic unless an
+    /// Lists what each variable is in this record. An unmarked one counts as stereogenic unless an
     /// automorphism inverts it and leaves all other elements, marked or not, as they are.
-    pub(super) fn statuses(
+    pub(super) fn list_statuses(
         &mut self,
         orbits: &Orbits,
         free: &[bool],
         never: &[bool],
-    ) -> Result<Vec<Status>, OrderError> {
-        let mut statuses = Vec::with_capacity(free.len());
+        statuses: &mut Vec<Status>,
+    ) -> Result<(), OrderError> {
+        statuses.clear();
         for v in 0..free.len() {
             statuses.push(if !free[v] {
                 if self.variables[v].odd.is_some() {
@@ -92,13 +100,13 @@ impl Solver<'_> {
                 }
             } else if never[v] {
                 Status::NotStereogenic
-            } else if !orbits.inverted[orbits.root[v]] || self.is_stereogenic(v, free, never)? {
+            } else if !orbits.inverts(v) || self.is_stereogenic(v, free, never)? {
                 Status::Unmarked
             } else {
                 Status::NotStereogenic
             });
         }
-        Ok(statuses)
+        Ok(())
     }
 
     fn is_stereogenic(
@@ -108,14 +116,14 @@ impl Solver<'_> {
         never: &[bool],
     ) -> Result<bool, OrderError> {
         let variables = self.variables;
-        let colours = self.graph.colours.clone();
+        let colours = self.graph.colours_mut().to_vec();
         // Each other unmarked element keeps its place: its centres get a colour of their own, above
         // all bits that atoms use.
         for (index, variable) in variables.iter().enumerate() {
             if free[index] && !never[index] && index != v {
                 for &(candidate, _) in &variable.members {
                     for centre in self.perception.candidates[candidate].centres {
-                        self.graph.colours[centre as usize] = !(index as u64);
+                        self.graph.colours_mut()[centre as usize] = !(index as u64);
                     }
                 }
             }
@@ -127,7 +135,7 @@ impl Solver<'_> {
         };
         let even = self.label(value);
         let odd = self.label(|w| value(w).map(|odd| odd ^ (w == v)));
-        self.graph.colours = colours;
+        self.graph.colours_mut().copy_from_slice(&colours);
         Ok(even?.certificate != odd?.certificate)
     }
 }

@@ -14,7 +14,7 @@ use super::valence;
 /// would let the numbering decide. So the table is applied in rounds, each decided by what was
 /// over-full at its start; what is left between two over-full atoms stays as drawn. `over_full` is
 /// scratch.
-pub(super) fn separate(skeleton: &mut Skeleton, over_full: &mut Vec<bool>) {
+pub(crate) fn separate(skeleton: &mut Skeleton, over_full: &mut Vec<bool>) {
     loop {
         over_full.clear();
         over_full.extend((0..skeleton.len() as u32).map(|atom| is_over_full(skeleton, atom)));

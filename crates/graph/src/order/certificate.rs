@@ -35,7 +35,8 @@ pub(super) fn write_certificate(
     write_units(graph, pos, words);
 }
 
-fn write_units(graph: &Coloured, pos: &[u32], words: &mut Vec<u64>) {
+/// Writes the words on units and placed centres; `pos` is the inverse of the order.
+pub(super) fn write_units(graph: &Coloured, pos: &[u32], words: &mut Vec<u64>) {
     let rank = |v: u32| pos.get(v as usize).copied().unwrap_or(v);
     let from = words.len();
     for unit in &graph.units {

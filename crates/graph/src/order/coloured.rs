@@ -2,7 +2,7 @@
 
 use crate::Polyhedron;
 
-use super::{partition::Partition, parts::Parts};
+use super::{Labelling, partition::Partition, parts::Parts};
 
 /// Bits that the count of one edge class takes in a refinement key, so there is room for seven
 /// classes and a vertex may have at most 511 neighbours.
@@ -27,6 +27,24 @@ impl Unit {
         self.centres.into_iter().chain(self.ligands)
     }
 
+    /// What it links. Its orientation may depend on the order within cells, and if not, which end
+    /// belongs to which is still part of the structure.
+    pub(super) fn link(&self, partition: &Partition, vertices: u32) -> Link {
+        let rank = |v: u32| partition.rank(v, vertices);
+        if ranked_parity(self, rank).is_none() {
+            return Link::All;
+        }
+        let is_open = |v: u32| v < vertices && partition.is_open(v);
+        let [a, b] = self.centres;
+        // Two ends that make up a cell belong to each other whatever their order.
+        let whole_cell = |cell| cell == rank(b) && partition.len[cell as usize] == 2;
+        if a != b && is_open(a) && is_open(b) && !whole_cell(rank(a)) {
+            Link::Ends
+        } else {
+            Link::Nothing
+        }
+    }
+
     /// Renames all that the unit is about.
     fn renamed(&self, name: impl Fn(u32) -> u32) -> Self {
         Self {
@@ -35,6 +53,17 @@ impl Unit {
             ..*self
         }
     }
+}
+
+/// The open vertices that a unit links under a partition: no automorphism moves one without the others.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(super) enum Link {
+    /// All that it is about.
+    All,
+    /// Its two ends.
+    Ends,
+    /// None.
+    Nothing,
 }
 
 /// A centre with its ligands placed on a polyhedron: vertices, or numbers above all vertices.
@@ -62,13 +91,18 @@ impl Placed {
 /// A coloured graph in compressed form. Colours are arbitrary words and part of the certificate.
 #[derive(Debug, Default, Clone)]
 pub(crate) struct Coloured {
-    pub(crate) colours: Vec<u64>,
+    pub(super) colours: Vec<u64>,
     start: Vec<u32>,
     arcs: Vec<(u32, u8)>,
     pub(crate) units: Vec<Unit>,
     pub(crate) placed: Vec<Placed>,
     /// Below this lie the numbers that stand for vertices outside of a part, if this is one.
     outside: u32,
+    root: Partition,
+    knows_root: bool,
+    /// The labelling without units and placed centres.
+    plain: Labelling,
+    knows_plain: bool,
 }
 
 impl Coloured {
@@ -78,11 +112,7 @@ impl Coloured {
         colours: impl Iterator<Item = u64>,
         edges: impl Iterator<Item = (u32, u32, u8)> + Clone,
     ) {
-        self.units.clear();
-        self.placed.clear();
-        self.colours.clear();
-        self.colours.extend(colours);
-        self.outside = self.colours.len() as u32;
+        self.load_vertices(colours);
         self.start.clear();
         self.start.resize(self.colours.len() + 1, 0);
         let mut sum = 0;
@@ -104,6 +134,32 @@ impl Coloured {
                 self.arcs[self.start[from as usize] as usize] = (to, class);
             }
         }
+    }
+
+    /// Loads vertices, and for each its neighbours with the classes of the edges. Every edge has to
+    /// come from both of its ends.
+    pub(crate) fn load_arcs<A: Iterator<Item = (u32, u8)>>(
+        &mut self,
+        colours: impl Iterator<Item = u64>,
+        arcs: impl Fn(u32) -> A,
+    ) {
+        self.load_vertices(colours);
+        self.start.clear();
+        self.arcs.clear();
+        for vertex in 0..self.colours.len() as u32 {
+            self.start.push(self.arcs.len() as u32);
+            self.arcs.extend(arcs(vertex));
+        }
+        self.start.push(self.arcs.len() as u32);
+    }
+
+    fn load_vertices(&mut self, colours: impl Iterator<Item = u64>) {
+        self.forget();
+        self.units.clear();
+        self.placed.clear();
+        self.colours.clear();
+        self.colours.extend(colours);
+        self.outside = self.colours.len() as u32;
     }
 
     /// Loads a part of a graph, coloured by the cells of a partition. Vertex `i` of the part is
@@ -163,6 +219,51 @@ impl Coloured {
                 ligands: placed.ligands.iter().map(|&v| name(v)).collect(),
             });
         }
+    }
+
+    /// The colours, to be changed.
+    pub(crate) fn colours_mut(&mut self) -> &mut [u64] {
+        self.forget();
+        &mut self.colours
+    }
+
+    /// Forgets what was kept about colours and edges.
+    fn forget(&mut self) {
+        self.knows_root = false;
+        self.knows_plain = false;
+    }
+
+    /// The equitable partition that colours and edges alone give, once it was found. The same graph is
+    /// ordered under changing units and placed centres, and all these refinements start with it.
+    pub(super) fn root(&self) -> Option<&Partition> {
+        self.knows_root.then_some(&self.root)
+    }
+
+    pub(super) fn keep_root(&mut self, partition: &Partition) {
+        self.root.clone_from(partition);
+        self.knows_root = true;
+    }
+
+    /// Keeps the labelling without units and placed centres, for labellings under units that leave the
+    /// order as it is. Where the whole graph was searched, units may lead to another order.
+    pub(crate) fn keep_plain(&mut self, labelling: &Labelling) {
+        self.knows_plain = !labelling.searched && self.placed.is_empty();
+        if self.knows_plain {
+            self.plain.clone_from(labelling);
+        }
+    }
+
+    /// The labelling without units, if that with them, whose root is `partition`, differs from it in
+    /// nothing but the words on units. It does not where the units split no cell and link no vertices:
+    /// then the same parts are ordered and sorted, none of them with a unit.
+    pub(super) fn plain_under(&self, partition: &Partition) -> Option<&Labelling> {
+        let links = |unit: &Unit| unit.link(partition, self.len() as u32) != Link::Nothing;
+        let alike = self.knows_plain
+            && self.placed.is_empty()
+            && self.knows_root
+            && partition.cells == self.root.cells
+            && !self.units.iter().any(links);
+        alike.then_some(&self.plain)
     }
 
     /// The number of vertices.

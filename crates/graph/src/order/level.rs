@@ -10,7 +10,7 @@ use super::{
     coloured::Coloured,
     partition::Partition,
     parts::{Part, Parts},
-    permutation::Permutation,
+    permutation::Generators,
     refine::Refiner,
     search::Tree,
     trace::Unwatched,
@@ -31,7 +31,9 @@ pub(super) struct Level {
     /// The vertices in canonical order.
     pub(super) order: Vec<u32>,
     /// Generators of the automorphism group.
-    pub(super) generators: Vec<Permutation>,
+    pub(super) generators: Generators,
+    /// Whether the whole graph was searched.
+    pub(super) searched: bool,
     /// The parts by cells and certificate.
     ranking: Vec<u32>,
     /// Per part: where its certificate is in `words`.
@@ -49,21 +51,27 @@ pub(super) struct Level {
 }
 
 impl Level {
-    /// Orders a graph.
-    pub(super) fn order(
+    /// Refines a graph as far as that goes without a choice.
+    pub(super) fn refine(
         &mut self,
-        graph: &Coloured,
+        graph: &mut Coloured,
         work: &mut Work<'_>,
     ) -> Result<(), OrderError> {
-        self.partition.load(&graph.colours);
         self.refiner.reset(graph.len());
-        for start in self.partition.starts() {
-            self.refiner.enqueue(start);
+        if let Some(root) = graph.root() {
+            self.partition.clone_from(root);
+        } else {
+            self.partition.load(&graph.colours);
+            for start in self.partition.starts() {
+                self.refiner.enqueue(start);
+            }
+            self.refiner
+                .equitable(graph, &mut self.partition, &mut Unwatched);
+            graph.keep_root(&self.partition);
         }
         self.refiner
             .refine(graph, &mut self.partition, &mut Unwatched);
-        work.spend(&mut self.refiner.work)?;
-        self.complete(graph, work)
+        work.spend(&mut self.refiner.work)
     }
 
     /// Orders a graph whose colours are equitable.
@@ -73,8 +81,14 @@ impl Level {
         self.complete(graph, work)
     }
 
-    fn complete(&mut self, graph: &Coloured, work: &mut Work<'_>) -> Result<(), OrderError> {
+    /// Orders a refined graph.
+    pub(super) fn complete(
+        &mut self,
+        graph: &Coloured,
+        work: &mut Work<'_>,
+    ) -> Result<(), OrderError> {
         self.generators.clear();
+        self.searched = false;
         if self.partition.is_discrete() {
             self.order.clone_from(&self.partition.lab);
             return Ok(());
@@ -82,6 +96,7 @@ impl Level {
         self.parts.find(graph, &self.partition);
         work.spend(&mut self.parts.work)?;
         if self.is_whole() && self.parts.vertices.len() == graph.len() || self.is_last() {
+            self.searched = true;
             self.search(graph, work)
         } else {
             self.arrange(graph, work, true)
@@ -161,9 +176,8 @@ impl Level {
         deeper.order_equitable(own, work)?;
         let vertices = &mut self.parts.vertices[self.parts.parts[part as usize].range()];
         if generators {
-            let own = deeper.generators.iter();
             self.generators
-                .extend(own.map(|generator| generator.renamed(|v| vertices[v as usize])));
+                .extend_renamed(&deeper.generators, |v| vertices[v as usize]);
         }
         let (order, old) = (&deeper.order, &mut self.local);
         old.clear();
@@ -196,7 +210,7 @@ impl Level {
             if certificate(pair[0]) == certificate(pair[1]) {
                 let pairs = vertices(pair[0]).iter().zip(vertices(pair[1]));
                 self.generators
-                    .push(Permutation::of(pairs.flat_map(|(&a, &b)| [(a, b), (b, a)])));
+                    .push(pairs.flat_map(|(&a, &b)| [(a, b), (b, a)]));
             }
         }
     }

@@ -23,7 +23,7 @@ impl Keyed {
 }
 
 /// An ordered partition: `lab` lists the vertices cell by cell. Cells are named by where they start.
-#[derive(Debug, Default, Clone)]
+#[derive(Debug, Default)]
 pub(crate) struct Partition {
     pub(super) lab: Vec<u32>,
     /// Per vertex: its position in `lab`. Valid for the vertices in `lab` only.
@@ -36,15 +36,35 @@ pub(crate) struct Partition {
     /// The splits made, as the cell that was split and the cell split off, so that each can be
     /// undone by joining it to what precedes it.
     log: Vec<(u32, u32)>,
+    /// Scratch: colours with their vertices.
+    coloured: Vec<(u64, u32)>,
+}
+
+impl Clone for Partition {
+    fn clone(&self) -> Self {
+        let mut copy = Self::default();
+        copy.clone_from(self);
+        copy
+    }
+
+    /// Keeps the memory, which the derived one would not, and leaves the scratch.
+    fn clone_from(&mut self, source: &Self) {
+        self.lab.clone_from(&source.lab);
+        self.pos.clone_from(&source.pos);
+        self.cell.clone_from(&source.cell);
+        self.len.clone_from(&source.len);
+        self.cells = source.cells;
+        self.log.clone_from(&source.log);
+    }
 }
 
 impl Partition {
     /// Starts with all vertices, ordered by colour, equal colours in one cell.
     pub(super) fn load(&mut self, colours: &[u64]) {
-        let colour = |vertex: u32| colours[vertex as usize];
+        self.coloured.clear();
+        self.coloured.extend(colours.iter().copied().zip(0..));
+        self.coloured.sort_unstable();
         self.lab.clear();
-        self.lab.extend(0..colours.len() as u32);
-        self.lab.sort_unstable_by_key(|&v| colour(v));
         for table in [&mut self.pos, &mut self.cell] {
             table.resize(colours.len(), 0);
         }
@@ -52,13 +72,13 @@ impl Partition {
         self.len.resize(colours.len(), 0);
         self.cells = 0;
         self.log.clear();
-        let mut start = 0;
-        for at in 0..self.lab.len() {
-            let vertex = self.lab[at];
-            if at == 0 || colour(self.lab[at - 1]) != colour(vertex) {
-                start = at;
+        let (mut start, mut before) = (0, None);
+        for (at, &(colour, vertex)) in self.coloured.iter().enumerate() {
+            if before != Some(colour) {
+                (start, before) = (at, Some(colour));
                 self.cells += 1;
             }
+            self.lab.push(vertex);
             self.pos[vertex as usize] = at as u32;
             self.cell[vertex as usize] = start as u32;
             self.len[start] += 1;

@@ -6,7 +6,7 @@
 //! parts can be ordered one by one, and sorted.
 
 use super::{
-    coloured::{COUNT_BITS, Coloured, ranked_parity},
+    coloured::{COUNT_BITS, Coloured, Link},
     partition::Partition,
 };
 
@@ -115,25 +115,15 @@ impl Parts {
         }
     }
 
-    /// Links what a unit is about while its orientation depends on the order within cells, and the
-    /// two ends of the others: which end belongs to which is part of the structure.
+    /// Links what units link.
     fn link_units(&mut self, graph: &Coloured, partition: &Partition) {
         let vertices = graph.len() as u32;
         let is_open = |v: u32| v < vertices && partition.is_open(v);
-        let rank = |v: u32| partition.rank(v, vertices);
         for (index, unit) in (0..).zip(&graph.units) {
-            let first = if ranked_parity(unit, rank).is_none() {
-                self.link_all(unit.vertices().filter(|&v| is_open(v)))
-            } else {
-                let [a, b] = unit.centres;
-                let open = a != b && is_open(a) && is_open(b);
-                // Two ends that make up a cell belong to each other whatever their order.
-                let whole_cell = |cell| cell == rank(b) && partition.len[cell as usize] == 2;
-                if open && !whole_cell(rank(a)) {
-                    self.link_all([a, b].into_iter())
-                } else {
-                    None
-                }
+            let first = match unit.link(partition, vertices) {
+                Link::All => self.link_all(unit.vertices().filter(|&v| is_open(v))),
+                Link::Ends => self.link_all(unit.centres.into_iter()),
+                Link::Nothing => None,
             };
             self.units.extend(first.map(|first| (first, index)));
         }

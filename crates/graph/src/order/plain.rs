@@ -95,8 +95,12 @@ impl GraphOrderer {
             return Err(GraphError::Repeated { a, b });
         }
         let mut steps = 0;
-        self.labeller
-            .label(&self.graph, &self.limits, &mut steps, &mut self.labelling)?;
+        self.labeller.label(
+            &mut self.graph,
+            &self.limits,
+            &mut steps,
+            &mut self.labelling,
+        )?;
         Ok(GraphOrder {
             order: &self.labelling.order,
             certificate: &self.labelling.certificate,

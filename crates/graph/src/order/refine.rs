@@ -75,7 +75,8 @@ impl Refiner {
         }
     }
 
-    fn equitable<W: Watch>(
+    /// Refines by the edges alone.
+    pub(super) fn equitable<W: Watch>(
         &mut self,
         graph: &Coloured,
         partition: &mut Partition,
@@ -98,7 +99,9 @@ impl Refiner {
                 self.key_touched(partition)
             };
             watch.note(alone);
-            self.split_keyed(partition, watch);
+            if !self.keyed.is_empty() {
+                self.split_keyed(partition, watch);
+            }
             if !watch.goes_on() {
                 return false;
             }

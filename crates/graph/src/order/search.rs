@@ -12,7 +12,7 @@ use super::{
     certificate::write_certificate,
     coloured::Coloured,
     level::Level,
-    permutation::Permutation,
+    permutation::{Generators, Permutation},
     trace::{Standing, Trace, Watch},
 };
 use crate::OrderError;
@@ -23,6 +23,15 @@ struct Leaf {
     order: Vec<u32>,
     path: Vec<u32>,
     certificate: Vec<u64>,
+}
+
+impl Leaf {
+    /// Takes over another leaf, in the memory at hand.
+    fn copy(&mut self, other: &Self) {
+        self.order.clone_from(&other.order);
+        self.path.clone_from(&other.path);
+        self.certificate.clone_from(&other.certificate);
+    }
 }
 
 /// A node on the present path.
@@ -64,7 +73,7 @@ fn find(parent: &mut [u32], mut vertex: u32) -> u32 {
     vertex
 }
 
-fn unite(parent: &mut [u32], permutation: &Permutation) {
+fn unite(parent: &mut [u32], permutation: Permutation<'_>) {
     for &(from, to) in permutation.moved() {
         let (a, b) = (find(parent, from), find(parent, to));
         parent[a.max(b) as usize] = a.min(b);
@@ -87,7 +96,7 @@ impl Tree {
 
     /// The next child worth visiting: the first of each orbit under the automorphisms that fix the
     /// path to this node.
-    fn next_child(&mut self, generators: &[Permutation]) -> Option<u32> {
+    fn next_child(&mut self, generators: &Generators) -> Option<u32> {
         let level = self.depth - 1;
         let on_first_path = level <= self.on_first;
         if !on_first_path && self.nodes[level].next > 0 && !generators.is_empty() {
@@ -113,11 +122,11 @@ impl Tree {
         None
     }
 
-    fn pruning_orbits(&mut self, level: usize, generators: &[Permutation]) {
+    fn pruning_orbits(&mut self, level: usize, generators: &Generators) {
         for (vertex, parent) in (0..).zip(&mut self.pruning) {
             *parent = vertex;
         }
-        for generator in generators {
+        for generator in generators.iter() {
             let path = &self.nodes[..level];
             if path.iter().all(|node| generator.fixes(node.chosen)) {
                 unite(&mut self.pruning, generator);
@@ -142,11 +151,10 @@ impl Tree {
 
     /// Takes the automorphism that maps an earlier leaf onto this one, and goes back to where the
     /// two paths part: everything in between is an image of what was explored.
-    fn automorphism(&mut self, order: &[u32], with_first: bool) -> Permutation {
+    fn automorphism(&mut self, order: &[u32], with_first: bool, generators: &mut Generators) {
         let earlier = if with_first { &self.first } else { &self.best };
         let pairs = earlier.order.iter().copied().zip(order.iter().copied());
-        let generator = Permutation::of(pairs);
-        unite(&mut self.orbit, &generator);
+        unite(&mut self.orbit, generators.push(pairs));
         let common = self.nodes[..self.depth]
             .iter()
             .zip(&earlier.path)
@@ -154,7 +162,6 @@ impl Tree {
             .count();
         self.depth = self.depth.min(common + 1);
         self.on_first = self.on_first.min(common);
-        generator
     }
 }
 
@@ -244,23 +251,23 @@ impl Level {
         if is_first {
             tree.trace.keep_first();
             tree.keep_best(&self.order);
-            tree.first.clone_from(&tree.best);
+            tree.first.copy(&tree.best);
             tree.on_first = tree.depth.saturating_sub(1);
-            for generator in &self.generators {
+            for generator in self.generators.iter() {
                 unite(&mut tree.orbit, generator);
             }
             return Ok(());
         }
         let standing = tree.trace.at_leaf();
         if standing.like_first && tree.current == tree.first.certificate {
-            self.generators.push(tree.automorphism(&self.order, true));
+            tree.automorphism(&self.order, true, &mut self.generators);
             return Ok(());
         }
         // A leaf that was reached only because it is like the first one may not become the best.
         let order = standing.against_best;
         match order.then_with(|| tree.current.cmp(&tree.best.certificate)) {
             Ordering::Less => tree.keep_best(&self.order),
-            Ordering::Equal => self.generators.push(tree.automorphism(&self.order, false)),
+            Ordering::Equal => tree.automorphism(&self.order, false, &mut self.generators),
             Ordering::Greater => {}
         }
         Ok(())

@@ -1,7 +1,7 @@
 //! What a plain drawing cannot say although it may matter: rules of thumb, which decide a note and
 //! whether the record is open, and never a relation.
 
-use crate::{Element, mesomer::Mesomer, order::Permutation, skeleton::Skeleton};
+use crate::{Element, mesomer::Mesomer, order::Generators, skeleton::Skeleton};
 
 use super::Perception;
 
@@ -64,7 +64,7 @@ impl Perception {
     /// Keeps the hindered axes at whose two ends the ortho places differ; the others have a plane
     /// of symmetry through the axis. A rule of thumb like the rest of this file: it asks the
     /// `generators` of the automorphisms of the constitution, not their products.
-    pub(crate) fn keep_unequal_axes(&mut self, skeleton: &Skeleton, generators: &[Permutation]) {
+    pub(crate) fn keep_unequal_axes(&mut self, skeleton: &Skeleton, generators: &Generators) {
         self.undrawable.retain(|place| match *place {
             Undrawable::HinderedAxis { atoms: [a, b] } => {
                 // An automorphism that fixes one end and exchanges its ortho places.
