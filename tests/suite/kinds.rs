@@ -3,7 +3,7 @@
 use std::collections::{BTreeMap, BTreeSet};
 
 use molkin_formats::source::{Format, ReadOptions, Records};
-use molkin_graph::{Limits, Orderer};
+use molkin_graph::{Element, Limits, Orderer};
 use molkin_relate::{
     Kind, Structure, functional_groups, kinds,
     wire::{self, Prepared, compare},
@@ -73,8 +73,8 @@ fn pairs_have_the_kinds_stated(
     assert_eq!(of_kind.len(), 8, "{:?}", of_kind.keys());
 }
 
-/// Real pairs: the same kinds both ways round, and functional groups that cover every heteroatom once
-/// and do not depend on the drawing.
+/// Real pairs: the same kinds both ways round, and functional groups that hold every heteroatom, share
+/// no atom and do not depend on the drawing.
 #[test]
 fn real_pairs() {
     let Some([left, right]) = ["a", "b"]
@@ -122,6 +122,21 @@ fn real_pair(
 fn certificates(structure: &Structure) -> Result<Vec<Vec<u64>>, String> {
     let groups = functional_groups(structure, &Limits::default());
     let groups = groups.map_err(|error| error.to_string())?;
+    let mut within = BTreeSet::new();
+    if !groups
+        .iter()
+        .flat_map(|group| &group.atoms)
+        .all(|atom| within.insert(*atom))
+    {
+        return Err("an atom is in two groups".to_owned());
+    }
+    let carbon_or_hydrogen = [Element::CARBON, Element::HYDROGEN];
+    let mut atoms = (0..).zip(structure.molecule().atoms());
+    if let Some((missed, _)) = atoms.find(|(index, atom)| {
+        !carbon_or_hydrogen.contains(&atom.element) && !within.contains(index)
+    }) {
+        return Err(format!("heteroatom {missed} is in no group"));
+    }
     let mut certificates: Vec<_> = groups.into_iter().map(|group| group.certificate).collect();
     certificates.sort_unstable();
     Ok(certificates)
