@@ -59,11 +59,11 @@ pub enum OrderError {
         "of equivalent centres beside an arrangement about a metal only some are marked; such records are not compared yet"
     )]
     PartlyMarkedCentres,
-    /// A stereo group names an arrangement about a metal, or two groups of different kinds share
-    /// bridgeheads that determine each other, or groups meet cages marked in a way that no cage can
-    /// have.
+    /// A stereo group names an arrangement about a metal; or two groups of different kinds share
+    /// bridgeheads that determine each other; or a record with stereo groups is compared where either
+    /// record has an arrangement about a metal or a cage marked in a way that no cage can have.
     #[error(
-        "a stereo group names an arrangement about a metal, or bridgeheads that cannot be inverted apart"
+        "stereo groups meet an arrangement about a metal, or bridgeheads that cannot be inverted apart; such records are not compared"
     )]
     StereoGroups,
     /// Too many stereo groups, and unmarked elements beside them, in positions that symmetry relates.

@@ -352,7 +352,7 @@ impl Solver<'_> {
     }
 
     /// The marks to write, and the labelling with them: settled groups with their first element even
-    /// in canonical order, the others as the least certificate has them.
+    /// in canonical order, the others as the least point has them.
     fn shown(
         &mut self,
         roles: &Roles,
@@ -377,21 +377,22 @@ impl Solver<'_> {
             .filter(|group| !roles.settles(group))
             .cloned()
             .collect();
-        let mut least: Option<(Vec<Option<bool>>, Labelling)> = None;
+        // Assignments with the same point are related by an automorphism, so they read the same.
+        let mut least: Option<(Point, Vec<bool>)> = None;
         for mask in 0..1u64 << listed.len() {
             let values = masked(&assignment, &listed, mask);
-            let shown: Vec<Option<bool>> = values
-                .iter()
-                .enumerate()
-                .map(|(v, &odd)| (!state.free[v] && state.marked[v]).then_some(odd))
-                .collect();
-            let labelling = self.label(|v| shown[v])?;
-            let smaller = |(_, other): &(_, Labelling)| labelling.certificate < other.certificate;
-            if least.as_ref().is_none_or(smaller) {
-                least = Some((shown, labelling));
+            let unmarked = |v: usize| !state.marked[v];
+            let point = self.point(roles, state, &listed, &values, &unmarked)?;
+            if least.as_ref().is_none_or(|(other, _)| point < *other) {
+                least = Some((point, values));
             }
         }
-        Ok(least.unwrap_or_default())
+        let values = least.map_or(assignment, |(_, values)| values);
+        let shown: Vec<Option<bool>> = (0..values.len())
+            .map(|v| (!state.free[v] && state.marked[v]).then_some(values[v]))
+            .collect();
+        let labelling = self.label(|v| shown[v])?;
+        Ok((shown, labelling))
     }
 
     /// What equality and keys rest on. Where the samples are all sets of some stereoisomers, that is
