@@ -4,7 +4,7 @@
 
 A record is chiral where the canonical isomeric SMILES of the molecule differs from that of its mirror
 image, which has every tetrahedral mark and every mark of a hindered axis inverted. The library is
-rdkit 2026.09.1 (package registry of Python) with its new perception of stereo.
+rdkit 2026.09.1 with its new perception of stereo.
 
 Writes one file for each collection: a line of tab-separated numbers of records that the library
 does not read, then a bit for each record, as hexadecimal digits, the first record in the highest bit.
