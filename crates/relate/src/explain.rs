@@ -3,9 +3,9 @@
 mod branching;
 mod constitution;
 mod coordination;
-mod groups;
 mod named;
 mod stereo;
+mod stereo_groups;
 
 use molkin_graph::Limits;
 

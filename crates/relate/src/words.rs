@@ -1,9 +1,9 @@
 //! The verdict in plain sentences.
 
 mod functional;
-mod groups;
 mod places;
 mod stereo;
+mod stereo_groups;
 
 #[cfg(test)]
 mod tests;

@@ -8,8 +8,8 @@ use crate::Structure;
 
 use super::{
     BondDifference, Explanation, coordination,
-    groups::{self, Marked},
     named::{named, unfolded},
+    stereo_groups::{self, Marked},
 };
 
 /// The geometry of what differs.
@@ -287,7 +287,7 @@ fn differences(
             (Mark::Absent, _) => {}
         }
     }
-    found.extend(groups::differences(marked));
+    found.extend(stereo_groups::differences(marked));
     let inverse: HashMap<u32, u32> = if rest.is_empty() {
         HashMap::new()
     } else {

@@ -6,7 +6,7 @@ use molkin_graph::{Mark, Shape, StereoElement};
 
 use crate::{Explanation, Geometry, StereoChange, StereoDifference, StereoKind, Structure};
 
-use super::{groups, listed, places::Places};
+use super::{listed, places::Places, stereo_groups};
 
 /// Places are named in the summary if they are at most so many; the entries of `stereo` name all.
 const MOST_NAMED: usize = 3;
@@ -207,7 +207,7 @@ impl<'e> Found<'e> {
             .filter(|difference| difference.groups != [None, None])
             .collect();
         let alike = self.explained.stereo.len() == self.others.len();
-        sentences.extend(groups::sentence(&regrouped, &self.elements, alike));
+        sentences.extend(stereo_groups::sentence(&regrouped, &self.elements, alike));
         let lists = [
             ("Inverted: ", &self.inverted),
             ("Marked in A, open in B: ", &self.open_in_b),
