@@ -5,8 +5,9 @@
 //! charges are considered that are best in this order: most π bonds, least total charge, fewest
 //! open valences, fewest charges on atoms charged already, fewest negative charges on carbon. What
 //! all best placements share is fixed, what differs among them is mobile. [`placement`] makes
-//! this a perfect-matching question, so that the answer is exact and polynomial; [`mobile`] asks it bond by bond. Neutral closed-shell systems,
-//! nearly all, are best as drawn and have a shorter way: [`shift`].
+//! this a perfect-matching question, so that the answer is exact and polynomial; [`mobile`] asks it
+//! bond by bond. Neutral closed-shell systems, nearly all, are best as drawn and have a shorter way:
+//! [`shift`].
 
 mod first;
 mod mobile;
