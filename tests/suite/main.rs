@@ -34,6 +34,7 @@ mod kinds;
 mod label_examples;
 mod label_laws;
 mod mirror;
+mod moves;
 mod pages;
 mod relations;
 mod renumbering;
