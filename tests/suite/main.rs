@@ -35,6 +35,7 @@ mod label_examples;
 mod label_laws;
 mod mirror;
 mod moves;
+mod moves_built;
 mod pages;
 mod relations;
 mod renumbering;
