@@ -161,16 +161,32 @@ impl Input {
     }
 
     fn read(&mut self) -> Option<RawRecord> {
+        let mut record = RawRecord::default();
+        self.read_into(&mut record).then_some(record)
+    }
+
+    fn read_into(&mut self, record: &mut RawRecord) -> bool {
         if self.ended {
-            return None;
+            return false;
         }
-        match self.records.cut() {
-            Some(Ok(record)) => return Some(record),
-            Some(Err(failure)) => self.failure = Some(failure),
-            None => {}
+        match self.records.cut_into(record) {
+            Ok(true) => return true,
+            Ok(false) => {}
+            Err(failure) => self.failure = Some(failure),
         }
         self.ended = true;
-        None
+        false
+    }
+
+    /// As the iterator, in place of a record that is done with; false where there is no other.
+    pub(crate) fn next_into(&mut self, record: &mut RawRecord) -> bool {
+        match self.ahead.pop_front() {
+            Some(next) => {
+                *record = next;
+                true
+            }
+            None => self.read_into(record),
+        }
     }
 }
 

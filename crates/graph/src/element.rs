@@ -48,7 +48,7 @@ impl Element {
     pub const WILDCARD: Element = Element(0);
 
     /// The heaviest element that has a name, oganesson.
-    const LAST: u8 = 118;
+    pub(crate) const LAST: u8 = 118;
 
     /// The element of a symbol in its exact case (`C`, `Cl`), or `None`.
     ///

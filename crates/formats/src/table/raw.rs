@@ -16,17 +16,25 @@ use crate::{
 /// The lines of a row and where its fields stand in them.
 #[derive(Debug, Default)]
 pub(crate) struct RawRow {
-    pub(super) raw: RawText,
+    pub(crate) raw: RawText,
     pub(super) row: Row,
     header: Arc<Header>,
 }
 
 impl RawRow {
-    /// Room for the rows below a header.
-    pub(super) fn new(header: Arc<Header>) -> Self {
+    /// Room for a row, in that of a text.
+    pub(crate) fn in_place_of(raw: RawText) -> Self {
         Self {
-            header,
+            raw,
             ..Self::default()
+        }
+    }
+
+    /// Makes this a row below a header.
+    pub(super) fn put_below(&mut self, header: &Arc<Header>) {
+        // Threads that share a header wait for each other to count it.
+        if !Arc::ptr_eq(&self.header, header) {
+            self.header = Arc::clone(header);
         }
     }
 
