@@ -52,7 +52,11 @@ impl<'a> Meaning<'a> {
 
 /// What the arguments ask of the readers.
 pub(crate) fn read_options(reading: &Reading) -> ReadOptions {
-    let mut options = ReadOptions::default();
+    let mut options = ReadOptions {
+        // No output has them.
+        without_properties: true,
+        ..ReadOptions::default()
+    };
     options.smiles.strict = reading.strict;
     options.molfile.valences = match reading.valences {
         Valences::Early => ValenceTable::Early,

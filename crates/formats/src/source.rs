@@ -40,6 +40,9 @@ pub struct ReadOptions {
     pub molfile: molfile::ReadOptions,
     /// For tables.
     pub columns: Columns,
+    /// Leaves the [`Record::properties`] empty, which saves time where nothing is made of data items and
+    /// other columns. Notes on them are made all the same.
+    pub without_properties: bool,
 }
 
 /// What became of one record.

@@ -80,6 +80,12 @@ impl Element {
         self.entry(&table::SYMBOLS)
     }
 
+    /// The place of the symbol in the alphabet, as a number that has no gaps to speak of; 0 for the
+    /// wildcard.
+    pub(crate) fn place_in_alphabet(self) -> u16 {
+        self.entry(&symbol::PLACES)
+    }
+
     /// The English name in IUPAC spelling, lower case; `unknown` for the wildcard.
     #[must_use]
     pub fn name(self) -> &'static str {

@@ -111,18 +111,14 @@ impl fmt::Display for Formula {
     }
 }
 
-/// The place of an element in Hill order: numbers above 0 that sort as the order does, its symbol in
-/// the low bytes.
-fn hill_place(element: Element, organic: bool) -> u32 {
-    let group = match element {
+/// The place of an element in Hill order: numbers above 0 that sort as the order does.
+fn hill_place(element: Element, organic: bool) -> u16 {
+    match element {
         Element::CARBON if organic => 1,
         Element::HYDROGEN if organic => 2,
-        Element::WILDCARD => 4,
-        _ => 3,
-    };
-    let letters = element.symbol().as_bytes();
-    let letter = |at: usize| u32::from(letters.get(at).copied().unwrap_or_default());
-    group << 16 | letter(0) << 8 | letter(1)
+        Element::WILDCARD => u16::MAX,
+        _ => 3 + element.place_in_alphabet(),
+    }
 }
 
 /// Writes a number as its digits, which takes a fraction of what formatting it does.

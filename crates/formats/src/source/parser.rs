@@ -8,6 +8,8 @@ use crate::{molfile, sdf, smiles};
 pub struct Parser {
     smiles: smiles::Reader,
     molfile: molfile::ReadOptions,
+    /// Whether properties are kept.
+    properties: bool,
 }
 
 impl Parser {
@@ -16,6 +18,7 @@ impl Parser {
         Self {
             smiles: smiles::Reader::new(options.smiles),
             molfile: options.molfile,
+            properties: !options.without_properties,
         }
     }
 
@@ -39,11 +42,17 @@ impl Parser {
             }
             Cut::Molfile(raw) => {
                 outcome.name = sdf::title(raw);
-                outcome.result = sdf::parse(raw, &self.molfile);
+                outcome.result = sdf::parse(raw, &self.molfile, self.properties);
             }
             #[cfg(feature = "table")]
             Cut::Row(raw) => {
-                (outcome.name, outcome.result) = raw.parse(&mut self.smiles, &self.molfile);
+                let readers = (&mut self.smiles, &self.molfile);
+                raw.parse(readers, &mut outcome.name, &mut outcome.result);
+                if self.properties
+                    && let Ok(record) = &mut outcome.result
+                {
+                    record.properties = raw.properties();
+                }
             }
         }
     }

@@ -135,9 +135,13 @@ impl<R: BufRead> Iterator for Records<R> {
         let mut raw = std::mem::take(&mut self.raw);
         let outcome = match self.cut(&mut raw) {
             Ok(true) => {
-                let (title, outcome) = raw.parse(&mut self.reader, &self.molfile);
-                self.title = title;
-                Some(outcome)
+                let mut outcome = Ok(Record::default());
+                let readers = (&mut self.reader, &self.molfile);
+                raw.parse(readers, &mut self.title, &mut outcome);
+                Some(outcome.map(|record| Record {
+                    properties: raw.properties(),
+                    ..record
+                }))
             }
             Ok(false) => None,
             Err(failure) => Some(Err(failure)),
