@@ -13,7 +13,7 @@ use std::io::BufRead;
 
 use crate::{
     ReadError, ReadErrorKind, Record, Span,
-    lines::{Line, Lines},
+    lines::Lines,
     molfile::{self, Block, ReadOptions, decode},
     raw::RawText,
 };
@@ -123,33 +123,31 @@ impl<R: BufRead> Records<R> {
     fn collect(&mut self, raw: &mut RawText) -> std::io::Result<Stop> {
         let limit = self.options.limits.record_bytes;
         loop {
-            let (line, whole) = match self.lines.next()? {
-                Some(Line::Whole(line)) => (line, true),
-                Some(Line::TooLong(line)) => (line, false),
-                None => return Ok(Stop::End),
+            let start = raw.text.len();
+            let Some(whole) = self.lines.append(&mut raw.text)? else {
+                return Ok(Stop::End);
             };
+            let line = &raw.text[start..];
             if whole && line.trim_ascii_end() == b"$$$$" {
+                raw.text.truncate(start);
                 return Ok(Stop::Delimiter);
             }
-            if raw.fault.is_some() {
-                continue;
+            if raw.fault.is_none() {
+                if whole && raw.text.len() < limit {
+                    raw.text.push(b'\n');
+                    continue;
+                }
+                let kind = match whole {
+                    true => ReadErrorKind::RecordTooLong { limit },
+                    false => ReadErrorKind::LineTooLong {
+                        limit: self.options.limits.line_bytes,
+                    },
+                };
+                let offset = if whole { 0 } else { line.len() };
+                let span = Span::at_offset(self.lines.number(), offset, 0);
+                raw.fault = Some(ReadError::new(kind, span, line));
             }
-            let fits = raw.text.len().saturating_add(line.len()) < limit;
-            if whole && fits {
-                raw.text.extend_from_slice(line);
-                raw.text.push(b'\n');
-                continue;
-            }
-            let kind = match whole {
-                true => ReadErrorKind::RecordTooLong { limit },
-                false => ReadErrorKind::LineTooLong {
-                    limit: self.options.limits.line_bytes,
-                },
-            };
-            let offset = if whole { 0 } else { line.len() };
-            let line = line.to_vec();
-            let span = Span::at_offset(self.lines.number(), offset, 0);
-            raw.fault = Some(ReadError::new(kind, span, &line));
+            raw.text.truncate(start);
         }
     }
 }

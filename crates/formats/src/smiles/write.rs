@@ -25,6 +25,7 @@ use molkin_graph::{BondOrder, CanonicalForm, Polyhedron, Shape};
 use self::{
     emit::Emitter,
     layout::Layout,
+    rows::Rows,
     slopes::Slopes,
     structure::{ArcTable, Structure},
     tags::Tags,
@@ -135,9 +136,12 @@ pub fn write(form: &CanonicalForm) -> Written {
 pub struct Writer {
     arcs: ArcTable,
     layout: Layout,
+    rows: Rows,
     /// Per atom: the hydrogens that are written as atoms.
     shown: Vec<u8>,
     tags: Tags,
+    /// The text, which takes bytes in fewer steps than a string does.
+    bytes: Vec<u8>,
 }
 
 impl Writer {
@@ -153,6 +157,7 @@ impl Writer {
         let Written { text, lost } = written;
         text.clear();
         lost.clear();
+        self.bytes.clear();
         let structure = Structure::new(form, &mut self.arcs);
         self.layout.plan(&structure);
         let layout = &self.layout;
@@ -161,17 +166,18 @@ impl Writer {
             lost.push(Lost::StereoGroups);
         }
         let mut elements = form.stereo.iter();
-        let mut rows = Vec::new();
+        self.rows.clear();
         if elements.any(|element| element.shape != Shape::Tetrahedral) {
-            rows = rows::find(&structure);
+            self.rows.find(&structure);
         }
+        let rows = self.rows.all();
         let shown = &mut self.shown;
         shown.clear();
         shown.extend(form.atoms.iter().map(atom::shown_hydrogens));
-        let mut slopes = Slopes::solve(&structure, layout, &rows, lost);
+        let mut slopes = Slopes::solve(&structure, layout, rows, lost);
         slopes.show_hydrogens(&structure, shown);
         tags::show_hydrogens(&form.stereo, shown);
-        self.tags.load(&structure, layout, &rows, shown, lost);
+        self.tags.load(&structure, layout, rows, shown, lost);
         if layout.highest_label > layout::LAST_LABEL {
             lost.push(Lost::RingLabels {
                 highest: layout.highest_label,
@@ -184,8 +190,9 @@ impl Writer {
             shown,
             tags: &self.tags,
             slopes: &mut slopes,
-            text,
+            text: &mut self.bytes,
         };
         emitter.emit();
+        text.push_str(&String::from_utf8_lossy(&self.bytes));
     }
 }

@@ -96,21 +96,23 @@ impl Parts {
         let arcs = graph.arcs(vertex);
         self.work += arcs.len() as u64;
         let cell_of = |to: u32| partition.cell[to as usize] as usize;
-        for &(to, class) in arcs {
+        // Most neighbours are settled and need no count.
+        let is_open = |&&(to, _): &&(u32, u8)| partition.is_open(to);
+        let open = arcs.iter().filter(is_open);
+        for &(to, class) in open.clone() {
             self.counts[cell_of(to)] += 1 << (COUNT_BITS * u32::from(class));
         }
         let own = cell_of(vertex);
-        for &(to, class) in arcs {
+        for &(to, class) in open.clone() {
             let cell = cell_of(to);
             let others = partition.len[cell] - u32::from(cell == own);
-            let open = partition.len[cell] > 1;
             let complete = others < 1 << COUNT_BITS
                 && self.counts[cell] == u64::from(others) << (COUNT_BITS * u32::from(class));
-            if open && !complete {
+            if !complete {
                 self.unite(vertex, to);
             }
         }
-        for &(to, _) in arcs {
+        for &(to, _) in open {
             self.counts[cell_of(to)] = 0;
         }
     }
