@@ -140,8 +140,6 @@ pub struct Writer {
     /// Per atom: the hydrogens that are written as atoms.
     shown: Vec<u8>,
     tags: Tags,
-    /// The text, which takes bytes in fewer steps than a string does.
-    bytes: Vec<u8>,
 }
 
 impl Writer {
@@ -157,7 +155,6 @@ impl Writer {
         let Written { text, lost } = written;
         text.clear();
         lost.clear();
-        self.bytes.clear();
         let structure = Structure::new(form, &mut self.arcs);
         self.layout.plan(&structure);
         let layout = &self.layout;
@@ -190,9 +187,8 @@ impl Writer {
             shown,
             tags: &self.tags,
             slopes: &mut slopes,
-            text: &mut self.bytes,
+            text,
         };
         emitter.emit();
-        text.push_str(&String::from_utf8_lossy(&self.bytes));
     }
 }

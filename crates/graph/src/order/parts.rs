@@ -96,23 +96,21 @@ impl Parts {
         let arcs = graph.arcs(vertex);
         self.work += arcs.len() as u64;
         let cell_of = |to: u32| partition.cell[to as usize] as usize;
-        // Most neighbours are settled and need no count.
-        let is_open = |&&(to, _): &&(u32, u8)| partition.is_open(to);
-        let open = arcs.iter().filter(is_open);
-        for &(to, class) in open.clone() {
+        for &(to, class) in arcs {
             self.counts[cell_of(to)] += 1 << (COUNT_BITS * u32::from(class));
         }
         let own = cell_of(vertex);
-        for &(to, class) in open.clone() {
+        for &(to, class) in arcs {
             let cell = cell_of(to);
             let others = partition.len[cell] - u32::from(cell == own);
+            let open = partition.len[cell] > 1;
             let complete = others < 1 << COUNT_BITS
                 && self.counts[cell] == u64::from(others) << (COUNT_BITS * u32::from(class));
-            if !complete {
+            if open && !complete {
                 self.unite(vertex, to);
             }
         }
-        for &(to, _) in open {
+        for &(to, _) in arcs {
             self.counts[cell_of(to)] = 0;
         }
     }

@@ -188,37 +188,48 @@ impl Refiner {
             let cell = first.cell();
             let rest = &keyed[from..];
             let same = |entry: &&Keyed| entry.cell() == cell;
-            let count = 1 + rest[1..].iter().take_while(same).count();
-            split |= if count == 1 {
-                self.split_off(first, partition, watch)
+            let group = &rest[..1 + rest[1..].iter().take_while(same).count()];
+            split |= if group[group.len() - 1].key() == first.key() {
+                self.split_off(cell, first.key(), group, partition, watch)
             } else {
-                self.split_cell(cell, &rest[..count], partition, watch)
+                self.split_cell(cell, group, partition, watch)
             };
-            from += count;
+            from += group.len();
         }
         self.keyed = keyed;
         split
     }
 
-    /// Splits one vertex off a cell that has others: what [`Self::split_cell`] does for a group of one,
-    /// as most are.
+    /// What [`Self::split_cell`] does, for a group of one key, as most are: often a single vertex.
     fn split_off(
         &mut self,
-        keyed: Keyed,
+        cell: u32,
+        key: u64,
+        group: &[Keyed],
         partition: &mut Partition,
         watch: &mut impl Watch,
     ) -> bool {
-        let (cell, key) = (keyed.cell(), keyed.key());
-        let part = partition.individualise(keyed.vertex());
-        let rest = part - cell;
+        let count = group.len() as u32;
+        let rest = partition.len[cell as usize] - count;
+        if rest == 0 {
+            watch.note(mix(key, u64::from(cell) << 32 | u64::from(count)));
+            return false;
+        }
+        let part = partition.split_off(cell, group.iter().map(|entry| entry.vertex()));
         watch.note(mix(0, u64::from(cell) << 32 | u64::from(rest)));
-        watch.note(mix(key, u64::from(part) << 32 | 1));
-        self.enqueue(part);
+        watch.note(mix(key, u64::from(part) << 32 | u64::from(count)));
+        // Of a cell that waits, the other part waits already.
+        let smaller = if count <= rest { part } else { cell };
+        self.enqueue(if self.queued[cell as usize] {
+            part
+        } else {
+            smaller
+        });
         true
     }
 
-    /// Splits a cell by the keys in `group` and queues the parts: all if the cell was waiting, else
-    /// all but the first of the largest (Hopcroft 1971).
+    /// Splits a cell by the keys in `group`, two or more, and queues the parts: all if the cell was
+    /// waiting, else all but the first of the largest (Hopcroft 1971).
     fn split_cell(
         &mut self,
         cell: u32,
@@ -228,17 +239,10 @@ impl Refiner {
     ) -> bool {
         self.parts.clear();
         let parts = &mut self.parts;
-        let split = partition.split(cell, group, |start, size, key| {
+        partition.split(cell, group, |start, size, key| {
             watch.note(mix(key, u64::from(start) << 32 | u64::from(size)));
             parts.push((size, start));
         });
-        if !split {
-            watch.note(mix(
-                group[0].key(),
-                u64::from(cell) << 32 | group.len() as u64,
-            ));
-            return false;
-        }
         let waiting = self.queued[cell as usize];
         let mut largest = self.parts[0];
         for &part in &self.parts {

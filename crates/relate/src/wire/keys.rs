@@ -95,7 +95,8 @@ impl KeyRows {
 
 impl KeyRow {
     fn begin(&mut self, source: &str, outcome: &RecordOutcome) {
-        set(&mut self.source, source);
+        self.source.clear();
+        self.source.push_str(source);
         self.record = outcome.index;
         self.name.clone_from(&outcome.name);
         self.status = "error";

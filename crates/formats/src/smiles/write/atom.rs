@@ -1,6 +1,6 @@
 //! One atom as text.
 
-use std::io::Write;
+use std::fmt::Write;
 
 use molkin_graph::{Element, FormAtom, Polyhedron};
 
@@ -27,7 +27,7 @@ pub(super) fn shown_hydrogens(atom: &FormAtom) -> u8 {
 /// `counted` are the hydrogens that are not atoms of their own in the text, `order_sum` the orders of
 /// all bonds that are, all as written.
 pub(super) fn write(
-    text: &mut Vec<u8>,
+    text: &mut String,
     atom: &FormAtom,
     counted: u8,
     order_sum: u32,
@@ -38,57 +38,55 @@ pub(super) fn write(
     if plain && counted_when_bare(atom.element, order_sum) == Some(counted) {
         // Nearly all symbols are one letter, and copying text of any length takes longer than that.
         match *symbol.as_bytes() {
-            [letter] => text.push(letter),
-            _ => text.extend_from_slice(symbol.as_bytes()),
+            [letter] => text.push(char::from(letter)),
+            _ => text.push_str(symbol),
         }
         return;
     }
-    text.push(b'[');
+    text.push('[');
     if let Some(isotope) = atom.isotope {
         push_number(text, u32::from(isotope));
     }
-    text.extend_from_slice(symbol.as_bytes());
+    text.push_str(symbol);
     if let Some(tag) = tag {
         write_tag(text, tag);
     }
     if counted > 0 {
-        text.push(b'H');
+        text.push('H');
     }
     if counted > 1 {
         push_number(text, u32::from(counted));
     }
     if atom.charge != 0 {
-        text.push(if atom.charge > 0 { b'+' } else { b'-' });
+        text.push(if atom.charge > 0 { '+' } else { '-' });
     }
     if atom.charge.unsigned_abs() > 1 {
         push_number(text, u32::from(atom.charge.unsigned_abs()));
     }
-    text.push(b']');
+    text.push(']');
 }
 
-fn write_tag(text: &mut Vec<u8>, StereoTag { class, number }: StereoTag) {
-    text.push(b'@');
+fn write_tag(text: &mut String, StereoTag { class, number }: StereoTag) {
+    text.push('@');
     let letters = match class {
         TagClass::Polyhedral(Polyhedron::SquarePlanar) => "SP",
         TagClass::Polyhedral(Polyhedron::TrigonalBipyramidal) => "TB",
         TagClass::Polyhedral(Polyhedron::Octahedral) => "OH",
         TagClass::Plain | TagClass::Tetrahedral | TagClass::Allene => {
-            if number > 1 {
-                text.push(b'@');
-            }
+            text.push_str(if number > 1 { "@" } else { "" });
             return;
         }
     };
-    text.extend_from_slice(letters.as_bytes());
+    text.push_str(letters);
     push_number(text, u32::from(number));
 }
 
 /// Writes a number in decimal digits.
-pub(super) fn push_number(text: &mut Vec<u8>, number: u32) {
-    if number < 10 {
-        text.push(b'0' + number as u8);
+pub(super) fn push_number(text: &mut String, number: u32) {
+    if let Some(digit) = char::from_digit(number, 10) {
+        text.push(digit);
     } else {
-        // Writing to a vector does not fail.
+        // Writing to a string does not fail.
         let _ = write!(text, "{number}");
     }
 }

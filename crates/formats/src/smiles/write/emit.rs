@@ -16,8 +16,7 @@ pub(super) struct Emitter<'a> {
     pub(super) shown: &'a [u8],
     pub(super) tags: &'a Tags,
     pub(super) slopes: &'a mut Slopes,
-    /// All of it is ASCII.
-    pub(super) text: &'a mut Vec<u8>,
+    pub(super) text: &'a mut String,
 }
 
 impl Emitter<'_> {
@@ -25,15 +24,15 @@ impl Emitter<'_> {
         let layout = self.layout;
         for (word, rings) in layout.words() {
             for _ in 0..word.closes {
-                self.text.push(b')');
+                self.text.push(')');
             }
             if word.opens {
-                self.text.push(b'(');
+                self.text.push('(');
             }
             match layout.parent(word.atom) {
                 Some(arc) => self.bond(arc),
                 None if self.text.is_empty() => {}
-                None => self.text.push(b'.'),
+                None => self.text.push('.'),
             }
             self.atom(word.atom, rings);
         }
@@ -62,35 +61,35 @@ impl Emitter<'_> {
         }
         match end.label {
             0..10 => {}
-            10..=LAST_LABEL => self.text.push(b'%'),
-            _ => self.text.extend_from_slice(b"%("),
+            10..=LAST_LABEL => self.text.push('%'),
+            _ => self.text.push_str("%("),
         }
         atom::push_number(self.text, end.label);
         if end.label > LAST_LABEL {
-            self.text.push(b')');
+            self.text.push(')');
         }
     }
 
     /// Writes one hydrogen as an atom; only the first one of an atom can have a slope.
     fn hydrogen(&mut self, host: u32, first: bool, branch: bool) {
         if branch {
-            self.text.push(b'(');
+            self.text.push('(');
         }
         if first {
             let slope = self.slopes.glyph(Carrier::Hydrogen(host));
             self.text.extend(slope);
         }
-        self.text.extend_from_slice(b"[H]");
+        self.text.push_str("[H]");
         if branch {
-            self.text.push(b')');
+            self.text.push(')');
         }
     }
 
     fn bond(&mut self, arc: Arc) {
         match arc.order {
-            2 => self.text.push(b'='),
-            3 => self.text.push(b'#'),
-            4 => self.text.push(b'$'),
+            2 => self.text.push('='),
+            3 => self.text.push('#'),
+            4 => self.text.push('$'),
             _ => {
                 if let Some(slope) = self.slopes.glyph(Carrier::Bond(arc.bond)) {
                     self.text.push(slope);

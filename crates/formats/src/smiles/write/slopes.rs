@@ -85,13 +85,13 @@ impl Slopes {
 
     /// The glyph of a bond, to be asked for in text order: of each set of slopes that depend on each
     /// other the first one is `/`.
-    pub(super) fn glyph(&mut self, carrier: Carrier) -> Option<u8> {
+    pub(super) fn glyph(&mut self, carrier: Carrier) -> Option<char> {
         if !self.is_raised(carrier) {
             return None;
         }
         let (root, odd) = self.forest.root(self.number(carrier) as u32);
         let turned = *self.turned[root as usize].get_or_insert(odd);
-        Some(if turned == odd { b'/' } else { b'\\' })
+        Some(if turned == odd { '/' } else { '\\' })
     }
 
     pub(super) fn is_raised(&self, carrier: Carrier) -> bool {
