@@ -12,6 +12,7 @@ mod kinds;
 pub mod mapping;
 mod relation;
 mod remarks;
+pub mod samples;
 mod structure;
 mod words;
 
