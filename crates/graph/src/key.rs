@@ -98,8 +98,16 @@ impl Key {
 
 impl fmt::Display for Key {
     fn fmt(&self, out: &mut fmt::Formatter<'_>) -> fmt::Result {
+        // In one piece: a formatter call for each byte would cost more than the hash.
+        const DIGITS: &[u8; 16] = b"0123456789abcdef";
+        let mut text = [0; 32];
+        for (digits, byte) in text.chunks_exact_mut(2).zip(self.0) {
+            for (digit, value) in digits.iter_mut().zip([byte >> 4, byte & 15]) {
+                *digit = DIGITS[usize::from(value)];
+            }
+        }
         write!(out, "{KEY_VERSION}-")?;
-        self.0.iter().try_for_each(|byte| write!(out, "{byte:02x}"))
+        out.write_str(str::from_utf8(&text).map_err(|_| fmt::Error)?)
     }
 }
 

@@ -61,36 +61,39 @@ impl Skeleton {
         self.fold(molecule);
         self.atoms.clear();
         self.home.clear();
-        self.home.resize(molecule.atom_count(), NO_ATOM);
-        for (index, atom) in molecule.atoms().enumerate() {
-            if self.folded[index].is_some() {
+        for ((source, atom), folded) in (0..).zip(molecule.atoms()).zip(&self.folded) {
+            if folded.is_some() {
+                self.home.push(NO_ATOM);
                 continue;
             }
-            self.home[index] = self.atoms.len() as u32;
+            self.home.push(self.atoms.len() as u32);
             self.atoms.push(SkeletonAtom {
                 element: atom.element,
                 isotope: atom.isotope,
                 hydrogens: atom.hydrogens,
                 labelled: 0,
                 charge: atom.charge,
-                source: index as u32,
+                source,
             });
         }
         self.bonds.clear();
-        for (a, b, order) in molecule.bonds() {
+        self.ring.clear();
+        for ((a, b, order), &ring) in molecule.bonds().zip(&molecule.ring) {
             match (self.folded[a as usize], self.folded[b as usize]) {
                 (Some(mass), _) => self.absorb(mass, a, b),
                 (_, Some(mass)) => self.absorb(mass, b, a),
-                _ => self.bonds.push(SkeletonBond {
-                    a: self.home[a as usize],
-                    b: self.home[b as usize],
-                    order: order.class(),
-                }),
+                _ => {
+                    self.bonds.push(SkeletonBond {
+                        a: self.home[a as usize],
+                        b: self.home[b as usize],
+                        order: order.class(),
+                    });
+                    self.ring.push(ring);
+                }
             }
         }
         let ends = self.bonds.iter().map(|bond| (bond.a, bond.b));
         self.adjacency.load(self.atoms.len(), ends);
-        self.adjacency.ring_bonds(self.bonds.len(), &mut self.ring);
     }
 
     /// Decides which hydrogen atoms fold: neutral, one single bond, and few enough on their

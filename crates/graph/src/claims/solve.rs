@@ -326,7 +326,7 @@ impl Solver<'_> {
 }
 
 impl Claims {
-    fn clear(&mut self) {
+    pub(crate) fn clear(&mut self) {
         self.free.clear();
         self.assignments.clear();
         self.certificates.clear();
