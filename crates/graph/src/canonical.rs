@@ -17,7 +17,7 @@ use thiserror::Error;
 
 use crate::{
     Key, Limits, Molecule,
-    claims::{self, Claims, Solver, Variable},
+    claims::{self, Claims, Extent, Solver, Variable},
     key::{Digester, Named},
     mesomer::{self, Mesomer},
     order::{Coloured, Labeller, Labelling, Unit},
@@ -163,7 +163,20 @@ impl Orderer {
         molecule: &Molecule,
         view: &mut Canonical,
     ) -> Result<(), OrderError> {
-        let mut steps = self.order_constitution(molecule, view)?;
+        let steps = self.order_constitution(molecule, view)?;
+        self.order_stereo(molecule, view, steps, Extent::All)?;
+        self.set_keys(view);
+        Ok(())
+    }
+
+    /// Finds the stereo elements, the claims and the order with them.
+    fn order_stereo(
+        &mut self,
+        molecule: &Molecule,
+        view: &mut Canonical,
+        mut steps: u64,
+        extent: Extent,
+    ) -> Result<(), OrderError> {
         view.has_marks = true;
         let bare = if view.has_isotopes {
             &view.isotopic
@@ -173,8 +186,10 @@ impl Orderer {
         let scratch = &mut self.stereo;
         view.perception
             .load(&view.skeleton, &view.mesomer, molecule, scratch);
-        view.perception
-            .keep_unequal_axes(&view.skeleton, &bare.generators);
+        if extent == Extent::All {
+            view.perception
+                .find_undrawable(&view.skeleton, &view.mesomer, &bare.generators);
+        }
         claims::list_variables(&view.perception, &mut view.variables);
         // Arrangements about metals are given, not open: they are part of the graph whose
         // automorphisms relate the other elements.
@@ -201,11 +216,10 @@ impl Orderer {
             claims::of_groups(&view.skeleton, &view.perception, &view.variables, molecule)?;
         let (claims, written) = (&mut view.claims, &mut view.marked);
         if groups.is_empty() {
-            solver.solve(bare, &mut self.claims, claims, written)?;
+            solver.solve(bare, extent, &mut self.claims, claims, written)?;
         } else {
             solver.solve_groups(bare, groups, claims, written)?;
         }
-        self.set_keys(view);
         Ok(())
     }
 
@@ -243,7 +257,7 @@ impl Orderer {
     fn set_keys(&mut self, view: &mut Canonical) {
         let digester = &mut self.digester;
         let own = &view.constitution.certificate;
-        let constitution = digester.digest(own);
+        let constitution = digester.first(own);
         view.constitution_key = Key::of(Named::Constitution, std::iter::once(constitution));
         // Most records have neither isotopes nor stereo: one certificate serves both keys.
         let mut digest = |certificate: &[u64]| {
@@ -251,7 +265,7 @@ impl Orderer {
             if known {
                 constitution
             } else {
-                digester.digest(certificate)
+                digester.digest(certificate, own)
             }
         };
         view.compound_key = if view.has_marks {

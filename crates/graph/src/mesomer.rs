@@ -24,10 +24,10 @@ mod tests;
 use crate::{Limits, OrderError, matching::Matching, skeleton::Skeleton};
 
 pub(crate) use first::First;
-pub(crate) use octet::separate;
+pub(crate) use octet::{Scratch as OctetScratch, separate};
 use placement::System;
 use plain::Pairs;
-use shift::Shift;
+use shift::{Shift, Shifting};
 pub(crate) use valence::neutral as neutral_valence;
 use valence::{Drawn, Valence};
 
@@ -57,14 +57,14 @@ pub(crate) struct Mesomer {
     /// not settle.
     systems: Vec<System>,
     /// The mobile bonds outside of them.
-    shifting: Vec<u32>,
+    shifting: Shifting,
 }
 
 /// Scratch that is reused from one molecule to the next.
 #[derive(Debug, Default)]
 pub(crate) struct Scratch {
     pairs: Vec<Pairs>,
-    over_full: Vec<bool>,
+    octet: octet::Scratch,
     drawn: Vec<Drawn>,
     valences: Vec<Valence>,
     /// Per atom: in one of the systems with charges or open valences.
@@ -117,7 +117,7 @@ impl Mesomer {
     ) -> Result<(), OrderError> {
         let Scratch {
             pairs,
-            over_full,
+            octet,
             drawn,
             valences,
             in_system,
@@ -137,7 +137,7 @@ impl Mesomer {
             let (orders, shifting) = (&mut self.orders, &mut self.shifting);
             return shift.mark(skeleton, takes_part, matching, limits, orders, shifting);
         }
-        octet::separate(skeleton, over_full);
+        octet::separate(skeleton, octet);
         self.take_orders(skeleton);
         valence::load(valences, drawn, skeleton);
         let atoms = skeleton.atoms.iter().zip(valences.iter());

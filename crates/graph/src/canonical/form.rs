@@ -1,8 +1,7 @@
 //! The canonical form: the molecule as canonical text writes it, numbered in canonical order.
 
 use crate::{
-    Canonical, DrawnCoordination, Element, GroupKind, Ligand, Orderer, Parity, Shape,
-    claims::Status, stereo::slot,
+    Canonical, DrawnCoordination, Element, GroupKind, Ligand, Orderer, Parity, Shape, stereo::slot,
 };
 
 use super::placement::Placed;
@@ -149,14 +148,16 @@ impl Canonical {
             while let Some(own) = labelled.next_if(|own| own.host == host) {
                 form.bonds.push((host, own.atom, 1));
             }
-            form.bonds[from..].sort_unstable();
+            if form.bonds.len() > from + 1 {
+                form.bonds[from..].sort_unstable();
+            }
         }
     }
 
     fn list_marked_mobile_bonds(&self, marked: &mut Vec<u32>) {
-        let places = self.variables.iter().zip(&self.claims.statuses);
+        let places = self.variables.iter().zip(&self.claims.shown);
         let bonds = places
-            .filter(|(variable, status)| variable.quiet && **status == Status::Marked)
+            .filter(|(variable, shown)| variable.quiet && shown.is_some())
             .flat_map(|(variable, _)| &variable.members)
             .filter_map(|&(index, _)| {
                 let [a, b] = self.perception.candidates[index].centres;

@@ -1,12 +1,12 @@
 //! The part of a canonical view that says which compound a record is.
 
-use crate::{Canonical, CanonicalForm, Key, Molecule, OrderError, Orderer};
+use crate::{Canonical, CanonicalForm, Key, Molecule, OrderError, Orderer, claims::Extent};
 
 /// Keys and canonical form of a molecule, without the list of its stereo elements.
 ///
 /// A record without marks allows every arrangement of every element, so its constitution with isotopes
-/// says which set of stereoisomers it stands for. Which places are stereogenic, what [`Canonical`]
-/// answers, is not asked then; that is a fifth of the work. Keys and form are those of [`Canonical`].
+/// says which set of stereoisomers it stands for, and nothing is asked about its elements. In other
+/// records it is not asked what becomes of the unmarked ones. Keys and form are those of [`Canonical`].
 ///
 /// # Examples
 /// ```
@@ -26,7 +26,7 @@ use crate::{Canonical, CanonicalForm, Key, Molecule, OrderError, Orderer};
 /// ```
 #[derive(Debug, Clone, Default)]
 pub struct Identity {
-    /// Where the record has no marks, all about its stereo elements is missing.
+    /// Without what is not asked for.
     view: Canonical,
 }
 
@@ -53,13 +53,14 @@ impl Orderer {
         molecule: &Molecule,
         identity: &mut Identity,
     ) -> Result<(), OrderError> {
+        let view = &mut identity.view;
+        let steps = self.order_constitution(molecule, view)?;
         let marked = molecule.stereo.iter().any(|mark| mark.parity.is_some());
         if marked || !molecule.coordination.is_empty() || !molecule.groups.is_empty() {
-            return self.order_into(molecule, &mut identity.view);
+            self.order_stereo(molecule, view, steps, Extent::Identity)?;
+        } else {
+            view.forget_stereo();
         }
-        let view = &mut identity.view;
-        self.order_constitution(molecule, view)?;
-        view.forget_stereo();
         self.set_keys(view);
         Ok(())
     }
