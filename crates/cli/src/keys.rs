@@ -55,7 +55,7 @@ impl Work for Rows<'_> {
     fn run(&self, scratch: &mut Scratch, event: Event<RawRecord>) -> Event<Written> {
         event.map(|source, raw| {
             scratch.parser.parse_into(raw, &mut scratch.outcome);
-            let row = scratch.rows.row(source, &mut scratch.outcome);
+            let row = scratch.rows.row(source, &scratch.outcome);
             let fine = row.status == "ok";
             let text = scratch.table.row(row);
             Written { text, fine }

@@ -36,8 +36,7 @@ pub struct Formula {
 impl Formula {
     /// Counts elements that come in any order and any number of times; counts of 0 add nothing.
     ///
-    /// Linear in the items, times the logarithm of the number of distinct elements. A count stays at
-    /// `u32::MAX` once there.
+    /// Linear in the items. A count stays at `u32::MAX` once there.
     #[must_use]
     pub fn new(counts: impl IntoIterator<Item = (Element, u32)>, charge: i32) -> Formula {
         let mut formula = Formula::default();
@@ -48,10 +47,22 @@ impl Formula {
     /// As [`Formula::new`], but puts the result in place of this formula and keeps its memory, so that
     /// counting many molecules allocates once.
     pub fn refill(&mut self, counts: impl IntoIterator<Item = (Element, u32)>, charge: i32) {
-        self.counts.clear();
+        // One place for each element, so that none has to be looked for, and one bit for each that
+        // occurs.
+        let mut totals = [0u32; Element::COUNT];
+        let mut occurring = 0u128;
+        counts.into_iter().for_each(|(element, count)| {
+            let total = &mut totals[usize::from(element.number())];
+            *total = total.saturating_add(count);
+            occurring |= u128::from(count > 0) << element.number();
+        });
         self.charge = charge;
-        for (element, count) in counts {
-            self.add(element, count);
+        self.counts.clear();
+        while occurring != 0 {
+            let number = occurring.trailing_zeros() as u8;
+            occurring &= occurring - 1;
+            let element = Element::from_number(number).unwrap_or(Element::WILDCARD);
+            self.counts.push((element, totals[usize::from(number)]));
         }
     }
 
@@ -73,29 +84,14 @@ impl Formula {
     pub const fn charge(&self) -> i32 {
         self.charge
     }
-
-    fn add(&mut self, element: Element, count: u32) {
-        if count == 0 {
-            return;
-        }
-        match self
-            .counts
-            .binary_search_by_key(&element, |&(other, _)| other)
-        {
-            Ok(place) => {
-                if let Some((_, total)) = self.counts.get_mut(place) {
-                    *total = total.saturating_add(count);
-                }
-            }
-            Err(place) => self.counts.insert(place, (element, count)),
-        }
-    }
 }
 
 impl fmt::Display for Formula {
     fn fmt(&self, formatter: &mut fmt::Formatter<'_>) -> fmt::Result {
         let organic = self.count(Element::CARBON) > 0;
-        let mut order: Vec<_> = self.iter().collect();
+        let mut order = [(Element::WILDCARD, 0); Element::COUNT];
+        let order = &mut order[..self.counts.len()];
+        order.copy_from_slice(&self.counts);
         order.sort_unstable_by_key(|&(element, _)| {
             let place = match element {
                 Element::CARBON if organic => 0,
@@ -105,7 +101,7 @@ impl fmt::Display for Formula {
             };
             (place, element.symbol())
         });
-        for (element, count) in order {
+        for &mut (element, count) in order {
             formatter.write_str(element.symbol())?;
             if count != 1 {
                 write!(formatter, "{count}")?;

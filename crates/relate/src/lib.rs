@@ -28,5 +28,5 @@ pub use crate::{
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},
     relation::{Relation, StereoKind, Verdict, relate},
-    structure::{PrepareError, Preparer, Structure},
+    structure::{PrepareError, Structure},
 };
