@@ -52,7 +52,11 @@ impl<'a> Meaning<'a> {
 
 /// What the arguments ask of the readers.
 pub(crate) fn read_options(reading: &Reading) -> ReadOptions {
-    let mut options = ReadOptions::default();
+    let mut options = ReadOptions {
+        // No output has them.
+        without_properties: true,
+        ..ReadOptions::default()
+    };
     options.smiles.strict = reading.strict;
     options.molfile.valences = match reading.valences {
         Valences::Early => ValenceTable::Early,
@@ -161,16 +165,32 @@ impl Input {
     }
 
     fn read(&mut self) -> Option<RawRecord> {
+        let mut record = RawRecord::default();
+        self.read_into(&mut record).then_some(record)
+    }
+
+    fn read_into(&mut self, record: &mut RawRecord) -> bool {
         if self.ended {
-            return None;
+            return false;
         }
-        match self.records.cut() {
-            Some(Ok(record)) => return Some(record),
-            Some(Err(failure)) => self.failure = Some(failure),
-            None => {}
+        match self.records.cut_into(record) {
+            Ok(true) => return true,
+            Ok(false) => {}
+            Err(failure) => self.failure = Some(failure),
         }
         self.ended = true;
-        None
+        false
+    }
+
+    /// As the iterator, in place of a record that is done with; false where there is no other.
+    pub(crate) fn next_into(&mut self, record: &mut RawRecord) -> bool {
+        match self.ahead.pop_front() {
+            Some(next) => {
+                *record = next;
+                true
+            }
+            None => self.read_into(record),
+        }
     }
 }
 

@@ -160,8 +160,12 @@ pub(crate) fn title(raw: &RawText) -> String {
     line.map_or_else(String::new, |line| decode(line.text.trim_ascii()))
 }
 
-/// Parses a record that has been cut out.
-pub(crate) fn parse(raw: &mut RawText, options: &ReadOptions) -> Result<Record, ReadError> {
+/// Parses a record that has been cut out, with its `properties` or without.
+pub(crate) fn parse(
+    raw: &mut RawText,
+    options: &ReadOptions,
+    properties: bool,
+) -> Result<Record, ReadError> {
     if let Some(fault) = raw.fault.take() {
         return Err(fault);
     }
@@ -169,7 +173,7 @@ pub(crate) fn parse(raw: &mut RawText, options: &ReadOptions) -> Result<Record, 
     let mut lines = block.lines();
     let mut record =
         molfile::read(&mut lines, options, raw.text.len()).map_err(|fault| block.error(fault))?;
-    data::read(&mut lines, &mut record);
+    data::read(&mut lines, &mut record, properties);
     Ok(record)
 }
 
@@ -179,7 +183,7 @@ impl<R: BufRead> Iterator for Records<R> {
     fn next(&mut self) -> Option<Self::Item> {
         let mut raw = std::mem::take(&mut self.raw);
         let outcome = match self.cut(&mut raw) {
-            Ok(true) => Some(parse(&mut raw, &self.options)),
+            Ok(true) => Some(parse(&mut raw, &self.options, true)),
             Ok(false) => None,
             Err(failure) => Some(Err(failure)),
         };

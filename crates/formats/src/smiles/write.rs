@@ -23,7 +23,7 @@ mod tests;
 use molkin_graph::{BondOrder, CanonicalForm, Polyhedron, Shape};
 
 use self::{
-    emit::{Emitter, Step},
+    emit::Emitter,
     layout::Layout,
     slopes::Slopes,
     structure::{ArcTable, Structure},
@@ -138,7 +138,6 @@ pub struct Writer {
     /// Per atom: the hydrogens that are written as atoms.
     shown: Vec<u8>,
     tags: Tags,
-    steps: Vec<Step>,
 }
 
 impl Writer {
@@ -185,7 +184,6 @@ impl Writer {
             shown,
             tags: &self.tags,
             slopes: &mut slopes,
-            steps: &mut self.steps,
             text,
         };
         emitter.emit();

@@ -37,7 +37,7 @@ pub(crate) struct Partition {
     /// undone by joining it to what precedes it.
     log: Vec<(u32, u32)>,
     /// Scratch: colours with their vertices.
-    coloured: Vec<(u64, u32)>,
+    coloured: Vec<u64>,
 }
 
 impl Clone for Partition {
@@ -61,10 +61,7 @@ impl Clone for Partition {
 impl Partition {
     /// Starts with all vertices, ordered by colour, equal colours in one cell.
     pub(super) fn load(&mut self, colours: &[u64]) {
-        self.coloured.clear();
-        self.coloured.extend(colours.iter().copied().zip(0..));
-        self.coloured.sort_unstable();
-        self.lab.clear();
+        self.sort_by_colour(colours);
         for table in [&mut self.pos, &mut self.cell] {
             table.resize(colours.len(), 0);
         }
@@ -73,16 +70,37 @@ impl Partition {
         self.cells = 0;
         self.log.clear();
         let (mut start, mut before) = (0, None);
-        for (at, &(colour, vertex)) in self.coloured.iter().enumerate() {
+        for (at, &vertex) in self.lab.iter().enumerate() {
+            let colour = colours[vertex as usize];
             if before != Some(colour) {
                 (start, before) = (at, Some(colour));
                 self.cells += 1;
             }
-            self.lab.push(vertex);
             self.pos[vertex as usize] = at as u32;
             self.cell[vertex as usize] = start as u32;
             self.len[start] += 1;
         }
+    }
+
+    /// Lists the vertices by colour. Where both fit, colour and vertex are sorted as one word, which takes
+    /// half the time that it takes to sort pairs.
+    fn sort_by_colour(&mut self, colours: &[u64]) {
+        self.lab.clear();
+        let bits = usize::BITS - colours.len().leading_zeros();
+        let used = colours.iter().fold(0, |used, colour| used | colour);
+        if used.leading_zeros() < bits {
+            self.lab.extend(0..colours.len() as u32);
+            self.lab
+                .sort_unstable_by_key(|&vertex| (colours[vertex as usize], vertex));
+            return;
+        }
+        self.coloured.clear();
+        let words = colours.iter().zip(0..);
+        self.coloured
+            .extend(words.map(|(&colour, vertex)| colour << bits | vertex));
+        self.coloured.sort_unstable();
+        let vertex = |&word: &u64| (word & ((1 << bits) - 1)) as u32;
+        self.lab.extend(self.coloured.iter().map(vertex));
     }
 
     /// Whether every cell has one vertex.

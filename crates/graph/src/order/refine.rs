@@ -18,7 +18,6 @@ pub(super) struct Refiner {
     /// The touched vertices that share their cells.
     keyed: Vec<Keyed>,
     parts: Vec<(u32, u32)>,
-    splitter: Vec<u32>,
     /// Centres of units: what the unit is, the cell of the other centre, the centre.
     oriented: Vec<(u32, u32, u32)>,
     /// Edges and units looked at since it was last taken.
@@ -88,14 +87,12 @@ impl Refiner {
             if partition.is_discrete() {
                 break;
             }
-            self.splitter.clear();
-            self.splitter.extend_from_slice(partition.members(start));
             watch.note(start.into());
             self.keyed.clear();
-            let alone = if let [only] = self.splitter[..] {
+            let alone = if let [only] = *partition.members(start) {
                 self.key_neighbours::<W>(graph, partition, only)
             } else {
-                self.touch::<W>(graph, partition);
+                self.touch::<W>(graph, partition, start);
                 self.key_touched(partition)
             };
             watch.note(alone);
@@ -115,10 +112,10 @@ impl Refiner {
         true
     }
 
-    /// Counts, for each vertex next to the splitter, its edges into it by class. Vertices in cells of
-    /// their own matter only to one who listens.
-    fn touch<W: Watch>(&mut self, graph: &Coloured, partition: &Partition) {
-        for &from in &self.splitter {
+    /// Counts, for each vertex next to a cell, its edges into it by class. Vertices in cells of their
+    /// own matter only to one who listens.
+    fn touch<W: Watch>(&mut self, graph: &Coloured, partition: &Partition, splitter: u32) {
+        for &from in partition.members(splitter) {
             let arcs = graph.arcs(from);
             self.work += arcs.len() as u64;
             for &(to, class) in arcs {
@@ -187,15 +184,37 @@ impl Refiner {
         }
         let mut split = false;
         let mut from = 0;
-        while let Some(first) = keyed.get(from) {
+        while let Some(&first) = keyed.get(from) {
             let cell = first.cell();
             let rest = &keyed[from..];
-            let count = rest.iter().take_while(|entry| entry.cell() == cell).count();
-            split |= self.split_cell(cell, &rest[..count], partition, watch);
+            let same = |entry: &&Keyed| entry.cell() == cell;
+            let count = 1 + rest[1..].iter().take_while(same).count();
+            split |= if count == 1 {
+                self.split_off(first, partition, watch)
+            } else {
+                self.split_cell(cell, &rest[..count], partition, watch)
+            };
             from += count;
         }
         self.keyed = keyed;
         split
+    }
+
+    /// Splits one vertex off a cell that has others: what [`Self::split_cell`] does for a group of one,
+    /// as most are.
+    fn split_off(
+        &mut self,
+        keyed: Keyed,
+        partition: &mut Partition,
+        watch: &mut impl Watch,
+    ) -> bool {
+        let (cell, key) = (keyed.cell(), keyed.key());
+        let part = partition.individualise(keyed.vertex());
+        let rest = part - cell;
+        watch.note(mix(0, u64::from(cell) << 32 | u64::from(rest)));
+        watch.note(mix(key, u64::from(part) << 32 | 1));
+        self.enqueue(part);
+        true
     }
 
     /// Splits a cell by the keys in `group` and queues the parts: all if the cell was waiting, else
