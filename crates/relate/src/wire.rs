@@ -3,6 +3,7 @@
 //! Atoms count from 1 here, in input order. Fields that do not apply are absent.
 
 mod describe;
+mod findings;
 mod keys;
 mod pair;
 mod prepared;
@@ -14,6 +15,7 @@ use serde::Serialize;
 use crate::remarks::Noted;
 
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
+pub use findings::{Finding, FoundGroup};
 pub use keys::{KeyRow, KeyRows};
 pub use pair::{
     BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair, StereoEntry,
