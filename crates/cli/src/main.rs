@@ -12,6 +12,7 @@ mod progress;
 mod records;
 mod report;
 mod run;
+mod samples;
 
 use std::process::ExitCode;
 

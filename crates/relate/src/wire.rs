@@ -6,6 +6,7 @@ mod describe;
 mod keys;
 mod pair;
 mod prepared;
+mod samples;
 
 use molkin_formats::{Note as ReadNote, ReadError};
 use molkin_graph::Molecule;
@@ -20,6 +21,10 @@ pub use pair::{
     compare,
 };
 pub use prepared::Prepared;
+pub use samples::{
+    CAUTION, ExpectedMass, FormulaEntry, HypothesisEntry, MassEntry, SampleEntry, SampleName,
+    SampleRow, Tray, VerdictCount,
+};
 
 /// The version of the contract.
 pub const VERSION: u32 = 1;
@@ -124,7 +129,8 @@ impl From<&ReadError> for Error {
 }
 
 impl Error {
-    fn without_place(code: &str, message: String) -> Self {
+    /// An error that no place of a source shows.
+    pub fn without_place(code: &str, message: String) -> Self {
         Self {
             input: None,
             line: None,

@@ -7,6 +7,7 @@ use std::{
 
 use csv::{Terminator, Writer, WriterBuilder};
 use molkin_relate::wire::KeyRow;
+use serde::Serialize;
 
 /// The columns of `molkin keys`: the fields of [`KeyRow`]. New ones go to the end.
 const COLUMNS: [&str; 9] = [
@@ -20,6 +21,49 @@ const COLUMNS: [&str; 9] = [
     "compound_key",
     "message",
 ];
+
+/// The columns of `molkin samples`: the fields of [`molkin_relate::wire::SampleRow`]. New ones go to the
+/// end.
+pub(crate) const SAMPLE_COLUMNS: [&str; 21] = [
+    "line",
+    "id",
+    "plate",
+    "well",
+    "verdict",
+    "flagged",
+    "relation",
+    "kind",
+    "same_apart_from",
+    "label_smiles",
+    "received_smiles",
+    "mz",
+    "adduct",
+    "mz_expected",
+    "ppm",
+    "mz_fits",
+    "formula_fits",
+    "hypotheses",
+    "sentence",
+    "remark",
+    "message",
+];
+
+/// Writes a header and rows.
+pub(crate) fn write_rows(
+    out: &mut impl Write,
+    columns: &[&str],
+    rows: impl Iterator<Item = impl Serialize>,
+) -> io::Result<()> {
+    let mut writer = WriterBuilder::new()
+        .terminator(Terminator::Any(b'\n'))
+        .has_headers(false)
+        .from_writer(out);
+    writer.write_record(columns)?;
+    for row in rows {
+        writer.serialize(row)?;
+    }
+    writer.flush()
+}
 
 /// Writes rows, each on its own.
 pub(crate) struct Table {

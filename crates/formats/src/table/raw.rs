@@ -109,14 +109,7 @@ impl RawRow {
         let Some((field, value)) = self.row.field(self.header.structure) else {
             return Ok(Record::default());
         };
-        // Blank lines in front belong to a molfile.
-        let (text, outcome) = if is_molfile(value) {
-            (value, molfile::parse_with(value, options))
-        } else {
-            let text = value.trim_ascii_start();
-            (text, reader.read(text.trim_ascii_end(), 1))
-        };
-        let blanks = value.len() - text.len();
+        let (blanks, outcome) = parse_value(value, reader, options);
         let moved = |span: Span| field.place(span, blanks);
         match outcome {
             Ok(mut record) => {
@@ -141,6 +134,49 @@ impl RawRow {
 /// Whether a value of several lines is a molfile: one of its first lines states a version, or it
 /// has an end. Not just the fourth line, so that one whose first line is lost is an error with that
 /// reason.
+/// Reads the value of a field, a molfile or a SMILES, and tells how many blanks stand before it.
+fn parse_value(
+    value: &[u8],
+    reader: &mut smiles::Reader,
+    options: &molfile::ReadOptions,
+) -> (usize, Result<Record, ReadError>) {
+    // Blank lines in front belong to a molfile.
+    if is_molfile(value) {
+        return (0, molfile::parse_with(value, options));
+    }
+    let text = value.trim_ascii_start();
+    let outcome = reader.read(text.trim_ascii_end(), 1);
+    (value.len() - text.len(), outcome)
+}
+
+/// Reads a structure from a field of a [`super::Sheet`]: a molfile or a SMILES. `line` is that of the
+/// field; columns count within it.
+///
+/// # Errors
+/// [`ReadError`] if it is neither.
+pub fn parse_field(
+    value: &str,
+    line: u32,
+    reader: &mut smiles::Reader,
+    options: &molfile::ReadOptions,
+) -> Result<Record, ReadError> {
+    let (blanks, outcome) = parse_value(value.as_bytes(), reader, options);
+    let moved = |span: Span| Span {
+        line: span.line.saturating_add(line.saturating_sub(1)),
+        column: match span.line {
+            1 => span.column.saturating_add(blanks as u32),
+            _ => span.column,
+        },
+        ..span
+    };
+    let line_at = |wanted: u32| {
+        let ahead = wanted.saturating_sub(line) as usize;
+        let mut lines = value.as_bytes().split(|&byte| byte == b'\n');
+        lines.nth(ahead).unwrap_or_default()
+    };
+    outcome.map_err(|error| error.moved(moved, line_at))
+}
+
 fn is_molfile(value: &[u8]) -> bool {
     let lines = || Block::new(value, 1).lines();
     value.contains(&b'\n')
