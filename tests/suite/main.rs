@@ -41,3 +41,4 @@ mod samples;
 mod smiles;
 mod stability;
 mod symmetry;
+mod trays;
