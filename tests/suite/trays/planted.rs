@@ -337,6 +337,12 @@ impl Maker<'_> {
             return self.add(Sort::Foreign);
         }
         let sample = samples[self.numbers.below(samples.len())];
+        for fault in &mut self.faults {
+            // It has no part in what the others still have in common.
+            if fault.sort == Sort::SeveralLabels {
+                fault.samples.retain(|&other| other != sample);
+            }
+        }
         let held = self.held[sample].compound();
         self.held[sample] = match self.pool.compounds[held].mirror {
             Some(_) => Held::Mirror(held),

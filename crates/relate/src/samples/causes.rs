@@ -107,12 +107,13 @@ pub struct Hypothesis {
     /// The samples whose disagreement it explains, by place in the tray; those of a swap, a cycle or a
     /// shift in the order in which compounds moved.
     pub explains: Vec<usize>,
-    /// Samples that have part in it and do not disagree, or whose content nobody knows.
+    /// Samples that have part in it otherwise: they do not disagree, nobody knows what they hold, or what
+    /// they hold is on no label.
     pub involves: Vec<usize>,
     /// What speaks for it.
     pub evidence: Evidence,
     /// How much of what it predicts the records bear out, from 0 to 1: the mean over the samples that it
-    /// explains, and those involved whose content nobody knows, of 1 where what came is the compound
+    /// explains, and those that it would but for what is not known, of 1 where what came is the compound
     /// predicted, 1/2 where it is that but for stereo or form, 1/k by mass alone where k compounds on the
     /// tray have that mass, and 0 where nothing is known. Where n samples of one kind could each have
     /// had the part, it is divided by n.
@@ -153,10 +154,10 @@ pub fn causes(tray: &[(Sample, Judgement)]) -> Vec<Hypothesis> {
             .filter(|edge| !explained.contains(&edge.sample))
             .collect();
         for chain in exchange::chains(&rest) {
-            let unseen = holdings.unseen(level, chain.end);
-            if !unseen.is_empty() {
+            let ends = holdings.bereft(level, chain.end);
+            if !ends.is_empty() {
                 explained.extend(&chain.samples);
-                found.push(half_seen(&holdings, level, chain.samples, unseen));
+                found.push(half_seen(&holdings, level, chain.samples, ends));
             }
         }
     }
@@ -176,6 +177,7 @@ pub fn causes(tray: &[(Sample, Judgement)]) -> Vec<Hypothesis> {
     found.extend(plate::neighbours(&holdings, left));
     found.extend(shared::several_labels(&holdings, left));
     found.extend(shared::several_structures(&holdings, left));
+    found.extend(shared::one_mass(&holdings, left));
     finish(tray, &holdings, found)
 }
 
@@ -224,12 +226,13 @@ fn of_exchange(holdings: &Holdings<'_>, level: Level, exchange: Exchange) -> Hyp
     }
 }
 
-/// A walk that would close if a sample of which nothing is known held the compound that is missing.
+/// A walk that would close if a sample of which nothing is known held the compound that is missing, or
+/// one whose content is on no label had held it.
 fn half_seen(
     holdings: &Holdings<'_>,
     level: Level,
     samples: Vec<usize>,
-    unseen: Vec<usize>,
+    ends: Vec<usize>,
 ) -> Hypothesis {
     let cause = match samples.len() {
         1 => Cause::Swap,
@@ -241,9 +244,9 @@ fn half_seen(
     let mean = strengths.sum::<f64>() / (samples.len() + 1) as f64;
     Hypothesis {
         evidence: holdings.evidence(level, &samples),
-        score: mean / unseen.len() as f64,
-        is_ambiguous: unseen.len() > 1,
-        involves: unseen,
+        score: mean / ends.len() as f64,
+        is_ambiguous: ends.len() > 1,
+        involves: ends,
         ..Hypothesis::new(cause, samples)
     }
 }
@@ -274,7 +277,7 @@ fn finish(
         let others: BTreeSet<usize> = others.copied().filter(|&other| other != number).collect();
         hypothesis.alternatives = others.into_iter().collect();
         hypothesis.analyses = holdings.analyses(&hypothesis.explains);
-        hypothesis.sentence = sentences::of_hypothesis(tray, hypothesis);
+        hypothesis.sentence = sentences::of_hypothesis(tray, holdings, hypothesis);
     }
     found
 }

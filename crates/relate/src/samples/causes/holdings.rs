@@ -61,6 +61,8 @@ pub(super) struct Holding {
     /// The content is seen not to be what the label says.
     pub(super) differs: bool,
     pub(super) seat: Option<(u32, Well)>,
+    /// The measured mass of the molecule, where the ion is known, and how far it may be off.
+    mass: Option<(f64, f64)>,
 }
 
 /// The samples of a tray.
@@ -100,6 +102,7 @@ impl<'t> Holdings<'t> {
                     content: content(sample, judgement, received, &index),
                     differs: label.is_some() && differs(judgement.verdict),
                     seat: Well::parse(&sample.well).map(|well| (plate, well)),
+                    mass: sample.measurement.as_ref().and_then(mass),
                 }
             })
             .collect();
@@ -207,11 +210,35 @@ impl<'t> Holdings<'t> {
         })
     }
 
-    /// Samples labelled so of whose content nothing is known.
-    pub(super) fn unseen(&self, level: Level, vertex: u32) -> Vec<usize> {
+    /// Samples labelled so that may have lost their compound: nothing is known of their content, or it is
+    /// on no label.
+    pub(super) fn bereft(&self, level: Level, vertex: u32) -> Vec<usize> {
         let samples = self.labelled(level, vertex).unwrap_or_default().iter();
-        let unseen = samples.filter(|&&at| self.samples[at].content == Content::Unknown);
-        unseen.copied().collect()
+        let bereft = samples.filter(|&&at| {
+            let holding = &self.samples[at];
+            holding.content == Content::Unknown
+                || holding.differs && self.content_at(level, at).is_none()
+        });
+        bereft.copied().collect()
+    }
+
+    /// Whether nothing is known of the content of a sample.
+    pub(super) fn is_unseen(&self, sample: usize) -> bool {
+        self.samples[sample].content == Content::Unknown
+    }
+
+    /// The mass of what a sample holds that no label has, and how far it may be off.
+    pub(super) fn foreign_mass(&self, sample: usize) -> Option<(f64, f64)> {
+        match &self.samples[sample].content {
+            Content::ByMass(formulae) if formulae.is_empty() => self.samples[sample].mass,
+            Content::Known(compound) => {
+                let compound = &self.compounds[*compound as usize];
+                let components = ionising(compound.structure.molecule());
+                let neutral = components.into_iter().next()?.neutral;
+                Some((neutral.with_charge(0).monoisotopic().ok()?, 0.0))
+            }
+            _ => None,
+        }
     }
 
     /// How firmly the records say that a sample holds the compound of another's label; see
@@ -309,6 +336,16 @@ fn differs(verdict: Verdict) -> bool {
             | Verdict::StereoDiffers
             | Verdict::AgreesButForm
     )
+}
+
+/// The mass that a measurement says, electrons aside, and how far it may be off.
+fn mass(measurement: &Measurement) -> Option<(f64, f64)> {
+    let adduct = measurement.adduct.as_ref()?;
+    let mass = adduct.mass_of_molecule(measurement.mz)?;
+    Some((
+        mass,
+        measurement.tolerance.width(measurement.mz) * adduct.charges(),
+    ))
 }
 
 /// A measurement is made on what is in the vial; where it contradicts the record of what came, that

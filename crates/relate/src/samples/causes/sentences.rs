@@ -2,29 +2,38 @@
 
 use crate::samples::{Judgement, Sample};
 
-use super::{Analysis, Cause, Evidence, Hypothesis};
+use super::{Analysis, Cause, Evidence, Hypothesis, holdings::Holdings};
 
 /// Names listed before the rest is counted.
 const LISTED: usize = 12;
 
 /// What may have happened, what speaks for it, what is not known, and what would decide.
-pub(super) fn of_hypothesis(tray: &[(Sample, Judgement)], hypothesis: &Hypothesis) -> String {
+pub(super) fn of_hypothesis(
+    tray: &[(Sample, Judgement)],
+    holdings: &Holdings<'_>,
+    hypothesis: &Hypothesis,
+) -> String {
     let names = |samples: &[usize]| {
         let known = samples.iter().filter_map(|&at| tray.get(at));
         listed(&known.map(|(sample, _)| name(sample)).collect::<Vec<_>>())
     };
     let (explains, involves) = (names(&hypothesis.explains), names(&hypothesis.involves));
     let half_seen = !hypothesis.involves.is_empty();
+    let unseen = hypothesis.involves.iter().all(|&at| holdings.is_unseen(at));
+    let instead = match unseen {
+        true => "of which nothing is known",
+        false => "which holds, as far as is known, what is on no label",
+    };
     let mut text = match hypothesis.cause {
         Cause::Swap if half_seen => format!(
-            "{explains} holds what the label of {involves} says, and nothing is known of what {involves} holds: the two may have been exchanged."
+            "{explains} holds what the label says of {involves}, {instead}: the two may have been exchanged."
         ),
         Cause::Swap if hypothesis.is_ambiguous => format!(
             "Among {explains} two compounds were exchanged; which sample with which the records do not say."
         ),
         Cause::Swap => format!("{explains} hold each other's compound: they were exchanged."),
         Cause::Cycle if half_seen => format!(
-            "{explains} each hold what the label of the next says, the last that of {involves}, of which nothing is known: they may have been exchanged in a circle."
+            "{explains} each hold what the label of the next says, the last that of {involves}, {instead}: they may have been exchanged in a circle."
         ),
         Cause::Cycle if hypothesis.is_ambiguous => format!(
             "Among {explains} compounds were exchanged in more than one way; the records do not say which."

@@ -25,6 +25,39 @@ pub(super) fn several_structures(
     groups(holdings, Cause::OneLabelSeveralStructures, left, labelled)
 }
 
+/// Samples with different labels that have one mass, which no label has. Samples are of one mass with the
+/// next in order of mass where the two are within their tolerances.
+pub(super) fn one_mass(holdings: &Holdings<'_>, left: impl Fn(usize) -> bool) -> Vec<Hypothesis> {
+    let samples = 0..holdings.samples.len();
+    let left = samples.filter(|&at| holdings.samples[at].differs && left(at));
+    let mut masses: Vec<(f64, f64, usize)> = left
+        .filter_map(|at| {
+            let (mass, width) = holdings.foreign_mass(at)?;
+            Some((mass, width, at))
+        })
+        .collect();
+    masses.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.2.cmp(&b.2)));
+    let groups = masses.chunk_by(|a, b| b.0 - a.0 <= a.1.max(b.1));
+    let by_mass = |at: usize| matches!(holdings.samples[at].content, Content::ByMass(_));
+    let several = groups.filter(|group| {
+        let labels: BTreeSet<Option<u32>> = group
+            .iter()
+            .map(|&(.., at)| holdings.samples[at].label)
+            .collect();
+        // Records that agree are told by their compounds.
+        labels.len() > 1 && group.iter().any(|&(.., at)| by_mass(at))
+    });
+    let hypothesis = |group: &[(f64, f64, usize)]| {
+        let mut explains: Vec<usize> = group.iter().map(|&(.., at)| at).collect();
+        explains.sort_unstable();
+        Hypothesis {
+            evidence: Evidence::Mass,
+            ..Hypothesis::new(Cause::OneStructureSeveralLabels, explains)
+        }
+    };
+    several.map(hypothesis).collect()
+}
+
 /// Groups of samples that share the first of two compounds and differ in the second, if any of those
 /// that are left over is among them.
 fn groups(
