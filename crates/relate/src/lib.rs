@@ -7,6 +7,7 @@
 
 mod constitution;
 mod explain;
+mod forms;
 mod groups;
 mod kinds;
 pub mod mapping;
@@ -24,6 +25,7 @@ pub use crate::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
         StereoChange, StereoDifference, explain,
     },
+    forms::{Axes, AxesError, Axis, Change, Form, FormError, Normaliser},
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},
     relation::{Relation, StereoKind, Verdict, relate},
