@@ -6,6 +6,7 @@
 //! normalised molecule ([`molkin_graph::Molecule::remembered_stereo`]) and counts for its key.
 
 mod axes;
+mod charge;
 mod isotope;
 mod stereo;
 mod tautomer;
@@ -195,7 +196,8 @@ impl Normaliser {
         match axis {
             Axis::Stereo => stereo::normalise(structure),
             Axis::Isotope => isotope::normalise(structure),
-            Axis::Salt | Axis::Charge => Ok(None),
+            Axis::Salt => Ok(None),
+            Axis::Charge => charge::normalise(&mut self.orderer, structure),
             Axis::Tautomer | Axis::RingChain => {
                 tautomer::normalise(&mut self.orderer, &self.limits, structure, ring_chain)
             }

@@ -11,7 +11,11 @@ fn structure(text: &str) -> Structure {
     Structure::new(&mut orderer, smiles::parse(text).unwrap()).unwrap()
 }
 
-fn overlooked(text: &str, axes: &str) -> String {
+pub(super) fn key(text: &str) -> String {
+    structure(text).canonical().compound_key().to_string()
+}
+
+pub(super) fn overlooked(text: &str, axes: &str) -> String {
     let structure = structure(text);
     let mut normaliser = Normaliser::new(Limits::default());
     let form = normaliser
