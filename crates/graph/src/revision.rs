@@ -47,6 +47,116 @@ pub struct Revised {
     pub sources: Vec<u32>,
 }
 
+impl Molecule {
+    /// The components, each as a molecule of its own, in the order of their first atoms. Hydrogen bonds
+    /// join nothing. Marks go with their centres; stereo groups are left out.
+    ///
+    /// # Errors
+    /// None that a molecule from a builder can have.
+    pub fn components(&self) -> Result<Vec<Revised>, BuildError> {
+        let component = self.component_numbers();
+        let count = component.iter().max().map_or(0, |&last| last as usize + 1);
+        let mut parts: Vec<Part> = (0..count).map(|_| Part::default()).collect();
+        let mut place = Vec::with_capacity(component.len());
+        for ((index, atom), &own) in (0..).zip(self.atoms()).zip(&component) {
+            let part = &mut parts[own as usize];
+            place.push(part.builder.add_atom(*atom));
+            part.sources.push(index);
+        }
+        let at = |atom: u32| place[atom as usize];
+        let moved = |ligand: Ligand| match ligand {
+            Ligand::Atom(atom) => Ligand::Atom(at(atom)),
+            other => other,
+        };
+        for (a, b, order) in self.bonds() {
+            if component[a as usize] == component[b as usize] {
+                let builder = &mut parts[component[a as usize] as usize].builder;
+                builder.add_bond(at(a), at(b), order)?;
+            }
+        }
+        let mark = |own: &DrawnStereo| DrawnStereo {
+            centres: own.centres.map(at),
+            ligands: own.ligands.map(moved),
+            ..*own
+        };
+        for own in &self.stereo {
+            let part = &mut parts[component[own.centres[0] as usize] as usize];
+            part.builder.add_stereo(mark(own));
+        }
+        for own in &self.remembered {
+            let part = &mut parts[component[own.centres[0] as usize] as usize];
+            part.builder.add_remembered(mark(own));
+        }
+        for own in &self.coordination {
+            let part = &mut parts[component[own.centre as usize] as usize];
+            part.builder.add_coordination(DrawnCoordination {
+                centre: at(own.centre),
+                ligands: own.ligands.iter().map(|&ligand| moved(ligand)).collect(),
+                ..own.clone()
+            });
+        }
+        parts.into_iter().map(Part::finish).collect()
+    }
+
+    /// How many components there are, hydrogen bonds left aside.
+    pub fn component_count(&self) -> usize {
+        let numbers = self.component_numbers();
+        numbers.iter().max().map_or(0, |&last| last as usize + 1)
+    }
+
+    /// Per atom the number of its component, from 0.
+    fn component_numbers(&self) -> Vec<u32> {
+        const NONE: u32 = u32::MAX;
+        let mut component = vec![NONE; self.atom_count()];
+        let mut count = 0;
+        let mut open = Vec::new();
+        for root in 0..component.len() as u32 {
+            if component[root as usize] != NONE {
+                continue;
+            }
+            open.push(root);
+            component[root as usize] = count;
+            while let Some(atom) = open.pop() {
+                for (to, order) in self.neighbours(atom) {
+                    if order != BondOrder::Hydrogen && component[to as usize] == NONE {
+                        component[to as usize] = count;
+                        open.push(to);
+                    }
+                }
+            }
+            count += 1;
+        }
+        component
+    }
+}
+
+impl Revised {
+    /// The same after a revision before: its sources are atoms of the molecule that one began with.
+    #[must_use]
+    pub fn traced(mut self, before: &[u32]) -> Self {
+        for atom in &mut self.sources {
+            *atom = before.get(*atom as usize).copied().unwrap_or(*atom);
+        }
+        self
+    }
+}
+
+/// A component under way.
+#[derive(Default)]
+struct Part {
+    builder: MoleculeBuilder,
+    sources: Vec<u32>,
+}
+
+impl Part {
+    fn finish(mut self) -> Result<Revised, BuildError> {
+        Ok(Revised {
+            molecule: self.builder.build()?,
+            sources: self.sources,
+        })
+    }
+}
+
 impl Revision {
     /// Starts from a molecule. Hydrogen atoms that are only counted where nothing else is said about
     /// them (neutral, no mass number, one single bond to another element) are counted on their atom from

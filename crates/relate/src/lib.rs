@@ -25,7 +25,10 @@ pub use crate::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
         StereoChange, StereoDifference, explain,
     },
-    forms::{Axes, AxesError, Axis, Change, Form, FormError, Normaliser},
+    forms::{
+        Axes, AxesError, Axis, Change, CounterIons, CounterIonsError, Form, FormError, Listed,
+        ListedKind, Normaliser, Removed,
+    },
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},
     relation::{Relation, StereoKind, Verdict, relate},

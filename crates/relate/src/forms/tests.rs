@@ -6,7 +6,7 @@ use rstest::rstest;
 
 use super::*;
 
-fn structure(text: &str) -> Structure {
+pub(super) fn structure(text: &str) -> Structure {
     let mut orderer = Orderer::new(Limits::default());
     Structure::new(&mut orderer, smiles::parse(text).unwrap()).unwrap()
 }

@@ -8,7 +8,11 @@ use crate::forms::tests::overlooked;
 #[track_caller]
 fn check(state: &str, neutral: &str) {
     let expected = overlooked(neutral, "charge");
-    assert_eq!(expected, crate::forms::tests::key(neutral), "{neutral} is not settled");
+    assert_eq!(
+        expected,
+        crate::forms::tests::key(neutral),
+        "{neutral} is not settled"
+    );
     assert_eq!(overlooked(state, "charge"), expected, "{state}");
 }
 
@@ -31,7 +35,10 @@ fn check(state: &str, neutral: &str) {
 #[case::saccharin("O=C1[N-]S(=O)(=O)c2ccccc12", "O=C1NS(=O)(=O)c2ccccc12")]
 #[case::saccharin_drawn_on_oxygen("[O-]C1=NS(=O)(=O)c2ccccc12", "O=C1NS(=O)(=O)c2ccccc12")]
 #[case::barbital("CCC1(CC)C(=O)NC(=O)N=C1[O-]", "CCC1(CC)C(=O)NC(=O)NC1=O")]
-#[case::phenytoin("[O-]C1=NC(=O)C(N1)(c1ccccc1)c1ccccc1", "O=C1NC(=O)C(N1)(c1ccccc1)c1ccccc1")]
+#[case::phenytoin(
+    "[O-]C1=NC(=O)C(N1)(c1ccccc1)c1ccccc1",
+    "O=C1NC(=O)C(N1)(c1ccccc1)c1ccccc1"
+)]
 #[case::warfarin(
     "CC(=O)CC(c1ccccc1)c1c([O-])c2ccccc2oc1=O",
     "CC(=O)CC(c1ccccc1)c1c(O)c2ccccc2oc1=O"
@@ -85,7 +92,10 @@ fn what_no_proton_takes_away_stays(#[case] text: &str) {
 #[case::choline_zwitterion("C[N+](C)(C)CC[O-]", "C[N+](C)(C)CCO")]
 #[case::phosphocholine("C[N+](C)(C)CCOP(=O)(O)O", "C[N+](C)(C)CCOP(=O)(O)[O-]")]
 #[case::on_the_weaker_acid("[Na+].[O-]c1ccccc1.CC(=O)O", "[Na+].Oc1ccccc1.CC(=O)[O-]")]
-#[case::bicarbonate("[Na+].[O-]C(=O)c1ccccc1[O-].[Na+]", "[Na+].[O-]C(=O)c1ccccc1[O-].[Na+]")]
+#[case::bicarbonate(
+    "[Na+].[O-]C(=O)c1ccccc1[O-].[Na+]",
+    "[Na+].[O-]C(=O)c1ccccc1[O-].[Na+]"
+)]
 #[case::fluoroboric("CN.[H+].F[B-](F)(F)F", "C[NH3+].F[B-](F)(F)F")]
 #[case::bare_proton("CN.[H+].[Cl-]", "CN.Cl")]
 #[case::hydrochloride("C[NH3+].[Cl-]", "CN.Cl")]
