@@ -131,6 +131,11 @@ impl Orderer {
         }
     }
 
+    /// The limits.
+    pub fn limits(&self) -> &Limits {
+        &self.limits
+    }
+
     /// Finds the canonical view of a molecule.
     ///
     /// # Errors

@@ -5,6 +5,7 @@
 //! but `stereo` makes opposed marks equal: where an axis erases a marked place, the mark stays with the
 //! normalised molecule ([`molkin_graph::Molecule::remembered_stereo`]) and counts for its key.
 
+mod apart;
 mod axes;
 mod charge;
 mod isotope;
@@ -22,6 +23,7 @@ use thiserror::Error;
 
 use crate::{PrepareError, Structure};
 
+pub use apart::same_apart_from;
 pub use axes::{Axes, AxesError, Axis};
 pub use salt::{CounterIons, CounterIonsError, Kind as ListedKind, Listed};
 
@@ -143,6 +145,11 @@ impl Form<'_> {
         &self.structure
     }
 
+    /// The normalised structure.
+    pub fn into_structure(self) -> Structure {
+        self.structure.into_owned()
+    }
+
     /// What was changed, axis by axis.
     pub fn changes(&self) -> &[(Axis, Change)] {
         &self.changes
@@ -157,6 +164,17 @@ pub struct Normaliser {
     counter_ions: Option<Arc<CounterIons>>,
 }
 
+impl From<Orderer> for Normaliser {
+    /// A normaliser that works with an orderer and within its limits.
+    fn from(orderer: Orderer) -> Self {
+        Self {
+            limits: *orderer.limits(),
+            orderer,
+            counter_ions: None,
+        }
+    }
+}
+
 impl Normaliser {
     /// A normaliser within the given limits.
     pub fn new(limits: Limits) -> Self {
@@ -165,6 +183,16 @@ impl Normaliser {
             limits,
             counter_ions: None,
         }
+    }
+
+    /// The orderer, for other work between forms.
+    pub fn orderer(&mut self) -> &mut Orderer {
+        &mut self.orderer
+    }
+
+    /// The orderer alone.
+    pub fn into_orderer(self) -> Orderer {
+        self.orderer
     }
 
     /// The same with other counter-ions and solvents than those of [`CounterIons::standard`].

@@ -27,7 +27,7 @@ pub use crate::{
     },
     forms::{
         Axes, AxesError, Axis, Change, CounterIons, CounterIonsError, Form, FormError, Listed,
-        ListedKind, Normaliser, Removed,
+        ListedKind, Normaliser, Removed, same_apart_from,
     },
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},
