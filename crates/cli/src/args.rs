@@ -1,8 +1,9 @@
 //! What may be typed.
 
-use std::{ffi::OsString, num::NonZeroUsize, thread};
+use std::{ffi::OsString, num::NonZeroUsize, path::PathBuf, thread};
 
 use clap::{Args, Parser, Subcommand, ValueEnum};
+use molkin_relate::Axes;
 
 use crate::output::CAUTION;
 
@@ -70,6 +71,8 @@ pub(crate) struct Compare {
     #[arg(long, value_enum, default_value_t = Format::Text)]
     pub(crate) format: Format,
     #[command(flatten)]
+    pub(crate) forms: Forms,
+    #[command(flatten)]
     pub(crate) working: Working,
     #[command(flatten)]
     pub(crate) reading: Reading,
@@ -84,9 +87,14 @@ pub(crate) struct Keys {
     /// Files or structures
     #[arg(required = true, value_name = "FILE")]
     pub(crate) inputs: Vec<OsString>,
+    /// Leave parent_key and tautomer_key empty, which takes less time
+    #[arg(long)]
+    pub(crate) brief: bool,
     /// Form of the output
     #[arg(long, value_enum, default_value_t = TableFormat::Csv)]
     pub(crate) format: TableFormat,
+    #[command(flatten)]
+    pub(crate) forms: Forms,
     #[command(flatten)]
     pub(crate) working: Working,
     #[command(flatten)]
@@ -160,6 +168,18 @@ pub(crate) struct TrayColumns {
     /// A remark, which is passed on
     #[arg(long, value_name = "COLUMN")]
     pub(crate) remark: Option<String>,
+}
+
+/// What is overlooked when records are compared or keyed.
+#[derive(Debug, Args)]
+#[command(next_help_heading = "Forms of one compound")]
+pub(crate) struct Forms {
+    /// Axes to overlook, separated by commas: salt, charge, tautomer, ring-chain, isotope, stereo
+    #[arg(long, value_name = "AXES", default_value_t = Axes::NONE, hide_default_value = true)]
+    pub(crate) overlook: Axes,
+    /// Table of further counter-ions and solvents (tab-separated: salt, structure, kind)
+    #[arg(long, value_name = "FILE")]
+    pub(crate) counter_ions: Option<PathBuf>,
 }
 
 /// How the work is done.

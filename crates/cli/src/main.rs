@@ -5,6 +5,7 @@ mod args;
 mod compare;
 mod describe;
 mod exit;
+mod forms;
 mod input;
 mod keys;
 mod output;

@@ -8,7 +8,6 @@ mod adduct;
 mod causes;
 mod component;
 mod composition;
-mod form;
 mod judge;
 mod measured;
 mod pattern;

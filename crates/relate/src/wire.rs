@@ -17,8 +17,8 @@ use crate::remarks::Noted;
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
 pub use keys::{KeyRow, KeyRows};
 pub use pair::{
-    BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair, StereoEntry,
-    compare,
+    Apart, BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair,
+    StereoEntry, compare, compare_by,
 };
 pub use prepared::Prepared;
 pub use samples::{
@@ -54,6 +54,9 @@ pub struct Input {
     /// Canonical SMILES.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub smiles: Option<String>,
+    /// Canonical SMILES of the form that was compared, where axes are overlooked.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub form: Option<String>,
 }
 
 /// A remark about a record or a pair.

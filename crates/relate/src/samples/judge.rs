@@ -1,11 +1,15 @@
 //! One sample by itself.
 
-use molkin_graph::{Limits, OrderError, Orderer};
+use molkin_graph::{Limits, OrderError};
 
-use crate::{Relation, Structure, Verdict as Related, explain, kinds, relate, wire::Error, words};
+use crate::{
+    Axes, Axis, Normaliser, Relation, Structure, Verdict as Related, explain, kinds, relate,
+    same_apart_from, wire::Error, words,
+};
 
 use super::{
-    Sample, Verdict, form,
+    Sample, Verdict,
+    component::Side,
     measured::{self, MassCheck},
     sentences,
 };
@@ -22,19 +26,21 @@ pub struct Judgement {
     /// The kind of that relation.
     pub kind: Option<&'static str>,
     /// The axes that make the two one when they are overlooked.
-    pub form: Vec<&'static str>,
+    pub form: Axes,
     /// The measured m/z beside the label and beside what came.
     pub masses: [Option<MassCheck>; 2],
     /// Whether the measured formula is that of the label, and that of what came.
     pub formulae: [Option<bool>; 2],
     /// Why there is no relation although both structures could be read.
     pub error: Option<Error>,
+    /// What the label and what came have in common with their other forms.
+    pub(super) sides: [Option<Side>; 2],
 }
 
 /// Judges samples; owns the scratch memory. One per thread.
 #[derive(Debug)]
 pub struct Judge {
-    orderer: Orderer,
+    normaliser: Normaliser,
     limits: Limits,
     brief: bool,
 }
@@ -43,7 +49,7 @@ pub struct Judge {
 struct Comparison {
     related: Related,
     kind: Option<&'static str>,
-    form: Vec<&'static str>,
+    form: Axes,
     summary: String,
 }
 
@@ -59,7 +65,7 @@ impl Judge {
             ..limits
         };
         Self {
-            orderer: Orderer::new(limits),
+            normaliser: Normaliser::new(limits),
             limits,
             brief,
         }
@@ -67,12 +73,18 @@ impl Judge {
 
     /// Judges a sample.
     pub fn judge(&mut self, sample: &Sample) -> Judgement {
-        let sides = [sample.label_structure(), sample.received_structure()];
+        let structures = [sample.label_structure(), sample.received_structure()];
+        let sides = structures.map(|side| Some(Side::of(&mut self.normaliser, side?)));
         let measurement = sample.measurement.as_ref();
-        let masses = sides.map(|side| measurement?.check(side?.molecule()));
+        let masses = sides
+            .each_ref()
+            .map(|side| measurement?.check(side.as_ref()?));
         let formula = sample.formula.as_ref();
-        let formulae = sides.map(|side| Some(measured::formula_fits(formula?, side?.molecule())));
-        let compared = match sides {
+        let formulae = [0, 1].map(|at| {
+            let (structure, side) = (structures[at]?, sides[at].as_ref()?);
+            Some(measured::formula_fits(formula?, structure, side))
+        });
+        let compared = match structures {
             [Some(label), Some(received)] => self.compare(label, received).map(Some),
             _ => Ok(None),
         };
@@ -81,10 +93,11 @@ impl Judge {
             sentence: String::new(),
             relation: None,
             kind: None,
-            form: Vec::new(),
+            form: Axes::NONE,
             masses,
             formulae,
             error: None,
+            sides,
         };
         match compared {
             Ok(compared) => judgement.settle(sample, compared),
@@ -103,28 +116,32 @@ impl Judge {
         received: &Structure,
     ) -> Result<Comparison, OrderError> {
         let limits = &self.limits;
-        let related = relate(&mut self.orderer, label, received)?;
-        let differ = related.relation != Relation::Identical;
-        let form = match differ {
-            true => form::same_apart_from(label, received).unwrap_or_default(),
-            false => Vec::new(),
-        };
-        // A kind that takes too many steps is left out of the sentence.
-        let kinds = kinds(related.relation, label, received, limits).unwrap_or_default();
+        let structures = [label, received];
+        let related = relate(self.normaliser.orderer(), label, received)?;
+        // Forms and kinds that take too many steps are left out of the sentence.
+        let form = same_apart_from(&mut self.normaliser, related.relation, label, received);
+        let form = form.unwrap_or_default();
+        let substances = form.and_then(|axes| {
+            let sentence = words::forms::substances(&mut self.normaliser, structures, axes);
+            sentence.unwrap_or_default()
+        });
+        let kinds = kinds(related.relation, structures, form, limits).unwrap_or_default();
         let kind = kinds.first().copied();
-        let explained =
-            (differ && !self.brief).then(|| explain(label, received, related.relation, limits));
+        let explained = (related.relation != Relation::Identical && !self.brief)
+            .then(|| explain(label, received, related.relation, limits));
+        let summary = words::summary(
+            structures,
+            &related,
+            kind,
+            substances.as_deref(),
+            explained.as_ref(),
+            limits,
+        );
         Ok(Comparison {
             related,
             kind: kind.map(crate::Kind::as_str),
-            form,
-            summary: words::summary(
-                [label, received],
-                &related,
-                kind,
-                explained.as_ref(),
-                limits,
-            ),
+            form: form.unwrap_or(Axes::NONE),
+            summary,
         })
     }
 }
@@ -173,7 +190,7 @@ impl Judgement {
 impl Comparison {
     /// The verdict by the structures alone.
     fn verdict(&self) -> Verdict {
-        let overlooked_stereo = self.form.contains(&"stereo");
+        let overlooked_stereo = self.form.contains(Axis::Stereo);
         match self.related.relation {
             Relation::Identical if self.related.open => Verdict::AgreesButOpen,
             Relation::Identical => Verdict::Agrees,

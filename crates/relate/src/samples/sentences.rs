@@ -1,5 +1,7 @@
 //! What decided about a sample, in sentences.
 
+use crate::Relation;
+
 use super::{Judgement, Sample, Verdict, measured::MassCheck};
 
 /// What the structures say, then what was measured, then what could not be read.
@@ -8,15 +10,19 @@ pub(super) fn of_sample(sample: &Sample, judgement: &Judgement) -> String {
     if !judgement.sentence.is_empty() {
         sentences.push(judgement.sentence.clone());
     }
-    if !judgement.form.is_empty() {
+    let names_form = matches!(
+        judgement.relation,
+        Some(Relation::NotIsomers | Relation::Constitutional)
+    );
+    if names_form && !judgement.form.is_empty() {
         sentences.push(format!(
-            "They are one compound apart from: {}.",
-            judgement.form.join(", ")
+            "They are one compound apart from {}.",
+            judgement.form
         ));
     }
     match judgement.verdict {
         Verdict::Isomer => sentences.push("A mass cannot tell them apart.".to_owned()),
-        Verdict::StereoDiffers if judgement.form.is_empty() => {
+        Verdict::StereoDiffers if !names_form => {
             sentences.push("A mass cannot tell stereoisomers apart.".to_owned());
         }
         _ => {}

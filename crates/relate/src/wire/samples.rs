@@ -2,7 +2,10 @@
 
 use serde::Serialize;
 
-use crate::samples::{Analysis, Hypothesis, Judgement, MassCheck, Sample, Verdict};
+use crate::{
+    Axis,
+    samples::{Analysis, Hypothesis, Judgement, MassCheck, Sample, Verdict},
+};
 
 use super::{Error, Input, VERSION};
 
@@ -281,7 +284,7 @@ impl SampleEntry {
             sentence: judgement.sentence.clone(),
             relation: judgement.relation.map(|relation| relation.as_str()),
             relation_kind: judgement.kind,
-            same_apart_from: judgement.form.clone(),
+            same_apart_from: judgement.form.iter().map(Axis::as_str).collect(),
             label: sample.label.as_ref().map(|label| label.input().clone()),
             received: sample.received.as_ref().map(|side| side.input().clone()),
             mz,

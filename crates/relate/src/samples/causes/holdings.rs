@@ -8,9 +8,8 @@ use crate::{
     Structure,
     samples::{
         Judgement, Sample, Verdict, Well,
-        component::ionising,
+        component::Side,
         composition::Composition,
-        form,
         measured::Measurement,
         pattern::{highest, main_peaks},
     },
@@ -51,6 +50,8 @@ struct Compound<'t> {
     structure: &'t Structure,
     family: u32,
     formula: u32,
+    /// Of the largest component, electrons aside.
+    mass: Option<f64>,
 }
 
 /// A sample.
@@ -82,9 +83,10 @@ impl<'t> Holdings<'t> {
         let mut register = Register::default();
         let structures: Vec<[Option<u32>; 2]> = tray
             .iter()
-            .map(|(sample, _)| {
-                let sides = [sample.label_structure(), sample.received_structure()];
-                sides.map(|side| Some(register.compound(side?)))
+            .map(|(sample, judgement)| {
+                let structures = [sample.label_structure(), sample.received_structure()];
+                let sides = &judgement.sides;
+                [0, 1].map(|at| Some(register.compound(structures[at]?, sides[at].as_ref()?)))
             })
             .collect();
         let labels = structures.iter().filter_map(|[label, _]| *label);
@@ -231,12 +233,7 @@ impl<'t> Holdings<'t> {
     pub(super) fn foreign_mass(&self, sample: usize) -> Option<(f64, f64)> {
         match &self.samples[sample].content {
             Content::ByMass(formulae) if formulae.is_empty() => self.samples[sample].mass,
-            Content::Known(compound) => {
-                let compound = &self.compounds[*compound as usize];
-                let components = ionising(compound.structure.molecule());
-                let neutral = components.into_iter().next()?.neutral;
-                Some((neutral.with_charge(0).monoisotopic().ok()?, 0.0))
-            }
+            Content::Known(compound) => Some((self.compounds[*compound as usize].mass?, 0.0)),
             _ => None,
         }
     }
@@ -375,7 +372,7 @@ struct Register<'t> {
 }
 
 impl<'t> Register<'t> {
-    fn compound(&mut self, structure: &'t Structure) -> u32 {
+    fn compound(&mut self, structure: &'t Structure, side: &Side) -> u32 {
         let key = structure.canonical().compound_key();
         let known = self.by_key.get(&key).into_iter().flatten().copied();
         let is_same = |&compound: &u32| {
@@ -387,9 +384,16 @@ impl<'t> Register<'t> {
         }
         let compound = self.compounds.len() as u32;
         let next = self.families.len() as u32;
-        let family = *self.families.entry(form::family(structure)).or_insert(next);
-        let components = ionising(structure.molecule());
-        let components: Vec<Composition> = components.into_iter().map(|c| c.neutral).collect();
+        let family = *self.families.entry(side.family).or_insert(next);
+        let components = side
+            .components
+            .iter()
+            .map(|component| component.neutral.clone());
+        let components: Vec<Composition> = components.collect();
+        let mass = components.first().cloned().and_then(|neutral| {
+            let mass = neutral.with_charge(0).monoisotopic();
+            mass.ok()
+        });
         let next = self.compositions.len() as u32;
         let formula = *self.formulae.entry(components.clone()).or_insert(next);
         if formula == next {
@@ -399,6 +403,7 @@ impl<'t> Register<'t> {
             structure,
             family,
             formula,
+            mass,
         });
         self.by_key.entry(key).or_default().push(compound);
         compound
