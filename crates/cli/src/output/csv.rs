@@ -9,7 +9,7 @@ use csv::{Terminator, Writer, WriterBuilder};
 use molkin_relate::wire::KeyRow;
 
 /// The columns of `molkin keys`: the fields of [`KeyRow`]. New ones go to the end.
-const COLUMNS: [&str; 9] = [
+const COLUMNS: [&str; 11] = [
     "source",
     "record",
     "name",
@@ -19,6 +19,8 @@ const COLUMNS: [&str; 9] = [
     "constitution_key",
     "compound_key",
     "message",
+    "parent_key",
+    "tautomer_key",
 ];
 
 /// Writes rows, each on its own.
