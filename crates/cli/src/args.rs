@@ -175,8 +175,8 @@ pub(crate) struct TrayColumns {
 #[command(next_help_heading = "Forms of one compound")]
 pub(crate) struct Forms {
     /// Axes to overlook, separated by commas: salt, charge, tautomer, ring-chain, isotope, stereo
-    #[arg(long, value_name = "AXES", default_value_t = Axes::NONE, hide_default_value = true)]
-    pub(crate) overlook: Axes,
+    #[arg(long, value_name = "AXES")]
+    pub(crate) overlook: Option<Axes>,
     /// Table of further counter-ions and solvents (tab-separated: salt, structure, kind)
     #[arg(long, value_name = "FILE")]
     pub(crate) counter_ions: Option<PathBuf>,

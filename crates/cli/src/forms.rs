@@ -32,7 +32,7 @@ impl Forms {
             }
         };
         Ok(Self {
-            overlook: options.overlook,
+            overlook: options.overlook.unwrap_or(Axes::NONE),
             counter_ions,
         })
     }

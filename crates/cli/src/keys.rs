@@ -8,6 +8,7 @@ use molkin_relate::{parallel::Work, wire::KeyRows};
 
 use crate::{
     args::{Keys, TableFormat},
+    forms::Forms,
     input,
     output::csv::Table,
     records::{self, Event, Inputs, Written},
@@ -17,10 +18,18 @@ use crate::{
 /// Writes one row for every record of every input, in order.
 pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
     let TableFormat::Csv = options.format;
+    let forms = match Forms::new(&options.forms) {
+        Ok(forms) => forms,
+        Err(message) => return report.trouble(message),
+    };
     report.out().write_all(&Table::default().header()?)?;
     let reading = input::read_options(&options.reading);
     let inputs = Inputs::new(&options.inputs, &reading);
-    let work = Rows { reading: &reading };
+    let work = Rows {
+        reading: &reading,
+        forms,
+        further: !options.brief,
+    };
     records::each(&work, inputs, &options.working, report, |report, row| {
         report.out().write_all(row)
     })
@@ -29,6 +38,9 @@ pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
 /// From records to rows.
 struct Rows<'r> {
     reading: &'r ReadOptions,
+    forms: Forms,
+    /// Whether there are keys of parents and tautomers.
+    further: bool,
 }
 
 struct Scratch {
@@ -44,10 +56,15 @@ impl Work for Rows<'_> {
     type Scratch = Scratch;
 
     fn scratch(&self) -> Scratch {
+        let limits = Limits::default();
         Scratch {
             parser: Parser::new(self.reading),
             outcome: RecordOutcome::default(),
-            rows: KeyRows::new(Limits::default()),
+            rows: KeyRows::new(limits).with_forms(
+                self.forms.normaliser(limits),
+                self.forms.overlook,
+                self.further,
+            ),
             table: Table::default(),
         }
     }

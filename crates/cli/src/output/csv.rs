@@ -10,7 +10,7 @@ use molkin_relate::wire::KeyRow;
 use serde::Serialize;
 
 /// The columns of `molkin keys`: the fields of [`KeyRow`]. New ones go to the end.
-const COLUMNS: [&str; 9] = [
+const COLUMNS: [&str; 11] = [
     "source",
     "record",
     "name",
@@ -20,6 +20,8 @@ const COLUMNS: [&str; 9] = [
     "constitution_key",
     "compound_key",
     "message",
+    "parent_key",
+    "tautomer_key",
 ];
 
 /// The columns of `molkin samples`: the fields of [`molkin_relate::wire::SampleRow`]. New ones go to the

@@ -18,7 +18,7 @@ use std::cmp::Reverse;
 
 use molkin_graph::{Canonical, Element, Molecule, Orderer, Revised};
 
-use crate::{PrepareError, Structure};
+use crate::{PrepareError, Structure, constitution::Constitution, groups::aromatic};
 
 use super::{Change, FormError, Outcome, remembering};
 use clusters::{Cluster, clusters};
@@ -173,7 +173,8 @@ impl<'s> Work<'s> {
             let trial = self.drawn()?;
             self.protons = kept;
             let canonical = self.orderer.order(&trial.molecule);
-            let after = View::of(&canonical.map_err(PrepareError::from)?);
+            let canonical = canonical.map_err(PrepareError::from)?;
+            let after = View::of(&canonical);
             if total_charge(&after) >= total {
                 continue;
             }
@@ -181,7 +182,7 @@ impl<'s> Work<'s> {
             let order = (
                 site.element == Element::CARBON,
                 Reverse(after.acyl_groups()),
-                Reverse(after.mobile_ring_bonds()),
+                Reverse(aromatic_bonds(&canonical)),
                 choice.change < 0 && !site.in_ring,
                 Reverse(site.hydrogens),
                 site.element,
@@ -243,6 +244,11 @@ impl<'s> Work<'s> {
 fn strongest(view: &View, class: impl Fn(u32) -> Option<u8>) -> Option<(u8, u32)> {
     let classed = view.positions().filter_map(|at| Some((class(at)?, at)));
     classed.min_by_key(|&(class, at)| (class, view.site(at).orbit, at))
+}
+
+fn aromatic_bonds(canonical: &Canonical) -> usize {
+    let aromatic = aromatic::aromatic_bonds(&Constitution::of_view(canonical));
+    aromatic.into_iter().filter(|&aromatic| aromatic).count()
 }
 
 fn total_charge(view: &View) -> u32 {

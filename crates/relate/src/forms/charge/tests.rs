@@ -48,6 +48,8 @@ fn check(state: &str, neutral: &str) {
 #[case::aminopyridinium_drawn_on_amino("[NH2+]=C1C=CC=CN1", "Nc1ccccn1")]
 #[case::adeninium("Nc1[nH+]cnc2[nH]cnc12", "Nc1ncnc2[nH]cnc12")]
 #[case::cytidine_core("CN1C=CC(N)=[NH+]C1=O", "CN1C=CC(N)=NC1=O")]
+#[case::tetrazole_and_dihydropyrimidine("C1=CC(C)n2nnnc2[N-]1", "C1=CC(C)n2nnnc2N1")]
+#[case::pyrimidinium_lactam("CC1=[N+](C)C(C)=CC(=O)N1", "CC1=NC(=O)C=C(C)N1C")]
 #[case::thiolate("CC[S-]", "CCS")]
 #[case::cyanide("[C-]#N", "C#N")]
 #[case::azide("[N-]=[N+]=[N-]", "N=[N+]=[N-]")]

@@ -128,12 +128,6 @@ impl View {
         bonds.map(|&bond| (self.site(bond.to), bond))
     }
 
-    /// Mobile bonds in rings: more of them, more of the molecule is aromatic.
-    pub(super) fn mobile_ring_bonds(&self) -> usize {
-        let bonds = self.sites.iter().flat_map(|site| &site.bonds);
-        bonds.filter(|bond| bond.mobile && bond.in_ring).count() / 2
-    }
-
     /// Carbonyl and thiocarbonyl groups of acids, esters and amides.
     pub(super) fn acyl_groups(&self) -> usize {
         let acyl = |at: u32| {
