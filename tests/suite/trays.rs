@@ -97,6 +97,7 @@ fn planted_faults_are_found_and_sound_samples_left_alone() {
     let mut tally = Tally::new("planted faults");
     let mut alarms = Tally::new("sound samples");
     let mut table: BTreeMap<(usize, Sort), BTreeMap<Outcome, usize>> = BTreeMap::new();
+    let (mut hypotheses, mut idle) = (0, 0);
     for seed in 0..trays {
         let setting = (seed as usize) % Setting::ALL.len();
         let sort = Sort::ALL[(seed as usize / Setting::ALL.len()) % Sort::ALL.len()];
@@ -119,6 +120,14 @@ fn planted_faults_are_found_and_sound_samples_left_alone() {
                 )
             });
         }
+        hypotheses += judged.hypotheses.len();
+        let caused = planted
+            .faults
+            .iter()
+            .filter(|fault| fault.sort.cause().is_some());
+        let caused: BTreeSet<usize> = caused.flat_map(|fault| fault.samples.clone()).collect();
+        let is_idle = |h: &&Hypothesis| h.explains.iter().all(|at| !caused.contains(at));
+        idle += judged.hypotheses.iter().filter(is_idle).count();
         for &at in &planted.sound {
             let (_, judgement) = &judged.tray[at];
             alarms.case(!judgement.verdict.is_flagged(), || {
@@ -129,6 +138,9 @@ fn planted_faults_are_found_and_sound_samples_left_alone() {
     for ((setting, sort), row) in table {
         eprintln!("{:?} {sort:?}: {row:?}", Setting::ALL[setting]);
     }
+    eprintln!(
+        "hypotheses: {hypotheses}, {idle} of them on faults that have no cause across the tray"
+    );
     tally.finish(trays as usize);
     alarms.finish(trays as usize * 8);
 }

@@ -44,8 +44,6 @@ impl Side {
 /// A component of a record.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub(super) struct Component {
-    /// As drawn.
-    pub(super) drawn: Composition,
     /// Neutral, as far as protons can settle a charge: an ammonium ion gives one away, a carboxylate
     /// takes one up. What is left is a charge of its own, as of a quaternary ammonium ion.
     pub(super) neutral: Composition,
@@ -61,7 +59,7 @@ fn ionising(molecule: &Molecule) -> Vec<Component> {
         .iter()
         .map(|part| Component::of(&part.molecule))
         .collect();
-    all.sort_by(|a, b| b.size.cmp(&a.size).then_with(|| a.drawn.cmp(&b.drawn)));
+    all.sort_by(|a, b| b.size.cmp(&a.size).then_with(|| a.neutral.cmp(&b.neutral)));
     all.dedup();
     all
 }
@@ -88,8 +86,7 @@ impl Component {
             .atoms()
             .filter(|atom| atom.element != Element::HYDROGEN);
         Self {
-            neutral: drawn.clone().with_protons(-protons),
-            drawn,
+            neutral: drawn.with_protons(-protons),
             size: size.count(),
         }
     }

@@ -204,19 +204,19 @@ impl Measurement {
     }
 }
 
-/// Whether a measured formula is that of a record: of the whole, or of a component that may ionise, as
-/// drawn or neutral. Isotopes count as their element unless the formula names them.
+/// Whether a measured formula is that of a record: of the whole, or of a component that may ionise, with
+/// a proton for each charge or without. Isotopes count as their element unless the formula names them.
 pub(super) fn formula_fits(measured: &Composition, structure: &Structure, side: &Side) -> bool {
     let whole = Composition::of_atoms(structure.molecule().atoms());
-    let components = side.components.iter();
-    let mut all = components
-        .flat_map(|component| [&component.drawn, &component.neutral])
-        .chain([&whole]);
+    let components = side.components.iter().map(|component| &component.neutral);
+    let neutral = measured.clone().with_protons(-measured.charge());
     let names_isotopes = measured.nuclides().any(|(_, isotope, _)| isotope > 0);
-    all.any(|own| match names_isotopes {
+    let same = |own: &Composition, measured: &Composition| match names_isotopes {
         true => own == measured,
         false => own.formula() == measured.formula(),
-    })
+    };
+    let mut all = components.chain([&whole]);
+    all.any(|own| same(own, measured) || same(own, &neutral))
 }
 
 #[cfg(test)]
