@@ -26,6 +26,7 @@ use crate::{ReadError, molfile, smiles};
 
 #[cfg(feature = "table")]
 pub use {
+    raw::parse_field,
     records::Records,
     sheet::{Sheet, SheetRow},
 };

@@ -178,6 +178,18 @@ mod tests {
     }
 
     #[test]
+    fn structures_in_fields_have_places_in_the_table() {
+        let mut reader = crate::smiles::Reader::default();
+        let options = crate::molfile::ReadOptions::default();
+        let mut read = |text| super::super::parse_field(text, 7, &mut reader, &options);
+        assert_eq!(read(" CCO ").unwrap().molecule.atom_count(), 3);
+        let error = read("  CC(").unwrap_err();
+        assert_eq!((error.span().line, error.span().column), (7, 5));
+        let error = read("\n\n\n  1  0  0  0  0  0            999 V2000\n    0.0000    0.0000    0.0000 Xx  0  0\nM  END").unwrap_err();
+        assert_eq!((error.span().line, error.code()), (11, "unknown-element"));
+    }
+
+    #[test]
     fn a_table_without_titles_is_an_error() {
         let limits = Limits::default();
         assert_eq!(

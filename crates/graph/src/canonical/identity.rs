@@ -55,7 +55,8 @@ impl Orderer {
     ) -> Result<(), OrderError> {
         let view = &mut identity.view;
         let steps = self.order_constitution(molecule, view)?;
-        let marked = molecule.stereo.iter().any(|mark| mark.parity.is_some());
+        let marked = molecule.stereo.iter().any(|mark| mark.parity.is_some())
+            || !molecule.remembered.is_empty();
         if marked || !molecule.coordination.is_empty() || !molecule.groups.is_empty() {
             self.order_stereo(molecule, view, steps, Extent::Identity)?;
         } else {

@@ -68,6 +68,7 @@ pub(super) fn find(
             ligands,
             parity: None,
             quiet,
+            remembered: false,
         });
     }
     thetas

@@ -1,14 +1,49 @@
 //! Which components of a record a mass spectrometer sees.
 
-use molkin_graph::{Element, Molecule};
+use molkin_graph::{Element, Key, Molecule};
+
+use crate::{Axes, Axis, Normaliser, Structure};
 
 use super::composition::Composition;
+
+/// What a record has in common with the other forms of its compound.
+#[derive(Debug, Clone, PartialEq)]
+pub(super) struct Side {
+    /// The components that may be seen.
+    pub(super) components: Vec<Component>,
+    /// Equal for records that are one compound but for salt, charge, isotopes and stereo.
+    pub(super) family: Key,
+}
+
+impl Side {
+    /// The components without counter-ions and solvents. Where those are not found within the limits all
+    /// are taken.
+    pub(super) fn of(normaliser: &mut Normaliser, structure: &Structure) -> Self {
+        let molecule = structure.molecule();
+        let is_plain =
+            molecule.component_count() < 2 && molecule.atoms().all(|atom| atom.charge == 0);
+        if is_plain {
+            return Self {
+                components: ionising(molecule),
+                family: structure.canonical().constitution_key(),
+            };
+        }
+        let salt = Axes::from([Axis::Salt]);
+        let components = match normaliser.overlook(structure, salt) {
+            Ok(form) => ionising(form.structure().molecule()),
+            Err(_) => ionising(molecule),
+        };
+        let family = match normaliser.overlook(structure, salt.with(Axis::Charge)) {
+            Ok(form) => form.structure().canonical().constitution_key(),
+            Err(_) => structure.canonical().constitution_key(),
+        };
+        Self { components, family }
+    }
+}
 
 /// A component of a record.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub(super) struct Component {
-    /// As drawn.
-    pub(super) drawn: Composition,
     /// Neutral, as far as protons can settle a charge: an ammonium ion gives one away, a carboxylate
     /// takes one up. What is left is a charge of its own, as of a quaternary ammonium ion.
     pub(super) neutral: Composition,
@@ -16,83 +51,51 @@ pub(super) struct Component {
     size: usize,
 }
 
-/// The components that may be seen: those with carbon and at least half as many non-hydrogen atoms as
-/// the largest of these; of a record without carbon all. Counter-ions and solvents are smaller, as a
-/// rule; where they are not, each that is left may be the one that is seen. In order of size, equal ones
-/// once.
-pub(super) fn ionising(molecule: &Molecule) -> Vec<Component> {
-    let mut all: Vec<Component> = parts(molecule)
+/// The components of what is left of a record without counter-ions and solvents: each may be the one that
+/// is seen. In order of size, equal ones once.
+fn ionising(molecule: &Molecule) -> Vec<Component> {
+    let parts = molecule.components().unwrap_or_default();
+    let mut all: Vec<Component> = parts
         .iter()
-        .map(|atoms| Component::of(molecule, atoms))
+        .map(|part| Component::of(&part.molecule))
         .collect();
-    let organic = |component: &Component| component.drawn.has(Element::CARBON);
-    if all.iter().any(organic) {
-        all.retain(organic);
-    }
-    let largest = all.iter().map(|component| component.size).max();
-    all.retain(|component| Some(2 * component.size) >= largest);
-    all.sort_by(|a, b| b.size.cmp(&a.size).then_with(|| a.drawn.cmp(&b.drawn)));
+    all.sort_by(|a, b| b.size.cmp(&a.size).then_with(|| a.neutral.cmp(&b.neutral)));
     all.dedup();
     all
 }
 
 impl Component {
-    fn of(molecule: &Molecule, atoms: &[u32]) -> Self {
-        let list = || atoms.iter().filter_map(|&atom| molecule.atom(atom));
-        let drawn = Composition::of_atoms(list());
-        let removable: u32 = list()
-            .zip(atoms)
-            .filter(|(atom, _)| atom.charge > 0)
-            .map(|(atom, &index)| {
-                let written = molecule.neighbours(index).filter(|&(other, _)| {
-                    molecule
-                        .atom(other)
-                        .is_some_and(|atom| atom.element == Element::HYDROGEN)
-                });
-                u32::from(atom.hydrogens) + written.count() as u32
-            })
-            .sum();
-        let most = i32::try_from(removable).unwrap_or(i32::MAX);
+    fn of(molecule: &Molecule) -> Self {
+        let drawn = Composition::of_atoms(molecule.atoms());
+        let is_hydrogen = |index| {
+            let atom = molecule.atom(index);
+            atom.is_some_and(|atom| atom.element == Element::HYDROGEN)
+        };
+        let cations = (0..)
+            .zip(molecule.atoms())
+            .filter(|(_, atom)| atom.charge > 0);
+        let removable = cations.map(|(index, atom)| {
+            let written = molecule
+                .neighbours(index)
+                .filter(|&(other, _)| is_hydrogen(other));
+            i32::from(atom.hydrogens) + written.count() as i32
+        });
         // Positive: so many protons go; negative: so many come.
-        let protons = drawn.charge().min(most);
-        let size = list()
-            .filter(|atom| atom.element != Element::HYDROGEN)
-            .count();
+        let protons = drawn.charge().min(removable.sum());
+        let size = molecule
+            .atoms()
+            .filter(|atom| atom.element != Element::HYDROGEN);
         Self {
-            neutral: drawn.clone().with_protons(-protons),
-            drawn,
-            size,
+            neutral: drawn.with_protons(-protons),
+            size: size.count(),
         }
     }
-}
-
-/// The atoms of each connected part, in order of their first atoms.
-fn parts(molecule: &Molecule) -> Vec<Vec<u32>> {
-    let count = molecule.atom_count();
-    let mut seen = vec![false; count];
-    let mut parts = Vec::new();
-    for start in 0..count {
-        if std::mem::replace(&mut seen[start], true) {
-            continue;
-        }
-        let mut part = vec![start as u32];
-        let mut at = 0;
-        while let Some(&atom) = part.get(at) {
-            at += 1;
-            for (next, _) in molecule.neighbours(atom) {
-                if !std::mem::replace(&mut seen[next as usize], true) {
-                    part.push(next);
-                }
-            }
-        }
-        parts.push(part);
-    }
-    parts
 }
 
 #[cfg(test)]
 mod tests {
     use molkin_formats::smiles;
+    use molkin_graph::{Limits, Orderer};
     use rstest::rstest;
 
     use super::*;
@@ -109,10 +112,15 @@ mod tests {
     #[case::betaine("C[N+](C)(C)CC(=O)[O-]", "C5H11NO2")]
     #[case::hydrate("OC(=O)CC(O)(CC(=O)O)C(=O)O.O", "C6H8O7")]
     #[case::half_acid("CCCCCCN.CCCCCCN.OS(=O)(=O)O", "C6H15N")]
+    #[case::larger_counter_ion("CCN.Cc1ccc(cc1)S(=O)(=O)O", "C2H7N")]
     #[case::two_alike("c1ccccc1C(=O)O.c1ccccc1CN", "C7H6O2 C7H9N")]
     #[case::no_carbon("[Na+].[Cl-]", "ClH Na+")]
     fn components(#[case] text: &str, #[case] expected: &str) {
-        let mut found: Vec<String> = ionising(&smiles::parse(text).unwrap())
+        let mut orderer = Orderer::new(Limits::default());
+        let structure = Structure::new(&mut orderer, smiles::parse(text).unwrap()).unwrap();
+        let mut normaliser = Normaliser::new(Limits::default());
+        let mut found: Vec<String> = Side::of(&mut normaliser, &structure)
+            .components
             .iter()
             .map(|component| component.neutral.formula().to_string())
             .collect();

@@ -103,12 +103,6 @@ impl Composition {
         !self.counts.is_empty() && self.counts.values().all(|&count| count > 0)
     }
 
-    /// Whether it has an atom of the element.
-    pub(super) fn has(&self, element: Element) -> bool {
-        let all = (element, u16::MIN)..=(element, u16::MAX);
-        self.counts.range(all).next().is_some()
-    }
-
     /// The formula; isotopes count as their element.
     pub fn formula(&self) -> Formula {
         let counts = self.nuclides();

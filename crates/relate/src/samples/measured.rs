@@ -2,12 +2,13 @@
 
 use std::{fmt, str::FromStr};
 
-use molkin_graph::Molecule;
 use thiserror::Error;
+
+use crate::Structure;
 
 use super::{
     adduct::Adduct,
-    component::{Component, ionising},
+    component::{Component, Side},
     composition::Composition,
     pattern::{Peak, highest, main_peaks},
 };
@@ -149,13 +150,13 @@ impl Measurement {
     /// Of each component that may ionise and each ion that may have been seen the monoisotopic m/z is
     /// looked at first, then that of the highest peak, which is another one where an element has no
     /// light nuclide that prevails, or very many atoms.
-    pub fn check(&self, molecule: &Molecule) -> Option<MassCheck> {
+    pub(super) fn check(&self, side: &Side) -> Option<MassCheck> {
         let adducts = self.adducts();
         let mut best: Option<(MassCheck, Composition, Adduct)> = None;
-        for Component { neutral, .. } in ionising(molecule) {
+        for Component { neutral, .. } in &side.components {
             for adduct in &adducts {
                 for by_highest in [false, true] {
-                    let Some(check) = self.against(&neutral, adduct, by_highest) else {
+                    let Some(check) = self.against(neutral, adduct, by_highest) else {
                         continue;
                     };
                     let rank = |check: &MassCheck| (!check.fits, check.is_highest);
@@ -203,26 +204,37 @@ impl Measurement {
     }
 }
 
-/// Whether a measured formula is that of a record: of the whole, or of a component that may ionise, as
-/// drawn or neutral. Isotopes count as their element unless the formula names them.
-pub(super) fn formula_fits(measured: &Composition, molecule: &Molecule) -> bool {
-    let whole = Composition::of_atoms(molecule.atoms());
-    let components = ionising(molecule).into_iter();
-    let mut all = std::iter::once(whole)
-        .chain(components.flat_map(|component| [component.drawn, component.neutral]));
+/// Whether a measured formula is that of a record: of the whole, or of a component that may ionise, with
+/// a proton for each charge or without. Isotopes count as their element unless the formula names them.
+pub(super) fn formula_fits(measured: &Composition, structure: &Structure, side: &Side) -> bool {
+    let whole = Composition::of_atoms(structure.molecule().atoms());
+    let components = side.components.iter().map(|component| &component.neutral);
+    let neutral = measured.clone().with_protons(-measured.charge());
     let names_isotopes = measured.nuclides().any(|(_, isotope, _)| isotope > 0);
-    all.any(|own| match names_isotopes {
-        true => own == *measured,
+    let same = |own: &Composition, measured: &Composition| match names_isotopes {
+        true => own == measured,
         false => own.formula() == measured.formula(),
-    })
+    };
+    let mut all = components.chain([&whole]);
+    all.any(|own| same(own, measured) || same(own, &neutral))
 }
 
 #[cfg(test)]
 mod tests {
     use molkin_formats::smiles;
+    use molkin_graph::{Limits, Orderer};
     use rstest::rstest;
 
+    use crate::Normaliser;
+
     use super::*;
+
+    fn side(text: &str) -> (Structure, Side) {
+        let mut orderer = Orderer::new(Limits::default());
+        let structure = Structure::new(&mut orderer, smiles::parse(text).unwrap()).unwrap();
+        let side = Side::of(&mut Normaliser::new(Limits::default()), &structure);
+        (structure, side)
+    }
 
     fn check(structure: &str, mz: f64, adduct: &str) -> MassCheck {
         let measurement = Measurement {
@@ -230,9 +242,7 @@ mod tests {
             adduct: (!adduct.is_empty()).then(|| adduct.parse().unwrap()),
             tolerance: Tolerance::Ppm(5.0),
         };
-        measurement
-            .check(&smiles::parse(structure).unwrap())
-            .unwrap()
+        measurement.check(&side(structure).1).unwrap()
     }
 
     // m/z from memory of published mass spectra: diphenhydramine [M+H]+ 256.1696, ibuprofen [M-H]-
@@ -306,7 +316,7 @@ mod tests {
     #[case("CD3OD", "[2H]C([2H])([2H])O", false)]
     fn formulae(#[case] measured: &str, #[case] structure: &str, #[case] expected: bool) {
         let measured = Composition::parse(measured).unwrap();
-        let molecule = smiles::parse(structure).unwrap();
-        assert_eq!(formula_fits(&measured, &molecule), expected);
+        let (structure, side) = side(structure);
+        assert_eq!(formula_fits(&measured, &structure, &side), expected);
     }
 }
