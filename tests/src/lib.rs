@@ -45,7 +45,7 @@ pub use crate::{
     renumber::{renumbered, renumbered_form, with_hydrogens_written},
     small::small_isomers,
     spelling::random_spelling,
-    stereo::{Markings, all_markings, completions, grouped, mirrored},
+    stereo::{Markings, all_labels, all_markings, completions, grouped, mirrored},
     tally::Tally,
     text::{Table, first_word, read_text, shared, workspace},
 };

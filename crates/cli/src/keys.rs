@@ -8,6 +8,7 @@ use molkin_relate::wire::KeyRows;
 
 use crate::{
     args::{Keys, TableFormat},
+    forms::Forms,
     input,
     output::csv,
     records::{self, Entries, Inputs},
@@ -17,11 +18,19 @@ use crate::{
 /// Writes one row for every record of every input, in order.
 pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
     let TableFormat::Csv = options.format;
+    let forms = match Forms::new(&options.forms) {
+        Ok(forms) => forms,
+        Err(message) => return report.trouble(message),
+    };
     report.out().write_all(csv::HEADER)?;
     let reading = input::read_options(&options.reading);
     let inputs = Inputs::new(&options.inputs, &reading);
-    let rows = Rows { reading: &reading };
-    records::each(&rows, inputs, &options.working, report, |report, row| {
+    let work = Rows {
+        reading: &reading,
+        forms,
+        further: !options.brief,
+    };
+    records::each(&work, inputs, &options.working, report, |report, row| {
         report.out().write_all(row)
     })
 }
@@ -29,6 +38,9 @@ pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
 /// From records to rows.
 struct Rows<'r> {
     reading: &'r ReadOptions,
+    forms: Forms,
+    /// Whether there are keys of parents and tautomers.
+    further: bool,
 }
 
 struct Scratch {
@@ -41,10 +53,15 @@ impl Entries for Rows<'_> {
     type Scratch = Scratch;
 
     fn scratch(&self) -> Scratch {
+        let limits = Limits::default();
         Scratch {
             parser: Parser::new(self.reading),
             outcome: RecordOutcome::default(),
-            rows: KeyRows::new(Limits::default()),
+            rows: KeyRows::new(limits).with_forms(
+                self.forms.normaliser(limits),
+                self.forms.overlook,
+                self.further,
+            ),
         }
     }
 

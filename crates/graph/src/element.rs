@@ -50,6 +50,9 @@ impl Element {
     /// The heaviest element that has a name, oganesson.
     pub(crate) const LAST: u8 = 118;
 
+    /// How many values there are, the wildcard included.
+    pub(crate) const COUNT: usize = Element::LAST as usize + 1;
+
     /// The element of a symbol in its exact case (`C`, `Cl`), or `None`.
     ///
     /// Only element symbols are known: `*`, `D` and `T` are not among them. Constant time.

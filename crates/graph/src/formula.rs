@@ -47,21 +47,22 @@ impl Formula {
     /// As [`Formula::new`], but puts the result in place of this formula and keeps its memory, so that
     /// counting many molecules allocates once.
     pub fn refill(&mut self, counts: impl IntoIterator<Item = (Element, u32)>, charge: i32) {
-        let mut totals = [0_u32; Element::LAST as usize + 1];
-        let mut heaviest = 0;
-        for (element, count) in counts {
-            let number = element.number();
-            let total = &mut totals[usize::from(number)];
+        // One place for each element, so that none has to be looked for, and one bit for each that
+        // occurs.
+        let mut totals = [0u32; Element::COUNT];
+        let mut occurring = 0u128;
+        counts.into_iter().for_each(|(element, count)| {
+            let total = &mut totals[usize::from(element.number())];
             *total = total.saturating_add(count);
-            heaviest = heaviest.max(number);
-        }
+            occurring |= u128::from(count > 0) << element.number();
+        });
         self.charge = charge;
         self.counts.clear();
-        for (number, &total) in (0..=heaviest).zip(&totals) {
-            if total > 0 {
-                let element = Element::from_number(number).unwrap_or(Element::WILDCARD);
-                self.counts.push((element, total));
-            }
+        while occurring != 0 {
+            let number = occurring.trailing_zeros() as u8;
+            occurring &= occurring - 1;
+            let element = Element::from_number(number).unwrap_or(Element::WILDCARD);
+            self.counts.push((element, totals[usize::from(number)]));
         }
     }
 

@@ -2,11 +2,13 @@
 
 use std::io::{self, Write};
 
+use csv::{Terminator, WriterBuilder};
 use molkin_relate::wire::KeyRow;
+use serde::Serialize;
 
 /// The columns of `molkin keys`: the fields of [`KeyRow`]. New ones go to the end.
 pub(crate) const HEADER: &[u8] = b"source,record,name,status,formula,smiles,constitution_key,\
-    compound_key,message\n";
+    compound_key,message,parent_key,tautomer_key\n";
 
 /// Appends a row to a text. Fields go in one by one, as nothing but text and one number needs
 /// the generality of a serializer, which took longer than reading a record does.
@@ -27,8 +29,55 @@ pub(crate) fn write_row(text: &mut Vec<u8>, row: &KeyRow) -> io::Result<()> {
     }
     text.push(b',');
     write_field(text, &row.message);
+    for key in [&row.parent_key, &row.tautomer_key] {
+        text.push(b',');
+        text.extend_from_slice(key.as_bytes());
+    }
     text.push(b'\n');
     Ok(())
+}
+
+/// The columns of `molkin samples`: the fields of [`molkin_relate::wire::SampleRow`]. New ones go to the
+/// end.
+pub(crate) const SAMPLE_COLUMNS: [&str; 21] = [
+    "line",
+    "id",
+    "plate",
+    "well",
+    "verdict",
+    "flagged",
+    "relation",
+    "kind",
+    "same_apart_from",
+    "label_smiles",
+    "received_smiles",
+    "mz",
+    "adduct",
+    "mz_expected",
+    "ppm",
+    "mz_fits",
+    "formula_fits",
+    "hypotheses",
+    "sentence",
+    "remark",
+    "message",
+];
+
+/// Writes a header and rows.
+pub(crate) fn write_rows(
+    out: &mut impl Write,
+    columns: &[&str],
+    rows: impl Iterator<Item = impl Serialize>,
+) -> io::Result<()> {
+    let mut writer = WriterBuilder::new()
+        .terminator(Terminator::Any(b'\n'))
+        .has_headers(false)
+        .from_writer(out);
+    writer.write_record(columns)?;
+    for row in rows {
+        writer.serialize(row)?;
+    }
+    writer.flush()
 }
 
 /// A field as it is, or in quotes where a byte in it would end it.
@@ -83,6 +132,8 @@ mod tests {
                     constitution_key: "1-00".to_owned(),
                     compound_key: String::new(),
                     message: first.to_owned(),
+                    parent_key: "1-11".to_owned(),
+                    tautomer_key: String::new(),
                 };
                 write_row(&mut text, &row).unwrap();
                 writer.serialize(&row).unwrap();

@@ -128,15 +128,7 @@ impl RawRow {
             *record = Record::default();
             return Ok(());
         };
-        // Blank lines in front belong to a molfile.
-        let (text, outcome) = if is_molfile(value) {
-            let read = molfile::parse_with(value, options);
-            (value, read.map(|read| *record = read))
-        } else {
-            let text = value.trim_ascii_start();
-            (text, reader.read_into(text.trim_ascii_end(), 1, record))
-        };
-        let blanks = value.len() - text.len();
+        let (blanks, outcome) = parse_value(value, reader, options, record);
         let moved = |span: Span| field.place(span, blanks);
         for note in &mut record.notes {
             note.span = note.span.map(moved);
@@ -150,6 +142,55 @@ impl RawRow {
     /// The line on which a field begins.
     fn line_of(&self, field: &Field) -> &[u8] {
         super::row::line_at(&self.raw.text, field, field.line)
+    }
+}
+
+/// Reads the value of a field, a molfile or a SMILES, and tells how many blanks stand before it.
+fn parse_value(
+    value: &[u8],
+    reader: &mut smiles::Reader,
+    options: &molfile::ReadOptions,
+    record: &mut Record,
+) -> (usize, Result<(), ReadError>) {
+    // Blank lines in front belong to a molfile.
+    if is_molfile(value) {
+        let read = molfile::parse_with(value, options);
+        return (0, read.map(|read| *record = read));
+    }
+    let text = value.trim_ascii_start();
+    let outcome = reader.read_into(text.trim_ascii_end(), 1, record);
+    (value.len() - text.len(), outcome)
+}
+
+/// Reads a structure from a field of a [`super::Sheet`]: a molfile or a SMILES. `line` is that of the
+/// field; columns count within it.
+///
+/// # Errors
+/// [`ReadError`] if it is neither.
+pub fn parse_field(
+    value: &str,
+    line: u32,
+    reader: &mut smiles::Reader,
+    options: &molfile::ReadOptions,
+) -> Result<Record, ReadError> {
+    let mut record = Record::default();
+    let (blanks, outcome) = parse_value(value.as_bytes(), reader, options, &mut record);
+    let moved = |span: Span| Span {
+        line: span.line.saturating_add(line.saturating_sub(1)),
+        column: match span.line {
+            1 => span.column.saturating_add(blanks as u32),
+            _ => span.column,
+        },
+        ..span
+    };
+    let line_at = |wanted: u32| {
+        let ahead = wanted.saturating_sub(line) as usize;
+        let mut lines = value.as_bytes().split(|&byte| byte == b'\n');
+        lines.nth(ahead).unwrap_or_default()
+    };
+    match outcome {
+        Ok(()) => Ok(record),
+        Err(error) => Err(error.moved(moved, line_at)),
     }
 }
 

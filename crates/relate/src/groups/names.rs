@@ -3,9 +3,9 @@
 use std::{collections::HashMap, sync::OnceLock};
 
 use molkin_formats::{Record, smiles};
-use molkin_graph::{GraphOrderer, Limits};
+use molkin_graph::{GraphOrderer, Limits, Orderer};
 
-use crate::{Preparer, constitution::Constitution};
+use crate::{Structure, constitution::Constitution};
 
 use super::Marked;
 
@@ -35,8 +35,8 @@ pub(super) fn of(certificate: &[u64]) -> Option<&'static str> {
 struct Examples {
     reader: smiles::Reader,
     record: Record,
-    preparer: Preparer,
-    orderer: GraphOrderer,
+    orderer: Orderer,
+    graphs: GraphOrderer,
 }
 
 impl Examples {
@@ -44,23 +44,24 @@ impl Examples {
         Self {
             reader: smiles::Reader::default(),
             record: Record::default(),
-            preparer: Preparer::new(Limits::default()),
-            orderer: GraphOrderer::new(Limits::default()),
+            orderer: Orderer::new(Limits::default()),
+            graphs: GraphOrderer::new(Limits::default()),
         }
     }
 
     /// The certificate of the one group of a structure.
     fn certificate(&mut self, example: &str) -> Option<Vec<u64>> {
         self.reader.read_into(example, 1, &mut self.record).ok()?;
-        let structure = self.preparer.prepare(&mut self.record.molecule).ok()?;
-        let constitution = Constitution::of(structure);
+        let molecule = std::mem::take(&mut self.record.molecule);
+        let structure = Structure::new(&mut self.orderer, molecule).ok()?;
+        let constitution = Constitution::of(&structure);
         let marked = Marked::of(&constitution);
         let groups = marked.groups();
         let [group] = groups.as_slice() else {
             return None;
         };
         let (colours, edges) = marked.graph(group);
-        let order = self.orderer.order(&colours, &edges).ok()?;
+        let order = self.graphs.order(&colours, &edges).ok()?;
         Some(order.certificate.to_vec())
     }
 }

@@ -1,0 +1,1 @@
+//! Trays made for the purpose.
