@@ -12,7 +12,10 @@ mod tests;
 
 use molkin_graph::Limits;
 
-use crate::{Explanation, Kind, Relation, Structure, Verdict, findings::{Change, Finding}};
+use crate::{
+    Explanation, Kind, Relation, Structure, Verdict,
+    findings::{Change, Finding},
+};
 
 /// One or two sentences for a chemist.
 pub(crate) fn summary(

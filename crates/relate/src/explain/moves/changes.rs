@@ -153,6 +153,10 @@ impl Finding {
         }
     }
 
+    pub(super) fn is_rest(&self) -> bool {
+        matches!(self.change, Change::Rest)
+    }
+
     /// The same finding with the records exchanged.
     pub(super) fn mirrored(self) -> Self {
         let [a, b] = self.only_in;
