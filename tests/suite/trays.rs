@@ -19,6 +19,9 @@ enum Outcome {
     Found,
     /// Its samples are flagged, and its cause, or one that explains as much, is listed among others.
     Listed,
+    /// The one sample of it that the records show to be wrong is flagged; that others hold the same they
+    /// do not show.
+    Flagged,
     /// The records say nothing of it: stereoisomers by mass, or nothing known of its samples.
     Silent,
     /// Neither.
@@ -51,6 +54,9 @@ fn outcome(planted: &Planted, fault: &Fault, judged: &Judged) -> Outcome {
     let verdict = |at: &usize| judged.tray[*at].1.verdict;
     if !seen.iter().all(|at| verdict(at).is_flagged()) {
         return Outcome::Missed;
+    }
+    if fault.sort == Sort::SeveralLabels && seen.len() == 1 {
+        return Outcome::Flagged;
     }
     let Some(cause) = fault.sort.cause() else {
         // The verdict says it. Where there is a structure it is the right one.

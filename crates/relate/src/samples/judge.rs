@@ -129,7 +129,7 @@ impl Judge {
         let kind = kinds.first().copied();
         let explained = (related.relation != Relation::Identical && !self.brief)
             .then(|| explain(label, received, related.relation, limits));
-        let summary = words::summary(
+        let mut summary = words::summary(
             structures,
             &related,
             kind,
@@ -137,6 +137,13 @@ impl Judge {
             explained.as_ref(),
             limits,
         );
+        let constituted = matches!(
+            related.relation,
+            Relation::NotIsomers | Relation::Constitutional
+        );
+        if let Some(axes) = form.filter(|_| constituted && substances.is_none()) {
+            summary.push_str(&format!(" They are one compound apart from {axes}."));
+        }
         Ok(Comparison {
             related,
             kind: kind.map(crate::Kind::as_str),

@@ -10,19 +10,9 @@ pub(super) fn of_sample(sample: &Sample, judgement: &Judgement) -> String {
     if !judgement.sentence.is_empty() {
         sentences.push(judgement.sentence.clone());
     }
-    let names_form = matches!(
-        judgement.relation,
-        Some(Relation::NotIsomers | Relation::Constitutional)
-    );
-    if names_form && !judgement.form.is_empty() {
-        sentences.push(format!(
-            "They are one compound apart from {}.",
-            judgement.form
-        ));
-    }
     match judgement.verdict {
         Verdict::Isomer => sentences.push("A mass cannot tell them apart.".to_owned()),
-        Verdict::StereoDiffers if !names_form => {
+        Verdict::StereoDiffers if matches!(judgement.relation, Some(Relation::Stereo(_))) => {
             sentences.push("A mass cannot tell stereoisomers apart.".to_owned());
         }
         _ => {}

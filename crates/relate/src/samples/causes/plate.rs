@@ -57,9 +57,6 @@ fn moved(holdings: &Holdings<'_>, line: &[(u16, usize)]) -> Option<Hypothesis> {
     let last = pairs.iter().rposition(is_moved)?;
     let span = &pairs[first..=last];
     let mut explains: Vec<usize> = span.iter().filter(|p| is_moved(p)).map(|p| p.0).collect();
-    if explains.len() < LEAST_MOVED {
-        return None;
-    }
     let mut involves = Vec::new();
     let (mut sum, mut count) = (0.0, 0);
     for &(sample, before) in span {
@@ -79,12 +76,16 @@ fn moved(holdings: &Holdings<'_>, line: &[(u16, usize)]) -> Option<Hypothesis> {
         count += 1;
     }
     // What sat in the last place may have come round to the first; what was there first went on.
-    let (head, tail) = (span[0].1, span[span.len() - 1].0);
-    if differs(head) {
-        let round = holdings.strength(head, tail);
-        match round > 0.0 {
-            true => explains.insert(0, head),
-            false => involves.push(head),
+    let tail = span[span.len() - 1].0;
+    let head = head(holdings, &pairs[..first], span[0].1);
+    for (at, &sample) in head.iter().enumerate() {
+        let round = match at + 1 == head.len() {
+            true => holdings.strength(sample, tail),
+            false => 0.0,
+        };
+        match differs(sample) && round > 0.0 {
+            true => explains.insert(0, sample),
+            false => involves.push(sample),
         }
         sum += round;
         count += 1;
@@ -95,12 +96,28 @@ fn moved(holdings: &Holdings<'_>, line: &[(u16, usize)]) -> Option<Hypothesis> {
         true => Evidence::Mass,
         false => Evidence::Structure,
     };
-    (score >= LEAST_SCORE).then(|| Hypothesis {
+    let is_seen = explains.len() >= LEAST_MOVED && score >= LEAST_SCORE;
+    is_seen.then(|| Hypothesis {
         involves,
         evidence,
         score,
         ..Hypothesis::new(Cause::Shift, explains)
     })
+}
+
+/// The samples before the first one that is seen to have moved that moved as well, as far as can be said:
+/// without a gap, up to the last one that differs from its label. The nearest comes first.
+fn head(holdings: &Holdings<'_>, before: &[(usize, usize)], nearest: usize) -> Vec<usize> {
+    let differs = |sample: usize| holdings.samples[sample].differs;
+    let mut head = vec![nearest];
+    for &(sample, earlier) in before.iter().rev() {
+        if head.last() != Some(&sample) || !differs(sample) && !holdings.is_unseen(sample) {
+            break;
+        }
+        head.push(earlier);
+    }
+    while head.pop_if(|sample| !differs(*sample)).is_some() {}
+    head
 }
 
 /// Samples that hold what the label of a well beside them says.

@@ -18,53 +18,12 @@ pub(super) fn of_hypothesis(
         listed(&known.map(|(sample, _)| name(sample)).collect::<Vec<_>>())
     };
     let (explains, involves) = (names(&hypothesis.explains), names(&hypothesis.involves));
-    let half_seen = !hypothesis.involves.is_empty();
-    let unseen = hypothesis.involves.iter().all(|&at| holdings.is_unseen(at));
-    let instead = match unseen {
-        true => "of which nothing is known",
-        false => "which holds, as far as is known, what is on no label",
-    };
-    let mut text = match hypothesis.cause {
-        Cause::Swap if half_seen => format!(
-            "{explains} holds what the label says of {involves}, {instead}: the two may have been exchanged."
-        ),
-        Cause::Swap if hypothesis.is_ambiguous => format!(
-            "Among {explains} two compounds were exchanged; which sample with which the records do not say."
-        ),
-        Cause::Swap => format!("{explains} hold each other's compound: they were exchanged."),
-        Cause::Cycle if half_seen => format!(
-            "{explains} each hold what the label of the next says, the last that of {involves}, {instead}: they may have been exchanged in a circle."
-        ),
-        Cause::Cycle if hypothesis.is_ambiguous => format!(
-            "Among {explains} compounds were exchanged in more than one way; the records do not say which."
-        ),
-        Cause::Cycle => format!(
-            "{explains} each hold what the label of the next says, the last that of the first: they were exchanged in a circle."
-        ),
-        Cause::Shift => format!(
-            "{explains} each hold what the label one place before says: the line sits one place further than its labels."
-        ),
-        Cause::OneStructureSeveralLabels if half_seen => {
-            format!("{explains} hold the compound that {involves} holds under another label.")
-        }
-        Cause::OneStructureSeveralLabels => {
-            format!("{explains} hold one compound under different labels.")
-        }
-        Cause::OneLabelSeveralStructures if half_seen => {
-            format!("{explains} and {involves} have one label, but hold different compounds.")
-        }
-        Cause::OneLabelSeveralStructures => {
-            format!("{explains} have one label, but hold different compounds.")
-        }
-        Cause::Neighbour => {
-            format!("{explains} holds what the label of {involves}, the well beside it, says.")
-        }
-    };
-    if hypothesis.cause == Cause::Shift && half_seen {
-        text.push_str(&format!(
-            " {involves} belong to it, too, but that cannot be seen."
-        ));
-    }
+    let mut text = what(
+        hypothesis,
+        &explains,
+        &involves,
+        instead(holdings, hypothesis),
+    );
     text.push_str(match hypothesis.evidence {
         Evidence::Structure => "",
         Evidence::Form => " Stereo or form aside, that is.",
@@ -75,6 +34,61 @@ pub(super) fn of_hypothesis(
         text.push_str(&format!(" What would decide: {}.", analyses.join("; ")));
     }
     text
+}
+
+/// What is known of samples whose compound may have gone elsewhere.
+fn instead(holdings: &Holdings<'_>, hypothesis: &Hypothesis) -> &'static str {
+    match hypothesis.involves.iter().all(|&at| holdings.is_unseen(at)) {
+        true => "of which nothing is known",
+        false => "which holds, as far as is known, what is on no label",
+    }
+}
+
+fn what(hypothesis: &Hypothesis, explains: &str, involves: &str, instead: &str) -> String {
+    let half_seen = !hypothesis.involves.is_empty();
+    let hold = match hypothesis.explains.len() {
+        1 => "holds",
+        _ => "hold",
+    };
+    match hypothesis.cause {
+        Cause::Swap if half_seen => format!(
+            "{explains} {hold} what the label says of {involves}, {instead}: they may have been exchanged."
+        ),
+        Cause::Swap if hypothesis.is_ambiguous => format!(
+            "Among {explains} two compounds were exchanged; which sample with which the records do not say."
+        ),
+        Cause::Swap => format!("{explains} hold each other's compound: an exchange explains it."),
+        Cause::Cycle if half_seen => format!(
+            "{explains} each hold what the label of the next says, the last that of {involves}, {instead}: they may have been exchanged in a circle."
+        ),
+        Cause::Cycle if hypothesis.is_ambiguous => format!(
+            "Among {explains} compounds were exchanged in more than one way; the records do not say which."
+        ),
+        Cause::Cycle => format!(
+            "{explains} each hold what the label of the next says, the last that of the first: an exchange in a circle explains it."
+        ),
+        Cause::Shift if half_seen => format!(
+            "{explains} each hold what the label one place before says, as in a line that sits one place further than its labels. Part of it, as far as can be said: {involves}."
+        ),
+        Cause::Shift => format!(
+            "{explains} each hold what the label one place before says, as in a line that sits one place further than its labels."
+        ),
+        Cause::OneStructureSeveralLabels if half_seen => {
+            format!("{explains} {hold} the compound of {involves} under another label.")
+        }
+        Cause::OneStructureSeveralLabels => {
+            format!("{explains} hold one compound under different labels.")
+        }
+        Cause::OneLabelSeveralStructures if half_seen => {
+            format!("{explains} {hold} another compound than {involves} under the same label.")
+        }
+        Cause::OneLabelSeveralStructures => {
+            format!("{explains} hold different compounds under one label.")
+        }
+        Cause::Neighbour => {
+            format!("{explains} holds what the label of {involves} says, the well beside it.")
+        }
+    }
 }
 
 fn in_words(analysis: Analysis) -> &'static str {
