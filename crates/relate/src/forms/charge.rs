@@ -161,11 +161,12 @@ impl<'s> Work<'s> {
         }
     }
 
-    /// The atom of a choice that makes the most customary molecule: heteroatoms before carbon, acids,
+    /// The atom of a choice, if any will do, that makes the most customary molecule: heteroatoms before carbon, acids,
     /// esters and amides kept, most of it aromatic, imines within rings; the canonical order decides what is
     /// left.
     fn best(&mut self, view: &View, choice: &Choice) -> Result<Option<u32>, FormError> {
         let total = total_charge(view);
+        let before = aromatic_bonds(&self.canonical);
         let mut best = None;
         for at in choice.representatives(view) {
             let kept = self.protons.clone();
@@ -175,14 +176,15 @@ impl<'s> Work<'s> {
             let canonical = self.orderer.order(&trial.molecule);
             let canonical = canonical.map_err(PrepareError::from)?;
             let after = View::of(&canonical);
-            if total_charge(&after) >= total {
+            let aromatic = aromatic_bonds(&canonical);
+            if total_charge(&after) >= total || choice.quaternary && aromatic < before {
                 continue;
             }
             let site = view.site(at);
             let order = (
                 site.element == Element::CARBON,
                 Reverse(after.acyl_groups()),
-                Reverse(aromatic_bonds(&canonical)),
+                Reverse(aromatic),
                 choice.change < 0 && !site.in_ring,
                 Reverse(site.hydrogens),
                 site.element,

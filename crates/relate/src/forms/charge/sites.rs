@@ -13,6 +13,9 @@ pub(super) struct Choice {
     pub(super) change: i8,
     /// Positions, ascending; at least one.
     pub(super) atoms: Vec<u32>,
+    /// A ring atom without hydrogens bears the positive charge as well, as in N-alkylaminopyridinium ions:
+    /// a proton may go only where it leaves the ring aromatic.
+    pub(super) quaternary: bool,
 }
 
 impl Choice {
@@ -25,13 +28,24 @@ impl Choice {
         };
         atoms.sort_unstable();
         atoms.dedup();
-        (!atoms.is_empty()).then_some(Self { change, atoms })
+        let quaternary = cluster.atoms.iter().any(|&at| {
+            let site = view.site(at);
+            change < 0 && site.in_ring && site.mobile && site.hydrogens == 0
+        });
+        (!atoms.is_empty()).then_some(Self {
+            change,
+            atoms,
+            quaternary,
+        })
     }
 
     /// The atom, if the constitution relates all of them: any is as good as the first.
     pub(super) fn settled(&self, view: &View) -> Option<u32> {
         let (&first, rest) = self.atoms.split_first()?;
         let orbit = view.site(first).orbit;
+        if self.quaternary {
+            return None;
+        }
         rest.iter()
             .all(|&at| view.site(at).orbit == orbit)
             .then_some(first)

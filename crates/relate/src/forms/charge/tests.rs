@@ -83,6 +83,8 @@ fn neutral_where_protons_can_do_it(#[case] state: &str, #[case] neutral: &str) {
 #[case::ammonium_fluoroborate("C[NH3+].F[B-](F)(F)F")]
 #[case::ylide("C=P(C)(C)C")]
 #[case::pyridine_imide("[N-](C(C)=O)[n+]1ccccc1")]
+#[case::dequalinium_half("Cc1cc(N)c2ccccc2[n+]1C")]
+#[case::pyridinium_enolate("O=C1C=CC(=O)C([O-])=C1[n+]1ccccc1")]
 #[case::hydrazone("CC=NN")]
 fn what_no_proton_takes_away_stays(#[case] text: &str) {
     check(text, text);
