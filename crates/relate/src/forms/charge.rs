@@ -162,7 +162,7 @@ impl<'s> Work<'s> {
     }
 
     /// The atom of a choice, if any will do, that makes the most customary molecule: heteroatoms before carbon, acids,
-    /// esters and amides kept, most of it aromatic, imines within rings; the canonical order decides what is
+    /// esters and amides kept, most of it aromatic, imines within rings, the most symmetric; the canonical order decides what is
     /// left.
     fn best(&mut self, view: &View, choice: &Choice) -> Result<Option<u32>, FormError> {
         let total = total_charge(view);
@@ -187,6 +187,7 @@ impl<'s> Work<'s> {
                 Reverse(aromatic),
                 choice.change < 0 && !site.in_ring,
                 Reverse(site.hydrogens),
+                after.orbit_count(),
                 site.element,
                 site.orbit,
                 at,
