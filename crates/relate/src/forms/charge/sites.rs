@@ -13,7 +13,7 @@ pub(super) struct Choice {
     pub(super) change: i8,
     /// Positions, ascending; at least one.
     pub(super) atoms: Vec<u32>,
-    /// A ring atom without hydrogens bears the positive charge as well, as in N-alkylaminopyridinium ions:
+    /// A ring nitrogen without hydrogens bears the positive charge as well, as in N-alkylaminopyridinium:
     /// a proton may go only where it leaves the ring aromatic.
     pub(super) quaternary: bool,
 }
@@ -30,7 +30,11 @@ impl Choice {
         atoms.dedup();
         let quaternary = cluster.atoms.iter().any(|&at| {
             let site = view.site(at);
-            change < 0 && site.in_ring && site.mobile && site.hydrogens == 0
+            change < 0
+                && site.element == Element::NITROGEN
+                && site.in_ring
+                && site.mobile
+                && site.bonds.len() == 3
         });
         (!atoms.is_empty()).then_some(Self {
             change,

@@ -50,6 +50,11 @@ fn check(state: &str, neutral: &str) {
 #[case::cytidine_core("CN1C=CC(N)=[NH+]C1=O", "CN1C=CC(N)=NC1=O")]
 #[case::tetrazole_and_dihydropyrimidine("C1=CC(C)n2nnnc2[N-]1", "C1=CC(C)n2nnnc2N1")]
 #[case::pyrimidinium_lactam("CC1=[N+](C)C(C)=CC(=O)N1", "CC1=NC(=O)C=C(C)N1C")]
+#[case::flavone_imine("CC1=CC(=[NH+]C)c2ccccc2O1", "CC1=CC(=NC)c2ccccc2O1")]
+#[case::porphine_dication(
+    "C1=CC2=CC3=CC=C(N3)C=C3C=CC(=[NH+]3)C=C3C=CC(N3)=CC1=[NH+]2",
+    "C1=CC2=CC3=CC=C(N3)C=C3C=CC(=N3)C=C3C=CC(N3)=CC1=N2"
+)]
 #[case::thiolate("CC[S-]", "CCS")]
 #[case::cyanide("[C-]#N", "C#N")]
 #[case::azide("[N-]=[N+]=[N-]", "N=[N+]=[N-]")]
