@@ -28,6 +28,16 @@ impl Choice {
         };
         atoms.sort_unstable();
         atoms.dedup();
+        let carbon = |at: u32| view.site(at).element == Element::CARBON;
+        if atoms.iter().any(|&at| !carbon(at)) {
+            atoms.retain(|&at| !carbon(at));
+        } else if atoms
+            .iter()
+            .any(|&at| view.site(at).orbit != view.site(atoms[0]).orbit)
+        {
+            // A charge that is mobile over unlike carbons: no rule says which of them takes the proton.
+            return None;
+        }
         let quaternary = cluster.atoms.iter().any(|&at| {
             let site = view.site(at);
             change < 0

@@ -55,6 +55,8 @@ fn check(state: &str, neutral: &str) {
     "C1=CC2=CC3=CC=C(N3)C=C3C=CC(=[NH+]3)C=C3C=CC(N3)=CC1=[NH+]2",
     "C1=CC2=CC3=CC=C(N3)C=C3C=CC(=N3)C=C3C=CC(N3)=CC1=N2"
 )]
+#[case::cyclopentadienide("[CH-]1C=CC=C1", "C1C=CC=C1")]
+#[case::allyl_anion("[CH2-]C=C", "CC=C")]
 #[case::thiolate("CC[S-]", "CCS")]
 #[case::cyanide("[C-]#N", "C#N")]
 #[case::azide("[N-]=[N+]=[N-]", "N=[N+]=[N-]")]
@@ -90,6 +92,7 @@ fn neutral_where_protons_can_do_it(#[case] state: &str, #[case] neutral: &str) {
 #[case::pyridine_imide("[N-](C(C)=O)[n+]1ccccc1")]
 #[case::dequalinium_half("Cc1cc(N)c2ccccc2[n+]1C")]
 #[case::pyridinium_enolate("O=C1C=CC(=O)C([O-])=C1[n+]1ccccc1")]
+#[case::methylcyclopentadienide("C[C-]1C=CC=C1")]
 #[case::hydrazone("CC=NN")]
 fn what_no_proton_takes_away_stays(#[case] text: &str) {
     check(text, text);
