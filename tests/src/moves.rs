@@ -167,7 +167,8 @@ impl<'s> Readings<'s> {
                 .of(walk.structure, &group.atoms, seat.through, seat.atom);
             // What is written depends on the drawing where the bond is mobile, or a charge is separated.
             let mobile = walk.order((seat.through, seat.atom)) == Some(None);
-            let unnamed = (mobile || group.atoms.len() == 1) && group.name.is_none();
+            let oxygen = group.formula.to_string() == "O" || group.formula.to_string() == "S";
+            let unnamed = (mobile || oxygen) && group.name.is_none();
             require(unnamed || name.as_deref() == group.name, "another name")?;
             if let Some(place) = &seat.place {
                 places::check(walk, self.names, group, seat, place)?;

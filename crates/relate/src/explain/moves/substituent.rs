@@ -33,12 +33,12 @@ impl Substituent {
         }
         let mut sources = frame.sources(side, atoms);
         sources.sort_unstable();
-        // The bond of a sulfoxide or nitro group is written in more than one way.
-        let separated = |&seat: &u32| {
-            let charge = graph.atom(seat).charge;
-            atoms.len() == 1 && !atoms.contains(&seat) && charge.is_some_and(|charge| charge > 0)
+        // The S–O bond of a sulfoxide and the N–O bond of a nitro group are written in more than one way.
+        let separated = |seat: u32| {
+            let [own, other] = [through, seat].map(|atom| graph.atom(atom).charge.unwrap_or(0));
+            atoms.len() == 1 && seat != through && own < 0 && other > 0
         };
-        let named = !graph.neighbours(through).any(|seat| separated(&seat));
+        let named = !graph.neighbours(through).any(separated);
         let name = named.then(|| name_of(&coloured(frame, side, atoms, through, order)));
         Self {
             atoms: sources,
