@@ -18,10 +18,12 @@ mod extent;
 mod graph6;
 mod kekule;
 mod kinds;
+mod lines;
 mod molfile;
 mod numbers;
 mod pairs;
 mod renumber;
+mod shortcuts;
 mod small;
 mod spelling;
 mod stereo;
@@ -39,10 +41,12 @@ pub use crate::{
     graph6::Graph,
     kekule::other_kekule_form,
     kinds::{KindPair, definition_kinds, fixture_kinds},
+    lines::check_lines,
     molfile::{molfiles, renumbered_molfile},
     numbers::Numbers,
     pairs::{Expected, Pair, definition_pairs, fixture_pairs, grouped_pairs},
     renumber::{renumbered, renumbered_form, with_hydrogens_written},
+    shortcuts::Shortcuts,
     small::small_isomers,
     spelling::random_spelling,
     stereo::{Markings, all_markings, completions, grouped, mirrored},

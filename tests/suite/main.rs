@@ -38,6 +38,7 @@ mod pages;
 mod relations;
 mod renumbering;
 mod samples;
+mod shortcuts;
 mod smiles;
 mod stability;
 mod symmetry;

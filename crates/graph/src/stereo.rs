@@ -136,7 +136,7 @@ impl Perception {
         self.cages.clear();
         self.undrawable.clear();
         marks::on_skeleton(marks, skeleton, molecule.drawn_stereo());
-        let thetas = tetrahedral::find(self, skeleton, mesomer, marks, eligible, bridgeheads);
+        tetrahedral::find(self, skeleton, mesomer, marks, eligible, bridgeheads);
         self.tetrahedral = self.candidates.len();
         double_bond::find(self, skeleton, mesomer, marks, seen);
         let places = self.candidates.iter().enumerate().skip(self.tetrahedral);
@@ -145,7 +145,7 @@ impl Perception {
             .extend(places.map(|(index, c)| (ascending(c.centres), index)));
         self.places.sort_unstable();
         marks::apply(self, skeleton, mesomer, marks, seen);
-        bridgehead::bind(self, &thetas);
+        bridgehead::bind(self, bridgeheads);
         coordination::load(self, skeleton, molecule.drawn_coordination());
     }
 
