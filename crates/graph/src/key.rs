@@ -60,17 +60,16 @@ impl Digester {
 fn pack(words: &[u64], mut before: u64, bytes: &mut Vec<u8>) {
     for &word in words {
         let mut change = word ^ before;
-        // Put together here and appended at once, so that room is asked for once a word.
-        let mut packed = [0; 9];
-        let mut length = 1;
+        let head = bytes.len();
+        let mut places = 0;
+        bytes.push(0);
         while change != 0 {
             let place = change.trailing_zeros() / 8;
-            packed[0] |= 1 << place;
-            packed[length] = (change >> (8 * place)) as u8;
-            length += 1;
+            places |= 1 << place;
+            bytes.push((change >> (8 * place)) as u8);
             change &= !(0xff << (8 * place));
         }
-        bytes.extend_from_slice(&packed[..length]);
+        bytes[head] = places;
         before = word;
     }
 }

@@ -197,7 +197,7 @@ impl Canonical {
                 });
             }
         }
-        form.stereo.sort_by_key(|element| element.centres);
+        form.stereo.sort_unstable_by_key(|element| element.centres);
         let groups = self.claims.groups.iter();
         form.groups = groups.map(|group| group.freedom.group()).collect();
         form.groups.sort_unstable();
