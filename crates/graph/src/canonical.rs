@@ -144,6 +144,11 @@ impl Orderer {
         orderer
     }
 
+    /// The limits.
+    pub fn limits(&self) -> &Limits {
+        &self.limits
+    }
+
     /// Finds the canonical view of a molecule.
     ///
     /// # Errors
@@ -199,6 +204,11 @@ impl Orderer {
             view.perception
                 .find_undrawable(&view.skeleton, &view.mesomer, &bare.generators);
         }
+        view.perception.remember(
+            &view.skeleton,
+            &bare.generators,
+            molecule.remembered_stereo(),
+        );
         claims::list_variables(&view.perception, &mut view.variables);
         // Arrangements about metals are given, not open: they are part of the graph whose
         // automorphisms relate the other elements.

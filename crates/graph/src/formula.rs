@@ -89,22 +89,18 @@ impl Formula {
 impl fmt::Display for Formula {
     fn fmt(&self, formatter: &mut fmt::Formatter<'_>) -> fmt::Result {
         let organic = self.count(Element::CARBON) > 0;
-        let mut order = [(Element::WILDCARD, 0); Element::COUNT];
-        let order = &mut order[..self.counts.len()];
-        order.copy_from_slice(&self.counts);
-        order.sort_unstable_by_key(|&(element, _)| {
-            let place = match element {
-                Element::CARBON if organic => 0,
-                Element::HYDROGEN if organic => 1,
-                Element::WILDCARD => 3,
-                _ => 2,
-            };
-            (place, element.symbol())
-        });
-        for &mut (element, count) in order {
+        // The next one of a handful is looked for each time, since a sorted list would need memory.
+        let mut last = 0;
+        while let Some((place, element, count)) = self
+            .iter()
+            .map(|(element, count)| (hill_place(element, organic), element, count))
+            .filter(|&(place, ..)| place > last)
+            .min()
+        {
+            last = place;
             formatter.write_str(element.symbol())?;
             if count != 1 {
-                write!(formatter, "{count}")?;
+                write_number(formatter, count)?;
             }
         }
         match self.charge {
@@ -114,6 +110,28 @@ impl fmt::Display for Formula {
             charge => write!(formatter, "{charge:+}"),
         }
     }
+}
+
+/// The place of an element in Hill order: numbers above 0 that sort as the order does.
+fn hill_place(element: Element, organic: bool) -> u16 {
+    match element {
+        Element::CARBON if organic => 1,
+        Element::HYDROGEN if organic => 2,
+        Element::WILDCARD => u16::MAX,
+        _ => 3 + element.place_in_alphabet(),
+    }
+}
+
+/// Writes a number as its digits, which takes a fraction of what formatting it does.
+fn write_number(formatter: &mut fmt::Formatter<'_>, mut number: u32) -> fmt::Result {
+    let mut digits = [b'0'; 10];
+    let mut start = digits.len();
+    while number > 0 || start == digits.len() {
+        start -= 1;
+        digits[start] += (number % 10) as u8;
+        number /= 10;
+    }
+    formatter.write_str(str::from_utf8(&digits[start..]).map_err(|_| fmt::Error)?)
 }
 
 #[cfg(test)]

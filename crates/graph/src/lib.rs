@@ -21,6 +21,7 @@ mod mesomer;
 mod molecule;
 mod order;
 mod polyhedron;
+mod revision;
 mod rings;
 mod rows;
 mod skeleton;
@@ -50,6 +51,7 @@ pub use crate::{
     mass::{Mass, MassError, average_mass, monoisotopic_mass},
     molecule::Molecule,
     order::{GraphError, GraphOrder, GraphOrderer},
+    revision::{Revised, Revision},
     stereo::Undrawable,
     unsaturation::Unsaturation,
 };

@@ -7,11 +7,13 @@
 
 mod constitution;
 mod explain;
+mod forms;
 mod groups;
 mod kinds;
 pub mod mapping;
 mod relation;
 mod remarks;
+pub mod samples;
 mod structure;
 mod words;
 
@@ -19,10 +21,15 @@ mod words;
 pub mod parallel;
 pub mod wire;
 
+pub use explain::moves as findings;
 pub use crate::{
     explain::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
         StereoChange, StereoDifference, explain,
+    },
+    forms::{
+        Axes, AxesError, Axis, Change, CounterIons, CounterIonsError, Form, FormError, Listed,
+        ListedKind, Normaliser, Removed, same_apart_from,
     },
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},

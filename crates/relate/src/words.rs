@@ -1,6 +1,8 @@
 //! The verdict in plain sentences.
 
+pub(crate) mod forms;
 mod functional;
+pub(crate) mod moves;
 mod places;
 mod stereo;
 mod stereo_groups;
@@ -10,13 +12,17 @@ mod tests;
 
 use molkin_graph::Limits;
 
-use crate::{Explanation, Kind, Relation, Structure, Verdict};
+use crate::{
+    Explanation, Kind, Relation, Structure, Verdict,
+    findings::{Change, Finding},
+};
 
 /// One or two sentences for a chemist.
 pub(crate) fn summary(
     [a, b]: [&Structure; 2],
     verdict: &Verdict,
     kind: Option<Kind>,
+    substances: Option<&str>,
     explained: Option<&Explanation>,
     limits: &Limits,
 ) -> String {
@@ -29,20 +35,30 @@ pub(crate) fn summary(
         Relation::Constitutional => {
             // What needs more than the kind is left out of brief output.
             let groups = explained.and_then(|_| functional::difference(a, b, limits));
-            constitutional(a, kind, groups, explained)
+            constitutional([a, b], kind, groups, explained)
         }
-        Relation::NotIsomers => not_isomers(a, b, kind),
+        Relation::NotIsomers => not_isomers(a, b, kind, substances),
     }
 }
 
 fn constitutional(
-    a: &Structure,
+    [a, b]: [&Structure; 2],
     kind: Option<Kind>,
     groups: Option<String>,
     explained: Option<&Explanation>,
 ) -> String {
     let what = match kind {
         Some(Kind::Isotopomers) => ", with the same isotopes in other places".to_owned(),
+        Some(Kind::ProtonTransfer) => {
+            let moved = explained.and_then(|e| forms::moved_hydrogens([a, b], e, "proton"));
+            let moved = moved.unwrap_or_else(|| "a proton sits elsewhere".to_owned());
+            format!("; proton transfer: {moved}")
+        }
+        Some(Kind::Tautomers) => {
+            let moved = explained.and_then(|e| forms::moved_hydrogens([a, b], e, "hydrogen"));
+            let moved = moved.unwrap_or_else(|| "a mobile hydrogen sits elsewhere".to_owned());
+            format!("; tautomers: {moved}")
+        }
         Some(Kind::RingChain) => ", but a chain of one is closed to a ring in the other".to_owned(),
         Some(Kind::Functional) => {
             let groups = groups.map(|groups| format!(" ({groups})"));
@@ -60,6 +76,10 @@ fn constitutional(
     let Some(bonds) = explained.and_then(|e| e.bonds.as_ref()) else {
         return verdict;
     };
+    let findings = explained.map_or(&[][..], |explained| &explained.findings);
+    if let Some(told) = foremost([a, b], findings, bonds.minimal) {
+        return format!("{verdict} {told}");
+    }
     let (only_a, only_b) = (bonds.only_in_a.len(), bonds.only_in_b.len());
     let differences = match (only_a + only_b, bonds.order_changed.len()) {
         (0, 0) => {
@@ -81,6 +101,30 @@ fn constitutional(
     }
 }
 
+/// The most telling finding, and how many there are beside it.
+fn foremost(structures: [&Structure; 2], findings: &[Finding], minimal: bool) -> Option<String> {
+    let [first, others @ ..] = findings else {
+        return None;
+    };
+    let sentence = moves::sentence(structures, first);
+    let sentence = sentence.trim_end_matches('.');
+    // Groups are named with the verdict.
+    let others = others
+        .iter()
+        .filter(|finding| !matches!(finding.change, Change::Groups(_)));
+    let beside = match others.count() {
+        0 => String::new(),
+        1 => "; one more difference".to_owned(),
+        n => format!("; {n} more differences"),
+    };
+    Some(if minimal {
+        format!("{sentence}{beside}.")
+    } else {
+        let sentence = moves::within(sentence);
+        format!("One way to see it, not proved the least: {sentence}{beside}.")
+    })
+}
+
 /// "C2", "C2 and C3", "C2, C3 and C5".
 fn listed(items: &[String]) -> String {
     match items {
@@ -98,8 +142,16 @@ fn counted(count: usize, noun: &str) -> String {
     }
 }
 
-fn not_isomers(a: &Structure, b: &Structure, kind: Option<Kind>) -> String {
+fn not_isomers(
+    a: &Structure,
+    b: &Structure,
+    kind: Option<Kind>,
+    substances: Option<&str>,
+) -> String {
     let (left, right) = (a.formula(), b.formula());
+    if let Some(substances) = substances {
+        return format!("Not isomers, but one compound: {substances} ({left} and {right}).");
+    }
     if kind == Some(Kind::Homologues) {
         format!(
             "Not isomers but homologues: the same functional groups, and formulae that differ by CH2 units ({left} and {right})."

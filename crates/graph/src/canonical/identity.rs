@@ -58,7 +58,8 @@ impl Orderer {
             return self.order_into(molecule, view);
         }
         let steps = self.order_constitution(molecule, view)?;
-        let marked = molecule.stereo.iter().any(|mark| mark.parity.is_some());
+        let marked = molecule.stereo.iter().any(|mark| mark.parity.is_some())
+            || !molecule.remembered.is_empty();
         if marked || !molecule.coordination.is_empty() || !molecule.groups.is_empty() {
             self.order_stereo(molecule, view, steps, Extent::Identity)?;
         } else {

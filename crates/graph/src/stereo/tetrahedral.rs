@@ -63,6 +63,7 @@ pub(super) fn find(
             ligands,
             parity: None,
             quiet,
+            remembered: false,
         });
     }
 }

@@ -6,7 +6,9 @@ use molkin_formats::{ReadError, smiles, source::RecordOutcome};
 use molkin_graph::{CanonicalForm, Formula, Identity, Limits, Molecule, Orderer};
 use serde::Serialize;
 
-use crate::{PrepareError, structure::check_is_one_structure};
+use crate::{
+    Axes, Axis, Normaliser, PrepareError, Structure, structure::check_is_one_structure,
+};
 
 /// A record and its keys: the columns of `molkin keys`, in their order. Later columns are added at
 /// the end.
@@ -28,8 +30,23 @@ pub struct KeyRow {
     pub constitution_key: String,
     /// Key of the compound: isotopes and all claims about stereo.
     pub compound_key: String,
-    /// What is wrong: `line:column: code: message`, or `code: message` where it has no place.
+    /// What is wrong: `line:column: code: message`, or `code: message` where it has no place. Beside `ok`:
+    /// which keys of forms are not there, and why.
     pub message: String,
+    /// Compound key with the axes `salt` and `charge` overlooked; empty where it is not asked for.
+    pub parent_key: String,
+    /// Compound key with the axis `tautomer` overlooked; empty where it is not asked for.
+    pub tautomer_key: String,
+}
+
+/// Which keys of forms the rows have.
+#[derive(Debug)]
+struct Forms {
+    normaliser: Normaliser,
+    /// Axes that all keys leave out.
+    overlook: Axes,
+    /// Whether there are keys of parent and tautomers.
+    further: bool,
 }
 
 /// Makes one row after another in the same memory. One per thread.
@@ -55,6 +72,7 @@ pub struct KeyRows {
     orderer: Orderer,
     identity: Identity,
     formula: Formula,
+    forms: Option<Forms>,
     form: CanonicalForm,
     writer: smiles::Writer,
     written: smiles::Written,
@@ -62,16 +80,32 @@ pub struct KeyRows {
 }
 
 impl KeyRows {
-    /// Rows within the given limits.
+    /// Rows within the given limits, without keys of forms.
     pub fn new(limits: Limits) -> Self {
         Self {
             orderer: Orderer::new(limits),
             identity: Identity::default(),
             formula: Formula::default(),
+            forms: None,
             form: CanonicalForm::default(),
             writer: smiles::Writer::default(),
             written: smiles::Written::default(),
             row: KeyRow::default(),
+        }
+    }
+
+    /// The same with some axes overlooked in all keys and, if `further` is set, with the keys of parent and
+    /// tautomers.
+    #[must_use]
+    pub fn with_forms(self, normaliser: Normaliser, overlook: Axes, further: bool) -> Self {
+        let wanted = further || !overlook.is_empty();
+        Self {
+            forms: wanted.then_some(Forms {
+                normaliser,
+                overlook,
+                further,
+            }),
+            ..self
         }
     }
 
@@ -104,13 +138,18 @@ impl KeyRows {
         row.smiles.push_str(&self.written.text);
         set(&mut row.constitution_key, self.identity.constitution_key());
         set(&mut row.compound_key, self.identity.compound_key());
+        if let Some(forms) = &mut self.forms {
+            let structure = Structure::new(&mut self.orderer, molecule.clone())?;
+            self.row.add_forms(forms, &structure);
+        }
         Ok(())
     }
 }
 
 impl KeyRow {
     fn begin(&mut self, source: &str, outcome: &RecordOutcome) {
-        set(&mut self.source, source);
+        self.source.clear();
+        self.source.push_str(source);
         self.record = outcome.index;
         self.name.clone_from(&outcome.name);
         self.status = "error";
@@ -120,8 +159,50 @@ impl KeyRow {
             &mut self.constitution_key,
             &mut self.compound_key,
             &mut self.message,
+            &mut self.parent_key,
+            &mut self.tautomer_key,
         ] {
             field.clear();
+        }
+    }
+}
+
+impl KeyRow {
+    fn add_forms(&mut self, forms: &mut Forms, structure: &Structure) {
+        let Forms {
+            normaliser,
+            overlook,
+            further,
+        } = forms;
+        let message = &mut self.message;
+        let mut form = |name: &str, axes: Axes| match normaliser.overlook(structure, axes) {
+            Ok(form) => Some(form),
+            Err(error) => {
+                let gap = if message.is_empty() { "" } else { "; " };
+                // Writing to a string does not fail.
+                let _ = write!(message, "{gap}no {name}: {}: {error}", error.code());
+                None
+            }
+        };
+        if !overlook.is_empty() {
+            self.constitution_key.clear();
+            self.compound_key.clear();
+            if let Some(form) = form("key", *overlook) {
+                let canonical = form.structure().canonical();
+                set(&mut self.constitution_key, canonical.constitution_key());
+                set(&mut self.compound_key, canonical.compound_key());
+            }
+        }
+        if *further {
+            let parent = overlook.with(Axis::Salt).with(Axis::Charge);
+            if let Some(form) = form("parent_key", parent) {
+                let canonical = form.structure().canonical();
+                set(&mut self.parent_key, canonical.compound_key());
+            }
+            if let Some(form) = form("tautomer_key", overlook.with(Axis::Tautomer)) {
+                let canonical = form.structure().canonical();
+                set(&mut self.tautomer_key, canonical.compound_key());
+            }
         }
     }
 }
