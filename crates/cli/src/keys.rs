@@ -73,7 +73,7 @@ impl Entries for Rows<'_> {
         text: &mut Vec<u8>,
     ) -> io::Result<bool> {
         scratch.parser.parse_into(record, &mut scratch.outcome);
-        let row = scratch.rows.row(source, &mut scratch.outcome);
+        let row = scratch.rows.row(source, &scratch.outcome);
         csv::write_row(text, row)?;
         Ok(row.status == "ok")
     }
