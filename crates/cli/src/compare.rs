@@ -18,7 +18,7 @@ use molkin_relate::parallel::{Plan, in_order};
 use crate::{
     args::{Compare, Format, PairBy},
     input::{self, Input},
-    output::{CAUTION, json::Objects},
+    output::{CAUTION, json::Objects, text::Extent},
     report::Report,
 };
 
@@ -63,6 +63,7 @@ struct Comparison<'r> {
     reading: &'r ReadOptions,
     limits: Limits,
     brief: bool,
+    extent: Extent,
     format: Format,
     threads: NonZeroUsize,
     objects: Objects,
@@ -80,6 +81,11 @@ impl<'r> Comparison<'r> {
             reading,
             limits,
             brief: options.brief,
+            extent: if options.full {
+                Extent::Full
+            } else {
+                Extent::Screen
+            },
             format: options.format,
             threads: options.working.threads(),
             objects: Objects::new(options.format),
@@ -97,6 +103,7 @@ impl<'r> Comparison<'r> {
             reading: self.reading,
             limits: self.limits,
             brief: self.brief,
+            extent: self.extent,
             format: self.format,
             style: self.report.style(),
         }

@@ -22,7 +22,7 @@ pub mod wire;
 pub use crate::{
     explain::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
-        StereoChange, StereoDifference, explain,
+        LeftOver, RingJoin, RingSystem, StereoChange, StereoDifference, explain,
     },
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},

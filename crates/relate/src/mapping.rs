@@ -170,12 +170,14 @@ impl Mapping {
     }
 
     /// Whether the structures are too far apart for their differences to be told one by one: at least a third of all bonds
-    /// of both is in one only, however the atoms are mapped.
+    /// of both, and more than six, are in one only, however the atoms are mapped. Six are three moves, which can be told of
+    /// the smallest.
     ///
     /// # Returns
     /// Nothing where the search ended too early to tell: the best map found is that far, but a nearer one may exist.
     pub fn is_unrelated(&self) -> Option<bool> {
-        let far = |bonds: u32| 3 * u64::from(bonds) >= u64::from(self.all_bonds) && bonds > 0;
+        const FEW: u32 = 6;
+        let far = |bonds: u32| 3 * u64::from(bonds) >= u64::from(self.all_bonds) && bonds > FEW;
         match (far(self.bonds_at_least), far(self.distance.bonds)) {
             (true, _) => Some(true),
             (false, false) => Some(false),

@@ -2,6 +2,7 @@
 //!
 //! Atoms count from 1 here, in input order. Fields that do not apply are absent.
 
+mod composition;
 mod describe;
 mod keys;
 mod pair;
@@ -13,10 +14,11 @@ use serde::Serialize;
 
 use crate::remarks::Noted;
 
+pub use composition::{FunctionalGroup, Piece, RingSystem, Sides, Surplus};
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
 pub use keys::{KeyRow, KeyRows};
 pub use pair::{
-    BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair, StereoEntry,
+    BondPair, Bonds, BranchPoint, Branching, Hydrogens, Kind, Pair, StereoEntry,
     compare,
 };
 pub use prepared::Prepared;

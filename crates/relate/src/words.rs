@@ -1,16 +1,18 @@
 //! The verdict in plain sentences.
 
+mod analysis;
 mod functional;
 mod places;
+mod relatives;
 mod stereo;
 mod stereo_groups;
 
 #[cfg(test)]
 mod tests;
 
-use molkin_graph::Limits;
+use crate::{BondDifference, Explanation, Kind, Relation, Structure, Verdict};
 
-use crate::{Explanation, Kind, Relation, Structure, Verdict};
+pub(crate) use analysis::analysis;
 
 /// One or two sentences for a chemist.
 pub(crate) fn summary(
@@ -18,7 +20,6 @@ pub(crate) fn summary(
     verdict: &Verdict,
     kind: Option<Kind>,
     explained: Option<&Explanation>,
-    limits: &Limits,
 ) -> String {
     match verdict.relation {
         Relation::Identical if verdict.open => {
@@ -27,11 +28,11 @@ pub(crate) fn summary(
         Relation::Identical => "The two records are the same compound.".to_owned(),
         Relation::Stereo(kind) => stereo::summary(a, b, kind, explained),
         Relation::Constitutional => {
-            // What needs more than the kind is left out of brief output.
-            let groups = explained.and_then(|_| functional::difference(a, b, limits));
+            let groups = explained.and_then(|found| found.functional_groups.as_ref());
+            let groups = groups.and_then(functional::difference);
             constitutional(a, kind, groups, explained)
         }
-        Relation::NotIsomers => not_isomers(a, b, kind),
+        Relation::NotIsomers => relatives::summary([a, b], kind, explained),
     }
 }
 
@@ -60,6 +61,9 @@ fn constitutional(
     let Some(bonds) = explained.and_then(|e| e.bonds.as_ref()) else {
         return verdict;
     };
+    if bonds.unrelated == Some(true) {
+        return format!("{verdict} {}", unrelated(bonds));
+    }
     let (only_a, only_b) = (bonds.only_in_a.len(), bonds.only_in_b.len());
     let differences = match (only_a + only_b, bonds.order_changed.len()) {
         (0, 0) => {
@@ -81,6 +85,15 @@ fn constitutional(
     }
 }
 
+/// Why single differences are not told.
+fn unrelated(bonds: &BondDifference) -> String {
+    let all = 2 * bonds.kept + bonds.only_in_a.len() + bonds.only_in_b.len();
+    format!(
+        "They are unrelated in structure: however the atoms are laid on each other, at least {} of their {all} bonds belong to one only.",
+        bonds.at_least
+    )
+}
+
 /// "C2", "C2 and C3", "C2, C3 and C5".
 fn listed(items: &[String]) -> String {
     match items {
@@ -95,24 +108,5 @@ fn counted(count: usize, noun: &str) -> String {
         0 => format!("no {noun}"),
         1 => format!("one {noun}"),
         n => format!("{n} {noun}s"),
-    }
-}
-
-fn not_isomers(a: &Structure, b: &Structure, kind: Option<Kind>) -> String {
-    let (left, right) = (a.formula(), b.formula());
-    if kind == Some(Kind::Homologues) {
-        format!(
-            "Not isomers but homologues: the same functional groups, and formulae that differ by CH2 units ({left} and {right})."
-        )
-    } else if left != right {
-        let same_atoms = left.iter().eq(right.iter());
-        let why = if same_atoms {
-            "the net charge differs"
-        } else {
-            "the molecular formulae differ"
-        };
-        format!("Not isomers: {why} ({left} and {right}).")
-    } else {
-        format!("Not isomers: the same elements ({left}), but a different isotopic composition.")
     }
 }

@@ -313,6 +313,7 @@ fn rings_stay_whole() {
 #[case::same(carbons(9, true), carbons(9, true), Some(false))]
 #[case::far(star(6, 1), carbons(7, false), Some(true))]
 #[case::ring_of_three(carbons(3, true), carbons(3, false), Some(false))]
+#[case::few_bonds(star(3, 1), carbons(4, false), Some(false))]
 fn unrelated_beyond_a_third(#[case] a: Side, #[case] b: Side, #[case] expected: Option<bool>) {
     assert_eq!(mapping(&a, &b).is_unrelated(), expected);
 }

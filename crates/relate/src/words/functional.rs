@@ -2,31 +2,21 @@
 
 use std::collections::BTreeMap;
 
-use molkin_graph::Limits;
-
-use crate::{Structure, functional_groups};
+use crate::FunctionalGroup;
 
 /// A group that the table lacks.
 const UNNAMED: &str = "a group without a name";
 
-/// "alcohol in A, ether in B": the groups that one has more often than the other. `None` where there
+/// "alcohol in A, ether in B": the groups that each has more often than the other. `None` where there
 /// are none, or none with a name.
-pub(super) fn difference(a: &Structure, b: &Structure, limits: &Limits) -> Option<String> {
-    let mut surplus: BTreeMap<Vec<u64>, (&str, i32)> = BTreeMap::new();
-    for (structure, step) in [(a, 1), (b, -1)] {
-        for group in functional_groups(structure, limits).ok()? {
-            let name = group.name.unwrap_or(UNNAMED);
-            surplus.entry(group.certificate).or_insert((name, 0)).1 += step;
-        }
-    }
-    let named = |&(name, count): &(&str, i32)| name != UNNAMED && count != 0;
-    if !surplus.values().any(named) {
+pub(super) fn difference([a, b]: &[Vec<FunctionalGroup>; 2]) -> Option<String> {
+    if a.iter().chain(b).all(|group| group.name.is_none()) {
         return None;
     }
-    let side = |sign: i32, place: &str| {
-        let mut own: BTreeMap<&str, i32> = BTreeMap::new();
-        for &(name, count) in surplus.values().filter(|(_, count)| count * sign > 0) {
-            *own.entry(name).or_default() += count * sign;
+    let side = |groups: &[FunctionalGroup], place: &str| {
+        let mut own: BTreeMap<&str, usize> = BTreeMap::new();
+        for group in groups {
+            *own.entry(group.name.unwrap_or(UNNAMED)).or_default() += 1;
         }
         let words = own.into_iter().map(|(name, count)| match count {
             1 => name.to_owned(),
@@ -35,9 +25,6 @@ pub(super) fn difference(a: &Structure, b: &Structure, limits: &Limits) -> Optio
         let words: Vec<String> = words.collect();
         (!words.is_empty()).then(|| format!("{} in {place}", words.join(" and ")))
     };
-    let sides: Vec<String> = [side(1, "A"), side(-1, "B")]
-        .into_iter()
-        .flatten()
-        .collect();
-    Some(sides.join(", "))
+    let sides = [side(a, "A"), side(b, "B")].into_iter().flatten();
+    Some(sides.collect::<Vec<_>>().join(", "))
 }

@@ -1,0 +1,197 @@
+//! Records of different formula: what one has more than the other, and where.
+
+use molkin_graph::Formula;
+
+use crate::{BondDifference, Explanation, Kind, LeftOver, Structure, explain::surplus};
+
+use super::{analysis::only_protons_moved, counted, listed, places::Places, unrelated};
+
+/// Up to so many pieces are named one by one.
+const MOST_PIECES: usize = 3;
+
+const ALIKE: &str = "all else is bonded alike";
+
+pub(super) fn summary(
+    [a, b]: [&Structure; 2],
+    kind: Option<Kind>,
+    explained: Option<&Explanation>,
+) -> String {
+    let verdict = verdict(a, b, kind);
+    let found = explained.and_then(|explained| Some((explained, explained.bonds.as_ref()?)));
+    let Some((explained, bonds)) = found.filter(|_| a.formula() != b.formula()) else {
+        return verdict;
+    };
+    let mut sentences = vec![verdict];
+    let formulae = [a.formula(), b.formula()];
+    let pieces = Pieces {
+        places: Places([a, b]),
+        explained,
+    };
+    let pieces = pieces.in_words();
+    if only_protons_moved(formulae, explained) {
+        sentences.push(match pieces {
+            None => protons(formulae),
+            Some(pieces) if explained.hydrogens.is_empty() => format!("{pieces}; {ALIKE}."),
+            Some(pieces) => format!("{pieces}; all else agrees but for protons."),
+        });
+        return sentences.join(" ");
+    }
+    sentences.extend(surplus_in_words(formulae));
+    if bonds.unrelated == Some(true) {
+        sentences.push(unrelated(bonds));
+        return sentences.join(" ");
+    }
+    let certain = if bonds.minimal {
+        ""
+    } else {
+        "One way to see it, not proved the least: "
+    };
+    let further = further(explained, bonds);
+    match (pieces, further) {
+        (None, None) => {}
+        (None, Some(further)) => sentences.push(capital(format!("{certain}{further}."))),
+        (Some(pieces), None) => {
+            sentences.push(capital(format!("{certain}{pieces}; {ALIKE}.")));
+        }
+        (Some(pieces), Some(further)) => {
+            sentences.push(capital(format!("{certain}{pieces}; besides, {further}.")));
+        }
+    }
+    sentences.join(" ")
+}
+
+fn verdict(a: &Structure, b: &Structure, kind: Option<Kind>) -> String {
+    let (left, right) = (a.formula(), b.formula());
+    if kind == Some(Kind::Homologues) {
+        format!(
+            "Not isomers but homologues: the same functional groups, and formulae that differ by CH2 units ({left} and {right})."
+        )
+    } else if left != right {
+        let same_atoms = left.iter().eq(right.iter());
+        let why = if same_atoms {
+            "the net charge differs"
+        } else {
+            "the molecular formulae differ"
+        };
+        format!("Not isomers: {why} ({left} and {right}).")
+    } else {
+        format!("Not isomers: the same elements ({left}), but a different isotopic composition.")
+    }
+}
+
+/// "A has one proton more; all else is bonded alike."
+fn protons([a, b]: [&Formula; 2]) -> String {
+    let more = a.charge() - b.charge();
+    let side = if more > 0 { "A" } else { "B" };
+    let protons = counted(more.unsigned_abs() as usize, "proton");
+    format!("{side} has {protons} more; {ALIKE}.")
+}
+
+/// "B has CH2 more."
+fn surplus_in_words([a, b]: [&Formula; 2]) -> Option<String> {
+    let [of_a, of_b] = surplus(a, b);
+    let is_some = |formula: &Formula| formula.iter().next().is_some();
+    match (is_some(&of_a), is_some(&of_b)) {
+        (true, true) => Some(format!("A has {of_a} where B has {of_b}.")),
+        (true, false) => Some(format!("A has {of_a} more.")),
+        (false, true) => Some(format!("B has {of_b} more.")),
+        (false, false) => None,
+    }
+}
+
+/// Bonds that differ though neither end is left over.
+fn further(explained: &Explanation, bonds: &BondDifference) -> Option<String> {
+    let outside = |side: usize, list: &[(u32, u32)]| {
+        let left_over = |atom: &u32| {
+            let mut pieces = explained.left_over[side].iter();
+            pieces.any(|piece| piece.atoms.binary_search(atom).is_ok())
+        };
+        list.iter()
+            .filter(|(x, y)| !left_over(x) && !left_over(y))
+            .count()
+    };
+    let (in_a, in_b) = (outside(0, &bonds.only_in_a), outside(1, &bonds.only_in_b));
+    let mut parts = Vec::new();
+    if in_a + in_b > 0 {
+        parts.push(format!(
+            "{} only in A and {} only in B",
+            counted(in_a, "bond"),
+            counted(in_b, "bond")
+        ));
+    }
+    if !bonds.order_changed.is_empty() {
+        let changed = counted(bonds.order_changed.len(), "bond");
+        parts.push(format!("{changed} of different order"));
+    }
+    (!parts.is_empty()).then(|| listed(&parts))
+}
+
+/// Left-over pieces and the atoms that bear them.
+struct Pieces<'s> {
+    places: Places<'s>,
+    explained: &'s Explanation,
+}
+
+impl Pieces<'_> {
+    /// "chlorine on C5 of A, bromine on C5 of B".
+    fn in_words(&self) -> Option<String> {
+        let [a, b] = &self.explained.left_over;
+        match a.len() + b.len() {
+            0 => return None,
+            1..=MOST_PIECES => {}
+            _ => {
+                let [a, b] = [a, b].map(|pieces| counted(pieces.len(), "piece"));
+                return Some(format!("{a} of A and {b} of B have no partner"));
+            }
+        }
+        let named = |side: usize| {
+            let pieces = self.explained.left_over[side].iter();
+            pieces.map(move |piece| self.piece(side, piece))
+        };
+        let words: Vec<String> = named(0).chain(named(1)).collect();
+        Some(words.join(", "))
+    }
+
+    fn piece(&self, side: usize, piece: &LeftOver) -> String {
+        let of = ["A", "B"][side];
+        let what = match piece.name {
+            Some(name) => name.to_owned(),
+            None => piece.formula.to_string(),
+        };
+        match piece.on.as_slice() {
+            [] => format!("{what} as a component of {of}"),
+            [on] => {
+                let place = self.places.of_atom(side, *on);
+                format!("{what} on {place} of {of}{}", self.elsewhere(side, *on))
+            }
+            many => {
+                let places = many.iter().map(|&on| self.places.of_atom(side, on));
+                let places: Vec<String> = places.collect();
+                format!("{what} between {} of {of}", listed(&places))
+            }
+        }
+    }
+
+    /// Where the other record has nothing instead, its atom is worth a word.
+    fn elsewhere(&self, side: usize, atom: u32) -> String {
+        let other = 1 - side;
+        if !self.explained.left_over[other].is_empty() {
+            return String::new();
+        }
+        let mut map = self.explained.atom_map.iter().map(|&(a, b)| [a, b]);
+        let partner = map.find(|pair| pair[side] == atom).map(|pair| pair[other]);
+        partner.map_or_else(String::new, |partner| {
+            format!(
+                " ({} in {})",
+                self.places.of_atom(other, partner),
+                ["A", "B"][other]
+            )
+        })
+    }
+}
+
+fn capital(text: String) -> String {
+    let mut characters = text.chars();
+    let first = characters.next().map(|first| first.to_ascii_uppercase());
+    first.into_iter().chain(characters).collect()
+}
