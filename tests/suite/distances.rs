@@ -188,7 +188,7 @@ fn explain(
 
 /// A table by distance (i): pairs, how many are proved in each part, steps and times. It is the source of the one in
 /// docs/performance.md.
-fn report(name: &str, found: &[(Mapping, f64)]) {
+pub(crate) fn report(name: &str, found: &[(Mapping, f64)]) {
     let mut bins: BTreeMap<u32, Vec<&(Mapping, f64)>> = BTreeMap::new();
     for one in found {
         bins.entry(one.0.distance.bonds.div_ceil(4) * 4)

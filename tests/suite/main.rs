@@ -36,6 +36,7 @@ mod label_laws;
 mod mirror;
 mod pages;
 mod relations;
+mod relatives;
 mod renumbering;
 mod samples;
 mod smiles;

@@ -28,9 +28,14 @@ fn turned(explanation: &Explanation) -> Explanation {
         };
     }
     turned.hydrogens.sort_unstable_by_key(|entry| entry.a);
-    if let Some([a, b]) = &mut turned.branching {
-        std::mem::swap(a, b);
-    }
+    turned.left_over.reverse();
+    turned
+        .branching
+        .iter_mut()
+        .for_each(|sides| sides.reverse());
+    turned.rings.iter_mut().for_each(|sides| sides.reverse());
+    let groups = turned.functional_groups.iter_mut();
+    groups.for_each(|sides| sides.reverse());
     for entry in &mut turned.stereo {
         std::mem::swap(&mut entry.a, &mut entry.b);
         entry.groups.reverse();

@@ -5,7 +5,7 @@ use std::collections::HashMap;
 use molkin_graph::Limits;
 
 use crate::{
-    Structure,
+    Structure, functional_groups,
     mapping::{self, Effort, Heavy, Mapping, sides},
 };
 
@@ -47,7 +47,9 @@ pub struct HydrogenDifference {
 pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanation {
     let heavy = [a, b].map(Heavy::of);
     let [left, right] = &heavy;
-    let sides = sides(left, right);
+    // Groups too symmetric for the limit have no say in the choice of the map.
+    let groups = [a, b].map(|side| functional_groups(side, limits).ok());
+    let sides = sides([a, b], [left, right], &groups);
     let effort = Effort {
         steps: limits.map_steps,
         stop: limits.stop,
@@ -77,7 +79,7 @@ pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanat
         .collect();
     hydrogens.sort_unstable_by_key(|h| h.a);
     Explanation {
-        functional_groups: functional::differences([a, b], &atom_map, limits),
+        functional_groups: functional::differences(groups, &atom_map),
         atom_map,
         bonds: Some(bonds_under(&mapping, left, right)),
         hydrogens,

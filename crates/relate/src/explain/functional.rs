@@ -2,21 +2,18 @@
 
 use std::collections::HashMap;
 
-use molkin_graph::Limits;
+use crate::FunctionalGroup;
 
-use crate::{FunctionalGroup, Structure, functional_groups};
-
-/// The groups that A has more often than B, and B than A, by their lowest atom. `None`: a group is too
-/// symmetric for the limit.
+/// The groups that A has more often than B, and B than A, by their lowest atom. `None`: those of
+/// a record are not known.
 ///
 /// Of several equal groups those count as kept that the map lays on an equal one.
 pub(super) fn differences(
-    [a, b]: [&Structure; 2],
+    groups: [Option<Vec<FunctionalGroup>>; 2],
     atom_map: &[(u32, u32)],
-    limits: &Limits,
 ) -> Option<[Vec<FunctionalGroup>; 2]> {
-    let mut own = functional_groups(a, limits).ok()?;
-    let mut others = functional_groups(b, limits).ok()?;
+    let [own, others] = groups;
+    let (mut own, mut others) = (own?, others?);
     let image: HashMap<u32, u32> = atom_map.iter().copied().collect();
     own.retain(|group| {
         let mut images: Vec<u32> = group
