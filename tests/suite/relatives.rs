@@ -33,9 +33,9 @@ const PARENTS: [&str; 16] = [
 
 /// What is put in the place of a hydrogen: symbol, hydrogens, and the name that the explanation gives.
 const GROUPS: [(&str, u8, &str); 5] = [
-    ("C", 3, "methyl"),
-    ("O", 1, "hydroxy"),
-    ("N", 2, "amino"),
+    ("C", 3, "methyl group"),
+    ("O", 1, "hydroxy group"),
+    ("N", 2, "amino group"),
     ("F", 0, "fluorine"),
     ("Cl", 0, "chlorine"),
 ];
@@ -75,7 +75,7 @@ impl Parts {
     fn substituted(mut self, at: u32, symbol: &str, hydrogens: u8) -> Self {
         let group = Atom {
             hydrogens,
-            ..Atom::new(symbol.parse().unwrap())
+            ..Atom::new(Element::from_symbol(symbol).unwrap())
         };
         self.atoms[at as usize].hydrogens -= 1;
         self.bonds

@@ -5,6 +5,7 @@ mod constitution;
 mod coordination;
 mod functional;
 mod left_over;
+pub mod moves;
 mod named;
 mod rings;
 mod stereo;
@@ -39,6 +40,8 @@ pub struct Explanation {
     /// Functional groups that A has more often than B, and B than A, where constitution differs. `None`
     /// also where a group is too symmetric for the step limit.
     pub functional_groups: Option<[Vec<FunctionalGroup>; 2]>,
+    /// What moved, the most telling first; nothing for records too far apart to tell it piece by piece.
+    pub findings: Vec<moves::Finding>,
     /// Stereo elements that differ under the map.
     pub stereo: Vec<StereoDifference>,
     /// Whether the map is proved to disturb as few stereo elements as any.

@@ -19,6 +19,7 @@ mod words;
 pub mod parallel;
 pub mod wire;
 
+pub use explain::moves as findings;
 pub use crate::{
     explain::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,

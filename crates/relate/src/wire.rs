@@ -4,6 +4,7 @@
 
 mod composition;
 mod describe;
+mod findings;
 mod keys;
 mod pair;
 mod prepared;
@@ -16,6 +17,7 @@ use crate::remarks::Noted;
 
 pub use composition::{FunctionalGroup, Piece, RingSystem, Sides, Surplus};
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
+pub use findings::{Finding, FoundGroup};
 pub use keys::{KeyRow, KeyRows};
 pub use pair::{
     BondPair, Bonds, BranchPoint, Branching, Hydrogens, Kind, Pair, StereoEntry,

@@ -2,6 +2,7 @@
 
 mod analysis;
 mod functional;
+pub(crate) mod moves;
 mod places;
 mod relatives;
 mod stereo;
@@ -10,7 +11,10 @@ mod stereo_groups;
 #[cfg(test)]
 mod tests;
 
-use crate::{BondDifference, Explanation, Kind, Relation, Structure, Verdict};
+use crate::{
+    BondDifference, Explanation, Kind, Relation, Structure, Verdict,
+    findings::{Change, Finding},
+};
 
 pub(crate) use analysis::analysis;
 
@@ -30,14 +34,14 @@ pub(crate) fn summary(
         Relation::Constitutional => {
             let groups = explained.and_then(|found| found.functional_groups.as_ref());
             let groups = groups.and_then(functional::difference);
-            constitutional(a, kind, groups, explained)
+            constitutional([a, b], kind, groups, explained)
         }
         Relation::NotIsomers => relatives::summary([a, b], kind, explained),
     }
 }
 
 fn constitutional(
-    a: &Structure,
+    [a, b]: [&Structure; 2],
     kind: Option<Kind>,
     groups: Option<String>,
     explained: Option<&Explanation>,
@@ -61,6 +65,10 @@ fn constitutional(
     let Some(bonds) = explained.and_then(|e| e.bonds.as_ref()) else {
         return verdict;
     };
+    let findings = explained.map_or(&[][..], |explained| &explained.findings);
+    if let Some(told) = foremost([a, b], findings, bonds.minimal) {
+        return format!("{verdict} {told}");
+    }
     if bonds.unrelated == Some(true) {
         return format!("{verdict} {}", unrelated(bonds));
     }
@@ -92,6 +100,30 @@ fn unrelated(bonds: &BondDifference) -> String {
         "They are unrelated in structure: however the atoms are laid on each other, at least {} of their {all} bonds belong to one only.",
         bonds.at_least
     )
+}
+
+/// The most telling finding, and how many there are beside it.
+fn foremost(structures: [&Structure; 2], findings: &[Finding], minimal: bool) -> Option<String> {
+    let [first, others @ ..] = findings else {
+        return None;
+    };
+    let sentence = moves::sentence(structures, first);
+    let sentence = sentence.trim_end_matches('.');
+    // Groups are named with the verdict.
+    let others = others
+        .iter()
+        .filter(|finding| !matches!(finding.change, Change::Groups(_)));
+    let beside = match others.count() {
+        0 => String::new(),
+        1 => "; one more difference".to_owned(),
+        n => format!("; {n} more differences"),
+    };
+    Some(if minimal {
+        format!("{sentence}{beside}.")
+    } else {
+        let sentence = moves::within(sentence);
+        format!("One way to see it, not proved the least: {sentence}{beside}.")
+    })
 }
 
 /// "C2", "C2 and C3", "C2, C3 and C5".

@@ -9,7 +9,7 @@ use crate::{
     mapping::{self, Effort, Heavy, Mapping, sides},
 };
 
-use super::{Explanation, LeftOver, branching, functional, left_over, rings};
+use super::{Explanation, LeftOver, branching, functional, left_over, moves, rings};
 
 /// Bonds under an atom map; atoms from 0. Bonds to hydrogen are not counted.
 #[derive(Debug, Clone, PartialEq, Eq, Default)]
@@ -84,6 +84,7 @@ pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanat
         bonds: Some(bonds_under(&mapping, left, right)),
         hydrogens,
         left_over: left_over_pieces(&mapping, [a, b], &heavy),
+        findings: moves::findings([a, b], &heavy, &sides, &mapping, limits),
         steps: mapping.steps,
         ..unmapped
     }

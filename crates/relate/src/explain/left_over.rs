@@ -4,6 +4,8 @@ use molkin_graph::{Element, Formula};
 
 use crate::{Structure, mapping::Heavy};
 
+use super::moves::name;
+
 /// Connected atoms of one record that have no partner in the other; atoms from 0.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct LeftOver {
@@ -13,7 +15,7 @@ pub struct LeftOver {
     pub formula: Formula,
     /// The mapped atoms that they are bonded to, ascending. None: the piece is a component of its own.
     pub on: Vec<u32>,
-    /// What the trade calls it, where it is a single atom on one place.
+    /// What the trade calls it, where it hangs on one place and the table of substituents has it.
     pub name: Option<&'static str>,
 }
 
@@ -37,25 +39,32 @@ pub(super) fn pieces(structure: &Structure, heavy: &Heavy, mapped: &[bool]) -> V
                     }
                 }
             }
-            let outward = atoms.iter().flat_map(|&atom| &neighbours[atom as usize]);
-            let outward = outward.filter(|&&(to, _)| mapped[to as usize]);
-            let outward: Vec<(u32, u8)> = outward.copied().collect();
-            pieces.push(piece(structure, heavy, &atoms, &outward));
+            let outward = atoms.iter().flat_map(|&atom| {
+                let near = neighbours[atom as usize].iter();
+                near.map(move |&(to, order)| (atom, to, order))
+            });
+            let outward = outward.filter(|&(_, to, _)| mapped[to as usize]);
+            pieces.push(piece(
+                structure,
+                heavy,
+                &atoms,
+                &outward.collect::<Vec<_>>(),
+            ));
         }
     }
     pieces.sort_unstable_by(|one, other| one.atoms.cmp(&other.atoms));
     pieces
 }
 
-/// Describes connected atoms by their places, with the mapped atoms next to them and the bonds between.
+/// Describes connected atoms by their places, with the bonds to mapped atoms: own end, other end, order.
 fn piece(
     structure: &Structure,
     heavy: &Heavy,
     positions: &[u32],
-    outward: &[(u32, u8)],
+    outward: &[(u32, u32, u8)],
 ) -> LeftOver {
     let source = |position: u32| heavy.atoms[position as usize].source;
-    let mut on: Vec<u32> = outward.iter().map(|&(to, _)| source(to)).collect();
+    let mut on: Vec<u32> = outward.iter().map(|&(_, to, _)| source(to)).collect();
     on.sort_unstable();
     on.dedup();
     let mut atoms: Vec<u32> = positions.iter().map(|&atom| source(atom)).collect();
@@ -71,11 +80,8 @@ fn piece(
         .iter()
         .filter_map(|&atom| structure.molecule().atom(atom));
     let charge = charge.map(|atom| i32::from(atom.charge)).sum();
-    let name = match (positions, outward, charge) {
-        (&[only], &[(_, order)], 0) => {
-            let atom = &heavy.atoms[only as usize];
-            name(atom.element, atom.hydrogens, order)
-        }
+    let name = match *outward {
+        [(through, _, order)] => name(heavy, positions, through, order),
         _ => None,
     };
     LeftOver {
@@ -84,24 +90,6 @@ fn piece(
         on,
         name,
     }
-}
-
-/// The name of a group of one non-hydrogen atom, bound by a bond of this order.
-fn name(element: Element, hydrogens: u8, order: u8) -> Option<&'static str> {
-    Some(match (element, hydrogens, order) {
-        (Element::CARBON, 3, 1) => "methyl",
-        (Element::CARBON, 2, 2) => "methylidene",
-        (Element::NITROGEN, 2, 1) => "amino",
-        (Element::OXYGEN, 1, 1) => "hydroxy",
-        (Element::OXYGEN, 0, 2) => "oxo",
-        (Element::SULFUR, 1, 1) => "sulfanyl",
-        (Element::SULFUR, 0, 2) => "sulfanylidene",
-        (Element::FLUORINE, 0, 1) => "fluorine",
-        (Element::CHLORINE, 0, 1) => "chlorine",
-        (Element::BROMINE, 0, 1) => "bromine",
-        (Element::IODINE, 0, 1) => "iodine",
-        _ => return None,
-    })
 }
 
 /// For each atom its neighbours, with the order class of the bond.

@@ -11,8 +11,8 @@ use crate::{
 };
 
 use super::{
-    Error, FunctionalGroup, Group, Input, Note, Prepared, RingSystem, Sides, Surplus, VERSION,
-    Which, numbers,
+    Error, Finding, FunctionalGroup, Group, Input, Note, Prepared, RingSystem, Sides, Surplus,
+    VERSION, Which, findings, numbers,
 };
 
 /// The result for one pair. Either `errors` or the fields from `relation` on are there.
@@ -48,6 +48,9 @@ pub struct Pair {
     /// Mapped atoms with different hydrogen counts.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub hydrogens: Option<Vec<Hydrogens>>,
+    /// What moved.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub findings: Option<Vec<Finding>>,
     /// What only one formula has, and where.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub left_over: Option<Sides<Surplus>>,
@@ -209,6 +212,7 @@ impl Pair {
             atom_map: None,
             bonds: None,
             hydrogens: None,
+            findings: None,
             left_over: None,
             branch_points: None,
             rings: None,
@@ -266,6 +270,7 @@ impl Pair {
                 let note = |noted| Note::of(structure.molecule(), noted).on(which);
                 notes.extend(own.into_iter().map(note));
             }
+            self.findings = findings::of([a, b], &explained);
             self.analysis = words::analysis([a, b], &verdict, kind, &explained);
             self.add_explanation(verdict.relation, explained, [a, b], &mut notes);
         }

@@ -42,18 +42,20 @@ pub(super) fn write(
     if let Some(rings) = &pair.rings {
         rows.push(("rings", sides.rings(rings)));
     }
+    // Between rings a chain is short or a part of a branch; there it is for those who ask for all.
+    let rings = pair.rings.as_ref();
+    let chains_matter = extent == Extent::Full
+        || rings.is_none_or(|rings| rings.a.is_empty() || rings.b.is_empty());
     if let Some(branching) = &pair.branch_points {
         rows.push((
             "branch points",
             sides.points([&branching.a.points, &branching.b.points]),
         ));
-        rows.push((
-            "main chains",
-            sides.chains(
-                [&branching.a.chains, &branching.b.chains],
-                [&branching.a.points, &branching.b.points],
-            ),
-        ));
+        if chains_matter {
+            let chains = [&branching.a.chains, &branching.b.chains];
+            let points = [&branching.a.points, &branching.b.points];
+            rows.push(("main chains", sides.chains(chains, points)));
+        }
     }
     rows.retain(|(_, items)| items.iter().any(|items| !items.is_empty()));
     if rows.is_empty() {

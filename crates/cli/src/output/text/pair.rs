@@ -9,7 +9,7 @@ use crate::output::style::{Role, Style};
 use super::{
     atoms::{Labels, MOBILE},
     beside, excerpt, fault, group as group_in_words,
-    layout::{Extent, HARD_BLANK, LINE, fitting, labelled, paragraph, sentence},
+    layout::{Extent, LINE, fitting, labelled, paragraph, sentence},
     place,
 };
 
@@ -58,15 +58,13 @@ fn record(out: &mut impl Write, style: Style, which: Which, prepared: &Prepared)
         Which::B => (Some(Role::OfB), "B"),
     };
     let input = prepared.input();
-    let place = place(&input.source, input.record, &input.name);
+    let mut place = place(&input.source, input.record, &input.name);
+    if let Some(formula) = &input.formula {
+        place.push_str(&format!(" ({formula})"));
+    }
     labelled(out, style, label, &place)?;
-    if let (Some(formula), Some(smiles)) = (&input.formula, &input.smiles) {
-        labelled(
-            out,
-            style,
-            (None, ""),
-            &format!("{formula}{HARD_BLANK} {}", broken(smiles)),
-        )?;
+    if let Some(smiles) = &input.smiles {
+        labelled(out, style, (None, ""), &broken(smiles))?;
     }
     if let Some(error) = prepared.error() {
         labelled(out, style, (None, "error"), &fault(error))?;
@@ -92,13 +90,17 @@ struct Differences<'p> {
 
 impl Differences<'_> {
     fn write(&self, out: &mut impl Write, style: Style) -> io::Result<()> {
+        self.findings(out, style)?;
         // Of what is unrelated, single differences say nothing.
         let bonds = self.pair.bonds.as_ref();
         let told = bonds.filter(|bonds| self.is_full() || bonds.unrelated != Some(true));
         if let Some(bonds) = told {
             self.left_over(out, style)?;
             self.bonds(out, style, bonds)?;
-            self.hydrogens(out, style)?;
+            // Where it is told what moved, hydrogens follow from it.
+            if self.is_full() || self.pair.findings.is_none() {
+                self.hydrogens(out, style)?;
+            }
         }
         for entry in self.pair.stereo.iter().flatten() {
             labelled(out, style, (None, "stereo"), &self.stereo(entry))?;
@@ -126,6 +128,29 @@ impl Differences<'_> {
             return Ok(());
         }
         labelled(out, style, label, &fitting(items, self.extent, LINE))
+    }
+
+    /// What moved beside what the verdict says, and what is the same.
+    fn findings(&self, out: &mut impl Write, style: Style) -> io::Result<()> {
+        let Some([_, between @ .., last]) = self.pair.findings.as_deref() else {
+            return Ok(());
+        };
+        let shown = match self.extent {
+            Extent::Full => between.len(),
+            Extent::Screen => between.len().min(SCREEN_FINDINGS),
+        };
+        let mut lines: Vec<String> = between.iter().map(|found| found.text.clone()).collect();
+        lines.truncate(shown);
+        if shown < between.len() {
+            let more = counted(between.len() - shown, "more difference");
+            lines.push(format!("{more} (--full)."));
+        }
+        lines.push(last.text.clone());
+        for (at, line) in lines.iter().enumerate() {
+            let label = if at == 0 { "besides" } else { "" };
+            labelled(out, style, (None, label), line)?;
+        }
+        Ok(())
     }
 
     /// "methyl (C7) on C6".
@@ -252,6 +277,9 @@ impl Differences<'_> {
         self.list(out, style, (None, "atoms, A → B"), entries)
     }
 }
+
+/// Findings that a screen has room for beside the one of the verdict.
+const SCREEN_FINDINGS: usize = 2;
 
 /// Maps of more atoms take more than two lines.
 const SHORTEST_HIDDEN_MAP: usize = 14;
