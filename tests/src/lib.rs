@@ -19,6 +19,7 @@ mod graph6;
 mod kekule;
 mod kinds;
 mod molfile;
+mod moves;
 mod numbers;
 mod pairs;
 mod renumber;
@@ -39,6 +40,7 @@ pub use crate::{
     graph6::Graph,
     kekule::other_kekule_form,
     kinds::{KindPair, definition_kinds, fixture_kinds},
+    moves::{Readings, SubstituentNames},
     molfile::{molfiles, renumbered_molfile},
     numbers::Numbers,
     pairs::{Expected, Pair, definition_pairs, fixture_pairs, grouped_pairs},

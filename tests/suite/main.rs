@@ -34,6 +34,8 @@ mod kinds;
 mod label_examples;
 mod label_laws;
 mod mirror;
+mod moves;
+mod moves_built;
 mod pages;
 mod relations;
 mod relatives;

@@ -259,10 +259,7 @@ const MARKED: [(&str, u32); 10] = [
     ("COC(=O)[C@H](O)[C@H](O)C(=O)OC", 0),
     ("C[C@H]1CCC[C@@H](C)N1", 0),
     ("C[C@H]1CC[C@@H](C)CC1", 0),
-    (
-        "CO[C@@H]1[C@H](OC)[C@@H](OC)[C@H](OC)[C@@H](OC)[C@@H]1OC",
-        0,
-    ),
+    ("C[C@H](Cl)[C@@H](C)Cl", 0),
     ("C[C@H](N)CC[C@@H](N)C", 0),
     ("C/C=C/C/C=C/C", 0),
     ("C/C=C/C/C=C\\C", 0),

@@ -1,7 +1,9 @@
 //! What holds for any pair: mirror symmetry of verdict and explanation, the least distance.
 
 use molkin_graph::Limits;
-use molkin_relate::{Explanation, HydrogenDifference, Relation, StereoChange, Structure, explain};
+use molkin_relate::{
+    Explanation, HydrogenDifference, Relation, StereoChange, Structure, explain, findings::Finding,
+};
 use molkin_tests::{
     Comparer, Numbers, Tally, definition_pairs, first_word, least_distance, mirrored, read_text,
     renumbered, shared, small_isomers, stated_distance,
@@ -29,6 +31,7 @@ fn turned(explanation: &Explanation) -> Explanation {
     }
     turned.hydrogens.sort_unstable_by_key(|entry| entry.a);
     turned.left_over.reverse();
+    turned.findings = turned.findings.into_iter().map(Finding::mirrored).collect();
     turned
         .branching
         .iter_mut()

@@ -66,19 +66,33 @@ pub(super) fn findings(
 
 fn find(frame: &Frame, structures: [&Structure; 2], limits: &Limits) -> Vec<Finding> {
     let groups = groups::Groups::of(frame, structures, limits);
+    let mut found = tell(frame, &groups, true);
+    if found.iter().any(Finding::is_rest) {
+        // A link takes bonds that may tell more as those of substituents.
+        let others = tell(frame, &groups, false);
+        if !others.iter().any(Finding::is_rest) {
+            found = others;
+        }
+    }
+    found.extend(hydrogens::moved(frame));
+    found.extend(groups.changed());
+    // Stable: within a rank the order of discovery, which is canonical.
+    found.sort_by_key(|finding| finding.change.rank());
+    found
+}
+
+/// Findings for all bonds that differ.
+fn tell(frame: &Frame, groups: &groups::Groups, links: bool) -> Vec<Finding> {
     let mut ledger = Ledger::of(frame);
-    let mut found = turned::moved(frame, &mut ledger, &groups);
-    found.extend(links::moved(frame, &mut ledger));
+    let mut found = turned::moved(frame, &mut ledger, groups);
+    if links {
+        found.extend(links::moved(frame, &mut ledger));
+    }
     found.extend(transfer::moved(frame, &mut ledger));
     found.extend(rings::swapped(frame, &mut ledger));
     found.extend(rings::changed(frame, &mut ledger));
-    let hydrogens = hydrogens::moved(frame, &ledger);
     found.extend(orders::delocalised(frame, &mut ledger));
     found.extend(orders::shifted(frame, &mut ledger));
-    found.extend(hydrogens);
-    found.extend(groups.changed());
     found.extend(ledger.rest(frame));
-    // Stable: within a rank the order of discovery, which is canonical.
-    found.sort_by_key(|finding| finding.change.rank());
     found
 }

@@ -90,7 +90,7 @@ fn substituent(names: &Names<'_>, moved: &Moved) -> String {
     let [from, to] = &moved.seats;
     let [there, here] = places::pair(names, moved);
     let (from, to) = (names.atom(0, from.atom), names.atom(1, to.atom));
-    let [group, other] = [0, 1].map(|side| names.group(&moved.groups[side]));
+    let [group, other] = [0, 1].map(|side| names.group(side, &moved.groups[side]));
     if group == other {
         let through = names.through(0, moved);
         format!("The {group}{through} on {from} of A{there} is on {to} of B{here}")
@@ -115,8 +115,8 @@ fn linked(names: &Names<'_>, link: &Link) -> String {
         bond.map_or_else(String::new, |bond| format!(" ({record} has {bond})"))
     };
     let group = names.linking(link);
-    let other = names.group(&link.groups[1]);
-    let again = if other == names.group(&link.groups[0]) {
+    let other = names.group(1, &link.groups[1]);
+    let again = if other == names.group(0, &link.groups[0]) {
         String::new()
     } else {
         format!("as {} ", names::with_article(&other))
@@ -132,7 +132,7 @@ fn linked(names: &Names<'_>, link: &Link) -> String {
 
 fn exchanged(names: &Names<'_>, [one, other]: &[Moved; 2]) -> String {
     let on = |side: usize, moved: &Moved| {
-        let group = names.group(&moved.groups[side]);
+        let group = names.group(side, &moved.groups[side]);
         format!(
             "the {group} on {}",
             names.atom(side, moved.seats[side].atom)
@@ -148,7 +148,7 @@ fn exchanged(names: &Names<'_>, [one, other]: &[Moved; 2]) -> String {
 }
 
 fn rehung(names: &Names<'_>, moved: &Moved) -> String {
-    let [old, new] = [0, 1].map(|side| names.group(&moved.groups[side]));
+    let [old, new] = [0, 1].map(|side| names.group(side, &moved.groups[side]));
     let [on, there] = [0, 1].map(|side| names.atom(side, moved.seats[side].atom));
     let [by, other] = [0, 1].map(|side| names.atom(side, moved.seats[side].through));
     if old == new {
@@ -163,10 +163,10 @@ fn rehung(names: &Names<'_>, moved: &Moved) -> String {
 }
 
 fn chain_changed(names: &Names<'_>, chain: &Moved, within: &Moved) -> String {
-    let [old, new] = [0, 1].map(|side| names.group(&chain.groups[side]));
+    let [old, new] = [0, 1].map(|side| names.group(side, &chain.groups[side]));
     let [on, there] = [0, 1].map(|side| names.atom(side, chain.seats[side].atom));
     let new = names::with_article(&new);
-    let group = names.group(&within.groups[0]);
+    let group = names.group(0, &within.groups[0]);
     let [from, to] = [0, 1].map(|side| names.atom(side, within.seats[side].atom));
     format!(
         "The {old} on {on} of A is {new} on {there} of B: the {group} on {from} of A is on {to} of B"
@@ -193,15 +193,14 @@ fn delocalised(names: &Names<'_>, side: usize, atoms: &[Vec<u32>; 2], ring: bool
 
 fn shifted(names: &Names<'_>, shifts: &[Shift]) -> String {
     if let [from, to] = shifts {
-        let before = [from.orders[0], to.orders[0]];
-        let after = [from.orders[1], to.orders[1]];
-        let multiple = |order: Option<u8>| order.filter(|&order| order > 1);
-        if let (Some(order), Some(1), Some(1)) = (multiple(before[0]), before[1], after[0]) {
-            if after[1] == Some(order) {
+        let ends = [from.orders[0], from.orders[1], to.orders[0], to.orders[1]];
+        match ends {
+            [Some(order), Some(1), Some(1), Some(other)] if order == other && order > 1 => {
                 let word = names::order(Some(order));
                 let (old, new) = (names.bond(0, from.bonds[0]), names.bond(1, to.bonds[1]));
                 return format!("The {word} bond {old} of A is {new} in B");
             }
+            _ => {}
         }
     }
     let parts = shifts.iter().map(|shift| {

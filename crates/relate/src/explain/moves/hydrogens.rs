@@ -3,16 +3,15 @@
 use super::{
     changes::{Change, Finding},
     frame::{Frame, MOBILE},
-    ledger::Ledger,
 };
 
 /// Hydrogens on other atoms, one finding for each pair of atoms. A shift of double bonds among carbons
 /// takes its hydrogens along and needs no word.
-pub(super) fn moved(frame: &Frame, ledger: &Ledger) -> Vec<Finding> {
+pub(super) fn moved(frame: &Frame) -> Vec<Finding> {
     let mut open = unexplained(frame);
     if open
         .iter()
-        .all(|&(atom, count)| follows_bonds(frame, ledger, atom, count))
+        .all(|&(atom, count)| follows_bonds(frame, atom, count))
     {
         return Vec::new();
     }
@@ -62,12 +61,12 @@ fn valence(order: u8) -> i32 {
 }
 
 /// Whether a carbon has just the hydrogens that its bonds of changed order leave it.
-fn follows_bonds(frame: &Frame, ledger: &Ledger, atom: u32, count: i32) -> bool {
-    let own = ledger
-        .changed()
-        .filter(|&((a, b), _)| a == atom || b == atom);
-    let shift: i32 = own
-        .map(|(_, [before, after])| valence(before) - valence(after))
-        .sum();
-    frame.graphs[0].is_carbon(atom) && shift == count
+fn follows_bonds(frame: &Frame, atom: u32, count: i32) -> bool {
+    let [first, second] = &frame.graphs;
+    let kept = first.near(atom).iter();
+    let shift = kept.filter_map(|&(to, before)| {
+        let after = second.order(atom, to)?;
+        Some(valence(before) - valence(after))
+    });
+    first.is_carbon(atom) && shift.sum::<i32>() == count
 }

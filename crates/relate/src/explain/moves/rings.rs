@@ -82,7 +82,7 @@ struct Closing {
 
 impl Closing {
     /// Best a ring of which the other is a part; a bond by itself last.
-    fn cost(&self) -> (bool, bool, usize, [Option<(u32, u32)>; 2]) {
+    fn cost(&self) -> (bool, bool, usize, [Option<Bond>; 2]) {
         let nested = match &self.rings {
             [Some(a), Some(b)] => {
                 let (small, large) = if a.len() < b.len() { (a, b) } else { (b, a) };

@@ -7,7 +7,7 @@ use molkin_graph::{Element, Formula, GraphOrderer, Limits, NormalAtom, Orderer};
 
 use crate::mapping::Heavy;
 
-use super::frame::{Frame, Graph};
+use super::frame::{Frame, Graph, MOBILE};
 
 /// A part of a record that hangs on the rest by one bond.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -16,7 +16,7 @@ pub struct Substituent {
     pub atoms: Vec<u32>,
     /// What the trade calls it, where the table has it.
     pub name: Option<&'static str>,
-    /// Its formula.
+    /// Its atoms with their hydrogens; a charge may be shared with the rest and is left out.
     pub formula: Formula,
 }
 
@@ -28,19 +28,24 @@ impl Substituent {
     pub(super) fn of(frame: &Frame, side: usize, atoms: &[u32], through: u32, order: u8) -> Self {
         let graph = &frame.graphs[side];
         let mut counts = Vec::new();
-        let mut charge = 0;
         for &atom in atoms {
             let atom = graph.atom(atom);
             counts.push((atom.element, 1));
             counts.push((Element::HYDROGEN, u32::from(atom.hydrogens)));
-            charge += i32::from(atom.charge.unwrap_or(0));
         }
         let mut sources = frame.sources(side, atoms);
         sources.sort_unstable();
+        // The bond of a sulfoxide or nitro group is written in more than one way.
+        let separated = |&seat: &u32| {
+            let charge = graph.atom(seat).charge;
+            atoms.len() == 1 && !atoms.contains(&seat) && charge.is_some_and(|charge| charge > 0)
+        };
+        let named = !graph.neighbours(through).any(|seat| separated(&seat));
+        let name = named.then(|| name_of(&coloured(graph, atoms, through, order)));
         Self {
             atoms: sources,
-            name: name_of(&coloured(graph, atoms, through, order)),
-            formula: Formula::new(counts, charge),
+            name: name.flatten(),
+            formula: Formula::new(counts, 0),
         }
     }
 }
@@ -59,6 +64,14 @@ pub(in crate::explain) fn name(
 
 fn coloured(graph: &Graph, atoms: &[u32], through: u32, order: u8) -> Coloured {
     let place = |atom: u32| atoms.iter().position(|&other| other == atom);
+    // Where the group is conjugated with a charge outside, its bond to there is mobile; of a single
+    // oxygen it is then not known whether it is oxido or oxo.
+    let is_one_of_two = atoms.len() == 1 && graph.atom(through).element.group() == Some(16);
+    let order = if order == MOBILE && !is_one_of_two {
+        1
+    } else {
+        order
+    };
     let colours = atoms.iter().map(|&atom| {
         let by = if atom == through { order } else { 0 };
         colour(graph.atom(atom), by)
@@ -69,9 +82,9 @@ fn coloured(graph: &Graph, atoms: &[u32], through: u32, order: u8) -> Coloured {
     (colours.collect(), edges.collect())
 }
 
-/// Element, hydrogens, charge and isotopes, and the order of the bond to the rest.
+/// Element, hydrogens, fixed charge and isotopes, and the order of the bond to the rest.
 fn colour(atom: &NormalAtom, order: u8) -> u64 {
-    let charge = atom.charge.map_or(0, |charge| (charge as u8) ^ 0x80);
+    let charge = atom.charge.unwrap_or(0) as u8;
     let mut colour = u64::from(atom.isotope.unwrap_or(0));
     for part in atom.labelled {
         colour = colour << 4 | u64::from(part);
@@ -129,7 +142,7 @@ fn graph_of(orderer: &mut Orderer, text: &str) -> Option<Coloured> {
     let mut by = vec![0; form.atoms.len()];
     let mut edges = Vec::new();
     for bond in &form.bonds {
-        let order = bond.order.unwrap_or(super::frame::MOBILE);
+        let order = bond.order.unwrap_or(MOBILE);
         match (bond.a == rest, bond.b == rest) {
             (true, _) => by[bond.b as usize] = order,
             (_, true) => by[bond.a as usize] = order,

@@ -44,16 +44,20 @@ impl Names<'_> {
     }
 
     /// `methyl group`, `chlorine`, `group C7H6NO2`.
-    pub(super) fn group(&self, group: &Substituent) -> String {
+    pub(super) fn group(&self, side: usize, group: &Substituent) -> String {
         match group.name {
             Some(name) => name.to_owned(),
+            None if group.atoms.len() == 1 => {
+                let atom = self.0[side].molecule().atom(group.atoms[0]);
+                format!("{} atom", atom.map_or("", |atom| atom.element.symbol()))
+            }
             None => format!("group {}", group.formula),
         }
     }
 
     /// `oxygen O3`, `carbonyl group C7`, `group C2H5N (C3…N5)`: what joins two others, in A.
     pub(super) fn linking(&self, link: &Link) -> String {
-        let group = self.group(&link.groups[0]);
+        let group = self.group(0, &link.groups[0]);
         let mut ends: Vec<u32> = link.ends[0].iter().map(|&(inside, _)| inside).collect();
         ends.dedup();
         let ends: Vec<String> = ends.iter().map(|&atom| self.atom(0, atom)).collect();
