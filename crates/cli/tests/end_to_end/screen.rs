@@ -1,6 +1,8 @@
 //! An ordinary pair fits a screen.
 
-use crate::runner::{demo, repository, run};
+use std::fs;
+
+use crate::runner::{Folder, demo, repository};
 
 const LINES: usize = 24;
 const COLUMNS: usize = 100;
@@ -36,20 +38,23 @@ fn pairs_of_the_demo() {
 /// height. With `--full` the map is there as well.
 #[test]
 fn drug_sized_pairs() {
-    let folder = repository().join("../shared/data/relations");
-    let [a, b] = ["moved_a.smi", "moved_b.smi"].map(|file| folder.join(file));
-    if !a.exists() {
+    let data = repository().join("../shared/data/relations");
+    if !data.exists() {
         eprintln!("../shared/data/relations is not there: skipped");
         return;
     }
-    let [a, b] = [&a, &b].map(|path| path.to_str().unwrap());
-    let short = run(&["compare", a, b]).out;
+    let mut folder = Folder::new("screen");
+    for file in ["moved_a.smi", "moved_b.smi"] {
+        folder = folder.with(file, fs::read(data.join(file)).unwrap());
+    }
+    let compare = ["compare", "moved_a.smi", "moved_b.smi"];
+    let short = folder.run(&compare).out;
     let pairs = pairs(&short);
     assert_eq!(pairs.len(), 600);
     let wide = pairs.iter().filter(|lines| !is_narrow(lines)).count();
     let high = pairs.iter().filter(|lines| !fits(lines)).count();
     eprintln!("600 pairs, {wide} too wide, {high} too high");
     assert!(wide == 0 && high <= 30, "{wide} too wide, {high} too high");
-    let full = run(&["compare", a, b, "--full"]).out;
+    let full = folder.run(&[&compare[..], &["--full"]].concat()).out;
     assert!(full.len() > short.len() && !full.contains("--full"));
 }

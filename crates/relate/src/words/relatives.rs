@@ -195,3 +195,110 @@ fn capital(text: String) -> String {
     let first = characters.next().map(|first| first.to_ascii_uppercase());
     first.into_iter().chain(characters).collect()
 }
+
+#[cfg(test)]
+mod tests {
+    use molkin_formats::smiles;
+    use molkin_graph::{Limits, Orderer};
+    use rstest::rstest;
+
+    use super::super::{analysis, summary as whole_summary};
+    use crate::{Structure, explain, kinds, relate};
+
+    /// The summary without the verdict, and what analysis tells apart.
+    fn told(a: &str, b: &str) -> [String; 2] {
+        let limits = Limits::default();
+        let mut orderer = Orderer::new(limits);
+        let [a, b] =
+            [a, b].map(|text| Structure::new(&mut orderer, smiles::parse(text).unwrap()).unwrap());
+        let verdict = relate(&mut orderer, &a, &b).unwrap();
+        let kinds = kinds(verdict.relation, &a, &b, &limits).unwrap();
+        let kind = kinds.first().copied();
+        let explained = explain(&a, &b, verdict.relation, &limits);
+        let summary = whole_summary([&a, &b], &verdict, kind, Some(&explained));
+        let (_, further) = summary.split_once(['.', ':']).unwrap();
+        let further = further
+            .split_once("). ")
+            .map_or(further, |(_, further)| further);
+        let analysis = analysis([&a, &b], &verdict, kind, &explained);
+        [further.trim().to_owned(), analysis.unwrap_or_default()]
+    }
+
+    #[rstest]
+    #[case::methyl(
+        "Cc1ccccc1",
+        "c1ccccc1",
+        "A has CH2 more. Methyl group on C2 of A (C1 in B); all else is bonded alike."
+    )]
+    #[case::halogen(
+        "CCCCCl",
+        "BrCCCC",
+        "A has Cl where B has Br. Chlorine on C4 of A, bromine on C2 of B; all else is bonded alike."
+    )]
+    #[case::ring_of_one_more(
+        "C1CCCCCCCCC1",
+        "C1CCCCCCCC1",
+        "A has CH2 more. CH2 between C1 and C9 of A; besides, no bond only in A and one bond only in B."
+    )]
+    #[case::oxidation("CC(O)C", "CC(C)=O", "A has H2 more. One bond of different order.")]
+    #[case::oxide(
+        "CS(C)=O",
+        "CSC",
+        "A has O more. Oxo group on S2 of A (S2 in B); all else is bonded alike."
+    )]
+    #[case::salt(
+        "CC(=O)O",
+        "CC(=O)[O-].[Na+]",
+        "Na+ as a component of B; all else agrees but for protons."
+    )]
+    #[case::solvate("CCN.O", "NCC", "H2O as a component of A; all else is bonded alike.")]
+    #[case::proton(
+        "CC(=O)O",
+        "CC(=O)[O-]",
+        "A has one proton more; all else is bonded alike."
+    )]
+    #[case::unrelated(
+        "CCCCCCCC",
+        "OC1OC(CO)C(O)C(O)C1O",
+        "A has C2H6 where B has O6. They are unrelated in structure: however the atoms are laid on each other, at least 9 of their 19 bonds belong to one only."
+    )]
+    fn differences(#[case] a: &str, #[case] b: &str, #[case] expected: &str) {
+        assert_eq!(told(a, b)[0], expected);
+    }
+
+    /// Each with a word that its sentence must have, and one that it must not.
+    #[rstest]
+    #[case::enantiomers(
+        "C[C@H](N)C(=O)O",
+        "C[C@@H](N)C(=O)O",
+        "only a chiral method",
+        "Mass tells"
+    )]
+    #[case::diastereomers("C/C=C/C", "C/C=C\\C", "achiral chromatography", "chiral method")]
+    #[case::constitutional("CCCO", "CC(C)O", "mass alone cannot", "chiral method")]
+    #[case::isotopomers("[2H]CCO", "CCO[2H]", "fragments", "chromatography")]
+    #[case::isotopologues("[2H]C", "C", "differ in mass", "chiral")]
+    #[case::open("CC(O)CC", "CCC(C)O", "leave stereo open", "cannot")]
+    #[case::undetermined("C[C@H](O)CC", "CCC(C)O", "leave stereo open", "cannot")]
+    #[case::salt("CC(=O)O", "CC(=O)[O-].[Na+]", "counter-ion", "Mass")]
+    #[case::proton("CC(=O)O", "CC(=O)[O-]", "charge states", "Mass")]
+    #[case::nominal("CCCC", "CC(C)=O", "Equal nominal mass", "Mass tells")]
+    #[case::mass(
+        "CO",
+        "CCO",
+        "Mass tells them apart (monoisotopic 32.0262 and 46.0419)",
+        "chiral"
+    )]
+    fn analyses(#[case] a: &str, #[case] b: &str, #[case] has: &str, #[case] lacks: &str) {
+        let analysis = &told(a, b)[1];
+        assert!(
+            analysis.contains(has) && !analysis.contains(lacks),
+            "{analysis}"
+        );
+    }
+
+    #[test]
+    fn the_same_compound_needs_no_analysis() {
+        assert_eq!(told("CCO", "OCC")[1], "");
+    }
+}

@@ -2,7 +2,7 @@
 
 use std::io::{self, Write};
 
-use molkin_relate::wire::{Bonds, Group, Pair, Piece, Prepared, StereoEntry, Which};
+use molkin_relate::wire::{Bonds, Finding, Group, Pair, Piece, Prepared, StereoEntry, Which};
 
 use crate::output::style::{Role, Style};
 
@@ -135,6 +135,9 @@ impl Differences<'_> {
         let Some([_, between @ .., last]) = self.pair.findings.as_deref() else {
             return Ok(());
         };
+        // What became of functional groups is in their row.
+        let told = |found: &&Finding| self.is_full() || found.kind != "group-changed";
+        let between: Vec<&Finding> = between.iter().filter(told).collect();
         let shown = match self.extent {
             Extent::Full => between.len(),
             Extent::Screen => between.len().min(SCREEN_FINDINGS),
