@@ -16,11 +16,11 @@ pub(crate) fn analysis(
         Relation::Identical if !verdict.open => return None,
         Relation::Identical => UNMARKED.to_owned(),
         Relation::Stereo(StereoKind::Enantiomers) => "Equal in mass, NMR and achiral chromatography; only a chiral method (chiral chromatography, optical rotation or circular dichroism against a reference) tells enantiomers apart.".to_owned(),
-        Relation::Stereo(StereoKind::Diastereomers) => "Equal mass, so mass alone cannot tell them apart; diastereomers differ in NMR and in achiral chromatography.".to_owned(),
-        Relation::Stereo(StereoKind::Composition) => "Equal mass, so mass alone cannot tell them apart; chiral chromatography gives the ratio of enantiomers, NMR or achiral chromatography that of diastereomers.".to_owned(),
+        Relation::Stereo(StereoKind::Diastereomers) => "Mass alone cannot tell: it is equal. NMR and achiral chromatography can.".to_owned(),
+        Relation::Stereo(StereoKind::Composition) => "Mass alone cannot tell: it is equal. Chiral chromatography gives the ratio of enantiomers, NMR or achiral chromatography that of diastereomers.".to_owned(),
         Relation::Stereo(StereoKind::Undetermined | StereoKind::Unresolved) => UNMARKED.to_owned(),
         Relation::Constitutional if kind == Some(Kind::Isotopomers) => "Equal mass; NMR of the labelled nuclei, or the masses of fragments, show where the isotopes sit.".to_owned(),
-        Relation::Constitutional => "Equal mass, so mass alone cannot tell them apart; constitutional isomers differ in NMR and in achiral chromatography.".to_owned(),
+        Relation::Constitutional => "Mass alone cannot tell: it is equal. NMR and achiral chromatography can.".to_owned(),
         Relation::NotIsomers => by_mass(a, b, kind, explained),
     };
     Some(text)

@@ -99,31 +99,51 @@ fn surplus_in_words([a, b]: [&Formula; 2]) -> Option<String> {
     }
 }
 
-/// Bonds that differ though neither end is left over.
+/// Bonds that differ though neither end is left over, and no piece stands between the two.
 fn further(explained: &Explanation, bonds: &BondDifference) -> Option<String> {
     let outside = |side: usize, list: &[(u32, u32)]| {
-        let left_over = |atom: &u32| {
+        let left_over = |atom: u32| {
             let mut pieces = explained.left_over[side].iter();
-            pieces.any(|piece| piece.atoms.binary_search(atom).is_ok())
+            pieces.any(|piece| piece.atoms.binary_search(&atom).is_ok())
         };
-        list.iter()
-            .filter(|(x, y)| !left_over(x) && !left_over(y))
-            .count()
+        let bridged = |bond: (u32, u32)| {
+            let mut pieces = explained.left_over[1 - side].iter();
+            pieces.any(|piece| closed(explained, 1 - side, piece) == Some(bond))
+        };
+        let counts = |&&(x, y): &&(u32, u32)| !left_over(x) && !left_over(y) && !bridged((x, y));
+        list.iter().filter(counts).count()
     };
-    let (in_a, in_b) = (outside(0, &bonds.only_in_a), outside(1, &bonds.only_in_b));
-    let mut parts = Vec::new();
-    if in_a + in_b > 0 {
-        parts.push(format!(
-            "{} only in A and {} only in B",
-            counted(in_a, "bond"),
-            counted(in_b, "bond")
-        ));
-    }
-    if !bonds.order_changed.is_empty() {
-        let changed = counted(bonds.order_changed.len(), "bond");
-        parts.push(format!("{changed} of different order"));
-    }
+    let counts = [
+        (outside(0, &bonds.only_in_a), "only in A"),
+        (outside(1, &bonds.only_in_b), "only in B"),
+        (bonds.order_changed.len(), "of different order"),
+    ];
+    let parts = counts.into_iter().filter(|&(count, _)| count > 0);
+    let parts: Vec<String> = parts
+        .map(|(count, how)| format!("{} {how}", counted(count, "bond")))
+        .collect();
     (!parts.is_empty()).then(|| listed(&parts))
+}
+
+/// The bond of the other record in whose place a piece stands between two atoms.
+fn closed(explained: &Explanation, side: usize, piece: &LeftOver) -> Option<(u32, u32)> {
+    let [first, second] = *piece.on else {
+        return None;
+    };
+    let image = |atom| partner(explained, side, atom);
+    let (x, y) = (image(first)?, image(second)?);
+    let bond = (x.min(y), x.max(y));
+    let bonds = explained.bonds.as_ref()?;
+    [&bonds.only_in_b, &bonds.only_in_a][side]
+        .contains(&bond)
+        .then_some(bond)
+}
+
+/// The atom of the other record that an atom of one is laid on.
+fn partner(explained: &Explanation, side: usize, atom: u32) -> Option<u32> {
+    let mut map = explained.atom_map.iter().map(|&(a, b)| [a, b]);
+    let pair = map.find(|pair| pair[side] == atom)?;
+    Some(pair[1 - side])
 }
 
 /// Left-over pieces and the atoms that bear them.
@@ -167,7 +187,12 @@ impl Pieces<'_> {
             many => {
                 let places = many.iter().map(|&on| self.places.of_atom(side, on));
                 let places: Vec<String> = places.collect();
-                format!("{what} between {} of {of}", listed(&places))
+                let instead = closed(self.explained, side, piece).map(|(x, y)| {
+                    let ends = [x, y].map(|atom| self.places.of_atom(1 - side, atom));
+                    format!(" ({} in {})", ends.join("–"), ["B", "A"][side])
+                });
+                let instead = instead.unwrap_or_default();
+                format!("{what} between {} of {of}{instead}", listed(&places))
             }
         }
     }
@@ -178,8 +203,7 @@ impl Pieces<'_> {
         if !self.explained.left_over[other].is_empty() {
             return String::new();
         }
-        let mut map = self.explained.atom_map.iter().map(|&(a, b)| [a, b]);
-        let partner = map.find(|pair| pair[side] == atom).map(|pair| pair[other]);
+        let partner = partner(self.explained, side, atom);
         partner.map_or_else(String::new, |partner| {
             format!(
                 " ({} in {})",
@@ -238,13 +262,13 @@ mod tests {
     #[case::ring_of_one_more(
         "C1CCCCCCCCC1",
         "C1CCCCCCCC1",
-        "A has CH2 more. CH2 between C1 and C9 of A; besides, no bond only in A and one bond only in B."
+        "A has CH2 more. CH2 between C2 and C10 of A (C1–C2 in B); all else is bonded alike."
     )]
     #[case::oxidation("CC(O)C", "CC(C)=O", "A has H2 more. One bond of different order.")]
     #[case::oxide(
         "CS(C)=O",
         "CSC",
-        "A has O more. Oxo group on S2 of A (S2 in B); all else is bonded alike."
+        "A has O more. O on S2 of A (S2 in B); all else is bonded alike."
     )]
     #[case::salt(
         "CC(=O)O",
@@ -275,7 +299,7 @@ mod tests {
         "Mass tells"
     )]
     #[case::diastereomers("C/C=C/C", "C/C=C\\C", "achiral chromatography", "chiral method")]
-    #[case::constitutional("CCCO", "CC(C)O", "mass alone cannot", "chiral method")]
+    #[case::constitutional("CCCO", "CC(C)O", "Mass alone cannot", "chiral method")]
     #[case::isotopomers("[2H]CCO", "CCO[2H]", "fragments", "chromatography")]
     #[case::isotopologues("[2H]C", "C", "differ in mass", "chiral")]
     #[case::open("CC(O)CC", "CCC(C)O", "leave stereo open", "cannot")]

@@ -17,6 +17,9 @@ use super::{
 /// Chains of fewer atoms are not worth a word.
 const SHORTEST_CHAIN: usize = 3;
 
+/// Of larger functional groups a screen has the first atom and their number.
+const MOST_GROUP_ATOMS: usize = 6;
+
 /// Writes what differs in two columns; with all extent, what agrees as well.
 pub(super) fn write(
     out: &mut impl Write,
@@ -85,7 +88,12 @@ impl Beside<'_> {
         let named = |side: usize, groups: &[FunctionalGroup]| {
             let groups = groups.iter().map(|group| {
                 let atoms = group.atoms.iter().map(|&atom| self.labels[side].atom(atom));
-                let atoms: Vec<String> = atoms.collect();
+                let mut atoms: Vec<String> = atoms.collect();
+                if self.extent == Extent::Screen && atoms.len() > MOST_GROUP_ATOMS {
+                    let count = atoms.len();
+                    atoms.truncate(1);
+                    atoms.push(format!("… {count} atoms"));
+                }
                 format!("{} ({})", group.name.unwrap_or("unnamed"), atoms.join(", "))
             });
             groups.collect()

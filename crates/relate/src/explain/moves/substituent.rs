@@ -35,16 +35,9 @@ impl Substituent {
         }
         let mut sources = frame.sources(side, atoms);
         sources.sort_unstable();
-        // The bond of a sulfoxide or nitro group is written in more than one way.
-        let separated = |&seat: &u32| {
-            let charge = graph.atom(seat).charge;
-            atoms.len() == 1 && !atoms.contains(&seat) && charge.is_some_and(|charge| charge > 0)
-        };
-        let named = !graph.neighbours(through).any(|seat| separated(&seat));
-        let name = named.then(|| name_of(&coloured(graph, atoms, through, order)));
         Self {
             atoms: sources,
-            name: name.flatten(),
+            name: named(graph, atoms, through, order),
             formula: Formula::new(counts, 0),
         }
     }
@@ -59,7 +52,19 @@ pub(in crate::explain) fn name(
     order: u8,
 ) -> Option<&'static str> {
     let graph = Graph::new(heavy.atoms.clone(), heavy.bonds.iter().copied());
-    name_of(&coloured(&graph, atoms, through, order))
+    named(&graph, atoms, through, order)
+}
+
+fn named(graph: &Graph, atoms: &[u32], through: u32, order: u8) -> Option<&'static str> {
+    // The bond of a sulfoxide or nitro group is written in more than one way.
+    let separated = |seat: u32| {
+        let charge = graph.atom(seat).charge;
+        atoms.len() == 1 && !atoms.contains(&seat) && charge.is_some_and(|charge| charge > 0)
+    };
+    let in_one_way = !graph.neighbours(through).any(separated);
+    in_one_way
+        .then(|| name_of(&coloured(graph, atoms, through, order)))
+        .flatten()
 }
 
 fn coloured(graph: &Graph, atoms: &[u32], through: u32, order: u8) -> Coloured {
