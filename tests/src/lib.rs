@@ -15,6 +15,7 @@ mod collections;
 mod comparer;
 mod distance;
 mod extent;
+mod forms;
 mod graph6;
 mod kekule;
 mod kinds;
@@ -37,6 +38,7 @@ pub use crate::{
     comparer::Comparer,
     distance::{least_distance, stated_distance},
     extent::is_full_run,
+    forms::{FormPair, definition_forms, fixture_forms},
     graph6::Graph,
     kekule::other_kekule_form,
     kinds::{KindPair, definition_kinds, fixture_kinds},
@@ -47,7 +49,7 @@ pub use crate::{
     renumber::{renumbered, renumbered_form, with_hydrogens_written},
     small::small_isomers,
     spelling::random_spelling,
-    stereo::{Markings, all_markings, completions, grouped, mirrored},
+    stereo::{Markings, all_labels, all_markings, completions, grouped, mirrored},
     tally::Tally,
     text::{Table, first_word, read_text, shared, workspace},
 };

@@ -21,6 +21,7 @@ mod mesomer;
 mod molecule;
 mod order;
 mod polyhedron;
+mod revision;
 mod rings;
 mod rows;
 mod skeleton;
@@ -34,8 +35,9 @@ pub use crate::{
     bond::BondOrder,
     builder::{BuildError, MoleculeBuilder},
     canonical::{
-        Arrangement, Canonical, CanonicalForm, Dropped, FormAtom, FormStereo, Mark, NormalAtom,
-        NormalBond, NormalForm, OrderError, Orderer, Remark, StereoElement, arrangement,
+        Arrangement, Canonical, CanonicalForm, Dropped, FormAtom, FormStereo, Identity, Mark,
+        NormalAtom, NormalBond, NormalForm, OrderError, Orderer, Remark, StereoElement,
+        arrangement,
     },
     cip::{Label, Labelling},
     drawn::{
@@ -49,6 +51,7 @@ pub use crate::{
     mass::{Mass, MassError, average_mass, monoisotopic_mass},
     molecule::Molecule,
     order::{GraphError, GraphOrder, GraphOrderer},
+    revision::{Revised, Revision},
     stereo::Undrawable,
     unsaturation::Unsaturation,
 };

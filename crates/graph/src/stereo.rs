@@ -8,6 +8,7 @@ mod coordination;
 mod double_bond;
 mod labile;
 mod marks;
+mod remembered;
 mod tetrahedral;
 mod undrawable;
 
@@ -43,16 +44,19 @@ pub(crate) struct Candidate {
     pub(crate) parity: Option<Parity>,
     /// A mark counts here, but its absence leaves nothing open.
     pub(crate) quiet: bool,
+    /// The place is none of the molecule's own: a mark that was erased here counts.
+    pub(crate) remembered: bool,
 }
 
 impl Candidate {
     /// The unit for the canonical search with a given parity.
     pub(crate) fn unit(&self, odd: bool) -> Unit {
-        let colour = match self.shape {
+        let shape = match self.shape {
             Shape::Tetrahedral => 0,
             Shape::DoubleBond => 1,
             Shape::Axis => 2,
         };
+        let colour = if self.remembered { shape + 3 } else { shape };
         Unit {
             centres: self.centres,
             ligands: self.ligands,
@@ -98,7 +102,9 @@ pub(crate) struct Perception {
     pub(crate) undrawable: Vec<Undrawable>,
     /// Arrangements about centres that are not tetrahedral.
     pub(crate) placed: Vec<Placed>,
-    /// Centres, the lower first, and candidates; sorted.
+    /// How many of the candidates are tetrahedral: these come first, by atom.
+    tetrahedral: usize,
+    /// Ends, the lower first, of the others, and candidates; sorted.
     places: Vec<([u32; 2], usize)>,
 }
 
@@ -132,10 +138,12 @@ impl Perception {
         self.dropped.clear();
         self.impossible.clear();
         self.cages.clear();
+        self.undrawable.clear();
         marks::on_skeleton(marks, skeleton, molecule.drawn_stereo());
         let thetas = tetrahedral::find(self, skeleton, mesomer, marks, eligible, bridgeheads);
+        self.tetrahedral = self.candidates.len();
         double_bond::find(self, skeleton, mesomer, marks, seen);
-        let places = self.candidates.iter().enumerate();
+        let places = self.candidates.iter().enumerate().skip(self.tetrahedral);
         self.places.clear();
         self.places
             .extend(places.map(|(index, c)| (ascending(c.centres), index)));
@@ -143,11 +151,16 @@ impl Perception {
         marks::apply(self, skeleton, mesomer, marks, seen);
         bridgehead::bind(self, &thetas);
         coordination::load(self, skeleton, molecule.drawn_coordination());
-        undrawable::find(self, skeleton, mesomer);
     }
 
     /// The candidate at a tetrahedral centre (given twice) or a pair of ends.
     pub(crate) fn candidate_at(&self, centres: [u32; 2]) -> Option<usize> {
+        if centres[0] == centres[1] {
+            let tetrahedral = &self.candidates[..self.tetrahedral];
+            return tetrahedral
+                .binary_search_by_key(&centres[0], |candidate| candidate.centres[0])
+                .ok();
+        }
         let at = self
             .places
             .binary_search_by_key(&ascending(centres), |place| place.0)

@@ -7,11 +7,13 @@
 
 mod constitution;
 mod explain;
+mod forms;
 mod groups;
 mod kinds;
 pub mod mapping;
 mod relation;
 mod remarks;
+pub mod samples;
 mod structure;
 mod words;
 
@@ -25,8 +27,12 @@ pub use crate::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
         LeftOver, RingJoin, RingSystem, StereoChange, StereoDifference, explain,
     },
+    forms::{
+        Axes, AxesError, Axis, Change, CounterIons, CounterIonsError, Form, FormError, Listed,
+        ListedKind, Normaliser, Removed, same_apart_from,
+    },
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},
     relation::{Relation, StereoKind, Verdict, relate},
-    structure::{PrepareError, Preparer, Structure},
+    structure::{PrepareError, Structure},
 };

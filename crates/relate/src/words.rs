@@ -1,6 +1,7 @@
 //! The verdict in plain sentences.
 
 mod analysis;
+pub(crate) mod forms;
 mod functional;
 pub(crate) mod moves;
 mod places;
@@ -23,6 +24,7 @@ pub(crate) fn summary(
     [a, b]: [&Structure; 2],
     verdict: &Verdict,
     kind: Option<Kind>,
+    substances: Option<&str>,
     explained: Option<&Explanation>,
 ) -> String {
     match verdict.relation {
@@ -36,7 +38,7 @@ pub(crate) fn summary(
             let groups = groups.and_then(functional::difference);
             constitutional([a, b], kind, groups, explained)
         }
-        Relation::NotIsomers => relatives::summary([a, b], kind, explained),
+        Relation::NotIsomers => relatives::summary([a, b], kind, substances, explained),
     }
 }
 
@@ -48,6 +50,16 @@ fn constitutional(
 ) -> String {
     let what = match kind {
         Some(Kind::Isotopomers) => ", with the same isotopes in other places".to_owned(),
+        Some(Kind::ProtonTransfer) => {
+            let moved = explained.and_then(|e| forms::moved_hydrogens([a, b], e, "proton"));
+            let moved = moved.unwrap_or_else(|| "a proton sits elsewhere".to_owned());
+            format!("; proton transfer: {moved}")
+        }
+        Some(Kind::Tautomers) => {
+            let moved = explained.and_then(|e| forms::moved_hydrogens([a, b], e, "hydrogen"));
+            let moved = moved.unwrap_or_else(|| "a mobile hydrogen sits elsewhere".to_owned());
+            format!("; tautomers: {moved}")
+        }
         Some(Kind::RingChain) => ", but a chain of one is closed to a ring in the other".to_owned(),
         Some(Kind::Functional) => {
             let groups = groups.map(|groups| format!(" ({groups})"));

@@ -6,14 +6,16 @@ use std::{
 };
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
-use molkin_graph::{Limits, Orderer};
+use molkin_graph::Limits;
 use molkin_relate::{
+    Axes, Normaliser,
     parallel::Work,
     wire::{self, Pair, Prepared},
 };
 
 use crate::{
     args::Format,
+    forms::Forms,
     output::{
         Style,
         text::{self, Extent},
@@ -49,6 +51,7 @@ pub(super) struct Verdict {
 pub(super) struct Verdicts<'v> {
     pub(super) sources: [&'v str; 2],
     pub(super) reading: &'v ReadOptions,
+    pub(super) forms: Forms,
     pub(super) limits: Limits,
     pub(super) brief: bool,
     pub(super) extent: Extent,
@@ -59,7 +62,8 @@ pub(super) struct Verdicts<'v> {
 /// What a thread keeps from one pair to the next.
 pub(super) struct Scratch {
     parser: Parser,
-    orderer: Orderer,
+    normaliser: Normaliser,
+    overlook: Axes,
 }
 
 impl Scratch {
@@ -70,7 +74,11 @@ impl Scratch {
             Side::Read(outcome) => *outcome,
             Side::Raw(raw) => self.parser.parse(*raw),
         };
-        Cow::Owned(Prepared::new(&mut self.orderer, source, outcome))
+        let prepared = Prepared::new(self.normaliser.orderer(), source, outcome);
+        Cow::Owned(match self.overlook.is_empty() {
+            true => prepared,
+            false => prepared.overlooking(&mut self.normaliser, self.overlook),
+        })
     }
 }
 
@@ -89,31 +97,38 @@ impl Verdicts<'_> {
 }
 
 impl<'v> Work for Verdicts<'v> {
-    type Item = [Side<'v>; 2];
-    type Output = Verdict;
+    type Item = Option<[Side<'v>; 2]>;
+    type Output = Option<Verdict>;
     type Scratch = Scratch;
 
     fn scratch(&self) -> Scratch {
         Scratch {
             parser: Parser::new(self.reading),
-            orderer: Orderer::new(self.limits),
+            normaliser: self.forms.normaliser(self.limits),
+            overlook: self.forms.overlook,
         }
     }
 
-    fn run(&self, scratch: &mut Scratch, [a, b]: [Side<'v>; 2]) -> Verdict {
+    fn run(
+        &self,
+        scratch: &mut Scratch,
+        pair: &mut Option<[Side<'v>; 2]>,
+        verdict: &mut Option<Verdict>,
+    ) {
+        let Some([a, b]) = pair.take() else { return };
         let [source_a, source_b] = self.sources;
         let a = scratch.ready(source_a, a);
         let b = scratch.ready(source_b, b);
         let sides = [&*a, &*b];
-        let pair = wire::compare(&mut scratch.orderer, &self.limits, sides, self.brief);
-        Verdict {
+        let pair = wire::compare_by(&mut scratch.normaliser, &self.limits, sides, self.brief);
+        *verdict = Some(Verdict {
             outcome: Outcome::of(&pair),
             text: self.text(&pair, sides),
-        }
+        });
     }
 
-    fn bytes(sides: &[Side<'v>; 2]) -> usize {
-        let bytes = sides.iter().map(|side| match side {
+    fn bytes(pair: &Option<[Side<'v>; 2]>) -> usize {
+        let bytes = pair.iter().flatten().map(|side| match side {
             Side::Raw(raw) => raw.bytes(),
             Side::Read(_) | Side::Ready(_) => 0,
         });

@@ -5,6 +5,7 @@ mod beside;
 pub(crate) mod describe;
 mod layout;
 pub(crate) mod pair;
+pub(crate) mod samples;
 
 use std::io::{self, Write};
 

@@ -79,15 +79,38 @@ impl Canonical {
     /// The stereo elements: those that are marked to effect, and the unmarked ones that are
     /// stereogenic.
     pub fn stereo_elements(&self) -> Vec<StereoElement> {
+        self.elements(|number, variable| match self.claims.statuses[number] {
+            Status::NotStereogenic => None,
+            Status::Marked => Some(variable.odd),
+            Status::Unmarked => Some(None),
+        })
+    }
+
+    /// Bridgeheads that determine each other, with marks that say nothing about the compound: both
+    /// arrangements are one, as in norbornene, or the rest of the record leaves them open. Their marks
+    /// say which of two like places is which in this drawing, and that is what their labels tell.
+    pub fn idle_bridgeheads(&self) -> Vec<StereoElement> {
+        self.elements(|number, variable| {
+            let idle = self.claims.statuses[number] != Status::Marked && variable.members.len() > 1;
+            (idle && variable.odd.is_some()).then_some(variable.odd)
+        })
+    }
+
+    /// The elements of the variables for which there is a word on whether, and how, they are marked.
+    fn elements(
+        &self,
+        given: impl Fn(usize, &Variable) -> Option<Option<bool>>,
+    ) -> Vec<StereoElement> {
         let mut found = Vec::new();
         for (number, variable) in self.variables.iter().enumerate() {
-            let given = match self.claims.statuses[number] {
-                Status::NotStereogenic => continue,
-                Status::Marked => variable.odd,
-                Status::Unmarked => None,
+            let Some(given) = given(number, variable) else {
+                continue;
             };
             for &(index, opposite) in &variable.members {
                 let candidate = &self.perception.candidates[index];
+                if candidate.remembered {
+                    continue;
+                }
                 let ligands = self.ligands(candidate);
                 let mark = given.map_or(Mark::Absent, |odd| {
                     Mark::Given(Parity::from_odd(odd ^ opposite))
@@ -145,7 +168,8 @@ impl Canonical {
             // A drawing gives every double bond a geometry, so one that cannot have any is no news.
             let drawn_only = self.claims.statuses[number] == Status::NotStereogenic
                 && self.shape(variable) == Shape::DoubleBond;
-            if self.claims.free[number] && variable.odd.is_some() && !drawn_only {
+            let own = !drawn_only && !self.is_remembered(variable);
+            if self.claims.free[number] && variable.odd.is_some() && own {
                 for &(index, _) in &variable.members {
                     let centres = perception.candidates[index].centres;
                     notes.push(Remark::MarkIdle {
@@ -177,7 +201,8 @@ impl Canonical {
     }
 
     fn partly_marked(&self) -> Option<Remark> {
-        let mobile = |v: &&Variable| v.quiet && self.shape(v) == Shape::DoubleBond;
+        let mobile =
+            |v: &&Variable| v.quiet && !self.is_remembered(v) && self.shape(v) == Shape::DoubleBond;
         let (marked, unmarked): (Vec<&Variable>, Vec<&Variable>) = self
             .variables
             .iter()
@@ -194,6 +219,12 @@ impl Canonical {
         atoms.sort_unstable();
         atoms.dedup();
         Some(Remark::PartlyMarkedMobileBonds { atoms })
+    }
+
+    /// Whether a variable is a mark that was erased.
+    fn is_remembered(&self, variable: &Variable) -> bool {
+        let mut members = variable.members.iter();
+        members.any(|&(index, _)| self.perception.candidates[index].remembered)
     }
 
     pub(super) fn shape(&self, variable: &Variable) -> Shape {

@@ -19,6 +19,8 @@ pub(crate) fn analysis(
         Relation::Stereo(StereoKind::Diastereomers) => "Mass alone cannot tell: it is equal. NMR and achiral chromatography can.".to_owned(),
         Relation::Stereo(StereoKind::Composition) => "Mass alone cannot tell: it is equal. Chiral chromatography gives the ratio of enantiomers, NMR or achiral chromatography that of diastereomers.".to_owned(),
         Relation::Stereo(StereoKind::Undetermined | StereoKind::Unresolved) => UNMARKED.to_owned(),
+        Relation::Constitutional if kind == Some(Kind::ProtonTransfer) => "One compound with its protons elsewhere: pH and the medium decide where they sit, so a solution does not tell the two apart.".to_owned(),
+        Relation::Constitutional if kind == Some(Kind::Tautomers) => "Tautomers may turn into each other: a solution of either may show the same mixture in NMR and chromatography.".to_owned(),
         Relation::Constitutional if kind == Some(Kind::Isotopomers) => "Equal mass; NMR of the labelled nuclei, or the masses of fragments, show where the isotopes sit.".to_owned(),
         Relation::Constitutional => "Mass alone cannot tell: it is equal. NMR and achiral chromatography can.".to_owned(),
         Relation::NotIsomers => by_mass(a, b, kind, explained),
@@ -29,18 +31,27 @@ pub(crate) fn analysis(
 /// Where the records leave stereo open, analysis comes first.
 const UNMARKED: &str = "Equal mass, and the records leave stereo open: NMR and achiral chromatography tell diastereomers apart, only a chiral method enantiomers.";
 
+/// Salts, solvates and their ratio.
+const COUNTER_ION: &str = "What both contain agrees, so mass and NMR of it do; an assay of the counter-ion or the solvent tells them apart.";
+
+/// Protons come and go.
+const CHARGE: &str = "One compound in two charge states, which follow from pH and counter-ion; an assay of the counter-ion tells them apart.";
+
 fn by_mass(a: &Structure, b: &Structure, kind: Option<Kind>, explained: &Explanation) -> String {
-    if kind == Some(Kind::Isotopologues) {
-        return "Isotopologues differ in mass; chromatography hardly separates them.".to_owned();
-    }
-    if only_protons_moved([a.formula(), b.formula()], explained) {
-        let left_over = explained.left_over.iter().flatten().next();
-        return match (left_over, explained.atom_map.is_empty()) {
-            (Some(_), true) => "Mass tells them apart.",
-            (Some(_), false) => "What both contain agrees but for protons; an assay of the counter-ion or the solvent tells them apart.",
-            (None, _) => "One compound in two charge states, which follow from pH and counter-ion; an assay of the counter-ion tells them apart.",
+    match kind {
+        Some(Kind::Isotopologues) => {
+            return "Isotopologues differ in mass; chromatography hardly separates them."
+                .to_owned();
         }
-        .to_owned();
+        Some(Kind::SaltOrSolvate) => return COUNTER_ION.to_owned(),
+        Some(Kind::ChargeState) => return CHARGE.to_owned(),
+        _ => {}
+    }
+    // Counter-ions that no table lists.
+    let common = !explained.atom_map.is_empty();
+    if common && only_protons_moved([a.formula(), b.formula()], explained) {
+        let same_atoms = explained.left_over.iter().all(Vec::is_empty);
+        return if same_atoms { CHARGE } else { COUNTER_ION }.to_owned();
     }
     match [a, b].map(|side| mass(side.molecule())) {
         [Some(one), Some(other)] if (one - other).abs() < NOMINAL => {

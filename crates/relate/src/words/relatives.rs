@@ -14,8 +14,13 @@ const ALIKE: &str = "all else is bonded alike";
 pub(super) fn summary(
     [a, b]: [&Structure; 2],
     kind: Option<Kind>,
+    substances: Option<&str>,
     explained: Option<&Explanation>,
 ) -> String {
+    let (left, right) = (a.formula(), b.formula());
+    if let Some(substances) = substances {
+        return format!("Not isomers, but one compound: {substances} ({left} and {right}).");
+    }
     let verdict = verdict(a, b, kind);
     let found = explained.and_then(|explained| Some((explained, explained.bonds.as_ref()?)));
     let Some((explained, bonds)) = found.filter(|_| a.formula() != b.formula()) else {
@@ -236,10 +241,10 @@ mod tests {
         let [a, b] =
             [a, b].map(|text| Structure::new(&mut orderer, smiles::parse(text).unwrap()).unwrap());
         let verdict = relate(&mut orderer, &a, &b).unwrap();
-        let kinds = kinds(verdict.relation, &a, &b, &limits).unwrap();
+        let kinds = kinds(verdict.relation, [&a, &b], None, &limits).unwrap();
         let kind = kinds.first().copied();
         let explained = explain(&a, &b, verdict.relation, &limits);
-        let summary = whole_summary([&a, &b], &verdict, kind, Some(&explained));
+        let summary = whole_summary([&a, &b], &verdict, kind, None, Some(&explained));
         let (_, further) = summary.split_once(['.', ':']).unwrap();
         let further = further
             .split_once("). ")

@@ -2,7 +2,9 @@
 
 use std::io::{self, Write};
 
-use molkin_relate::wire::{Bonds, Finding, Group, Pair, Piece, Prepared, StereoEntry, Which};
+use molkin_relate::wire::{
+    Apart, Bonds, Finding, Group, Pair, Piece, Prepared, StereoEntry, Which,
+};
 
 use crate::output::style::{Role, Style};
 
@@ -25,6 +27,15 @@ pub(crate) fn write(
     paragraph(out, style, Role::Verdict, verdict)?;
     record(out, style, Which::A, sides[0])?;
     record(out, style, Which::B, sides[1])?;
+    if let Some(axes) = &pair.overlooked {
+        labelled(out, style, (None, "overlooked"), &axes.join(", "))?;
+    }
+    if let Apart::Axes(Some(axes)) = &pair.same_apart_from
+        && !axes.is_empty()
+        && pair.relation != Some("stereo")
+    {
+        labelled(out, style, (None, "same apart from"), &axes.join(", "))?;
+    }
     for error in pair.errors.iter().flatten().filter(|e| e.input.is_none()) {
         labelled(out, style, (None, "error"), &fault(error))?;
     }
@@ -65,6 +76,9 @@ fn record(out: &mut impl Write, style: Style, which: Which, prepared: &Prepared)
     labelled(out, style, label, &place)?;
     if let Some(smiles) = &input.smiles {
         labelled(out, style, (None, ""), &broken(smiles))?;
+    }
+    if let Some(form) = &input.form {
+        labelled(out, style, (None, ""), &format!("compared as {form}"))?;
     }
     if let Some(error) = prepared.error() {
         labelled(out, style, (None, "error"), &fault(error))?;
