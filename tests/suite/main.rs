@@ -40,6 +40,7 @@ mod moves_built;
 mod pages;
 mod parents;
 mod relations;
+mod relatives;
 mod renumbering;
 mod samples;
 mod shortcuts;

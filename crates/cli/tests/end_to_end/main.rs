@@ -6,6 +6,7 @@ mod inputs;
 mod pairing;
 mod runner;
 mod schema;
+mod screen;
 mod status;
 mod streams;
 mod text;
