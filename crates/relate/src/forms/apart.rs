@@ -88,7 +88,7 @@ pub fn same_apart_from(
 fn may_change(structure: &Structure, axis: Axis) -> bool {
     let molecule = structure.molecule();
     match axis {
-        Axis::Salt => molecule.component_count() > 1,
+        Axis::Salt => !molecule.is_connected(),
         Axis::Charge => molecule.atoms().any(|atom| atom.charge != 0),
         Axis::Tautomer | Axis::RingChain => true,
         Axis::Isotope => !structure.isotopes().is_empty(),

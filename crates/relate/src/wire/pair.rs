@@ -268,14 +268,18 @@ impl Pair {
         self.aspects = Some(kinds.iter().map(|kind| kind.as_str()).collect());
         self.open = Some(verdict.open);
         let kind = kinds.first().copied();
-        self.summary = Some(words::summary(
+        let summary = words::summary(
             [a, b],
             &verdict,
             kind,
             substances.as_deref(),
             explained.as_ref(),
             limits,
-        ));
+        );
+        self.summary = Some(match &self.overlooked {
+            Some(axes) => format!("With {} overlooked: {summary}", axes.join(", ")),
+            None => summary,
+        });
         // What is unmarked is why these verdicts are not firmer.
         let unsettled = verdict.open
             || matches!(
