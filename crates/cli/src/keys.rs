@@ -4,7 +4,7 @@ use std::io::{self, Write};
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 use molkin_graph::Limits;
-use molkin_relate::{parallel::Work, wire::KeyRows};
+use molkin_relate::{Axis, parallel::Work, wire::KeyRows};
 
 use crate::{
     args::{Keys, TableFormat},
@@ -23,6 +23,9 @@ pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
         Err(message) => return report.trouble(message),
     };
     report.out().write_all(&Table::default().header()?)?;
+    if forms.overlook.contains(Axis::OpenStereo) {
+        return report.trouble("open-stereo is about two records: keys cannot overlook it");
+    }
     let reading = input::read_options(&options.reading);
     let inputs = Inputs::new(&options.inputs, &reading);
     let work = Rows {

@@ -92,6 +92,7 @@ fn may_change(structure: &Structure, axis: Axis) -> bool {
         Axis::Charge => molecule.atoms().any(|atom| atom.charge != 0),
         Axis::Tautomer | Axis::RingChain => true,
         Axis::Isotope => !structure.isotopes().is_empty(),
+        Axis::OpenStereo => false,
         Axis::Stereo => {
             !molecule.drawn_stereo().is_empty() || !molecule.drawn_coordination().is_empty()
         }

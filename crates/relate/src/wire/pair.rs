@@ -4,8 +4,8 @@ use molkin_graph::{Label, Limits, Molecule, OrderError, Orderer};
 use serde::Serialize;
 
 use crate::{
-    Axes, Branching as DomainBranching, Explanation, Normaliser, PrepareError, Relation,
-    StereoKind, Structure, explain, kinds, relate,
+    Axes, Axis, Branching as DomainBranching, Explanation, Normaliser, PrepareError, Relation,
+    StereoKind, Structure, Verdict, explain, kinds, relate,
     remarks::{self, Noted},
     same_apart_from, words,
 };
@@ -80,7 +80,7 @@ fn is_not_settled(apart: &Apart) -> bool {
 }
 
 fn words_of(axes: Axes) -> Vec<&'static str> {
-    axes.iter().map(crate::Axis::as_str).collect()
+    axes.iter().map(Axis::as_str).collect()
 }
 
 /// The kind field: null for identical records, absent beside errors.
@@ -255,7 +255,13 @@ impl Pair {
         [(a, notes_a), (b, notes_b)]: [(&Structure, &[Note]); 2],
         brief: bool,
     ) -> Result<(), OrderError> {
-        let verdict = relate(normaliser.orderer(), a, b)?;
+        let mut verdict = relate(normaliser.orderer(), a, b)?;
+        if verdict.relation == Relation::Stereo(StereoKind::Undetermined) && self.overlooks_open() {
+            verdict = Verdict {
+                relation: Relation::Identical,
+                open: true,
+            };
+        }
         let explained = (!brief).then(|| explain(a, b, verdict.relation, limits));
         let mut notes = Vec::new();
         let (apart, substances) = self.forms(normaliser, verdict.relation, [a, b], &mut notes);
@@ -310,6 +316,12 @@ impl Pair {
         }
         self.notes = Some(notes);
         Ok(())
+    }
+
+    /// Whether stereo is overlooked where one side leaves it open.
+    fn overlooks_open(&self) -> bool {
+        let mut axes = self.overlooked.iter().flatten();
+        axes.any(|&axis| axis == Axis::OpenStereo.as_str())
     }
 
     /// Which axes tell the two apart, and what they are as substances.
