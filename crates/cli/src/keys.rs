@@ -4,14 +4,14 @@ use std::io::{self, Write};
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 use molkin_graph::Limits;
-use molkin_relate::{Axis, parallel::Work, wire::KeyRows};
+use molkin_relate::{Axis, wire::KeyRows};
 
 use crate::{
     args::{Keys, TableFormat},
     forms::Forms,
     input,
-    output::csv::Table,
-    records::{self, Event, Inputs, Written},
+    output::csv,
+    records::{self, Entries, Inputs},
     report::Report,
 };
 
@@ -22,10 +22,10 @@ pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
         Ok(forms) => forms,
         Err(message) => return report.trouble(message),
     };
-    report.out().write_all(&Table::default().header()?)?;
     if forms.overlook.contains(Axis::OpenStereo) {
         return report.trouble("open-stereo is about two records: keys cannot overlook it");
     }
+    report.out().write_all(csv::HEADER)?;
     let reading = input::read_options(&options.reading);
     let inputs = Inputs::new(&options.inputs, &reading);
     let work = Rows {
@@ -50,12 +50,9 @@ struct Scratch {
     parser: Parser,
     outcome: RecordOutcome,
     rows: KeyRows,
-    table: Table,
 }
 
-impl Work for Rows<'_> {
-    type Item = Event<RawRecord>;
-    type Output = Event<Written>;
+impl Entries for Rows<'_> {
     type Scratch = Scratch;
 
     fn scratch(&self) -> Scratch {
@@ -68,21 +65,19 @@ impl Work for Rows<'_> {
                 self.forms.overlook,
                 self.further,
             ),
-            table: Table::default(),
         }
     }
 
-    fn run(&self, scratch: &mut Scratch, event: Event<RawRecord>) -> Event<Written> {
-        event.map(|source, raw| {
-            scratch.parser.parse_into(raw, &mut scratch.outcome);
-            let row = scratch.rows.row(source, &mut scratch.outcome);
-            let fine = row.status == "ok";
-            let text = scratch.table.row(row);
-            Written { text, fine }
-        })
-    }
-
-    fn bytes(event: &Event<RawRecord>) -> usize {
-        event.bytes()
+    fn write(
+        &self,
+        scratch: &mut Scratch,
+        source: &str,
+        record: &mut RawRecord,
+        text: &mut Vec<u8>,
+    ) -> io::Result<bool> {
+        scratch.parser.parse_into(record, &mut scratch.outcome);
+        let row = scratch.rows.row(source, &mut scratch.outcome);
+        csv::write_row(text, row)?;
+        Ok(row.status == "ok")
     }
 }

@@ -13,6 +13,7 @@ mod progress;
 mod records;
 mod report;
 mod run;
+mod samples;
 
 use std::process::ExitCode;
 

@@ -13,6 +13,7 @@ mod kinds;
 pub mod mapping;
 mod relation;
 mod remarks;
+pub mod samples;
 mod structure;
 mod words;
 
@@ -20,6 +21,7 @@ mod words;
 pub mod parallel;
 pub mod wire;
 
+pub use explain::moves as findings;
 pub use crate::{
     explain::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
@@ -32,5 +34,5 @@ pub use crate::{
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},
     relation::{Relation, StereoKind, Verdict, relate},
-    structure::{PrepareError, Preparer, Structure},
+    structure::{PrepareError, Structure},
 };

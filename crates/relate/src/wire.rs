@@ -3,9 +3,11 @@
 //! Atoms count from 1 here, in input order. Fields that do not apply are absent.
 
 mod describe;
+mod findings;
 mod keys;
 mod pair;
 mod prepared;
+mod samples;
 
 use molkin_formats::{Note as ReadNote, ReadError};
 use molkin_graph::Molecule;
@@ -14,12 +16,17 @@ use serde::Serialize;
 use crate::remarks::Noted;
 
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
+pub use findings::{Finding, FoundGroup};
 pub use keys::{KeyRow, KeyRows};
 pub use pair::{
     Apart, BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair,
     StereoEntry, compare, compare_by,
 };
 pub use prepared::Prepared;
+pub use samples::{
+    CAUTION, ExpectedMass, FormulaEntry, HypothesisEntry, MassEntry, SampleEntry, SampleName,
+    SampleRow, Tray, VerdictCount,
+};
 
 /// The version of the contract.
 pub const VERSION: u32 = 1;
@@ -127,7 +134,8 @@ impl From<&ReadError> for Error {
 }
 
 impl Error {
-    fn without_place(code: &str, message: String) -> Self {
+    /// An error that no place of a source shows.
+    pub fn without_place(code: &str, message: String) -> Self {
         Self {
             input: None,
             line: None,

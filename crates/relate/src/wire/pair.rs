@@ -10,7 +10,7 @@ use crate::{
     same_apart_from, words,
 };
 
-use super::{Error, Group, Input, Note, Prepared, VERSION, Which, numbers};
+use super::{Error, Finding, Group, Input, Note, Prepared, VERSION, Which, findings, numbers};
 
 /// The result for one pair. Either `errors` or the fields from `relation` on are there.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize)]
@@ -51,6 +51,9 @@ pub struct Pair {
     /// Mapped atoms with different hydrogen counts.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub hydrogens: Option<Vec<Hydrogens>>,
+    /// What moved.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub findings: Option<Vec<Finding>>,
     /// How both records branch.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub branch_points: Option<BranchPoints>,
@@ -241,6 +244,7 @@ impl Pair {
             atom_map: None,
             bonds: None,
             hydrogens: None,
+            findings: None,
             branch_points: None,
             stereo: None,
             notes: None,
@@ -312,6 +316,7 @@ impl Pair {
                 let note = |noted| Note::of(structure.molecule(), noted).on(which);
                 notes.extend(own.into_iter().map(note));
             }
+            self.findings = findings::of([a, b], &explained);
             self.add_explanation(verdict.relation, explained, molecules, &mut notes);
         }
         self.notes = Some(notes);
