@@ -1,6 +1,9 @@
 //! `molkin keys`.
 
-use std::io::{self, Write};
+use std::{
+    io::{self, Write},
+    num::NonZeroUsize,
+};
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 use molkin_graph::Limits;
@@ -54,6 +57,8 @@ struct Scratch {
 
 impl Entries for Rows<'_> {
     type Scratch = Scratch;
+
+    const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(255);
 
     fn scratch(&self) -> Scratch {
         let limits = Limits::default();
