@@ -43,6 +43,7 @@ mod relations;
 mod relatives;
 mod renumbering;
 mod samples;
+mod shortcuts;
 mod smiles;
 mod stability;
 mod symmetry;

@@ -5,6 +5,7 @@ mod contract;
 mod inputs;
 mod pairing;
 mod runner;
+mod samples;
 mod schema;
 mod screen;
 mod status;

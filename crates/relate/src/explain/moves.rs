@@ -5,6 +5,7 @@
 //! [`Change::Rest`]. All work is done on the canonical numbering of the lesser record of the two, so
 //! that no choice depends on the input and the two directions mirror each other.
 
+mod chains;
 mod changes;
 mod frame;
 mod groups;

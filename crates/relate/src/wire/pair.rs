@@ -4,8 +4,8 @@ use molkin_graph::{Label, Limits, Molecule, OrderError, Orderer};
 use serde::Serialize;
 
 use crate::{
-    Axes, Branching as DomainBranching, Explanation, Normaliser, PrepareError, Relation,
-    StereoKind, Structure, explain, kinds, relate,
+    Axes, Axis, Branching as DomainBranching, Explanation, Normaliser, PrepareError, Relation,
+    StereoKind, Structure, Verdict, explain, kinds, relate,
     remarks::{self, Noted},
     same_apart_from, words,
 };
@@ -98,7 +98,7 @@ fn is_not_settled(apart: &Apart) -> bool {
 }
 
 fn words_of(axes: Axes) -> Vec<&'static str> {
-    axes.iter().map(crate::Axis::as_str).collect()
+    axes.iter().map(Axis::as_str).collect()
 }
 
 /// The kind field: null for identical records, absent beside errors.
@@ -271,7 +271,13 @@ impl Pair {
         [(a, notes_a), (b, notes_b)]: [(&Structure, &[Note]); 2],
         brief: bool,
     ) -> Result<(), OrderError> {
-        let verdict = relate(normaliser.orderer(), a, b)?;
+        let mut verdict = relate(normaliser.orderer(), a, b)?;
+        if verdict.relation == Relation::Stereo(StereoKind::Undetermined) && self.overlooks_open() {
+            verdict = Verdict {
+                relation: Relation::Identical,
+                open: true,
+            };
+        }
         let explained = (!brief).then(|| explain(a, b, verdict.relation, limits));
         let mut notes = Vec::new();
         let (apart, substances) = self.forms(normaliser, verdict.relation, [a, b], &mut notes);
@@ -284,13 +290,17 @@ impl Pair {
         self.aspects = Some(kinds.iter().map(|kind| kind.as_str()).collect());
         self.open = Some(verdict.open);
         let kind = kinds.first().copied();
-        self.summary = Some(words::summary(
+        let summary = words::summary(
             [a, b],
             &verdict,
             kind,
             substances.as_deref(),
             explained.as_ref(),
-        ));
+        );
+        self.summary = Some(match &self.overlooked {
+            Some(axes) => format!("With {} overlooked: {summary}", axes.join(", ")),
+            None => summary,
+        });
         // What is unmarked is why these verdicts are not firmer.
         let unsettled = verdict.open
             || matches!(
@@ -323,6 +333,12 @@ impl Pair {
         }
         self.notes = Some(notes);
         Ok(())
+    }
+
+    /// Whether stereo is overlooked where one side leaves it open.
+    fn overlooks_open(&self) -> bool {
+        let mut axes = self.overlooked.iter().flatten();
+        axes.any(|&axis| axis == Axis::OpenStereo.as_str())
     }
 
     /// Which axes tell the two apart, and what they are as substances.
