@@ -219,12 +219,12 @@ fn identical_but_open() {
 #[test]
 fn not_isomers() {
     assert_snapshot!(compared("salt-label.mol", "salt-arrived.mol"), @r"
-    Not isomers: the molecular formulae differ (C7H6O3 and C7H5NaO3). Na+ as a component of B; all
-    else agrees but for protons.
+    Not isomers, but one compound: B is the sodium salt of A (C7H6O3 and C7H5NaO3).
       A                 salt-label.mol: QM-0444 label (C7H6O3)
                         C(=O)(O)C1=C(O)C=CC=C1
       B                 salt-arrived.mol: QM-0444 bottle (C7H5NaO3)
                         O=C([O-])C1=C(O)C=CC=C1.[Na+]
+      same apart from   salt
       left over in B    Na+ (Na11)
       order, A → B      O1=C2 → O1:C2, C2–O3 → C2:O3 (: is a mobile bond)
       hydrogens, A → B  O3 (1 H) → O3 (no H)
@@ -232,8 +232,8 @@ fn not_isomers() {
       groups            carboxylic acid (O1, C2, O3)           carboxylate (O1, C2, O3),
                                                                unnamed (Na11)
       atoms, A → B      the same numbers in both
-      common practice   What both contain agrees but for protons; an assay of the counter-ion or the
-                        solvent tells them apart.
+      common practice   What both contain agrees, so mass and NMR of it do; an assay of the
+                        counter-ion or the solvent tells them apart.
     ");
 }
 

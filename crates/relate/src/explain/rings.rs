@@ -233,7 +233,7 @@ struct Tree {
     before: Vec<Option<(usize, usize)>>,
 }
 
-fn has(set: &BondSet, bond: usize) -> bool {
+fn has(set: &[u64], bond: usize) -> bool {
     set[bond / 64] >> (bond % 64) & 1 == 1
 }
 

@@ -96,7 +96,7 @@ impl Sides<Surplus> {
 }
 
 impl RingSystem {
-    pub(super) fn list(molecule: &Molecule, systems: &Vec<DomainSystem>) -> Vec<Self> {
+    pub(super) fn list(molecule: &Molecule, systems: &[DomainSystem]) -> Vec<Self> {
         let systems = systems.iter().map(|system| Self {
             atoms: numbers(molecule, &system.atoms),
             sizes: system.sizes.clone(),
@@ -107,7 +107,7 @@ impl RingSystem {
 }
 
 impl FunctionalGroup {
-    pub(super) fn list(molecule: &Molecule, groups: &Vec<DomainGroup>) -> Vec<Self> {
+    pub(super) fn list(molecule: &Molecule, groups: &[DomainGroup]) -> Vec<Self> {
         let groups = groups.iter().map(|group| Self {
             atoms: numbers(molecule, &group.atoms),
             name: group.name,

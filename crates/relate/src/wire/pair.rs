@@ -436,9 +436,17 @@ impl Pair {
         }
         let both = |branching| Sides::of(branching, [a, b], Branching::of);
         self.branch_points = explained.branching.as_ref().map(both);
-        let both = |rings| Sides::of(rings, [a, b], RingSystem::list);
+        let both = |rings| {
+            Sides::of(rings, [a, b], |molecule, rings: &Vec<_>| {
+                RingSystem::list(molecule, rings)
+            })
+        };
         self.rings = explained.rings.as_ref().map(both);
-        let both = |groups| Sides::of(groups, [a, b], FunctionalGroup::list);
+        let both = |groups| {
+            Sides::of(groups, [a, b], |molecule, groups: &Vec<_>| {
+                FunctionalGroup::list(molecule, groups)
+            })
+        };
         self.functional_groups = explained.functional_groups.as_ref().map(both);
         if !constitution_differs {
             self.stereo = Some(
