@@ -21,7 +21,7 @@ impl Side {
     pub(super) fn of(normaliser: &mut Normaliser, structure: &Structure) -> Self {
         let molecule = structure.molecule();
         let is_plain =
-            molecule.component_count() < 2 && molecule.atoms().all(|atom| atom.charge == 0);
+            molecule.is_connected() && molecule.atoms().all(|atom| atom.charge == 0);
         if is_plain {
             return Self {
                 components: ionising(molecule),
