@@ -135,6 +135,15 @@ impl Orderer {
         }
     }
 
+    /// An orderer that takes no shortcuts in perception: normal forms of mesomers are always found by
+    /// the general way, and an [`Identity`] is found as all of the [`Canonical`] view. It answers the
+    /// same, slowly; tests hold the shortcuts to it.
+    pub fn without_shortcuts(limits: Limits) -> Self {
+        let mut orderer = Self::new(limits);
+        orderer.mesomer.no_shortcuts = true;
+        orderer
+    }
+
     /// The limits.
     pub fn limits(&self) -> &Limits {
         &self.limits

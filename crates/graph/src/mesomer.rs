@@ -24,6 +24,7 @@ mod tests;
 use crate::{Limits, OrderError, matching::Matching, skeleton::Skeleton};
 
 pub(crate) use first::First;
+use mobile::Mobility;
 pub(crate) use octet::{Scratch as OctetScratch, separate};
 use placement::System;
 use plain::Pairs;
@@ -63,6 +64,8 @@ pub(crate) struct Mesomer {
 /// Scratch that is reused from one molecule to the next.
 #[derive(Debug, Default)]
 pub(crate) struct Scratch {
+    /// Takes the general way for plain drawings and ring shifts, too.
+    pub(crate) no_shortcuts: bool,
     pairs: Vec<Pairs>,
     octet: octet::Scratch,
     drawn: Vec<Drawn>,
@@ -70,6 +73,7 @@ pub(crate) struct Scratch {
     /// Per atom: in one of the systems with charges or open valences.
     in_system: Vec<bool>,
     spare_systems: Vec<System>,
+    mobility: Mobility,
     shift: Shift,
     matching: Matching,
 }
@@ -116,19 +120,21 @@ impl Mesomer {
         scratch: &mut Scratch,
     ) -> Result<(), OrderError> {
         let Scratch {
+            no_shortcuts,
             pairs,
             octet,
             drawn,
             valences,
             in_system,
             spare_systems,
+            mobility,
             shift,
             matching,
         } = scratch;
         // An edge of a matching costs some four times as much as one of a refinement.
         matching.work = 0;
         matching.budget = limits.order_steps / 4;
-        if plain::is_plain(skeleton, pairs) {
+        if !*no_shortcuts && plain::is_plain(skeleton, pairs) {
             self.take_orders(skeleton);
             self.states.clear();
             self.states.resize(skeleton.len(), AtomState::default());
@@ -154,10 +160,13 @@ impl Mesomer {
             &mut self.systems,
             spare_systems,
         );
+        if *no_shortcuts {
+            systems::add_neutral(skeleton, valences, in_system, &mut self.systems);
+        }
         let (orders, states) = (&mut self.orders, &mut self.states);
         for system in &mut self.systems {
             if system.settle(valences, matching, limits)? {
-                mobile::mark(system, matching, limits, orders, states)?;
+                mobility.mark(system, matching, limits, orders, states)?;
             }
         }
         // A ring shift that would turn a triple bond into cumulated ones relates valence isomers, not

@@ -7,6 +7,7 @@ mod pairing;
 mod runner;
 mod samples;
 mod schema;
+mod screen;
 mod status;
 mod streams;
 mod text;
