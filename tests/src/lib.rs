@@ -26,6 +26,7 @@ mod small;
 mod spelling;
 mod stereo;
 mod tally;
+mod tautomers;
 mod text;
 
 pub mod fuzz;
@@ -47,6 +48,7 @@ pub use crate::{
     spelling::random_spelling,
     stereo::{Markings, all_markings, completions, grouped, mirrored},
     tally::Tally,
+    tautomers::shifted,
     text::{Table, first_word, read_text, shared, workspace},
 };
 

@@ -22,6 +22,7 @@ use crate::{
     order::{Coloured, Labeller, Labelling, Unit},
     skeleton::Skeleton,
     stereo::{self, Perception},
+    tautomer,
 };
 
 pub use comparison::{Arrangement, arrangement};
@@ -94,7 +95,7 @@ pub enum OrderError {
 /// Computes canonical views; owns the scratch memory. One per thread.
 #[derive(Debug, Default)]
 pub struct Orderer {
-    limits: Limits,
+    pub(crate) limits: Limits,
     labeller: Labeller,
     graph: Coloured,
     mesomer: mesomer::Scratch,
@@ -102,6 +103,7 @@ pub struct Orderer {
     claims: claims::Scratch,
     form: form::Scratch,
     digester: Digester,
+    pub(crate) tautomer: tautomer::Scratch,
 }
 
 /// The canonical view of one molecule.
@@ -159,15 +161,32 @@ impl Orderer {
         molecule: &Molecule,
         view: &mut Canonical,
     ) -> Result<(), OrderError> {
+        self.perceive(molecule, view)?;
+        self.settle(molecule, view)
+    }
+
+    /// Loads skeleton and normal form.
+    pub(crate) fn perceive(
+        &mut self,
+        molecule: &Molecule,
+        view: &mut Canonical,
+    ) -> Result<(), OrderError> {
         if molecule.atom_count() > self.limits.atoms {
             return Err(OrderError::TooManyAtoms {
                 limit: self.limits.atoms,
             });
         }
         view.skeleton.load(molecule);
-        let scratch = &mut self.mesomer;
         view.mesomer
-            .load(&mut view.skeleton, &self.limits, scratch)?;
+            .load(&mut view.skeleton, &self.limits, &mut self.mesomer)
+    }
+
+    /// Finds order, claims and keys of what was perceived.
+    pub(crate) fn settle(
+        &mut self,
+        molecule: &Molecule,
+        view: &mut Canonical,
+    ) -> Result<(), OrderError> {
         let mut steps = 0;
         self.label(
             &view.skeleton,
