@@ -20,7 +20,8 @@ pub fn shifted(molecule: &Molecule) -> Vec<Molecule> {
             }
             for (z, second) in molecule.neighbours(y) {
                 let hetero = is_hetero(molecule, x) || is_hetero(molecule, z);
-                if z != x && second == BondOrder::Double && hetero && takes(molecule, z) {
+                let enol = [x, z].iter().any(|&end| is_acyl_bond(molecule, end, y));
+                if z != x && second == BondOrder::Double && hetero && !enol && takes(molecule, z) {
                     found.push(shift(molecule, [x, y, z]));
                 }
             }
@@ -83,16 +84,28 @@ fn is_mobile_carbon(molecule: &Molecule, index: u32) -> bool {
     let amine = |to: u32| {
         atom(molecule, to).element == Element::NITROGEN
             && molecule.neighbours(to).all(carbon)
-            && !in_ring(molecule, index, to)
+            && !in_ring(molecule, index, to, 8)
     };
     atom(molecule, index).element == Element::CARBON
         && !molecule.neighbours(index).any(|(to, _)| terminal(to) || amine(to))
 }
 
-/// Whether a bond is in a ring of up to eight atoms.
-fn in_ring(molecule: &Molecule, a: u32, b: u32) -> bool {
+/// Whether a bond outside rings joins carbon to a carboxylic acid, ester or amide group.
+fn is_acyl_bond(molecule: &Molecule, c: u32, acyl: u32) -> bool {
+    let element = |index: u32| atom(molecule, index).element;
+    let oxygen = |to: u32| element(to) == Element::OXYGEN && molecule.neighbours(to).count() == 1;
+    let hetero = |to: u32| [Element::NITROGEN, Element::OXYGEN].contains(&element(to));
+    let others = || molecule.neighbours(acyl).map(|(to, _)| to);
+    [c, acyl].iter().all(|&index| element(index) == Element::CARBON)
+        && others().any(oxygen)
+        && others().filter(|&to| hetero(to)).count() >= 2
+        && !in_ring(molecule, c, acyl, u32::MAX)
+}
+
+/// Whether a bond is in a ring of up to a number of atoms.
+fn in_ring(molecule: &Molecule, a: u32, b: u32, largest: u32) -> bool {
     let mut reached = std::collections::BTreeSet::from([a]);
-    for _ in 0..7 {
+    for _ in 1..largest.min(molecule.atom_count() as u32) {
         let next = reached.iter().flat_map(|&at| {
             let others = molecule.neighbours(at).map(|(to, _)| to);
             others.filter(move |&to| [at, to] != [a, b])

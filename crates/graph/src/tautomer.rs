@@ -15,7 +15,7 @@ mod rules;
 mod tests;
 
 use crate::{
-    Canonical, Molecule, OrderError, Orderer,
+    Canonical, Limits, Molecule, OrderError, Orderer,
     matching::{Matching, NONE},
     mesomer::{AtomState, MOBILE},
 };
@@ -83,20 +83,10 @@ impl Scratch {
         molecule: &Molecule,
     ) -> Result<Option<Tautomer>, OrderError> {
         orderer.perceive(molecule, &mut self.view)?;
-        let Canonical {
-            skeleton, mesomer, ..
-        } = &self.view;
-        self.drawing.load(skeleton, mesomer, &mut self.rank);
-        room::load(&mut self.rooms, skeleton, mesomer, &self.drawing);
         let limits = orderer.limits;
-        self.regions.find(
-            skeleton,
-            &self.drawing,
-            &mut self.rooms,
-            &mut self.matching,
-            &limits,
-        )?;
-        if !self.regions.mobile.contains(&true) {
+        self.find(&limits)?;
+        let atoms = 0..self.rooms.len() as u32;
+        if !atoms.into_iter().any(|atom| self.moves(atom)) {
             return Ok(None);
         }
         let erased = self.erased(molecule);
@@ -110,6 +100,29 @@ impl Scratch {
             });
         }
         Ok(Some(tautomer))
+    }
+
+    /// Finds the regions and their sites.
+    fn find(&mut self, limits: &Limits) -> Result<(), OrderError> {
+        let Self {
+            view,
+            drawing,
+            rank,
+            rooms,
+            regions,
+            matching,
+            ..
+        } = self;
+        let (skeleton, mesomer) = (&view.skeleton, &view.mesomer);
+        drawing.load(skeleton, mesomer, rank);
+        matching.work = 0;
+        matching.budget = limits.order_steps / 4;
+        room::load(rooms, skeleton, mesomer, drawing);
+        while regions.find(skeleton, drawing, rooms, matching, limits)? {
+            placement::redraw(skeleton, (rooms, regions), matching, drawing);
+            room::load(rooms, skeleton, mesomer, drawing);
+        }
+        Ok(())
     }
 
     /// Whether an atom is in a region in which hydrogen moves.
@@ -127,20 +140,16 @@ impl Scratch {
             }
             let at = atom as usize;
             let room = &self.rooms[at];
-            let pools = &self.regions.pools[self.regions.region[at] as usize];
             let hydrogens =
                 region::mobile_hydrogens(&self.view.skeleton, &self.drawing, &self.rooms, atom);
             let record = &mut self.view.skeleton.atoms[at];
-            record.hydrogens -= hydrogens as u8;
+            record.hydrogens = self.drawing.hydrogens[at] - hydrogens as u8;
             record.charge = 0;
             self.view.mesomer.states[at] = AtomState {
                 charge: 0,
                 open: room.vertices,
                 mobile: room.site,
-                system: (
-                    pools.negative as i16 - pools.idle as i16,
-                    pools.hydrogens as u16,
-                ),
+                system: self.regions.totals(atom),
             };
         }
         let ends = self.view.skeleton.bonds.iter();

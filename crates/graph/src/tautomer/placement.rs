@@ -1,8 +1,15 @@
 //! The tautomer that stands for a class: the first in the canonical order of the class.
 
-use crate::{Canonical, Element, matching::Matching};
+use crate::{
+    Canonical, Element,
+    matching::{Matching, NONE},
+    skeleton::Skeleton,
+};
 
-use super::{region::Regions, room::Room};
+use super::{
+    region::{self, Regions},
+    room::{Drawing, Room},
+};
 
 /// Chooses the tautomer; owns the scratch.
 #[derive(Debug, Default)]
@@ -29,7 +36,8 @@ impl Placement {
         self.settled.resize(matching.mates().len(), false);
         let rank = |atom: u32| view.written.rank[atom as usize];
         self.sites.clear();
-        for &atom in members.iter().filter(|&&atom| rooms[atom as usize].site) {
+        let is_site = |&&atom: &&u32| rooms[atom as usize].site && regions.region[atom as usize] != NONE;
+        for &atom in members.iter().filter(is_site) {
             let preference = preference(view, regions, atom);
             self.sites.push((preference, rank(atom), atom));
         }
@@ -134,7 +142,8 @@ pub(super) fn multiplicity(
 
 /// Mobile hydrogens and charge of an atom in the matching.
 pub(super) fn state(regions: &Regions, rooms: &[Room], matching: &Matching, atom: u32) -> (u8, i8) {
-    let pools = &regions.pools[regions.region[atom as usize] as usize];
+    let region = regions.region[atom as usize];
+    let pools = regions.pools.get(region as usize).copied().unwrap_or_default();
     let vertices = regions.vertices(rooms, atom);
     let count = |range: std::ops::Range<u32>| {
         let own = vertices.clone();
@@ -142,4 +151,31 @@ pub(super) fn state(regions: &Regions, rooms: &[Room], matching: &Matching, atom
     };
     let lent = i8::from(regions.lending[atom as usize]) - count(pools.unlent());
     (count(pools.hydrogen()) as u8, lent - count(pools.minus()))
+}
+
+/// Draws the tautomer that is in the matching.
+pub(super) fn redraw(
+    skeleton: &Skeleton,
+    (rooms, regions): (&[Room], &Regions),
+    matching: &Matching,
+    drawing: &mut Drawing,
+) {
+    let inside = |atom: u32| regions.is_drawn(atom);
+    let atoms = || (0..skeleton.len() as u32).filter(|&atom| inside(atom));
+    // Before any bond changes: what is drawn now says how many hydrogens stay.
+    for atom in atoms() {
+        let mobile = region::mobile_hydrogens(skeleton, drawing, rooms, atom) as u8;
+        drawing.hydrogens[atom as usize] -= mobile;
+    }
+    for atom in atoms() {
+        let (hydrogens, charge) = state(regions, rooms, matching, atom);
+        drawing.hydrogens[atom as usize] += hydrogens;
+        drawing.charges[atom as usize] = charge;
+    }
+    let bonds = skeleton.bonds.iter().zip(&mut drawing.orders);
+    for ((bond, order), &shifts) in bonds.zip(&regions.shifts) {
+        if shifts && inside(bond.a) && inside(bond.b) {
+            *order = 1 + multiplicity(regions, rooms, matching, bond.a, bond.b);
+        }
+    }
 }

@@ -23,6 +23,8 @@ pub(super) struct Pools {
     pub(super) hydrogens: u32,
     pub(super) negative: u32,
     pub(super) idle: u32,
+    /// Lone pairs that are lent and charges that might cancel.
+    spare: u32,
     /// First vertex: hydrogens, then negative charges, then idle lone pairs, then the two probes.
     first: u32,
 }
@@ -39,12 +41,18 @@ impl Pools {
 
     pub(super) fn unlent(&self) -> std::ops::Range<u32> {
         let from = self.first + self.hydrogens + self.negative;
-        from..from + self.idle
+        from..from + self.idle + self.spare
+    }
+
+    /// Places for lone pairs that are lent as drawn and need not be.
+    fn spares(&self) -> std::ops::Range<u32> {
+        let end = self.unlent().end;
+        end - self.spare..end
     }
 
     /// A further hydrogen, looking for a site.
     fn guest(&self) -> u32 {
-        self.first + self.hydrogens + self.negative + self.idle
+        self.first + self.hydrogens + self.negative + self.idle + self.spare
     }
 
     /// A place looking for one of the hydrogens.
@@ -73,6 +81,18 @@ pub(super) struct Regions {
 }
 
 impl Regions {
+    /// Loads the regions that the sites at hand make.
+    pub(super) fn load(
+        &mut self,
+        skeleton: &Skeleton,
+        drawing: &Drawing,
+        rooms: &[Room],
+        matching: &mut Matching,
+    ) {
+        self.divide(skeleton, drawing, rooms);
+        self.connect(skeleton, drawing, rooms, matching);
+    }
+
     /// Finds the sites: heteroatoms, then carbons that exchange a hydrogen with sites found before in
     /// some tautomer, until there are no more. The matching holds what is drawn afterwards.
     ///
@@ -80,6 +100,8 @@ impl Regions {
     /// of A. Those of B are among them. On the sites of A that B lacks, all tautomers of B have as many
     /// hydrogens together, or else one of them would exchange hydrogen with a site of B and be one. But
     /// the first of them that A found did exchange hydrogen with such sites.
+    ///
+    /// Whether charges cancelled instead: then the matching is to be drawn, and the regions found anew.
     pub(super) fn find(
         &mut self,
         skeleton: &Skeleton,
@@ -87,20 +109,21 @@ impl Regions {
         rooms: &mut [Room],
         matching: &mut Matching,
         limits: &Limits,
-    ) -> Result<(), OrderError> {
-        matching.work = 0;
-        matching.budget = limits.order_steps / 4;
+    ) -> Result<bool, OrderError> {
+        self.load(skeleton, drawing, rooms, matching);
+        if self.cancel(matching) {
+            return Ok(true);
+        }
         loop {
-            self.divide(skeleton, drawing, rooms);
-            self.connect(skeleton, drawing, rooms, matching);
-            let grown = self.grow(skeleton, rooms, matching);
+            self.load(skeleton, drawing, rooms, matching);
+            let grown = self.grow(skeleton, drawing, rooms, matching);
             if matching.is_exhausted() {
                 return Err(OrderError::StepLimit {
                     limit: limits.order_steps,
                 });
             }
             if !grown {
-                return Ok(());
+                return Ok(false);
             }
         }
     }
@@ -108,9 +131,9 @@ impl Regions {
     /// Divides the atoms with room into regions.
     fn divide(&mut self, skeleton: &Skeleton, drawing: &Drawing, rooms: &[Room]) {
         self.shifts.clear();
-        let bonds = skeleton.bonds.iter().zip(&drawing.orders);
+        let bonds = (0..).zip(&drawing.orders);
         self.shifts.extend(bonds.map(|(bond, &order)| {
-            matches!(order, 1..=3) && (pi(order) > 0 || rules::may_shift(skeleton, bond.a, bond.b))
+            matches!(order, 1..=3) && (pi(order) > 0 || rules::may_shift(skeleton, bond))
         }));
         self.lending.clear();
         self.lending.resize(skeleton.len(), false);
@@ -159,6 +182,22 @@ impl Regions {
                 }
             }
         }
+    }
+
+    /// Whether an atom is in a region that need not stay as drawn.
+    pub(super) fn is_drawn(&self, atom: u32) -> bool {
+        let region = self.region[atom as usize];
+        region != NONE && !self.frozen[region as usize]
+    }
+
+    /// Charge beyond that of lent lone pairs, and hydrogens, of an atom's region.
+    pub(super) fn totals(&self, atom: u32) -> (i16, u16) {
+        let region = self.region[atom as usize];
+        let pools = self.pools.get(region as usize).copied().unwrap_or_default();
+        (
+            pools.negative as i16 - pools.idle as i16,
+            pools.hydrogens as u16,
+        )
     }
 
     /// The vertices of an atom.
@@ -216,6 +255,9 @@ impl Regions {
         for pools in &self.pools {
             matching.set_removed(pools.guest(), true);
             matching.set_removed(pools.host(), true);
+            for vertex in pools.spares() {
+                matching.set_removed(vertex, true);
+            }
         }
         self.place(skeleton, drawing, rooms, matching);
         self.freeze(skeleton, rooms, matching);
@@ -257,6 +299,10 @@ impl Regions {
             pools.hydrogens += hydrogens;
             pools.negative += u32::from(room.negative);
             pools.idle += u32::from(self.lending[atom as usize] && !room.positive);
+            pools.spare += u32::from(self.lending[atom as usize] && room.positive);
+        }
+        for pools in &mut self.pools {
+            pools.spare = pools.spare.min(pools.negative);
         }
         for region in &mut self.pools {
             region.first = 0;
@@ -325,6 +371,32 @@ impl Regions {
         matching.keep_changes();
     }
 
+    /// Whether positive and negative charges of a region cancel in some mesomer; if so it has fewer
+    /// afterwards, and the matching is that.
+    fn cancel(&self, matching: &mut Matching) -> bool {
+        let regions = self.pools.iter().zip(&self.frozen);
+        regions.filter(|(_, frozen)| !**frozen).any(|(pools, _)| {
+            let (Some(spare), Some(minus)) = (pools.spares().next(), pools.minus().next()) else {
+                return false;
+            };
+            // Hydrogens stay: a zwitterion is no tautomer of its neutral form.
+            let hydrogens = pools.hydrogen();
+            let held: Vec<u32> = hydrogens.flat_map(|v| [v, matching.mate(v)]).collect();
+            let exposed = matching.part(minus);
+            matching.set_removed(minus, true);
+            matching.set_removed(spare, false);
+            held.iter().for_each(|&v| matching.set_removed(v, true));
+            let cancels = matching.augment(exposed);
+            held.iter().for_each(|&v| matching.set_removed(v, false));
+            if !cancels {
+                matching.undo_to(0);
+                matching.set_removed(minus, false);
+                matching.set_removed(spare, true);
+            }
+            cancels
+        })
+    }
+
     /// Finds the regions that stay as drawn: those beside charges or open valences beyond the model, and
     /// those with something drawn that has no place in it.
     fn freeze(&mut self, skeleton: &Skeleton, rooms: &[Room], matching: &Matching) {
@@ -343,12 +415,19 @@ impl Regions {
             }
         }
         for (pools, frozen) in self.pools.iter().zip(&mut self.frozen) {
-            *frozen |= (pools.first..pools.guest()).any(|v| matching.mate(v) == NONE);
+            let mut all = pools.first..pools.spares().start;
+            *frozen |= all.any(|v| matching.mate(v) == NONE);
         }
     }
 
     /// Turns carbons into sites that exchange a hydrogen with a site; whether there were any.
-    fn grow(&mut self, skeleton: &Skeleton, rooms: &mut [Room], matching: &mut Matching) -> bool {
+    fn grow(
+        &mut self,
+        skeleton: &Skeleton,
+        drawing: &Drawing,
+        rooms: &mut [Room],
+        matching: &mut Matching,
+    ) -> bool {
         let mut grown = Vec::new();
         self.mobile.clear();
         self.mobile.resize(self.pools.len(), false);
@@ -393,7 +472,7 @@ impl Regions {
                     let gives = room.candidate && !room.site && room.vertices == 0;
                     if gives
                         && self.shifts[bond as usize]
-                        && natural_hydrogens(skeleton, to) > 0
+                        && natural_hydrogens(skeleton, drawing, to) > 0
                         && !grown.contains(&to)
                     {
                         grown.push(to);
@@ -411,10 +490,10 @@ impl Regions {
 }
 
 /// Hydrogens of no stated mass.
-pub(super) fn natural_hydrogens(skeleton: &Skeleton, atom: u32) -> u32 {
+pub(super) fn natural_hydrogens(skeleton: &Skeleton, drawing: &Drawing, atom: u32) -> u32 {
     let record = &skeleton.atoms[atom as usize];
     let labelled = [0, 4, 8].map(|shift| u32::from(record.labelled >> shift & 15));
-    u32::from(record.hydrogens).saturating_sub(labelled.iter().sum())
+    u32::from(drawing.hydrogens[atom as usize]).saturating_sub(labelled.iter().sum())
 }
 
 /// The mobile hydrogens that are drawn on an atom: all of a heteroatom's, one of a carbon's if it has
@@ -430,7 +509,7 @@ pub(super) fn mobile_hydrogens(
         return 0;
     }
     if room.hetero {
-        return natural_hydrogens(skeleton, atom);
+        return natural_hydrogens(skeleton, drawing, atom);
     }
     let arcs = skeleton.arcs(atom).iter();
     let bonds: u8 = arcs.map(|&(_, bond)| pi(drawing.orders[bond as usize])).sum();

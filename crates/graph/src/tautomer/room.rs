@@ -49,12 +49,17 @@ impl Room {
 pub(super) struct Drawing {
     pub(super) orders: Vec<u8>,
     pub(super) charges: Vec<i8>,
+    /// All hydrogens of each atom.
+    pub(super) hydrogens: Vec<u8>,
 }
 
 impl Drawing {
     /// One of the best placements, charge-separated centres of groups 15 and 16 neutralised against
     /// their neighbours.
     pub(super) fn load(&mut self, skeleton: &Skeleton, mesomer: &Mesomer, rank: &mut Vec<u32>) {
+        self.hydrogens.clear();
+        self.hydrogens
+            .extend(skeleton.atoms.iter().map(|atom| atom.hydrogens));
         self.orders.clear();
         self.charges.clear();
         self.charges
@@ -145,13 +150,13 @@ pub(super) fn load(rooms: &mut Vec<Room>, skeleton: &Skeleton, mesomer: &Mesomer
 }
 
 fn about(skeleton: &Skeleton, drawing: &Drawing, atom: u32) -> About {
-    let record = &skeleton.atoms[atom as usize];
+    let hydrogens = drawing.hydrogens[atom as usize];
     let mut about = About {
         sigma: 0,
         pi: 0,
         foreign: false,
-        valence: record.hydrogens,
-        labelled: record.hydrogens - natural_hydrogens(skeleton, atom) as u8,
+        valence: hydrogens,
+        labelled: hydrogens - natural_hydrogens(skeleton, drawing, atom) as u8,
     };
     for &(to, bond) in skeleton.arcs(atom) {
         let order = drawing.orders[bond as usize];
@@ -199,7 +204,8 @@ fn group_15(skeleton: &Skeleton, atom: u32, about: &About, charge: i8) -> Room {
     let nitrogen = skeleton.atoms[atom as usize].element == Element::NITROGEN;
     let terminal = rules::terminal_oxygens(skeleton, atom);
     let pair = if nitrogen {
-        terminal == 1 && matches!(about.sigma, 2 | 3)
+        // A nitro group has none, but a mesomer of a larger system may be drawn with one there.
+        (terminal == 1 || (terminal > 1 && about.valence == 3)) && matches!(about.sigma, 2 | 3)
     } else {
         terminal >= 1 && about.sigma <= 3
     };

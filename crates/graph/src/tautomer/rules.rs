@@ -3,7 +3,10 @@
 //! Everything here is read off the σ skeleton alone: elements and neighbours, never bond orders or
 //! hydrogens. So the answer is the same for all tautomers of a compound.
 
-use crate::{Element, skeleton::Skeleton};
+use crate::{
+    Element,
+    skeleton::{Skeleton, SkeletonBond},
+};
 
 /// Oxygens, sulfurs and their like with no other neighbour.
 pub(super) fn terminal_oxygens(skeleton: &Skeleton, atom: u32) -> usize {
@@ -41,15 +44,32 @@ fn is_open_chain_amine(skeleton: &Skeleton, atom: u32, bond: u32) -> bool {
 }
 
 /// Whether π bonds between two atoms take part in shifts of hydrogen wherever they are not drawn.
-/// Ylide bonds from carbon to sulfur or phosphorus above its octet do not.
-pub(super) fn may_shift(skeleton: &Skeleton, a: u32, b: u32) -> bool {
+///
+/// Ylide bonds from carbon to sulfur or phosphorus above its octet do not, nor do bonds from carbon to a
+/// carboxylic acid, ester or amide group outside rings: these have no enols on paper.
+pub(super) fn may_shift(skeleton: &Skeleton, bond: u32) -> bool {
+    let SkeletonBond { a, b, .. } = skeleton.bonds[bond as usize];
+    let carbons = [a, b]
+        .iter()
+        .all(|&atom| skeleton.atoms[atom as usize].element == Element::CARBON);
+    let acyl = carbons && (is_acyl(skeleton, a) || is_acyl(skeleton, b));
     let ylide = |x: u32, y: u32| {
         let heavy = &skeleton.atoms[y as usize].element;
         skeleton.atoms[x as usize].element == Element::CARBON
             && heavy.period() >= 3
             && skeleton.degree(y) >= 3
     };
-    !ylide(a, b) && !ylide(b, a)
+    !ylide(a, b) && !ylide(b, a) && !(acyl && !skeleton.ring[bond as usize])
+}
+
+/// Carbon with an oxygen that has no other neighbour, and another nitrogen or oxygen.
+fn is_acyl(skeleton: &Skeleton, atom: u32) -> bool {
+    let elements = || {
+        let arcs = skeleton.arcs(atom).iter();
+        arcs.map(|&(to, _)| (skeleton.atoms[to as usize].element, skeleton.degree(to)))
+    };
+    let hetero = elements().filter(|(e, _)| [Element::NITROGEN, Element::OXYGEN].contains(e));
+    elements().any(|(e, degree)| e == Element::OXYGEN && degree == 1) && hetero.count() >= 2
 }
 
 fn in_small_ring(skeleton: &Skeleton, bond: u32) -> bool {

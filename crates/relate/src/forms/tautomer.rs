@@ -1,6 +1,6 @@
 //! The tautomer axis: where mobile hydrogens sit.
 
-use molkin_graph::{BondOrder, Limits, OrderError, Orderer, Revision, Tautomer};
+use molkin_graph::{BondOrder, Limits, OrderError, Orderer, Revised, Revision, Tautomer};
 
 use crate::Structure;
 
@@ -15,50 +15,59 @@ pub(super) fn normalise(
 ) -> Result<Option<Outcome>, FormError> {
     let mut revision = remembering(structure);
     revision.retain_stereo(|_| false);
-    let marked = revision.clone().finish()?;
+    let marked = revision.finish()?;
     let found = orderer
         .tautomer(&marked.molecule)
-        .map_err(|error| match error {
-            OrderError::StepLimit { .. } => FormError::StepLimit {
-                axis: Axis::Tautomer,
-            },
-            other => FormError::Prepare(other.into()),
-        })?;
+        .map_err(out_of_steps)?;
     let Some(tautomer) = found else {
         return Ok(None);
     };
-    let changes = apply(&mut revision, &tautomer, &marked.sources);
-    Ok(Some(Outcome {
-        revised: revision.finish()?,
-        changes,
-    }))
+    let mut revision = Revision::of(&marked.molecule);
+    apply(&mut revision, &tautomer);
+    let mut revised = revision.finish()?;
+    for atom in &mut revised.sources {
+        *atom = marked.sources.get(*atom as usize).copied().unwrap_or(*atom);
+    }
+    Ok(Some(outcome(structure, revised)))
+}
+
+fn out_of_steps(error: OrderError) -> FormError {
+    match error {
+        OrderError::StepLimit { .. } => FormError::StepLimit {
+            axis: Axis::Tautomer,
+        },
+        other => FormError::Prepare(other.into()),
+    }
+}
+
+/// Lists the hydrogens that moved.
+fn outcome(structure: &Structure, revised: Revised) -> Outcome {
+    let before = Revision::of(structure.molecule());
+    let atoms = revised.molecule.atoms().zip(&revised.sources);
+    let changes = atoms.filter_map(|(after, &atom)| {
+        let before = before.atom(atom)?;
+        let change = after.hydrogens as i8 - before.hydrogens as i8;
+        (change != 0).then_some(Change::MobileHydrogens { atom, change })
+    });
+    Outcome {
+        changes: changes.collect(),
+        revised,
+    }
 }
 
 /// Makes the tautomer that stands for the class of the one that the revision started from.
-fn apply(revision: &mut Revision, tautomer: &Tautomer, sources: &[u32]) -> Vec<Change> {
-    let source = |atom: u32| sources.get(atom as usize).copied().unwrap_or(atom);
-    let mut changes = Vec::new();
+fn apply(revision: &mut Revision, tautomer: &Tautomer) {
     for own in &tautomer.atoms {
-        let index = source(own.atom);
-        if let Some(atom) = revision.atom_mut(index) {
-            let change = own.hydrogens as i8 - atom.hydrogens as i8;
+        if let Some(atom) = revision.atom_mut(own.atom) {
             atom.hydrogens = own.hydrogens;
             atom.charge = own.charge;
-            if change != 0 {
-                changes.push(Change::MobileHydrogens {
-                    atom: index,
-                    change,
-                });
-            }
         }
     }
     for &(a, b, pairs) in &tautomer.bonds {
-        let ends = [source(a), source(b)];
         let mut bonds = revision.bonds().iter();
-        let at = bonds.position(|&(x, y, _)| [x, y] == ends || [y, x] == ends);
+        let at = bonds.position(|&(x, y, _)| [x, y] == [a, b] || [y, x] == [a, b]);
         if let Some(at) = at {
             revision.set_bond(at, BondOrder::from_pairs(pairs));
         }
     }
-    changes
 }
