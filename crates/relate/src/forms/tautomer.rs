@@ -1,6 +1,8 @@
 //! The tautomer axis: where mobile hydrogens sit.
 
-use molkin_graph::{BondOrder, Limits, OrderError, Orderer, Revised, Revision, Tautomer};
+use molkin_graph::{
+    BondOrder, Limits, Mark, OrderError, Orderer, Revised, Revision, StereoElement, Tautomer,
+};
 
 use crate::Structure;
 
@@ -14,7 +16,11 @@ pub(super) fn normalise(
     _ring_chain: bool,
 ) -> Result<Option<Outcome>, FormError> {
     let mut revision = remembering(structure);
-    revision.retain_stereo(|_| false);
+    // A mark that counts for nothing as drawn is not to count elsewhere.
+    let elements = structure.canonical().stereo_elements();
+    let given = |element: &&StereoElement| matches!(element.mark, Mark::Given(_));
+    let places: Vec<[u32; 2]> = elements.iter().filter(given).map(|e| ascending(e.centres)).collect();
+    revision.retain_stereo(|mark| places.contains(&ascending(mark.centres)));
     let marked = revision.finish()?;
     let found = orderer
         .tautomer(&marked.molecule)
@@ -29,6 +35,10 @@ pub(super) fn normalise(
         *atom = marked.sources.get(*atom as usize).copied().unwrap_or(*atom);
     }
     Ok(Some(outcome(structure, revised)))
+}
+
+fn ascending([a, b]: [u32; 2]) -> [u32; 2] {
+    [a.min(b), a.max(b)]
 }
 
 fn out_of_steps(error: OrderError) -> FormError {
