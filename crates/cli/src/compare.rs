@@ -17,8 +17,9 @@ use molkin_relate::parallel::{Plan, in_order};
 
 use crate::{
     args::{Compare, Format, PairBy},
+    forms::Forms,
     input::{self, Input},
-    output::{CAUTION, json::Objects},
+    output::{CAUTION, json::Objects, text::Extent},
     report::Report,
 };
 
@@ -32,6 +33,10 @@ pub(crate) fn run(options: &Compare, report: &mut Report) -> io::Result<()> {
     if input::is_standard(&options.a) && input::is_standard(&options.b) {
         return report.trouble("standard input (-) can be only one of the two");
     }
+    let forms = match Forms::new(&options.forms) {
+        Ok(forms) => forms,
+        Err(message) => return report.trouble(message),
+    };
     let reading = input::read_options(&options.reading);
     let opened = (
         open(&options.a, &reading, report)?,
@@ -42,7 +47,7 @@ pub(crate) fn run(options: &Compare, report: &mut Report) -> io::Result<()> {
     };
     let lengths = [&options.a, &options.b].map(|argument| input::length(argument));
     report.progress().expect(lengths.into_iter().sum());
-    let mut comparison = Comparison::new(options, &reading, report);
+    let mut comparison = Comparison::new(options, &reading, forms, report);
     match options.by {
         None => by_place::compare(&mut comparison, a, b)?,
         Some(PairBy::Name) => by_name::compare(&mut comparison, a, b)?,
@@ -61,8 +66,10 @@ fn open(argument: &OsStr, reading: &ReadOptions, report: &mut Report) -> io::Res
 struct Comparison<'r> {
     report: &'r mut Report,
     reading: &'r ReadOptions,
+    forms: Forms,
     limits: Limits,
     brief: bool,
+    extent: Extent,
     format: Format,
     threads: NonZeroUsize,
     objects: Objects,
@@ -70,7 +77,12 @@ struct Comparison<'r> {
 }
 
 impl<'r> Comparison<'r> {
-    fn new(options: &Compare, reading: &'r ReadOptions, report: &'r mut Report) -> Self {
+    fn new(
+        options: &Compare,
+        reading: &'r ReadOptions,
+        forms: Forms,
+        report: &'r mut Report,
+    ) -> Self {
         let mut limits = Limits::default();
         if let Some(steps) = options.steps {
             limits.map_steps = steps;
@@ -78,8 +90,14 @@ impl<'r> Comparison<'r> {
         Self {
             report,
             reading,
+            forms,
             limits,
             brief: options.brief,
+            extent: if options.full {
+                Extent::Full
+            } else {
+                Extent::Screen
+            },
             format: options.format,
             threads: options.working.threads(),
             objects: Objects::new(options.format),
@@ -95,8 +113,10 @@ impl<'r> Comparison<'r> {
         Verdicts {
             sources,
             reading: self.reading,
+            forms: self.forms.clone(),
             limits: self.limits,
             brief: self.brief,
+            extent: self.extent,
             format: self.format,
             style: self.report.style(),
         }
@@ -106,7 +126,7 @@ impl<'r> Comparison<'r> {
     fn pairs<'v>(
         &mut self,
         verdicts: &Verdicts<'v>,
-        pairs: impl Iterator<Item = [Side<'v>; 2]>,
+        mut pairs: impl Iterator<Item = [Side<'v>; 2]>,
     ) -> io::Result<()> {
         // An atom map may take thousands of times as long as a pair without one.
         let chunk = if self.brief { 32 } else { 1 };
@@ -120,7 +140,14 @@ impl<'r> Comparison<'r> {
             tally,
             ..
         } = self;
-        in_order(verdicts, plan, pairs, |verdict| {
+        let next = |pair: &mut Option<_>| {
+            *pair = pairs.next();
+            pair.is_some()
+        };
+        in_order(verdicts, plan, next, |verdict| {
+            let Some(verdict) = verdict.take() else {
+                return Ok(());
+            };
             tally.add(verdict.outcome);
             report.count(verdict.outcome.status());
             report.progress().done();

@@ -4,16 +4,13 @@ use std::io;
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions};
 use molkin_graph::{Limits, Orderer};
-use molkin_relate::{
-    parallel::Work,
-    wire::{self, Prepared},
-};
+use molkin_relate::wire::{self, Prepared};
 
 use crate::{
     args::{Describe, Format},
     input,
     output::{Style, json, text},
-    records::{self, Event, Inputs, Written},
+    records::{self, Entries, Inputs},
     report::Report,
 };
 
@@ -40,20 +37,7 @@ struct Descriptions<'r> {
     style: Style,
 }
 
-impl Descriptions<'_> {
-    fn text(&self, described: &wire::Describe, prepared: &Prepared) -> io::Result<Vec<u8>> {
-        let mut text = Vec::new();
-        match self.format {
-            Format::Text => text::describe::write(&mut text, self.style, described, prepared)?,
-            Format::Json | Format::Jsonl => serde_json::to_writer(&mut text, described)?,
-        }
-        Ok(text)
-    }
-}
-
-impl Work for Descriptions<'_> {
-    type Item = Event<RawRecord>;
-    type Output = Event<Written>;
+impl Entries for Descriptions<'_> {
     type Scratch = (Parser, Orderer);
 
     fn scratch(&self) -> (Parser, Orderer) {
@@ -61,22 +45,20 @@ impl Work for Descriptions<'_> {
         (Parser::new(self.reading), orderer)
     }
 
-    fn run(
+    fn write(
         &self,
         (parser, orderer): &mut (Parser, Orderer),
-        event: Event<RawRecord>,
-    ) -> Event<Written> {
-        event.map(|source, raw| {
-            let prepared = Prepared::new(orderer, source, parser.parse(raw));
-            let described = wire::describe(&prepared, &Limits::default());
-            Written {
-                text: self.text(&described, &prepared),
-                fine: described.errors.is_none(),
-            }
-        })
-    }
-
-    fn bytes(event: &Event<RawRecord>) -> usize {
-        event.bytes()
+        source: &str,
+        record: &mut RawRecord,
+        text: &mut Vec<u8>,
+    ) -> io::Result<bool> {
+        let outcome = parser.parse(std::mem::take(record));
+        let prepared = Prepared::new(orderer, source, outcome);
+        let described = wire::describe(&prepared, &Limits::default());
+        match self.format {
+            Format::Text => text::describe::write(text, self.style, &described, &prepared)?,
+            Format::Json | Format::Jsonl => serde_json::to_writer(text, &described)?,
+        }
+        Ok(described.errors.is_none())
     }
 }

@@ -5,6 +5,7 @@ mod args;
 mod compare;
 mod describe;
 mod exit;
+mod forms;
 mod input;
 mod keys;
 mod output;
@@ -12,6 +13,7 @@ mod progress;
 mod records;
 mod report;
 mod run;
+mod samples;
 
 use std::process::ExitCode;
 

@@ -8,6 +8,7 @@ use crate::{
     exit::Status,
     keys,
     report::{self, Report},
+    samples,
 };
 
 /// Runs a command. Trouble with single inputs and records is reported where it occurs; only a
@@ -18,6 +19,7 @@ pub(crate) fn run(arguments: &Arguments) -> Status {
         Command::Compare(options) => compare::run(options, &mut report),
         Command::Keys(options) => keys::run(options, &mut report),
         Command::Describe(options) => describe::run(options, &mut report),
+        Command::Samples(options) => samples::run(options, &mut report),
     };
     report.progress().end();
     match outcome.and_then(|()| report.flush()) {

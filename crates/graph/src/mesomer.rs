@@ -13,6 +13,7 @@ mod first;
 mod mobile;
 mod octet;
 mod placement;
+mod plain;
 mod shift;
 mod systems;
 mod valence;
@@ -23,9 +24,11 @@ mod tests;
 use crate::{Limits, OrderError, matching::Matching, skeleton::Skeleton};
 
 pub(crate) use first::First;
-pub(crate) use octet::separate;
+use mobile::Mobility;
+pub(crate) use octet::{Scratch as OctetScratch, separate};
 use placement::System;
-use shift::Shift;
+use plain::Pairs;
+use shift::{Shift, Shifting};
 pub(crate) use valence::neutral as neutral_valence;
 use valence::{Drawn, Valence};
 
@@ -55,18 +58,22 @@ pub(crate) struct Mesomer {
     /// not settle.
     systems: Vec<System>,
     /// The mobile bonds outside of them.
-    shifting: Vec<u32>,
+    shifting: Shifting,
 }
 
 /// Scratch that is reused from one molecule to the next.
 #[derive(Debug, Default)]
 pub(crate) struct Scratch {
-    over_full: Vec<bool>,
+    /// Takes the general way for plain drawings and ring shifts, too.
+    pub(crate) no_shortcuts: bool,
+    pairs: Vec<Pairs>,
+    octet: octet::Scratch,
     drawn: Vec<Drawn>,
     valences: Vec<Valence>,
     /// Per atom: in one of the systems with charges or open valences.
     in_system: Vec<bool>,
     spare_systems: Vec<System>,
+    mobility: Mobility,
     shift: Shift,
     matching: Matching,
 }
@@ -113,18 +120,31 @@ impl Mesomer {
         scratch: &mut Scratch,
     ) -> Result<(), OrderError> {
         let Scratch {
-            over_full,
+            no_shortcuts,
+            pairs,
+            octet,
             drawn,
             valences,
             in_system,
             spare_systems,
+            mobility,
             shift,
             matching,
         } = scratch;
-        octet::separate(skeleton, over_full);
-        self.orders.clear();
-        self.orders
-            .extend(skeleton.bonds.iter().map(|bond| bond.order));
+        // An edge of a matching costs some four times as much as one of a refinement.
+        matching.work = 0;
+        matching.budget = limits.order_steps / 4;
+        if !*no_shortcuts && plain::is_plain(skeleton, pairs) {
+            self.take_orders(skeleton);
+            self.states.clear();
+            self.states.resize(skeleton.len(), AtomState::default());
+            spare_systems.append(&mut self.systems);
+            let takes_part = |atom: u32| pairs[atom as usize].pi == 1;
+            let (orders, shifting) = (&mut self.orders, &mut self.shifting);
+            return shift.mark(skeleton, takes_part, matching, limits, orders, shifting);
+        }
+        octet::separate(skeleton, octet);
+        self.take_orders(skeleton);
         valence::load(valences, drawn, skeleton);
         let atoms = skeleton.atoms.iter().zip(valences.iter());
         self.states.clear();
@@ -140,13 +160,13 @@ impl Mesomer {
             &mut self.systems,
             spare_systems,
         );
-        // An edge of a matching costs some four times as much as one of a refinement.
-        matching.work = 0;
-        matching.budget = limits.order_steps / 4;
+        if *no_shortcuts {
+            systems::add_neutral(skeleton, valences, in_system, &mut self.systems);
+        }
         let (orders, states) = (&mut self.orders, &mut self.states);
         for system in &mut self.systems {
             if system.settle(valences, matching, limits)? {
-                mobile::mark(system, matching, limits, orders, states)?;
+                mobility.mark(system, matching, limits, orders, states)?;
             }
         }
         // A ring shift that would turn a triple bond into cumulated ones relates valence isomers, not
@@ -154,5 +174,10 @@ impl Mesomer {
         let takes_part = |atom: u32| valences[atom as usize].pi == 1 && !in_system[atom as usize];
         let shifting = &mut self.shifting;
         shift.mark(skeleton, takes_part, matching, limits, orders, shifting)
+    }
+    fn take_orders(&mut self, skeleton: &Skeleton) {
+        self.orders.clear();
+        self.orders
+            .extend(skeleton.bonds.iter().map(|bond| bond.order));
     }
 }

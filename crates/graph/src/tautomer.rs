@@ -91,7 +91,7 @@ impl Scratch {
         }
         let erased = self.erased(molecule);
         self.fold();
-        orderer.settle(molecule, &mut self.view)?;
+        orderer.order_perceived(molecule, &mut self.view)?;
         let mut tautomer = self.place();
         tautomer.erased = erased;
         if self.matching.is_exhausted() {

@@ -5,22 +5,27 @@
 //! but `stereo` makes opposed marks equal: where an axis erases a marked place, the mark stays with the
 //! normalised molecule ([`molkin_graph::Molecule::remembered_stereo`]) and counts for its key.
 
+mod apart;
 mod axes;
+mod charge;
 mod isotope;
+mod salt;
 mod stereo;
 mod tautomer;
 
 #[cfg(test)]
 mod tests;
 
-use std::borrow::Cow;
+use std::{borrow::Cow, sync::Arc};
 
 use molkin_graph::{BuildError, DrawnStereo, Limits, Mark, Orderer, Revised, Revision};
 use thiserror::Error;
 
 use crate::{PrepareError, Structure};
 
+pub use apart::same_apart_from;
 pub use axes::{Axes, AxesError, Axis};
+pub use salt::{CounterIons, CounterIonsError, Kind as ListedKind, Listed};
 
 /// Why a record has no form on some axes. There is never a weaker one instead.
 #[derive(Debug, Clone, PartialEq, Eq, Error)]
@@ -55,6 +60,13 @@ impl FormError {
 #[derive(Debug, Clone, PartialEq, Eq)]
 #[non_exhaustive]
 pub enum Change {
+    /// A component was taken away.
+    Component {
+        /// Its atoms.
+        atoms: Vec<u32>,
+        /// What it was.
+        what: Removed,
+    },
     /// Protons were added to an atom, or taken away.
     Protons {
         /// The atom.
@@ -78,11 +90,27 @@ pub enum Change {
     Stereo,
 }
 
+/// A component that was taken away.
+#[derive(Debug, Clone, PartialEq, Eq)]
+#[non_exhaustive]
+pub enum Removed {
+    /// A listed counter-ion or solvent.
+    Listed(Listed),
+    /// One more of a parent that is left.
+    Copy,
+    /// A proton on its own.
+    Proton,
+}
+
 impl Change {
     /// The same in terms of the molecule before.
     fn traced(self, sources: &[u32]) -> Self {
         let traced = |atom: u32| sources.get(atom as usize).copied().unwrap_or(atom);
         match self {
+            Self::Component { atoms, what } => Self::Component {
+                atoms: atoms.into_iter().map(traced).collect(),
+                what,
+            },
             Self::Protons { atom, change } => Self::Protons {
                 atom: traced(atom),
                 change,
@@ -117,6 +145,11 @@ impl Form<'_> {
         &self.structure
     }
 
+    /// The normalised structure.
+    pub fn into_structure(self) -> Structure {
+        self.structure.into_owned()
+    }
+
     /// What was changed, axis by axis.
     pub fn changes(&self) -> &[(Axis, Change)] {
         &self.changes
@@ -128,6 +161,18 @@ impl Form<'_> {
 pub struct Normaliser {
     orderer: Orderer,
     limits: Limits,
+    counter_ions: Option<Arc<CounterIons>>,
+}
+
+impl From<Orderer> for Normaliser {
+    /// A normaliser that works with an orderer and within its limits.
+    fn from(orderer: Orderer) -> Self {
+        Self {
+            limits: *orderer.limits(),
+            orderer,
+            counter_ions: None,
+        }
+    }
 }
 
 impl Normaliser {
@@ -136,6 +181,26 @@ impl Normaliser {
         Self {
             orderer: Orderer::new(limits),
             limits,
+            counter_ions: None,
+        }
+    }
+
+    /// The orderer, for other work between forms.
+    pub fn orderer(&mut self) -> &mut Orderer {
+        &mut self.orderer
+    }
+
+    /// The orderer alone.
+    pub fn into_orderer(self) -> Orderer {
+        self.orderer
+    }
+
+    /// The same with other counter-ions and solvents than those of [`CounterIons::standard`].
+    #[must_use]
+    pub fn with_counter_ions(self, counter_ions: Arc<CounterIons>) -> Self {
+        Self {
+            counter_ions: Some(counter_ions),
+            ..self
         }
     }
 
@@ -167,19 +232,18 @@ impl Normaliser {
             let Some(outcome) = self.apply(&form.structure, axis, ring_chain)? else {
                 continue;
             };
-            let Revised {
-                molecule,
-                sources: mut own,
-            } = outcome.revised;
             let traced = outcome.changes.into_iter().map(|change| match &sources {
                 Some(sources) => change.traced(sources),
                 None => change,
             });
             form.changes.extend(traced.map(|change| (axis, change)));
-            if let Some(before) = &sources {
-                own.iter_mut()
-                    .for_each(|atom| *atom = before.get(*atom as usize).copied().unwrap_or(*atom));
-            }
+            let Revised {
+                molecule,
+                sources: own,
+            } = match &sources {
+                Some(before) => outcome.revised.traced(before),
+                None => outcome.revised,
+            };
             sources = Some(own);
             form.structure = Cow::Owned(Structure::new(&mut self.orderer, molecule)?);
         }
@@ -194,8 +258,17 @@ impl Normaliser {
     ) -> Result<Option<Outcome>, FormError> {
         match axis {
             Axis::Stereo => stereo::normalise(structure),
+            Axis::OpenStereo => Ok(None),
             Axis::Isotope => isotope::normalise(structure),
-            Axis::Salt | Axis::Charge => Ok(None),
+            Axis::Salt => {
+                let known = || {
+                    self.counter_ions
+                        .get_or_insert_with(CounterIons::standard)
+                        .clone()
+                };
+                salt::normalise(&mut self.orderer, known, structure)
+            }
+            Axis::Charge => charge::normalise(&mut self.orderer, structure),
             Axis::Tautomer | Axis::RingChain => {
                 tautomer::normalise(&mut self.orderer, &self.limits, structure, ring_chain)
             }

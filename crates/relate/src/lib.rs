@@ -13,6 +13,7 @@ mod kinds;
 pub mod mapping;
 mod relation;
 mod remarks;
+pub mod samples;
 mod structure;
 mod words;
 
@@ -20,14 +21,18 @@ mod words;
 pub mod parallel;
 pub mod wire;
 
+pub use explain::moves as findings;
 pub use crate::{
     explain::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
-        StereoChange, StereoDifference, explain,
+        LeftOver, RingJoin, RingSystem, StereoChange, StereoDifference, explain,
     },
-    forms::{Axes, AxesError, Axis, Change, Form, FormError, Normaliser},
+    forms::{
+        Axes, AxesError, Axis, Change, CounterIons, CounterIonsError, Form, FormError, Listed,
+        ListedKind, Normaliser, Removed, same_apart_from,
+    },
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},
     relation::{Relation, StereoKind, Verdict, relate},
-    structure::{PrepareError, Preparer, Structure},
+    structure::{PrepareError, Structure},
 };

@@ -2,10 +2,13 @@
 //!
 //! Atoms count from 1 here, in input order. Fields that do not apply are absent.
 
+mod composition;
 mod describe;
+mod findings;
 mod keys;
 mod pair;
 mod prepared;
+mod samples;
 
 use molkin_formats::{Note as ReadNote, ReadError};
 use molkin_graph::Molecule;
@@ -13,13 +16,19 @@ use serde::Serialize;
 
 use crate::remarks::Noted;
 
+pub use composition::{FunctionalGroup, Piece, RingSystem, Sides, Surplus};
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
+pub use findings::{Finding, FoundGroup};
 pub use keys::{KeyRow, KeyRows};
 pub use pair::{
-    BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair, StereoEntry,
-    compare,
+    Apart, BondPair, Bonds, BranchPoint, Branching, Hydrogens, Kind, Pair, StereoEntry, compare,
+    compare_by,
 };
 pub use prepared::Prepared;
+pub use samples::{
+    CAUTION, ExpectedMass, FormulaEntry, HypothesisEntry, MassEntry, SampleEntry, SampleName,
+    SampleRow, Tray, VerdictCount,
+};
 
 /// The version of the contract.
 pub const VERSION: u32 = 1;
@@ -49,6 +58,9 @@ pub struct Input {
     /// Canonical SMILES.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub smiles: Option<String>,
+    /// Canonical SMILES of the form that was compared, where axes are overlooked.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub form: Option<String>,
 }
 
 /// A remark about a record or a pair.
@@ -124,7 +136,8 @@ impl From<&ReadError> for Error {
 }
 
 impl Error {
-    fn without_place(code: &str, message: String) -> Self {
+    /// An error that no place of a source shows.
+    pub fn without_place(code: &str, message: String) -> Self {
         Self {
             input: None,
             line: None,

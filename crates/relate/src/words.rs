@@ -1,24 +1,31 @@
 //! The verdict in plain sentences.
 
+mod analysis;
+pub(crate) mod forms;
 mod functional;
+pub(crate) mod moves;
 mod places;
+mod relatives;
 mod stereo;
 mod stereo_groups;
 
 #[cfg(test)]
 mod tests;
 
-use molkin_graph::Limits;
+use crate::{
+    BondDifference, Explanation, Kind, Relation, Structure, Verdict,
+    findings::{Change, Finding},
+};
 
-use crate::{Explanation, Kind, Relation, Structure, Verdict};
+pub(crate) use analysis::analysis;
 
 /// One or two sentences for a chemist.
 pub(crate) fn summary(
     [a, b]: [&Structure; 2],
     verdict: &Verdict,
     kind: Option<Kind>,
+    substances: Option<&str>,
     explained: Option<&Explanation>,
-    limits: &Limits,
 ) -> String {
     match verdict.relation {
         Relation::Identical if verdict.open => {
@@ -27,22 +34,32 @@ pub(crate) fn summary(
         Relation::Identical => "The two records are the same compound.".to_owned(),
         Relation::Stereo(kind) => stereo::summary(a, b, kind, explained),
         Relation::Constitutional => {
-            // What needs more than the kind is left out of brief output.
-            let groups = explained.and_then(|_| functional::difference(a, b, limits));
-            constitutional(a, kind, groups, explained)
+            let groups = explained.and_then(|found| found.functional_groups.as_ref());
+            let groups = groups.and_then(functional::difference);
+            constitutional([a, b], kind, groups, explained)
         }
-        Relation::NotIsomers => not_isomers(a, b, kind),
+        Relation::NotIsomers => relatives::summary([a, b], kind, substances, explained),
     }
 }
 
 fn constitutional(
-    a: &Structure,
+    [a, b]: [&Structure; 2],
     kind: Option<Kind>,
     groups: Option<String>,
     explained: Option<&Explanation>,
 ) -> String {
     let what = match kind {
         Some(Kind::Isotopomers) => ", with the same isotopes in other places".to_owned(),
+        Some(Kind::ProtonTransfer) => {
+            let moved = explained.and_then(|e| forms::moved_hydrogens([a, b], e, "proton"));
+            let moved = moved.unwrap_or_else(|| "a proton sits elsewhere".to_owned());
+            format!("; proton transfer: {moved}")
+        }
+        Some(Kind::Tautomers) => {
+            let moved = explained.and_then(|e| forms::moved_hydrogens([a, b], e, "hydrogen"));
+            let moved = moved.unwrap_or_else(|| "a mobile hydrogen sits elsewhere".to_owned());
+            format!("; tautomers: {moved}")
+        }
         Some(Kind::RingChain) => ", but a chain of one is closed to a ring in the other".to_owned(),
         Some(Kind::Functional) => {
             let groups = groups.map(|groups| format!(" ({groups})"));
@@ -60,6 +77,13 @@ fn constitutional(
     let Some(bonds) = explained.and_then(|e| e.bonds.as_ref()) else {
         return verdict;
     };
+    let findings = explained.map_or(&[][..], |explained| &explained.findings);
+    if let Some(told) = foremost([a, b], findings, bonds.minimal) {
+        return format!("{verdict} {told}");
+    }
+    if bonds.unrelated == Some(true) {
+        return format!("{verdict} {}", unrelated(bonds));
+    }
     let (only_a, only_b) = (bonds.only_in_a.len(), bonds.only_in_b.len());
     let differences = match (only_a + only_b, bonds.order_changed.len()) {
         (0, 0) => {
@@ -81,6 +105,39 @@ fn constitutional(
     }
 }
 
+/// Why single differences are not told.
+fn unrelated(bonds: &BondDifference) -> String {
+    let all = 2 * bonds.kept + bonds.only_in_a.len() + bonds.only_in_b.len();
+    format!(
+        "They are unrelated in structure: however the atoms are laid on each other, at least {} of their {all} bonds belong to one only.",
+        bonds.at_least
+    )
+}
+
+/// The most telling finding, and how many there are beside it.
+fn foremost(structures: [&Structure; 2], findings: &[Finding], minimal: bool) -> Option<String> {
+    let [first, others @ ..] = findings else {
+        return None;
+    };
+    let sentence = moves::sentence(structures, first);
+    let sentence = sentence.trim_end_matches('.');
+    // Groups are named with the verdict.
+    let others = others
+        .iter()
+        .filter(|finding| !matches!(finding.change, Change::Groups(_)));
+    let beside = match others.count() {
+        0 => String::new(),
+        1 => "; one more difference".to_owned(),
+        n => format!("; {n} more differences"),
+    };
+    Some(if minimal {
+        format!("{sentence}{beside}.")
+    } else {
+        let sentence = moves::within(sentence);
+        format!("One way to see it, not proved the least: {sentence}{beside}.")
+    })
+}
+
 /// "C2", "C2 and C3", "C2, C3 and C5".
 fn listed(items: &[String]) -> String {
     match items {
@@ -95,24 +152,5 @@ fn counted(count: usize, noun: &str) -> String {
         0 => format!("no {noun}"),
         1 => format!("one {noun}"),
         n => format!("{n} {noun}s"),
-    }
-}
-
-fn not_isomers(a: &Structure, b: &Structure, kind: Option<Kind>) -> String {
-    let (left, right) = (a.formula(), b.formula());
-    if kind == Some(Kind::Homologues) {
-        format!(
-            "Not isomers but homologues: the same functional groups, and formulae that differ by CH2 units ({left} and {right})."
-        )
-    } else if left != right {
-        let same_atoms = left.iter().eq(right.iter());
-        let why = if same_atoms {
-            "the net charge differs"
-        } else {
-            "the molecular formulae differ"
-        };
-        format!("Not isomers: {why} ({left} and {right}).")
-    } else {
-        format!("Not isomers: the same elements ({left}), but a different isotopic composition.")
     }
 }

@@ -6,15 +6,20 @@ use std::{
 };
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
-use molkin_graph::{Limits, Orderer};
+use molkin_graph::Limits;
 use molkin_relate::{
+    Axes, Normaliser,
     parallel::Work,
     wire::{self, Pair, Prepared},
 };
 
 use crate::{
     args::Format,
-    output::{Style, text},
+    forms::Forms,
+    output::{
+        Style,
+        text::{self, Extent},
+    },
 };
 
 use super::tally::Outcome;
@@ -46,8 +51,10 @@ pub(super) struct Verdict {
 pub(super) struct Verdicts<'v> {
     pub(super) sources: [&'v str; 2],
     pub(super) reading: &'v ReadOptions,
+    pub(super) forms: Forms,
     pub(super) limits: Limits,
     pub(super) brief: bool,
+    pub(super) extent: Extent,
     pub(super) format: Format,
     pub(super) style: Style,
 }
@@ -55,7 +62,8 @@ pub(super) struct Verdicts<'v> {
 /// What a thread keeps from one pair to the next.
 pub(super) struct Scratch {
     parser: Parser,
-    orderer: Orderer,
+    normaliser: Normaliser,
+    overlook: Axes,
 }
 
 impl Scratch {
@@ -66,7 +74,11 @@ impl Scratch {
             Side::Read(outcome) => *outcome,
             Side::Raw(raw) => self.parser.parse(*raw),
         };
-        Cow::Owned(Prepared::new(&mut self.orderer, source, outcome))
+        let prepared = Prepared::new(self.normaliser.orderer(), source, outcome);
+        Cow::Owned(match self.overlook.is_empty() {
+            true => prepared,
+            false => prepared.overlooking(&mut self.normaliser, self.overlook),
+        })
     }
 }
 
@@ -75,7 +87,7 @@ impl Verdicts<'_> {
         let mut text = Vec::new();
         match self.format {
             Format::Text => {
-                text::pair::write(&mut text, self.style, pair, sides)?;
+                text::pair::write(&mut text, self.style, self.extent, pair, sides)?;
                 writeln!(text)?;
             }
             Format::Json | Format::Jsonl => serde_json::to_writer(&mut text, pair)?,
@@ -85,31 +97,38 @@ impl Verdicts<'_> {
 }
 
 impl<'v> Work for Verdicts<'v> {
-    type Item = [Side<'v>; 2];
-    type Output = Verdict;
+    type Item = Option<[Side<'v>; 2]>;
+    type Output = Option<Verdict>;
     type Scratch = Scratch;
 
     fn scratch(&self) -> Scratch {
         Scratch {
             parser: Parser::new(self.reading),
-            orderer: Orderer::new(self.limits),
+            normaliser: self.forms.normaliser(self.limits),
+            overlook: self.forms.overlook,
         }
     }
 
-    fn run(&self, scratch: &mut Scratch, [a, b]: [Side<'v>; 2]) -> Verdict {
+    fn run(
+        &self,
+        scratch: &mut Scratch,
+        pair: &mut Option<[Side<'v>; 2]>,
+        verdict: &mut Option<Verdict>,
+    ) {
+        let Some([a, b]) = pair.take() else { return };
         let [source_a, source_b] = self.sources;
         let a = scratch.ready(source_a, a);
         let b = scratch.ready(source_b, b);
         let sides = [&*a, &*b];
-        let pair = wire::compare(&mut scratch.orderer, &self.limits, sides, self.brief);
-        Verdict {
+        let pair = wire::compare_by(&mut scratch.normaliser, &self.limits, sides, self.brief);
+        *verdict = Some(Verdict {
             outcome: Outcome::of(&pair),
             text: self.text(&pair, sides),
-        }
+        });
     }
 
-    fn bytes(sides: &[Side<'v>; 2]) -> usize {
-        let bytes = sides.iter().map(|side| match side {
+    fn bytes(pair: &Option<[Side<'v>; 2]>) -> usize {
+        let bytes = pair.iter().flatten().map(|side| match side {
             Side::Raw(raw) => raw.bytes(),
             Side::Read(_) | Side::Ready(_) => 0,
         });

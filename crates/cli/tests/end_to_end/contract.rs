@@ -42,6 +42,29 @@ fn check_all(title: &str, outcome: &Outcome, expected: usize) {
 }
 
 #[test]
+fn a_tray_keeps_to_the_schemas() {
+    let arguments = [
+        "samples", "tray.csv", "--held", "held.smi", "--format", "jsonl",
+    ];
+    let objects = objects(&demo(&arguments));
+    let types = [
+        ("Tray", "tray"),
+        ("Sample", "sample"),
+        ("Hypothesis", "hypothesis"),
+    ];
+    let mut checked = 0;
+    for (title, own) in types {
+        let schema = schema(title);
+        for object in objects.iter().filter(|object| object["type"] == own) {
+            check(&schema, object).unwrap();
+            checked += 1;
+        }
+    }
+    assert_eq!(checked, objects.len());
+    assert!(checked > 1 + 96 + 5);
+}
+
+#[test]
 fn pairs_keep_to_the_schema() {
     let arguments = [
         "compare",
@@ -70,6 +93,31 @@ fn pairs_keep_to_the_schema() {
 fn odd_pairs_keep_to_the_schema(#[case] a: &str, #[case] b: &str) {
     let outcome = run(&["compare", a, b, "--steps", "1", "--format", "jsonl"]);
     check_all("Pair", &outcome, 1);
+}
+
+#[rstest]
+#[case::salt("CCN", "CC[NH3+].[Cl-]", "salt", "identical")]
+#[case::all(
+    "CCN",
+    "[13CH3]C[NH3+].[Cl-]",
+    "salt,charge,tautomer,ring-chain,isotope,stereo",
+    "identical"
+)]
+#[case::open("C[C@H](N)O.Cl", "CC(N)O", "salt,open-stereo", "identical")]
+#[case::opposed("C[C@@H](N)O", "C[C@H](N)O.Cl", "salt,open-stereo", "stereo")]
+#[case::not_enough("CCN", "[13CH3]C[NH3+].[Cl-]", "salt", "not-isomers")]
+fn forms_keep_to_the_schema(
+    #[case] a: &str,
+    #[case] b: &str,
+    #[case] axes: &str,
+    #[case] relation: &str,
+) {
+    let outcome = run(&["compare", a, b, "--overlook", axes, "--format", "jsonl"]);
+    check_all("Pair", &outcome, 1);
+    let pair = &objects(&outcome)[0];
+    assert_eq!(pair["relation"], relation);
+    assert!(!pair["b"]["form"].as_str().unwrap().contains('.'));
+    assert_eq!(outcome.status, i32::from(relation != "identical"));
 }
 
 #[test]
@@ -157,6 +205,6 @@ fn the_columns_are_those_of_the_page() {
     assert_eq!(header, columns.join(","));
     assert_eq!(
         header,
-        "source,record,name,status,formula,smiles,constitution_key,compound_key,message"
+        "source,record,name,status,formula,smiles,constitution_key,compound_key,message,parent_key,tautomer_key"
     );
 }

@@ -6,12 +6,16 @@ use rstest::rstest;
 
 use super::*;
 
-fn structure(text: &str) -> Structure {
+pub(super) fn structure(text: &str) -> Structure {
     let mut orderer = Orderer::new(Limits::default());
     Structure::new(&mut orderer, smiles::parse(text).unwrap()).unwrap()
 }
 
-fn overlooked(text: &str, axes: &str) -> String {
+pub(super) fn key(text: &str) -> String {
+    structure(text).canonical().compound_key().to_string()
+}
+
+pub(super) fn overlooked(text: &str, axes: &str) -> String {
     let structure = structure(text);
     let mut normaliser = Normaliser::new(Limits::default());
     let form = normaliser

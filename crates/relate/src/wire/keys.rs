@@ -3,10 +3,12 @@
 use std::fmt::{Display, Write as _};
 
 use molkin_formats::{ReadError, smiles, source::RecordOutcome};
-use molkin_graph::{CanonicalForm, Limits};
+use molkin_graph::{CanonicalForm, Formula, Identity, Limits, Molecule, Orderer};
 use serde::Serialize;
 
-use crate::{Preparer, Structure};
+use crate::{
+    Axes, Axis, Normaliser, PrepareError, Structure, structure::check_is_one_structure,
+};
 
 /// A record and its keys: the columns of `molkin keys`, in their order. Later columns are added at
 /// the end.
@@ -28,8 +30,23 @@ pub struct KeyRow {
     pub constitution_key: String,
     /// Key of the compound: isotopes and all claims about stereo.
     pub compound_key: String,
-    /// What is wrong: `line:column: code: message`, or `code: message` where it has no place.
+    /// What is wrong: `line:column: code: message`, or `code: message` where it has no place. Beside `ok`:
+    /// which keys of forms are not there, and why.
     pub message: String,
+    /// Compound key with the axes `salt` and `charge` overlooked; empty where it is not asked for.
+    pub parent_key: String,
+    /// Compound key with the axis `tautomer` overlooked; empty where it is not asked for.
+    pub tautomer_key: String,
+}
+
+/// Which keys of forms the rows have.
+#[derive(Debug)]
+struct Forms {
+    normaliser: Normaliser,
+    /// Axes that all keys leave out.
+    overlook: Axes,
+    /// Whether there are keys of parent and tautomers.
+    further: bool,
 }
 
 /// Makes one row after another in the same memory. One per thread.
@@ -43,16 +60,19 @@ pub struct KeyRow {
 /// let mut rows = KeyRows::new(Limits::default());
 /// let file = "OCC\nC1CC\n";
 /// let mut records = Records::new("a.smi", file.as_bytes(), Format::Smiles, ReadOptions::default());
-/// let mut ethanol = records.next().ok_or("a record")??;
-/// let row = rows.row("a.smi", &mut ethanol);
+/// let ethanol = records.next().ok_or("a record")??;
+/// let row = rows.row("a.smi", &ethanol);
 /// assert_eq!((row.status, row.formula.as_str()), ("ok", "C2H6O"));
-/// let mut broken = records.next().ok_or("a record")??;
-/// assert_eq!(rows.row("a.smi", &mut broken).status, "error");
+/// let broken = records.next().ok_or("a record")??;
+/// assert_eq!(rows.row("a.smi", &broken).status, "error");
 /// # Ok::<(), Box<dyn std::error::Error>>(())
 /// ```
 #[derive(Debug)]
 pub struct KeyRows {
-    preparer: Preparer,
+    orderer: Orderer,
+    identity: Identity,
+    formula: Formula,
+    forms: Option<Forms>,
     form: CanonicalForm,
     writer: smiles::Writer,
     written: smiles::Written,
@@ -60,10 +80,13 @@ pub struct KeyRows {
 }
 
 impl KeyRows {
-    /// Rows within the given limits.
+    /// Rows within the given limits, without keys of forms.
     pub fn new(limits: Limits) -> Self {
         Self {
-            preparer: Preparer::new(limits),
+            orderer: Orderer::new(limits),
+            identity: Identity::default(),
+            formula: Formula::default(),
+            forms: None,
             form: CanonicalForm::default(),
             writer: smiles::Writer::default(),
             written: smiles::Written::default(),
@@ -71,31 +94,62 @@ impl KeyRows {
         }
     }
 
+    /// The same with some axes overlooked in all keys and, if `further` is set, with the keys of parent and
+    /// tautomers.
+    #[must_use]
+    pub fn with_forms(self, normaliser: Normaliser, overlook: Axes, further: bool) -> Self {
+        let wanted = further || !overlook.is_empty();
+        Self {
+            forms: wanted.then_some(Forms {
+                normaliser,
+                overlook,
+                further,
+            }),
+            ..self
+        }
+    }
+
     /// The row of one record. What cannot be read, or ordered within the limits, becomes a row with
     /// status `error`; this function does not fail.
-    ///
-    /// The outcome is left as storage for [`parse_into`](molkin_formats::source::Parser::parse_into).
-    pub fn row(&mut self, source: &str, outcome: &mut RecordOutcome) -> &KeyRow {
-        let row = &mut self.row;
-        row.begin(source, outcome);
-        match &mut outcome.result {
-            Err(error) => set(&mut row.message, Placed(error)),
-            Ok(record) => match self.preparer.prepare(&mut record.molecule) {
-                Err(error) => set(&mut row.message, format_args!("{}: {error}", error.code())),
-                Ok(_) => {
-                    let structure = self.preparer.form_into(&mut self.form);
-                    self.writer.write_into(&self.form, &mut self.written);
-                    row.fill(structure, &self.written.text);
+    pub fn row(&mut self, source: &str, outcome: &RecordOutcome) -> &KeyRow {
+        self.row.begin(source, outcome);
+        match &outcome.result {
+            Err(error) => set(&mut self.row.message, Placed(error)),
+            Ok(record) => {
+                if let Err(error) = self.fill(&record.molecule) {
+                    let message = format_args!("{}: {error}", error.code());
+                    set(&mut self.row.message, message);
                 }
-            },
+            }
         }
-        row
+        &self.row
+    }
+
+    fn fill(&mut self, molecule: &Molecule) -> Result<(), PrepareError> {
+        check_is_one_structure(molecule)?;
+        self.orderer.identify_into(molecule, &mut self.identity)?;
+        self.orderer
+            .identity_form_into(&self.identity, &mut self.form);
+        self.writer.write_into(&self.form, &mut self.written);
+        molecule.formula_into(&mut self.formula);
+        let row = &mut self.row;
+        row.status = "ok";
+        set(&mut row.formula, &self.formula);
+        row.smiles.push_str(&self.written.text);
+        set(&mut row.constitution_key, self.identity.constitution_key());
+        set(&mut row.compound_key, self.identity.compound_key());
+        if let Some(forms) = &mut self.forms {
+            let structure = Structure::new(&mut self.orderer, molecule.clone())?;
+            self.row.add_forms(forms, &structure);
+        }
+        Ok(())
     }
 }
 
 impl KeyRow {
     fn begin(&mut self, source: &str, outcome: &RecordOutcome) {
-        set(&mut self.source, source);
+        self.source.clear();
+        self.source.push_str(source);
         self.record = outcome.index;
         self.name.clone_from(&outcome.name);
         self.status = "error";
@@ -105,18 +159,51 @@ impl KeyRow {
             &mut self.constitution_key,
             &mut self.compound_key,
             &mut self.message,
+            &mut self.parent_key,
+            &mut self.tautomer_key,
         ] {
             field.clear();
         }
     }
+}
 
-    fn fill(&mut self, structure: &Structure, smiles: &str) {
-        let canonical = structure.canonical();
-        self.status = "ok";
-        set(&mut self.formula, structure.formula());
-        self.smiles.push_str(smiles);
-        set(&mut self.constitution_key, canonical.constitution_key());
-        set(&mut self.compound_key, canonical.compound_key());
+impl KeyRow {
+    fn add_forms(&mut self, forms: &mut Forms, structure: &Structure) {
+        let Forms {
+            normaliser,
+            overlook,
+            further,
+        } = forms;
+        let message = &mut self.message;
+        let mut form = |name: &str, axes: Axes| match normaliser.overlook(structure, axes) {
+            Ok(form) => Some(form),
+            Err(error) => {
+                let gap = if message.is_empty() { "" } else { "; " };
+                // Writing to a string does not fail.
+                let _ = write!(message, "{gap}no {name}: {}: {error}", error.code());
+                None
+            }
+        };
+        if !overlook.is_empty() {
+            self.constitution_key.clear();
+            self.compound_key.clear();
+            if let Some(form) = form("key", *overlook) {
+                let canonical = form.structure().canonical();
+                set(&mut self.constitution_key, canonical.constitution_key());
+                set(&mut self.compound_key, canonical.compound_key());
+            }
+        }
+        if *further {
+            let parent = overlook.with(Axis::Salt).with(Axis::Charge);
+            if let Some(form) = form("parent_key", parent) {
+                let canonical = form.structure().canonical();
+                set(&mut self.parent_key, canonical.compound_key());
+            }
+            if let Some(form) = form("tautomer_key", overlook.with(Axis::Tautomer)) {
+                let canonical = form.structure().canonical();
+                set(&mut self.tautomer_key, canonical.compound_key());
+            }
+        }
     }
 }
 

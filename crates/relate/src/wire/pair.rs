@@ -4,13 +4,16 @@ use molkin_graph::{Label, Limits, Molecule, OrderError, Orderer};
 use serde::Serialize;
 
 use crate::{
-    Branching as DomainBranching, Explanation, PrepareError, Relation, StereoKind, Structure,
-    explain, kinds, relate,
+    Axes, Axis, Branching as DomainBranching, Explanation, Normaliser, PrepareError, Relation,
+    StereoKind, Structure, Verdict, explain, kinds, relate,
     remarks::{self, Noted},
-    words,
+    same_apart_from, words,
 };
 
-use super::{Error, Group, Input, Note, Prepared, VERSION, Which, numbers};
+use super::{
+    Error, Finding, FunctionalGroup, Group, Input, Note, Prepared, RingSystem, Sides, Surplus,
+    VERSION, Which, findings, numbers,
+};
 
 /// The result for one pair. Either `errors` or the fields from `relation` on are there.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize)]
@@ -30,6 +33,12 @@ pub struct Pair {
     /// All kinds that hold.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub aspects: Option<Vec<&'static str>>,
+    /// The axes that were overlooked; absent where none were.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub overlooked: Option<Vec<&'static str>>,
+    /// The smallest set of axes apart from which the two are the same.
+    #[serde(skip_serializing_if = "is_not_settled")]
+    pub same_apart_from: Apart,
     /// Identical, but more than one sample fits.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub open: Option<bool>,
@@ -45,18 +54,51 @@ pub struct Pair {
     /// Mapped atoms with different hydrogen counts.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub hydrogens: Option<Vec<Hydrogens>>,
+    /// What moved.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub findings: Option<Vec<Finding>>,
+    /// What only one formula has, and where.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub left_over: Option<Sides<Surplus>>,
     /// How both records branch.
     #[serde(skip_serializing_if = "Option::is_none")]
-    pub branch_points: Option<BranchPoints>,
+    pub branch_points: Option<Sides<Branching>>,
+    /// The ring systems of both.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub rings: Option<Sides<Vec<RingSystem>>>,
+    /// Functional groups that one has more often than the other.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub functional_groups: Option<Sides<Vec<FunctionalGroup>>>,
     /// Stereo elements that differ.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub stereo: Option<Vec<StereoEntry>>,
+    /// On which everyday analysis the two can be told apart: common practice.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub analysis: Option<String>,
     /// Remarks.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub notes: Option<Vec<Note>>,
     /// Why there is no verdict.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub errors: Option<Vec<Error>>,
+}
+
+/// Axes, or null where no axes make the two the same; absent beside errors.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+#[serde(untagged)]
+pub enum Apart {
+    /// Axes, or null.
+    Axes(Option<Vec<&'static str>>),
+    /// No verdict at all, or none found within the limits.
+    NotSettled,
+}
+
+fn is_not_settled(apart: &Apart) -> bool {
+    *apart == Apart::NotSettled
+}
+
+fn words_of(axes: Axes) -> Vec<&'static str> {
+    axes.iter().map(Axis::as_str).collect()
 }
 
 /// The kind field: null for identical records, absent beside errors.
@@ -91,6 +133,8 @@ pub struct Bonds {
     pub minimal: bool,
     /// Proved lower bound on the bonds that only one has.
     pub at_least: usize,
+    /// Whether the two are unrelated in structure; null where the search ended too early to tell.
+    pub unrelated: Option<bool>,
 }
 
 /// A mapped pair of atoms with different hydrogen counts.
@@ -106,21 +150,12 @@ pub struct Hydrogens {
     pub count_b: u8,
 }
 
-/// How both records branch.
-#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
-pub struct BranchPoints {
-    /// The first record.
-    pub a: Branching,
-    /// The second record.
-    pub b: Branching,
-}
-
 /// How one record branches.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize)]
 pub struct Branching {
     /// Atoms with three or more non-hydrogen neighbours.
     pub points: Vec<BranchPoint>,
-    /// A longest chain of each component without rings.
+    /// A longest chain of each part outside rings.
     pub chains: Vec<Vec<u32>>,
 }
 
@@ -160,12 +195,10 @@ pub struct StereoEntry {
     pub group_b: Option<Group>,
 }
 
-/// Compares two records and says it in the terms of the contract. With `brief` the map and all that
-/// needs it are left out.
-///
-/// What cannot be compared comes back with `errors`; this function does not fail.
-pub fn compare(
-    orderer: &mut Orderer,
+/// As [`compare`], with the counter-ions of a normaliser. Records of which axes are overlooked
+/// ([`Prepared::overlooking`]) are compared in their forms.
+pub fn compare_by(
+    normaliser: &mut Normaliser,
     limits: &Limits,
     [a, b]: [&Prepared; 2],
     brief: bool,
@@ -173,7 +206,7 @@ pub fn compare(
     let mut pair = Pair::unsettled(a, b);
     match (a.parts(), b.parts()) {
         (Ok(left), Ok(right)) => {
-            if let Err(error) = pair.settle(orderer, limits, [left, right], brief) {
+            if let Err(error) = pair.settle(normaliser, limits, [left, right], brief) {
                 let code = PrepareError::from(error).code();
                 pair.errors = Some(vec![Error::without_place(code, error.to_string())]);
             }
@@ -187,6 +220,22 @@ pub fn compare(
     pair
 }
 
+/// Compares two records and says it in the terms of the contract. With `brief` the map and all that
+/// needs it are left out.
+///
+/// What cannot be compared comes back with `errors`; this function does not fail.
+pub fn compare(orderer: &mut Orderer, limits: &Limits, sides: [&Prepared; 2], brief: bool) -> Pair {
+    let mut normaliser = Normaliser::from(std::mem::take(orderer));
+    let pair = compare_by(&mut normaliser, limits, sides, brief);
+    *orderer = normaliser.into_orderer();
+    pair
+}
+
+fn overlooked(a: &Prepared, b: &Prepared) -> Option<Vec<&'static str>> {
+    let axes: Axes = a.overlooked().iter().chain(b.overlooked().iter()).collect();
+    (!axes.is_empty()).then(|| words_of(axes))
+}
+
 impl Pair {
     fn unsettled(a: &Prepared, b: &Prepared) -> Self {
         Self {
@@ -196,13 +245,20 @@ impl Pair {
             relation: None,
             kind: Kind::NoVerdict,
             aspects: None,
+            overlooked: overlooked(a, b),
+            same_apart_from: Apart::NotSettled,
             open: None,
             summary: None,
             atom_map: None,
             bonds: None,
             hydrogens: None,
+            findings: None,
+            left_over: None,
             branch_points: None,
+            rings: None,
+            functional_groups: None,
             stereo: None,
+            analysis: None,
             notes: None,
             errors: None,
         }
@@ -210,15 +266,22 @@ impl Pair {
 
     fn settle(
         &mut self,
-        orderer: &mut Orderer,
+        normaliser: &mut Normaliser,
         limits: &Limits,
         [(a, notes_a), (b, notes_b)]: [(&Structure, &[Note]); 2],
         brief: bool,
     ) -> Result<(), OrderError> {
-        let verdict = relate(orderer, a, b)?;
+        let mut verdict = relate(normaliser.orderer(), a, b)?;
+        if verdict.relation == Relation::Stereo(StereoKind::Undetermined) && self.overlooks_open() {
+            verdict = Verdict {
+                relation: Relation::Identical,
+                open: true,
+            };
+        }
         let explained = (!brief).then(|| explain(a, b, verdict.relation, limits));
         let mut notes = Vec::new();
-        let kinds = kinds(verdict.relation, a, b, limits).unwrap_or_else(|error| {
+        let (apart, substances) = self.forms(normaliser, verdict.relation, [a, b], &mut notes);
+        let kinds = kinds(verdict.relation, [a, b], apart, limits).unwrap_or_else(|error| {
             notes.push(Note::of(a.molecule(), remarks::kind_not_found(&error)));
             Vec::new()
         });
@@ -227,13 +290,17 @@ impl Pair {
         self.aspects = Some(kinds.iter().map(|kind| kind.as_str()).collect());
         self.open = Some(verdict.open);
         let kind = kinds.first().copied();
-        self.summary = Some(words::summary(
+        let summary = words::summary(
             [a, b],
             &verdict,
             kind,
+            substances.as_deref(),
             explained.as_ref(),
-            limits,
-        ));
+        );
+        self.summary = Some(match &self.overlooked {
+            Some(axes) => format!("With {} overlooked: {summary}", axes.join(", ")),
+            None => summary,
+        });
         // What is unmarked is why these verdicts are not firmer.
         let unsettled = verdict.open
             || matches!(
@@ -260,22 +327,58 @@ impl Pair {
                 let note = |noted| Note::of(structure.molecule(), noted).on(which);
                 notes.extend(own.into_iter().map(note));
             }
-            self.add_explanation(verdict.relation, explained, molecules, &mut notes);
+            self.findings = findings::of([a, b], &explained);
+            self.analysis = words::analysis([a, b], &verdict, kind, &explained);
+            self.add_explanation(verdict.relation, explained, [a, b], &mut notes);
         }
         self.notes = Some(notes);
         Ok(())
+    }
+
+    /// Whether stereo is overlooked where one side leaves it open.
+    fn overlooks_open(&self) -> bool {
+        let mut axes = self.overlooked.iter().flatten();
+        axes.any(|&axis| axis == Axis::OpenStereo.as_str())
+    }
+
+    /// Which axes tell the two apart, and what they are as substances.
+    fn forms(
+        &mut self,
+        normaliser: &mut Normaliser,
+        relation: Relation,
+        [a, b]: [&Structure; 2],
+        notes: &mut Vec<Note>,
+    ) -> (Option<Axes>, Option<String>) {
+        let apart = same_apart_from(normaliser, relation, a, b).and_then(|apart| {
+            let substances = match apart {
+                Some(axes) => words::forms::substances(normaliser, [a, b], axes)?,
+                None => None,
+            };
+            Ok((apart, substances))
+        });
+        match apart {
+            Ok((apart, substances)) => {
+                self.same_apart_from = Apart::Axes(apart.map(words_of));
+                (apart, substances)
+            }
+            Err(error) => {
+                notes.push(Note::of(a.molecule(), remarks::forms_not_found(&error)));
+                (None, None)
+            }
+        }
     }
 
     fn add_explanation(
         &mut self,
         relation: Relation,
         explained: Explanation,
-        [a, b]: [&Molecule; 2],
+        structures: [&Structure; 2],
         notes: &mut Vec<Note>,
     ) {
-        if matches!(relation, Relation::Identical | Relation::NotIsomers) {
+        if relation == Relation::Identical {
             return;
         }
+        let [a, b] = structures.map(Structure::molecule);
         if !explained.stereo_least {
             let noted = Noted {
                 code: "stereo-map-limit",
@@ -313,6 +416,7 @@ impl Pair {
                 .collect(),
             minimal: bonds.minimal,
             at_least: bonds.at_least,
+            unrelated: bonds.unrelated,
         });
         self.hydrogens = Some(
             explained
@@ -326,11 +430,17 @@ impl Pair {
                 })
                 .collect(),
         );
-        self.branch_points = explained.branching.map(|[in_a, in_b]| BranchPoints {
-            a: Branching::of(a, &in_a),
-            b: Branching::of(b, &in_b),
-        });
-        if relation != Relation::Constitutional {
+        let constitution_differs = !matches!(relation, Relation::Stereo(_));
+        if relation == Relation::NotIsomers {
+            self.left_over = Some(Sides::left_over(structures, &explained.left_over));
+        }
+        let both = |branching| Sides::of(branching, [a, b], Branching::of);
+        self.branch_points = explained.branching.as_ref().map(both);
+        let both = |rings| Sides::of(rings, [a, b], RingSystem::list);
+        self.rings = explained.rings.as_ref().map(both);
+        let both = |groups| Sides::of(groups, [a, b], FunctionalGroup::list);
+        self.functional_groups = explained.functional_groups.as_ref().map(both);
+        if !constitution_differs {
             self.stereo = Some(
                 explained
                     .stereo
