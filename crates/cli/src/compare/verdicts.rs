@@ -75,9 +75,10 @@ impl Scratch {
             Side::Raw(raw) => self.parser.parse(*raw),
         };
         let prepared = Prepared::new(self.normaliser.orderer(), source, outcome);
-        Cow::Owned(match self.overlook.is_empty() {
-            true => prepared,
-            false => prepared.overlooking(&mut self.normaliser, self.overlook),
+        Cow::Owned(if self.overlook.is_empty() {
+            prepared
+        } else {
+            prepared.overlooking(&mut self.normaliser, self.overlook)
         })
     }
 }
