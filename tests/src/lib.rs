@@ -30,6 +30,7 @@ mod small;
 mod spelling;
 mod stereo;
 mod tally;
+mod tautomers;
 mod text;
 
 pub mod fuzz;
@@ -55,6 +56,7 @@ pub use crate::{
     spelling::random_spelling,
     stereo::{Markings, all_labels, all_markings, completions, grouped, mirrored},
     tally::Tally,
+    tautomers::shifted,
     text::{Table, first_word, read_text, shared, workspace},
 };
 
