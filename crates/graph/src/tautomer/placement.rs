@@ -34,7 +34,7 @@ impl Placement {
     ) {
         self.settled.clear();
         self.settled.resize(matching.mates().len(), false);
-        let rank = |atom: u32| view.written.rank[atom as usize];
+        let rank = |atom: u32| view.written().rank[atom as usize];
         self.sites.clear();
         let is_site = |&&atom: &&u32| rooms[atom as usize].site && regions.region[atom as usize] != NONE;
         for &atom in members.iter().filter(is_site) {
