@@ -61,6 +61,9 @@ pub(crate) struct Compare {
     /// Leave out the atom map and everything that needs it
     #[arg(long)]
     pub(crate) brief: bool,
+    /// Show all in the text form: every atom, bond and branch point
+    #[arg(long, conflicts_with = "brief")]
+    pub(crate) full: bool,
     /// Budget of the search for the atom map, for each pair
     #[arg(long, value_name = "N")]
     pub(crate) steps: Option<u64>,
@@ -174,7 +177,8 @@ pub(crate) struct TrayColumns {
 #[derive(Debug, Args)]
 #[command(next_help_heading = "Forms of one compound")]
 pub(crate) struct Forms {
-    /// Axes to overlook, separated by commas: salt, charge, tautomer, ring-chain, isotope, stereo
+    /// Axes to overlook, separated by commas: salt, charge, tautomer, ring-chain, isotope, stereo,
+    /// open-stereo (compare only)
     #[arg(long, value_name = "AXES")]
     pub(crate) overlook: Option<Axes>,
     /// Table of further counter-ions and solvents (tab-separated: salt, structure, kind)

@@ -1,10 +1,13 @@
 //! `molkin keys`.
 
-use std::io::{self, Write};
+use std::{
+    io::{self, Write},
+    num::NonZeroUsize,
+};
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 use molkin_graph::Limits;
-use molkin_relate::wire::KeyRows;
+use molkin_relate::{Axis, wire::KeyRows};
 
 use crate::{
     args::{Keys, TableFormat},
@@ -22,6 +25,9 @@ pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
         Ok(forms) => forms,
         Err(message) => return report.trouble(message),
     };
+    if forms.overlook.contains(Axis::OpenStereo) {
+        return report.trouble("open-stereo is about two records: keys cannot overlook it");
+    }
     report.out().write_all(csv::HEADER)?;
     let reading = input::read_options(&options.reading);
     let inputs = Inputs::new(&options.inputs, &reading);
@@ -52,6 +58,8 @@ struct Scratch {
 impl Entries for Rows<'_> {
     type Scratch = Scratch;
 
+    const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(255);
+
     fn scratch(&self) -> Scratch {
         let limits = Limits::default();
         Scratch {
@@ -73,7 +81,7 @@ impl Entries for Rows<'_> {
         text: &mut Vec<u8>,
     ) -> io::Result<bool> {
         scratch.parser.parse_into(record, &mut scratch.outcome);
-        let row = scratch.rows.row(source, &mut scratch.outcome);
+        let row = scratch.rows.row(source, &scratch.outcome);
         csv::write_row(text, row)?;
         Ok(row.status == "ok")
     }

@@ -28,6 +28,7 @@ use crate::{
 
 use self::{frame::Frame, ledger::Ledger};
 
+pub(super) use self::substituent::name;
 pub use self::{
     changes::{Change, Finding, GroupHere, Link, Moved, RingChange, Seat, Shift},
     place::{Neighbour, Place},

@@ -168,7 +168,8 @@ impl Finding {
     }
 
     /// The same finding with the records exchanged.
-    pub(super) fn mirrored(self) -> Self {
+    #[must_use]
+    pub fn mirrored(self) -> Self {
         let [a, b] = self.only_in;
         let bonds = self.order_changed.into_iter();
         let mut order_changed: Vec<[Ends; 2]> = bonds.map(|[a, b]| [b, a]).collect();
