@@ -1,7 +1,7 @@
 //! Labelled samples: is what the label says what came?
 //!
 //! A [`Sample`] has what its label says, what came, and perhaps what was measured. [`Judge`] gives each
-//! sample a [`Verdict`] by itself; [`causes`] then looks across the tray for what explains the samples
+//! sample a [`Verdict`] by itself; [`causes()`] then looks across the tray for what explains the samples
 //! that do not agree. Records are compared, not the contents of vials.
 
 mod adduct;
