@@ -17,7 +17,7 @@ fn key_row(bencher: Bencher<'_, '_>, name: &str) {
         let mut records = Records::new("", text, Format::Smiles, options.clone());
         let mut raw = records.cut().unwrap().unwrap();
         parser.parse_into(&mut raw, &mut outcome);
-        let row = rows.row("", &mut outcome);
+        let row = rows.row("", &outcome);
         (row.status, row.compound_key.clone())
     };
     let expected = inputs::canonical(name).compound_key().to_string();

@@ -91,7 +91,7 @@ struct Common {
 
 impl Canonical {
     pub(super) fn place(&self, candidate: &Candidate) -> Place {
-        claims::place(candidate, &self.bare())
+        claims::place(candidate, self.bare())
     }
 
     /// The places of a variable's candidates.

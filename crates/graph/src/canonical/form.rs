@@ -92,7 +92,7 @@ impl Canonical {
             marked,
         } = scratch;
         self.list_marked_mobile_bonds(marked);
-        placed.place(&self.skeleton, &self.mesomer, &self.written(), |bond| {
+        placed.place(&self.skeleton, &self.mesomer, self.written(), |bond| {
             marked.contains(&bond)
         });
         form.atoms.clear();

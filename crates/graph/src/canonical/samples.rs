@@ -66,7 +66,7 @@ struct Side<'c> {
 impl<'c> Side<'c> {
     fn of(canonical: &'c Canonical) -> Self {
         let roles = Roles::of(
-            &canonical.bare(),
+            canonical.bare(),
             &canonical.perception,
             &canonical.variables,
         );
