@@ -35,8 +35,13 @@ fn atom(molecule: &Molecule, index: u32) -> Atom {
 }
 
 fn is_hetero(molecule: &Molecule, index: u32) -> bool {
-    [Element::NITROGEN, Element::OXYGEN, Element::SULFUR, Element::SELENIUM]
-        .contains(&atom(molecule, index).element)
+    [
+        Element::NITROGEN,
+        Element::OXYGEN,
+        Element::SULFUR,
+        Element::SELENIUM,
+    ]
+    .contains(&atom(molecule, index).element)
 }
 
 fn is_between(molecule: &Molecule, index: u32) -> bool {
@@ -87,7 +92,9 @@ fn is_mobile_carbon(molecule: &Molecule, index: u32) -> bool {
             && !in_ring(molecule, index, to, 8)
     };
     atom(molecule, index).element == Element::CARBON
-        && !molecule.neighbours(index).any(|(to, _)| terminal(to) || amine(to))
+        && !molecule
+            .neighbours(index)
+            .any(|(to, _)| terminal(to) || amine(to))
 }
 
 /// Whether a bond outside rings joins carbon to a carboxylic acid, ester or amide group.
@@ -96,7 +103,9 @@ fn is_acyl_bond(molecule: &Molecule, c: u32, acyl: u32) -> bool {
     let oxygen = |to: u32| element(to) == Element::OXYGEN && molecule.neighbours(to).count() == 1;
     let hetero = |to: u32| [Element::NITROGEN, Element::OXYGEN].contains(&element(to));
     let others = || molecule.neighbours(acyl).map(|(to, _)| to);
-    [c, acyl].iter().all(|&index| element(index) == Element::CARBON)
+    [c, acyl]
+        .iter()
+        .all(|&index| element(index) == Element::CARBON)
         && others().any(oxygen)
         && others().filter(|&to| hetero(to)).count() >= 2
         && !in_ring(molecule, c, acyl, u32::MAX)

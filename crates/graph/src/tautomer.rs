@@ -118,11 +118,18 @@ impl Scratch {
         matching.work = 0;
         matching.budget = limits.order_steps / 4;
         room::load(rooms, skeleton, mesomer, drawing);
-        while regions.find(skeleton, drawing, rooms, matching, limits)? {
+        let negative = |rooms: &[Room]| rooms.iter().filter(|room| room.negative).count();
+        let mut left = usize::MAX;
+        loop {
+            // Each round cancels a charge, or none is left to cancel.
+            let cancelling = negative(rooms) < left;
+            left = negative(rooms);
+            if !regions.find(skeleton, drawing, rooms, cancelling, (matching, limits))? {
+                return Ok(());
+            }
             placement::redraw(skeleton, (rooms, regions), matching, drawing);
             room::load(rooms, skeleton, mesomer, drawing);
         }
-        Ok(())
     }
 
     /// Whether an atom is in a region in which hydrogen moves.
@@ -233,10 +240,15 @@ impl Scratch {
                 charge,
             });
         }
-        for ((bond, &shifts), &drawn) in
-            skeleton.bonds.iter().zip(&regions.shifts).zip(&drawing.orders)
+        for ((bond, &shifts), &drawn) in skeleton
+            .bonds
+            .iter()
+            .zip(&regions.shifts)
+            .zip(&drawing.orders)
         {
-            let inside = [bond.a, bond.b].iter().all(|atom| members.binary_search(atom).is_ok());
+            let inside = [bond.a, bond.b]
+                .iter()
+                .all(|atom| members.binary_search(atom).is_ok());
             if inside {
                 let order = if shifts {
                     1 + placement::multiplicity(regions, rooms, matching, bond.a, bond.b)

@@ -160,7 +160,6 @@ impl Form<'_> {
 #[derive(Debug)]
 pub struct Normaliser {
     orderer: Orderer,
-    limits: Limits,
     counter_ions: Option<Arc<CounterIons>>,
 }
 
@@ -168,7 +167,6 @@ impl From<Orderer> for Normaliser {
     /// A normaliser that works with an orderer and within its limits.
     fn from(orderer: Orderer) -> Self {
         Self {
-            limits: *orderer.limits(),
             orderer,
             counter_ions: None,
         }
@@ -180,7 +178,6 @@ impl Normaliser {
     pub fn new(limits: Limits) -> Self {
         Self {
             orderer: Orderer::new(limits),
-            limits,
             counter_ions: None,
         }
     }
@@ -270,7 +267,7 @@ impl Normaliser {
             }
             Axis::Charge => charge::normalise(&mut self.orderer, structure),
             Axis::Tautomer | Axis::RingChain => {
-                tautomer::normalise(&mut self.orderer, &self.limits, structure, ring_chain)
+                tautomer::normalise(&mut self.orderer, structure, ring_chain)
             }
         }
     }

@@ -36,7 +36,8 @@ impl Placement {
         self.settled.resize(matching.mates().len(), false);
         let rank = |atom: u32| view.written().rank[atom as usize];
         self.sites.clear();
-        let is_site = |&&atom: &&u32| rooms[atom as usize].site && regions.region[atom as usize] != NONE;
+        let is_site =
+            |&&atom: &&u32| rooms[atom as usize].site && regions.region[atom as usize] != NONE;
         for &atom in members.iter().filter(is_site) {
             let preference = preference(view, regions, atom);
             self.sites.push((preference, rank(atom), atom));
@@ -49,7 +50,9 @@ impl Placement {
         }
         self.bonds.clear();
         for (index, bond) in (0..).zip(&view.skeleton.bonds) {
-            let inside = [bond.a, bond.b].iter().all(|atom| members.binary_search(atom).is_ok());
+            let inside = [bond.a, bond.b]
+                .iter()
+                .all(|atom| members.binary_search(atom).is_ok());
             if inside && regions.shifts[index as usize] {
                 let (a, b) = (rank(bond.a), rank(bond.b));
                 self.bonds.push((a.min(b), a.max(b), index));
@@ -59,7 +62,10 @@ impl Placement {
         for at in 0..self.bonds.len() {
             let (_, _, bond) = self.bonds[at];
             let bond = &view.skeleton.bonds[bond as usize];
-            let (a, b) = (regions.vertices(rooms, bond.a), regions.vertices(rooms, bond.b));
+            let (a, b) = (
+                regions.vertices(rooms, bond.a),
+                regions.vertices(rooms, bond.b),
+            );
             self.raise(matching, a, b);
         }
         for at in 0..self.sites.len() {
@@ -71,12 +77,7 @@ impl Placement {
 
     /// Makes the number of matching edges between two ranges of vertices as high as it can be, and
     /// settles it.
-    fn raise(
-        &mut self,
-        matching: &mut Matching,
-        a: std::ops::Range<u32>,
-        b: std::ops::Range<u32>,
-    ) {
+    fn raise(&mut self, matching: &mut Matching, a: std::ops::Range<u32>, b: std::ops::Range<u32>) {
         while let Some((x, y)) = self.next(matching, a.clone(), b.clone()) {
             for vertex in [x, y] {
                 self.settled[vertex as usize] = true;
@@ -137,13 +138,19 @@ pub(super) fn multiplicity(
 ) -> u8 {
     let others = regions.vertices(rooms, b);
     let vertices = regions.vertices(rooms, a);
-    vertices.filter(|&v| others.contains(&matching.mate(v))).count() as u8
+    vertices
+        .filter(|&v| others.contains(&matching.mate(v)))
+        .count() as u8
 }
 
 /// Mobile hydrogens and charge of an atom in the matching.
 pub(super) fn state(regions: &Regions, rooms: &[Room], matching: &Matching, atom: u32) -> (u8, i8) {
     let region = regions.region[atom as usize];
-    let pools = regions.pools.get(region as usize).copied().unwrap_or_default();
+    let pools = regions
+        .pools
+        .get(region as usize)
+        .copied()
+        .unwrap_or_default();
     let vertices = regions.vertices(rooms, atom);
     let count = |range: std::ops::Range<u32>| {
         let own = vertices.clone();

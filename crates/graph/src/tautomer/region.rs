@@ -107,11 +107,11 @@ impl Regions {
         skeleton: &Skeleton,
         drawing: &Drawing,
         rooms: &mut [Room],
-        matching: &mut Matching,
-        limits: &Limits,
+        cancelling: bool,
+        (matching, limits): (&mut Matching, &Limits),
     ) -> Result<bool, OrderError> {
         self.load(skeleton, drawing, rooms, matching);
-        if self.cancel(matching) {
+        if cancelling && self.cancel(matching) {
             return Ok(true);
         }
         loop {
@@ -512,6 +512,8 @@ pub(super) fn mobile_hydrogens(
         return natural_hydrogens(skeleton, drawing, atom);
     }
     let arcs = skeleton.arcs(atom).iter();
-    let bonds: u8 = arcs.map(|&(_, bond)| pi(drawing.orders[bond as usize])).sum();
+    let bonds: u8 = arcs
+        .map(|&(_, bond)| pi(drawing.orders[bond as usize]))
+        .sum();
     u32::from(bonds == 0)
 }

@@ -132,7 +132,12 @@ struct About {
 }
 
 /// Fills the table of rooms.
-pub(super) fn load(rooms: &mut Vec<Room>, skeleton: &Skeleton, mesomer: &Mesomer, drawing: &Drawing) {
+pub(super) fn load(
+    rooms: &mut Vec<Room>,
+    skeleton: &Skeleton,
+    mesomer: &Mesomer,
+    drawing: &Drawing,
+) {
     rooms.clear();
     rooms.extend((0..skeleton.len() as u32).map(|atom| room(skeleton, mesomer, drawing, atom)));
     // A π bond to an atom that takes no part stays where it is.
@@ -160,8 +165,7 @@ fn about(skeleton: &Skeleton, drawing: &Drawing, atom: u32) -> About {
     };
     for &(to, bond) in skeleton.arcs(atom) {
         let order = drawing.orders[bond as usize];
-        about.foreign |=
-            !matches!(order, 1..=3) || skeleton.atoms[to as usize].element.is_metal();
+        about.foreign |= !matches!(order, 1..=3) || skeleton.atoms[to as usize].element.is_metal();
         about.sigma += 1;
         about.pi += pi(order);
         about.valence = about.valence.saturating_add(order);

@@ -4,7 +4,7 @@ use std::collections::BTreeMap;
 
 use crate::{Relation, Structure};
 
-use super::{Axes, Axis, Form, FormError, Normaliser};
+use super::{Axes, Axis, Form, FormError, Normaliser, tautomer};
 
 /// By preference among sets of one size: the axis that overlooks less, or says more, comes first.
 const BY_PREFERENCE: [Axis; 5] = [
@@ -135,10 +135,12 @@ impl Pair<'_, '_> {
             }
         }
         let [a, b] = keys.map(|key| self.forms.get(&key).map(Form::structure));
-        Ok(match (a, b) {
-            (Some(a), Some(b)) => a.canonical().same_compound(b.canonical()),
-            _ => false,
-        })
+        match (a, b) {
+            (Some(a), Some(b)) => Ok(a.canonical().same_compound(b.canonical())
+                || (axes.contains(Axis::Tautomer)
+                    && tautomer::agree(&mut self.normaliser.orderer, a, b)?)),
+            _ => Ok(false),
+        }
     }
 }
 
