@@ -60,6 +60,7 @@ fn target<'s>(root: &'s Value, reference: &Value) -> Result<&'s Value, String> {
 
 fn is_of(value: &Value, kind: &str) -> Result<bool, String> {
     Ok(match kind {
+        "null" => value.is_null(),
         "object" => value.is_object(),
         "array" => value.is_array(),
         "string" => value.is_string(),
