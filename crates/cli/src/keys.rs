@@ -1,6 +1,9 @@
 //! `molkin keys`.
 
-use std::io::{self, Write};
+use std::{
+    io::{self, Write},
+    num::NonZeroUsize,
+};
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 use molkin_graph::Limits;
@@ -55,6 +58,8 @@ struct Scratch {
 impl Entries for Rows<'_> {
     type Scratch = Scratch;
 
+    const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(255);
+
     fn scratch(&self) -> Scratch {
         let limits = Limits::default();
         Scratch {
@@ -76,7 +81,7 @@ impl Entries for Rows<'_> {
         text: &mut Vec<u8>,
     ) -> io::Result<bool> {
         scratch.parser.parse_into(record, &mut scratch.outcome);
-        let row = scratch.rows.row(source, &mut scratch.outcome);
+        let row = scratch.rows.row(source, &scratch.outcome);
         csv::write_row(text, row)?;
         Ok(row.status == "ok")
     }

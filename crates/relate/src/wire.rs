@@ -2,6 +2,7 @@
 //!
 //! Atoms count from 1 here, in input order. Fields that do not apply are absent.
 
+mod composition;
 mod describe;
 mod findings;
 mod keys;
@@ -15,12 +16,13 @@ use serde::Serialize;
 
 use crate::remarks::Noted;
 
+pub use composition::{FunctionalGroup, Piece, RingSystem, Sides, Surplus};
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
 pub use findings::{Finding, FoundGroup};
 pub use keys::{KeyRow, KeyRows};
 pub use pair::{
-    Apart, BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair,
-    StereoEntry, compare, compare_by,
+    Apart, BondPair, Bonds, BranchPoint, Branching, Hydrogens, Kind, Pair, StereoEntry, compare,
+    compare_by,
 };
 pub use prepared::Prepared;
 pub use samples::{
