@@ -153,7 +153,7 @@ impl CounterIons {
         let rows = || places.iter().filter_map(|&at| self.listed.get(at));
         // Maleate and fumarate have one constitution; the last row of it stands for both.
         let exact = rows().find(|listed| listed.key == compound);
-        exact.or_else(|| rows().last())
+        exact.or_else(|| rows().next_back())
     }
 
     fn read(&mut self, table: &str) -> Result<(), CounterIonsError> {
