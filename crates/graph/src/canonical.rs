@@ -119,6 +119,7 @@ pub struct Canonical {
     /// With the marks that count: the order canonical text is written in.
     pub(crate) written: Labelling,
     constitution_key: Key,
+    labelled_constitution_key: Key,
     compound_key: Key,
 }
 
@@ -235,6 +236,12 @@ impl Orderer {
         let digester = &mut self.digester;
         let constitution = digester.digest(&view.constitution.certificate);
         view.constitution_key = Key::of(Named::Constitution, std::iter::once(constitution));
+        view.labelled_constitution_key = if labelled {
+            let digest = digester.digest(&view.bare.certificate);
+            Key::of(Named::Constitution, std::iter::once(digest))
+        } else {
+            view.constitution_key
+        };
         let certificates = view.claims.certificates.iter();
         // Most records have neither isotopes nor stereo: one certificate serves both keys.
         let digests = certificates.map(|certificate| {
@@ -320,6 +327,12 @@ impl Canonical {
     /// The key of the constitution: no stereo, no isotopes.
     pub fn constitution_key(&self) -> Key {
         self.constitution_key
+    }
+
+    /// The key of the constitution with its isotopes, no stereo: that of all stereoisomers of the record.
+    /// Without isotopes it is the constitution key.
+    pub fn labelled_constitution_key(&self) -> Key {
+        self.labelled_constitution_key
     }
 
     /// The key of the compound: isotopes and everything the record claims about stereo. Two records

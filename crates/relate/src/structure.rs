@@ -1,7 +1,7 @@
 //! One side of a comparison, prepared once.
 
 use molkin_graph::{
-    Canonical, CanonicalForm, Element, Formula, Limits, Molecule, OrderError, Orderer,
+    Canonical, CanonicalForm, Element, Formula, Key, Limits, Molecule, OrderError, Orderer,
 };
 use thiserror::Error;
 
@@ -104,6 +104,11 @@ impl Structure {
     /// How many atoms of each stated nuclide the record has: element, mass number, count; sorted.
     pub fn isotopes(&self) -> &[(Element, u16, u32)] {
         &self.isotopes
+    }
+
+    /// The key of formula and isotopes: equal for isomers.
+    pub fn isomer_key(&self) -> Key {
+        Key::of_formula(&self.formula, &self.isotopes)
     }
 }
 
