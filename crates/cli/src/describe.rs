@@ -13,7 +13,7 @@ use crate::{
     args::{Describe, Format},
     input,
     output::{Style, json, text},
-    records::{self, Event, Inputs, Written},
+    records::{self, Event, Inputs, Made},
     report::Report,
 };
 
@@ -27,8 +27,8 @@ pub(crate) fn run(options: &Describe, report: &mut Report) -> io::Result<()> {
         format: options.format,
         style: report.style(),
     };
-    records::each(&work, inputs, &options.working, report, |report, object| {
-        objects.write(report.out(), object)
+    records::each(&work, inputs, &options.working, report, |report, _, object: Vec<u8>| {
+        objects.write(report.out(), &object)
     })?;
     objects.finish(report.out())
 }
@@ -53,7 +53,7 @@ impl Descriptions<'_> {
 
 impl Work for Descriptions<'_> {
     type Item = Event<RawRecord>;
-    type Output = Event<Written>;
+    type Output = Event<Made>;
     type Scratch = (Parser, Orderer);
 
     fn scratch(&self) -> (Parser, Orderer) {
@@ -65,12 +65,12 @@ impl Work for Descriptions<'_> {
         &self,
         (parser, orderer): &mut (Parser, Orderer),
         event: Event<RawRecord>,
-    ) -> Event<Written> {
+    ) -> Event<Made> {
         event.map(|source, raw| {
             let prepared = Prepared::new(orderer, source, parser.parse(raw));
             let described = wire::describe(&prepared, &Limits::default());
-            Written {
-                text: self.text(&described, &prepared),
+            Made {
+                content: self.text(&described, &prepared),
                 fine: described.errors.is_none(),
             }
         })

@@ -1,46 +1,57 @@
 //! `molkin keys`.
 
-use std::io::{self, Write};
+use std::io;
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 use molkin_graph::Limits;
-use molkin_relate::{parallel::Work, wire::KeyRows};
+use molkin_relate::{
+    parallel::Work,
+    wire::{KeyRow, KeyRows},
+};
 
 use crate::{
     args::{Keys, TableFormat},
     input,
-    output::csv::Table,
-    records::{self, Event, Inputs, Written},
+    output::table::{self, Lines, Table},
+    records::{self, Event, Inputs, Made},
     report::Report,
 };
 
 /// Writes one row for every record of every input, in order.
 pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
-    let TableFormat::Csv = options.format;
-    report.out().write_all(&Table::default().header()?)?;
+    let format = options.table.format;
+    if !report.prepare_table(&options.table)? {
+        return Ok(());
+    }
+    let mut table = Table::begin::<KeyRow>(format, report.out())?;
     let reading = input::read_options(&options.reading);
     let inputs = Inputs::new(&options.inputs, &reading);
-    let work = Rows { reading: &reading };
-    records::each(&work, inputs, &options.working, report, |report, row| {
-        report.out().write_all(row)
-    })
+    let work = Rows {
+        reading: &reading,
+        format,
+    };
+    records::each(&work, inputs, &options.working, report, |report, _, row| {
+        table.write(report.out(), &row)
+    })?;
+    table.finish(report.out())
 }
 
 /// From records to rows.
 struct Rows<'r> {
     reading: &'r ReadOptions,
+    format: TableFormat,
 }
 
 struct Scratch {
     parser: Parser,
     outcome: RecordOutcome,
     rows: KeyRows,
-    table: Table,
+    lines: Lines,
 }
 
 impl Work for Rows<'_> {
     type Item = Event<RawRecord>;
-    type Output = Event<Written>;
+    type Output = Event<Made<table::Made<KeyRow>>>;
     type Scratch = Scratch;
 
     fn scratch(&self) -> Scratch {
@@ -48,17 +59,18 @@ impl Work for Rows<'_> {
             parser: Parser::new(self.reading),
             outcome: RecordOutcome::default(),
             rows: KeyRows::new(Limits::default()),
-            table: Table::default(),
+            lines: Lines::new(self.format),
         }
     }
 
-    fn run(&self, scratch: &mut Scratch, event: Event<RawRecord>) -> Event<Written> {
+    fn run(&self, scratch: &mut Scratch, event: Event<RawRecord>) -> Self::Output {
         event.map(|source, raw| {
             scratch.parser.parse_into(raw, &mut scratch.outcome);
             let row = scratch.rows.row(source, &mut scratch.outcome);
-            let fine = row.status == "ok";
-            let text = scratch.table.row(row);
-            Written { text, fine }
+            Made {
+                fine: row.status == "ok",
+                content: scratch.lines.make(row),
+            }
         })
     }
 

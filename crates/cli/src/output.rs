@@ -1,8 +1,8 @@
 //! Results in the forms that can be asked for.
 
-pub(crate) mod csv;
 pub(crate) mod json;
 mod style;
+pub(crate) mod table;
 pub(crate) mod text;
 
 pub(crate) use style::Style;

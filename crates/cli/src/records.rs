@@ -49,29 +49,30 @@ impl Event<RawRecord> {
     }
 }
 
-/// What is written about a record.
-pub(crate) struct Written {
-    /// Text for standard output.
-    pub(crate) text: io::Result<Vec<u8>>,
+/// What was made of a record.
+pub(crate) struct Made<T = Vec<u8>> {
+    /// What is to be written.
+    pub(crate) content: io::Result<T>,
     /// Whether all went well.
     pub(crate) fine: bool,
 }
 
 /// Records that go to a thread at once: passing these on costs a small part of one.
-const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(63);
+pub(crate) const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(63);
 
-/// Works on each record of each input and hands what is to be written to `write`, in order. Inputs
-/// that cannot be opened or that break off are reported in their place, and the next one is read.
+/// Works on each record of each input and hands what was made of it to `write`, in order, with the name
+/// of the input. Inputs that cannot be opened or that break off are reported in their place, and the next one is read.
 /// Ends with the count of records that failed.
-pub(crate) fn each<W>(
+pub(crate) fn each<W, T>(
     work: &W,
     inputs: Inputs<'_>,
     working: &Working,
     report: &mut Report,
-    mut write: impl FnMut(&mut Report, &[u8]) -> io::Result<()>,
+    mut write: impl FnMut(&mut Report, &str, T) -> io::Result<()>,
 ) -> io::Result<()>
 where
-    W: Work<Item = Event<RawRecord>, Output = Event<Written>>,
+    T: Send,
+    W: Work<Item = Event<RawRecord>, Output = Event<Made<T>>>,
 {
     let plan = Plan {
         threads: working.threads(),
@@ -81,14 +82,14 @@ where
     let items = inputs.watched(report.progress());
     in_order(work, plan, items, |event| match event {
         Event::Trouble(message) => report.trouble(message),
-        Event::Record { record, .. } => {
+        Event::Record { source, record } => {
             records += 1;
             if !record.fine {
                 failed += 1;
                 report.count(Status::Trouble);
             }
             report.progress().done();
-            write(report, &record.text?)
+            write(report, &source, record.content?)
         }
     })?;
     if failed > 0 {

@@ -15,6 +15,8 @@ mod remarks;
 mod structure;
 mod words;
 
+#[cfg(feature = "families")]
+pub mod families;
 #[cfg(feature = "parallel")]
 pub mod parallel;
 pub mod wire;

@@ -3,9 +3,14 @@
 //! Atoms count from 1 here, in input order. Fields that do not apply are absent.
 
 mod describe;
+#[cfg(feature = "families")]
+mod families;
 mod keys;
 mod pair;
+#[cfg(feature = "parquet")]
+mod parquet;
 mod prepared;
+mod table;
 
 use molkin_formats::{Note as ReadNote, ReadError};
 use molkin_graph::Molecule;
@@ -14,12 +19,19 @@ use serde::Serialize;
 use crate::remarks::Noted;
 
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
+#[cfg(feature = "families")]
+pub use families::{FamilyRow, FamilySummary, GroupSummary, SizeSummary, Sources};
 pub use keys::{KeyRow, KeyRows};
+#[cfg(feature = "families")]
+pub(crate) use keys::{prepare_message, read_message};
 pub use pair::{
     BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair, StereoEntry,
     compare,
 };
+#[cfg(feature = "parquet")]
+pub use self::parquet::ParquetTable;
 pub use prepared::Prepared;
+pub use table::{ColumnKind, TableColumn, TableRow, Value};
 
 /// The version of the contract.
 pub const VERSION: u32 = 1;

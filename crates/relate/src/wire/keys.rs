@@ -4,13 +4,13 @@ use std::fmt::{Display, Write as _};
 
 use molkin_formats::{ReadError, smiles, source::RecordOutcome};
 use molkin_graph::{CanonicalForm, Limits};
-use serde::Serialize;
 
-use crate::{Preparer, Structure};
+use super::table::{TableColumn, TableRow, Value};
+use crate::{PrepareError, Preparer, Structure};
 
 /// A record and its keys: the columns of `molkin keys`, in their order. Later columns are added at
 /// the end.
-#[derive(Debug, Clone, Default, PartialEq, Eq, Serialize)]
+#[derive(Debug, Clone, Default, PartialEq, Eq)]
 pub struct KeyRow {
     /// File name, `-`, or the SMILES text as given.
     pub source: String,
@@ -30,6 +30,48 @@ pub struct KeyRow {
     pub compound_key: String,
     /// What is wrong: `line:column: code: message`, or `code: message` where it has no place.
     pub message: String,
+    /// Whether the record stands for more than one possible sample, or leaves out what its notation
+    /// cannot say.
+    pub open: Option<bool>,
+    /// Key of the constitution with its isotopes, no stereo: that of all its stereoisomers.
+    pub labelled_constitution_key: String,
+    /// Key of formula, isotopes and charge.
+    pub isomer_key: String,
+}
+
+impl TableRow for KeyRow {
+    const COLUMNS: &'static [TableColumn] = &[
+        TableColumn::text("source"),
+        TableColumn::number("record"),
+        TableColumn::text("name"),
+        TableColumn::text("status"),
+        TableColumn::text("formula"),
+        TableColumn::text("smiles"),
+        TableColumn::text("constitution_key"),
+        TableColumn::text("compound_key"),
+        TableColumn::text("message"),
+        TableColumn::truth("open"),
+        TableColumn::text("labelled_constitution_key"),
+        TableColumn::text("isomer_key"),
+    ];
+
+    fn values(&self) -> impl Iterator<Item = Value<'_>> {
+        [
+            Value::Text(&self.source),
+            Value::Number(self.record),
+            Value::Text(&self.name),
+            Value::Text(self.status),
+            Value::text(&self.formula),
+            Value::text(&self.smiles),
+            Value::text(&self.constitution_key),
+            Value::text(&self.compound_key),
+            Value::text(&self.message),
+            Value::from(self.open),
+            Value::text(&self.labelled_constitution_key),
+            Value::text(&self.isomer_key),
+        ]
+        .into_iter()
+    }
 }
 
 /// Makes one row after another in the same memory. One per thread.
@@ -79,9 +121,9 @@ impl KeyRows {
         let row = &mut self.row;
         row.begin(source, outcome);
         match &mut outcome.result {
-            Err(error) => set(&mut row.message, Placed(error)),
+            Err(error) => row.message = read_message(error),
             Ok(record) => match self.preparer.prepare(&mut record.molecule) {
-                Err(error) => set(&mut row.message, format_args!("{}: {error}", error.code())),
+                Err(error) => row.message = prepare_message(&error),
                 Ok(_) => {
                     let structure = self.preparer.form_into(&mut self.form);
                     self.writer.write_into(&self.form, &mut self.written);
@@ -105,9 +147,12 @@ impl KeyRow {
             &mut self.constitution_key,
             &mut self.compound_key,
             &mut self.message,
+            &mut self.labelled_constitution_key,
+            &mut self.isomer_key,
         ] {
             field.clear();
         }
+        self.open = None;
     }
 
     fn fill(&mut self, structure: &Structure, smiles: &str) {
@@ -117,6 +162,12 @@ impl KeyRow {
         self.smiles.push_str(smiles);
         set(&mut self.constitution_key, canonical.constitution_key());
         set(&mut self.compound_key, canonical.compound_key());
+        self.open = Some(canonical.is_open());
+        set(
+            &mut self.labelled_constitution_key,
+            canonical.labelled_constitution_key(),
+        );
+        set(&mut self.isomer_key, structure.isomer_key());
     }
 }
 
@@ -127,14 +178,14 @@ fn set(field: &mut String, value: impl Display) {
     let _ = write!(field, "{value}");
 }
 
-/// An error with its place and code.
-struct Placed<'e>(&'e ReadError);
+/// An error of a reader with its place and code.
+pub(crate) fn read_message(error: &ReadError) -> String {
+    let span = error.span();
+    let (line, column) = (span.line, span.column);
+    format!("{line}:{column}: {}: {}", error.code(), error.kind())
+}
 
-impl Display for Placed<'_> {
-    fn fmt(&self, out: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
-        let Self(error) = self;
-        let span = error.span();
-        let (line, column) = (span.line, span.column);
-        write!(out, "{line}:{column}: {}: {}", error.code(), error.kind())
-    }
+/// An error of the canonical order with its code.
+pub(crate) fn prepare_message(error: &PrepareError) -> String {
+    format!("{}: {error}", error.code())
 }

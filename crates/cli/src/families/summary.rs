@@ -1,0 +1,74 @@
+//! How many records and groups there are: in words, and as JSON.
+
+use std::{fmt::Write as _, io::Write as _, path::Path};
+
+use molkin_relate::{
+    families::{Column, Counts},
+    wire::FamilySummary,
+};
+
+use crate::{args, destination::Destination, report::Report, run::Failure};
+
+/// Says the summary, and writes it to a file if that is asked for.
+pub(super) fn write(
+    options: &args::Families,
+    counts: &Counts,
+    held: Option<u64>,
+    report: &mut Report,
+) -> Result<(), Failure> {
+    report.say(records_in_words(counts, held))?;
+    for column in Column::ALL {
+        report.say(groups_in_words(counts, column))?;
+    }
+    let Some(path) = &options.summary else {
+        return Ok(());
+    };
+    if let Err(error) = write_file(path, &FamilySummary::new(counts, held)) {
+        report.trouble(format_args!("{}: {error}", path.display()))?;
+    }
+    Ok(())
+}
+
+fn write_file(path: &Path, summary: &FamilySummary) -> std::io::Result<()> {
+    let mut file = Destination::file(path)?;
+    serde_json::to_writer(&mut file, summary)?;
+    file.write_all(b"\n")?;
+    file.finish()
+}
+
+fn records_in_words(counts: &Counts, held: Option<u64>) -> String {
+    let Counts {
+        records,
+        failed,
+        distinct,
+        ..
+    } = counts;
+    let held = held.map_or_else(String::new, |held| format!(", {held} of them held"));
+    format!("{records} records{held}, {failed} failed, {distinct} different compounds")
+}
+
+/// Sizes that are named.
+const SIZES: usize = 6;
+
+fn groups_in_words(counts: &Counts, column: Column) -> String {
+    let name = match column {
+        Column::Duplicates => "duplicates",
+        Column::PossibleDuplicates => "possible duplicates",
+        Column::Stereo => "stereoisomers",
+        Column::Isomers => "isomers",
+    };
+    let groups = counts.groups(column);
+    if groups == 0 {
+        return format!("{name}: none");
+    }
+    let members = counts.members(column);
+    let mut text = format!("{name}: {members} records in {groups} groups (");
+    for (at, (size, groups)) in counts.sizes(column).take(SIZES).enumerate() {
+        let comma = if at > 0 { ", " } else { "" };
+        // Writing to a string does not fail.
+        let _ = write!(text, "{comma}{groups} of {size}");
+    }
+    let more = counts.sizes(column).nth(SIZES).is_some();
+    text.push_str(if more { ", others larger)" } else { ")" });
+    text
+}
