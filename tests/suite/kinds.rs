@@ -5,7 +5,7 @@ use std::collections::{BTreeMap, BTreeSet};
 use molkin_formats::source::{Format, ReadOptions, Records};
 use molkin_graph::{Element, Limits, Orderer};
 use molkin_relate::{
-    Kind, Structure, functional_groups, kinds,
+    Kind, Normaliser, Structure, functional_groups, kinds, same_apart_from,
     wire::{self, Prepared, compare},
 };
 use molkin_tests::{
@@ -15,8 +15,11 @@ use molkin_tests::{
 use rstest::rstest;
 
 fn kinds_of(comparer: &mut Comparer, a: &Structure, b: &Structure) -> Result<Vec<Kind>, String> {
-    let verdict = comparer.relate(a, b)?;
-    let found = kinds(verdict.relation, a, b, &Limits::default());
+    let relation = comparer.relate(a, b)?.relation;
+    let mut normaliser = Normaliser::new(Limits::default());
+    let apart = same_apart_from(&mut normaliser, relation, a, b);
+    let apart = apart.map_err(|error| error.to_string())?;
+    let found = kinds(relation, [a, b], apart, &Limits::default());
     found.map_err(|error| error.to_string())
 }
 

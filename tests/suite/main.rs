@@ -35,6 +35,7 @@ mod label_examples;
 mod label_laws;
 mod mirror;
 mod pages;
+mod parents;
 mod relations;
 mod renumbering;
 mod samples;

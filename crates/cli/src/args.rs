@@ -3,7 +3,7 @@
 use std::{ffi::OsString, num::NonZeroUsize, path::PathBuf, thread};
 
 use clap::{Args, Parser, Subcommand, ValueEnum};
-use molkin_relate::families::Column;
+use molkin_relate::{Axes, families::Column};
 
 use crate::output::CAUTION;
 
@@ -65,6 +65,8 @@ pub(crate) struct Compare {
     #[arg(long, value_enum, default_value_t = Format::Text)]
     pub(crate) format: Format,
     #[command(flatten)]
+    pub(crate) forms: Forms,
+    #[command(flatten)]
     pub(crate) working: Working,
     #[command(flatten)]
     pub(crate) reading: Reading,
@@ -79,8 +81,13 @@ pub(crate) struct Keys {
     /// Files or structures
     #[arg(required = true, value_name = "FILE")]
     pub(crate) inputs: Vec<OsString>,
+    /// Leave parent_key and tautomer_key empty, which takes less time
+    #[arg(long)]
+    pub(crate) brief: bool,
     #[command(flatten)]
     pub(crate) table: TableOutput,
+    #[command(flatten)]
+    pub(crate) forms: Forms,
     #[command(flatten)]
     pub(crate) working: Working,
     #[command(flatten)]
@@ -117,6 +124,8 @@ pub(crate) struct Families {
     #[arg(long, value_name = "MIB", default_value_t = 1_024)]
     pub(crate) memory: usize,
     #[command(flatten)]
+    pub(crate) forms: Forms,
+    #[command(flatten)]
     pub(crate) table: TableOutput,
     #[command(flatten)]
     pub(crate) working: Working,
@@ -133,6 +142,8 @@ pub(crate) enum Group {
     PossibleDuplicates,
     /// Stereoisomers
     Stereo,
+    /// Forms of one parent
+    Forms,
     /// Isomers of one formula
     Isomers,
 }
@@ -143,6 +154,7 @@ impl From<Group> for Column {
             Group::Duplicates => Self::Duplicates,
             Group::PossibleDuplicates => Self::PossibleDuplicates,
             Group::Stereo => Self::Stereo,
+            Group::Forms => Self::Forms,
             Group::Isomers => Self::Isomers,
         }
     }
@@ -157,6 +169,18 @@ pub(crate) struct TableOutput {
     /// Write to a file, which is there as a whole or not at all
     #[arg(long, value_name = "FILE")]
     pub(crate) output: Option<PathBuf>,
+}
+
+/// What is overlooked when records are compared or keyed.
+#[derive(Debug, Args)]
+#[command(next_help_heading = "Forms of one compound")]
+pub(crate) struct Forms {
+    /// Axes to overlook, separated by commas: salt, charge, tautomer, ring-chain, isotope, stereo
+    #[arg(long, value_name = "AXES")]
+    pub(crate) overlook: Option<Axes>,
+    /// Table of further counter-ions and solvents (tab-separated: salt, structure, kind)
+    #[arg(long, value_name = "FILE")]
+    pub(crate) counter_ions: Option<PathBuf>,
 }
 
 /// How the work is done.

@@ -17,6 +17,7 @@ use molkin_relate::parallel::{Plan, in_order};
 
 use crate::{
     args::{Compare, Format, PairBy},
+    forms::Forms,
     input::{self, Input},
     output::{CAUTION, json::Objects},
     report::Report,
@@ -32,6 +33,10 @@ pub(crate) fn run(options: &Compare, report: &mut Report) -> io::Result<()> {
     if input::is_standard(&options.a) && input::is_standard(&options.b) {
         return report.trouble("standard input (-) can be only one of the two");
     }
+    let forms = match Forms::new(&options.forms) {
+        Ok(forms) => forms,
+        Err(message) => return report.trouble(message),
+    };
     let reading = input::read_options(&options.reading);
     let opened = (
         open(&options.a, &reading, report)?,
@@ -42,7 +47,7 @@ pub(crate) fn run(options: &Compare, report: &mut Report) -> io::Result<()> {
     };
     let lengths = [&options.a, &options.b].map(|argument| input::length(argument));
     report.progress().expect(lengths.into_iter().sum());
-    let mut comparison = Comparison::new(options, &reading, report);
+    let mut comparison = Comparison::new(options, &reading, forms, report);
     match options.by {
         None => by_place::compare(&mut comparison, a, b)?,
         Some(PairBy::Name) => by_name::compare(&mut comparison, a, b)?,
@@ -61,6 +66,7 @@ fn open(argument: &OsStr, reading: &ReadOptions, report: &mut Report) -> io::Res
 struct Comparison<'r> {
     report: &'r mut Report,
     reading: &'r ReadOptions,
+    forms: Forms,
     limits: Limits,
     brief: bool,
     format: Format,
@@ -70,7 +76,12 @@ struct Comparison<'r> {
 }
 
 impl<'r> Comparison<'r> {
-    fn new(options: &Compare, reading: &'r ReadOptions, report: &'r mut Report) -> Self {
+    fn new(
+        options: &Compare,
+        reading: &'r ReadOptions,
+        forms: Forms,
+        report: &'r mut Report,
+    ) -> Self {
         let mut limits = Limits::default();
         if let Some(steps) = options.steps {
             limits.map_steps = steps;
@@ -78,6 +89,7 @@ impl<'r> Comparison<'r> {
         Self {
             report,
             reading,
+            forms,
             limits,
             brief: options.brief,
             format: options.format,
@@ -95,6 +107,7 @@ impl<'r> Comparison<'r> {
         Verdicts {
             sources,
             reading: self.reading,
+            forms: self.forms.clone(),
             limits: self.limits,
             brief: self.brief,
             format: self.format,

@@ -3,7 +3,7 @@
 mod rows;
 mod summary;
 
-use std::io;
+use std::{ffi::OsString, io};
 
 use molkin_formats::source::{RawRecord, ReadOptions};
 use molkin_graph::Limits;
@@ -14,7 +14,9 @@ use molkin_relate::{
 };
 
 use crate::{
-    args, input,
+    args,
+    forms::Forms,
+    input,
     records::{self, CHUNK, Event, Inputs, Made},
     report::Report,
     run::Failure,
@@ -25,8 +27,16 @@ pub(crate) fn run(options: &args::Families, report: &mut Report) -> Result<(), F
     if !report.prepare_table(&options.table)? {
         return Ok(());
     }
+    let forms = match Forms::new(&options.forms) {
+        Ok(forms) => forms,
+        Err(message) => return Ok(report.trouble(message)?),
+    };
     let reading = input::read_options(&options.reading);
-    let Some(gathering) = Gathering::of(options, &reading, report)? else {
+    let work = Read {
+        reading: &reading,
+        forms,
+    };
+    let Some(gathering) = Gathering::of(options, &work, report)? else {
         return Ok(());
     };
     let Gathering {
@@ -64,7 +74,7 @@ impl Gathering {
     /// Reads the files held and then the others; `None` if the arguments are wrong, which has been said.
     fn of(
         options: &args::Families,
-        reading: &ReadOptions,
+        work: &Read<'_>,
         report: &mut Report,
     ) -> Result<Option<Self>, Failure> {
         let all = options.against.iter().chain(&options.inputs);
@@ -79,27 +89,27 @@ impl Gathering {
             held: None,
         };
         if !options.against.is_empty() {
-            gathering.read(Inputs::new(&options.against, reading), options, reading, report)?;
+            gathering.read(&options.against, options, work, report)?;
             gathering.held = Some(gathering.gatherer.records());
         }
-        gathering.read(Inputs::new(&options.inputs, reading), options, reading, report)?;
+        gathering.read(&options.inputs, options, work, report)?;
         Ok(Some(gathering))
     }
 
     fn read(
         &mut self,
-        inputs: Inputs<'_>,
+        inputs: &[OsString],
         options: &args::Families,
-        reading: &ReadOptions,
+        work: &Read<'_>,
         report: &mut Report,
     ) -> Result<(), Failure> {
         let Self {
             gatherer, sources, ..
         } = self;
         let mut failure = None;
-        let work = Read { reading };
+        let inputs = Inputs::new(inputs, work.reading);
         let working = &options.working;
-        records::each(&work, inputs, working, report, |_, source, read: Box<Gathered>| {
+        records::each(work, inputs, working, report, |_, source, read: Box<Gathered>| {
             if read.index() == 1 {
                 sources.begin(gatherer.records(), source);
             }
@@ -115,6 +125,7 @@ impl Gathering {
 /// From records to their keys.
 struct Read<'r> {
     reading: &'r ReadOptions,
+    forms: Forms,
 }
 
 impl Work for Read<'_> {
@@ -123,7 +134,9 @@ impl Work for Read<'_> {
     type Scratch = Reading;
 
     fn scratch(&self) -> Reading {
-        Reading::new(self.reading, Limits::default())
+        let limits = Limits::default();
+        let normaliser = self.forms.normaliser(limits);
+        Reading::new(self.reading, limits).with_forms(normaliser, self.forms.overlook)
     }
 
     fn run(&self, reading: &mut Reading, event: Event<RawRecord>) -> Self::Output {

@@ -11,6 +11,7 @@ use molkin_relate::{
 
 use crate::{
     args::{Keys, TableFormat},
+    forms::Forms,
     input,
     output::table::{self, Lines, Table},
     records::{self, Event, Inputs, Made},
@@ -23,12 +24,18 @@ pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
     if !report.prepare_table(&options.table)? {
         return Ok(());
     }
+    let forms = match Forms::new(&options.forms) {
+        Ok(forms) => forms,
+        Err(message) => return report.trouble(message),
+    };
     let mut table = Table::begin::<KeyRow>(format, report.out())?;
     let reading = input::read_options(&options.reading);
     let inputs = Inputs::new(&options.inputs, &reading);
     let work = Rows {
         reading: &reading,
         format,
+        forms,
+        further: !options.brief,
     };
     records::each(&work, inputs, &options.working, report, |report, _, row| {
         table.write(report.out(), &row)
@@ -40,6 +47,9 @@ pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
 struct Rows<'r> {
     reading: &'r ReadOptions,
     format: TableFormat,
+    forms: Forms,
+    /// Whether there are keys of parents and tautomers.
+    further: bool,
 }
 
 struct Scratch {
@@ -55,11 +65,16 @@ impl Work for Rows<'_> {
     type Scratch = Scratch;
 
     fn scratch(&self) -> Scratch {
+        let limits = Limits::default();
         Scratch {
             parser: Parser::new(self.reading),
             outcome: RecordOutcome::default(),
-            rows: KeyRows::new(Limits::default()),
             lines: Lines::new(self.format),
+            rows: KeyRows::new(limits).with_forms(
+                self.forms.normaliser(limits),
+                self.forms.overlook,
+                self.further,
+            ),
         }
     }
 

@@ -7,6 +7,7 @@ mod describe;
 mod destination;
 mod exit;
 mod families;
+mod forms;
 mod input;
 mod keys;
 mod output;

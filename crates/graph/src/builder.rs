@@ -77,6 +77,7 @@ impl MoleculeBuilder {
         self.molecule.stereo.clear();
         self.molecule.coordination.clear();
         self.molecule.groups.clear();
+        self.molecule.remembered.clear();
         self.molecule.skipped.clear();
         self.demand.clear();
         self.delocalised.clear();
@@ -168,6 +169,21 @@ impl MoleculeBuilder {
     /// [`MoleculeBuilder::build`].
     pub fn add_coordination(&mut self, mark: DrawnCoordination) {
         self.molecule.coordination.push(mark);
+    }
+
+    /// Adds a mark that was erased where it was drawn; see [`Molecule::remembered_stereo`].
+    pub(crate) fn add_remembered(&mut self, mark: DrawnStereo) {
+        self.molecule.remembered.push(mark);
+    }
+
+    /// Whether a mark fits its ligands.
+    pub(crate) fn fits(&self, mark: &DrawnStereo) -> bool {
+        self.check_stereo(mark).is_ok()
+    }
+
+    /// Whether an arrangement fits its ligands.
+    pub(crate) fn fits_coordination(&self, mark: &DrawnCoordination) -> bool {
+        self.check_coordination(mark).is_ok()
     }
 
     /// Adds a group of stereo elements.

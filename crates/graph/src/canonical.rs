@@ -132,6 +132,11 @@ impl Orderer {
         }
     }
 
+    /// The limits.
+    pub fn limits(&self) -> &Limits {
+        &self.limits
+    }
+
     /// Finds the canonical view of a molecule.
     ///
     /// # Errors
@@ -198,6 +203,11 @@ impl Orderer {
             .load(&view.skeleton, &view.mesomer, molecule, scratch);
         view.perception
             .keep_unequal_axes(&view.skeleton, &view.bare.generators);
+        view.perception.remember(
+            &view.skeleton,
+            &view.bare.generators,
+            molecule.remembered_stereo(),
+        );
         claims::list_variables(&view.perception, &mut view.variables);
         // Arrangements about metals are given, not open: they are part of the graph whose
         // automorphisms relate the other elements.

@@ -29,6 +29,7 @@ pub struct Molecule {
     pub(crate) stereo: Vec<DrawnStereo>,
     pub(crate) coordination: Vec<DrawnCoordination>,
     pub(crate) groups: Vec<StereoGroup>,
+    pub(crate) remembered: Vec<DrawnStereo>,
     /// For each number of the record that belongs to no atom, how many atoms come before it.
     pub(crate) skipped: Vec<u32>,
 }
@@ -102,6 +103,12 @@ impl Molecule {
     /// Centres that are not tetrahedral, with the arrangement that the record gives.
     pub fn drawn_coordination(&self) -> &[DrawnCoordination] {
         &self.coordination
+    }
+
+    /// Marks of places that a revision has erased. A record has none. They count for identity and are
+    /// never written: two molecules that differ in them alone are different.
+    pub fn remembered_stereo(&self) -> &[DrawnStereo] {
+        &self.remembered
     }
 
     /// Groups of stereo elements whose marks are meant relative to each other.

@@ -8,6 +8,7 @@ mod coordination;
 mod double_bond;
 mod labile;
 mod marks;
+mod remembered;
 mod tetrahedral;
 mod undrawable;
 
@@ -43,16 +44,19 @@ pub(crate) struct Candidate {
     pub(crate) parity: Option<Parity>,
     /// A mark counts here, but its absence leaves nothing open.
     pub(crate) quiet: bool,
+    /// The place is none of the molecule's own: a mark that was erased here counts.
+    pub(crate) remembered: bool,
 }
 
 impl Candidate {
     /// The unit for the canonical search with a given parity.
     pub(crate) fn unit(&self, odd: bool) -> Unit {
-        let colour = match self.shape {
+        let shape = match self.shape {
             Shape::Tetrahedral => 0,
             Shape::DoubleBond => 1,
             Shape::Axis => 2,
         };
+        let colour = if self.remembered { shape + 3 } else { shape };
         Unit {
             centres: self.centres,
             ligands: self.ligands,

@@ -1,6 +1,6 @@
 //! The constitution of a record as a graph with neighbours: what kinds and functional groups look at.
 
-use molkin_graph::{Element, NormalAtom, NormalBond, NormalForm};
+use molkin_graph::{Canonical, Element, NormalAtom, NormalBond, NormalForm};
 
 use crate::Structure;
 
@@ -15,7 +15,12 @@ pub(crate) struct Constitution {
 
 impl Constitution {
     pub(crate) fn of(structure: &Structure) -> Self {
-        let mut form = structure.canonical().normal_form();
+        Self::of_view(structure.canonical())
+    }
+
+    /// That of a canonical view.
+    pub(crate) fn of_view(canonical: &Canonical) -> Self {
+        let mut form = canonical.normal_form();
         // A hydrogen bond (order 0) is no part of a constitution.
         form.bonds.retain(|bond| bond.order != Some(0));
         let mut start = vec![0; form.atoms.len() + 1];

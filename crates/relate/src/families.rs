@@ -1,4 +1,5 @@
-//! Groups of the records of whole files: duplicates, possible duplicates, stereo families and isomers.
+//! Groups of the records of whole files: duplicates, possible duplicates, stereo families, forms of one
+//! parent and isomers.
 //!
 //! A [`Gatherer`] takes records one after another, as [`Reading`] makes them; what it keeps of each in
 //! memory is a row of keys, and the rest lies in a temporary file. In the end rows are sorted by key. That
@@ -45,16 +46,19 @@ pub enum Column {
     PossibleDuplicates,
     /// One labelled constitution, several compounds.
     Stereo,
+    /// One parent, several labelled constitutions: the same apart from what is overlooked.
+    Forms,
     /// One formula, several labelled constitutions.
     Isomers,
 }
 
 impl Column {
     /// All of them, the closest first.
-    pub const ALL: [Self; 4] = [
+    pub const ALL: [Self; 5] = [
         Self::Duplicates,
         Self::PossibleDuplicates,
         Self::Stereo,
+        Self::Forms,
         Self::Isomers,
     ];
 

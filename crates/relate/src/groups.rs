@@ -5,7 +5,7 @@
 //! normal form, so that no group depends on the mesomer that was drawn. docs/definitions.md says what
 //! makes two groups the same; `groups/names.tsv` holds their names.
 
-mod aromatic;
+pub(crate) mod aromatic;
 mod marks;
 mod names;
 

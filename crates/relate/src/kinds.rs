@@ -7,7 +7,7 @@ mod profile;
 
 use molkin_graph::{Element, Formula, GraphError, GraphOrderer, Limits};
 
-use crate::{Relation, StereoKind, Structure};
+use crate::{Axes, Axis, Relation, StereoKind, Structure};
 use profile::Profile;
 
 /// A kind of relation. The order is that of precedence within a relation.
@@ -16,6 +16,10 @@ use profile::Profile;
 pub enum Kind {
     /// Constitutional: the same isotopes in other places.
     Isotopomers,
+    /// Constitutional: a proton sits elsewhere, on another site or component.
+    ProtonTransfer,
+    /// Constitutional: mobile hydrogens sit elsewhere.
+    Tautomers,
     /// Constitutional: an open chain of one is closed to a ring in the other.
     RingChain,
     /// Constitutional: other functional groups.
@@ -26,6 +30,10 @@ pub enum Kind {
     Positional,
     /// A kind of stereo relation.
     Stereo(StereoKind),
+    /// Not isomers: other counter-ions or solvents, or another ratio of them.
+    SaltOrSolvate,
+    /// Not isomers: another state of protonation.
+    ChargeState,
     /// Not isomers: only the isotopic composition differs.
     Isotopologues,
     /// Not isomers: the same functional groups, and formulae that differ by CH2.
@@ -39,11 +47,15 @@ impl Kind {
     pub fn as_str(self) -> &'static str {
         match self {
             Self::Isotopomers => "isotopomers",
+            Self::ProtonTransfer => "proton-transfer",
+            Self::Tautomers => "tautomers",
             Self::RingChain => "ring-chain",
             Self::Functional => "functional",
             Self::Skeletal => "skeletal",
             Self::Positional => "positional",
             Self::Stereo(kind) => kind.as_str(),
+            Self::SaltOrSolvate => "salt-or-solvate",
+            Self::ChargeState => "charge-state",
             Self::Isotopologues => "isotopologues",
             Self::Homologues => "homologues",
             Self::Other => "other",
@@ -52,7 +64,7 @@ impl Kind {
 }
 
 /// All kinds that hold of two records with this relation, by precedence: the first is *the* kind. Empty
-/// for identical records, which have none.
+/// for identical records, which have none. `apart` is what [`crate::same_apart_from`] says of them.
 ///
 /// `kinds` of (a, b) equals that of (b, a).
 ///
@@ -64,28 +76,31 @@ impl Kind {
 /// ```
 /// use molkin_formats::smiles;
 /// use molkin_graph::{Limits, Orderer};
-/// use molkin_relate::{Kind, Structure, kinds, relate};
+/// use molkin_relate::{Kind, Normaliser, Structure, kinds, relate, same_apart_from};
 ///
 /// let limits = Limits::default();
 /// let mut orderer = Orderer::new(limits);
 /// let butanol = Structure::new(&mut orderer, smiles::parse("CCCCO")?)?;
 /// let ether = Structure::new(&mut orderer, smiles::parse("CCOCC")?)?;
 /// let verdict = relate(&mut orderer, &butanol, &ether)?;
-/// assert_eq!(kinds(verdict.relation, &butanol, &ether, &limits)?, [Kind::Functional]);
+/// let apart = same_apart_from(&mut Normaliser::new(limits), verdict.relation, &butanol, &ether)?;
+/// let kinds = kinds(verdict.relation, [&butanol, &ether], apart, &limits)?;
+/// assert_eq!(kinds, [Kind::Functional]);
 /// # Ok::<(), Box<dyn std::error::Error>>(())
 /// ```
 pub fn kinds(
     relation: Relation,
-    a: &Structure,
-    b: &Structure,
+    [a, b]: [&Structure; 2],
+    apart: Option<Axes>,
     limits: &Limits,
 ) -> Result<Vec<Kind>, GraphError> {
+    let apart = apart.unwrap_or(Axes::NONE);
     let mut orderer = GraphOrderer::new(*limits);
     let mut kinds = match relation {
         Relation::Identical => return Ok(Vec::new()),
         Relation::Stereo(kind) => vec![Kind::Stereo(kind)],
-        Relation::Constitutional => constitutional(a, b, &mut orderer)?,
-        Relation::NotIsomers => not_isomers(a, b, &mut orderer)?,
+        Relation::Constitutional => constitutional([a, b], apart, &mut orderer)?,
+        Relation::NotIsomers => not_isomers([a, b], apart, &mut orderer)?,
     };
     if kinds.is_empty() {
         kinds.push(Kind::Other);
@@ -93,20 +108,33 @@ pub fn kinds(
     Ok(kinds)
 }
 
+/// The kinds among `of` whose axes are in a set.
+fn on_axes(apart: Axes, of: &[(Axis, Kind)]) -> Vec<Kind> {
+    let held = of.iter().filter(|(axis, _)| apart.contains(*axis));
+    held.map(|&(_, kind)| kind).collect()
+}
+
 fn constitutional(
-    a: &Structure,
-    b: &Structure,
+    [a, b]: [&Structure; 2],
+    apart: Axes,
     orderer: &mut GraphOrderer,
 ) -> Result<Vec<Kind>, GraphError> {
     if a.canonical().same_constitution(b.canonical()) {
         return Ok(vec![Kind::Isotopomers]);
     }
+    let mut kinds = on_axes(
+        apart,
+        &[
+            (Axis::Isotope, Kind::Isotopomers),
+            (Axis::Charge, Kind::ProtonTransfer),
+            (Axis::Tautomer, Kind::Tautomers),
+        ],
+    );
     let [a, b] = [a, b].map(Profile::of);
     // Mixtures of other components are no isomers of a kind: nothing within a molecule moved.
     if a.components() != b.components() {
-        return Ok(Vec::new());
+        return Ok(kinds);
     }
-    let mut kinds = Vec::new();
     if a.closes_a_ring_of(&b) || b.closes_a_ring_of(&a) {
         kinds.push(Kind::RingChain);
     }
@@ -126,21 +154,33 @@ fn constitutional(
 }
 
 fn not_isomers(
-    a: &Structure,
-    b: &Structure,
+    [a, b]: [&Structure; 2],
+    apart: Axes,
     orderer: &mut GraphOrderer,
 ) -> Result<Vec<Kind>, GraphError> {
+    let mut kinds = on_axes(
+        apart,
+        &[
+            (Axis::Salt, Kind::SaltOrSolvate),
+            (Axis::Charge, Kind::ChargeState),
+            (Axis::Isotope, Kind::Isotopologues),
+        ],
+    );
     if a.formula() == b.formula() {
         let same = a.canonical().same_constitution(b.canonical());
-        return Ok(same.then_some(Kind::Isotopologues).into_iter().collect());
+        if same && kinds.is_empty() {
+            kinds.push(Kind::Isotopologues);
+        }
+        return Ok(kinds);
     }
     if a.isotopes() != b.isotopes() || !differ_by_methylene(a.formula(), b.formula()) {
-        return Ok(Vec::new());
+        return Ok(kinds);
     }
     let [a, b] = [a, b].map(Profile::of);
     let homologues =
         one_component_grew(a.components(), b.components()) && a.has_groups_of(&b, orderer)?;
-    Ok(homologues.then_some(Kind::Homologues).into_iter().collect())
+    kinds.extend(homologues.then_some(Kind::Homologues));
+    Ok(kinds)
 }
 
 /// Whether all but one component of each side have a partner of their formula, and those left over

@@ -7,6 +7,7 @@
 
 mod constitution;
 mod explain;
+mod forms;
 mod groups;
 mod kinds;
 pub mod mapping;
@@ -25,6 +26,10 @@ pub use crate::{
     explain::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
         StereoChange, StereoDifference, explain,
+    },
+    forms::{
+        Axes, AxesError, Axis, Change, CounterIons, CounterIonsError, Form, FormError, Listed,
+        ListedKind, Normaliser, Removed, same_apart_from,
     },
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},

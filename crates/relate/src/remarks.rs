@@ -2,7 +2,7 @@
 
 use molkin_graph::{Dropped, GraphError, Labelling, Mark, Molecule, Remark, Shape, Undrawable};
 
-use crate::{Relation, Structure};
+use crate::{FormError, Relation, Structure};
 
 /// A remark about one record. Atoms from 0; in the text they have their numbers.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -229,6 +229,15 @@ pub(crate) fn kind_not_found(error: &GraphError) -> Noted {
         code: "kind-limit",
         atoms: Vec::new(),
         text: format!("The kind was not found: {error}."),
+    }
+}
+
+/// Why it is not known on which axes two records differ.
+pub(crate) fn forms_not_found(error: &FormError) -> Noted {
+    Noted {
+        code: "forms-limit",
+        atoms: Vec::new(),
+        text: format!("Whether the records are forms of one compound was not found: {error}."),
     }
 }
 

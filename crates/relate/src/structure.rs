@@ -91,6 +91,11 @@ impl Structure {
         &self.molecule
     }
 
+    /// The molecule, without what was found out about it.
+    pub fn into_molecule(self) -> Molecule {
+        self.molecule
+    }
+
     /// Its canonical view.
     pub fn canonical(&self) -> &Canonical {
         &self.canonical

@@ -25,8 +25,8 @@ pub use keys::{KeyRow, KeyRows};
 #[cfg(feature = "families")]
 pub(crate) use keys::{prepare_message, read_message};
 pub use pair::{
-    BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair, StereoEntry,
-    compare,
+    Apart, BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair,
+    StereoEntry, compare, compare_by,
 };
 #[cfg(feature = "parquet")]
 pub use self::parquet::ParquetTable;
@@ -61,6 +61,9 @@ pub struct Input {
     /// Canonical SMILES.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub smiles: Option<String>,
+    /// Canonical SMILES of the form that was compared, where axes are overlooked.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub form: Option<String>,
 }
 
 /// A remark about a record or a pair.

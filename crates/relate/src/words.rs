@@ -1,5 +1,6 @@
 //! The verdict in plain sentences.
 
+pub(crate) mod forms;
 mod functional;
 mod places;
 mod stereo;
@@ -17,6 +18,7 @@ pub(crate) fn summary(
     [a, b]: [&Structure; 2],
     verdict: &Verdict,
     kind: Option<Kind>,
+    substances: Option<&str>,
     explained: Option<&Explanation>,
     limits: &Limits,
 ) -> String {
@@ -29,20 +31,30 @@ pub(crate) fn summary(
         Relation::Constitutional => {
             // What needs more than the kind is left out of brief output.
             let groups = explained.and_then(|_| functional::difference(a, b, limits));
-            constitutional(a, kind, groups, explained)
+            constitutional([a, b], kind, groups, explained)
         }
-        Relation::NotIsomers => not_isomers(a, b, kind),
+        Relation::NotIsomers => not_isomers(a, b, kind, substances),
     }
 }
 
 fn constitutional(
-    a: &Structure,
+    [a, b]: [&Structure; 2],
     kind: Option<Kind>,
     groups: Option<String>,
     explained: Option<&Explanation>,
 ) -> String {
     let what = match kind {
         Some(Kind::Isotopomers) => ", with the same isotopes in other places".to_owned(),
+        Some(Kind::ProtonTransfer) => {
+            let moved = explained.and_then(|e| forms::moved_hydrogens([a, b], e, "proton"));
+            let moved = moved.unwrap_or_else(|| "a proton sits elsewhere".to_owned());
+            format!("; proton transfer: {moved}")
+        }
+        Some(Kind::Tautomers) => {
+            let moved = explained.and_then(|e| forms::moved_hydrogens([a, b], e, "hydrogen"));
+            let moved = moved.unwrap_or_else(|| "a mobile hydrogen sits elsewhere".to_owned());
+            format!("; tautomers: {moved}")
+        }
         Some(Kind::RingChain) => ", but a chain of one is closed to a ring in the other".to_owned(),
         Some(Kind::Functional) => {
             let groups = groups.map(|groups| format!(" ({groups})"));
@@ -98,8 +110,16 @@ fn counted(count: usize, noun: &str) -> String {
     }
 }
 
-fn not_isomers(a: &Structure, b: &Structure, kind: Option<Kind>) -> String {
+fn not_isomers(
+    a: &Structure,
+    b: &Structure,
+    kind: Option<Kind>,
+    substances: Option<&str>,
+) -> String {
     let (left, right) = (a.formula(), b.formula());
+    if let Some(substances) = substances {
+        return format!("Not isomers, but one compound: {substances} ({left} and {right}).");
+    }
     if kind == Some(Kind::Homologues) {
         format!(
             "Not isomers but homologues: the same functional groups, and formulae that differ by CH2 units ({left} and {right})."

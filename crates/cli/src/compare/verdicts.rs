@@ -6,14 +6,16 @@ use std::{
 };
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
-use molkin_graph::{Limits, Orderer};
+use molkin_graph::Limits;
 use molkin_relate::{
+    Axes, Normaliser,
     parallel::Work,
     wire::{self, Pair, Prepared},
 };
 
 use crate::{
     args::Format,
+    forms::Forms,
     output::{Style, text},
 };
 
@@ -46,6 +48,7 @@ pub(super) struct Verdict {
 pub(super) struct Verdicts<'v> {
     pub(super) sources: [&'v str; 2],
     pub(super) reading: &'v ReadOptions,
+    pub(super) forms: Forms,
     pub(super) limits: Limits,
     pub(super) brief: bool,
     pub(super) format: Format,
@@ -55,7 +58,8 @@ pub(super) struct Verdicts<'v> {
 /// What a thread keeps from one pair to the next.
 pub(super) struct Scratch {
     parser: Parser,
-    orderer: Orderer,
+    normaliser: Normaliser,
+    overlook: Axes,
 }
 
 impl Scratch {
@@ -66,7 +70,11 @@ impl Scratch {
             Side::Read(outcome) => *outcome,
             Side::Raw(raw) => self.parser.parse(*raw),
         };
-        Cow::Owned(Prepared::new(&mut self.orderer, source, outcome))
+        let prepared = Prepared::new(self.normaliser.orderer(), source, outcome);
+        Cow::Owned(match self.overlook.is_empty() {
+            true => prepared,
+            false => prepared.overlooking(&mut self.normaliser, self.overlook),
+        })
     }
 }
 
@@ -92,7 +100,8 @@ impl<'v> Work for Verdicts<'v> {
     fn scratch(&self) -> Scratch {
         Scratch {
             parser: Parser::new(self.reading),
-            orderer: Orderer::new(self.limits),
+            normaliser: self.forms.normaliser(self.limits),
+            overlook: self.forms.overlook,
         }
     }
 
@@ -101,7 +110,7 @@ impl<'v> Work for Verdicts<'v> {
         let a = scratch.ready(source_a, a);
         let b = scratch.ready(source_b, b);
         let sides = [&*a, &*b];
-        let pair = wire::compare(&mut scratch.orderer, &self.limits, sides, self.brief);
+        let pair = wire::compare_by(&mut scratch.normaliser, &self.limits, sides, self.brief);
         Verdict {
             outcome: Outcome::of(&pair),
             text: self.text(&pair, sides),

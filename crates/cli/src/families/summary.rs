@@ -17,7 +17,9 @@ pub(super) fn write(
     report: &mut Report,
 ) -> Result<(), Failure> {
     report.say(records_in_words(counts, held))?;
-    for column in Column::ALL {
+    let overlooked = options.forms.overlook.is_some();
+    let columns = Column::ALL.into_iter();
+    for column in columns.filter(|&column| column != Column::Forms || overlooked) {
         report.say(groups_in_words(counts, column))?;
     }
     let Some(path) = &options.summary else {
@@ -55,6 +57,7 @@ fn groups_in_words(counts: &Counts, column: Column) -> String {
         Column::Duplicates => "duplicates",
         Column::PossibleDuplicates => "possible duplicates",
         Column::Stereo => "stereoisomers",
+        Column::Forms => "forms of one parent",
         Column::Isomers => "isomers",
     };
     let groups = counts.groups(column);

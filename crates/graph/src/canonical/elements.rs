@@ -88,6 +88,9 @@ impl Canonical {
             };
             for &(index, opposite) in &variable.members {
                 let candidate = &self.perception.candidates[index];
+                if candidate.remembered {
+                    continue;
+                }
                 let ligands = self.ligands(candidate);
                 let mark = given.map_or(Mark::Absent, |odd| {
                     Mark::Given(Parity::from_odd(odd ^ opposite))
@@ -145,7 +148,8 @@ impl Canonical {
             // A drawing gives every double bond a geometry, so one that cannot have any is no news.
             let drawn_only = self.claims.statuses[number] == Status::NotStereogenic
                 && self.shape(variable) == Shape::DoubleBond;
-            if self.claims.free[number] && variable.odd.is_some() && !drawn_only {
+            let own = !drawn_only && !self.is_remembered(variable);
+            if self.claims.free[number] && variable.odd.is_some() && own {
                 for &(index, _) in &variable.members {
                     let centres = perception.candidates[index].centres;
                     notes.push(Remark::MarkIdle {
@@ -177,7 +181,8 @@ impl Canonical {
     }
 
     fn partly_marked(&self) -> Option<Remark> {
-        let mobile = |v: &&Variable| v.quiet && self.shape(v) == Shape::DoubleBond;
+        let mobile =
+            |v: &&Variable| v.quiet && !self.is_remembered(v) && self.shape(v) == Shape::DoubleBond;
         let (marked, unmarked): (Vec<&Variable>, Vec<&Variable>) = self
             .variables
             .iter()
@@ -194,6 +199,12 @@ impl Canonical {
         atoms.sort_unstable();
         atoms.dedup();
         Some(Remark::PartlyMarkedMobileBonds { atoms })
+    }
+
+    /// Whether a variable is a mark that was erased.
+    fn is_remembered(&self, variable: &Variable) -> bool {
+        let mut members = variable.members.iter();
+        members.any(|&(index, _)| self.perception.candidates[index].remembered)
     }
 
     pub(super) fn shape(&self, variable: &Variable) -> Shape {

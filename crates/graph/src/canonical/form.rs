@@ -158,8 +158,10 @@ impl Canonical {
         let bonds = places
             .filter(|(variable, status)| variable.quiet && **status == Status::Marked)
             .flat_map(|(variable, _)| &variable.members)
-            .filter_map(|&(index, _)| {
-                let [a, b] = self.perception.candidates[index].centres;
+            .map(|&(index, _)| &self.perception.candidates[index])
+            .filter(|candidate| !candidate.remembered)
+            .filter_map(|candidate| {
+                let [a, b] = candidate.centres;
                 self.skeleton.bond_between(a, b)
             });
         marked.clear();
@@ -174,6 +176,9 @@ impl Canonical {
             };
             for &(index, opposite) in &variable.members {
                 let candidate = &self.perception.candidates[index];
+                if candidate.remembered {
+                    continue;
+                }
                 let centres = candidate.centres.map(rank);
                 let mut at = 0;
                 let ligands = candidate.ligands.map(|ligand| {

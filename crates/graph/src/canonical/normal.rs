@@ -1,6 +1,10 @@
 //! The normal form, atom by atom, for callers who compare constitutions.
 
-use crate::{Canonical, Element, mesomer::MOBILE, order::Permutation};
+use crate::{
+    Canonical, Element,
+    mesomer::MOBILE,
+    order::{Labelling, Permutation},
+};
 
 /// An atom of the normal form, terminal hydrogens folded.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -95,6 +99,36 @@ impl Canonical {
             images
         };
         self.bare.generators.iter().map(images).collect()
+    }
+
+    /// For each position in [`Canonical::normal_form`] a number of its orbit: atoms that automorphisms of
+    /// the constitution, isotopes and stereo left aside, relate have one number, and equal constitutions
+    /// have equal numbers.
+    pub fn constitution_orbits(&self) -> Vec<u32> {
+        let Labelling {
+            order,
+            rank,
+            generators,
+            ..
+        } = &self.constitution;
+        // By canonical rank: an earlier rank of the same orbit.
+        let mut earlier: Vec<u32> = (0..order.len() as u32).collect();
+        let root = |earlier: &[u32], mut at: u32| {
+            while earlier[at as usize] != at {
+                at = earlier[at as usize];
+            }
+            at
+        };
+        for generator in generators.iter() {
+            for &(from, to) in generator.moved() {
+                let [a, b] = [from, to].map(|atom| root(&earlier, rank[atom as usize]));
+                earlier[a.max(b) as usize] = a.min(b);
+            }
+        }
+        let atoms = self.written.order.iter();
+        atoms
+            .map(|&atom| root(&earlier, rank[atom as usize]))
+            .collect()
     }
 
     /// Positions in [`Canonical::normal_form`] in the canonical order of the constitution with

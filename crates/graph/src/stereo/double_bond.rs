@@ -139,6 +139,7 @@ fn candidate(
         ligands: [first, second, third, fourth],
         parity: None,
         quiet: mesomer.orders[bond as usize] != 2,
+        remembered: false,
     })
 }
 

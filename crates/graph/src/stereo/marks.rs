@@ -6,7 +6,7 @@ use crate::{
     skeleton::{NO_ATOM, Skeleton},
 };
 
-use super::{Dropped, Perception, double_bond, labile, slot};
+use super::{Candidate, Dropped, Perception, double_bond, labile, slot};
 
 /// A drawn mark in terms of the skeleton.
 #[derive(Debug, Clone, Copy)]
@@ -51,20 +51,27 @@ pub(super) fn apply(
     seen: &mut Vec<u32>,
 ) {
     for mark in marks {
-        let Some(parity) = mark.parity else { continue };
+        if mark.parity.is_none() {
+            continue;
+        }
         let Some(index) = perception.candidate_at(mark.centres) else {
             let reason = reason(skeleton, mesomer, mark, seen);
             perception.dropped.push((reason, mark.centres));
             continue;
         };
         let candidate = &mut perception.candidates[index];
-        match relative_parity(&candidate.ligands, candidate.centres, mark) {
-            Some(odd) if candidate.shape == mark.shape => {
-                candidate.parity = Some(Parity::from_odd(parity.is_odd() != odd));
-            }
-            _ => perception.dropped.push((Dropped::Misfit, mark.centres)),
+        match parity_on(candidate, mark) {
+            Some(parity) => candidate.parity = Some(parity),
+            None => perception.dropped.push((Dropped::Misfit, mark.centres)),
         }
     }
+}
+
+/// The parity that a mark gives a candidate at its place, if it fits.
+pub(super) fn parity_on(candidate: &Candidate, mark: &Mark) -> Option<Parity> {
+    let parity = mark.parity.filter(|_| candidate.shape == mark.shape)?;
+    let odd = relative_parity(&candidate.ligands, candidate.centres, mark)?;
+    Some(Parity::from_odd(parity.is_odd() != odd))
 }
 
 /// Whether the mark's ligand order is an odd permutation of the candidate's. A lone pair or

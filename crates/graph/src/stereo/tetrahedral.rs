@@ -64,6 +64,7 @@ pub(super) fn find(
             ligands,
             parity: None,
             quiet,
+            remembered: false,
         });
     }
     thetas

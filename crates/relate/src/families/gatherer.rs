@@ -29,6 +29,7 @@ pub struct Gatherer {
     memory: usize,
     keeper: Keeper,
     relatives: Sorter<Relative>,
+    forms: Sorter<Kin>,
     isomers: Sorter<Kin>,
     records: u64,
     failed: u64,
@@ -46,6 +47,7 @@ impl Gatherer {
             memory,
             keeper: Keeper::new()?,
             relatives: Sorter::new(memory),
+            forms: Sorter::new(memory),
             isomers: Sorter::new(memory),
             records: 0,
             failed: 0,
@@ -71,12 +73,16 @@ impl Gatherer {
         };
         self.relatives
             .push(Relative::new(keys.family, keys.compound, record, keys.open))?;
-        self.isomers.push(Kin {
-            key: keys.isomers,
+        let kin = |key| Kin {
+            key,
             record,
             family: keys.family,
             isomers: keys.isomers,
-        })
+        };
+        if let Some(parent) = keys.parent {
+            self.forms.push(kin(parent))?;
+        }
+        self.isomers.push(kin(keys.isomers))
     }
 
     /// Groups the records. They were read with these options and within these limits.
@@ -95,6 +101,7 @@ impl Gatherer {
             repeats: 0,
         };
         work.relate(self.relatives.finish()?, plan)?;
+        work.add_kin(Column::Forms, self.forms)?;
         work.add_kin(Column::Isomers, self.isomers)?;
         let counts = Counts::new(self.records, self.failed, work.repeats);
         work.number(counts)

@@ -1,4 +1,4 @@
-//! Groups that several constitutions share: isomers of one formula.
+//! Groups that several constitutions share: forms of one parent, isomers of one formula.
 
 use std::io;
 

@@ -3,7 +3,7 @@
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 use molkin_graph::Limits;
 
-use crate::{Preparer, Structure, wire};
+use crate::{Axes, FormError, Normaliser, Preparer, Structure, wire};
 
 use super::{
     kept::Entry,
@@ -36,6 +36,8 @@ pub(super) struct Keys {
     pub(super) compound: Words,
     /// Of the labelled constitution.
     pub(super) family: Words,
+    /// The compound apart from what is overlooked, where something is.
+    pub(super) parent: Option<Words>,
     pub(super) isomers: Words,
     pub(super) open: bool,
 }
@@ -46,6 +48,7 @@ impl Keys {
         Self {
             compound: words(canonical.compound_key()),
             family: words(canonical.labelled_constitution_key()),
+            parent: None,
             isomers: words(structure.isomer_key()),
             open: canonical.is_open(),
         }
@@ -58,6 +61,7 @@ pub struct Reading {
     parser: Parser,
     preparer: Preparer,
     outcome: RecordOutcome,
+    forms: Option<(Normaliser, Axes)>,
 }
 
 impl Reading {
@@ -67,6 +71,16 @@ impl Reading {
             parser: Parser::new(options),
             preparer: Preparer::new(limits),
             outcome: RecordOutcome::default(),
+            forms: None,
+        }
+    }
+
+    /// The same, with parents: what records are apart from these axes.
+    #[must_use]
+    pub fn with_forms(self, normaliser: Normaliser, overlook: Axes) -> Self {
+        Self {
+            forms: (!overlook.is_empty()).then_some((normaliser, overlook)),
+            ..self
         }
     }
 
@@ -76,30 +90,47 @@ impl Reading {
         let mut structure = Vec::new();
         raw.keep(&mut structure);
         self.parser.parse_into(raw, &mut self.outcome);
-        let outcome = &mut self.outcome;
-        let keys = match &mut outcome.result {
-            Err(error) => Err(wire::read_message(error)),
-            Ok(record) => match self.preparer.prepare(&mut record.molecule) {
-                Err(error) => Err(wire::prepare_message(&error)),
-                Ok(structure) => Ok(Keys::of(structure)),
-            },
-        };
-        if keys.is_err() {
-            structure.clear();
-        }
-        let (keys, message) = match keys {
-            Ok(keys) => (Some(keys), String::new()),
-            Err(message) => (None, message),
-        };
-        let entry = Entry {
-            name: outcome.name.clone(),
-            message,
-            structure,
+        let (keys, message) = match self.keys() {
+            Ok((keys, message)) => (Some(keys), message),
+            Err(message) => {
+                structure.clear();
+                (None, message)
+            }
         };
         Gathered {
-            index: outcome.index,
-            entry,
+            index: self.outcome.index,
+            entry: Entry {
+                name: self.outcome.name.clone(),
+                message,
+                structure,
+            },
             keys,
         }
     }
+
+    /// The keys of the record at hand, with what is to be said about them; or why there are none.
+    fn keys(&mut self) -> Result<(Keys, String), String> {
+        let record = self.outcome.result.as_mut();
+        let record = record.map_err(|error| wire::read_message(error))?;
+        let structure = self.preparer.prepare(&mut record.molecule);
+        let structure = structure.map_err(|error| wire::prepare_message(&error))?;
+        let mut keys = Keys::of(structure);
+        let mut message = String::new();
+        if let Some((normaliser, overlook)) = &mut self.forms {
+            match parent(normaliser, *overlook, structure) {
+                Ok(parent) => keys.parent = Some(parent),
+                Err(error) => message = format!("no parent: {}: {error}", error.code()),
+            }
+        }
+        Ok((keys, message))
+    }
+}
+
+fn parent(
+    normaliser: &mut Normaliser,
+    overlook: Axes,
+    structure: &Structure,
+) -> Result<Words, FormError> {
+    let form = normaliser.overlook(structure, overlook)?;
+    Ok(words(form.structure().canonical().compound_key()))
 }

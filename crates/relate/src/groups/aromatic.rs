@@ -1,4 +1,5 @@
-//! Which bonds count as aromatic when functional groups are looked for. Nothing else asks this.
+//! Which bonds count as aromatic when functional groups are looked for, and when a proton is put where it
+//! leaves most of a molecule aromatic. Nothing else asks this.
 
 use molkin_graph::Element;
 
@@ -6,7 +7,7 @@ use crate::constitution::Constitution;
 
 /// For each bond whether it is aromatic (docs/definitions.md): in a ring of mobile bonds, unless that
 /// is a lone ring of 4n atoms, or in a five-membered ring like those of furan, pyrrole and thiophene.
-pub(super) fn aromatic_bonds(constitution: &Constitution) -> Vec<bool> {
+pub(crate) fn aromatic_bonds(constitution: &Constitution) -> Vec<bool> {
     let mut aromatic = mobile_rings(constitution);
     if aromatic.contains(&true) {
         leave_out_bond_shift_rings(constitution, &mut aromatic);

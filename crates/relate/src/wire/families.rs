@@ -15,6 +15,7 @@ impl Column {
             Self::Duplicates => "duplicates",
             Self::PossibleDuplicates => "possible_duplicates",
             Self::Stereo => "stereo",
+            Self::Forms => "forms",
             Self::Isomers => "isomers",
         }
     }
@@ -127,6 +128,7 @@ impl TableRow for FamilyRow {
         TableColumn::number("duplicates"),
         TableColumn::number("possible_duplicates"),
         TableColumn::number("stereo"),
+        TableColumn::number("forms"),
         TableColumn::number("isomers"),
         TableColumn::text("first_source"),
         TableColumn::number("first_record"),
@@ -179,6 +181,8 @@ pub struct FamilySummary {
     pub possible_duplicates: GroupSummary,
     /// Stereo families.
     pub stereo: GroupSummary,
+    /// Groups of forms of one parent.
+    pub forms: GroupSummary,
     /// Groups of isomers.
     pub isomers: GroupSummary,
 }
@@ -223,6 +227,7 @@ impl FamilySummary {
             duplicates: group(Column::Duplicates),
             possible_duplicates: group(Column::PossibleDuplicates),
             stereo: group(Column::Stereo),
+            forms: group(Column::Forms),
             isomers: group(Column::Isomers),
         }
     }

@@ -6,7 +6,7 @@ use molkin_formats::{ReadError, smiles, source::RecordOutcome};
 use molkin_graph::{CanonicalForm, Limits};
 
 use super::table::{TableColumn, TableRow, Value};
-use crate::{PrepareError, Preparer, Structure};
+use crate::{Axes, Axis, Normaliser, PrepareError, Preparer, Structure};
 
 /// A record and its keys: the columns of `molkin keys`, in their order. Later columns are added at
 /// the end.
@@ -28,8 +28,13 @@ pub struct KeyRow {
     pub constitution_key: String,
     /// Key of the compound: isotopes and all claims about stereo.
     pub compound_key: String,
-    /// What is wrong: `line:column: code: message`, or `code: message` where it has no place.
+    /// What is wrong: `line:column: code: message`, or `code: message` where it has no place. Beside `ok`:
+    /// which keys of forms are not there, and why.
     pub message: String,
+    /// Compound key with the axes `salt` and `charge` overlooked; empty where it is not asked for.
+    pub parent_key: String,
+    /// Compound key with the axis `tautomer` overlooked; empty where it is not asked for.
+    pub tautomer_key: String,
     /// Whether the record stands for more than one possible sample, or leaves out what its notation
     /// cannot say.
     pub open: Option<bool>,
@@ -50,6 +55,8 @@ impl TableRow for KeyRow {
         TableColumn::text("constitution_key"),
         TableColumn::text("compound_key"),
         TableColumn::text("message"),
+        TableColumn::text("parent_key"),
+        TableColumn::text("tautomer_key"),
         TableColumn::truth("open"),
         TableColumn::text("labelled_constitution_key"),
         TableColumn::text("isomer_key"),
@@ -66,12 +73,24 @@ impl TableRow for KeyRow {
             Value::text(&self.constitution_key),
             Value::text(&self.compound_key),
             Value::text(&self.message),
+            Value::text(&self.parent_key),
+            Value::text(&self.tautomer_key),
             Value::from(self.open),
             Value::text(&self.labelled_constitution_key),
             Value::text(&self.isomer_key),
         ]
         .into_iter()
     }
+}
+
+/// Which keys of forms the rows have.
+#[derive(Debug)]
+struct Forms {
+    normaliser: Normaliser,
+    /// Axes that all keys leave out.
+    overlook: Axes,
+    /// Whether there are keys of parent and tautomers.
+    further: bool,
 }
 
 /// Makes one row after another in the same memory. One per thread.
@@ -95,6 +114,7 @@ impl TableRow for KeyRow {
 #[derive(Debug)]
 pub struct KeyRows {
     preparer: Preparer,
+    forms: Option<Forms>,
     form: CanonicalForm,
     writer: smiles::Writer,
     written: smiles::Written,
@@ -102,14 +122,30 @@ pub struct KeyRows {
 }
 
 impl KeyRows {
-    /// Rows within the given limits.
+    /// Rows within the given limits, without keys of forms.
     pub fn new(limits: Limits) -> Self {
         Self {
+            forms: None,
             preparer: Preparer::new(limits),
             form: CanonicalForm::default(),
             writer: smiles::Writer::default(),
             written: smiles::Written::default(),
             row: KeyRow::default(),
+        }
+    }
+
+    /// The same with some axes overlooked in all keys and, if `further` is set, with the keys of parent and
+    /// tautomers.
+    #[must_use]
+    pub fn with_forms(self, normaliser: Normaliser, overlook: Axes, further: bool) -> Self {
+        let wanted = further || !overlook.is_empty();
+        Self {
+            forms: wanted.then_some(Forms {
+                normaliser,
+                overlook,
+                further,
+            }),
+            ..self
         }
     }
 
@@ -128,6 +164,9 @@ impl KeyRows {
                     let structure = self.preparer.form_into(&mut self.form);
                     self.writer.write_into(&self.form, &mut self.written);
                     row.fill(structure, &self.written.text);
+                    if let Some(forms) = &mut self.forms {
+                        row.add_forms(forms, structure);
+                    }
                 }
             },
         }
@@ -144,10 +183,27 @@ impl KeyRow {
         for field in [
             &mut self.formula,
             &mut self.smiles,
-            &mut self.constitution_key,
-            &mut self.compound_key,
             &mut self.message,
+            &mut self.parent_key,
+            &mut self.tautomer_key,
+        ] {
+            field.clear();
+        }
+        self.clear_keys();
+    }
+
+    fn fill(&mut self, structure: &Structure, smiles: &str) {
+        self.status = "ok";
+        set(&mut self.formula, structure.formula());
+        self.smiles.push_str(smiles);
+        self.fill_keys(structure);
+    }
+
+    fn clear_keys(&mut self) {
+        for field in [
+            &mut self.constitution_key,
             &mut self.labelled_constitution_key,
+            &mut self.compound_key,
             &mut self.isomer_key,
         ] {
             field.clear();
@@ -155,19 +211,53 @@ impl KeyRow {
         self.open = None;
     }
 
-    fn fill(&mut self, structure: &Structure, smiles: &str) {
+    fn fill_keys(&mut self, structure: &Structure) {
         let canonical = structure.canonical();
-        self.status = "ok";
-        set(&mut self.formula, structure.formula());
-        self.smiles.push_str(smiles);
         set(&mut self.constitution_key, canonical.constitution_key());
-        set(&mut self.compound_key, canonical.compound_key());
-        self.open = Some(canonical.is_open());
         set(
             &mut self.labelled_constitution_key,
             canonical.labelled_constitution_key(),
         );
+        set(&mut self.compound_key, canonical.compound_key());
         set(&mut self.isomer_key, structure.isomer_key());
+        self.open = Some(canonical.is_open());
+    }
+}
+
+impl KeyRow {
+    fn add_forms(&mut self, forms: &mut Forms, structure: &Structure) {
+        let Forms {
+            normaliser,
+            overlook,
+            further,
+        } = forms;
+        let message = &mut self.message;
+        let mut form = |name: &str, axes: Axes| match normaliser.overlook(structure, axes) {
+            Ok(form) => Some(form),
+            Err(error) => {
+                let gap = if message.is_empty() { "" } else { "; " };
+                // Writing to a string does not fail.
+                let _ = write!(message, "{gap}no {name}: {}: {error}", error.code());
+                None
+            }
+        };
+        let overlooked = (!overlook.is_empty()).then(|| form("key", *overlook));
+        if *further {
+            let parent = overlook.with(Axis::Salt).with(Axis::Charge);
+            if let Some(form) = form("parent_key", parent) {
+                let canonical = form.structure().canonical();
+                set(&mut self.parent_key, canonical.compound_key());
+            }
+            if let Some(form) = form("tautomer_key", overlook.with(Axis::Tautomer)) {
+                let canonical = form.structure().canonical();
+                set(&mut self.tautomer_key, canonical.compound_key());
+            }
+        }
+        match overlooked {
+            None => {}
+            Some(Some(form)) => self.fill_keys(form.structure()),
+            Some(None) => self.clear_keys(),
+        }
     }
 }
 

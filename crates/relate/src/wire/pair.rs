@@ -4,10 +4,10 @@ use molkin_graph::{Label, Limits, Molecule, OrderError, Orderer};
 use serde::Serialize;
 
 use crate::{
-    Branching as DomainBranching, Explanation, PrepareError, Relation, StereoKind, Structure,
-    explain, kinds, relate,
+    Axes, Branching as DomainBranching, Explanation, Normaliser, PrepareError, Relation,
+    StereoKind, Structure, explain, kinds, relate,
     remarks::{self, Noted},
-    words,
+    same_apart_from, words,
 };
 
 use super::{Error, Group, Input, Note, Prepared, VERSION, Which, numbers};
@@ -30,6 +30,12 @@ pub struct Pair {
     /// All kinds that hold.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub aspects: Option<Vec<&'static str>>,
+    /// The axes that were overlooked; absent where none were.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub overlooked: Option<Vec<&'static str>>,
+    /// The smallest set of axes apart from which the two are the same.
+    #[serde(skip_serializing_if = "is_not_settled")]
+    pub same_apart_from: Apart,
     /// Identical, but more than one sample fits.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub open: Option<bool>,
@@ -57,6 +63,24 @@ pub struct Pair {
     /// Why there is no verdict.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub errors: Option<Vec<Error>>,
+}
+
+/// Axes, or null where no axes make the two the same; absent beside errors.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
+#[serde(untagged)]
+pub enum Apart {
+    /// Axes, or null.
+    Axes(Option<Vec<&'static str>>),
+    /// No verdict at all, or none found within the limits.
+    NotSettled,
+}
+
+fn is_not_settled(apart: &Apart) -> bool {
+    *apart == Apart::NotSettled
+}
+
+fn words_of(axes: Axes) -> Vec<&'static str> {
+    axes.iter().map(crate::Axis::as_str).collect()
 }
 
 /// The kind field: null for identical records, absent beside errors.
@@ -160,12 +184,10 @@ pub struct StereoEntry {
     pub group_b: Option<Group>,
 }
 
-/// Compares two records and says it in the terms of the contract. With `brief` the map and all that
-/// needs it are left out.
-///
-/// What cannot be compared comes back with `errors`; this function does not fail.
-pub fn compare(
-    orderer: &mut Orderer,
+/// As [`compare`], with the counter-ions of a normaliser. Records of which axes are overlooked
+/// ([`Prepared::overlooking`]) are compared in their forms.
+pub fn compare_by(
+    normaliser: &mut Normaliser,
     limits: &Limits,
     [a, b]: [&Prepared; 2],
     brief: bool,
@@ -173,7 +195,7 @@ pub fn compare(
     let mut pair = Pair::unsettled(a, b);
     match (a.parts(), b.parts()) {
         (Ok(left), Ok(right)) => {
-            if let Err(error) = pair.settle(orderer, limits, [left, right], brief) {
+            if let Err(error) = pair.settle(normaliser, limits, [left, right], brief) {
                 let code = PrepareError::from(error).code();
                 pair.errors = Some(vec![Error::without_place(code, error.to_string())]);
             }
@@ -187,6 +209,22 @@ pub fn compare(
     pair
 }
 
+/// Compares two records and says it in the terms of the contract. With `brief` the map and all that
+/// needs it are left out.
+///
+/// What cannot be compared comes back with `errors`; this function does not fail.
+pub fn compare(orderer: &mut Orderer, limits: &Limits, sides: [&Prepared; 2], brief: bool) -> Pair {
+    let mut normaliser = Normaliser::from(std::mem::take(orderer));
+    let pair = compare_by(&mut normaliser, limits, sides, brief);
+    *orderer = normaliser.into_orderer();
+    pair
+}
+
+fn overlooked(a: &Prepared, b: &Prepared) -> Option<Vec<&'static str>> {
+    let axes: Axes = a.overlooked().iter().chain(b.overlooked().iter()).collect();
+    (!axes.is_empty()).then(|| words_of(axes))
+}
+
 impl Pair {
     fn unsettled(a: &Prepared, b: &Prepared) -> Self {
         Self {
@@ -196,6 +234,8 @@ impl Pair {
             relation: None,
             kind: Kind::NoVerdict,
             aspects: None,
+            overlooked: overlooked(a, b),
+            same_apart_from: Apart::NotSettled,
             open: None,
             summary: None,
             atom_map: None,
@@ -210,15 +250,16 @@ impl Pair {
 
     fn settle(
         &mut self,
-        orderer: &mut Orderer,
+        normaliser: &mut Normaliser,
         limits: &Limits,
         [(a, notes_a), (b, notes_b)]: [(&Structure, &[Note]); 2],
         brief: bool,
     ) -> Result<(), OrderError> {
-        let verdict = relate(orderer, a, b)?;
+        let verdict = relate(normaliser.orderer(), a, b)?;
         let explained = (!brief).then(|| explain(a, b, verdict.relation, limits));
         let mut notes = Vec::new();
-        let kinds = kinds(verdict.relation, a, b, limits).unwrap_or_else(|error| {
+        let (apart, substances) = self.forms(normaliser, verdict.relation, [a, b], &mut notes);
+        let kinds = kinds(verdict.relation, [a, b], apart, limits).unwrap_or_else(|error| {
             notes.push(Note::of(a.molecule(), remarks::kind_not_found(&error)));
             Vec::new()
         });
@@ -231,6 +272,7 @@ impl Pair {
             [a, b],
             &verdict,
             kind,
+            substances.as_deref(),
             explained.as_ref(),
             limits,
         ));
@@ -264,6 +306,33 @@ impl Pair {
         }
         self.notes = Some(notes);
         Ok(())
+    }
+
+    /// Which axes tell the two apart, and what they are as substances.
+    fn forms(
+        &mut self,
+        normaliser: &mut Normaliser,
+        relation: Relation,
+        [a, b]: [&Structure; 2],
+        notes: &mut Vec<Note>,
+    ) -> (Option<Axes>, Option<String>) {
+        let apart = same_apart_from(normaliser, relation, a, b).and_then(|apart| {
+            let substances = match apart {
+                Some(axes) => words::forms::substances(normaliser, [a, b], axes)?,
+                None => None,
+            };
+            Ok((apart, substances))
+        });
+        match apart {
+            Ok((apart, substances)) => {
+                self.same_apart_from = Apart::Axes(apart.map(words_of));
+                (apart, substances)
+            }
+            Err(error) => {
+                notes.push(Note::of(a.molecule(), remarks::forms_not_found(&error)));
+                (None, None)
+            }
+        }
     }
 
     fn add_explanation(

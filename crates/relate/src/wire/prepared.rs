@@ -8,7 +8,7 @@ use molkin_formats::{
 use molkin_graph::{Molecule, Orderer};
 
 use crate::{
-    Structure,
+    Axes, Normaliser, Structure,
     remarks::{self, Noted, atoms_in_words},
 };
 
@@ -44,6 +44,8 @@ pub struct Prepared {
 struct Ready {
     structure: Structure,
     notes: Vec<Note>,
+    /// Axes that the structure leaves out.
+    overlooked: Axes,
 }
 
 #[derive(Debug, Clone)]
@@ -62,6 +64,7 @@ impl Prepared {
             name: outcome.name,
             formula: None,
             smiles: None,
+            form: None,
         };
         let record = match outcome.result {
             Ok(record) => record,
@@ -93,10 +96,43 @@ impl Prepared {
                 let notes = notes.collect();
                 input.formula = Some(structure.formula().to_string());
                 input.smiles = Some(written.text);
-                Ok(Ready { structure, notes })
+                Ok(Ready {
+                    structure,
+                    notes,
+                    overlooked: Axes::NONE,
+                })
             }
         };
         Self { input, outcome }
+    }
+
+    /// The record with some axes overlooked: what is said about its structure is then said of its form.
+    #[must_use]
+    pub fn overlooking(mut self, normaliser: &mut Normaliser, axes: Axes) -> Self {
+        if let Ok(ready) = &mut self.outcome {
+            match normaliser.overlook(&ready.structure, axes) {
+                Ok(form) => {
+                    let structure = form.into_structure();
+                    let written = smiles::write(&structure.canonical().form());
+                    self.input.form = Some(written.text);
+                    ready.structure = structure;
+                    ready.overlooked = axes;
+                }
+                Err(error) => {
+                    self.outcome = Err(Failure {
+                        error: Error::without_place(error.code(), error.to_string()),
+                        read: None,
+                    });
+                }
+            }
+        }
+        self
+    }
+
+    /// The axes that are overlooked.
+    pub(super) fn overlooked(&self) -> Axes {
+        let ready = self.outcome.as_ref();
+        ready.map_or(Axes::NONE, |ready| ready.overlooked)
     }
 
     /// Where the record came from, and what it is.
