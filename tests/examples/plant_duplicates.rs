@@ -32,7 +32,10 @@ fn main() -> ExitCode {
         return ExitCode::from(2);
     };
     let percent: usize = percent.parse().unwrap();
-    let texts: Vec<String> = files.iter().map(|file| read_text(Path::new(file))).collect();
+    let texts: Vec<String> = files
+        .iter()
+        .map(|file| read_text(Path::new(file)))
+        .collect();
     let lines = texts.iter().flat_map(|text| text.lines()).map(first_word);
     let mut lines: Vec<Line> = (1..).zip(lines).map(Line::original).collect();
     let copies = plant(&mut lines, percent);

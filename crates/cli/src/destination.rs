@@ -46,7 +46,9 @@ impl Destination {
     pub(crate) fn name(&self) -> String {
         match self {
             Self::Standard(_) => "standard output".to_owned(),
-            Self::Through(_, path) | Self::Beside(Beside { path, .. }) => path.display().to_string(),
+            Self::Through(_, path) | Self::Beside(Beside { path, .. }) => {
+                path.display().to_string()
+            }
         }
     }
 
@@ -139,7 +141,9 @@ fn create(folder: &Path) -> io::Result<NamedTempFile> {
 
 #[cfg(not(unix))]
 fn create(folder: &Path) -> io::Result<NamedTempFile> {
-    tempfile::Builder::new().prefix(".molkin-").tempfile_in(folder)
+    tempfile::Builder::new()
+        .prefix(".molkin-")
+        .tempfile_in(folder)
 }
 
 /// Files that are under way. Whoever makes one or puts one in its place holds this.

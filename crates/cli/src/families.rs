@@ -109,15 +109,21 @@ impl Gathering {
         let mut failure = None;
         let inputs = Inputs::new(inputs, work.reading);
         let working = &options.working;
-        records::each(work, inputs, working, report, |_, source, read: Box<Gathered>| {
-            if read.index() == 1 {
-                sources.begin(gatherer.records(), source);
-            }
-            gatherer.add(&read).map_err(|error| {
-                failure = Some(error);
-                io::Error::other("temporary files")
-            })
-        })
+        records::each(
+            work,
+            inputs,
+            working,
+            report,
+            |_, source, read: Box<Gathered>| {
+                if read.index() == 1 {
+                    sources.begin(gatherer.records(), source);
+                }
+                gatherer.add(&read).map_err(|error| {
+                    failure = Some(error);
+                    io::Error::other("temporary files")
+                })
+            },
+        )
         .map_err(|error| failure.map_or(Failure::Output(error), Failure::Temporary))
     }
 }

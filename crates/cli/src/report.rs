@@ -5,7 +5,13 @@ use std::{
     io::{self, IsTerminal, Write},
 };
 
-use crate::{args::{TableFormat, TableOutput}, destination::Destination, exit::Status, output::Style, progress::Progress};
+use crate::{
+    args::{TableFormat, TableOutput},
+    destination::Destination,
+    exit::Status,
+    output::Style,
+    progress::Progress,
+};
 
 /// One run: where results go, standard error, and the status earned so far.
 pub(crate) struct Report {

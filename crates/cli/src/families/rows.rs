@@ -39,8 +39,16 @@ impl Listing<'_> {
         let first = self.held.unwrap_or(0);
         let wanted = families
             .into_records()
-            .filter(|grouped| grouped.as_ref().map_or(true, |grouped| grouped.record >= first))
-            .filter(|grouped| grouped.as_ref().map_or(true, |grouped| self.is_wanted(grouped)))
+            .filter(|grouped| {
+                grouped
+                    .as_ref()
+                    .map_or(true, |grouped| grouped.record >= first)
+            })
+            .filter(|grouped| {
+                grouped
+                    .as_ref()
+                    .map_or(true, |grouped| self.is_wanted(grouped))
+            })
             .map(|grouped| {
                 let grouped = grouped.map_err(Failure::Temporary)?;
                 let explain = explanations.take(self.closest(&grouped));

@@ -70,7 +70,9 @@ fn csv_writer() -> Writer<Vec<u8>> {
 /// Ends the line of a writer.
 fn end(mut writer: Writer<Vec<u8>>) -> io::Result<Vec<u8>> {
     writer.write_record(None::<&[u8]>)?;
-    writer.into_inner().map_err(|error| io::Error::new(error.error().kind(), error.to_string()))
+    writer
+        .into_inner()
+        .map_err(|error| io::Error::new(error.error().kind(), error.to_string()))
 }
 
 /// A row as an object of those values that are there.
@@ -99,7 +101,10 @@ pub(crate) struct Table {
 
 impl Table {
     /// Begins a table of rows of this type.
-    pub(crate) fn begin<R: TableRow>(format: TableFormat, out: &mut impl Write) -> io::Result<Self> {
+    pub(crate) fn begin<R: TableRow>(
+        format: TableFormat,
+        out: &mut impl Write,
+    ) -> io::Result<Self> {
         let columns = match format {
             TableFormat::Parquet => Some(ParquetTable::new::<R>()?),
             TableFormat::Jsonl => None,
@@ -116,7 +121,11 @@ impl Table {
     }
 
     /// Writes a row.
-    pub(crate) fn write<R: TableRow>(&mut self, out: &mut impl Write, row: &Made<R>) -> io::Result<()> {
+    pub(crate) fn write<R: TableRow>(
+        &mut self,
+        out: &mut impl Write,
+        row: &Made<R>,
+    ) -> io::Result<()> {
         match (row, &mut self.columns) {
             (Made::Line(line), _) => out.write_all(line),
             (Made::Row(row), Some(columns)) => {

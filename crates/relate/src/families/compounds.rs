@@ -38,7 +38,9 @@ pub(super) fn by_constitution(
             let own = loader.hold(compound.first())?;
             let place = find(&constitutions, |others| {
                 let other = loader.hold(others.first().map_or(0, Compound::first))?;
-                Ok(own.canonical().same_labelled_constitution(other.canonical()))
+                Ok(own
+                    .canonical()
+                    .same_labelled_constitution(other.canonical()))
             })?;
             match place {
                 Some(place) => constitutions[place].push(compound),

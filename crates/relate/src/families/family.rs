@@ -2,14 +2,14 @@
 
 use std::io;
 
-use crate::{Relation, Verdict, relate};
+use crate::{Relation, StereoKind, Verdict, relate};
 
 use super::{
     Column,
     compounds::{Compound, by_constitution},
     kinship::Kinship,
     loader::Loader,
-    possible::{Links, Meeting},
+    possible::{Links, MOST_PAIRS, Meeting},
     rows::{Membership, Relative},
 };
 
@@ -24,10 +24,7 @@ pub(super) struct Found {
 }
 
 /// Relates the records of one family key, sorted.
-pub(super) fn relate_family(
-    loader: &mut Loader<'_>,
-    relatives: &[Relative],
-) -> io::Result<Found> {
+pub(super) fn relate_family(loader: &mut Loader<'_>, relatives: &[Relative]) -> io::Result<Found> {
     let mut found = Found::default();
     for compounds in by_constitution(loader, relatives)? {
         found.add_duplicates(&compounds);
@@ -66,9 +63,9 @@ impl Found {
         loader: &mut Loader<'_>,
         compounds: &[Compound],
     ) -> io::Result<()> {
-        let mut links = Links::find(compounds, |a, b| {
+        let mut links = Links::find(compounds, MOST_PAIRS, |a, b| {
             Ok(match kinship(loader, a, b)? {
-                Kinship::Stereo(crate::StereoKind::Undetermined) => Meeting::Meet,
+                Kinship::Stereo(StereoKind::Undetermined) => Meeting::Meet,
                 Kinship::NotCompared => Meeting::Unknown,
                 _ => Meeting::Apart,
             })

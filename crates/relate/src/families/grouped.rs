@@ -4,7 +4,13 @@ use std::{io, iter::Peekable, sync::Arc};
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 
-use super::{Column, Counts, Families, kept::{self, Kept}, kinship::Kinship, rows::Place, sorter::Sorted};
+use super::{
+    Column, Counts, Families,
+    kept::{self, Kept},
+    kinship::Kinship,
+    rows::Place,
+    sorter::Sorted,
+};
 
 /// A record and the groups it is in.
 #[derive(Debug, Clone)]
@@ -81,7 +87,12 @@ impl Again {
     ///
     /// # Errors
     /// The temporary file cannot be read.
-    pub fn read(&self, record: u64, index: u64, options: &ReadOptions) -> io::Result<RecordOutcome> {
+    pub fn read(
+        &self,
+        record: u64,
+        index: u64,
+        options: &ReadOptions,
+    ) -> io::Result<RecordOutcome> {
         let entry = self.kept.get(record)?;
         let raw = RawRecord::from_kept(index, &entry.structure);
         let outcome = Parser::new(options).parse(raw);

@@ -74,13 +74,16 @@ impl Kept {
             Ok(())
         })
     }
-
 }
 
 fn read(mut fill: impl FnMut(&mut [u8]) -> io::Result<()>) -> io::Result<Entry> {
     let mut head = [0; HEAD];
     fill(&mut head)?;
-    let mut lengths = head.as_chunks().0.iter().map(|length| u32::from_le_bytes(*length));
+    let mut lengths = head
+        .as_chunks()
+        .0
+        .iter()
+        .map(|length| u32::from_le_bytes(*length));
     let mut part = || -> io::Result<Vec<u8>> {
         let mut bytes = vec![0; lengths.next().unwrap_or_default() as usize];
         fill(&mut bytes)?;
@@ -167,7 +170,9 @@ mod tests {
         }
         let kept = Arc::new(keeper.finish().unwrap());
         assert!(kept.entries.length() > 2 * WINDOW);
-        let read: Vec<Entry> = InOrder::new(Arc::clone(&kept)).map(Result::unwrap).collect();
+        let read: Vec<Entry> = InOrder::new(Arc::clone(&kept))
+            .map(Result::unwrap)
+            .collect();
         assert!(read == entries);
         for at in [2_999, 0, 1_234] {
             assert_eq!(kept.get(at).unwrap(), entries[at as usize]);

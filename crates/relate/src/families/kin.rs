@@ -9,10 +9,7 @@ use super::{
 };
 
 /// Groups of records that have a key in common and not all one constitution.
-pub(super) fn group(
-    kin: Sorted<Kin>,
-    memberships: &mut Sorter<Membership>,
-) -> io::Result<()> {
+pub(super) fn group(kin: Sorted<Kin>, memberships: &mut Sorter<Membership>) -> io::Result<()> {
     let mut group: Option<Group> = None;
     for row in kin {
         let row = row?;

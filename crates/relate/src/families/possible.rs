@@ -5,7 +5,7 @@ use std::io;
 use super::compounds::Compound;
 
 /// The most pairs that are compared in one constitution.
-const MOST_PAIRS: u32 = 100_000;
+pub(super) const MOST_PAIRS: u32 = 100_000;
 
 /// Whether two compounds may be the same.
 pub(super) enum Meeting {
@@ -31,6 +31,7 @@ impl Links {
     /// order.
     pub(super) fn find(
         compounds: &[Compound],
+        most_pairs: u32,
         mut meeting: impl FnMut(&Compound, &Compound) -> io::Result<Meeting>,
     ) -> io::Result<Self> {
         let mut links = Self {
@@ -44,7 +45,7 @@ impl Links {
                     continue;
                 }
                 pairs += 1;
-                if pairs > MOST_PAIRS {
+                if pairs > most_pairs {
                     links.complete = false;
                     return Ok(links);
                 }
@@ -84,5 +85,44 @@ impl Links {
     fn join(&mut self, a: usize, b: usize) {
         let (a, b) = (self.stands_for(a), self.stands_for(b));
         self.of[a.max(b)] = a.min(b);
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn compounds(open: &[bool]) -> Vec<Compound> {
+        let compound = |(record, &open)| Compound {
+            members: vec![(record, open)],
+        };
+        (0..).zip(open).map(compound).collect()
+    }
+
+    fn groups(open: &[bool], most_pairs: u32) -> (Vec<Vec<usize>>, bool) {
+        let compounds = compounds(open);
+        // Open ones may be the same as their neighbours.
+        let meeting = |a: &Compound, b: &Compound| {
+            Ok(match a.first().abs_diff(b.first()) {
+                1 => Meeting::Meet,
+                _ => Meeting::Apart,
+            })
+        };
+        let mut links = Links::find(&compounds, most_pairs, meeting).unwrap();
+        (links.groups(&compounds), links.complete)
+    }
+
+    #[test]
+    fn linked_through_open_ones() {
+        let open = [false, true, false, false, true, true];
+        let expected = vec![vec![0, 1, 2], vec![3, 4, 5]];
+        assert_eq!(groups(&open, MOST_PAIRS), (expected, true));
+        assert_eq!(groups(&[false; 4], MOST_PAIRS), (vec![], true));
+    }
+
+    #[test]
+    fn a_bound_that_is_reached_is_told() {
+        let (found, complete) = groups(&[true, true, false, false], 2);
+        assert_eq!((found, complete), (vec![vec![0, 1]], false));
     }
 }

@@ -1,13 +1,6 @@
 //! Sorting more rows than memory holds.
 
-use std::{
-    cmp::Reverse,
-    collections::BinaryHeap,
-    io,
-    ops::Range,
-    rc::Rc,
-    vec,
-};
+use std::{cmp::Reverse, collections::BinaryHeap, io, ops::Range, rc::Rc, vec};
 
 use super::store::{Store, Stored};
 
@@ -127,7 +120,9 @@ pub(super) struct Sorted<R> {
 
 impl<R: Row> Sorted<R> {
     fn merge(chunks: Vec<Vec<R>>, runs: Vec<Run>) -> io::Result<Self> {
-        let chunks = chunks.into_iter().map(|rows| Source::Memory(rows.into_iter()));
+        let chunks = chunks
+            .into_iter()
+            .map(|rows| Source::Memory(rows.into_iter()));
         let mut sources: Vec<_> = chunks.chain(runs.into_iter().map(Source::Disk)).collect();
         let mut next = BinaryHeap::with_capacity(sources.len());
         for (index, source) in sources.iter_mut().enumerate() {

@@ -1,0 +1,137 @@
+//! Groups of small sets of records.
+
+use std::num::NonZeroUsize;
+
+use molkin_formats::source::{Format, ReadOptions, Records};
+use molkin_graph::Limits;
+use rstest::rstest;
+
+use super::*;
+use crate::{Axes, Axis, Normaliser, StereoKind, parallel::Plan};
+
+const PLAN: Plan = Plan {
+    threads: NonZeroUsize::MIN,
+    chunk: NonZeroUsize::MIN,
+};
+
+/// Groups the lines of a SMILES file, with a change to what was read of each.
+fn grouped(text: &str, memory: usize, change: impl Fn(&mut Gathered)) -> (Vec<Grouped>, Counts) {
+    let options = ReadOptions::default();
+    let limits = Limits::default();
+    let axes = Axes::from([Axis::Salt, Axis::Charge]);
+    let mut reading = Reading::new(&options, limits).with_forms(Normaliser::new(limits), axes);
+    let mut gatherer = Gatherer::new(memory).unwrap();
+    let mut records = Records::new("test", text.as_bytes(), Format::Smiles, options.clone());
+    while let Some(raw) = records.cut() {
+        let mut gathered = reading.read(raw.unwrap());
+        change(&mut gathered);
+        gatherer.add(&gathered).unwrap();
+    }
+    let families = gatherer.group(&options, limits, PLAN).unwrap();
+    let counts = families.counts().clone();
+    (
+        families.into_records().map(Result::unwrap).collect(),
+        counts,
+    )
+}
+
+/// The numbers of groups in a column; 0 where there is none.
+fn numbers(records: &[Grouped], column: Column) -> Vec<u64> {
+    let number = |record: &Grouped| record.group(column).map_or(0, |group| group.number);
+    records.iter().map(number).collect()
+}
+
+/// Duplicates, enantiomers with a record that may be either, an isomer, a salt and its parent, and what
+/// cannot be read.
+const MIXED: &str = "\
+C[C@H](N)C(=O)O
+CC(=O)O
+OC(=O)[C@H](C)N
+CC(N)C(=O)O
+C1CC
+C[C@@H](N)C(=O)O
+CC(=O)[O-].[Na+]
+NCCC(=O)O
+OC(C)=O
+CC(O)F
+FC(C)O
+";
+
+#[test]
+fn every_sort_of_group() {
+    let (records, counts) = grouped(MIXED, 1 << 20, |_| {});
+    let column = |column| numbers(&records, column);
+    assert_eq!(
+        column(Column::Duplicates),
+        [0, 1, 0, 0, 0, 0, 0, 0, 1, 0, 0]
+    );
+    assert_eq!(
+        column(Column::PossibleDuplicates),
+        [1, 0, 1, 1, 0, 1, 0, 0, 0, 2, 2]
+    );
+    assert_eq!(column(Column::Stereo), [1, 0, 1, 1, 0, 1, 0, 0, 0, 0, 0]);
+    assert_eq!(column(Column::Forms), [0, 1, 0, 0, 0, 0, 1, 0, 1, 0, 0]);
+    assert_eq!(column(Column::Isomers), [1, 0, 1, 1, 0, 1, 0, 1, 0, 0, 0]);
+    assert_eq!((counts.records, counts.failed, counts.distinct), (11, 1, 8));
+    assert_eq!(
+        counts.sizes(Column::PossibleDuplicates).collect::<Vec<_>>(),
+        [(2, 1), (4, 1)]
+    );
+    assert!(records[4].message.starts_with("5:2: ring-not-closed"));
+}
+
+#[test]
+fn what_a_record_is_to_the_first_of_its_closest_group() {
+    let (records, _) = grouped(MIXED, 1 << 20, |_| {});
+    let closest = |at: usize, before| {
+        let (column, group) = records[at].closest(before)?;
+        Some((column, group.first, group.kinship))
+    };
+    let identical = |open| Kinship::Identical { open };
+    let stereo = |kind| Some((Column::PossibleDuplicates, 0, Kinship::Stereo(kind)));
+    assert_eq!(closest(0, 9), None);
+    assert_eq!(closest(3, 9), stereo(StereoKind::Undetermined));
+    assert_eq!(closest(5, 9), stereo(StereoKind::Enantiomers));
+    assert_eq!(closest(6, 9), Some((Column::Forms, 1, Kinship::NotIsomers)));
+    assert_eq!(
+        closest(7, 9),
+        Some((Column::Isomers, 0, Kinship::Constitutional))
+    );
+    assert_eq!(
+        closest(8, 9),
+        Some((Column::Duplicates, 1, identical(false)))
+    );
+    assert_eq!(
+        closest(10, 99),
+        Some((Column::PossibleDuplicates, 9, identical(true)))
+    );
+    // Told only about the first record.
+    assert_eq!(closest(8, 1), None);
+}
+
+/// Rows that don't fit into memory, and keys that say nothing, lead to the same groups.
+#[rstest]
+#[case::spilled(0, |_: &mut Gathered| {})]
+#[case::one_compound_key(1 << 20, |read: &mut Gathered| {
+    if let Some(keys) = &mut read.keys { keys.compound = [7, 7]; }
+})]
+#[case::one_key_for_all(1 << 20, |read: &mut Gathered| {
+    if let Some(keys) = &mut read.keys { (keys.compound, keys.family) = ([7, 7], [7, 7]); }
+})]
+fn identity_is_not_concluded_from_keys(#[case] memory: usize, #[case] change: fn(&mut Gathered)) {
+    let (expected, counts) = grouped(MIXED, 1 << 20, |_| {});
+    let (found, other_counts) = grouped(MIXED, memory, change);
+    for column in [
+        Column::Duplicates,
+        Column::PossibleDuplicates,
+        Column::Stereo,
+    ] {
+        assert_eq!(
+            numbers(&found, column),
+            numbers(&expected, column),
+            "{column:?}"
+        );
+        assert_eq!(other_counts.groups(column), counts.groups(column));
+    }
+    assert_eq!(other_counts.distinct, counts.distinct);
+}

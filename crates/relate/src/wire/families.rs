@@ -96,7 +96,11 @@ impl FamilyRow {
             source: source.to_owned(),
             record,
             name: grouped.name.clone(),
-            status: if grouped.message.is_empty() { "ok" } else { "error" },
+            status: if grouped.message.is_empty() {
+                "ok"
+            } else {
+                "error"
+            },
             groups: Column::ALL.map(number),
             first,
             relation,

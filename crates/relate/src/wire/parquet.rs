@@ -236,9 +236,15 @@ mod tests {
         let mut read = 0;
         for (number, row) in (0_i64..).zip(reader.get_row_iter(None).unwrap()) {
             let row = row.unwrap();
-            assert_eq!(row.get_string(0).ok().map(String::as_str), (number % 3 != 0).then_some("é"));
+            assert_eq!(
+                row.get_string(0).ok().map(String::as_str),
+                (number % 3 != 0).then_some("é")
+            );
             assert_eq!(row.get_long(1).unwrap(), number);
-            assert_eq!(row.get_bool(2).ok(), (number % 5 != 0).then_some(number % 2 == 0));
+            assert_eq!(
+                row.get_bool(2).ok(),
+                (number % 5 != 0).then_some(number % 2 == 0)
+            );
             read += 1;
         }
         assert_eq!(read, count);
@@ -250,6 +256,13 @@ mod tests {
         let bytes = table.finish().unwrap();
         let reader = SerializedFileReader::new(bytes::Bytes::from(bytes)).unwrap();
         assert_eq!(reader.metadata().file_metadata().num_rows(), 0);
-        assert_eq!(reader.metadata().file_metadata().schema_descr().num_columns(), 3);
+        assert_eq!(
+            reader
+                .metadata()
+                .file_metadata()
+                .schema_descr()
+                .num_columns(),
+            3
+        );
     }
 }

@@ -1,0 +1,151 @@
+//! `molkin families`.
+
+use insta::assert_snapshot;
+use rstest::rstest;
+use serde_json::Value;
+
+use crate::runner::{Folder, demo, repository, run, with_input};
+
+/// The columns from `record` on of the rows that have a number or a message.
+fn rows(out: &str) -> String {
+    let rows = out.lines().filter(|row| !row.contains(",ok,,,,,,,,,,,"));
+    rows.map(|row| format!("{row}\n")).collect()
+}
+
+#[test]
+fn a_shelf_and_a_delivery() {
+    let outcome = demo(&[
+        "families",
+        "held.smi",
+        "vendor.sdf",
+        "--overlook",
+        "salt,charge",
+    ]);
+    assert_eq!(outcome.status, 2);
+    assert_snapshot!(rows(&outcome.out), @"");
+    assert_snapshot!(outcome.words, @"");
+}
+
+#[test]
+fn a_delivery_against_a_shelf() {
+    let outcome = demo(&[
+        "families",
+        "vendor.sdf",
+        "--against",
+        "held.smi",
+        "--only",
+        "duplicates,stereo",
+        "--explain",
+        "stereo",
+        "--explain-limit",
+        "2",
+    ]);
+    assert_snapshot!(outcome.out, @"");
+    assert_snapshot!(outcome.words, @"");
+}
+
+/// The same facts in all forms of the table.
+#[test]
+fn objects_say_what_lines_say() {
+    let arguments = ["families", "held.smi", "vendor.sdf"];
+    let lines = demo(&arguments).out;
+    let objects = demo(&[&arguments[..], &["--format", "jsonl"]].concat()).out;
+    let mut lines = lines
+        .lines()
+        .map(|line| line.split(',').collect::<Vec<_>>());
+    let header = lines.next().unwrap();
+    assert_eq!(objects.lines().count(), 30);
+    for (line, object) in lines.zip(objects.lines()) {
+        let object: Value = serde_json::from_str(object).unwrap();
+        assert_eq!(object["version"], 1);
+        for (column, text) in header.iter().zip(line) {
+            let value = match object.get(column) {
+                None => String::new(),
+                Some(Value::String(text)) => text.clone(),
+                Some(other) => other.to_string(),
+            };
+            // A message has commas and stands in quotes.
+            assert!(
+                value == text || value.contains(','),
+                "{column}: {value} and {text}"
+            );
+        }
+    }
+}
+
+#[test]
+fn the_summary_is_an_object() {
+    let folder = Folder::new("families_summary").with("a.smi", "OCC\nCCO\nCOC\nC1\n");
+    let outcome = folder.run(&[
+        "families",
+        "a.smi",
+        "--against",
+        "CCO",
+        "--summary",
+        "s.json",
+    ]);
+    assert_eq!(outcome.status, 2);
+    let summary = std::fs::read_to_string(folder.path().join("s.json")).unwrap();
+    assert_snapshot!(summary, @"");
+}
+
+/// Where the rows lie, and how a file comes, makes no difference.
+#[rstest]
+#[case::in_files(&["--memory", "0"])]
+#[case::in_little_memory(&["--memory", "1"])]
+fn spilling_changes_nothing(#[case] options: &[&str]) {
+    let mut text = String::new();
+    for number in 0..4_000_usize {
+        let chain = "C".repeat(number * 7_919 % 61 + 1);
+        let mark = ["@", "@@", ""][number % 3];
+        text.push_str(&format!("{chain}[C{mark}H](O)F {number}\n"));
+    }
+    // The simplest centre has two equal ligands in no chain, and what is unmarked is open.
+    let arguments = ["families", "-", "--threads", "2"];
+    let expected = with_input(&arguments, &text);
+    let found = with_input(&[&arguments[..], options].concat(), &text);
+    assert_eq!(expected.out.lines().count(), 4_001);
+    assert!(expected.out.contains("undetermined") && expected.out.contains("enantiomers"));
+    assert_eq!((found.out, found.words), (expected.out, expected.words));
+}
+
+#[test]
+fn a_table_as_columns_is_a_file() {
+    let folder = Folder::new("families_columns").with("a.smi", "OCC\nCCO\nC1\n");
+    for command in ["keys", "families"] {
+        let arguments = [
+            command,
+            "a.smi",
+            "--format",
+            "parquet",
+            "--output",
+            "t.parquet",
+        ];
+        let outcome = folder.run(&arguments);
+        assert_eq!((outcome.status, outcome.out.as_str()), (2, ""));
+        let bytes = std::fs::read(folder.path().join("t.parquet")).unwrap();
+        assert!(bytes.starts_with(b"PAR1") && bytes.ends_with(b"PAR1"));
+    }
+}
+
+#[test]
+fn standard_input_is_read_once() {
+    let outcome = run(&["families", "-", "--against", "-"]);
+    assert_eq!((outcome.status, outcome.out.as_str()), (2, ""));
+    assert!(outcome.words.contains("only once"), "{}", outcome.words);
+}
+
+/// The README shows what is written.
+#[test]
+fn the_readme_shows_what_is_written() {
+    let readme = std::fs::read_to_string(repository().join("README.md")).unwrap();
+    let (_, section) = readme.split_once("molkin families ").unwrap();
+    let (arguments, section) = section.split_once('\n').unwrap();
+    let (_, shown) = section.split_once("```text\n").unwrap();
+    let (shown, _) = shown.split_once("```").unwrap();
+    let arguments: Vec<&str> = std::iter::once("families")
+        .chain(arguments.split(' '))
+        .collect();
+    let outcome = run(&arguments);
+    assert_eq!(outcome.out + &outcome.words, shown);
+}
