@@ -15,6 +15,7 @@ mod collections;
 mod comparer;
 mod distance;
 mod extent;
+mod forms;
 mod graph6;
 mod kekule;
 mod kinds;
@@ -36,6 +37,7 @@ pub use crate::{
     comparer::Comparer,
     distance::{least_distance, stated_distance},
     extent::is_full_run,
+    forms::{FormPair, definition_forms, fixture_forms},
     graph6::Graph,
     kekule::other_kekule_form,
     kinds::{KindPair, definition_kinds, fixture_kinds},

@@ -24,6 +24,7 @@ mod distances;
 mod drawings;
 mod findings;
 mod fixtures;
+mod forms;
 mod golden;
 mod graphs;
 mod graphs_growth;

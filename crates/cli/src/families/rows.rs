@@ -12,6 +12,7 @@ use molkin_relate::{
 
 use crate::{
     args,
+    exit::Status,
     output::table::{Lines, Made, Table},
     report::Report,
     run::Failure,
@@ -55,7 +56,11 @@ impl Listing<'_> {
                 Ok((grouped, explain))
             });
         in_order(&work, self.plan, wanted, |row| {
-            Ok::<_, Failure>(table.write(report.out(), &row?)?)
+            let (row, whole) = row?;
+            if !whole {
+                report.count(Status::Trouble);
+            }
+            Ok::<_, Failure>(table.write(report.out(), &row)?)
         })?;
         table.finish(report.out())?;
         explanations.say(report)
@@ -119,7 +124,8 @@ struct Rows<'l> {
 
 impl Work for Rows<'_> {
     type Item = Result<(Grouped, bool), Failure>;
-    type Output = Result<Made<FamilyRow>, Failure>;
+    /// The row, and whether it lacks nothing.
+    type Output = Result<(Made<FamilyRow>, bool), Failure>;
     type Scratch = (Lines, Orderer);
 
     fn scratch(&self) -> (Lines, Orderer) {
@@ -135,7 +141,7 @@ impl Work for Rows<'_> {
             let explanation = self.explain(orderer, &grouped);
             row.explanation = explanation.map_err(Failure::Temporary)?;
         }
-        Ok(lines.make(&row)?)
+        Ok((lines.make(&row)?, row.message.is_empty()))
     }
 
     fn bytes(item: &Self::Item) -> usize {

@@ -72,6 +72,33 @@ fn odd_pairs_keep_to_the_schema(#[case] a: &str, #[case] b: &str) {
     check_all("Pair", &outcome, 1);
 }
 
+#[rstest]
+#[case::salt("CCN", "CC[NH3+].[Cl-]", "salt", "identical")]
+#[case::all(
+    "CCN",
+    "[13CH3]C[NH3+].[Cl-]",
+    "salt,charge,tautomer,ring-chain,isotope,stereo",
+    "identical"
+)]
+#[case::not_enough("CCN", "[13CH3]C[NH3+].[Cl-]", "salt", "not-isomers")]
+fn forms_keep_to_the_schema(
+    #[case] a: &str,
+    #[case] b: &str,
+    #[case] axes: &str,
+    #[case] relation: &str,
+) {
+    let outcome = run(&["compare", a, b, "--overlook", axes, "--format", "jsonl"]);
+    check_all("Pair", &outcome, 1);
+    let pair = &objects(&outcome)[0];
+    assert_eq!(pair["relation"], relation);
+    assert_eq!(
+        pair["b"]["smiles"].as_str().unwrap().matches('.').count(),
+        1
+    );
+    assert!(!pair["b"]["form"].as_str().unwrap().contains('.'));
+    assert_eq!(outcome.status, i32::from(relation != "identical"));
+}
+
 #[test]
 fn described_records_keep_to_the_schema() {
     let arguments = [

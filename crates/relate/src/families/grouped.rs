@@ -19,7 +19,9 @@ pub struct Grouped {
     pub record: u64,
     /// Name or title; empty where there is none.
     pub name: String,
-    /// What is wrong with it; empty where nothing is.
+    /// Whether it could be read and ordered.
+    pub is_fine: bool,
+    /// What is wrong with it, or could not be found; empty where nothing is.
     pub message: String,
     /// Whether it may be a duplicate of others in ways that were not found within the limits.
     pub undecided: bool,
@@ -128,6 +130,7 @@ impl InOrder {
         Ok(Grouped {
             record,
             name: entry.name,
+            is_fine: !entry.structure.is_empty(),
             message: entry.message,
             undecided,
             groups,

@@ -141,6 +141,7 @@ impl<'s> Work<'s> {
             let mut moved = false;
             for choice in &choices {
                 if let Some(at) = choice.settled(&view) {
+                    let at = self.drawn_carbanion(&view, choice).unwrap_or(at);
                     self.put(&view, at, choice.change);
                     moved = true;
                 }
@@ -161,11 +162,22 @@ impl<'s> Work<'s> {
         }
     }
 
-    /// The atom of a choice that makes the most customary molecule: heteroatoms before carbon, acids,
-    /// esters and amides kept, most of it aromatic, imines within rings; the canonical order decides what is
+    /// Among equal carbons of a mobile anion the one that bears the charge as drawn: another could not take
+    /// the proton without a shift of double bonds.
+    fn drawn_carbanion(&self, view: &View, choice: &Choice) -> Option<u32> {
+        let drawn = |at: u32| self.revised.molecule.atom(view.site(at).source);
+        let mut atoms = choice.atoms.iter().copied();
+        atoms.find(|&at| {
+            drawn(at).is_some_and(|atom| atom.element == Element::CARBON && atom.charge < 0)
+        })
+    }
+
+    /// The atom of a choice, if any will do, that makes the most customary molecule: acids,
+    /// esters and amides kept, most of it aromatic, imines within rings, the most symmetric; the canonical order decides what is
     /// left.
     fn best(&mut self, view: &View, choice: &Choice) -> Result<Option<u32>, FormError> {
         let total = total_charge(view);
+        let before = aromatic_bonds(&self.canonical);
         let mut best = None;
         for at in choice.representatives(view) {
             let kept = self.protons.clone();
@@ -175,16 +187,17 @@ impl<'s> Work<'s> {
             let canonical = self.orderer.order(&trial.molecule);
             let canonical = canonical.map_err(PrepareError::from)?;
             let after = View::of(&canonical);
-            if total_charge(&after) >= total {
+            let aromatic = aromatic_bonds(&canonical);
+            if total_charge(&after) >= total || choice.quaternary && aromatic < before {
                 continue;
             }
             let site = view.site(at);
             let order = (
-                site.element == Element::CARBON,
                 Reverse(after.acyl_groups()),
-                Reverse(aromatic_bonds(&canonical)),
+                Reverse(aromatic),
                 choice.change < 0 && !site.in_ring,
                 Reverse(site.hydrogens),
+                after.orbit_count(),
                 site.element,
                 site.orbit,
                 at,

@@ -96,7 +96,7 @@ impl FamilyRow {
             source: source.to_owned(),
             record,
             name: grouped.name.clone(),
-            status: if grouped.message.is_empty() {
+            status: if grouped.is_fine {
                 "ok"
             } else {
                 "error"

@@ -2,7 +2,7 @@
 
 use std::io::{self, Write};
 
-use molkin_relate::wire::{Bonds, Branching, Group, Pair, Prepared, StereoEntry, Which};
+use molkin_relate::wire::{Apart, Bonds, Branching, Group, Pair, Prepared, StereoEntry, Which};
 
 use crate::output::style::{Role, Style};
 
@@ -24,6 +24,15 @@ pub(crate) fn write(
     writeln!(out, "{}", style.paint(Role::Verdict, verdict))?;
     record(out, style, Which::A, sides[0])?;
     record(out, style, Which::B, sides[1])?;
+    if let Some(axes) = &pair.overlooked {
+        labelled(out, style, (None, "overlooked"), &axes.join(", "))?;
+    }
+    if let Apart::Axes(Some(axes)) = &pair.same_apart_from
+        && !axes.is_empty()
+        && pair.relation != Some("stereo")
+    {
+        labelled(out, style, (None, "same apart from"), &axes.join(", "))?;
+    }
     for error in pair.errors.iter().flatten().filter(|e| e.input.is_none()) {
         labelled(out, style, (None, "error"), &fault(error))?;
     }
@@ -57,6 +66,14 @@ fn record(out: &mut impl Write, style: Style, which: Which, prepared: &Prepared)
             style,
             (None, ""),
             &format!("{formula}{HARD_BLANK} {smiles}"),
+        )?;
+    }
+    if let Some(form) = &input.form {
+        labelled(
+            out,
+            style,
+            (None, ""),
+            &format!("compared as{HARD_BLANK} {form}"),
         )?;
     }
     if let Some(error) = prepared.error() {

@@ -13,6 +13,9 @@ pub(super) struct Choice {
     pub(super) change: i8,
     /// Positions, ascending; at least one.
     pub(super) atoms: Vec<u32>,
+    /// A ring nitrogen without hydrogens bears the positive charge as well, as in N-alkylaminopyridinium:
+    /// a proton may go only where it leaves the ring aromatic.
+    pub(super) quaternary: bool,
 }
 
 impl Choice {
@@ -25,13 +28,38 @@ impl Choice {
         };
         atoms.sort_unstable();
         atoms.dedup();
-        (!atoms.is_empty()).then_some(Self { change, atoms })
+        let carbon = |at: u32| view.site(at).element == Element::CARBON;
+        if atoms.iter().any(|&at| !carbon(at)) {
+            atoms.retain(|&at| !carbon(at));
+        } else if atoms
+            .iter()
+            .any(|&at| view.site(at).orbit != view.site(atoms[0]).orbit)
+        {
+            // A charge that is mobile over unlike carbons: no rule says which of them takes the proton.
+            return None;
+        }
+        let quaternary = cluster.atoms.iter().any(|&at| {
+            let site = view.site(at);
+            change < 0
+                && site.element == Element::NITROGEN
+                && site.in_ring
+                && site.mobile
+                && site.bonds.len() == 3
+        });
+        (!atoms.is_empty()).then_some(Self {
+            change,
+            atoms,
+            quaternary,
+        })
     }
 
     /// The atom, if the constitution relates all of them: any is as good as the first.
     pub(super) fn settled(&self, view: &View) -> Option<u32> {
         let (&first, rest) = self.atoms.split_first()?;
         let orbit = view.site(first).orbit;
+        if self.quaternary {
+            return None;
+        }
         rest.iter()
             .all(|&at| view.site(at).orbit == orbit)
             .then_some(first)

@@ -82,10 +82,27 @@ fn chalcogen_acidity(view: &View, at: u32) -> Option<u8> {
                 2
             }
         }
+        // Vinylogous acids: 1,3-diketones, hydroxyquinones, tetronic acids.
+        "C" if is_vinylogous(view, bond.to) => 3,
         // Phenols and enols before alcohols.
         "C" if centre.is_saturated() => 7,
         _ => 6,
     })
+}
+
+/// Whether a carbon has a fixed double bond to the neighbour of a carbonyl group.
+fn is_vinylogous(view: &View, at: u32) -> bool {
+    let carbonyl = |at: u32| {
+        let mut neighbours = view.neighbours(at);
+        neighbours.any(|(other, bond)| bond.order == 2 && is_chalcogen(other.element))
+    };
+    let bonds = view.site(at).bonds.iter();
+    let double = bonds.filter(|bond| bond.order == 2 && !bond.mobile);
+    double
+        .flat_map(|bond| view.site(bond.to).bonds.iter())
+        .any(|bond| {
+            bond.to != at && view.site(bond.to).element == Element::CARBON && carbonyl(bond.to)
+        })
 }
 
 fn nitrogen_acidity(view: &View, at: u32) -> Option<u8> {

@@ -50,6 +50,13 @@ fn check(state: &str, neutral: &str) {
 #[case::cytidine_core("CN1C=CC(N)=[NH+]C1=O", "CN1C=CC(N)=NC1=O")]
 #[case::tetrazole_and_dihydropyrimidine("C1=CC(C)n2nnnc2[N-]1", "C1=CC(C)n2nnnc2N1")]
 #[case::pyrimidinium_lactam("CC1=[N+](C)C(C)=CC(=O)N1", "CC1=NC(=O)C=C(C)N1C")]
+#[case::flavone_imine("CC1=CC(=[NH+]C)c2ccccc2O1", "CC1=CC(=NC)c2ccccc2O1")]
+#[case::porphine_dication(
+    "C1=CC2=CC3=CC=C(N3)C=C3C=CC(=[NH+]3)C=C3C=CC(N3)=CC1=[NH+]2",
+    "C1=CC2=CC3=CC=C(N3)C=C3C=CC(=N3)C=C3C=CC(N3)=CC1=N2"
+)]
+#[case::cyclopentadienide("[CH-]1C=CC=C1", "C1C=CC=C1")]
+#[case::allyl_anion("[CH2-]C=C", "CC=C")]
 #[case::thiolate("CC[S-]", "CCS")]
 #[case::cyanide("[C-]#N", "C#N")]
 #[case::azide("[N-]=[N+]=[N-]", "N=[N+]=[N-]")]
@@ -83,6 +90,9 @@ fn neutral_where_protons_can_do_it(#[case] state: &str, #[case] neutral: &str) {
 #[case::ammonium_fluoroborate("C[NH3+].F[B-](F)(F)F")]
 #[case::ylide("C=P(C)(C)C")]
 #[case::pyridine_imide("[N-](C(C)=O)[n+]1ccccc1")]
+#[case::dequalinium_half("Cc1cc(N)c2ccccc2[n+]1C")]
+#[case::pyridinium_enolate("O=C1C=CC(=O)C([O-])=C1[n+]1ccccc1")]
+#[case::methylcyclopentadienide("C[C-]1C=CC=C1")]
 #[case::hydrazone("CC=NN")]
 fn what_no_proton_takes_away_stays(#[case] text: &str) {
     check(text, text);

@@ -1,5 +1,7 @@
 //! A molecule as the charge axis sees it: one placement of its charges, and where they can be as well.
 
+use std::collections::{BTreeMap, BTreeSet};
+
 use molkin_graph::{BondOrder, Canonical, Element};
 
 /// An atom, by its position in canonical order.
@@ -90,7 +92,7 @@ impl View {
                 orbit,
             })
             .collect();
-        let mut orders = std::collections::BTreeMap::new();
+        let mut orders = BTreeMap::new();
         for &(a, b, order) in &form.bonds {
             orders.insert((a, b), order);
         }
@@ -126,6 +128,12 @@ impl View {
     pub(super) fn neighbours(&self, at: u32) -> impl Iterator<Item = (&Site, Bond)> {
         let bonds = self.site(at).bonds.iter();
         bonds.map(|&bond| (self.site(bond.to), bond))
+    }
+
+    /// How many kinds of atoms there are: the fewer, the more symmetric.
+    pub(super) fn orbit_count(&self) -> usize {
+        let orbits = self.sites.iter().map(|site| site.orbit);
+        orbits.collect::<BTreeSet<u32>>().len()
     }
 
     /// Carbonyl and thiocarbonyl groups of acids, esters and amides.
