@@ -46,7 +46,16 @@ fn records_in_words(counts: &Counts, held: Option<u64>) -> String {
         ..
     } = counts;
     let held = held.map_or_else(String::new, |held| format!(", {held} of them held"));
-    format!("{records} records{held}, {failed} failed, {distinct} different compounds")
+    let (records, compounds) = (
+        counted(*records, "record"),
+        counted(*distinct, "different compound"),
+    );
+    format!("{records}{held}, {failed} failed, {compounds}")
+}
+
+fn counted(number: u64, noun: &str) -> String {
+    let plural = if number == 1 { "" } else { "s" };
+    format!("{number} {noun}{plural}")
 }
 
 /// Sizes that are named.
@@ -65,7 +74,8 @@ fn groups_in_words(counts: &Counts, column: Column) -> String {
         return format!("{name}: none");
     }
     let members = counts.members(column);
-    let mut text = format!("{name}: {members} records in {groups} groups (");
+    let (members, number) = (counted(members, "record"), counted(groups, "group"));
+    let mut text = format!("{name}: {members} in {number} (");
     for (at, (size, groups)) in counts.sizes(column).take(SIZES).enumerate() {
         let comma = if at > 0 { ", " } else { "" };
         // Writing to a string does not fail.

@@ -22,8 +22,47 @@ fn a_shelf_and_a_delivery() {
         "salt,charge",
     ]);
     assert_eq!(outcome.status, 2);
-    assert_snapshot!(rows(&outcome.out), @"");
-    assert_snapshot!(outcome.words, @"");
+    assert_snapshot!(rows(&outcome.out), @r#"
+    source,record,name,status,duplicates,possible_duplicates,stereo,forms,isomers,first_source,first_record,relation,kind,open,message,explanation
+    held.smi,1,QM-101,ok,1,,,,,,,,,,,
+    held.smi,2,QM-102,ok,,1,,,,,,,,,,
+    held.smi,3,QM-103,ok,,,1,,,,,,,,,
+    held.smi,4,QM-104,ok,,,2,,1,,,,,,,
+    held.smi,5,QM-105,ok,,2,3,,2,,,,,,,
+    held.smi,6,QM-106,ok,,,4,,,,,,,,,
+    held.smi,7,QM-107,ok,,,,,3,,,,,,,
+    held.smi,8,QM-108,ok,,,,1,,,,,,,,
+    held.smi,9,QM-109,ok,2,,,,,,,,,,,
+    held.smi,11,QM-111,ok,3,,,,2,held.smi,5,constitutional,,false,,
+    held.smi,12,QM-112,ok,,,,2,4,,,,,,,
+    held.smi,13,QM-113,ok,4,,,,1,held.smi,4,constitutional,,false,,
+    held.smi,14,QM-114,ok,,,,,5,,,,,,,
+    held.smi,15,QM-115,ok,5,,,,,,,,,,,
+    vendor.sdf,1,QM-101,ok,1,,,,,held.smi,1,identical,,false,,
+    vendor.sdf,2,QM-103,ok,,,1,,,held.smi,3,stereo,enantiomers,false,,
+    vendor.sdf,3,QM-102,ok,,1,,,,held.smi,2,identical,,true,,
+    vendor.sdf,4,QM-104,ok,,,2,,1,held.smi,4,stereo,diastereomers,false,,
+    vendor.sdf,5,QM-105,ok,,2,3,,2,held.smi,5,stereo,undetermined,false,,
+    vendor.sdf,6,QM-106,ok,,,4,,,held.smi,6,stereo,unresolved,false,,
+    vendor.sdf,7,QM-107,ok,,,,,3,held.smi,7,constitutional,,false,,
+    vendor.sdf,8,QM-108,ok,,,,1,,held.smi,8,not-isomers,,false,,
+    vendor.sdf,9,QM-109,ok,2,,,,,held.smi,9,identical,,false,,
+    vendor.sdf,10,QM-110,error,,,,,,,,,,,"349:4: no-such-atom: atom 14 is named, but 11 atoms are declared",
+    vendor.sdf,11,QM-111,ok,3,,,,2,held.smi,11,identical,,false,,
+    vendor.sdf,12,QM-112,ok,,,,2,4,held.smi,12,constitutional,,false,,
+    vendor.sdf,13,QM-113,ok,4,,,,1,held.smi,13,identical,,false,,
+    vendor.sdf,14,QM-116,ok,,,,,5,held.smi,14,constitutional,,false,,
+    vendor.sdf,15,QM-115,ok,5,,,,,held.smi,15,identical,,false,,
+    "#);
+    assert_snapshot!(outcome.words, @r#"
+    molkin: 1 of 30 records failed
+    molkin: 30 records, 1 failed, 23 different compounds
+    molkin: duplicates: 10 records in 5 groups (5 of 2)
+    molkin: possible duplicates: 4 records in 2 groups (2 of 2)
+    molkin: stereoisomers: 8 records in 4 groups (4 of 2)
+    molkin: forms of one parent: 4 records in 2 groups (2 of 2)
+    molkin: isomers: 14 records in 5 groups (3 of 2, 2 of 4)
+    "#);
 }
 
 #[test]
@@ -40,8 +79,27 @@ fn a_delivery_against_a_shelf() {
         "--explain-limit",
         "2",
     ]);
-    assert_snapshot!(outcome.out, @"");
-    assert_snapshot!(outcome.words, @"");
+    assert_snapshot!(outcome.out, @r#"
+    source,record,name,status,duplicates,possible_duplicates,stereo,forms,isomers,first_source,first_record,relation,kind,open,message,explanation
+    vendor.sdf,1,QM-101,ok,1,,,,,held.smi,1,identical,,false,,
+    vendor.sdf,2,QM-103,ok,,,1,,,held.smi,3,stereo,enantiomers,false,,"Enantiomers: mirror images that do not coincide; the only stereocentre is inverted: C3 (R in A, S in B)."
+    vendor.sdf,4,QM-104,ok,,,2,,1,held.smi,4,stereo,diastereomers,false,,"Diastereomers (cis/trans isomers): the only double bond is of opposite geometry: C3=C4 (E in A, Z in B)."
+    vendor.sdf,5,QM-105,ok,,2,3,,2,held.smi,5,stereo,undetermined,false,,
+    vendor.sdf,6,QM-106,ok,,,4,,,held.smi,6,stereo,unresolved,false,,
+    vendor.sdf,9,QM-109,ok,2,,,,,held.smi,9,identical,,false,,
+    vendor.sdf,11,QM-111,ok,3,,,,2,held.smi,11,identical,,false,,
+    vendor.sdf,13,QM-113,ok,4,,,,1,held.smi,13,identical,,false,,
+    vendor.sdf,15,QM-115,ok,5,,,,,held.smi,15,identical,,false,,
+    "#);
+    assert_snapshot!(outcome.words, @r#"
+    molkin: 1 of 15 records failed
+    molkin: the first 2 of 3 records are explained; --explain-limit N explains more
+    molkin: 30 records, 15 of them held, 1 failed, 23 different compounds
+    molkin: duplicates: 10 records in 5 groups (5 of 2)
+    molkin: possible duplicates: 4 records in 2 groups (2 of 2)
+    molkin: stereoisomers: 8 records in 4 groups (4 of 2)
+    molkin: isomers: 14 records in 5 groups (3 of 2, 2 of 4)
+    "#);
 }
 
 /// The same facts in all forms of the table.
@@ -86,7 +144,9 @@ fn the_summary_is_an_object() {
     ]);
     assert_eq!(outcome.status, 2);
     let summary = std::fs::read_to_string(folder.path().join("s.json")).unwrap();
-    assert_snapshot!(summary, @"");
+    assert_snapshot!(summary, @r#"
+    {"version":1,"records":5,"held":1,"failed":1,"distinct":2,"duplicates":{"groups":1,"records":3,"sizes":[{"size":3,"groups":1}]},"possible_duplicates":{"groups":0,"records":0,"sizes":[]},"stereo":{"groups":0,"records":0,"sizes":[]},"forms":{"groups":0,"records":0,"sizes":[]},"isomers":{"groups":1,"records":4,"sizes":[{"size":4,"groups":1}]}}
+    "#);
 }
 
 /// Where the rows lie, and how a file comes, makes no difference.

@@ -2,12 +2,15 @@
 
 use std::num::NonZeroUsize;
 
-use molkin_formats::source::{Format, ReadOptions, Records};
-use molkin_graph::Limits;
+use molkin_formats::{
+    smiles,
+    source::{Format, ReadOptions, Records},
+};
+use molkin_graph::{Limits, Orderer};
 use rstest::rstest;
 
 use super::*;
-use crate::{Axes, Axis, Normaliser, StereoKind, parallel::Plan};
+use crate::{Axes, Axis, Normaliser, Relation, StereoKind, Structure, parallel::Plan, relate};
 
 const PLAN: Plan = Plan {
     threads: NonZeroUsize::MIN,
@@ -134,4 +137,69 @@ fn identity_is_not_concluded_from_keys(#[case] memory: usize, #[case] change: fn
         assert_eq!(other_counts.groups(column), counts.groups(column));
     }
     assert_eq!(other_counts.distinct, counts.distinct);
+}
+
+/// The structures of the committed pairs.
+fn structures_of_pairs() -> Vec<String> {
+    let folder = concat!(env!("CARGO_MANIFEST_DIR"), "/../../fixtures/pairs");
+    let mut tables: Vec<_> = std::fs::read_dir(folder)
+        .unwrap()
+        .map(|entry| entry.unwrap().path())
+        .collect();
+    tables.sort();
+    let texts = tables
+        .iter()
+        .map(|path| std::fs::read_to_string(path).unwrap());
+    texts
+        .flat_map(|text| {
+            let rows = text.lines().skip(1).map(str::to_owned);
+            rows.collect::<Vec<_>>()
+        })
+        .flat_map(|row| {
+            let cells = row.split('\t').skip(1).take(2).map(str::to_owned);
+            cells.collect::<Vec<_>>()
+        })
+        .collect()
+}
+
+/// Every pair of the committed structures stands in the groups that [`relate`] puts it in.
+#[test]
+fn groups_are_those_of_all_pairs() {
+    let texts = structures_of_pairs();
+    let (records, _) = grouped(&(texts.join("\n") + "\n"), 0, |_| {});
+    let mut orderer = Orderer::new(Limits::default());
+    let structures: Vec<Option<Structure>> = texts
+        .iter()
+        .map(|text| Structure::new(&mut orderer, smiles::parse(text).ok()?).ok())
+        .collect();
+    let together = |a: usize, b: usize, column| {
+        let number = |at: usize| records[at].group(column).map(|group| group.number);
+        number(a).is_some() && number(a) == number(b)
+    };
+    let mut pairs = 0;
+    for (b, second) in structures.iter().enumerate() {
+        for (a, first) in structures[..b].iter().enumerate() {
+            let (Some(first), Some(second)) = (first, second) else {
+                continue;
+            };
+            pairs += 1;
+            let verdict = relate(&mut orderer, first, second).unwrap();
+            let is = |column| together(a, b, column);
+            let context = format!("{} {} {verdict:?}", texts[a], texts[b]);
+            let same = verdict.relation == Relation::Identical;
+            assert_eq!(is(Column::Duplicates), same && !verdict.open, "{context}");
+            let stereo = matches!(verdict.relation, Relation::Stereo(_));
+            // Identical records are in a family if it has another compound.
+            assert!(!stereo || is(Column::Stereo), "{context}");
+            assert!(!is(Column::Stereo) || stereo || same, "{context}");
+            let possible = verdict.relation == Relation::Stereo(StereoKind::Undetermined);
+            let possible = possible || (same && verdict.open);
+            assert!(!possible || is(Column::PossibleDuplicates), "{context}");
+            let isomers = verdict.relation == Relation::Constitutional;
+            assert!(!isomers || is(Column::Isomers), "{context}");
+            let other = verdict.relation == Relation::NotIsomers;
+            assert!(!(is(Column::Isomers) && other), "{context}");
+        }
+    }
+    assert!(pairs > 200_000, "{pairs} pairs");
 }
