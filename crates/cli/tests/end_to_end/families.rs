@@ -6,7 +6,7 @@ use serde_json::Value;
 
 use crate::runner::{Folder, demo, repository, run, with_input};
 
-/// The columns from `record` on of the rows that have a number or a message.
+/// The rows that have a number or a message.
 fn rows(out: &str) -> String {
     let rows = out.lines().filter(|row| !row.contains(",ok,,,,,,,,,,,"));
     rows.map(|row| format!("{row}\n")).collect()
@@ -160,7 +160,6 @@ fn spilling_changes_nothing(#[case] options: &[&str]) {
         let mark = ["@", "@@", ""][number % 3];
         text.push_str(&format!("{chain}[C{mark}H](O)F {number}\n"));
     }
-    // The simplest centre has two equal ligands in no chain, and what is unmarked is open.
     let arguments = ["families", "-", "--threads", "2"];
     let expected = with_input(&arguments, &text);
     let found = with_input(&[&arguments[..], options].concat(), &text);
@@ -199,7 +198,8 @@ fn standard_input_is_read_once() {
 #[test]
 fn the_readme_shows_what_is_written() {
     let readme = std::fs::read_to_string(repository().join("README.md")).unwrap();
-    let (_, section) = readme.split_once("molkin families ").unwrap();
+    let (_, section) = readme.split_once("## Whole files\n").unwrap();
+    let (_, section) = section.split_once("molkin families ").unwrap();
     let (arguments, section) = section.split_once('\n').unwrap();
     let (_, shown) = section.split_once("```text\n").unwrap();
     let (shown, _) = shown.split_once("```").unwrap();

@@ -24,6 +24,32 @@ use super::{
 const SORTERS: usize = 8;
 
 /// Takes records in their order and groups them in the end.
+///
+/// # Examples
+/// ```
+/// use std::num::NonZeroUsize;
+/// use molkin_formats::source::{Format, ReadOptions, Records};
+/// use molkin_graph::Limits;
+/// use molkin_relate::families::{Column, Gatherer, Reading};
+/// use molkin_relate::parallel::Plan;
+///
+/// let (options, limits) = (ReadOptions::default(), Limits::default());
+/// let mut reading = Reading::new(&options, limits);
+/// let mut gatherer = Gatherer::new(1 << 20)?;
+/// let file = "CCO\nCOC\nOCC\n";
+/// let mut records = Records::new("a.smi", file.as_bytes(), Format::Smiles, options.clone());
+/// while let Some(raw) = records.cut() {
+///     gatherer.add(&reading.read(raw?))?;
+/// }
+/// let plan = Plan { threads: NonZeroUsize::MIN, chunk: NonZeroUsize::MIN };
+/// let families = gatherer.group(&options, limits, plan)?;
+/// let mut first_of_duplicates = Vec::new();
+/// for grouped in families.into_records() {
+///     first_of_duplicates.push(grouped?.group(Column::Duplicates).map(|group| group.first));
+/// }
+/// assert_eq!(first_of_duplicates, [Some(0), None, Some(0)]);
+/// # Ok::<(), Box<dyn std::error::Error>>(())
+/// ```
 pub struct Gatherer {
     /// Bytes for each sorter.
     memory: usize,
