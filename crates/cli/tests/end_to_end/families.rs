@@ -113,7 +113,13 @@ fn objects_say_what_lines_say() {
         .map(|line| line.split(',').collect::<Vec<_>>());
     let header = lines.next().unwrap();
     assert_eq!(objects.lines().count(), 30);
-    for (line, object) in lines.zip(objects.lines()) {
+    let mut compared = 0;
+    // A message with commas stands in quotes, so that row is not as easily cut.
+    for (line, object) in lines
+        .zip(objects.lines())
+        .filter(|(line, _)| line.len() == header.len())
+    {
+        compared += 1;
         let object: Value = serde_json::from_str(object).unwrap();
         assert_eq!(object["version"], 1);
         for (column, text) in header.iter().zip(line) {
@@ -122,13 +128,10 @@ fn objects_say_what_lines_say() {
                 Some(Value::String(text)) => text.clone(),
                 Some(other) => other.to_string(),
             };
-            // A message has commas and stands in quotes.
-            assert!(
-                value == text || value.contains(','),
-                "{column}: {value} and {text}"
-            );
+            assert_eq!(value, text, "{column}");
         }
     }
+    assert_eq!(compared, 29);
 }
 
 #[test]
