@@ -20,6 +20,7 @@ mod graph6;
 mod kekule;
 mod kinds;
 mod molfile;
+mod moves;
 mod numbers;
 mod pairs;
 mod renumber;
@@ -41,13 +42,14 @@ pub use crate::{
     graph6::Graph,
     kekule::other_kekule_form,
     kinds::{KindPair, definition_kinds, fixture_kinds},
+    moves::{Readings, SubstituentNames},
     molfile::{molfiles, renumbered_molfile},
     numbers::Numbers,
     pairs::{Expected, Pair, definition_pairs, fixture_pairs, grouped_pairs},
     renumber::{renumbered, renumbered_form, with_hydrogens_written},
     small::small_isomers,
     spelling::random_spelling,
-    stereo::{Markings, all_markings, completions, grouped, mirrored},
+    stereo::{Markings, all_labels, all_markings, completions, grouped, mirrored},
     tally::Tally,
     text::{Table, first_word, read_text, shared, workspace},
 };

@@ -3,8 +3,8 @@
 use std::collections::BTreeMap;
 
 use molkin_graph::{
-    DrawnStereo, Element, Ligand, Molecule, MoleculeBuilder, Parity, Polyhedron, Shape,
-    StereoElement, StereoGroup,
+    Canonical, DrawnStereo, Element, Label, Ligand, Limits, Molecule, MoleculeBuilder, Parity,
+    Polyhedron, Shape, StereoElement, StereoGroup,
 };
 
 /// The mirror image.
@@ -212,4 +212,18 @@ fn skeleton(molecule: &Molecule) -> MoleculeBuilder {
         builder.add_bond(a, b, order).unwrap();
     }
     builder
+}
+
+/// The centres, or ends, that have a CIP label, and the labels: those of the stereo elements, and those
+/// of bridgeheads whose marks say nothing about the compound.
+pub fn all_labels(canonical: &Canonical) -> Vec<([u32; 2], Label)> {
+    let limits = Limits::default();
+    let counting = canonical.stereo_elements().into_iter();
+    let idle = canonical.idle_bridgeheads().into_iter();
+    let counting = counting.zip(canonical.labels(&limits));
+    let idle = idle.zip(canonical.idle_bridgehead_labels(&limits));
+    counting
+        .chain(idle)
+        .filter_map(|(element, labelling)| Some((element.centres, labelling.label()?)))
+        .collect()
 }

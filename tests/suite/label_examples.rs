@@ -3,8 +3,7 @@
 //! Names and sections of the IUPAC recommendations of 2013 are from memory: textbook knowledge that is
 //! older than this project. Atoms count from 1; both ends of a double bond or axis are named.
 
-use molkin_graph::Limits;
-use molkin_tests::Comparer;
+use molkin_tests::{Comparer, all_labels};
 use rstest::rstest;
 
 #[rstest]
@@ -245,6 +244,25 @@ use rstest::rstest;
 #[case("P-93.5.1.4", "(E)-cyclooctene", "C1CCC/C=C/CC1", "5E 6E")]
 #[case("P-93.4.2", "(M)-penta-2,3-diene", "CC=[C@]=CC", "2M 4M")]
 #[case("P-93.4.2.3", "(Z)-hexa-2,3,4-triene", "C/C=C=C=C\\C", "2Z 5Z")]
+#[case("P-93.5.2.3", "(1R,4S)-norbornene", "C=1[C@@H]2CC[C@H](C1)C2", "2R 5S")]
+#[case(
+    "P-93.5.2.3",
+    "(1R,4S)-norbornene, one end marked",
+    "C=1[C@H]2CCC(C1)C2",
+    "2S 5R"
+)]
+#[case(
+    "P-93.5.2.3",
+    "(1R,5S)-tropan-3-one",
+    "O=C1C[C@H]2CC[C@@H](C1)N2C",
+    "4R 7S"
+)]
+#[case(
+    "P-93.5.2.3",
+    "adamantane, three like ligands",
+    "C1[C@H]2C[C@H]3C[C@@H]1C[C@@H](C2)C3",
+    ""
+)]
 fn labels_are_those_of_the_name(
     #[case] section: &str,
     #[case] name: &str,
@@ -252,12 +270,8 @@ fn labels_are_those_of_the_name(
     #[case] expected: &str,
 ) {
     let canonical = Comparer::default().canonical(text).unwrap();
-    let labels = canonical.labels(&Limits::default());
-    let mut found: Vec<(u32, String)> = canonical
-        .stereo_elements()
-        .iter()
-        .zip(labels)
-        .filter_map(|(element, labelling)| Some((element.centres, labelling.label()?)))
+    let labelled = all_labels(&canonical).into_iter();
+    let mut found: Vec<(u32, String)> = labelled
         .flat_map(|(centres, label)| centres.map(|atom| (atom + 1, label.to_string())))
         .collect();
     found.sort();

@@ -21,6 +21,12 @@ Exit status:
   1  some pairs differ
   2  trouble: something could not be read, paired or compared";
 
+const SAMPLES_HELP: &str = "\
+Exit status:
+  0  no sample is flagged
+  1  some samples are flagged
+  2  trouble: the tray or the held file could not be read";
+
 /// Says how two drawn structures are related, and shows what makes the difference.
 #[derive(Debug, Parser)]
 #[command(name = "molkin", version, after_help = format!("{INPUT_HELP}\n\n{EXIT_HELP}\n\n{CAUTION}"))]
@@ -39,6 +45,8 @@ pub(crate) enum Command {
     Families(Families),
     /// Say what is known about each record
     Describe(Describe),
+    /// Hold the labels of a tray of samples against what came
+    Samples(Box<Samples>),
 }
 
 /// Compare two structures, or two files record by record.
@@ -171,11 +179,81 @@ pub(crate) struct TableOutput {
     pub(crate) output: Option<PathBuf>,
 }
 
+/// Hold the labels of a tray of samples against what came.
+///
+/// The tray is a table with a header, a row a sample: what the label says, what came, and perhaps what
+/// was measured. Columns are found by their titles (docs/output.md) or named.
+#[derive(Debug, Args)]
+#[command(after_help = format!("{SAMPLES_HELP}\n\n{CAUTION}"))]
+pub(crate) struct Samples {
+    /// The table, or - for standard input
+    #[arg(value_name = "TRAY.csv")]
+    pub(crate) tray: OsString,
+    /// File of held structures; a label may be the name of one
+    #[arg(long, value_name = "FILE")]
+    pub(crate) held: Option<OsString>,
+    /// Ion of measured m/z that name none, such as [M+H]+ (default: all usual ones are tried)
+    #[arg(long, value_name = "ION")]
+    pub(crate) ion: Option<String>,
+    /// How far a measured m/z may be off where its row does not say
+    #[arg(long, value_name = "SIZE", default_value = "10 ppm")]
+    pub(crate) within: String,
+    /// Leave out what needs an atom map from the sentences
+    #[arg(long)]
+    pub(crate) brief: bool,
+    /// Form of the output
+    #[arg(long, value_enum, default_value_t = SamplesFormat::Text)]
+    pub(crate) format: SamplesFormat,
+    #[command(flatten)]
+    pub(crate) columns: TrayColumns,
+    #[command(flatten)]
+    pub(crate) working: Working,
+    #[command(flatten)]
+    pub(crate) chemistry: Chemistry,
+}
+
+/// Columns of a tray, by title.
+#[derive(Debug, Args)]
+#[command(next_help_heading = "Columns")]
+pub(crate) struct TrayColumns {
+    /// What a sample is called
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) id: Option<String>,
+    /// Its plate
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) plate: Option<String>,
+    /// Its well, such as B7
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) well: Option<String>,
+    /// What its label says: SMILES, molfile, name of a file, or name in --held
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) label: Option<String>,
+    /// What came, in the same ways
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) received: Option<String>,
+    /// A measured m/z
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) mz: Option<String>,
+    /// The ion that was measured
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) adduct: Option<String>,
+    /// How far the m/z may be off
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) tolerance: Option<String>,
+    /// A measured formula
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) formula: Option<String>,
+    /// A remark, which is passed on
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) remark: Option<String>,
+}
+
 /// What is overlooked when records are compared or keyed.
 #[derive(Debug, Args)]
 #[command(next_help_heading = "Forms of one compound")]
 pub(crate) struct Forms {
-    /// Axes to overlook, separated by commas: salt, charge, tautomer, ring-chain, isotope, stereo
+    /// Axes to overlook, separated by commas: salt, charge, tautomer, ring-chain, isotope, stereo,
+    /// open-stereo (compare only)
     #[arg(long, value_name = "AXES")]
     pub(crate) overlook: Option<Axes>,
     /// Table of further counter-ions and solvents (tab-separated: salt, structure, kind)
@@ -204,6 +282,20 @@ impl Working {
 #[derive(Debug, Args)]
 #[command(next_help_heading = "Reading")]
 pub(crate) struct Reading {
+    #[command(flatten)]
+    pub(crate) chemistry: Chemistry,
+    /// Column of a table that holds the structures (default: found by its title)
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) structure: Option<String>,
+    /// Column of a table that holds the names (default: found by its title)
+    #[arg(long, value_name = "COLUMN")]
+    pub(crate) name: Option<String>,
+}
+
+/// How structures are read.
+#[derive(Debug, Args)]
+#[command(next_help_heading = "Reading")]
+pub(crate) struct Chemistry {
     /// Refuse SMILES against the standard that are read with a note otherwise
     #[arg(long)]
     pub(crate) strict: bool,
@@ -213,12 +305,6 @@ pub(crate) struct Reading {
     /// What the marks of a molfile mean whose chiral flag isn't set
     #[arg(long, value_enum, default_value_t = FlagZero::Absolute)]
     pub(crate) flag_zero: FlagZero,
-    /// Column of a table that holds the structures (default: found by its title)
-    #[arg(long, value_name = "COLUMN")]
-    pub(crate) structure: Option<String>,
-    /// Column of a table that holds the names (default: found by its title)
-    #[arg(long, value_name = "COLUMN")]
-    pub(crate) name: Option<String>,
 }
 
 /// Tables of valences: see docs/formats.md.
@@ -264,6 +350,17 @@ pub(crate) enum Format {
     Text,
     /// One array of objects
     Json,
+    /// One object a line
+    Jsonl,
+}
+
+/// How results about a tray are written.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub(crate) enum SamplesFormat {
+    /// For reading, what needs a person first
+    Text,
+    /// A row a sample
+    Csv,
     /// One object a line
     Jsonl,
 }

@@ -119,7 +119,7 @@ impl<'r> Comparison<'r> {
     fn pairs<'v>(
         &mut self,
         verdicts: &Verdicts<'v>,
-        pairs: impl Iterator<Item = [Side<'v>; 2]>,
+        mut pairs: impl Iterator<Item = [Side<'v>; 2]>,
     ) -> io::Result<()> {
         // An atom map may take thousands of times as long as a pair without one.
         let chunk = if self.brief { 32 } else { 1 };
@@ -133,7 +133,14 @@ impl<'r> Comparison<'r> {
             tally,
             ..
         } = self;
-        in_order(verdicts, plan, pairs, |verdict| {
+        let next = |pair: &mut Option<_>| {
+            *pair = pairs.next();
+            pair.is_some()
+        };
+        in_order(verdicts, plan, next, |verdict| {
+            let Some(verdict) = verdict.take() else {
+                return Ok(());
+            };
             tally.add(verdict.outcome);
             report.count(verdict.outcome.status());
             report.progress().done();

@@ -4,16 +4,13 @@ use std::io;
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions};
 use molkin_graph::{Limits, Orderer};
-use molkin_relate::{
-    parallel::Work,
-    wire::{self, Prepared},
-};
+use molkin_relate::wire::{self, Prepared};
 
 use crate::{
     args::{Describe, Format},
     input,
     output::{Style, json, text},
-    records::{self, Event, Inputs, Made},
+    records::{self, Entries, Inputs},
     report::Report,
 };
 
@@ -27,8 +24,8 @@ pub(crate) fn run(options: &Describe, report: &mut Report) -> io::Result<()> {
         format: options.format,
         style: report.style(),
     };
-    records::each(&work, inputs, &options.working, report, |report, _, object: Vec<u8>| {
-        objects.write(report.out(), &object)
+    records::each(&work, inputs, &options.working, report, |report, object| {
+        objects.write(report.out(), object)
     })?;
     objects.finish(report.out())
 }
@@ -40,20 +37,8 @@ struct Descriptions<'r> {
     style: Style,
 }
 
-impl Descriptions<'_> {
-    fn text(&self, described: &wire::Describe, prepared: &Prepared) -> io::Result<Vec<u8>> {
-        let mut text = Vec::new();
-        match self.format {
-            Format::Text => text::describe::write(&mut text, self.style, described, prepared)?,
-            Format::Json | Format::Jsonl => serde_json::to_writer(&mut text, described)?,
-        }
-        Ok(text)
-    }
-}
-
-impl Work for Descriptions<'_> {
-    type Item = Event<RawRecord>;
-    type Output = Event<Made>;
+impl Entries for Descriptions<'_> {
+    type Made = Vec<u8>;
     type Scratch = (Parser, Orderer);
 
     fn scratch(&self) -> (Parser, Orderer) {
@@ -61,22 +46,21 @@ impl Work for Descriptions<'_> {
         (Parser::new(self.reading), orderer)
     }
 
-    fn run(
+    fn write(
         &self,
         (parser, orderer): &mut (Parser, Orderer),
-        event: Event<RawRecord>,
-    ) -> Event<Made> {
-        event.map(|source, raw| {
-            let prepared = Prepared::new(orderer, source, parser.parse(raw));
-            let described = wire::describe(&prepared, &Limits::default());
-            Made {
-                content: self.text(&described, &prepared),
-                fine: described.errors.is_none(),
-            }
-        })
-    }
-
-    fn bytes(event: &Event<RawRecord>) -> usize {
-        event.bytes()
+        source: &str,
+        record: &mut RawRecord,
+        text: &mut Vec<u8>,
+    ) -> io::Result<bool> {
+        text.clear();
+        let outcome = parser.parse(std::mem::take(record));
+        let prepared = Prepared::new(orderer, source, outcome);
+        let described = wire::describe(&prepared, &Limits::default());
+        match self.format {
+            Format::Text => text::describe::write(text, self.style, &described, &prepared)?,
+            Format::Json | Format::Jsonl => serde_json::to_writer(text, &described)?,
+        }
+        Ok(described.errors.is_none())
     }
 }

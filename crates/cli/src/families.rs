@@ -8,8 +8,9 @@ use std::{ffi::OsString, io};
 use molkin_formats::source::{RawRecord, ReadOptions};
 use molkin_graph::Limits;
 use molkin_relate::{
+    Axis,
     families::{Families, Gathered, Gatherer, Reading},
-    parallel::{Plan, Work},
+    parallel::Plan,
     wire::Sources,
 };
 
@@ -17,7 +18,7 @@ use crate::{
     args,
     forms::Forms,
     input,
-    records::{self, CHUNK, Event, Inputs, Made},
+    records::{self, CHUNK, Entries, Inputs},
     report::Report,
     run::Failure,
 };
@@ -31,6 +32,10 @@ pub(crate) fn run(options: &args::Families, report: &mut Report) -> Result<(), F
         Ok(forms) => forms,
         Err(message) => return Ok(report.trouble(message)?),
     };
+    if forms.overlook.contains(Axis::OpenStereo) {
+        report.trouble("open-stereo is about two records: families cannot overlook it")?;
+        return Ok(());
+    }
     let reading = input::read_options(&options.reading);
     let work = Read {
         reading: &reading,
@@ -109,21 +114,15 @@ impl Gathering {
         let mut failure = None;
         let inputs = Inputs::new(inputs, work.reading);
         let working = &options.working;
-        records::each(
-            work,
-            inputs,
-            working,
-            report,
-            |_, source, read: Box<Gathered>| {
-                if read.index() == 1 {
-                    sources.begin(gatherer.records(), source);
-                }
-                gatherer.add(&read).map_err(|error| {
-                    failure = Some(error);
-                    io::Error::other("temporary files")
-                })
-            },
-        )
+        records::each(work, inputs, working, report, |_, read: &mut Arrived| {
+            if read.gathered.index() == 1 {
+                sources.begin(gatherer.records(), &read.source);
+            }
+            gatherer.add(&read.gathered).map_err(|error| {
+                failure = Some(error);
+                io::Error::other("temporary files")
+            })
+        })
         .map_err(|error| failure.map_or(Failure::Output(error), Failure::Temporary))
     }
 }
@@ -134,9 +133,15 @@ struct Read<'r> {
     forms: Forms,
 }
 
-impl Work for Read<'_> {
-    type Item = Event<RawRecord>;
-    type Output = Event<Made<Box<Gathered>>>;
+/// A record, with the name of its source where it is the first one there.
+#[derive(Default)]
+struct Arrived {
+    source: String,
+    gathered: Gathered,
+}
+
+impl Entries for Read<'_> {
+    type Made = Arrived;
     type Scratch = Reading;
 
     fn scratch(&self) -> Reading {
@@ -145,17 +150,17 @@ impl Work for Read<'_> {
         Reading::new(self.reading, limits).with_forms(normaliser, self.forms.overlook)
     }
 
-    fn run(&self, reading: &mut Reading, event: Event<RawRecord>) -> Self::Output {
-        event.map(|_, raw| {
-            let gathered = reading.read(raw);
-            Made {
-                fine: gathered.is_fine(),
-                content: Ok(Box::new(gathered)),
-            }
-        })
-    }
-
-    fn bytes(event: &Event<RawRecord>) -> usize {
-        event.bytes()
+    fn write(
+        &self,
+        reading: &mut Reading,
+        source: &str,
+        record: &mut RawRecord,
+        made: &mut Arrived,
+    ) -> io::Result<bool> {
+        reading.read_into(record, &mut made.gathered);
+        if made.gathered.index() == 1 {
+            source.clone_into(&mut made.source);
+        }
+        Ok(made.gathered.is_fine())
     }
 }

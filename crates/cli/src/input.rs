@@ -15,7 +15,7 @@ use molkin_formats::{
 };
 use thiserror::Error;
 
-use crate::args::{FlagZero, Reading, Valences};
+use crate::args::{Chemistry, FlagZero, Reading, Valences};
 
 /// What an argument means.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -52,19 +52,27 @@ impl<'a> Meaning<'a> {
 
 /// What the arguments ask of the readers.
 pub(crate) fn read_options(reading: &Reading) -> ReadOptions {
+    let mut options = structure_options(&reading.chemistry);
+    // No output has them.
+    options.without_properties = true;
+    options.columns.structure.clone_from(&reading.structure);
+    options.columns.name.clone_from(&reading.name);
+    options
+}
+
+/// What the arguments ask of the readers of structures.
+pub(crate) fn structure_options(chemistry: &Chemistry) -> ReadOptions {
     let mut options = ReadOptions::default();
-    options.smiles.strict = reading.strict;
-    options.molfile.valences = match reading.valences {
+    options.smiles.strict = chemistry.strict;
+    options.molfile.valences = match chemistry.valences {
         Valences::Early => ValenceTable::Early,
         Valences::Late => ValenceTable::Late,
     };
-    options.molfile.flag_zero = match reading.flag_zero {
+    options.molfile.flag_zero = match chemistry.flag_zero {
         FlagZero::Absolute => molfile::FlagZero::Absolute,
         FlagZero::Mixture => molfile::FlagZero::Mixture,
         FlagZero::Relative => molfile::FlagZero::Relative,
     };
-    options.columns.structure.clone_from(&reading.structure);
-    options.columns.name.clone_from(&reading.name);
     options
 }
 
@@ -161,16 +169,32 @@ impl Input {
     }
 
     fn read(&mut self) -> Option<RawRecord> {
+        let mut record = RawRecord::default();
+        self.read_into(&mut record).then_some(record)
+    }
+
+    fn read_into(&mut self, record: &mut RawRecord) -> bool {
         if self.ended {
-            return None;
+            return false;
         }
-        match self.records.cut() {
-            Some(Ok(record)) => return Some(record),
-            Some(Err(failure)) => self.failure = Some(failure),
-            None => {}
+        match self.records.cut_into(record) {
+            Ok(true) => return true,
+            Ok(false) => {}
+            Err(failure) => self.failure = Some(failure),
         }
         self.ended = true;
-        None
+        false
+    }
+
+    /// As the iterator, in place of a record that is done with; false where there is no other.
+    pub(crate) fn next_into(&mut self, record: &mut RawRecord) -> bool {
+        match self.ahead.pop_front() {
+            Some(next) => {
+                *record = next;
+                true
+            }
+            None => self.read_into(record),
+        }
     }
 }
 

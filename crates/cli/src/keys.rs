@@ -5,7 +5,7 @@ use std::io;
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 use molkin_graph::Limits;
 use molkin_relate::{
-    parallel::Work,
+    Axis,
     wire::{KeyRow, KeyRows},
 };
 
@@ -13,21 +13,24 @@ use crate::{
     args::{Keys, TableFormat},
     forms::Forms,
     input,
-    output::table::{self, Lines, Table},
-    records::{self, Event, Inputs, Made},
+    output::table::{Made, Table},
+    records::{self, Entries, Inputs},
     report::Report,
 };
 
 /// Writes one row for every record of every input, in order.
 pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
     let format = options.table.format;
-    if !report.prepare_table(&options.table)? {
-        return Ok(());
-    }
     let forms = match Forms::new(&options.forms) {
         Ok(forms) => forms,
         Err(message) => return report.trouble(message),
     };
+    if forms.overlook.contains(Axis::OpenStereo) {
+        return report.trouble("open-stereo is about two records: keys cannot overlook it");
+    }
+    if !report.prepare_table(&options.table)? {
+        return Ok(());
+    }
     let mut table = Table::begin::<KeyRow>(format, report.out())?;
     let reading = input::read_options(&options.reading);
     let inputs = Inputs::new(&options.inputs, &reading);
@@ -37,8 +40,8 @@ pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
         forms,
         further: !options.brief,
     };
-    records::each(&work, inputs, &options.working, report, |report, _, row| {
-        table.write(report.out(), &row)
+    records::each(&work, inputs, &options.working, report, |report, row| {
+        table.write(report.out(), row)
     })?;
     table.finish(report.out())
 }
@@ -56,12 +59,10 @@ struct Scratch {
     parser: Parser,
     outcome: RecordOutcome,
     rows: KeyRows,
-    lines: Lines,
 }
 
-impl Work for Rows<'_> {
-    type Item = Event<RawRecord>;
-    type Output = Event<Made<table::Made<KeyRow>>>;
+impl Entries for Rows<'_> {
+    type Made = Made<KeyRow>;
     type Scratch = Scratch;
 
     fn scratch(&self) -> Scratch {
@@ -69,7 +70,6 @@ impl Work for Rows<'_> {
         Scratch {
             parser: Parser::new(self.reading),
             outcome: RecordOutcome::default(),
-            lines: Lines::new(self.format),
             rows: KeyRows::new(limits).with_forms(
                 self.forms.normaliser(limits),
                 self.forms.overlook,
@@ -78,18 +78,16 @@ impl Work for Rows<'_> {
         }
     }
 
-    fn run(&self, scratch: &mut Scratch, event: Event<RawRecord>) -> Self::Output {
-        event.map(|source, raw| {
-            scratch.parser.parse_into(raw, &mut scratch.outcome);
-            let row = scratch.rows.row(source, &mut scratch.outcome);
-            Made {
-                fine: row.status == "ok",
-                content: scratch.lines.make(row),
-            }
-        })
-    }
-
-    fn bytes(event: &Event<RawRecord>) -> usize {
-        event.bytes()
+    fn write(
+        &self,
+        scratch: &mut Scratch,
+        source: &str,
+        record: &mut RawRecord,
+        made: &mut Made<KeyRow>,
+    ) -> io::Result<bool> {
+        scratch.parser.parse_into(record, &mut scratch.outcome);
+        let row = scratch.rows.row(source, &scratch.outcome);
+        made.fill(self.format, row)?;
+        Ok(row.status == "ok")
     }
 }

@@ -15,6 +15,7 @@ mod progress;
 mod records;
 mod report;
 mod run;
+mod samples;
 
 use std::process::ExitCode;
 

@@ -1,5 +1,6 @@
 //! Results in the forms that can be asked for.
 
+pub(crate) mod csv;
 pub(crate) mod json;
 mod style;
 pub(crate) mod table;

@@ -13,84 +13,118 @@ use crate::{
     report::Report,
 };
 
-/// What comes from the inputs, and what becomes of it.
-pub(crate) enum Event<T> {
-    /// A record of a source.
-    Record {
-        /// The name of the source.
-        source: Arc<str>,
-        /// The record, or what was made of it.
-        record: T,
-    },
-    /// An input cannot be opened, or has broken off.
+/// What is made of each record.
+pub(crate) trait Entries: Sync {
+    /// What is made: storage that is filled again and again.
+    type Made: Default + Send;
+    /// What a thread keeps from one record to the next.
+    type Scratch;
+
+    /// Scratch for one thread.
+    fn scratch(&self) -> Self::Scratch;
+
+    /// Makes it of a record of `source`, in place of one before. Returns whether all went well.
+    fn write(
+        &self,
+        scratch: &mut Self::Scratch,
+        source: &str,
+        record: &mut RawRecord,
+        made: &mut Self::Made,
+    ) -> io::Result<bool>;
+}
+
+/// The place of what comes from the inputs: a record of a source, or trouble.
+#[derive(Default)]
+struct Arrival {
+    /// The name of the source.
+    source: Arc<str>,
+    record: RawRecord,
+    /// An input cannot be opened, or has broken off: there is no record then.
+    trouble: Option<String>,
+}
+
+/// The place of what becomes of an arrival.
+#[derive(Default)]
+struct Entry<M> {
+    made: M,
+    outcome: Outcome,
+}
+
+#[derive(Default)]
+enum Outcome {
+    /// All went well.
+    #[default]
+    Fine,
+    /// The record failed, and what was made says so.
+    Failed,
+    /// Nothing was made.
+    Unwritten(io::Error),
+    /// There was no record.
     Trouble(String),
 }
 
-impl<T> Event<T> {
-    /// Works on a record and lets trouble pass.
-    pub(crate) fn map<U>(self, work: impl FnOnce(&str, T) -> U) -> Event<U> {
-        match self {
-            Self::Record { source, record } => Event::Record {
-                record: work(&source, record),
-                source,
-            },
-            Self::Trouble(message) => Event::Trouble(message),
-        }
-    }
-}
+/// Entries, as work to be shared out.
+struct Writing<'e, E>(&'e E);
 
-impl Event<RawRecord> {
-    /// Memory, roughly.
-    pub(crate) fn bytes(&self) -> usize {
-        match self {
-            Self::Record { record, .. } => record.bytes(),
-            Self::Trouble(message) => message.len(),
-        }
-    }
-}
+impl<E: Entries> Work for Writing<'_, E> {
+    type Item = Arrival;
+    type Output = Entry<E::Made>;
+    type Scratch = E::Scratch;
 
-/// What was made of a record.
-pub(crate) struct Made<T = Vec<u8>> {
-    /// What is to be written.
-    pub(crate) content: io::Result<T>,
-    /// Whether all went well.
-    pub(crate) fine: bool,
+    fn scratch(&self) -> E::Scratch {
+        self.0.scratch()
+    }
+
+    fn run(&self, scratch: &mut E::Scratch, arrival: &mut Arrival, entry: &mut Self::Output) {
+        if let Some(message) = arrival.trouble.take() {
+            entry.outcome = Outcome::Trouble(message);
+            return;
+        }
+        let (source, record) = (&arrival.source, &mut arrival.record);
+        entry.outcome = match self.0.write(scratch, source, record, &mut entry.made) {
+            Ok(true) => Outcome::Fine,
+            Ok(false) => Outcome::Failed,
+            Err(error) => Outcome::Unwritten(error),
+        };
+    }
+
+    fn bytes(arrival: &Arrival) -> usize {
+        arrival.record.bytes()
+    }
 }
 
 /// Records that go to a thread at once: passing these on costs a small part of one.
-pub(crate) const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(63);
+pub(crate) const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(255);
 
-/// Works on each record of each input and hands what was made of it to `write`, in order, with the name
-/// of the input. Inputs that cannot be opened or that break off are reported in their place, and the next one is read.
-/// Ends with the count of records that failed.
-pub(crate) fn each<W, T>(
-    work: &W,
+/// Hands what is made of each record of each input to `write`, in order. Inputs that cannot be opened
+/// or that break off are reported in their place, and the next one is read. Ends with the count of
+/// records that failed.
+pub(crate) fn each<E: Entries>(
+    entries: &E,
     inputs: Inputs<'_>,
     working: &Working,
     report: &mut Report,
-    mut write: impl FnMut(&mut Report, &str, T) -> io::Result<()>,
-) -> io::Result<()>
-where
-    T: Send,
-    W: Work<Item = Event<RawRecord>, Output = Event<Made<T>>>,
-{
+    mut write: impl FnMut(&mut Report, &mut E::Made) -> io::Result<()>,
+) -> io::Result<()> {
     let plan = Plan {
         threads: working.threads(),
         chunk: CHUNK,
     };
     let (mut records, mut failed) = (0_u64, 0_u64);
-    let items = inputs.watched(report.progress());
-    in_order(work, plan, items, |event| match event {
-        Event::Trouble(message) => report.trouble(message),
-        Event::Record { source, record } => {
-            records += 1;
-            if !record.fine {
+    let arrivals = inputs.watched(report.progress());
+    in_order(&Writing(entries), plan, arrivals, |entry| {
+        match std::mem::take(&mut entry.outcome) {
+            Outcome::Trouble(message) => return report.trouble(message),
+            Outcome::Unwritten(error) => return Err(error),
+            Outcome::Fine => {}
+            Outcome::Failed => {
                 failed += 1;
                 report.count(Status::Trouble);
             }
-            report.progress().done();
-            write(report, &source, record.content?)
         }
+        records += 1;
+        report.progress().done();
+        write(report, &mut entry.made)
     })?;
     if failed > 0 {
         report.trouble(format_args!("{failed} of {records} records failed"))?;
@@ -124,16 +158,16 @@ impl<'a> Inputs<'a> {
     }
 
     /// Tells how far it has come.
-    fn watched(mut self, progress: &Progress) -> impl Iterator<Item = Event<RawRecord>> + use<'a> {
+    fn watched(mut self, progress: &Progress) -> impl FnMut(&mut Arrival) -> bool + use<'a> {
         let progress = progress.clone();
         progress.expect(self.length);
-        std::iter::from_fn(move || {
-            let event = self.next()?;
+        move |arrival| {
+            let arrived = self.next_into(arrival);
             let open = self.open.as_ref();
             let taken = open.map_or(0, |(_, input)| input.bytes_taken());
             progress.reach(self.before + taken);
-            Some(event)
-        })
+            arrived
+        }
     }
 
     fn open(&mut self, argument: &OsString) -> Result<(), String> {
@@ -147,27 +181,35 @@ impl<'a> Inputs<'a> {
     }
 }
 
-impl Iterator for Inputs<'_> {
-    type Item = Event<RawRecord>;
-
-    fn next(&mut self) -> Option<Self::Item> {
+impl Inputs<'_> {
+    /// The next record or trouble, in place of what came before; false where there is no more.
+    fn next_into(&mut self, arrival: &mut Arrival) -> bool {
         loop {
             let Some((source, input)) = &mut self.open else {
-                let argument = self.arguments.next()?;
+                let Some(argument) = self.arguments.next() else {
+                    return false;
+                };
                 match self.open(argument) {
                     Ok(()) => continue,
-                    Err(message) => return Some(Event::Trouble(message)),
+                    Err(message) => {
+                        arrival.trouble = Some(message);
+                        return true;
+                    }
                 }
             };
-            if let Some(record) = input.next() {
-                let source = Arc::clone(source);
-                return Some(Event::Record { source, record });
+            if input.next_into(&mut arrival.record) {
+                // Threads that share a name wait for each other to count it.
+                if !Arc::ptr_eq(&arrival.source, source) {
+                    arrival.source = Arc::clone(source);
+                }
+                return true;
             }
             self.before += input.bytes_taken();
             let failure = input.failure().map(ToString::to_string);
             self.open = None;
-            if let Some(message) = failure {
-                return Some(Event::Trouble(message));
+            if failure.is_some() {
+                arrival.trouble = failure;
+                return true;
             }
         }
     }

@@ -8,6 +8,7 @@ use crate::{
     exit::Status,
     families, keys,
     report::{self, Report},
+    samples,
 };
 
 /// What ends a command early.
@@ -33,6 +34,7 @@ pub(crate) fn run(arguments: &Arguments) -> Status {
         Command::Keys(options) => keys::run(options, &mut report).map_err(Failure::from),
         Command::Families(options) => families::run(options, &mut report),
         Command::Describe(options) => describe::run(options, &mut report).map_err(Failure::from),
+        Command::Samples(options) => samples::run(options, &mut report).map_err(Failure::from),
     };
     report.progress().end();
     match outcome.and_then(|()| Ok(report.finish()?)) {

@@ -1,9 +1,6 @@
 //! Lines of a source, read one at a time and bounded.
 
-use std::{
-    io::{self, BufRead, ErrorKind},
-    ops::Range,
-};
+use std::io::{self, BufRead, ErrorKind};
 
 use memchr::memchr2;
 
@@ -12,14 +9,13 @@ use memchr::memchr2;
 #[derive(Debug)]
 pub(crate) struct Lines<R> {
     source: R,
+    /// The line read last by [`Lines::next`].
     buffer: Vec<u8>,
     number: u32,
     limit: usize,
     /// The last line ended in CR: an LF that comes next belongs to it. It isn't waited for, so that
     /// a line is handed out as soon as it is there.
     after_return: bool,
-    /// Where in the buffer the line read last stands.
-    current: Range<usize>,
 }
 
 /// One line without its end.
@@ -43,7 +39,6 @@ impl<R: BufRead> Lines<R> {
             number: 0,
             limit,
             after_return: false,
-            current: 0..0,
         }
     }
 
@@ -54,33 +49,45 @@ impl<R: BufRead> Lines<R> {
 
     /// The line read last, or its start if it was too long; empty before the first.
     pub(crate) fn current(&self) -> &[u8] {
-        &self.buffer[self.current.clone()]
+        &self.buffer
     }
 
     /// The next line, or `None` at the end of the source.
     pub(crate) fn next(&mut self) -> io::Result<Option<Line<'_>>> {
-        self.buffer.clear();
-        self.current = 0..0;
-        let Some(length) = self.fill()? else {
-            return Ok(None);
-        };
-        self.number = self.number.saturating_add(1);
-        let signed = self.number == 1 && self.buffer.starts_with(SIGNATURE);
-        let start = if signed { SIGNATURE.len() } else { 0 };
-        let whole = length - start <= self.limit;
-        let end = if whole { length } else { start + self.limit };
-        self.current = start..end;
-        Ok(Some(match whole {
+        let mut buffer = std::mem::take(&mut self.buffer);
+        buffer.clear();
+        let outcome = self.append(&mut buffer);
+        self.buffer = buffer;
+        Ok(outcome?.map(|whole| match whole {
             true => Line::Whole(self.current()),
             false => Line::TooLong(self.current()),
         }))
     }
 
-    /// Reads through the next line end and keeps what precedes it, as far as there is room. Its
+    /// Appends the next line to a text, without its end and as far as the limit allows. Whether that is
+    /// all of it; `None` at the end of the source.
+    pub(crate) fn append(&mut self, text: &mut Vec<u8>) -> io::Result<Option<bool>> {
+        let start = text.len();
+        let Some(mut length) = self.fill(text)? else {
+            return Ok(None);
+        };
+        self.number = self.number.saturating_add(1);
+        if self.number == 1 && text[start..].starts_with(SIGNATURE) {
+            text.drain(start..start + SIGNATURE.len());
+            length -= SIGNATURE.len();
+        }
+        let whole = length <= self.limit;
+        if !whole {
+            text.truncate(start + self.limit);
+        }
+        Ok(Some(whole))
+    }
+
+    /// Reads through the next line end and appends what precedes it, as far as there is room. Its
     /// length, or `None` at the end of the source.
-    fn fill(&mut self) -> io::Result<Option<usize>> {
+    fn fill(&mut self, text: &mut Vec<u8>) -> io::Result<Option<usize>> {
         // Room for the signature, so that a line of just the limit may follow it.
-        let most = self.limit.saturating_add(SIGNATURE.len());
+        let mut room = self.limit.saturating_add(SIGNATURE.len());
         let mut length = 0_usize;
         loop {
             let mut chunk = match self.source.fill_buf() {
@@ -98,8 +105,9 @@ impl<R: BufRead> Lines<R> {
             let end = memchr2(b'\n', b'\r', chunk);
             let line = &chunk[..end.unwrap_or(chunk.len())];
             length = length.saturating_add(line.len());
-            let room = most - self.buffer.len();
-            self.buffer.extend_from_slice(&line[..line.len().min(room)]);
+            let kept = line.len().min(room);
+            text.extend_from_slice(&line[..kept]);
+            room -= kept;
             taken += line.len();
             if let Some(end) = end {
                 self.after_return = chunk[end] == b'\r';

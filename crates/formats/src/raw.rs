@@ -14,10 +14,15 @@ pub(crate) struct RawText {
     pub(crate) fault: Option<ReadError>,
 }
 
+/// Bytes of storage that are kept from one record to the next.
+const MOST_KEPT: usize = 1 << 14;
+
 impl RawText {
     /// Makes room for the next record.
     pub(crate) fn begin(&mut self, first_line: u32) {
         self.text.clear();
+        // Many texts may be under way: each keeps what a common record takes, not what the longest did.
+        self.text.shrink_to(MOST_KEPT);
         self.first_line = first_line;
         self.fault = None;
     }

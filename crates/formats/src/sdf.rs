@@ -13,7 +13,7 @@ use std::io::BufRead;
 
 use crate::{
     ReadError, ReadErrorKind, Record, Span,
-    lines::{Line, Lines},
+    lines::Lines,
     molfile::{self, Block, ReadOptions, decode},
     raw::RawText,
 };
@@ -123,33 +123,31 @@ impl<R: BufRead> Records<R> {
     fn collect(&mut self, raw: &mut RawText) -> std::io::Result<Stop> {
         let limit = self.options.limits.record_bytes;
         loop {
-            let (line, whole) = match self.lines.next()? {
-                Some(Line::Whole(line)) => (line, true),
-                Some(Line::TooLong(line)) => (line, false),
-                None => return Ok(Stop::End),
+            let start = raw.text.len();
+            let Some(whole) = self.lines.append(&mut raw.text)? else {
+                return Ok(Stop::End);
             };
+            let line = &raw.text[start..];
             if whole && line.trim_ascii_end() == b"$$$$" {
+                raw.text.truncate(start);
                 return Ok(Stop::Delimiter);
             }
-            if raw.fault.is_some() {
-                continue;
+            if raw.fault.is_none() {
+                if whole && raw.text.len() < limit {
+                    raw.text.push(b'\n');
+                    continue;
+                }
+                let kind = match whole {
+                    true => ReadErrorKind::RecordTooLong { limit },
+                    false => ReadErrorKind::LineTooLong {
+                        limit: self.options.limits.line_bytes,
+                    },
+                };
+                let offset = if whole { 0 } else { line.len() };
+                let span = Span::at_offset(self.lines.number(), offset, 0);
+                raw.fault = Some(ReadError::new(kind, span, line));
             }
-            let fits = raw.text.len().saturating_add(line.len()) < limit;
-            if whole && fits {
-                raw.text.extend_from_slice(line);
-                raw.text.push(b'\n');
-                continue;
-            }
-            let kind = match whole {
-                true => ReadErrorKind::RecordTooLong { limit },
-                false => ReadErrorKind::LineTooLong {
-                    limit: self.options.limits.line_bytes,
-                },
-            };
-            let offset = if whole { 0 } else { line.len() };
-            let line = line.to_vec();
-            let span = Span::at_offset(self.lines.number(), offset, 0);
-            raw.fault = Some(ReadError::new(kind, span, &line));
+            raw.text.truncate(start);
         }
     }
 }
@@ -160,8 +158,12 @@ pub(crate) fn title(raw: &RawText) -> String {
     line.map_or_else(String::new, |line| decode(line.text.trim_ascii()))
 }
 
-/// Parses a record that has been cut out.
-pub(crate) fn parse(raw: &mut RawText, options: &ReadOptions) -> Result<Record, ReadError> {
+/// Parses a record that has been cut out, with its `properties` or without.
+pub(crate) fn parse(
+    raw: &mut RawText,
+    options: &ReadOptions,
+    properties: bool,
+) -> Result<Record, ReadError> {
     if let Some(fault) = raw.fault.take() {
         return Err(fault);
     }
@@ -169,7 +171,7 @@ pub(crate) fn parse(raw: &mut RawText, options: &ReadOptions) -> Result<Record, 
     let mut lines = block.lines();
     let mut record =
         molfile::read(&mut lines, options, raw.text.len()).map_err(|fault| block.error(fault))?;
-    data::read(&mut lines, &mut record);
+    data::read(&mut lines, &mut record, properties);
     Ok(record)
 }
 
@@ -179,7 +181,7 @@ impl<R: BufRead> Iterator for Records<R> {
     fn next(&mut self) -> Option<Self::Item> {
         let mut raw = std::mem::take(&mut self.raw);
         let outcome = match self.cut(&mut raw) {
-            Ok(true) => Some(parse(&mut raw, &self.options)),
+            Ok(true) => Some(parse(&mut raw, &self.options, true)),
             Ok(false) => None,
             Err(failure) => Some(Err(failure)),
         };

@@ -23,9 +23,7 @@ use std::{
 #[cfg(feature = "table")]
 use crate::table;
 use crate::{
-    ReadError, Record, molfile,
-    raw::RawText,
-    sdf, smiles,
+    ReadError, Record, molfile, sdf, smiles,
     table::{Columns, Delimiter},
 };
 
@@ -43,6 +41,9 @@ pub struct ReadOptions {
     pub molfile: molfile::ReadOptions,
     /// For tables.
     pub columns: Columns,
+    /// Leaves the [`Record::properties`] empty, which saves time where nothing is made of data items and
+    /// other columns. Notes on them are made all the same.
+    pub without_properties: bool,
 }
 
 /// What became of one record.
@@ -210,27 +211,52 @@ impl<'s> Records<'s> {
     /// # Ok::<(), Box<dyn std::error::Error>>(())
     /// ```
     pub fn cut(&mut self) -> Option<Result<RawRecord, SourceError>> {
-        let mut text = RawText::default();
-        let cut = match &mut self.reader {
-            Reader::Smiles(records) => records
-                .cut(&mut text)
-                .map(|is| is.then_some(Cut::Smiles(text))),
-            Reader::Sdf(records) => records
-                .cut(&mut text)
-                .map(|is| is.then_some(Cut::Molfile(text))),
-            #[cfg(feature = "table")]
-            Reader::Table(records) => records.cut().map(|row| row.map(Cut::Row)),
-            Reader::Refused(error) => return error.take().map(Err),
-        };
-        match cut {
-            Ok(None) => None,
-            Ok(Some(cut)) => {
-                self.index += 1;
-                let index = self.index;
-                Some(Ok(RawRecord { index, cut }))
-            }
-            Err(error) => SourceError::of_record(&self.name, &error).map(Err),
+        let mut record = RawRecord::default();
+        match self.cut_into(&mut record) {
+            Ok(true) => Some(Ok(record)),
+            Ok(false) => None,
+            Err(error) => Some(Err(error)),
         }
+    }
+
+    /// As [`Records::cut`], in place of a record that has been parsed, whose storage is reused; false
+    /// where there is no other.
+    ///
+    /// # Errors
+    /// [`SourceError::Read`], after which there is no other record.
+    pub fn cut_into(&mut self, record: &mut RawRecord) -> Result<bool, SourceError> {
+        let cut = std::mem::take(&mut record.cut);
+        let found = match &mut self.reader {
+            Reader::Smiles(records) => {
+                let mut text = cut.into_text();
+                let found = records.cut(&mut text);
+                record.cut = Cut::Smiles(text);
+                found
+            }
+            Reader::Sdf(records) => {
+                let mut text = cut.into_text();
+                let found = records.cut(&mut text);
+                record.cut = Cut::Molfile(text);
+                found
+            }
+            #[cfg(feature = "table")]
+            Reader::Table(records) => {
+                let mut row = cut.into_row();
+                let found = records.cut(&mut row);
+                record.cut = Cut::Row(row);
+                found
+            }
+            Reader::Refused(error) => return error.take().map_or(Ok(false), Err),
+        };
+        let found = match found {
+            Ok(found) => found,
+            Err(error) => {
+                return SourceError::of_record(&self.name, &error).map_or(Ok(false), Err);
+            }
+        };
+        self.index += u64::from(found);
+        record.index = self.index;
+        Ok(found)
     }
 }
 
@@ -283,21 +309,23 @@ impl Records<'static> {
     }
 }
 
+/// Bytes that are read at once: fewer calls, and fewer lines in two pieces.
+const BUFFER: usize = 1 << 16;
+
 #[cfg(feature = "gzip")]
 fn decompress(file: Counted<File>, compressed: bool) -> Source<'static> {
     if compressed {
         // A .gz file may be several streams in a row.
-        Box::new(BufReader::new(flate2::bufread::MultiGzDecoder::new(
-            BufReader::new(file),
-        )))
+        let stream = flate2::bufread::MultiGzDecoder::new(BufReader::new(file));
+        Box::new(BufReader::with_capacity(BUFFER, stream))
     } else {
-        Box::new(BufReader::new(file))
+        Box::new(BufReader::with_capacity(BUFFER, file))
     }
 }
 
 #[cfg(not(feature = "gzip"))]
 fn decompress(file: Counted<File>, _compressed: bool) -> Source<'static> {
-    Box::new(BufReader::new(file))
+    Box::new(BufReader::with_capacity(BUFFER, file))
 }
 
 impl Iterator for Records<'_> {

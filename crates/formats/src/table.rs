@@ -17,13 +17,19 @@ mod records;
 mod row;
 #[cfg(feature = "table")]
 mod rows;
+#[cfg(feature = "table")]
+mod sheet;
 
 use thiserror::Error;
 
 use crate::{ReadError, molfile, smiles};
 
 #[cfg(feature = "table")]
-pub use records::Records;
+pub use {
+    raw::parse_field,
+    records::Records,
+    sheet::{Sheet, SheetRow},
+};
 
 #[cfg(feature = "table")]
 pub(crate) use {header::is_header, raw::RawRow};

@@ -1,13 +1,15 @@
 //! Builds molecules atom by atom; the only way to make one.
 
-use petgraph::graph::NodeIndex;
+use petgraph::{
+    graph::{EdgeIndex, NodeIndex},
+    visit::EdgeRef,
+};
 use thiserror::Error;
 
 use crate::{
     Atom, BondOrder, DrawnCoordination, DrawnStereo, Ligand, Molecule, PiDemand, StereoGroup,
-    kekule::{self, Delocalised},
-    matching::Matching,
-    rings::Adjacency,
+    kekule::{Delocalised, Kekule},
+    rings::RingBonds,
 };
 
 /// Why a molecule could not be built. Atoms are indices from 0.
@@ -60,9 +62,8 @@ pub struct MoleculeBuilder {
     molecule: Molecule,
     demand: Vec<PiDemand>,
     delocalised: Vec<Delocalised>,
-    adjacency: Adjacency,
-    ring: Vec<bool>,
-    matching: Matching,
+    rings: RingBonds,
+    kekule: Kekule,
 }
 
 impl MoleculeBuilder {
@@ -74,6 +75,7 @@ impl MoleculeBuilder {
     /// Forgets everything added so far.
     pub fn clear(&mut self) {
         self.molecule.graph.clear();
+        self.molecule.ring.clear();
         self.molecule.stereo.clear();
         self.molecule.coordination.clear();
         self.molecule.groups.clear();
@@ -220,6 +222,12 @@ impl MoleculeBuilder {
     }
 
     fn finish(&mut self) -> Result<(), BuildError> {
+        let Molecule { graph, ring, .. } = &mut self.molecule;
+        let ends = graph
+            .raw_edges()
+            .iter()
+            .map(|edge| (edge.source().index() as u32, edge.target().index() as u32));
+        self.rings.find(graph.node_count(), ends, ring);
         if !self.delocalised.is_empty() {
             self.resolve_delocalised()?;
         }
@@ -234,32 +242,24 @@ impl MoleculeBuilder {
     }
 
     fn resolve_delocalised(&mut self) -> Result<(), BuildError> {
-        let graph = &mut self.molecule.graph;
-        let ends = graph
-            .raw_edges()
-            .iter()
-            .map(|edge| (edge.source().index() as u32, edge.target().index() as u32));
-        self.adjacency.load(graph.node_count(), ends);
-        let ring = &mut self.ring;
-        self.adjacency.ring_bonds(graph.edge_count(), ring);
+        let Molecule { graph, ring, .. } = &mut self.molecule;
         for &(bond, a, b) in &self.delocalised {
             // Both atoms of a ring bond are in a ring; only bonds between rings need a look.
             if ring[bond as usize] {
                 continue;
             }
             let in_ring = |&atom: &u32| {
-                let mut arcs = self.adjacency.of(atom).iter();
-                arcs.any(|&(_, bond)| ring[bond as usize])
+                let mut bonds = graph.edges(NodeIndex::new(atom as usize));
+                bonds.any(|bond| ring[bond.id().index()])
             };
             if let Some(atom) = [a, b].into_iter().find(|atom| !in_ring(atom)) {
                 return Err(BuildError::AromaticOutsideRing { atom });
             }
         }
-        kekule::assign(&self.demand, ring, &self.delocalised, &mut self.matching)?;
+        self.kekule.assign(&self.demand, ring, &self.delocalised)?;
         for &(bond, a, b) in &self.delocalised {
-            if self.matching.mate(a) == b {
-                let edge = petgraph::graph::EdgeIndex::new(bond as usize);
-                graph[edge] = BondOrder::Double;
+            if self.kekule.is_double(a, b) {
+                graph[EdgeIndex::new(bond as usize)] = BondOrder::Double;
             }
         }
         Ok(())

@@ -5,6 +5,7 @@ mod comparison;
 mod dependence;
 mod elements;
 mod form;
+mod identity;
 mod normal;
 mod placement;
 mod samples;
@@ -16,7 +17,7 @@ use thiserror::Error;
 
 use crate::{
     Key, Limits, Molecule,
-    claims::{self, Claims, Solver, Variable},
+    claims::{self, Claims, Extent, Solver, Variable},
     key::{Digester, Named},
     mesomer::{self, Mesomer},
     order::{Coloured, Labeller, Labelling, Unit},
@@ -27,6 +28,7 @@ use crate::{
 pub use comparison::{Arrangement, arrangement};
 pub use elements::{Dropped, Mark, Remark, StereoElement};
 pub use form::{CanonicalForm, FormAtom, FormStereo};
+pub use identity::Identity;
 pub use normal::{NormalAtom, NormalBond, NormalForm};
 
 /// Why a record has no canonical order. There is never a weaker key instead.
@@ -114,10 +116,12 @@ pub struct Canonical {
     pub(crate) claims: Claims,
     /// Without isotopes and stereo.
     constitution: Labelling,
-    /// With isotopes, without stereo.
-    pub(crate) bare: Labelling,
-    /// With the marks that count: the order canonical text is written in.
-    pub(crate) written: Labelling,
+    /// With isotopes, without stereo; only where the record has isotopes.
+    isotopic: Labelling,
+    has_isotopes: bool,
+    /// With the marks that count; only where the record was asked for them.
+    marked: Labelling,
+    has_marks: bool,
     constitution_key: Key,
     labelled_constitution_key: Key,
     compound_key: Key,
@@ -165,47 +169,36 @@ impl Orderer {
         molecule: &Molecule,
         view: &mut Canonical,
     ) -> Result<(), OrderError> {
-        if molecule.atom_count() > self.limits.atoms {
-            return Err(OrderError::TooManyAtoms {
-                limit: self.limits.atoms,
-            });
-        }
-        view.skeleton.load(molecule);
-        let scratch = &mut self.mesomer;
-        view.mesomer
-            .load(&mut view.skeleton, &self.limits, scratch)?;
-        let mut steps = 0;
-        self.label(
-            &view.skeleton,
-            &view.mesomer,
-            false,
-            &mut steps,
-            &mut view.constitution,
-        )?;
-        let labelled = view
-            .skeleton
-            .atoms
-            .iter()
-            .any(|atom| atom.isotope.is_some() || atom.labelled > 0);
-        if labelled {
-            self.label(
-                &view.skeleton,
-                &view.mesomer,
-                true,
-                &mut steps,
-                &mut view.bare,
-            )?;
+        let steps = self.order_constitution(molecule, view)?;
+        self.order_stereo(molecule, view, steps, Extent::All)?;
+        self.set_keys(view);
+        Ok(())
+    }
+
+    /// Finds the stereo elements, the claims and the order with them.
+    fn order_stereo(
+        &mut self,
+        molecule: &Molecule,
+        view: &mut Canonical,
+        mut steps: u64,
+        extent: Extent,
+    ) -> Result<(), OrderError> {
+        view.has_marks = true;
+        let bare = if view.has_isotopes {
+            &view.isotopic
         } else {
-            view.bare.clone_from(&view.constitution);
-        }
+            &view.constitution
+        };
         let scratch = &mut self.stereo;
         view.perception
             .load(&view.skeleton, &view.mesomer, molecule, scratch);
-        view.perception
-            .keep_unequal_axes(&view.skeleton, &view.bare.generators);
+        if extent == Extent::All {
+            view.perception
+                .find_undrawable(&view.skeleton, &view.mesomer, &bare.generators);
+        }
         view.perception.remember(
             &view.skeleton,
-            &view.bare.generators,
+            &bare.generators,
             molecule.remembered_stereo(),
         );
         claims::list_variables(&view.perception, &mut view.variables);
@@ -214,12 +207,7 @@ impl Orderer {
         let placed = if view.perception.placed.is_empty() {
             None
         } else {
-            self.keep_effective(
-                &mut view.perception,
-                &view.variables,
-                &view.bare,
-                &mut steps,
-            )?;
+            self.keep_effective(&mut view.perception, &view.variables, bare, &mut steps)?;
             self.graph.placed.clone_from(&view.perception.placed);
             let mut labelling = Labelling::default();
             self.labeller
@@ -234,36 +222,76 @@ impl Orderer {
             limits: &self.limits,
             steps: &mut steps,
         };
-        let bare = placed.as_ref().unwrap_or(&view.bare);
+        let bare = placed.as_ref().unwrap_or(bare);
         let groups =
             claims::of_groups(&view.skeleton, &view.perception, &view.variables, molecule)?;
-        let (claims, written) = (&mut view.claims, &mut view.written);
+        let (claims, written) = (&mut view.claims, &mut view.marked);
         if groups.is_empty() {
-            solver.solve(bare, &mut self.claims, claims, written)?;
+            solver.solve(bare, extent, &mut self.claims, claims, written)?;
         } else {
             solver.solve_groups(bare, groups, claims, written)?;
         }
+        Ok(())
+    }
+
+    /// Finds the normal form and the order without stereo; returns the steps that took.
+    fn order_constitution(
+        &mut self,
+        molecule: &Molecule,
+        view: &mut Canonical,
+    ) -> Result<u64, OrderError> {
+        if molecule.atom_count() > self.limits.atoms {
+            return Err(OrderError::TooManyAtoms {
+                limit: self.limits.atoms,
+            });
+        }
+        let Canonical {
+            skeleton,
+            mesomer,
+            constitution,
+            isotopic,
+            has_isotopes,
+            ..
+        } = view;
+        skeleton.load(molecule);
+        mesomer.load(skeleton, &self.limits, &mut self.mesomer)?;
+        let mut steps = 0;
+        self.label(skeleton, mesomer, false, &mut steps, constitution)?;
+        let mut atoms = skeleton.atoms.iter();
+        *has_isotopes = atoms.any(|atom| atom.isotope.is_some() || atom.labelled > 0);
+        if *has_isotopes {
+            self.label(skeleton, mesomer, true, &mut steps, isotopic)?;
+        }
+        Ok(steps)
+    }
+
+    fn set_keys(&mut self, view: &mut Canonical) {
         let digester = &mut self.digester;
-        let constitution = digester.digest(&view.constitution.certificate);
+        let own = &view.constitution.certificate;
+        let constitution = digester.first(own);
         view.constitution_key = Key::of(Named::Constitution, std::iter::once(constitution));
-        view.labelled_constitution_key = if labelled {
-            let digest = digester.digest(&view.bare.certificate);
+        view.labelled_constitution_key = if view.has_isotopes {
+            let digest = digester.digest(&view.isotopic.certificate, own);
             Key::of(Named::Constitution, std::iter::once(digest))
         } else {
             view.constitution_key
         };
-        let certificates = view.claims.certificates.iter();
         // Most records have neither isotopes nor stereo: one certificate serves both keys.
-        let digests = certificates.map(|certificate| {
-            let known = certificate == view.constitution.certificate;
+        let mut digest = |certificate: &[u64]| {
+            let known = certificate == own;
             if known {
                 constitution
             } else {
-                digester.digest(certificate)
+                digester.digest(certificate, own)
             }
-        });
-        view.compound_key = Key::of(Named::Compound, digests);
-        Ok(())
+        };
+        view.compound_key = if view.has_marks {
+            let certificates = view.claims.certificates.iter();
+            Key::of(Named::Compound, certificates.map(digest))
+        } else {
+            let bare = digest(&view.bare().certificate);
+            Key::of(Named::Compound, std::iter::once(bare))
+        };
     }
 
     /// Leaves out arrangements that make no difference: all that the ligands could have give the
@@ -334,6 +362,32 @@ impl Orderer {
 }
 
 impl Canonical {
+    /// The order with isotopes and without stereo.
+    pub(crate) fn bare(&self) -> &Labelling {
+        if self.has_isotopes {
+            &self.isotopic
+        } else {
+            &self.constitution
+        }
+    }
+
+    /// The order with the marks that count: the one that canonical text is written in.
+    pub(crate) fn written(&self) -> &Labelling {
+        if self.has_marks {
+            &self.marked
+        } else {
+            self.bare()
+        }
+    }
+
+    /// Forgets what is known of the stereo of a record before.
+    fn forget_stereo(&mut self) {
+        self.has_marks = false;
+        self.variables.clear();
+        self.claims.clear();
+        self.perception.placed.clear();
+    }
+
     /// The key of the constitution: no stereo, no isotopes.
     pub fn constitution_key(&self) -> Key {
         self.constitution_key
@@ -358,7 +412,7 @@ impl Canonical {
 
     /// Whether both records have the same constitution, isotopes included.
     pub fn same_labelled_constitution(&self, other: &Self) -> bool {
-        self.bare.certificate == other.bare.certificate
+        self.bare().certificate == other.bare().certificate
     }
 
     /// Whether both records stand for the same set of stereoisomers; on certificates, not keys.
@@ -374,7 +428,7 @@ impl Canonical {
 
     /// The atoms of the molecule, terminal hydrogens aside, in canonical order.
     pub fn order(&self) -> impl ExactSizeIterator<Item = u32> + '_ {
-        self.written
+        self.written()
             .order
             .iter()
             .map(|&atom| self.skeleton.atoms[atom as usize].source)

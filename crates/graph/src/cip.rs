@@ -19,7 +19,7 @@ mod units;
 
 use std::fmt;
 
-use crate::{Canonical, Limits, Mark};
+use crate::{Canonical, Limits, StereoElement};
 
 use self::{atoms::Atoms, budget::Budget, digraph::Digraph, units::Unit};
 
@@ -137,23 +137,48 @@ impl Canonical {
     /// The digraph grows as far as ligands are alike; at most
     /// [`Limits::label_steps`] in all.
     pub fn labels(&self, limits: &Limits) -> Vec<Labelling> {
-        let elements = self.stereo_elements();
-        if elements.iter().all(|element| element.mark == Mark::Absent) {
-            return vec![Labelling::Unmarked; elements.len()];
+        let units = self.units(&self.stereo_elements(), false);
+        self.label_all(&units, &[], limits)
+    }
+
+    /// The CIP labels of the bridgeheads whose marks say nothing, in the order of
+    /// [`Canonical::idle_bridgeheads`]. The stereo elements and these bridgeheads act in them as
+    /// auxiliary descriptors; no label of a stereo element hangs on them, since their marks say nothing
+    /// about the compound.
+    ///
+    /// # Complexity
+    /// As [`Canonical::labels`], with the same number of steps once more.
+    pub fn idle_bridgehead_labels(&self, limits: &Limits) -> Vec<Labelling> {
+        let idle = self.idle_bridgeheads();
+        if idle.is_empty() {
+            return Vec::new();
+        }
+        let counting = self.units(&self.stereo_elements(), false);
+        self.label_all(&self.units(&idle, true), &counting, limits)
+    }
+
+    fn units(&self, elements: &[StereoElement], idle: bool) -> Vec<Option<Unit>> {
+        let unit = |element| Unit::new(self, element, idle);
+        elements.iter().map(unit).collect()
+    }
+
+    /// The labels of units; `others` act as auxiliary descriptors beside them.
+    fn label_all(
+        &self,
+        units: &[Option<Unit>],
+        others: &[Option<Unit>],
+        limits: &Limits,
+    ) -> Vec<Labelling> {
+        let marked: Vec<Unit> = units.iter().chain(others).flatten().cloned().collect();
+        if marked.is_empty() {
+            return vec![Labelling::Unmarked; units.len()];
         }
         let atoms = Atoms::new(&self.skeleton, &self.mesomer);
-        let found: Vec<Option<Unit>> = elements
-            .iter()
-            .map(|element| Unit::new(self, element))
-            .collect();
-        let units: Vec<Unit> = found.iter().flatten().cloned().collect();
-        found
-            .iter()
-            .map(|unit| match unit {
-                Some(unit) => label(&atoms, unit, &units, limits),
-                None => Labelling::Unmarked,
-            })
-            .collect()
+        let labelling = |unit: &Option<Unit>| match unit {
+            Some(unit) => label(&atoms, unit, &marked, limits),
+            None => Labelling::Unmarked,
+        };
+        units.iter().map(labelling).collect()
     }
 }
 

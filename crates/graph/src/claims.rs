@@ -33,7 +33,7 @@ pub(crate) use grouped::{Point, masked, most_pieces};
 pub(crate) use pieces::{Freedom, Piece, of_groups};
 pub(crate) use place::{Place, place};
 pub(crate) use roles::Roles;
-pub(crate) use solve::{Claims, Scratch, Solver};
+pub(crate) use solve::{Claims, Extent, Scratch, Solver};
 pub(crate) use space::{Space, Vector};
 pub(crate) use status::Status;
 pub(crate) use symmetries::Symmetries;

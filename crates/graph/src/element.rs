@@ -48,7 +48,10 @@ impl Element {
     pub const WILDCARD: Element = Element(0);
 
     /// The heaviest element that has a name, oganesson.
-    const LAST: u8 = 118;
+    pub(crate) const LAST: u8 = 118;
+
+    /// How many values there are, the wildcard included.
+    pub(crate) const COUNT: usize = Element::LAST as usize + 1;
 
     /// The element of a symbol in its exact case (`C`, `Cl`), or `None`.
     ///
@@ -78,6 +81,12 @@ impl Element {
     #[must_use]
     pub fn symbol(self) -> &'static str {
         self.entry(&table::SYMBOLS)
+    }
+
+    /// The place of the symbol in the alphabet, as a number that has no gaps to speak of; 0 for the
+    /// wildcard.
+    pub(crate) fn place_in_alphabet(self) -> u16 {
+        self.entry(&symbol::PLACES)
     }
 
     /// The English name in IUPAC spelling, lower case; `unknown` for the wildcard.

@@ -36,8 +36,7 @@ pub struct Formula {
 impl Formula {
     /// Counts elements that come in any order and any number of times; counts of 0 add nothing.
     ///
-    /// Linear in the items, times the logarithm of the number of distinct elements. A count stays at
-    /// `u32::MAX` once there.
+    /// Linear in the items. A count stays at `u32::MAX` once there.
     #[must_use]
     pub fn new(counts: impl IntoIterator<Item = (Element, u32)>, charge: i32) -> Formula {
         let mut formula = Formula::default();
@@ -48,10 +47,22 @@ impl Formula {
     /// As [`Formula::new`], but puts the result in place of this formula and keeps its memory, so that
     /// counting many molecules allocates once.
     pub fn refill(&mut self, counts: impl IntoIterator<Item = (Element, u32)>, charge: i32) {
-        self.counts.clear();
+        // One place for each element, so that none has to be looked for, and one bit for each that
+        // occurs.
+        let mut totals = [0u32; Element::COUNT];
+        let mut occurring = 0u128;
+        counts.into_iter().for_each(|(element, count)| {
+            let total = &mut totals[usize::from(element.number())];
+            *total = total.saturating_add(count);
+            occurring |= u128::from(count > 0) << element.number();
+        });
         self.charge = charge;
-        for (element, count) in counts {
-            self.add(element, count);
+        self.counts.clear();
+        while occurring != 0 {
+            let number = occurring.trailing_zeros() as u8;
+            occurring &= occurring - 1;
+            let element = Element::from_number(number).unwrap_or(Element::WILDCARD);
+            self.counts.push((element, totals[usize::from(number)]));
         }
     }
 
@@ -73,42 +84,23 @@ impl Formula {
     pub const fn charge(&self) -> i32 {
         self.charge
     }
-
-    fn add(&mut self, element: Element, count: u32) {
-        if count == 0 {
-            return;
-        }
-        match self
-            .counts
-            .binary_search_by_key(&element, |&(other, _)| other)
-        {
-            Ok(place) => {
-                if let Some((_, total)) = self.counts.get_mut(place) {
-                    *total = total.saturating_add(count);
-                }
-            }
-            Err(place) => self.counts.insert(place, (element, count)),
-        }
-    }
 }
 
 impl fmt::Display for Formula {
     fn fmt(&self, formatter: &mut fmt::Formatter<'_>) -> fmt::Result {
         let organic = self.count(Element::CARBON) > 0;
-        let mut order: Vec<_> = self.iter().collect();
-        order.sort_unstable_by_key(|&(element, _)| {
-            let place = match element {
-                Element::CARBON if organic => 0,
-                Element::HYDROGEN if organic => 1,
-                Element::WILDCARD => 3,
-                _ => 2,
-            };
-            (place, element.symbol())
-        });
-        for (element, count) in order {
+        // The next one of a handful is looked for each time, since a sorted list would need memory.
+        let mut last = 0;
+        while let Some((place, element, count)) = self
+            .iter()
+            .map(|(element, count)| (hill_place(element, organic), element, count))
+            .filter(|&(place, ..)| place > last)
+            .min()
+        {
+            last = place;
             formatter.write_str(element.symbol())?;
             if count != 1 {
-                write!(formatter, "{count}")?;
+                write_number(formatter, count)?;
             }
         }
         match self.charge {
@@ -118,6 +110,28 @@ impl fmt::Display for Formula {
             charge => write!(formatter, "{charge:+}"),
         }
     }
+}
+
+/// The place of an element in Hill order: numbers above 0 that sort as the order does.
+fn hill_place(element: Element, organic: bool) -> u16 {
+    match element {
+        Element::CARBON if organic => 1,
+        Element::HYDROGEN if organic => 2,
+        Element::WILDCARD => u16::MAX,
+        _ => 3 + element.place_in_alphabet(),
+    }
+}
+
+/// Writes a number as its digits, which takes a fraction of what formatting it does.
+fn write_number(formatter: &mut fmt::Formatter<'_>, mut number: u32) -> fmt::Result {
+    let mut digits = [b'0'; 10];
+    let mut start = digits.len();
+    while number > 0 || start == digits.len() {
+        start -= 1;
+        digits[start] += (number % 10) as u8;
+        number /= 10;
+    }
+    formatter.write_str(str::from_utf8(&digits[start..]).map_err(|_| fmt::Error)?)
 }
 
 #[cfg(test)]

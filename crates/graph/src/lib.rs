@@ -35,8 +35,9 @@ pub use crate::{
     bond::BondOrder,
     builder::{BuildError, MoleculeBuilder},
     canonical::{
-        Arrangement, Canonical, CanonicalForm, Dropped, FormAtom, FormStereo, Mark, NormalAtom,
-        NormalBond, NormalForm, OrderError, Orderer, Remark, StereoElement, arrangement,
+        Arrangement, Canonical, CanonicalForm, Dropped, FormAtom, FormStereo, Identity, Mark,
+        NormalAtom, NormalBond, NormalForm, OrderError, Orderer, Remark, StereoElement,
+        arrangement,
     },
     cip::{Label, Labelling},
     drawn::{

@@ -13,6 +13,7 @@ mod first;
 mod mobile;
 mod octet;
 mod placement;
+mod plain;
 mod shift;
 mod systems;
 mod valence;
@@ -23,9 +24,10 @@ mod tests;
 use crate::{Limits, OrderError, matching::Matching, skeleton::Skeleton};
 
 pub(crate) use first::First;
-pub(crate) use octet::separate;
+pub(crate) use octet::{Scratch as OctetScratch, separate};
 use placement::System;
-use shift::Shift;
+use plain::Pairs;
+use shift::{Shift, Shifting};
 pub(crate) use valence::neutral as neutral_valence;
 use valence::{Drawn, Valence};
 
@@ -55,13 +57,14 @@ pub(crate) struct Mesomer {
     /// not settle.
     systems: Vec<System>,
     /// The mobile bonds outside of them.
-    shifting: Vec<u32>,
+    shifting: Shifting,
 }
 
 /// Scratch that is reused from one molecule to the next.
 #[derive(Debug, Default)]
 pub(crate) struct Scratch {
-    over_full: Vec<bool>,
+    pairs: Vec<Pairs>,
+    octet: octet::Scratch,
     drawn: Vec<Drawn>,
     valences: Vec<Valence>,
     /// Per atom: in one of the systems with charges or open valences.
@@ -113,7 +116,8 @@ impl Mesomer {
         scratch: &mut Scratch,
     ) -> Result<(), OrderError> {
         let Scratch {
-            over_full,
+            pairs,
+            octet,
             drawn,
             valences,
             in_system,
@@ -121,10 +125,20 @@ impl Mesomer {
             shift,
             matching,
         } = scratch;
-        octet::separate(skeleton, over_full);
-        self.orders.clear();
-        self.orders
-            .extend(skeleton.bonds.iter().map(|bond| bond.order));
+        // An edge of a matching costs some four times as much as one of a refinement.
+        matching.work = 0;
+        matching.budget = limits.order_steps / 4;
+        if plain::is_plain(skeleton, pairs) {
+            self.take_orders(skeleton);
+            self.states.clear();
+            self.states.resize(skeleton.len(), AtomState::default());
+            spare_systems.append(&mut self.systems);
+            let takes_part = |atom: u32| pairs[atom as usize].pi == 1;
+            let (orders, shifting) = (&mut self.orders, &mut self.shifting);
+            return shift.mark(skeleton, takes_part, matching, limits, orders, shifting);
+        }
+        octet::separate(skeleton, octet);
+        self.take_orders(skeleton);
         valence::load(valences, drawn, skeleton);
         let atoms = skeleton.atoms.iter().zip(valences.iter());
         self.states.clear();
@@ -140,9 +154,6 @@ impl Mesomer {
             &mut self.systems,
             spare_systems,
         );
-        // An edge of a matching costs some four times as much as one of a refinement.
-        matching.work = 0;
-        matching.budget = limits.order_steps / 4;
         let (orders, states) = (&mut self.orders, &mut self.states);
         for system in &mut self.systems {
             if system.settle(valences, matching, limits)? {
@@ -154,5 +165,10 @@ impl Mesomer {
         let takes_part = |atom: u32| valences[atom as usize].pi == 1 && !in_system[atom as usize];
         let shifting = &mut self.shifting;
         shift.mark(skeleton, takes_part, matching, limits, orders, shifting)
+    }
+    fn take_orders(&mut self, skeleton: &Skeleton) {
+        self.orders.clear();
+        self.orders
+            .extend(skeleton.bonds.iter().map(|bond| bond.order));
     }
 }

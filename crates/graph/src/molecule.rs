@@ -26,6 +26,8 @@ use crate::{Atom, BondOrder, DrawnCoordination, DrawnStereo, Element, Formula, S
 #[derive(Debug, Clone, Default)]
 pub struct Molecule {
     pub(crate) graph: UnGraph<Atom, BondOrder, u32>,
+    /// Per bond: in a ring. Found once, by the builder, for Kekulé structures and for all later work.
+    pub(crate) ring: Vec<bool>,
     pub(crate) stereo: Vec<DrawnStereo>,
     pub(crate) coordination: Vec<DrawnCoordination>,
     pub(crate) groups: Vec<StereoGroup>,

@@ -98,10 +98,11 @@ impl Molecule {
         parts.into_iter().map(Part::finish).collect()
     }
 
-    /// How many components there are, hydrogen bonds left aside.
-    pub fn component_count(&self) -> usize {
-        let numbers = self.component_numbers();
-        numbers.iter().max().map_or(0, |&last| last as usize + 1)
+    /// Whether there is one component at most, hydrogen bonds left aside.
+    pub fn is_connected(&self) -> bool {
+        let (atoms, bonds) = (self.atom_count(), self.bonds().len());
+        // A graph with fewer bonds falls apart.
+        bonds + 1 >= atoms && self.component_numbers().iter().all(|&number| number == 0)
     }
 
     /// Per atom the number of its component, from 0.
@@ -357,5 +358,110 @@ impl Revision {
                 builder.add_group(StereoGroup { kind, atoms });
             }
         }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::{Orderer, Parity, Shape, sketch::molecule};
+
+    /// Alanine's centre with all hydrogens but one counted, sodium beside it.
+    fn record() -> Molecule {
+        molecule(
+            &[
+                ("Na", 1, 0),
+                ("C", 0, 3),
+                ("C", 0, 0),
+                ("H", 0, 0),
+                ("N", 0, 2),
+                ("F", 0, 0),
+            ],
+            &[(1, 2, 1), (2, 3, 1), (2, 4, 1), (2, 5, 1)],
+        )
+    }
+
+    fn mark(parity: Parity) -> DrawnStereo {
+        DrawnStereo {
+            shape: Shape::Tetrahedral,
+            centres: [2, 2],
+            ligands: [1, 3, 4, 5].map(Ligand::Atom),
+            parity: Some(parity),
+        }
+    }
+
+    #[test]
+    fn atoms_keep_the_numbers_of_the_record() {
+        let mut revision = Revision::of(&record());
+        assert_eq!(revision.atom(3), None, "the hydrogen is counted");
+        assert_eq!(revision.atom(2).map(|atom| atom.hydrogens), Some(1));
+        revision.remove_atom(0);
+        let revised = revision.finish().unwrap();
+        assert_eq!(revised.sources, [1, 2, 4, 5]);
+        let numbers: Vec<u32> = (0..4).map(|atom| revised.molecule.number(atom)).collect();
+        assert_eq!(numbers, [2, 3, 5, 6]);
+        // A second revision keeps them too.
+        let mut again = Revision::of(&revised.molecule);
+        again.remove_atom(0);
+        let again = again.finish().unwrap();
+        assert_eq!(again.molecule.number(0), 3);
+        assert_eq!(again.traced(&revised.sources).sources, [2, 4, 5]);
+    }
+
+    #[test]
+    fn protons_are_taken_as_far_as_there_are_some() {
+        let mut revision = Revision::of(&record());
+        assert!(revision.set_protons(4, -2));
+        assert!(!revision.set_protons(4, -1));
+        assert!(!revision.set_protons(3, 1));
+        assert_eq!(revision.finish().unwrap().molecule.charge(), -1);
+    }
+
+    #[test]
+    fn a_mark_on_a_counted_hydrogen_stays_and_one_on_a_lost_bond_goes() {
+        let mut drawn = MoleculeBuilder::new();
+        record().atoms().for_each(|&atom| {
+            drawn.add_atom(atom);
+        });
+        for (a, b, order) in record().bonds() {
+            drawn.add_bond(a, b, order).unwrap();
+        }
+        drawn.add_stereo(mark(Parity::Odd));
+        let drawn = drawn.build().unwrap();
+        let kept = Revision::of(&drawn).finish().unwrap().molecule;
+        assert_eq!(kept.drawn_stereo()[0].ligands[1], Ligand::Hydrogen);
+        let mut cut = Revision::of(&drawn);
+        cut.set_bond(3, None);
+        assert!(cut.finish().unwrap().molecule.drawn_stereo().is_empty());
+    }
+
+    #[test]
+    fn remembered_marks_count_and_are_opposed() {
+        let key = |parity| {
+            let mut revision = Revision::of(&record());
+            // With three ligands and an open valence it cannot be a centre.
+            revision.atom_mut(2).unwrap().hydrogens = 0;
+            if let Some(parity) = parity {
+                revision.remember(mark(parity));
+            }
+            let molecule = revision.finish().unwrap().molecule;
+            let canonical = Orderer::default().order(&molecule).unwrap();
+            assert!(canonical.stereo_elements().is_empty());
+            canonical.compound_key()
+        };
+        let keys = [Some(Parity::Even), Some(Parity::Odd), None].map(key);
+        assert!(keys[0] != keys[1] && keys[0] != keys[2] && keys[1] != keys[2]);
+    }
+
+    #[test]
+    fn components_are_molecules_of_their_own() {
+        let record = record();
+        assert!(!record.is_connected());
+        let parts = record.components().unwrap();
+        let formulae = parts.iter().map(|part| part.molecule.formula().to_string());
+        assert_eq!(formulae.collect::<Vec<_>>(), ["Na+", "C2H6FN"]);
+        assert_eq!(parts[1].sources, [1, 2, 3, 4, 5]);
+        assert!(parts.iter().all(|part| part.molecule.is_connected()));
+        assert!(Molecule::default().is_connected());
     }
 }

@@ -3,7 +3,7 @@
 //! A hydrogen that is an atom of its own and one that is only counted are the same thing; the
 //! skeleton makes them so. What cannot be folded (bridging or charged hydrogen, H₂) stays an atom.
 
-use crate::{Element, Molecule, rings::Adjacency};
+use crate::{Atom, Element, Molecule, rings::Adjacency};
 
 /// No skeleton atom.
 pub(crate) const NO_ATOM: u32 = u32::MAX;
@@ -58,45 +58,69 @@ pub(crate) struct Skeleton {
 impl Skeleton {
     /// Loads a molecule.
     pub(crate) fn load(&mut self, molecule: &Molecule) {
-        self.fold(molecule);
+        let folds = self.fold(molecule);
         self.atoms.clear();
-        self.home.clear();
-        self.home.resize(molecule.atom_count(), NO_ATOM);
-        for (index, atom) in molecule.atoms().enumerate() {
-            if self.folded[index].is_some() {
-                continue;
-            }
-            self.home[index] = self.atoms.len() as u32;
-            self.atoms.push(SkeletonAtom {
-                element: atom.element,
-                isotope: atom.isotope,
-                hydrogens: atom.hydrogens,
-                labelled: 0,
-                charge: atom.charge,
-                source: index as u32,
-            });
-        }
         self.bonds.clear();
-        for (a, b, order) in molecule.bonds() {
-            match (self.folded[a as usize], self.folded[b as usize]) {
-                (Some(mass), _) => self.absorb(mass, a, b),
-                (_, Some(mass)) => self.absorb(mass, b, a),
-                _ => self.bonds.push(SkeletonBond {
-                    a: self.home[a as usize],
-                    b: self.home[b as usize],
-                    order: order.class(),
-                }),
+        self.home.clear();
+        self.ring.clear();
+        let skeleton_atom = |(source, atom): (u32, &Atom)| SkeletonAtom {
+            element: atom.element,
+            isotope: atom.isotope,
+            hydrogens: atom.hydrogens,
+            labelled: 0,
+            charge: atom.charge,
+            source,
+        };
+        let atoms = (0..).zip(molecule.atoms());
+        if folds {
+            for (atom, folded) in atoms.zip(&self.folded) {
+                let home = self.atoms.len() as u32;
+                self.home
+                    .push(if folded.is_some() { NO_ATOM } else { home });
+                if folded.is_none() {
+                    self.atoms.push(skeleton_atom(atom));
+                }
             }
+            self.load_bonds(molecule);
+        } else {
+            // Most records have no hydrogen to fold: plain copies.
+            self.atoms.extend(atoms.map(skeleton_atom));
+            self.home.extend(0..self.atoms.len() as u32);
+            let bonds = molecule.bonds();
+            self.bonds.extend(bonds.map(|(a, b, order)| SkeletonBond {
+                a,
+                b,
+                order: order.class(),
+            }));
+            self.ring.extend_from_slice(&molecule.ring);
         }
         let ends = self.bonds.iter().map(|bond| (bond.a, bond.b));
         self.adjacency.load(self.atoms.len(), ends);
-        self.adjacency.ring_bonds(self.bonds.len(), &mut self.ring);
+    }
+
+    fn load_bonds(&mut self, molecule: &Molecule) {
+        for ((a, b, order), &ring) in molecule.bonds().zip(&molecule.ring) {
+            match (self.folded[a as usize], self.folded[b as usize]) {
+                (Some(mass), _) => self.absorb(mass, a, b),
+                (_, Some(mass)) => self.absorb(mass, b, a),
+                _ => {
+                    self.bonds.push(SkeletonBond {
+                        a: self.home[a as usize],
+                        b: self.home[b as usize],
+                        order: order.class(),
+                    });
+                    self.ring.push(ring);
+                }
+            }
+        }
     }
 
     /// Decides which hydrogen atoms fold: neutral, one single bond, and few enough on their
     /// neighbour to be counted in four bits. Of two hydrogens bonded to each other the heavier
-    /// isotope stays an atom, so that H₂, HD and D₂ have one form however they are drawn.
-    fn fold(&mut self, molecule: &Molecule) {
+    /// isotope stays an atom, so that H₂, HD and D₂ have one form however they are drawn. Says whether
+    /// any folds.
+    fn fold(&mut self, molecule: &Molecule) -> bool {
+        let mut folds = false;
         self.folded.clear();
         self.folded.resize(molecule.atom_count(), None);
         for (index, atom) in molecule.atoms().enumerate() {
@@ -127,8 +151,10 @@ impl Skeleton {
                 || (host.isotope > Some(3));
             if foldable && host.element != Element::WILDCARD {
                 self.folded[index as usize] = Some(atom.isotope.unwrap_or(0) as u8);
+                folds = true;
             }
         }
+        folds
     }
 
     fn absorb(&mut self, mass: u8, hydrogen: u32, host: u32) {

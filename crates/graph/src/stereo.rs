@@ -102,7 +102,9 @@ pub(crate) struct Perception {
     pub(crate) undrawable: Vec<Undrawable>,
     /// Arrangements about centres that are not tetrahedral.
     pub(crate) placed: Vec<Placed>,
-    /// Centres, the lower first, and candidates; sorted.
+    /// How many of the candidates are tetrahedral: these come first, by atom.
+    tetrahedral: usize,
+    /// Ends, the lower first, of the others, and candidates; sorted.
     places: Vec<([u32; 2], usize)>,
 }
 
@@ -136,10 +138,12 @@ impl Perception {
         self.dropped.clear();
         self.impossible.clear();
         self.cages.clear();
+        self.undrawable.clear();
         marks::on_skeleton(marks, skeleton, molecule.drawn_stereo());
         let thetas = tetrahedral::find(self, skeleton, mesomer, marks, eligible, bridgeheads);
+        self.tetrahedral = self.candidates.len();
         double_bond::find(self, skeleton, mesomer, marks, seen);
-        let places = self.candidates.iter().enumerate();
+        let places = self.candidates.iter().enumerate().skip(self.tetrahedral);
         self.places.clear();
         self.places
             .extend(places.map(|(index, c)| (ascending(c.centres), index)));
@@ -147,11 +151,16 @@ impl Perception {
         marks::apply(self, skeleton, mesomer, marks, seen);
         bridgehead::bind(self, &thetas);
         coordination::load(self, skeleton, molecule.drawn_coordination());
-        undrawable::find(self, skeleton, mesomer);
     }
 
     /// The candidate at a tetrahedral centre (given twice) or a pair of ends.
     pub(crate) fn candidate_at(&self, centres: [u32; 2]) -> Option<usize> {
+        if centres[0] == centres[1] {
+            let tetrahedral = &self.candidates[..self.tetrahedral];
+            return tetrahedral
+                .binary_search_by_key(&centres[0], |candidate| candidate.centres[0])
+                .ok();
+        }
         let at = self
             .places
             .binary_search_by_key(&ascending(centres), |place| place.0)

@@ -3,6 +3,7 @@
 mod branching;
 mod constitution;
 mod coordination;
+pub mod moves;
 mod named;
 mod stereo;
 mod stereo_groups;
@@ -27,6 +28,8 @@ pub struct Explanation {
     pub hydrogens: Vec<HydrogenDifference>,
     /// Branch points and main chains of both records, where constitution differs.
     pub branching: Option<[Branching; 2]>,
+    /// What moved, the most telling first; nothing for records too far apart to tell it piece by piece.
+    pub findings: Vec<moves::Finding>,
     /// Stereo elements that differ under the map.
     pub stereo: Vec<StereoDifference>,
     /// Whether the map is proved to disturb as few stereo elements as any.

@@ -258,6 +258,7 @@ impl Normaliser {
     ) -> Result<Option<Outcome>, FormError> {
         match axis {
             Axis::Stereo => stereo::normalise(structure),
+            Axis::OpenStereo => Ok(None),
             Axis::Isotope => isotope::normalise(structure),
             Axis::Salt => {
                 let known = || {

@@ -13,6 +13,7 @@ mod kinds;
 pub mod mapping;
 mod relation;
 mod remarks;
+pub mod samples;
 mod structure;
 mod words;
 
@@ -22,6 +23,7 @@ pub mod families;
 pub mod parallel;
 pub mod wire;
 
+pub use explain::moves as findings;
 pub use crate::{
     explain::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
@@ -34,5 +36,5 @@ pub use crate::{
     groups::{FunctionalGroup, functional_groups},
     kinds::{Kind, kinds},
     relation::{Relation, StereoKind, Verdict, relate},
-    structure::{PrepareError, Preparer, Structure},
+    structure::{PrepareError, Structure},
 };

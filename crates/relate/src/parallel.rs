@@ -3,6 +3,10 @@
 //! The calling thread reads the items and takes the results; the others do the work between. Items go
 //! to them in chunks, and only so many chunks are under way at once that memory does not follow the
 //! length of the stream. What comes out does not depend on the number of threads.
+//!
+//! Chunks go round: once its results are taken, a chunk is filled again in the memory it has. So memory
+//! is hardly asked for, and none is given back on another thread than that which got it, which costs
+//! both of them.
 
 mod team;
 
@@ -20,10 +24,10 @@ use team::{Desk, Team};
 
 /// What is done with each item.
 pub trait Work: Sync {
-    /// What comes in.
-    type Item: Send;
-    /// What becomes of it.
-    type Output: Send;
+    /// What comes in: storage that is filled again and again.
+    type Item: Default + Send;
+    /// What becomes of it: storage that is filled again and again.
+    type Output: Default + Send;
     /// What a thread keeps from one item to the next, such as an
     /// [`Orderer`](molkin_graph::Orderer). No result may depend on it.
     type Scratch;
@@ -31,8 +35,8 @@ pub trait Work: Sync {
     /// Scratch for one thread.
     fn scratch(&self) -> Self::Scratch;
 
-    /// Works on an item.
-    fn run(&self, scratch: &mut Self::Scratch, item: Self::Item) -> Self::Output;
+    /// Works on an item. `output` holds what became of some item before.
+    fn run(&self, scratch: &mut Self::Scratch, item: &mut Self::Item, output: &mut Self::Output);
 
     /// The memory an item takes, roughly, in bytes.
     fn bytes(item: &Self::Item) -> usize;
@@ -45,7 +49,7 @@ pub struct Plan {
     /// alone.
     pub threads: NonZeroUsize,
     /// The most items that go to a thread at once. Few where an item takes long, many where passing it
-    /// on takes as long as the work.
+    /// on takes as long as the work. The first chunks are smaller.
     pub chunk: NonZeroUsize,
 }
 
@@ -53,13 +57,18 @@ pub struct Plan {
 const CHUNK_BYTES: usize = 1 << 16;
 /// Chunks under way for each thread: those behind a chunk that takes long.
 const CHUNKS_PER_THREAD: usize = 16;
+/// A chunk has at most this part of the items before it, so that the threads come to the end of a short
+/// stream at nearly the same time.
+const PART: usize = 32;
+/// But as many as this.
+const SMALLEST_CHUNK: usize = 8;
 
 /// Works on all items and hands each output to `sink`, in the order of the items. The first error of
 /// `sink` ends it: no other item is begun then.
 ///
-/// `items` and `sink` are called on the calling thread alone, and take turns: results that are there
-/// are taken before more items are read. Where the system gives fewer threads than the plan says, it
-/// is done with those.
+/// `fill` puts the next item in place of an old one, and gives false where there is none. It and `sink`
+/// are called on the calling thread alone, and take turns: results that are there are taken before more
+/// items are read. Where the system gives fewer threads than the plan says, it is done with those.
 ///
 /// # Errors
 /// The error of `sink`.
@@ -85,9 +94,10 @@ const CHUNKS_PER_THREAD: usize = 16;
 ///         Orderer::new(Limits::default())
 ///     }
 ///
-///     fn run(&self, orderer: &mut Orderer, text: &'static str) -> Option<String> {
-///         let molecule = smiles::parse(text).ok()?;
-///         Some(orderer.order(&molecule).ok()?.compound_key().to_string())
+///     fn run(&self, orderer: &mut Orderer, text: &mut &'static str, key: &mut Option<String>) {
+///         let molecule = smiles::parse(text).ok();
+///         let canonical = molecule.and_then(|molecule| orderer.order(&molecule).ok());
+///         *key = canonical.map(|canonical| canonical.compound_key().to_string());
 ///     }
 ///
 ///     fn bytes(text: &&'static str) -> usize {
@@ -96,9 +106,11 @@ const CHUNKS_PER_THREAD: usize = 16;
 /// }
 ///
 /// let plan = Plan { threads: NonZeroUsize::MIN.saturating_add(1), chunk: NonZeroUsize::MIN };
+/// let mut texts = ["OCC", "CCO", "C1"].into_iter();
+/// let fill = |item: &mut _| texts.next().map(|text| *item = text).is_some();
 /// let mut keys = Vec::new();
-/// in_order(&Keys, plan, ["OCC", "CCO", "C1"].into_iter(), |key| {
-///     keys.push(key);
+/// in_order(&Keys, plan, fill, |key| {
+///     keys.push(key.take());
 ///     Ok::<(), ()>(())
 /// })?;
 /// assert_eq!(keys[0], keys[1]);
@@ -108,17 +120,17 @@ const CHUNKS_PER_THREAD: usize = 16;
 pub fn in_order<W: Work, E>(
     work: &W,
     plan: Plan,
-    items: impl Iterator<Item = W::Item>,
-    mut sink: impl FnMut(W::Output) -> Result<(), E>,
+    fill: impl FnMut(&mut W::Item) -> bool,
+    mut sink: impl FnMut(&mut W::Output) -> Result<(), E>,
 ) -> Result<(), E> {
     if plan.threads.get() == 1 {
-        return alone(work, items, sink);
+        return alone(work, fill, sink);
     }
     let (desk, jobs) = Desk::new(work);
     thread::scope(|scope| match Team::start(scope, &desk, jobs, plan) {
-        None => alone(work, items, sink),
+        None => alone(work, fill, sink),
         Some(mut team) => {
-            let outcome = share_out(&mut team, items.fuse(), &mut sink);
+            let outcome = share_out(&mut team, Filler::new(plan, fill), &mut sink);
             // After an error there may be chunks that nobody waits for.
             desk.close();
             outcome
@@ -128,22 +140,21 @@ pub fn in_order<W: Work, E>(
 
 fn share_out<W: Work, E>(
     team: &mut Team<'_, '_, W>,
-    mut items: impl Iterator<Item = W::Item>,
-    sink: &mut impl FnMut(W::Output) -> Result<(), E>,
+    mut filler: Filler<W, impl FnMut(&mut W::Item) -> bool>,
+    sink: &mut impl FnMut(&mut W::Output) -> Result<(), E>,
 ) -> Result<(), E> {
-    let Plan { threads, chunk } = team.plan();
-    let most = threads.get().saturating_mul(CHUNKS_PER_THREAD);
+    let most = team.threads().get().saturating_mul(CHUNKS_PER_THREAD);
     let mut waiting = VecDeque::new();
     loop {
         let room = waiting.len() < most;
-        let next = room.then(|| next_chunk::<W>(&mut items, chunk)).flatten();
+        let next = room.then(|| filler.next()).flatten();
         let idle = next.is_none();
         match next {
             Some(chunk) => waiting.push_back(team.submit(chunk, waiting.len())),
             None if waiting.is_empty() => return Ok(()),
             None => {}
         }
-        if let Taken::Lost = take(&mut waiting, idle, sink)? {
+        if let Taken::Lost = take(&mut waiting, idle, &mut filler.spare, sink)? {
             return Ok(());
         }
     }
@@ -151,27 +162,72 @@ fn share_out<W: Work, E>(
 
 fn alone<W: Work, E>(
     work: &W,
-    mut items: impl Iterator<Item = W::Item>,
-    mut sink: impl FnMut(W::Output) -> Result<(), E>,
+    mut fill: impl FnMut(&mut W::Item) -> bool,
+    mut sink: impl FnMut(&mut W::Output) -> Result<(), E>,
 ) -> Result<(), E> {
     let mut scratch = work.scratch();
-    items.try_for_each(|item| sink(work.run(&mut scratch, item)))
+    let (mut item, mut output) = (W::Item::default(), W::Output::default());
+    while fill(&mut item) {
+        work.run(&mut scratch, &mut item, &mut output);
+        sink(&mut output)?;
+    }
+    Ok(())
 }
 
-fn next_chunk<W: Work>(
-    items: &mut impl Iterator<Item = W::Item>,
-    most: NonZeroUsize,
-) -> Option<Vec<W::Item>> {
-    let mut chunk = Vec::new();
-    let mut bytes = 0_usize;
-    while chunk.len() < most.get()
-        && bytes < CHUNK_BYTES
-        && let Some(item) = items.next()
-    {
-        bytes = bytes.saturating_add(W::bytes(&item));
-        chunk.push(item);
+/// Items on their way together, each with the place for its output.
+struct Chunk<W: Work> {
+    places: Vec<(W::Item, W::Output)>,
+    /// How many places are taken.
+    taken: usize,
+}
+
+/// Fills chunks.
+struct Filler<W: Work, F> {
+    fill: F,
+    /// Chunks that are done with.
+    spare: Vec<Chunk<W>>,
+    /// The most items of a chunk.
+    most: usize,
+    /// Items so far.
+    items: usize,
+    ended: bool,
+}
+
+impl<W: Work, F: FnMut(&mut W::Item) -> bool> Filler<W, F> {
+    fn new(plan: Plan, fill: F) -> Self {
+        Self {
+            fill,
+            spare: Vec::new(),
+            most: plan.chunk.get(),
+            items: 0,
+            ended: false,
+        }
     }
-    (!chunk.is_empty()).then_some(chunk)
+
+    /// The next chunk; `None` where there are no more items.
+    fn next(&mut self) -> Option<Chunk<W>> {
+        let mut chunk = self.spare.pop().unwrap_or(Chunk {
+            places: Vec::new(),
+            taken: 0,
+        });
+        chunk.taken = 0;
+        let most = self.most.min(SMALLEST_CHUNK.max(self.items / PART));
+        let mut bytes = 0_usize;
+        while chunk.taken < most && bytes < CHUNK_BYTES && !self.ended {
+            if chunk.taken == chunk.places.len() {
+                chunk.places.push(Default::default());
+            }
+            let item = &mut chunk.places[chunk.taken].0;
+            if (self.fill)(item) {
+                bytes = bytes.saturating_add(W::bytes(item));
+                chunk.taken += 1;
+            } else {
+                self.ended = true;
+            }
+        }
+        self.items = self.items.saturating_add(chunk.taken);
+        (chunk.taken > 0).then_some(chunk)
+    }
 }
 
 enum Taken {
@@ -183,18 +239,23 @@ enum Taken {
 }
 
 /// Takes the results that are there, from the oldest on; `wait`s for that one, if asked.
-fn take<T, E>(
-    waiting: &mut VecDeque<Receiver<Vec<T>>>,
+fn take<W: Work, E>(
+    waiting: &mut VecDeque<Receiver<Chunk<W>>>,
     mut wait: bool,
-    sink: &mut impl FnMut(T) -> Result<(), E>,
+    spare: &mut Vec<Chunk<W>>,
+    sink: &mut impl FnMut(&mut W::Output) -> Result<(), E>,
 ) -> Result<Taken, E> {
     while let Some(oldest) = waiting.front() {
-        let outputs = match std::mem::take(&mut wait) {
+        let chunk = match std::mem::take(&mut wait) {
             true => oldest.recv().map_err(TryRecvError::from),
             false => oldest.try_recv(),
         };
-        match outputs {
-            Ok(outputs) => outputs.into_iter().try_for_each(&mut *sink)?,
+        match chunk {
+            Ok(mut chunk) => {
+                let done = &mut chunk.places[..chunk.taken];
+                done.iter_mut().try_for_each(|(_, output)| sink(output))?;
+                spare.push(chunk);
+            }
             Err(TryRecvError::Empty) => break,
             Err(TryRecvError::Disconnected) => return Ok(Taken::Lost),
         }

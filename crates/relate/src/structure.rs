@@ -1,8 +1,6 @@
 //! One side of a comparison, prepared once.
 
-use molkin_graph::{
-    Canonical, CanonicalForm, Element, Formula, Key, Limits, Molecule, OrderError, Orderer,
-};
+use molkin_graph::{Canonical, Element, Formula, Key, Molecule, OrderError, Orderer};
 use thiserror::Error;
 
 /// Why a record cannot be compared.
@@ -49,41 +47,19 @@ pub struct Structure {
 }
 
 impl Structure {
-    /// Prepares a molecule. For many that are needed one at a time see [`Preparer`].
+    /// Prepares a molecule.
     ///
     /// # Errors
     /// [`PrepareError::NotOneStructure`] for unknown atoms, [`PrepareError::Order`] when a limit is
     /// reached.
-    pub fn new(orderer: &mut Orderer, mut molecule: Molecule) -> Result<Self, PrepareError> {
-        let mut structure = Self::empty();
-        structure.fill(orderer, &mut molecule)?;
-        Ok(structure)
-    }
-
-    /// Storage, no structure yet.
-    fn empty() -> Self {
-        Self {
-            molecule: Molecule::default(),
-            canonical: Canonical::default(),
-            formula: Formula::default(),
-            isotopes: Vec::new(),
-        }
-    }
-
-    /// Prepares a molecule in place of the one that is held, and exchanges the two. After an error
-    /// nothing here has a meaning.
-    fn fill(&mut self, orderer: &mut Orderer, molecule: &mut Molecule) -> Result<(), PrepareError> {
-        let unknown = |(atom, index)| (atom == Element::WILDCARD).then_some(index);
-        let elements = molecule.atoms().map(|atom| atom.element);
-        let atoms: Vec<u32> = elements.zip(0..).filter_map(unknown).collect();
-        if !atoms.is_empty() {
-            return Err(PrepareError::NotOneStructure { atoms });
-        }
-        std::mem::swap(&mut self.molecule, molecule);
-        orderer.order_into(&self.molecule, &mut self.canonical)?;
-        self.molecule.formula_into(&mut self.formula);
-        isotopes(&self.molecule, &mut self.isotopes);
-        Ok(())
+    pub fn new(orderer: &mut Orderer, molecule: Molecule) -> Result<Self, PrepareError> {
+        check_is_one_structure(&molecule)?;
+        Ok(Self {
+            canonical: orderer.order(&molecule)?,
+            formula: molecule.formula(),
+            isotopes: isotopes(&molecule),
+            molecule,
+        })
     }
 
     /// The molecule as drawn.
@@ -117,69 +93,28 @@ impl Structure {
     }
 }
 
-fn isotopes(molecule: &Molecule, counts: &mut Vec<(Element, u16, u32)>) {
-    counts.clear();
+/// Refuses molecules with unknown atoms.
+pub(crate) fn check_is_one_structure(molecule: &Molecule) -> Result<(), PrepareError> {
+    let unknown = |(atom, index)| (atom == Element::WILDCARD).then_some(index);
+    let elements = molecule.atoms().map(|atom| atom.element);
+    let atoms: Vec<u32> = elements.zip(0..).filter_map(unknown).collect();
+    if atoms.is_empty() {
+        Ok(())
+    } else {
+        Err(PrepareError::NotOneStructure { atoms })
+    }
+}
+
+pub(crate) fn isotopes(molecule: &Molecule) -> Vec<(Element, u16, u32)> {
     let stated = molecule
         .atoms()
         .filter_map(|atom| Some((atom.element, atom.isotope?, 1)));
-    counts.extend(stated);
+    let mut counts: Vec<(Element, u16, u32)> = stated.collect();
     counts.sort_unstable();
     counts.dedup_by(|next, kept| {
         let same = (next.0, next.1) == (kept.0, kept.1);
         kept.2 += u32::from(same);
         same
     });
-}
-
-/// Prepares one structure after another in the same memory; owns the scratch. One per thread.
-///
-/// # Examples
-/// ```
-/// use molkin_formats::{Record, smiles::Reader};
-/// use molkin_graph::Limits;
-/// use molkin_relate::Preparer;
-///
-/// let mut reader = Reader::default();
-/// let mut record = Record::default();
-/// let mut preparer = Preparer::new(Limits::default());
-/// let mut keys = Vec::new();
-/// for (line, text) in (1..).zip(["OCC", "CCO", "COC"]) {
-///     reader.read_into(text, line, &mut record)?;
-///     let structure = preparer.prepare(&mut record.molecule)?;
-///     keys.push(structure.canonical().compound_key());
-/// }
-/// assert_eq!(keys[0], keys[1]);
-/// assert_ne!(keys[0], keys[2]);
-/// # Ok::<(), Box<dyn std::error::Error>>(())
-/// ```
-#[derive(Debug)]
-pub struct Preparer {
-    orderer: Orderer,
-    structure: Structure,
-}
-
-impl Preparer {
-    /// A preparer with the given limits.
-    pub fn new(limits: Limits) -> Self {
-        Self {
-            orderer: Orderer::new(limits),
-            structure: Structure::empty(),
-        }
-    }
-
-    /// Prepares a molecule, and leaves in its place the storage of the one before for the next to be
-    /// read into; what that holds has no meaning.
-    ///
-    /// # Errors
-    /// As [`Structure::new`].
-    pub fn prepare(&mut self, molecule: &mut Molecule) -> Result<&Structure, PrepareError> {
-        self.structure.fill(&mut self.orderer, molecule)?;
-        Ok(&self.structure)
-    }
-
-    /// The structure prepared last, and its canonical form in place of one whose memory is reused.
-    pub fn form_into(&mut self, form: &mut CanonicalForm) -> &Structure {
-        self.orderer.form_into(&self.structure.canonical, form);
-        &self.structure
-    }
+    counts
 }

@@ -5,12 +5,14 @@
 mod describe;
 #[cfg(feature = "families")]
 mod families;
+mod findings;
 mod keys;
 mod pair;
 #[cfg(feature = "parquet")]
 mod parquet;
 mod prepared;
 mod table;
+mod samples;
 
 use molkin_formats::{Note as ReadNote, ReadError};
 use molkin_graph::Molecule;
@@ -21,6 +23,7 @@ use crate::remarks::Noted;
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
 #[cfg(feature = "families")]
 pub use families::{FamilyRow, FamilySummary, GroupSummary, SizeSummary, Sources};
+pub use findings::{Finding, FoundGroup};
 pub use keys::{KeyRow, KeyRows};
 #[cfg(feature = "families")]
 pub(crate) use keys::{prepare_message, read_message};
@@ -32,6 +35,10 @@ pub use pair::{
 pub use self::parquet::ParquetTable;
 pub use prepared::Prepared;
 pub use table::{ColumnKind, TableColumn, TableRow, Value};
+pub use samples::{
+    CAUTION, ExpectedMass, FormulaEntry, HypothesisEntry, MassEntry, SampleEntry, SampleName,
+    SampleRow, Tray, VerdictCount,
+};
 
 /// The version of the contract.
 pub const VERSION: u32 = 1;
@@ -139,7 +146,8 @@ impl From<&ReadError> for Error {
 }
 
 impl Error {
-    fn without_place(code: &str, message: String) -> Self {
+    /// An error that no place of a source shows.
+    pub fn without_place(code: &str, message: String) -> Self {
         Self {
             input: None,
             line: None,

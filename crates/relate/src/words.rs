@@ -2,6 +2,7 @@
 
 pub(crate) mod forms;
 mod functional;
+pub(crate) mod moves;
 mod places;
 mod stereo;
 mod stereo_groups;
@@ -11,7 +12,10 @@ mod tests;
 
 use molkin_graph::Limits;
 
-use crate::{Explanation, Kind, Relation, Structure, Verdict};
+use crate::{
+    Explanation, Kind, Relation, Structure, Verdict,
+    findings::{Change, Finding},
+};
 
 /// One or two sentences for a chemist.
 pub(crate) fn summary(
@@ -72,6 +76,10 @@ fn constitutional(
     let Some(bonds) = explained.and_then(|e| e.bonds.as_ref()) else {
         return verdict;
     };
+    let findings = explained.map_or(&[][..], |explained| &explained.findings);
+    if let Some(told) = foremost([a, b], findings, bonds.minimal) {
+        return format!("{verdict} {told}");
+    }
     let (only_a, only_b) = (bonds.only_in_a.len(), bonds.only_in_b.len());
     let differences = match (only_a + only_b, bonds.order_changed.len()) {
         (0, 0) => {
@@ -91,6 +99,30 @@ fn constitutional(
     } else {
         format!("{verdict} One way to see it, not proved the least: {differences}.")
     }
+}
+
+/// The most telling finding, and how many there are beside it.
+fn foremost(structures: [&Structure; 2], findings: &[Finding], minimal: bool) -> Option<String> {
+    let [first, others @ ..] = findings else {
+        return None;
+    };
+    let sentence = moves::sentence(structures, first);
+    let sentence = sentence.trim_end_matches('.');
+    // Groups are named with the verdict.
+    let others = others
+        .iter()
+        .filter(|finding| !matches!(finding.change, Change::Groups(_)));
+    let beside = match others.count() {
+        0 => String::new(),
+        1 => "; one more difference".to_owned(),
+        n => format!("; {n} more differences"),
+    };
+    Some(if minimal {
+        format!("{sentence}{beside}.")
+    } else {
+        let sentence = moves::within(sentence);
+        format!("One way to see it, not proved the least: {sentence}{beside}.")
+    })
 }
 
 /// "C2", "C2 and C3", "C2, C3 and C5".

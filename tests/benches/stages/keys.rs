@@ -15,8 +15,8 @@ fn key_row(bencher: Bencher<'_, '_>, name: &str) {
     let mut rows = KeyRows::new(Limits::default());
     let mut row = |text: &[u8]| {
         let mut records = Records::new("", text, Format::Smiles, options.clone());
-        let raw = records.cut().unwrap().unwrap();
-        parser.parse_into(raw, &mut outcome);
+        let mut raw = records.cut().unwrap().unwrap();
+        parser.parse_into(&mut raw, &mut outcome);
         let row = rows.row("", &mut outcome);
         (row.status, row.compound_key.clone())
     };

@@ -2,8 +2,7 @@
 //! what comes before.
 
 use divan::{Bencher, black_box};
-use molkin_graph::{Canonical, Limits, Orderer};
-use molkin_relate::Preparer;
+use molkin_graph::{Canonical, Identity, Limits, Orderer};
 
 use crate::inputs;
 
@@ -28,18 +27,14 @@ fn order_in_new_memory(bencher: Bencher<'_, '_>, name: &str) {
     bencher.bench_local(|| orderer.order(black_box(&molecule)));
 }
 
-/// What every comparison starts from.
+/// What names a record, in reused memory.
 #[divan::bench(args = inputs::NAMES)]
-fn prepare(bencher: Bencher<'_, '_>, name: &str) {
-    let mut molecule = inputs::molecule(name);
-    let mut preparer = Preparer::new(Limits::default());
-    let structure = preparer.prepare(&mut molecule).unwrap();
+fn identify(bencher: Bencher<'_, '_>, name: &str) {
+    let molecule = inputs::molecule(name);
+    let mut orderer = Orderer::new(Limits::default());
+    let mut identity = Identity::default();
+    orderer.identify_into(&molecule, &mut identity).unwrap();
     let expected = inputs::canonical(name).compound_key();
-    assert_eq!(structure.canonical().compound_key(), expected);
-    bencher
-        .with_inputs(|| inputs::molecule(name))
-        .bench_local_refs(|molecule| {
-            let prepared = preparer.prepare(molecule);
-            black_box(prepared.is_ok())
-        });
+    assert_eq!(identity.compound_key(), expected);
+    bencher.bench_local(|| orderer.identify_into(black_box(&molecule), &mut identity));
 }

@@ -71,9 +71,10 @@ impl Scratch {
             Side::Raw(raw) => self.parser.parse(*raw),
         };
         let prepared = Prepared::new(self.normaliser.orderer(), source, outcome);
-        Cow::Owned(match self.overlook.is_empty() {
-            true => prepared,
-            false => prepared.overlooking(&mut self.normaliser, self.overlook),
+        Cow::Owned(if self.overlook.is_empty() {
+            prepared
+        } else {
+            prepared.overlooking(&mut self.normaliser, self.overlook)
         })
     }
 }
@@ -93,8 +94,8 @@ impl Verdicts<'_> {
 }
 
 impl<'v> Work for Verdicts<'v> {
-    type Item = [Side<'v>; 2];
-    type Output = Verdict;
+    type Item = Option<[Side<'v>; 2]>;
+    type Output = Option<Verdict>;
     type Scratch = Scratch;
 
     fn scratch(&self) -> Scratch {
@@ -105,20 +106,26 @@ impl<'v> Work for Verdicts<'v> {
         }
     }
 
-    fn run(&self, scratch: &mut Scratch, [a, b]: [Side<'v>; 2]) -> Verdict {
+    fn run(
+        &self,
+        scratch: &mut Scratch,
+        pair: &mut Option<[Side<'v>; 2]>,
+        verdict: &mut Option<Verdict>,
+    ) {
+        let Some([a, b]) = pair.take() else { return };
         let [source_a, source_b] = self.sources;
         let a = scratch.ready(source_a, a);
         let b = scratch.ready(source_b, b);
         let sides = [&*a, &*b];
         let pair = wire::compare_by(&mut scratch.normaliser, &self.limits, sides, self.brief);
-        Verdict {
+        *verdict = Some(Verdict {
             outcome: Outcome::of(&pair),
             text: self.text(&pair, sides),
-        }
+        });
     }
 
-    fn bytes(sides: &[Side<'v>; 2]) -> usize {
-        let bytes = sides.iter().map(|side| match side {
+    fn bytes(pair: &Option<[Side<'v>; 2]>) -> usize {
+        let bytes = pair.iter().flatten().map(|side| match side {
             Side::Raw(raw) => raw.bytes(),
             Side::Read(_) | Side::Ready(_) => 0,
         });

@@ -13,7 +13,7 @@ use molkin_relate::{
 use crate::{
     args,
     exit::Status,
-    output::table::{Lines, Made, Table},
+    output::table::{Made, Table},
     report::Report,
     run::Failure,
 };
@@ -38,7 +38,7 @@ impl Listing<'_> {
         };
         let mut explanations = Explanations::new(self.options);
         let first = self.held.unwrap_or(0);
-        let wanted = families
+        let mut wanted = families
             .into_records()
             .filter(|grouped| {
                 grouped
@@ -55,12 +55,18 @@ impl Listing<'_> {
                 let explain = explanations.take(self.closest(&grouped));
                 Ok((grouped, explain))
             });
-        in_order(&work, self.plan, wanted, |row| {
-            let (row, whole) = row?;
-            if !whole {
+        let next = |item: &mut Option<_>| {
+            *item = wanted.next();
+            item.is_some()
+        };
+        in_order(&work, self.plan, next, |row: &mut Row| {
+            if let Some(failure) = row.failure.take() {
+                return Err(failure);
+            }
+            if row.lacks {
                 report.count(Status::Trouble);
             }
-            Ok::<_, Failure>(table.write(report.out(), &row)?)
+            Ok(table.write(report.out(), &row.made)?)
         })?;
         table.finish(report.out())?;
         explanations.say(report)
@@ -116,6 +122,15 @@ impl Explanations {
     }
 }
 
+/// What becomes of a record.
+#[derive(Default)]
+struct Row {
+    made: Made<FamilyRow>,
+    /// Whether something could not be found, or read.
+    lacks: bool,
+    failure: Option<Failure>,
+}
+
 /// From groups to rows.
 struct Rows<'l> {
     listing: &'l Listing<'l>,
@@ -123,39 +138,52 @@ struct Rows<'l> {
 }
 
 impl Work for Rows<'_> {
-    type Item = Result<(Grouped, bool), Failure>;
-    /// The row, and whether it lacks nothing.
-    type Output = Result<(Made<FamilyRow>, bool), Failure>;
-    type Scratch = (Lines, Orderer);
+    type Item = Option<Result<(Grouped, bool), Failure>>;
+    type Output = Row;
+    type Scratch = Orderer;
 
-    fn scratch(&self) -> (Lines, Orderer) {
-        let lines = Lines::new(self.listing.options.table.format);
-        (lines, Orderer::new(Limits::default()))
+    fn scratch(&self) -> Orderer {
+        Orderer::new(Limits::default())
     }
 
-    fn run(&self, (lines, orderer): &mut (Lines, Orderer), item: Self::Item) -> Self::Output {
-        let (grouped, explain) = item?;
-        let before = self.listing.before();
-        let mut row = FamilyRow::new(&grouped, self.listing.sources, before);
-        if explain {
-            let explanation = self.explain(orderer, &grouped);
-            row.explanation = explanation.map_err(Failure::Temporary)?;
-        }
-        Ok((lines.make(&row)?, row.message.is_empty()))
+    fn run(&self, orderer: &mut Orderer, item: &mut Self::Item, row: &mut Row) {
+        let made = match item.take() {
+            None => Ok(()),
+            Some(Err(failure)) => Err(failure),
+            Some(Ok((grouped, explain))) => self.make(orderer, &grouped, explain, row),
+        };
+        row.failure = made.err();
     }
 
     fn bytes(item: &Self::Item) -> usize {
         // An explanation may take thousands of times as long as a row without one: it goes alone.
         const EXPLANATION: usize = 1 << 16;
         match item {
-            Ok((_, true)) => EXPLANATION,
-            Ok((grouped, false)) => grouped.name.len() + size_of::<Grouped>(),
-            Err(_) => 0,
+            Some(Ok((_, true))) => EXPLANATION,
+            Some(Ok((grouped, false))) => grouped.name.len() + size_of::<Grouped>(),
+            Some(Err(_)) | None => 0,
         }
     }
 }
 
 impl Rows<'_> {
+    fn make(
+        &self,
+        orderer: &mut Orderer,
+        grouped: &Grouped,
+        explain: bool,
+        row: &mut Row,
+    ) -> Result<(), Failure> {
+        let before = self.listing.before();
+        let mut facts = FamilyRow::new(grouped, self.listing.sources, before);
+        if explain {
+            let explanation = self.explain(orderer, grouped);
+            facts.explanation = explanation.map_err(Failure::Temporary)?;
+        }
+        row.lacks = !facts.message.is_empty();
+        Ok(row.made.fill(self.listing.options.table.format, &facts)?)
+    }
+
     /// What a record is to the first one of its closest group.
     fn explain(&self, orderer: &mut Orderer, grouped: &Grouped) -> io::Result<Option<String>> {
         let Some((_, group)) = grouped.closest(self.listing.before()) else {

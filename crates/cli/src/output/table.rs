@@ -1,97 +1,78 @@
-//! Tables: comma-separated values (RFC 4180, but lines end in LF), objects one to a line, or columns.
+//! Tables: comma-separated values, objects one to a line, or columns.
 
-use std::{
-    fmt::Write as _,
-    io::{self, Write},
-};
+use std::io::{self, Write};
 
-use csv::{Terminator, Writer, WriterBuilder};
 use molkin_relate::wire::{ParquetTable, TableRow, VERSION, Value};
 use serde::ser::{SerializeMap as _, Serializer as _};
 
+use super::csv;
 use crate::args::TableFormat;
 
 /// A row as far as a thread by itself can bring it.
-pub(crate) enum Made<R> {
-    /// Its text.
-    Line(Vec<u8>),
-    /// The row: columns need all rows together.
-    Row(R),
+#[derive(Debug)]
+pub(crate) struct Made<R> {
+    line: Vec<u8>,
+    /// Columns need all rows together.
+    row: Option<R>,
 }
 
-/// Makes lines of rows; one per thread.
-pub(crate) struct Lines {
-    format: TableFormat,
-    /// Text of a number.
-    number: String,
+impl<R> Default for Made<R> {
+    fn default() -> Self {
+        let line = Vec::new();
+        Self { line, row: None }
+    }
 }
 
-impl Lines {
-    pub(crate) fn new(format: TableFormat) -> Self {
-        let number = String::new();
-        Self { format, number }
-    }
-
-    /// The line of a row, if lines are what is wanted.
-    pub(crate) fn make<R: TableRow + Clone>(&mut self, row: &R) -> io::Result<Made<R>> {
-        Ok(match self.format {
-            TableFormat::Csv => Made::Line(self.values(row)?),
-            TableFormat::Jsonl => Made::Line(object(row)?),
-            TableFormat::Parquet => Made::Row(row.clone()),
-        })
-    }
-
-    fn values(&mut self, row: &impl TableRow) -> io::Result<Vec<u8>> {
-        let mut writer = csv_writer();
-        for value in row.values() {
-            match value {
-                Value::Absent => writer.write_field("")?,
-                Value::Text(text) => writer.write_field(text)?,
-                Value::Number(number) => {
-                    self.number.clear();
-                    // Writing to a string does not fail.
-                    let _ = write!(self.number, "{number}");
-                    writer.write_field(&self.number)?;
-                }
-                Value::Truth(truth) => writer.write_field(if truth { "true" } else { "false" })?,
+impl<R: TableRow + Clone> Made<R> {
+    /// Makes it of a row, in place of the one before.
+    pub(crate) fn fill(&mut self, format: TableFormat, row: &R) -> io::Result<()> {
+        self.line.clear();
+        match format {
+            TableFormat::Csv => write_line(&mut self.line, row),
+            TableFormat::Jsonl => write_object(&mut self.line, row),
+            TableFormat::Parquet => {
+                self.row = Some(row.clone());
+                Ok(())
             }
         }
-        end(writer)
     }
 }
 
-fn csv_writer() -> Writer<Vec<u8>> {
-    WriterBuilder::new()
-        .terminator(Terminator::Any(b'\n'))
-        .buffer_capacity(1 << 10)
-        .from_writer(Vec::new())
-}
-
-/// Ends the line of a writer.
-fn end(mut writer: Writer<Vec<u8>>) -> io::Result<Vec<u8>> {
-    writer.write_record(None::<&[u8]>)?;
-    writer
-        .into_inner()
-        .map_err(|error| io::Error::new(error.error().kind(), error.to_string()))
+/// Fields go in one by one, as nothing but texts and numbers needs the generality of a serializer, which
+/// took longer than reading a record does.
+fn write_line(line: &mut Vec<u8>, row: &impl TableRow) -> io::Result<()> {
+    for (at, value) in row.values().enumerate() {
+        if at > 0 {
+            line.push(b',');
+        }
+        match value {
+            Value::Absent => {}
+            Value::Text(text) => csv::write_field(line, text),
+            Value::Word(word) => line.extend_from_slice(word.as_bytes()),
+            Value::Number(number) => write!(line, "{number}")?,
+            Value::Truth(truth) => write!(line, "{truth}")?,
+        }
+    }
+    line.push(b'\n');
+    Ok(())
 }
 
 /// A row as an object of those values that are there.
-fn object<R: TableRow>(row: &R) -> io::Result<Vec<u8>> {
-    let mut line = Vec::new();
-    let mut serializer = serde_json::Serializer::new(&mut line);
+fn write_object<R: TableRow>(line: &mut Vec<u8>, row: &R) -> io::Result<()> {
+    let mut serializer = serde_json::Serializer::new(&mut *line);
     let mut map = serializer.serialize_map(None)?;
     map.serialize_entry("version", &VERSION)?;
     for (column, value) in R::COLUMNS.iter().zip(row.values()) {
         match value {
             Value::Absent => {}
-            Value::Text(text) => map.serialize_entry(column.name, text)?,
+            Value::Text(text) | Value::Word(text) => map.serialize_entry(column.name, text)?,
             Value::Number(number) => map.serialize_entry(column.name, &number)?,
             Value::Truth(truth) => map.serialize_entry(column.name, &truth)?,
         }
     }
     map.end()?;
     line.push(b'\n');
-    Ok(line)
+    Ok(())
 }
 
 /// Writes the rows of one table, in order.
@@ -109,11 +90,8 @@ impl Table {
             TableFormat::Parquet => Some(ParquetTable::new::<R>()?),
             TableFormat::Jsonl => None,
             TableFormat::Csv => {
-                let mut writer = csv_writer();
-                for column in R::COLUMNS {
-                    writer.write_field(column.name)?;
-                }
-                out.write_all(&end(writer)?)?;
+                let names = R::COLUMNS.iter().map(|column| column.name);
+                writeln!(out, "{}", names.collect::<Vec<_>>().join(","))?;
                 None
             }
         };
@@ -124,17 +102,14 @@ impl Table {
     pub(crate) fn write<R: TableRow>(
         &mut self,
         out: &mut impl Write,
-        row: &Made<R>,
+        made: &Made<R>,
     ) -> io::Result<()> {
-        match (row, &mut self.columns) {
-            (Made::Line(line), _) => out.write_all(line),
-            (Made::Row(row), Some(columns)) => {
-                columns.write(row)?;
-                out.write_all(&columns.take()?)
-            }
-            // Rows are made for columns only.
-            (Made::Row(_), None) => Ok(()),
+        out.write_all(&made.line)?;
+        if let (Some(columns), Some(row)) = (&mut self.columns, &made.row) {
+            columns.write(row)?;
+            out.write_all(&columns.take()?)?;
         }
+        Ok(())
     }
 
     /// Ends the table.
@@ -142,6 +117,56 @@ impl Table {
         match self.columns {
             Some(columns) => out.write_all(&columns.finish()?),
             None => Ok(()),
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use molkin_relate::wire::KeyRow;
+
+    use super::*;
+
+    /// The writer of the csv crate is the reference.
+    #[test]
+    fn lines_are_those_of_a_general_writer() {
+        let texts = [
+            "",
+            "a",
+            "a b",
+            "a,b",
+            "\"",
+            "say \"no\", he",
+            "two\nlines",
+            "\r",
+            "é;'\t#",
+            "x\"y\"\"",
+        ];
+        let mut made = Made::default();
+        for (at, first) in texts.into_iter().enumerate() {
+            for second in texts {
+                let row = KeyRow {
+                    source: first.to_owned(),
+                    record: (at * 1_000) as u64,
+                    name: second.to_owned(),
+                    status: "ok",
+                    smiles: "C[C@H](O)/C=C/F".to_owned(),
+                    message: first.to_owned(),
+                    open: Some(at % 2 == 0),
+                    ..KeyRow::default()
+                };
+                made.fill(TableFormat::Csv, &row).unwrap();
+                let mut writer = ::csv::Writer::from_writer(Vec::new());
+                let fields = row.values().map(|value| match value {
+                    Value::Absent => String::new(),
+                    Value::Text(text) | Value::Word(text) => text.to_owned(),
+                    Value::Number(number) => number.to_string(),
+                    Value::Truth(truth) => truth.to_string(),
+                });
+                writer.write_record(fields).unwrap();
+                let expected = writer.into_inner().unwrap();
+                assert_eq!(made.line, expected);
+            }
         }
     }
 }

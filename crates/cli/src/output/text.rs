@@ -4,6 +4,7 @@ mod atoms;
 pub(crate) mod describe;
 mod layout;
 pub(crate) mod pair;
+pub(crate) mod samples;
 
 use std::io::{self, Write};
 

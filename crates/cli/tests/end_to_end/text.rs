@@ -14,11 +14,14 @@ fn compared(a: &str, b: &str) -> String {
 #[test]
 fn constitutional() {
     assert_snapshot!(compared("label.mol", "arrived.mol"), @r"
-    Constitutional isomers: the same formula C8H8O2, but other functional groups (aldehyde and ether in A, carboxylic ester in B). The least difference: one bond only in A and one bond only in B.
+    Constitutional isomers: the same formula C8H8O2, but other functional groups (aldehyde and ether in A, carboxylic ester in B). The methoxy group on C3 of A (para to the formyl group) is on C3 of B (the carbonyl carbon).
       A                 label.mol: QM-0417 label
                         C8H8O2  C1(OC)=CC=C(C=O)C=C1
       B                 arrived.mol: QM-0417 bottle
                         C8H8O2  C1(C(=O)OC)=CC=CC=C1
+      besides           The aldehyde (C7, O8) and the ether (O2) of A are a carboxylic ester (O2,
+                        C3, O4) in B.
+                        The rest, 9 of 10 bonds, is the same.
       only in A         O2–C3
       only in B         O2–C3
       hydrogens, A → B  C3 (no H) → C8 (1 H), C7 (1 H) → C3 (no H)
@@ -32,11 +35,13 @@ fn constitutional() {
 #[test]
 fn bond_orders() {
     assert_snapshot!(compared("C=CCO", "C/C=C/O"), @r"
-    Constitutional isomers: the same formula C3H6O, but other functional groups (alcohol and alkene in A, enol in B). The least difference: 2 bonds of different order.
+    Constitutional isomers: the same formula C3H6O, but other functional groups (alcohol and alkene in A, enol in B). The double bond C1=C2 of A is C2=C3 in B.
       A                 C=CCO
                         C3H6O  C(=C)CO
       B                 C/C=C/O
                         C3H6O  C(/C)=C\O
+      besides           The alkene (C1, C2) and the alcohol (O4) of A are an enol (C2, C3, O4) in B.
+                        The same atoms are bonded in both, 1 of 3 bonds in the same order.
       order, A → B      C1=C2 → C1–C2, C2–C3 → C2=C3
       hydrogens, A → B  C1 (2 H) → C1 (3 H), C3 (2 H) → C3 (1 H)
       chain in A        4 atoms: C1–C2–C3–O4
@@ -48,11 +53,13 @@ fn bond_orders() {
 #[test]
 fn chains() {
     assert_snapshot!(compared("CC(=O)CN", "NCCC=O"), @r"
-    Constitutional isomers: the same formula C3H7NO, but other functional groups (ketone in A, aldehyde in B). The least difference: one bond only in A and one bond only in B.
+    Constitutional isomers: the same formula C3H7NO, but other functional groups (ketone in A, aldehyde in B). The aminomethyl group on C2 of A (the carbonyl carbon) is on C3 of B (alpha to the carbonyl group).
       A                 CC(=O)CN
                         C3H7NO  C(=O)(C)CN
       B                 NCCC=O
                         C3H7NO  O=CCCN
+      besides           The ketone (C2, O3) of A is an aldehyde (C4, O5) in B.
+                        The rest, 3 of 4 bonds, is the same.
       only in A         C2–C4
       only in B         C2–C3
       hydrogens, A → B  C1 (3 H) → C3 (2 H), C2 (no H) → C4 (1 H)
@@ -78,11 +85,11 @@ fn kinds() {
     ];
     assert_snapshot!(lines.join("\n"), @r"
     Constitutional isomers: the same formula C2H6O, with the same isotopes in other places. All bonds agree; hydrogens, charges or isotopes sit elsewhere.
-    Constitutional isomers: the same formula C3H6, but a chain of one is closed to a ring in the other. The least difference: no bond only in A and one bond only in B.
+    Constitutional isomers: the same formula C3H6, but a chain of one is closed to a ring in the other. The three-membered ring closed by C2–C3 in B is open in A: C3 and C1 are not bonded; one more difference.
     Constitutional isomers: the same formula C3H8O3, but other functional groups (3 × alcohol in A, a group without a name in B). The least difference: 2 bonds only in A and 2 bonds only in B.
-    Constitutional isomers: the same formula C4H10, but another carbon skeleton. The least difference: one bond only in A and one bond only in B.
-    Constitutional isomers: the same formula C3H8O and the same functional groups, but in other places. The least difference: one bond only in A and one bond only in B.
-    Constitutional isomers: the same formula C6H16, but the atoms are connected differently. The least difference: one bond only in A and one bond only in B.
+    Constitutional isomers: the same formula C4H10, but another carbon skeleton. The methyl group on C3 of A is on C2 of B.
+    Constitutional isomers: the same formula C3H8O and the same functional groups, but in other places. The hydroxy group on C3 of A (a primary carbon) is on C2 of B (a secondary carbon).
+    Constitutional isomers: the same formula C6H16, but the atoms are connected differently. The methyl group on C5 of A is on C5 of B.
     Not isomers: the same elements (CH4), but a different isotopic composition.
     Not isomers but homologues: the same functional groups, and formulae that differ by CH2 units (CH4O and C3H8O).
     ");
@@ -215,11 +222,13 @@ fn budget_ended() {
     let outcome = run(&["compare", "OCC=C=CO", "O=CC=CCO", "--steps", "1"]);
     let (text, _) = outcome.out.split_once("\nThis compares").unwrap();
     assert_snapshot!(text, @r"
-    Constitutional isomers: the same formula C4H6O2, but other functional groups (a group without a name in A, enal in B). One way to see it, not proved the least: 2 bonds of different order.
+    Constitutional isomers: the same formula C4H6O2, but other functional groups (a group without a name in A, enal in B). One way to see it, not proved the least: a hydrogen on O6 of A is on C3 of B; one more difference.
       A                 OCC=C=CO
                         C4H6O2  C(=CO)=CCO
       B                 O=CC=CCO
                         C4H6O2  O=CC=CCO
+      besides           The double bond C4=C5 of A is O1=C2 in B.
+                        The same atoms are bonded in both, 3 of 5 bonds in the same order.
       order, A → B      C4=C5 → C2–C3, C5–O6 → O1=C2
       not proved least  The search ended at its budget; another map may change less. --steps N looks
                         further.

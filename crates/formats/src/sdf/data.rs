@@ -5,13 +5,17 @@ use crate::{
     molfile::{Line, Lines, decode},
 };
 
-/// Reads the data items behind a molfile into the record, in their order.
-pub(super) fn read(lines: &mut Lines<'_>, record: &mut Record) {
+/// Reads the data items behind a molfile into the record, in their order. Without `properties` there are
+/// only the notes.
+pub(super) fn read(lines: &mut Lines<'_>, record: &mut Record, properties: bool) {
     let mut stray_noted = false;
     while let Some(line) = lines.next() {
         if let Some(header) = line.text.strip_prefix(b">") {
-            let name = name(header);
-            let (value, closed) = value(lines);
+            let value = properties.then(|| value(lines));
+            let closed = match value {
+                Some((_, closed)) => closed,
+                None => lines.any(|line| line.is_blank()),
+            };
             if !closed {
                 record.notes.push(note(
                     "data-item-unclosed",
@@ -19,7 +23,8 @@ pub(super) fn read(lines: &mut Lines<'_>, record: &mut Record) {
                     "the value of this data item ends with the record, not with a blank line",
                 ));
             }
-            record.properties.push((name, value));
+            let value = value.map(|(value, _)| (name(header), value));
+            record.properties.extend(value);
         } else if !line.is_blank() && !stray_noted {
             stray_noted = true;
             record.notes.push(note(
@@ -99,7 +104,7 @@ mod tests {
     fn values_keep_their_lines_and_their_order() {
         let text = b"> <b>\none\ntwo\n\n\nstray\n> <a>\n\n> <b>\ncaf\xe9\n";
         let mut record = Record::default();
-        read(&mut Block::new(text, 7).lines(), &mut record);
+        read(&mut Block::new(text, 7).lines(), &mut record, true);
         let expected = [("b", "one\ntwo"), ("a", ""), ("b", "café")];
         assert_eq!(
             record.properties,
@@ -117,5 +122,8 @@ mod tests {
                 ("data-item-unclosed", Some(15))
             ]
         );
+        let mut without = Record::default();
+        read(&mut Block::new(text, 7).lines(), &mut without, false);
+        assert_eq!((without.notes, without.properties), (record.notes, vec![]));
     }
 }

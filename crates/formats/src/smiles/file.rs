@@ -1,6 +1,6 @@
 //! Files of SMILES: one record per line.
 
-use std::io::BufRead;
+use std::{borrow::Cow, io::BufRead};
 
 use super::{ReadOptions, Reader};
 use crate::{
@@ -57,7 +57,7 @@ impl<R: BufRead> Records<R> {
 
     /// The name on the line read last, also where its SMILES could not be read.
     pub fn title(&self) -> String {
-        title(&self.raw)
+        title(&self.raw).into_owned()
     }
 
     /// Cuts the next line out of the source; false at its end.
@@ -93,25 +93,31 @@ impl<R: BufRead> Records<R> {
 }
 
 /// The name on a line: what follows the first white space.
-pub(crate) fn title(raw: &RawText) -> String {
+pub(crate) fn title(raw: &RawText) -> Cow<'_, str> {
     let line = &raw.text;
     let white = line.iter().position(u8::is_ascii_whitespace);
     let rest = white.map_or(&[][..], |at| &line[at..]);
-    String::from_utf8_lossy(rest.trim_ascii()).into_owned()
+    String::from_utf8_lossy(rest.trim_ascii())
 }
 
-/// Parses a line; the storage of a record that is done with is reused.
+/// Parses a line in place of a record that is done with, whose storage is reused.
 pub(crate) fn parse_line(
     raw: &mut RawText,
     reader: &mut Reader,
-    mut record: Record,
-) -> Result<Record, ReadError> {
-    match raw.fault.take() {
-        Some(fault) => Err(fault),
-        None => {
-            reader.read_into(&raw.text, raw.first_line, &mut record)?;
-            Ok(record)
-        }
+    outcome: &mut Result<Record, ReadError>,
+) {
+    if let Some(fault) = raw.fault.take() {
+        *outcome = Err(fault);
+        return;
+    }
+    // A record is some hundred bytes: it stays where it is.
+    if outcome.is_err() {
+        *outcome = Ok(Record::default());
+    }
+    if let Ok(record) = outcome
+        && let Err(error) = reader.read_into(&raw.text, raw.first_line, record)
+    {
+        *outcome = Err(error);
     }
 }
 
@@ -122,7 +128,11 @@ impl<R: BufRead> Iterator for Records<R> {
         let mut raw = std::mem::take(&mut self.raw);
         let cut = self.cut(&mut raw);
         let outcome = match cut {
-            Ok(true) => Some(parse_line(&mut raw, &mut self.reader, Record::default())),
+            Ok(true) => {
+                let mut outcome = Ok(Record::default());
+                parse_line(&mut raw, &mut self.reader, &mut outcome);
+                Some(outcome)
+            }
             Ok(false) => None,
             Err(failure) => Some(Err(failure)),
         };

@@ -32,6 +32,16 @@ pub(super) enum BondKind {
     Open,
 }
 
+impl BondKind {
+    /// Electron pairs as they count towards the valence, one for a bond of an aromatic system.
+    fn pairs(self) -> u32 {
+        match self {
+            Self::Order(order) => u32::from(order.pairs()),
+            Self::Delocalised | Self::Open => 1,
+        }
+    }
+}
+
 /// Where the second atom of a bond lies, seen from the first.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub(super) enum Slope {
@@ -102,20 +112,19 @@ impl Syntax {
     /// [`Syntax::link_places`].
     pub(super) fn reserve_place(&mut self, atom: u32) -> u32 {
         let place = self.places.len() as u32;
-        let last = self.atoms[atom as usize].append(place);
-        self.push_place(last, NONE, NONE);
+        self.places.push(Place {
+            other: NONE,
+            bond: NONE,
+            next: NONE,
+        });
+        self.append(atom, place);
         place
     }
 
-    /// Adds a place behind the one that was the last of its atom.
+    /// Puts a place behind the others of its atom.
     #[inline]
-    fn push_place(&mut self, last: u32, other: u32, bond: u32) {
-        let place = self.places.len() as u32;
-        self.places.push(Place {
-            other,
-            bond,
-            next: NONE,
-        });
+    fn append(&mut self, atom: u32, place: u32) {
+        let last = self.atoms[atom as usize].append(place);
         if let Some(last) = self.places.get_mut(last as usize) {
             last.next = place;
         }
@@ -125,12 +134,16 @@ impl Syntax {
     #[inline]
     pub(super) fn link(&mut self, a: u32, b: u32, kind: BondKind, slope: Slope, place: (u32, u32)) {
         let bond = self.bonds.len() as u32;
-        for (atom, other) in [(a, b), (b, a)] {
-            let next = self.places.len() as u32;
-            let atom = &mut self.atoms[atom as usize];
-            atom.count(kind);
-            let last = atom.append(next);
-            self.push_place(last, other, bond);
+        let first = self.places.len() as u32;
+        self.places.extend([b, a].map(|other| Place {
+            other,
+            bond,
+            next: NONE,
+        }));
+        let pairs = kind.pairs();
+        for (atom, place) in [(a, first), (b, first + 1)] {
+            self.atoms[atom as usize].count(kind, pairs);
+            self.append(atom, place);
         }
         self.push_bond([a, b], kind, slope, place);
     }
@@ -151,7 +164,7 @@ impl Syntax {
             place.bond = bond;
         }
         for atom in ends {
-            self.atoms[atom as usize].count(kind);
+            self.atoms[atom as usize].count(kind, kind.pairs());
         }
         self.push_bond(ends, kind, slope, place);
     }

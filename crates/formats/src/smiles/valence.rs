@@ -5,7 +5,7 @@ use molkin_graph::{Atom, Element, PiDemand};
 use super::syntax::AtomSyntax;
 
 /// The valences from which implicit hydrogens follow (OpenSMILES, organic subset).
-fn listed(element: Element) -> &'static [u32] {
+const fn listed(element: Element) -> &'static [u32] {
     match element {
         Element::BORON => &[3],
         Element::CARBON => &[4],
@@ -17,6 +17,26 @@ fn listed(element: Element) -> &'static [u32] {
     }
 }
 
+/// The first of the listed valences, 0 where there is none: a table, as each atom of a record asks for
+/// it several times and comparing elements one after another is slower.
+fn lowest(element: Element) -> u32 {
+    static LOWEST: [u8; 54] = {
+        let mut lowest = [0; 54];
+        let mut number = 0;
+        while number < lowest.len() {
+            if let Some(element) = Element::from_number(number as u8)
+                && let [first, ..] = listed(element)
+            {
+                lowest[number] = *first as u8;
+            }
+            number += 1;
+        }
+        lowest
+    };
+    let lowest = LOWEST.get(usize::from(element.number()));
+    lowest.copied().map_or(0, u32::from)
+}
+
 /// The hydrogens of an atom that is written without brackets.
 ///
 /// They fill the smallest listed valence that the bonds do not exceed. An aromatic atom uses its
@@ -26,12 +46,15 @@ pub(super) fn implicit_hydrogens(atom: &AtomSyntax) -> u8 {
         return hydrogens_beside(atom.atom.element, atom.order_sum);
     }
     let ring = u32::from(!atom.multiple);
-    let lowest = listed(atom.atom.element).first();
-    lowest.map_or(0, |valence| valence.saturating_sub(atom.order_sum + ring)) as u8
+    lowest(atom.atom.element).saturating_sub(atom.order_sum + ring) as u8
 }
 
 /// The hydrogens of a bare symbol that is not aromatic, beside bonds whose orders have this sum.
 pub(super) fn hydrogens_beside(element: Element, order_sum: u32) -> u8 {
+    // Nearly all atoms are within their lowest valence.
+    if let Some(left) = lowest(element).checked_sub(order_sum) {
+        return left as u8;
+    }
     let mut valences = listed(element).iter();
     let fits = valences.find(|&&valence| valence >= order_sum);
     fits.map_or(0, |valence| valence - order_sum) as u8
@@ -48,11 +71,11 @@ pub(super) fn oddity(atom: &AtomSyntax, demand: PiDemand) -> Option<&'static str
         hydrogens,
         ..
     } = atom.atom;
-    let listed = listed(element);
     // By far most atoms are bare and within the first valence, a bond of the ring included.
-    if charge != 0 || !atom.bracket && atom.order_sum <= *listed.first()? {
+    if charge != 0 || !atom.bracket && atom.order_sum <= lowest(element) {
         return None;
     }
+    let listed = listed(element);
     let most = match element {
         Element::CHLORINE | Element::BROMINE | Element::IODINE => 7,
         _ => *listed.last()?,

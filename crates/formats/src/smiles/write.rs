@@ -23,8 +23,9 @@ mod tests;
 use molkin_graph::{BondOrder, CanonicalForm, Polyhedron, Shape};
 
 use self::{
-    emit::{Emitter, Step},
+    emit::Emitter,
     layout::Layout,
+    rows::Rows,
     slopes::Slopes,
     structure::{ArcTable, Structure},
     tags::Tags,
@@ -135,10 +136,10 @@ pub fn write(form: &CanonicalForm) -> Written {
 pub struct Writer {
     arcs: ArcTable,
     layout: Layout,
+    rows: Rows,
     /// Per atom: the hydrogens that are written as atoms.
     shown: Vec<u8>,
     tags: Tags,
-    steps: Vec<Step>,
 }
 
 impl Writer {
@@ -162,17 +163,18 @@ impl Writer {
             lost.push(Lost::StereoGroups);
         }
         let mut elements = form.stereo.iter();
-        let mut rows = Vec::new();
+        self.rows.clear();
         if elements.any(|element| element.shape != Shape::Tetrahedral) {
-            rows = rows::find(&structure);
+            self.rows.find(&structure);
         }
+        let rows = self.rows.all();
         let shown = &mut self.shown;
         shown.clear();
         shown.extend(form.atoms.iter().map(atom::shown_hydrogens));
-        let mut slopes = Slopes::solve(&structure, layout, &rows, lost);
+        let mut slopes = Slopes::solve(&structure, layout, rows, lost);
         slopes.show_hydrogens(&structure, shown);
         tags::show_hydrogens(&form.stereo, shown);
-        self.tags.load(&structure, layout, &rows, shown, lost);
+        self.tags.load(&structure, layout, rows, shown, lost);
         if layout.highest_label > layout::LAST_LABEL {
             lost.push(Lost::RingLabels {
                 highest: layout.highest_label,
@@ -185,7 +187,6 @@ impl Writer {
             shown,
             tags: &self.tags,
             slopes: &mut slopes,
-            steps: &mut self.steps,
             text,
         };
         emitter.emit();

@@ -8,6 +8,8 @@ use crate::{molfile, sdf, smiles};
 pub struct Parser {
     smiles: smiles::Reader,
     molfile: molfile::ReadOptions,
+    /// Whether properties are kept.
+    properties: bool,
 }
 
 impl Parser {
@@ -16,34 +18,41 @@ impl Parser {
         Self {
             smiles: smiles::Reader::new(options.smiles),
             molfile: options.molfile,
+            properties: !options.without_properties,
         }
     }
 
     /// Parses a record. What cannot be read is told in the outcome.
-    pub fn parse(&mut self, raw: RawRecord) -> RecordOutcome {
+    pub fn parse(&mut self, mut raw: RawRecord) -> RecordOutcome {
         let mut outcome = RecordOutcome::default();
-        self.parse_into(raw, &mut outcome);
+        self.parse_into(&mut raw, &mut outcome);
         outcome
     }
 
     /// As [`Parser::parse`], in place of an outcome that has been worked up, whose storage is reused
-    /// where the format allows.
-    pub fn parse_into(&mut self, raw: RawRecord, outcome: &mut RecordOutcome) {
+    /// where the format allows. The text is left as storage for
+    /// [`Records::cut_into`](super::Records::cut_into).
+    pub fn parse_into(&mut self, raw: &mut RawRecord, outcome: &mut RecordOutcome) {
         outcome.index = raw.index;
-        match raw.cut {
-            Cut::Smiles(mut raw) => {
-                outcome.name = smiles::title(&raw);
-                let storage = outcome.result.as_mut().map(std::mem::take);
-                let storage = storage.unwrap_or_default();
-                outcome.result = smiles::parse_line(&mut raw, &mut self.smiles, storage);
+        match &mut raw.cut {
+            Cut::Smiles(raw) => {
+                outcome.name.clear();
+                outcome.name.push_str(&smiles::title(raw));
+                smiles::parse_line(raw, &mut self.smiles, &mut outcome.result);
             }
-            Cut::Molfile(mut raw) => {
-                outcome.name = sdf::title(&raw);
-                outcome.result = sdf::parse(&mut raw, &self.molfile);
+            Cut::Molfile(raw) => {
+                outcome.name = sdf::title(raw);
+                outcome.result = sdf::parse(raw, &self.molfile, self.properties);
             }
             #[cfg(feature = "table")]
-            Cut::Row(mut raw) => {
-                (outcome.name, outcome.result) = raw.parse(&mut self.smiles, &self.molfile);
+            Cut::Row(raw) => {
+                let readers = (&mut self.smiles, &self.molfile);
+                raw.parse(readers, &mut outcome.name, &mut outcome.result);
+                if self.properties
+                    && let Ok(record) = &mut outcome.result
+                {
+                    record.properties = raw.properties();
+                }
             }
         }
     }

@@ -5,8 +5,9 @@ use crate::raw::RawText;
 use crate::table::RawRow;
 
 /// A record as text: where it starts and ends is known, and nothing else. See
-/// [`Records::cut`](super::Records::cut).
-#[derive(Debug)]
+/// [`Records::cut`](super::Records::cut). The default is storage for
+/// [`Records::cut_into`](super::Records::cut_into).
+#[derive(Debug, Default)]
 pub struct RawRecord {
     pub(super) index: u64,
     pub(super) cut: Cut,
@@ -19,6 +20,32 @@ pub(super) enum Cut {
     Molfile(RawText),
     #[cfg(feature = "table")]
     Row(RawRow),
+}
+
+impl Default for Cut {
+    fn default() -> Self {
+        Self::Smiles(RawText::default())
+    }
+}
+
+impl Cut {
+    /// The text, as storage to be reused.
+    pub(super) fn into_text(self) -> RawText {
+        match self {
+            Self::Smiles(raw) | Self::Molfile(raw) => raw,
+            #[cfg(feature = "table")]
+            Self::Row(row) => row.raw,
+        }
+    }
+
+    /// The row, as storage to be reused.
+    #[cfg(feature = "table")]
+    pub(super) fn into_row(self) -> RawRow {
+        match self {
+            Self::Row(row) => row,
+            Self::Smiles(raw) | Self::Molfile(raw) => RawRow::in_place_of(raw),
+        }
+    }
 }
 
 impl RawRecord {

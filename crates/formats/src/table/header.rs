@@ -61,10 +61,12 @@ impl Header {
         };
         let structure = asked(&columns.structure)?;
         let name = asked(&columns.name)?;
-        let Some(structure) = structure.or_else(|| usual(&titles, &STRUCTURES, name)) else {
+        let Some(structure) =
+            structure.or_else(|| usual(&titles, &STRUCTURES, |place| Some(place) == name))
+        else {
             return Err(HeaderError::NoStructures { columns: titles });
         };
-        let name = name.or_else(|| usual(&titles, &NAMES, Some(structure)));
+        let name = name.or_else(|| usual(&titles, &NAMES, |place| place == structure));
         Ok(Self {
             titles,
             structure,
@@ -74,7 +76,7 @@ impl Header {
 }
 
 /// The column of this title: as written, or else whatever its case.
-fn find(titles: &[String], wanted: &str) -> Option<usize> {
+pub(super) fn find(titles: &[String], wanted: &str) -> Option<usize> {
     let wanted = wanted.trim();
     let exact = titles.iter().position(|title| title == wanted);
     exact.or_else(|| {
@@ -85,12 +87,17 @@ fn find(titles: &[String], wanted: &str) -> Option<usize> {
     })
 }
 
-/// The first column with the first of the usual titles that there is; `taken` has its meaning.
-fn usual(titles: &[String], usual: &[&str], taken: Option<usize>) -> Option<usize> {
+/// The first column with the first of the usual titles that there is; those that are taken have their
+/// meaning.
+pub(super) fn usual(
+    titles: &[String],
+    usual: &[&str],
+    taken: impl Fn(usize) -> bool,
+) -> Option<usize> {
     let plain: Vec<String> = titles.iter().map(|title| plain(title)).collect();
     usual.iter().find_map(|usual| {
         let mut places = plain.iter().enumerate();
-        let found = places.find(|(place, title)| title == usual && Some(*place) != taken);
+        let found = places.find(|(place, title)| title == usual && !taken(*place));
         found.map(|(place, _)| place)
     })
 }

@@ -16,17 +16,25 @@ use crate::{
 /// The lines of a row and where its fields stand in them.
 #[derive(Debug, Default)]
 pub(crate) struct RawRow {
-    pub(super) raw: RawText,
+    pub(crate) raw: RawText,
     pub(super) row: Row,
     header: Arc<Header>,
 }
 
 impl RawRow {
-    /// Room for the rows below a header.
-    pub(super) fn new(header: Arc<Header>) -> Self {
+    /// Room for a row, in that of a text.
+    pub(crate) fn in_place_of(raw: RawText) -> Self {
         Self {
-            header,
+            raw,
             ..Self::default()
+        }
+    }
+
+    /// Makes this a row below a header.
+    pub(super) fn put_below(&mut self, header: &Arc<Header>) {
+        // Threads that share a header wait for each other to count it.
+        if !Arc::ptr_eq(&self.header, header) {
+            self.header = Arc::clone(header);
         }
     }
 
@@ -52,33 +60,43 @@ impl RawRow {
         }
     }
 
-    /// The name in the row, empty where there is none, and the record.
+    /// Reads the name in the row, none where there is none, and the record, in place of one that is done
+    /// with; its properties are left out.
     pub(crate) fn parse(
         &mut self,
-        reader: &mut smiles::Reader,
-        molfile: &molfile::ReadOptions,
-    ) -> (String, Result<Record, ReadError>) {
+        readers: (&mut smiles::Reader, &molfile::ReadOptions),
+        name: &mut String,
+        outcome: &mut Result<Record, ReadError>,
+    ) {
+        name.clear();
         if let Some(fault) = self.raw.fault.take() {
-            return (String::new(), Err(fault));
+            *outcome = Err(fault);
+            return;
         }
         let named = self.header.name.and_then(|column| self.row.field(column));
-        let title = named.map_or_else(String::new, |(_, name)| decode(name.trim_ascii()));
-        let outcome = self
+        if let Some((_, text)) = named {
+            name.push_str(&decode(text.trim_ascii()));
+        }
+        if outcome.is_err() {
+            *outcome = Ok(Record::default());
+        }
+        let Ok(record) = outcome else { return };
+        let read = self
             .check_count()
-            .and_then(|()| self.structure(reader, molfile));
-        match outcome {
-            Err(error) => (title, Err(error)),
-            Ok(mut record) => {
-                if self.header.name.is_some() {
-                    record.name.clone_from(&title);
-                }
-                record.properties = self.properties();
-                (record.name.clone(), Ok(record))
-            }
+            .and_then(|()| self.structure(readers, record));
+        if let Err(error) = read {
+            *outcome = Err(error);
+            return;
+        }
+        if named.is_some() {
+            record.name.clone_from(name);
+        } else {
+            name.clone_from(&record.name);
         }
     }
 
-    fn properties(&self) -> Vec<(String, String)> {
+    /// The fields that are neither structure nor name, with their titles.
+    pub(crate) fn properties(&self) -> Vec<(String, String)> {
         let Header {
             titles,
             structure,
@@ -113,38 +131,76 @@ impl RawRow {
 
     fn structure(
         &self,
-        reader: &mut smiles::Reader,
-        options: &molfile::ReadOptions,
-    ) -> Result<Record, ReadError> {
+        (reader, options): (&mut smiles::Reader, &molfile::ReadOptions),
+        record: &mut Record,
+    ) -> Result<(), ReadError> {
         let Some((field, value)) = self.row.field(self.header.structure) else {
-            return Ok(Record::default());
+            *record = Record::default();
+            return Ok(());
         };
-        // Blank lines in front belong to a molfile.
-        let (text, outcome) = if is_molfile(value) {
-            (value, molfile::parse_with(value, options))
-        } else {
-            let text = value.trim_ascii_start();
-            (text, reader.read(text.trim_ascii_end(), 1))
-        };
-        let blanks = value.len() - text.len();
+        let (blanks, outcome) = parse_value(value, reader, options, record);
         let moved = |span: Span| field.place(span, blanks);
-        match outcome {
-            Ok(mut record) => {
-                for note in &mut record.notes {
-                    note.span = note.span.map(moved);
-                }
-                Ok(record)
-            }
-            Err(error) => {
-                let line_at = |line| super::row::line_at(&self.raw.text, field, line);
-                Err(error.moved(moved, line_at))
-            }
+        for note in &mut record.notes {
+            note.span = note.span.map(moved);
         }
+        outcome.map_err(|error| {
+            let line_at = |line| super::row::line_at(&self.raw.text, field, line);
+            error.moved(moved, line_at)
+        })
     }
 
     /// The line on which a field begins.
     fn line_of(&self, field: &Field) -> &[u8] {
         super::row::line_at(&self.raw.text, field, field.line)
+    }
+}
+
+/// Reads the value of a field, a molfile or a SMILES, and tells how many blanks stand before it.
+fn parse_value(
+    value: &[u8],
+    reader: &mut smiles::Reader,
+    options: &molfile::ReadOptions,
+    record: &mut Record,
+) -> (usize, Result<(), ReadError>) {
+    // Blank lines in front belong to a molfile.
+    if is_molfile(value) {
+        let read = molfile::parse_with(value, options);
+        return (0, read.map(|read| *record = read));
+    }
+    let text = value.trim_ascii_start();
+    let outcome = reader.read_into(text.trim_ascii_end(), 1, record);
+    (value.len() - text.len(), outcome)
+}
+
+/// Reads a structure from a field of a [`super::Sheet`]: a molfile or a SMILES. `line` is that of the
+/// field; columns count within it.
+///
+/// # Errors
+/// [`ReadError`] if it is neither.
+pub fn parse_field(
+    value: &str,
+    line: u32,
+    reader: &mut smiles::Reader,
+    options: &molfile::ReadOptions,
+) -> Result<Record, ReadError> {
+    let mut record = Record::default();
+    let (blanks, outcome) = parse_value(value.as_bytes(), reader, options, &mut record);
+    let moved = |span: Span| Span {
+        line: span.line.saturating_add(line.saturating_sub(1)),
+        column: match span.line {
+            1 => span.column.saturating_add(blanks as u32),
+            _ => span.column,
+        },
+        ..span
+    };
+    let line_at = |wanted: u32| {
+        let ahead = wanted.saturating_sub(line) as usize;
+        let mut lines = value.as_bytes().split(|&byte| byte == b'\n');
+        lines.nth(ahead).unwrap_or_default()
+    };
+    match outcome {
+        Ok(()) => Ok(record),
+        Err(error) => Err(error.moved(moved, line_at)),
     }
 }
 

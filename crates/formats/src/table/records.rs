@@ -67,7 +67,7 @@ impl<R: BufRead> Records<R> {
             rows,
             reader: smiles::Reader::new(options.smiles),
             molfile: options.molfile,
-            raw: RawRow::new(Arc::clone(&header)),
+            raw: RawRow::default(),
             header,
             title: String::new(),
             ended: false,
@@ -101,16 +101,12 @@ impl<R: BufRead> Records<R> {
         self.title.clone()
     }
 
-    /// Cuts the next row out of the source, with an end where there is none.
+    /// Cuts the next row out of the source; false at its end.
     ///
     /// # Errors
     /// Those of the source itself, after which nothing more is read.
-    pub(crate) fn cut(&mut self) -> Result<Option<RawRow>, ReadError> {
-        let mut raw = RawRow::new(Arc::clone(&self.header));
-        Ok(self.cut_into(&mut raw)?.then_some(raw))
-    }
-
-    fn cut_into(&mut self, raw: &mut RawRow) -> Result<bool, ReadError> {
+    pub(crate) fn cut(&mut self, raw: &mut RawRow) -> Result<bool, ReadError> {
+        raw.put_below(&self.header);
         if self.ended {
             return Ok(false);
         }
@@ -137,11 +133,15 @@ impl<R: BufRead> Iterator for Records<R> {
     fn next(&mut self) -> Option<Self::Item> {
         self.title.clear();
         let mut raw = std::mem::take(&mut self.raw);
-        let outcome = match self.cut_into(&mut raw) {
+        let outcome = match self.cut(&mut raw) {
             Ok(true) => {
-                let (title, outcome) = raw.parse(&mut self.reader, &self.molfile);
-                self.title = title;
-                Some(outcome)
+                let mut outcome = Ok(Record::default());
+                let readers = (&mut self.reader, &self.molfile);
+                raw.parse(readers, &mut self.title, &mut outcome);
+                Some(outcome.map(|record| Record {
+                    properties: raw.properties(),
+                    ..record
+                }))
             }
             Ok(false) => None,
             Err(failure) => Some(Err(failure)),

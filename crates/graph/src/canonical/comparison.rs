@@ -91,7 +91,7 @@ struct Common {
 
 impl Canonical {
     pub(super) fn place(&self, candidate: &Candidate) -> Place {
-        claims::place(candidate, &self.bare)
+        claims::place(candidate, &self.bare())
     }
 
     /// The places of a variable's candidates.
@@ -103,10 +103,10 @@ impl Canonical {
     /// Whether automorphisms of the constitution take what is fixed to what is fixed: only then do
     /// canonical places mean the same in both records.
     fn is_closed(&self, fixed: &BTreeSet<Place>) -> bool {
-        let rank = |atom: u32| self.bare.rank[atom as usize];
+        let rank = |atom: u32| self.bare().rank[atom as usize];
         let metals = self.placed_places();
-        self.bare.generators.iter().all(|generator| {
-            let moved = |at: u32| rank(generator.image(self.bare.order[at as usize]));
+        self.bare().generators.iter().all(|generator| {
+            let moved = |at: u32| rank(generator.image(self.bare().order[at as usize]));
             fixed.iter().all(|&(shape, a, b)| {
                 let (a, b) = (moved(a), moved(b));
                 fixed.contains(&(shape, a.min(b), a.max(b)))
@@ -125,7 +125,7 @@ impl Canonical {
         self.perception
             .placed
             .iter()
-            .map(|placed| self.bare.rank[placed.centre as usize])
+            .map(|placed| self.bare().rank[placed.centre as usize])
             .collect()
     }
 
@@ -186,7 +186,7 @@ impl Orderer {
         for own in placed {
             if common
                 .metals
-                .contains(&canonical.bare.rank[own.centre as usize])
+                .contains(&canonical.bare().rank[own.centre as usize])
             {
                 let mut own = own.clone();
                 if mirrored {

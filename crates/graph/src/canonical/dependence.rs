@@ -82,7 +82,7 @@ impl Canonical {
         if !self.perception.placed.is_empty() {
             return None;
         }
-        Roles::of(&self.bare, &self.perception, &self.variables).symmetries
+        Roles::of(&self.bare(), &self.perception, &self.variables).symmetries
     }
 }
 

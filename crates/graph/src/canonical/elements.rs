@@ -79,12 +79,32 @@ impl Canonical {
     /// The stereo elements: those that are marked to effect, and the unmarked ones that are
     /// stereogenic.
     pub fn stereo_elements(&self) -> Vec<StereoElement> {
+        self.elements(|number, variable| match self.claims.statuses[number] {
+            Status::NotStereogenic => None,
+            Status::Marked => Some(variable.odd),
+            Status::Unmarked => Some(None),
+        })
+    }
+
+    /// Bridgeheads that determine each other, with marks that say nothing about the compound: both
+    /// arrangements are one, as in norbornene, or the rest of the record leaves them open. Their marks
+    /// say which of two like places is which in this drawing, and that is what their labels tell.
+    pub fn idle_bridgeheads(&self) -> Vec<StereoElement> {
+        self.elements(|number, variable| {
+            let idle = self.claims.statuses[number] != Status::Marked && variable.members.len() > 1;
+            (idle && variable.odd.is_some()).then_some(variable.odd)
+        })
+    }
+
+    /// The elements of the variables for which there is a word on whether, and how, they are marked.
+    fn elements(
+        &self,
+        given: impl Fn(usize, &Variable) -> Option<Option<bool>>,
+    ) -> Vec<StereoElement> {
         let mut found = Vec::new();
         for (number, variable) in self.variables.iter().enumerate() {
-            let given = match self.claims.statuses[number] {
-                Status::NotStereogenic => continue,
-                Status::Marked => variable.odd,
-                Status::Unmarked => None,
+            let Some(given) = given(number, variable) else {
+                continue;
             };
             for &(index, opposite) in &variable.members {
                 let candidate = &self.perception.candidates[index];

@@ -1,8 +1,7 @@
 //! The canonical form: the molecule as canonical text writes it, numbered in canonical order.
 
 use crate::{
-    Canonical, DrawnCoordination, Element, GroupKind, Ligand, Orderer, Parity, Shape,
-    claims::Status, stereo::slot,
+    Canonical, DrawnCoordination, Element, GroupKind, Ligand, Orderer, Parity, Shape, stereo::slot,
 };
 
 use super::placement::Placed;
@@ -93,7 +92,7 @@ impl Canonical {
             marked,
         } = scratch;
         self.list_marked_mobile_bonds(marked);
-        placed.place(&self.skeleton, &self.mesomer, &self.written, |bond| {
+        placed.place(&self.skeleton, &self.mesomer, &self.written(), |bond| {
             marked.contains(&bond)
         });
         form.atoms.clear();
@@ -108,7 +107,7 @@ impl Canonical {
 
     fn add_atoms(&self, form: &mut CanonicalForm, placed: &Placed, labelled: &mut Vec<Labelled>) {
         let mut next = self.skeleton.len() as u32;
-        for (host, &atom) in (0..).zip(&self.written.order) {
+        for (host, &atom) in (0..).zip(&self.written().order) {
             let record = &self.skeleton.atoms[atom as usize];
             let counts = [0, 4, 8].map(|shift| record.labelled >> shift & 15);
             let natural = u16::from(record.hydrogens).saturating_sub(counts.iter().sum());
@@ -137,10 +136,10 @@ impl Canonical {
     /// Adds the bonds by their lower atom, each with its labelled hydrogens, so that all are sorted.
     fn add_bonds(&self, form: &mut CanonicalForm, placed: &Placed, labelled: &[Labelled]) {
         let mut labelled = labelled.iter().peekable();
-        for (host, &atom) in (0..).zip(&self.written.order) {
+        for (host, &atom) in (0..).zip(&self.written().order) {
             let from = form.bonds.len();
             for &(to, bond) in self.skeleton.arcs(atom) {
-                let to = self.written.rank[to as usize];
+                let to = self.written().rank[to as usize];
                 if to > host {
                     form.bonds
                         .push((host, to, placed.drawing.orders[bond as usize]));
@@ -149,14 +148,16 @@ impl Canonical {
             while let Some(own) = labelled.next_if(|own| own.host == host) {
                 form.bonds.push((host, own.atom, 1));
             }
-            form.bonds[from..].sort_unstable();
+            if form.bonds.len() > from + 1 {
+                form.bonds[from..].sort_unstable();
+            }
         }
     }
 
     fn list_marked_mobile_bonds(&self, marked: &mut Vec<u32>) {
-        let places = self.variables.iter().zip(&self.claims.statuses);
+        let places = self.variables.iter().zip(&self.claims.shown);
         let bonds = places
-            .filter(|(variable, status)| variable.quiet && **status == Status::Marked)
+            .filter(|(variable, shown)| variable.quiet && shown.is_some())
             .flat_map(|(variable, _)| &variable.members)
             .map(|&(index, _)| &self.perception.candidates[index])
             .filter(|candidate| !candidate.remembered)
@@ -169,7 +170,7 @@ impl Canonical {
     }
 
     fn add_stereo(&self, form: &mut CanonicalForm, labelled: &[Labelled]) {
-        let rank = |atom: u32| self.written.rank[atom as usize];
+        let rank = |atom: u32| self.written().rank[atom as usize];
         for (variable, shown) in self.variables.iter().zip(&self.claims.shown) {
             let Some(odd) = *shown else {
                 continue;
@@ -210,7 +211,7 @@ impl Canonical {
             };
             let numbers: Vec<u32> = placed.ligands.iter().map(|&ligand| own(ligand)).collect();
             let turned = placed.polyhedron.least(&numbers);
-            let atoms = &self.written.order;
+            let atoms = &self.written().order;
             let back = |number: u32| atoms.get(number as usize).copied().unwrap_or(number);
             let ligands = turned
                 .into_iter()
@@ -237,7 +238,7 @@ impl Canonical {
                     .find(|own| own.host == centre && own.mass == mass);
                 own.map_or(Ligand::Hydrogen, |own| Ligand::Atom(own.atom))
             }
-            atom => Ligand::Atom(self.written.rank[atom as usize]),
+            atom => Ligand::Atom(self.written().rank[atom as usize]),
         }
     }
 }

@@ -51,7 +51,7 @@ pub struct NormalForm {
 impl Canonical {
     /// The normal form: what the constitution of the record is, whatever placement was drawn.
     pub fn normal_form(&self) -> NormalForm {
-        let atoms = self.written.order.iter().map(|&atom| {
+        let atoms = self.written().order.iter().map(|&atom| {
             let record = &self.skeleton.atoms[atom as usize];
             let state = &self.mesomer.states[atom as usize];
             NormalAtom {
@@ -64,7 +64,7 @@ impl Canonical {
                 open: (!state.mobile).then_some(state.open),
             }
         });
-        let rank = |atom: u32| self.written.rank[atom as usize];
+        let rank = |atom: u32| self.written().rank[atom as usize];
         let bonds = self.skeleton.bonds.iter().enumerate().map(|(index, bond)| {
             let order = self.mesomer.orders[index];
             NormalBond {
@@ -91,14 +91,14 @@ impl Canonical {
     /// Generators of the automorphism group of the constitution with isotopes, stereo left aside. Each
     /// lists the positions in [`Canonical::normal_form`] that it moves, ascending, with their images.
     pub fn automorphisms(&self) -> Vec<Vec<(u32, u32)>> {
-        let rank = |atom: u32| self.written.rank[atom as usize];
+        let rank = |atom: u32| self.written().rank[atom as usize];
         let images = |generator: Permutation<'_>| {
             let moved = generator.moved().iter();
             let mut images: Vec<_> = moved.map(|&(from, to)| (rank(from), rank(to))).collect();
             images.sort_unstable();
             images
         };
-        self.bare.generators.iter().map(images).collect()
+        self.bare().generators.iter().map(images).collect()
     }
 
     /// For each position in [`Canonical::normal_form`] a number of its orbit: atoms that automorphisms of
@@ -125,7 +125,7 @@ impl Canonical {
                 earlier[a.max(b) as usize] = a.min(b);
             }
         }
-        let atoms = self.written.order.iter();
+        let atoms = self.written().order.iter();
         atoms
             .map(|&atom| root(&earlier, rank[atom as usize]))
             .collect()
@@ -134,10 +134,10 @@ impl Canonical {
     /// Positions in [`Canonical::normal_form`] in the canonical order of the constitution with
     /// isotopes: two records of one labelled constitution match position by position.
     pub fn constitution_order(&self) -> Vec<u32> {
-        self.bare
+        self.bare()
             .order
             .iter()
-            .map(|&atom| self.written.rank[atom as usize])
+            .map(|&atom| self.written().rank[atom as usize])
             .collect()
     }
 }

@@ -97,6 +97,9 @@ impl Placed {
                 && matches!(element.group(), Some(15..=17))
                 && element.period() >= 3
         };
+        if drawing.charges.iter().all(|&charge| charge <= 0) {
+            return;
+        }
         centres.clear();
         centres.extend((0..skeleton.len() as u32).filter(is_centre));
         if centres.is_empty() {
@@ -164,7 +167,7 @@ fn neutralise(
 #[derive(Debug, Default)]
 struct Reading {
     drawn: Skeleton,
-    over_full: Vec<bool>,
+    octet: mesomer::OctetScratch,
     read: Mesomer,
     mesomer: mesomer::Scratch,
 }
@@ -191,7 +194,7 @@ impl Reading {
         for (bond, &order) in drawn.bonds.iter_mut().zip(&drawing.orders) {
             bond.order = order;
         }
-        mesomer::separate(drawn, &mut self.over_full);
+        mesomer::separate(drawn, &mut self.octet);
         let mut atoms = drawn.atoms.iter().zip(&separated.charges);
         let mut bonds = drawn.bonds.iter().zip(&separated.orders);
         if atoms.all(|(atom, &charge)| atom.charge == charge)

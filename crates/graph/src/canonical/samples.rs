@@ -65,7 +65,11 @@ struct Side<'c> {
 
 impl<'c> Side<'c> {
     fn of(canonical: &'c Canonical) -> Self {
-        let roles = Roles::of(&canonical.bare, &canonical.perception, &canonical.variables);
+        let roles = Roles::of(
+            &canonical.bare(),
+            &canonical.perception,
+            &canonical.variables,
+        );
         Self { canonical, roles }
     }
 

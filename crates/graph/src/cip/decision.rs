@@ -129,8 +129,8 @@ impl Contest {
         // Rule 5 is the one rule that reflection reverses. A label that the mirror image would share is
         // reflection-invariant.
         let mut image = self.clone();
-        let odd = self.finish(digraphs, false, budget)?;
-        let reflected = image.finish(digraphs, true, budget)?;
+        let odd = self.finish(digraphs, unit, false, budget)?;
+        let reflected = image.finish(digraphs, unit, true, budget)?;
         Ok(odd
             .zip(reflected)
             .map(|(odd, reflected)| Label::new(unit.shape, unit.odd ^ odd, odd != reflected)))
@@ -140,15 +140,21 @@ impl Contest {
         self.ends.iter().fold(false, |odd, end| odd ^ end.is_odd())
     }
 
-    /// Rules 5 and 6. Whether an odd permutation brings the ligands into falling order.
+    /// Rules 5 and 6. Whether an odd permutation brings the ligands into falling order. Rule 6 is for
+    /// what is stereogenic although ligands are alike: a bridgehead with an idle mark and like
+    /// ligands, as in adamantane, has no label.
     fn finish(
         &mut self,
         digraphs: &[&Digraph<'_>],
+        unit: &Unit,
         mirrored: bool,
         budget: &mut Budget<'_>,
     ) -> Result<Option<bool>, Exhausted> {
         for (end, digraph) in self.ends.iter_mut().zip(digraphs) {
             rules::rank_by_handedness(&mut end.ranking, digraph, mirrored, budget)?;
+        }
+        if unit.idle && self.is_tied() {
+            return Ok(None);
         }
         self.break_symmetry(digraphs, budget)
     }

@@ -27,13 +27,15 @@ pub(super) struct Unit {
     pub(super) ends: [u32; 2],
     pub(super) ligands: [Place; 4],
     pub(super) odd: bool,
+    /// A bridgehead whose mark says nothing about the compound.
+    pub(super) idle: bool,
     /// The atoms from the first end to the second, these left out.
     chain: Vec<u32>,
 }
 
 impl Unit {
     /// The unit of an element, if it is marked.
-    pub(super) fn new(canonical: &Canonical, element: &StereoElement) -> Option<Self> {
+    pub(super) fn new(canonical: &Canonical, element: &StereoElement, idle: bool) -> Option<Self> {
         let Mark::Given(parity) = element.mark else {
             return None;
         };
@@ -45,6 +47,7 @@ impl Unit {
             ends,
             ligands,
             odd: parity.is_odd(),
+            idle,
             chain: chain(skeleton, ends, &ligands)?,
         })
     }

@@ -28,6 +28,15 @@ pub(crate) struct Claims {
     pub(crate) groups: Vec<Piece>,
 }
 
+/// How much of the claims is asked for.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(crate) enum Extent {
+    /// What tells compounds apart, and what canonical text shows.
+    Identity,
+    /// What became of each element, and whether the set is open, as well.
+    All,
+}
+
 /// Unmarked elements that are listed at the most, whatever the limits say: 2 to this power.
 pub(super) const MOST_OPEN: u32 = 24;
 
@@ -114,6 +123,7 @@ impl Solver<'_> {
     pub(crate) fn solve(
         &mut self,
         bare: &Labelling,
+        extent: Extent,
         scratch: &mut Scratch,
         claims: &mut Claims,
         written: &mut Labelling,
@@ -153,16 +163,18 @@ impl Solver<'_> {
             self.keep_distinct(found, spare, free, bare)?;
         }
         self.write(bare, found, free, written)?;
-        self.list_statuses(orbits, free, never, &mut claims.statuses)?;
-        let beside_quiet = self.differs_beside_quiet(found, free)?;
         for member in &*found {
             claims.assignments.push(member.assignment.iter().copied());
             let words = member.labelling.certificate.iter();
             claims.certificates.push(words.copied());
         }
-        // Where the set has several members it is open by that; else the inversions of one tell.
-        let first = claims.assignments.iter().take(1);
-        claims.open = beside_quiet || self.is_open(first, orbits, free, never, trial)?;
+        if extent == Extent::All {
+            self.list_statuses(orbits, free, never, &mut claims.statuses)?;
+            // Where the set has several members it is open by that; else the inversions of one tell.
+            let first = claims.assignments.iter().take(1);
+            claims.open = self.differs_beside_quiet(found, free)?
+                || self.is_open(first, orbits, free, never, trial)?;
+        }
         let shown = variables.iter().zip(&*free);
         claims
             .shown
@@ -326,7 +338,7 @@ impl Solver<'_> {
 }
 
 impl Claims {
-    fn clear(&mut self) {
+    pub(crate) fn clear(&mut self) {
         self.free.clear();
         self.assignments.clear();
         self.certificates.clear();

@@ -1,7 +1,7 @@
 //! Places in the periodic table, by atomic number; worked out at compile time, since perception asks
 //! for them several times an atom.
 
-const COUNT: usize = super::Element::LAST as usize + 1;
+const COUNT: usize = super::Element::COUNT;
 
 /// The group of each element, `None` in the f block.
 pub(super) static GROUPS: [Option<u8>; COUNT] = {

@@ -9,6 +9,18 @@ const COLUMNS: usize = 27;
 /// Readers ask once an atom, so this is one indexed read and no comparison of strings.
 static NUMBERS: [u8; 26 * COLUMNS] = numbers();
 
+/// By atomic number: the place of the symbol in the alphabet, from 1; 0 for the wildcard.
+pub(super) static PLACES: [u16; SYMBOL_NUMBERS.len() + 1] = {
+    let mut places = [0; SYMBOL_NUMBERS.len() + 1];
+    let mut next = 0;
+    while next < SYMBOL_NUMBERS.len() {
+        let (symbol, number) = SYMBOL_NUMBERS[next];
+        places[number as usize] = 1 + place(symbol) as u16;
+        next += 1;
+    }
+    places
+};
+
 /// The atomic number of a symbol in its exact case.
 pub(super) fn number(symbol: &[u8]) -> Option<u8> {
     let place = match *symbol {
@@ -28,6 +40,15 @@ const fn cell(first: u8, second: Option<u8>) -> usize {
     (first - b'A') as usize * COLUMNS + column as usize
 }
 
+/// The place of a symbol of the list.
+const fn place(symbol: &str) -> usize {
+    match *symbol.as_bytes() {
+        [first] => cell(first, None),
+        [first, second] => cell(first, Some(second)),
+        _ => 0,
+    }
+}
+
 /// Fills the table from the list of symbols while compiling.
 const fn numbers() -> [u8; 26 * COLUMNS] {
     let mut numbers = [0; 26 * COLUMNS];
@@ -35,12 +56,7 @@ const fn numbers() -> [u8; 26 * COLUMNS] {
     // `for` isn't available in a constant function.
     while next < SYMBOL_NUMBERS.len() {
         let (symbol, number) = SYMBOL_NUMBERS[next];
-        let place = match *symbol.as_bytes() {
-            [first] => cell(first, None),
-            [first, second] => cell(first, Some(second)),
-            _ => 0,
-        };
-        numbers[place] = number;
+        numbers[place(symbol)] = number;
         next += 1;
     }
     numbers

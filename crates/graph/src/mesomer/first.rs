@@ -31,6 +31,9 @@ impl First {
         charges: &mut [i8],
     ) {
         self.matching.budget = u64::MAX;
+        for ring in mesomer.shifting.lone_rings.iter() {
+            alternate(ring, skeleton, rank, &marked, orders);
+        }
         for system in &mesomer.systems {
             let mobile = system
                 .bonds
@@ -50,12 +53,12 @@ impl First {
                 );
             }
         }
-        if !mesomer.shifting.is_empty() {
+        if !mesomer.shifting.joined.is_empty() {
             self.shift((skeleton, mesomer), rank, marked, orders);
         }
     }
 
-    /// The same for bonds that ring shifts move. The fixed bonds are the same in all placements, so
+    /// The same for bonds that ring shifts move, lone rings apart. The fixed bonds are the same in all placements, so
     /// the placements are the perfect matchings of the graph of the mobile ones, of which the drawing
     /// shows one.
     fn shift(
@@ -68,7 +71,7 @@ impl First {
         let Self { matching, bonds } = self;
         matching.reset(skeleton.len());
         bonds.clear();
-        for &bond in &mesomer.shifting {
+        for &bond in &mesomer.shifting.joined {
             let ends = &skeleton.bonds[bond as usize];
             matching.add_edge(ends.a, ends.b);
             if ends.order == 2 {
@@ -95,6 +98,28 @@ impl First {
                 }
             }
         }
+    }
+}
+
+/// The same for a ring whose bonds come in turn and that no mobile bond joins to others: its first
+/// bond is double, and that settles the rest.
+fn alternate(
+    ring: &[u32],
+    skeleton: &Skeleton,
+    rank: &[u32],
+    marked: impl Fn(u32) -> bool,
+    orders: &mut [u8],
+) {
+    let place = |bond: u32| {
+        let ends = &skeleton.bonds[bond as usize];
+        let (a, b) = (rank[ends.a as usize], rank[ends.b as usize]);
+        (!marked(bond), a.min(b), a.max(b))
+    };
+    let places = ring.iter().enumerate();
+    let first = places.min_by_key(|&(_, &bond)| place(bond));
+    let first = first.map_or(0, |(at, _)| at);
+    for (at, &bond) in ring.iter().enumerate() {
+        orders[bond as usize] = if at % 2 == first % 2 { 2 } else { 1 };
     }
 }
 

@@ -8,18 +8,44 @@ use crate::skeleton::Skeleton;
 
 use super::valence;
 
+/// Scratch that is reused from one molecule to the next.
+#[derive(Debug, Default)]
+pub(crate) struct Scratch {
+    /// Atoms of groups 15 to 17 whose electrons exceed the octet in the drawing.
+    beyond_octet: Vec<u32>,
+    /// Per atom.
+    over_full: Vec<bool>,
+}
+
 /// Rewrites charges and bond orders of the skeleton in place.
 ///
 /// A π bond between two over-full atoms waits until one of them is full: giving the charge to either
 /// would let the numbering decide. So the table is applied in rounds, each decided by what was
-/// over-full at its start; what is left between two over-full atoms stays as drawn. `over_full` is
-/// scratch.
-pub(crate) fn separate(skeleton: &mut Skeleton, over_full: &mut Vec<bool>) {
+/// over-full at its start; what is left between two over-full atoms stays as drawn.
+pub(crate) fn separate(skeleton: &mut Skeleton, scratch: &mut Scratch) {
+    let Scratch {
+        beyond_octet,
+        over_full,
+    } = scratch;
+    // Giving up a bond takes from what exceeds the octet of one atom and changes nothing at the other,
+    // so no atom comes to be beyond its octet on the way, and most records have none.
+    let is_beyond = |&atom: &u32| {
+        valence::is_group_15_to_17(skeleton.atoms[atom as usize].element)
+            && excess(skeleton, atom) > 0
+    };
+    beyond_octet.clear();
+    beyond_octet.extend((0..skeleton.len() as u32).filter(is_beyond));
+    if beyond_octet.is_empty() {
+        return;
+    }
     loop {
         over_full.clear();
-        over_full.extend((0..skeleton.len() as u32).map(|atom| is_over_full(skeleton, atom)));
+        over_full.resize(skeleton.len(), false);
+        for &atom in &*beyond_octet {
+            over_full[atom as usize] = is_over_full(skeleton, atom);
+        }
         let mut changed = false;
-        for atom in 0..skeleton.len() as u32 {
+        for &atom in &*beyond_octet {
             if !over_full[atom as usize] {
                 continue;
             }

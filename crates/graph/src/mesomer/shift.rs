@@ -7,25 +7,65 @@
 use crate::{
     Limits, OrderError,
     matching::{Matching, NONE},
+    rows::Rows,
     skeleton::Skeleton,
 };
 
 use super::{MOBILE, mobile::within};
 
+/// The mobile bonds that ring shifts move.
+#[derive(Debug, Default, Clone)]
+pub(super) struct Shifting {
+    /// Those of each ring that nothing joins to others, in the order of a walk around it.
+    pub(super) lone_rings: Rows<u32>,
+    /// All others.
+    pub(super) joined: Vec<u32>,
+}
+
 /// Scratch of the search.
 #[derive(Debug, Default)]
 pub(super) struct Shift {
-    /// Per atom: the other end of its double bond, [`NONE`] for atoms that take no part.
-    partner: Vec<u32>,
-    /// Per atom: its bonds to others that take part.
-    degree: Vec<u32>,
+    /// Per atom of the skeleton.
+    members: Vec<Member>,
+    /// How many of them take part.
+    left: usize,
+    /// The ring bonds between atoms that took part at first.
+    bonds: Vec<u32>,
     ends: Vec<u32>,
     /// Atoms of a walk, each with the bond that leads on.
     walked: Vec<(u32, u32)>,
 }
 
+/// An atom as part of the graph of ring bonds between atoms with a double bond in a ring.
+#[derive(Debug, Clone, Copy)]
+struct Member {
+    /// The other end of its double bond, [`NONE`] for atoms that take no part.
+    partner: u32,
+    double_bond: u32,
+    /// Its bonds in that graph.
+    degree: u32,
+    /// These bonds, and the atoms beyond, all in one by exclusive or: of two the one is known by the
+    /// other, so walks along chains and rings need no lists of neighbours.
+    bonds: u32,
+    atoms: u32,
+}
+
+const OUTSIDE: Member = Member {
+    partner: NONE,
+    double_bond: NONE,
+    degree: 0,
+    bonds: 0,
+    atoms: 0,
+};
+
+impl Member {
+    fn takes_part(&self) -> bool {
+        self.partner != NONE
+    }
+}
+
 impl Shift {
-    /// Marks the mobile bonds in `orders` and lists them in `mobile`. Atoms outside `takes_part` stay
+    /// Marks the mobile bonds in `orders` and lists them in `shifting`. Atoms outside `takes_part` stay
     /// as they are drawn.
     ///
     /// # Errors
@@ -37,133 +77,163 @@ impl Shift {
         matching: &mut Matching,
         limits: &Limits,
         orders: &mut [u8],
-        mobile: &mut Vec<u32>,
+        shifting: &mut Shifting,
     ) -> Result<(), OrderError> {
-        mobile.clear();
-        if !self.pair(skeleton, takes_part) {
+        shifting.lone_rings.clear();
+        shifting.joined.clear();
+        self.pair(skeleton, takes_part);
+        if self.left == 0 {
             return Ok(());
         }
+        self.link(skeleton);
         self.prune(skeleton);
-        self.take_lone_rings(skeleton, orders, mobile);
-        if self.partner.iter().all(|&other| other == NONE) {
+        self.take_lone_rings(orders, &mut shifting.lone_rings);
+        if self.left == 0 {
             return Ok(());
         }
         self.connect(skeleton, matching);
         self.ask_double_bonds(skeleton, matching, limits, orders)?;
         self.ask_single_bonds(skeleton, matching, limits, orders)?;
-        let bonds = 0..skeleton.bonds.len() as u32;
-        mobile.extend(
-            bonds.filter(|&bond| self.joins(skeleton, bond) && orders[bond as usize] == MOBILE),
-        );
+        let is_mobile = |&bond: &u32| orders[bond as usize] == MOBILE && self.joins(skeleton, bond);
+        shifting
+            .joined
+            .extend(self.bonds.iter().copied().filter(is_mobile));
         Ok(())
     }
 
-    /// Finds the partners; whether there are any. A double bond outside rings is on no cycle.
-    fn pair(&mut self, skeleton: &Skeleton, takes_part: impl Fn(u32) -> bool) -> bool {
-        self.partner.clear();
-        self.partner.resize(skeleton.len(), NONE);
-        let mut found = false;
-        for (bond, &in_ring) in skeleton.bonds.iter().zip(&skeleton.ring) {
-            if in_ring && bond.order == 2 && takes_part(bond.a) && takes_part(bond.b) {
-                self.partner[bond.a as usize] = bond.b;
-                self.partner[bond.b as usize] = bond.a;
-                found = true;
+    /// Finds the partners. A double bond outside rings is on no cycle.
+    fn pair(&mut self, skeleton: &Skeleton, takes_part: impl Fn(u32) -> bool) {
+        self.members.clear();
+        self.members.resize(skeleton.len(), OUTSIDE);
+        self.left = 0;
+        for ((index, bond), &in_ring) in (0..).zip(&skeleton.bonds).zip(&skeleton.ring) {
+            if bond.order == 2 && in_ring && takes_part(bond.a) && takes_part(bond.b) {
+                for (atom, partner) in [(bond.a, bond.b), (bond.b, bond.a)] {
+                    let member = &mut self.members[atom as usize];
+                    (member.partner, member.double_bond) = (partner, index);
+                }
+                self.left += 2;
             }
         }
-        found
     }
 
-    /// Whether a ring bond lies between two atoms that take part.
+    /// Lists the ring bonds between atoms that take part, and counts them at each atom.
+    fn link(&mut self, skeleton: &Skeleton) {
+        self.bonds.clear();
+        for ((index, bond), &in_ring) in (0..).zip(&skeleton.bonds).zip(&skeleton.ring) {
+            let both = |members: &[Member]| {
+                members[bond.a as usize].takes_part() && members[bond.b as usize].takes_part()
+            };
+            if in_ring && matches!(bond.order, 1 | 2) && both(&self.members) {
+                self.bonds.push(index);
+                for (atom, other) in [(bond.a, bond.b), (bond.b, bond.a)] {
+                    let member = &mut self.members[atom as usize];
+                    member.degree += 1;
+                    member.bonds ^= index;
+                    member.atoms ^= other;
+                }
+            }
+        }
+    }
+
+    /// Whether a bond of the list lies between two atoms that still take part.
     fn joins(&self, skeleton: &Skeleton, bond: u32) -> bool {
         let ends = &skeleton.bonds[bond as usize];
-        skeleton.ring[bond as usize]
-            && matches!(ends.order, 1 | 2)
-            && self.partner[ends.a as usize] != NONE
-            && self.partner[ends.b as usize] != NONE
+        [ends.a, ends.b]
+            .iter()
+            .all(|&atom| self.members[atom as usize].takes_part())
+    }
+
+    fn remove(&mut self, atom: u32) {
+        self.members[atom as usize].partner = NONE;
+        self.left -= 1;
     }
 
     /// Takes out double bonds with an end that has no other bond, as these are on no cycle, until
     /// there are none.
     fn prune(&mut self, skeleton: &Skeleton) {
-        self.degree.clear();
-        self.degree.resize(skeleton.len(), 0);
-        for bond in 0..skeleton.bonds.len() as u32 {
-            if self.joins(skeleton, bond) {
-                let ends = &skeleton.bonds[bond as usize];
-                self.degree[ends.a as usize] += 1;
-                self.degree[ends.b as usize] += 1;
-            }
-        }
         self.ends.clear();
-        let atoms = 0..skeleton.len() as u32;
+        let is_end = |(atom, member): (u32, &Member)| (member.degree == 1).then_some(atom);
         self.ends
-            .extend(atoms.filter(|&atom| self.degree[atom as usize] == 1));
+            .extend((0..).zip(&self.members).filter_map(is_end));
         while let Some(end) = self.ends.pop() {
-            let other = self.partner[end as usize];
+            let other = self.members[end as usize].partner;
             if other == NONE {
                 continue;
             }
-            for atom in [end, other] {
-                for &(to, bond) in skeleton.arcs(atom) {
-                    if self.joins(skeleton, bond) {
-                        self.degree[to as usize] -= 1;
-                        if self.degree[to as usize] == 1 {
-                            self.ends.push(to);
-                        }
+            self.remove(end);
+            self.remove(other);
+            for &(to, bond) in skeleton.arcs(other) {
+                let member = &mut self.members[to as usize];
+                let order = skeleton.bonds[bond as usize].order;
+                if member.takes_part() && skeleton.ring[bond as usize] && order == 1 {
+                    member.degree -= 1;
+                    member.bonds ^= bond;
+                    member.atoms ^= other;
+                    if member.degree == 1 {
+                        self.ends.push(to);
                     }
                 }
-                self.partner[atom as usize] = NONE;
             }
         }
     }
 
     /// Marks the rings that have no bond to anything else that is left, as most benzene rings do:
     /// each is an alternating cycle. They leave the graph, so that only fused rings need a matching.
-    fn take_lone_rings(&mut self, skeleton: &Skeleton, orders: &mut [u8], mobile: &mut Vec<u32>) {
-        for start in 0..skeleton.len() as u32 {
-            if self.partner[start as usize] == NONE {
+    fn take_lone_rings(&mut self, orders: &mut [u8], lone_rings: &mut Rows<u32>) {
+        for start in 0..self.members.len() as u32 {
+            let member = &self.members[start as usize];
+            if !member.takes_part() || member.degree != 2 {
                 continue;
             }
-            let closed = self.walk(skeleton, start);
-            for &(atom, bond) in &self.walked {
+            let closed = self.walk(start);
+            if closed {
+                lone_rings.push(self.walked.iter().map(|&(_, bond)| bond));
+            }
+            for at in 0..self.walked.len() {
+                let (atom, bond) = self.walked[at];
                 if closed {
-                    self.partner[atom as usize] = NONE;
+                    self.remove(atom);
                     orders[bond as usize] = MOBILE;
-                    mobile.push(bond);
                 } else {
                     // No later walk comes this way again.
-                    self.degree[atom as usize] = 0;
+                    self.members[atom as usize].degree = 0;
                 }
             }
         }
     }
 
-    /// Walks on over atoms with two bonds; whether that leads back to the start.
-    fn walk(&mut self, skeleton: &Skeleton, start: u32) -> bool {
+    /// Walks on over atoms with two bonds, first along the double bond; whether that leads back to the
+    /// start.
+    fn walk(&mut self, start: u32) -> bool {
         self.walked.clear();
-        let (mut at, mut came) = (start, None);
-        while self.degree[at as usize] == 2 {
-            let mut arcs = skeleton.arcs(at).iter();
-            let onward = arcs.find(|&&(_, bond)| Some(bond) != came && self.joins(skeleton, bond));
-            let Some(&(to, bond)) = onward else {
+        let (mut at, mut from) = (start, start);
+        let mut bond = 0;
+        loop {
+            let member = &self.members[at as usize];
+            if member.degree != 2 {
                 return false;
+            }
+            let (to, onward) = if at == start {
+                (member.partner, member.double_bond)
+            } else {
+                (member.atoms ^ from, member.bonds ^ bond)
             };
-            self.walked.push((at, bond));
+            self.walked.push((at, onward));
             if to == start {
                 return true;
             }
-            (at, came) = (to, Some(bond));
+            (from, at, bond) = (at, to, onward);
         }
-        false
     }
 
     fn connect(&self, skeleton: &Skeleton, matching: &mut Matching) {
         matching.reset(skeleton.len());
-        for bond in 0..skeleton.bonds.len() as u32 {
+        for &bond in &self.bonds {
             if self.joins(skeleton, bond) {
                 let ends = &skeleton.bonds[bond as usize];
                 matching.add_edge(ends.a, ends.b);
-                if self.partner[ends.a as usize] == ends.b {
+                if ends.order == 2 {
                     matching.join(ends.a, ends.b);
                 }
             }
@@ -181,9 +251,12 @@ impl Shift {
         limits: &Limits,
         orders: &mut [u8],
     ) -> Result<(), OrderError> {
-        for a in 0..skeleton.len() as u32 {
-            let b = self.partner[a as usize];
-            if b == NONE || b < a || matching.mate(a) != b || is_mobile(skeleton, orders, a, b) {
+        for at in 0..self.bonds.len() {
+            let bond = self.bonds[at];
+            let ends = &skeleton.bonds[bond as usize];
+            let (a, b) = (ends.a, ends.b);
+            // A bond that shifts have made single by now is mobile already.
+            if orders[bond as usize] != 2 || !self.joins(skeleton, bond) {
                 continue;
             }
             matching.part(a);
@@ -197,7 +270,7 @@ impl Shift {
                 matching.undo_to(0);
                 for atom in [a, b] {
                     matching.set_removed(atom, true);
-                    self.partner[atom as usize] = NONE;
+                    self.remove(atom);
                 }
             }
         }
@@ -212,7 +285,7 @@ impl Shift {
         limits: &Limits,
         orders: &mut [u8],
     ) -> Result<(), OrderError> {
-        for bond in 0..skeleton.bonds.len() as u32 {
+        for &bond in &self.bonds {
             if orders[bond as usize] == MOBILE || !self.joins(skeleton, bond) {
                 continue;
             }
@@ -225,11 +298,6 @@ impl Shift {
         }
         Ok(())
     }
-}
-
-fn is_mobile(skeleton: &Skeleton, orders: &[u8], a: u32, b: u32) -> bool {
-    let bond = skeleton.bond_between(a, b);
-    bond.is_some_and(|bond| orders[bond as usize] == MOBILE)
 }
 
 /// Marks the bonds of an alternating cycle, on which the matching has just changed, and takes the

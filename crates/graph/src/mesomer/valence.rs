@@ -42,7 +42,7 @@ pub(crate) fn is_group_15_to_17(element: Element) -> bool {
 }
 
 /// The valence of the neutral atom in its octet.
-pub(crate) fn neutral(element: Element) -> i32 {
+pub(crate) const fn neutral(element: Element) -> i32 {
     match element.group() {
         Some(13) => 3,
         Some(14) => 4,

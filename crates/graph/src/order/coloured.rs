@@ -279,9 +279,11 @@ impl Coloured {
 
     /// Whether some vertex has more neighbours than refinement keys can count.
     pub(crate) fn exceeds_degree(&self) -> bool {
-        self.start
-            .windows(2)
-            .any(|pair| pair[1] - pair[0] >= 1 << COUNT_BITS)
+        self.arcs.len() >= 1 << COUNT_BITS
+            && self
+                .start
+                .windows(2)
+                .any(|pair| pair[1] - pair[0] >= 1 << COUNT_BITS)
     }
 }
 

@@ -37,7 +37,7 @@ pub(crate) struct Partition {
     /// undone by joining it to what precedes it.
     log: Vec<(u32, u32)>,
     /// Scratch: colours with their vertices.
-    coloured: Vec<(u64, u32)>,
+    coloured: Vec<u64>,
 }
 
 impl Clone for Partition {
@@ -61,10 +61,7 @@ impl Clone for Partition {
 impl Partition {
     /// Starts with all vertices, ordered by colour, equal colours in one cell.
     pub(super) fn load(&mut self, colours: &[u64]) {
-        self.coloured.clear();
-        self.coloured.extend(colours.iter().copied().zip(0..));
-        self.coloured.sort_unstable();
-        self.lab.clear();
+        self.sort_by_colour(colours);
         for table in [&mut self.pos, &mut self.cell] {
             table.resize(colours.len(), 0);
         }
@@ -73,16 +70,37 @@ impl Partition {
         self.cells = 0;
         self.log.clear();
         let (mut start, mut before) = (0, None);
-        for (at, &(colour, vertex)) in self.coloured.iter().enumerate() {
+        for (at, &vertex) in self.lab.iter().enumerate() {
+            let colour = colours[vertex as usize];
             if before != Some(colour) {
                 (start, before) = (at, Some(colour));
                 self.cells += 1;
             }
-            self.lab.push(vertex);
             self.pos[vertex as usize] = at as u32;
             self.cell[vertex as usize] = start as u32;
             self.len[start] += 1;
         }
+    }
+
+    /// Lists the vertices by colour. Where both fit, colour and vertex are sorted as one word, which takes
+    /// half the time that it takes to sort pairs.
+    fn sort_by_colour(&mut self, colours: &[u64]) {
+        self.lab.clear();
+        let bits = usize::BITS - colours.len().leading_zeros();
+        let used = colours.iter().fold(0, |used, colour| used | colour);
+        if used.leading_zeros() < bits {
+            self.lab.extend(0..colours.len() as u32);
+            self.lab
+                .sort_unstable_by_key(|&vertex| (colours[vertex as usize], vertex));
+            return;
+        }
+        self.coloured.clear();
+        let words = colours.iter().zip(0..);
+        self.coloured
+            .extend(words.map(|(&colour, vertex)| colour << bits | vertex));
+        self.coloured.sort_unstable();
+        let vertex = |&word: &u64| (word & ((1 << bits) - 1)) as u32;
+        self.lab.extend(self.coloured.iter().map(vertex));
     }
 
     /// Whether every cell has one vertex.
@@ -129,15 +147,28 @@ impl Partition {
 
     /// Splits a vertex off the end of its cell and returns the start of its new cell.
     pub(super) fn individualise(&mut self, vertex: u32) -> u32 {
-        let start = self.cell[vertex as usize];
-        let last = start + self.len[start as usize] - 1;
-        self.exchange(self.pos[vertex as usize], last);
-        self.len[start as usize] -= 1;
-        self.len[last as usize] = 1;
-        self.cell[vertex as usize] = last;
+        self.split_off(self.cell[vertex as usize], std::iter::once(vertex))
+    }
+
+    /// Splits vertices, not all, off the end of their cell and returns the start of their new one.
+    pub(super) fn split_off(
+        &mut self,
+        cell: u32,
+        vertices: impl ExactSizeIterator<Item = u32>,
+    ) -> u32 {
+        let count = vertices.len() as u32;
+        let rest = self.len[cell as usize] - count;
+        let start = cell + rest;
+        self.len[cell as usize] = rest;
+        self.len[start as usize] = count;
+        for (at, vertex) in (start..).zip(vertices) {
+            // What a vertex changes places with is not one that was placed before it.
+            self.exchange(self.pos[vertex as usize], at);
+            self.cell[vertex as usize] = start;
+        }
         self.cells += 1;
-        self.log.push((start, last));
-        last
+        self.log.push((cell, start));
+        start
     }
 
     fn exchange(&mut self, a: u32, b: u32) {
@@ -166,21 +197,17 @@ impl Partition {
         }
     }
 
-    /// Splits a cell by keys: `keyed` lists those of its vertices whose key is not zero, ascending.
-    /// Vertices with key zero stay in front. Costs only what `keyed` is long. Calls `fragment` with
-    /// start, size and key of each part in order, if there is more than one.
+    /// Splits a cell by keys: `keyed` lists those of its vertices whose key is not zero, ascending;
+    /// there are two keys or more. Vertices with key zero stay in front. Costs only what `keyed` is
+    /// long. Calls `fragment` with start, size and key of each part in order.
     pub(super) fn split(
         &mut self,
         cell: u32,
         keyed: &[Keyed],
         mut fragment: impl FnMut(u32, u32, u64),
-    ) -> bool {
+    ) {
         let size = self.len[cell as usize];
         let rest = size - keyed.len() as u32;
-        let one_key = keyed.first().map(|k| k.key()) == keyed.last().map(|k| k.key());
-        if keyed.is_empty() || (rest == 0 && one_key) {
-            return false;
-        }
         if rest > 0 {
             self.len[cell as usize] = rest;
             fragment(cell, rest, 0);
@@ -210,6 +237,5 @@ impl Partition {
         }
         // Undone from the back, parts have to join the cell from its near end onwards.
         self.log[logged..].reverse();
-        true
     }
 }

@@ -18,7 +18,6 @@ pub(super) struct Refiner {
     /// The touched vertices that share their cells.
     keyed: Vec<Keyed>,
     parts: Vec<(u32, u32)>,
-    splitter: Vec<u32>,
     /// Centres of units: what the unit is, the cell of the other centre, the centre.
     oriented: Vec<(u32, u32, u32)>,
     /// Edges and units looked at since it was last taken.
@@ -88,14 +87,12 @@ impl Refiner {
             if partition.is_discrete() {
                 break;
             }
-            self.splitter.clear();
-            self.splitter.extend_from_slice(partition.members(start));
             watch.note(start.into());
             self.keyed.clear();
-            let alone = if let [only] = self.splitter[..] {
+            let alone = if let [only] = *partition.members(start) {
                 self.key_neighbours::<W>(graph, partition, only)
             } else {
-                self.touch::<W>(graph, partition);
+                self.touch::<W>(graph, partition, start);
                 self.key_touched(partition)
             };
             watch.note(alone);
@@ -115,10 +112,10 @@ impl Refiner {
         true
     }
 
-    /// Counts, for each vertex next to the splitter, its edges into it by class. Vertices in cells of
-    /// their own matter only to one who listens.
-    fn touch<W: Watch>(&mut self, graph: &Coloured, partition: &Partition) {
-        for &from in &self.splitter {
+    /// Counts, for each vertex next to a cell, its edges into it by class. Vertices in cells of their
+    /// own matter only to one who listens.
+    fn touch<W: Watch>(&mut self, graph: &Coloured, partition: &Partition, splitter: u32) {
+        for &from in partition.members(splitter) {
             let arcs = graph.arcs(from);
             self.work += arcs.len() as u64;
             for &(to, class) in arcs {
@@ -187,19 +184,52 @@ impl Refiner {
         }
         let mut split = false;
         let mut from = 0;
-        while let Some(first) = keyed.get(from) {
+        while let Some(&first) = keyed.get(from) {
             let cell = first.cell();
             let rest = &keyed[from..];
-            let count = rest.iter().take_while(|entry| entry.cell() == cell).count();
-            split |= self.split_cell(cell, &rest[..count], partition, watch);
-            from += count;
+            let same = |entry: &&Keyed| entry.cell() == cell;
+            let group = &rest[..1 + rest[1..].iter().take_while(same).count()];
+            split |= if group[group.len() - 1].key() == first.key() {
+                self.split_off(cell, first.key(), group, partition, watch)
+            } else {
+                self.split_cell(cell, group, partition, watch)
+            };
+            from += group.len();
         }
         self.keyed = keyed;
         split
     }
 
-    /// Splits a cell by the keys in `group` and queues the parts: all if the cell was waiting, else
-    /// all but the first of the largest (Hopcroft 1971).
+    /// What [`Self::split_cell`] does, for a group of one key, as most are: often a single vertex.
+    fn split_off(
+        &mut self,
+        cell: u32,
+        key: u64,
+        group: &[Keyed],
+        partition: &mut Partition,
+        watch: &mut impl Watch,
+    ) -> bool {
+        let count = group.len() as u32;
+        let rest = partition.len[cell as usize] - count;
+        if rest == 0 {
+            watch.note(mix(key, u64::from(cell) << 32 | u64::from(count)));
+            return false;
+        }
+        let part = partition.split_off(cell, group.iter().map(|entry| entry.vertex()));
+        watch.note(mix(0, u64::from(cell) << 32 | u64::from(rest)));
+        watch.note(mix(key, u64::from(part) << 32 | u64::from(count)));
+        // Of a cell that waits, the other part waits already.
+        let smaller = if count <= rest { part } else { cell };
+        self.enqueue(if self.queued[cell as usize] {
+            part
+        } else {
+            smaller
+        });
+        true
+    }
+
+    /// Splits a cell by the keys in `group`, two or more, and queues the parts: all if the cell was
+    /// waiting, else all but the first of the largest (Hopcroft 1971).
     fn split_cell(
         &mut self,
         cell: u32,
@@ -209,17 +239,10 @@ impl Refiner {
     ) -> bool {
         self.parts.clear();
         let parts = &mut self.parts;
-        let split = partition.split(cell, group, |start, size, key| {
+        partition.split(cell, group, |start, size, key| {
             watch.note(mix(key, u64::from(start) << 32 | u64::from(size)));
             parts.push((size, start));
         });
-        if !split {
-            watch.note(mix(
-                group[0].key(),
-                u64::from(cell) << 32 | group.len() as u64,
-            ));
-            return false;
-        }
         let waiting = self.queued[cell as usize];
         let mut largest = self.parts[0];
         for &part in &self.parts {

@@ -6,7 +6,7 @@ use crate::{
     skeleton::{Skeleton, SkeletonBond},
 };
 
-use super::{Candidate, Perception, labile, marks::Mark, slot, tetrahedral::hydrogen_slots};
+use super::{Candidate, Perception, labile, marks::Mark, slot, tetrahedral::put_hydrogens};
 
 /// Rings below this size hold their double bonds cis.
 const SMALLEST_FREE_RING: u32 = 8;
@@ -175,15 +175,15 @@ fn end_ligands(skeleton: &Skeleton, mesomer: &Mesomer, end: u32, inner: u32) -> 
         (Some(16), 1, 1) => true,
         _ => return None,
     };
+    // One of the neighbours is the inner atom, so there is room for the others.
     let mut found = [slot::LONE_PAIR; 2];
-    let atoms = skeleton
-        .arcs(end)
-        .iter()
-        .map(|&(to, _)| to)
-        .filter(|&to| to != inner);
-    let ligands = atoms.chain(hydrogen_slots(record.hydrogens, record.labelled));
-    for (place, ligand) in found.iter_mut().zip(ligands) {
-        *place = ligand;
+    let mut atoms = 0;
+    for &(to, _) in skeleton.arcs(end) {
+        if to != inner {
+            found[atoms] = to;
+            atoms += 1;
+        }
     }
+    put_hydrogens(&mut found[atoms..], record);
     (lone_pair || found[0] != found[1]).then_some(found)
 }

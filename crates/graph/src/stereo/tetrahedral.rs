@@ -1,6 +1,10 @@
 //! Atoms that can be tetrahedral centres.
 
-use crate::{BondOrder, Element, Shape, mesomer::Mesomer, skeleton::Skeleton};
+use crate::{
+    BondOrder, Element, Shape,
+    mesomer::Mesomer,
+    skeleton::{Skeleton, SkeletonAtom},
+};
 
 use super::{
     Candidate, Perception,
@@ -73,7 +77,12 @@ pub(super) fn find(
 fn eligible(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Eligible> {
     let record = &skeleton.atoms[atom as usize];
     let state = &mesomer.states[atom as usize];
+    // Most carbon atoms: not four ligands, or two hydrogens that are alike.
+    let alike = record.hydrogens > 1 && record.labelled == 0;
     let degree = skeleton.degree(atom);
+    if record.element == Element::CARBON && (alike || degree + usize::from(record.hydrogens) != 4) {
+        return None;
+    }
     if degree + usize::from(record.hydrogens) > 4
         || degree == 0
         || state.mobile
@@ -150,18 +159,33 @@ fn in_three_ring(skeleton: &Skeleton, atom: u32) -> bool {
 /// The four ligands of an atom, or `None` if it has not four or two of them are alike at sight.
 fn ligands(skeleton: &Skeleton, atom: u32) -> Option<[u32; 4]> {
     let record = &skeleton.atoms[atom as usize];
-    let mut found = [slot::LONE_PAIR; 4];
-    let mut count = 0;
-    let arcs = skeleton.arcs(atom).iter().map(|&(to, _)| to);
-    for ligand in arcs.chain(hydrogen_slots(record.hydrogens, record.labelled)) {
-        *found.get_mut(count)? = ligand;
-        count += 1;
+    let arcs = skeleton.arcs(atom);
+    let hydrogens = usize::from(record.hydrogens);
+    if !matches!(arcs.len() + hydrogens, 3 | 4) {
+        return None;
     }
-    let alike = found[..count]
-        .iter()
-        .enumerate()
-        .any(|(at, l)| found[..at].contains(l));
-    (count >= 3 && !alike).then_some(found)
+    let mut found = [slot::LONE_PAIR; 4];
+    for (ligand, &(to, _)) in found.iter_mut().zip(arcs) {
+        *ligand = to;
+    }
+    let slots = &mut found[arcs.len()..arcs.len() + hydrogens];
+    put_hydrogens(slots, record);
+    let alike = slots.windows(2).any(|pair| pair[0] == pair[1]);
+    (!alike).then_some(found)
+}
+
+/// Writes the slots of an atom's hydrogens, those of one kind together, as far as there is room.
+pub(super) fn put_hydrogens(slots: &mut [u32], record: &SkeletonAtom) {
+    if record.labelled == 0 {
+        // Nearly always: hydrogens of natural composition only.
+        let count = slots.len().min(record.hydrogens.into());
+        slots[..count].fill(slot::HYDROGEN);
+        return;
+    }
+    let hydrogens = hydrogen_slots(record.hydrogens, record.labelled);
+    for (slot, hydrogen) in slots.iter_mut().zip(hydrogens) {
+        *slot = hydrogen;
+    }
 }
 
 /// The slots of counted and folded hydrogens.

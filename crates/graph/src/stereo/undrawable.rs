@@ -22,9 +22,21 @@ pub enum Undrawable {
     },
 }
 
-/// Lists the places that the record leaves out, as skeleton atoms.
-pub(super) fn find(perception: &mut Perception, skeleton: &Skeleton, mesomer: &Mesomer) {
-    perception.undrawable.clear();
+impl Perception {
+    /// Lists the places that the record leaves out, as skeleton atoms. `generators` are those of the
+    /// automorphisms of the constitution.
+    pub(crate) fn find_undrawable(
+        &mut self,
+        skeleton: &Skeleton,
+        mesomer: &Mesomer,
+        generators: &Generators,
+    ) {
+        find(self, skeleton, mesomer);
+        self.keep_unequal_axes(skeleton, generators);
+    }
+}
+
+fn find(perception: &mut Perception, skeleton: &Skeleton, mesomer: &Mesomer) {
     for (index, bond) in skeleton.bonds.iter().enumerate() {
         let axis = mesomer.orders[index] == 1
             && !skeleton.ring[index]
@@ -64,7 +76,7 @@ impl Perception {
     /// Keeps the hindered axes at whose two ends the ortho places differ; the others have a plane
     /// of symmetry through the axis. A rule of thumb like the rest of this file: it asks the
     /// `generators` of the automorphisms of the constitution, not their products.
-    pub(crate) fn keep_unequal_axes(&mut self, skeleton: &Skeleton, generators: &Generators) {
+    fn keep_unequal_axes(&mut self, skeleton: &Skeleton, generators: &Generators) {
         self.undrawable.retain(|place| match *place {
             Undrawable::HinderedAxis { atoms: [a, b] } => {
                 // An automorphism that fixes one end and exchanges its ortho places.
@@ -99,9 +111,9 @@ fn neighbours_alike(skeleton: &Skeleton, atom: u32) -> bool {
 
 fn is_sp2_ring_atom(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> bool {
     let arcs = skeleton.arcs(atom);
-    arcs.iter().any(|&(_, b)| skeleton.ring[b as usize])
+    arcs.len() == 3
+        && arcs.iter().any(|&(_, b)| skeleton.ring[b as usize])
         && arcs.iter().any(|&(_, b)| mesomer.orders[b as usize] != 1)
-        && arcs.len() == 3
 }
 
 /// How many of the ring neighbours of an axis atom carry a further non-hydrogen neighbour outside

@@ -9,7 +9,7 @@ use crate::{
     mapping::{self, Effort, Heavy, sides},
 };
 
-use super::{Explanation, branching};
+use super::{Explanation, branching, moves};
 
 /// Bonds under an atom map; atoms from 0. Bonds to hydrogen are not counted.
 #[derive(Debug, Clone, PartialEq, Eq, Default)]
@@ -92,6 +92,7 @@ pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanat
         bonds: Some(bonds),
         hydrogens,
         branching,
+        findings: moves::findings([a, b], &heavy, &sides, &mapping, limits),
         stereo: Vec::new(),
         stereo_least: true,
         steps: mapping.steps,

@@ -1,6 +1,6 @@
 //! Records of one key taken apart into compounds, on certificates.
 
-use std::io;
+use std::{io, rc::Rc};
 
 use crate::Structure;
 
@@ -55,15 +55,16 @@ pub(super) fn by_constitution(
 fn by_certificate(loader: &mut Loader<'_>, records: &[Relative]) -> io::Result<Vec<Compound>> {
     let mut compounds: Vec<Compound> = Vec::new();
     for relative in records {
-        let member = (relative.record(), relative.is_open());
-        let place = if compounds.is_empty() {
-            None
-        } else {
-            let own = loader.read(relative.record())?;
-            find(&compounds, |compound| {
-                Ok(are_identical(&own, &*loader.hold(compound.first())?))
-            })?
+        let record = relative.record;
+        // The first one is asked for again and again.
+        let own = match compounds.is_empty() {
+            true => loader.hold(record)?,
+            false => Rc::new(loader.read(record)?),
         };
+        let place = find(&compounds, |compound| {
+            Ok(are_identical(&own, &*loader.hold(compound.first())?))
+        })?;
+        let member = (record, own.canonical().is_open());
         match place {
             Some(place) => compounds[place].members.push(member),
             None => compounds.push(Compound {

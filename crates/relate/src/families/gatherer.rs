@@ -97,8 +97,11 @@ impl Gatherer {
             self.failed += 1;
             return Ok(());
         };
-        self.relatives
-            .push(Relative::new(keys.family, keys.compound, record, keys.open))?;
+        self.relatives.push(Relative {
+            family: keys.family,
+            compound: keys.compound,
+            record,
+        })?;
         let kin = |key| Kin {
             key,
             record,
@@ -155,8 +158,14 @@ impl Grouping<'_> {
         };
         let (memberships, undecided) = (&mut self.memberships, &mut self.undecided);
         let repeats = &mut self.repeats;
-        in_order(&work, plan, Groups::new(relatives), |found| {
-            let found: Found = found?;
+        let mut groups = Groups::new(relatives);
+        let next = |run: &mut Option<_>| {
+            *run = groups.next();
+            run.is_some()
+        };
+        in_order(&work, plan, next, |found| {
+            let Related(found) = std::mem::take(found);
+            let found = found?;
             *repeats += found.repeats;
             for (column, membership) in found.memberships {
                 memberships[column.place()].push(membership)?;
@@ -240,22 +249,35 @@ struct Relating<'g> {
     limits: Limits,
 }
 
+/// What was found about a run.
+struct Related(io::Result<Found>);
+
+impl Default for Related {
+    fn default() -> Self {
+        Self(Ok(Found::default()))
+    }
+}
+
 impl<'g> Work for Relating<'g> {
-    type Item = io::Result<Vec<Relative>>;
-    type Output = io::Result<Found>;
+    type Item = Option<io::Result<Vec<Relative>>>;
+    type Output = Related;
     type Scratch = Loader<'g>;
 
     fn scratch(&self) -> Loader<'g> {
         Loader::new(self.kept, self.options, self.limits)
     }
 
-    fn run(&self, loader: &mut Loader<'g>, run: Self::Item) -> io::Result<Found> {
-        relate_family(loader, &run?)
+    fn run(&self, loader: &mut Loader<'g>, run: &mut Self::Item, related: &mut Related) {
+        let run = run.take().unwrap_or_else(|| Ok(Vec::new()));
+        related.0 = run.and_then(|run| relate_family(loader, &run));
     }
 
     fn bytes(run: &Self::Item) -> usize {
         // What is kept of a record is read later, so that counts rather than the row.
         const RECORD: usize = 1 << 11;
-        run.as_ref().map_or(0, |run| run.len() * RECORD)
+        match run {
+            Some(Ok(run)) => run.len() * RECORD,
+            Some(Err(_)) | None => 0,
+        }
     }
 }

@@ -1,17 +1,22 @@
 //! From the text of a record to what is needed to group it.
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
-use molkin_graph::Limits;
+use molkin_graph::{Formula, Identity, Key, Limits, Molecule, Orderer};
 
-use crate::{Axes, FormError, Normaliser, Preparer, Structure, wire};
+use crate::{
+    Axes, FormError, Normaliser, PrepareError, Structure,
+    structure::{check_is_one_structure, isotopes},
+    wire,
+};
 
 use super::{
     kept::Entry,
     rows::{Words, words},
 };
 
-/// A record that has been read: its keys, or what is wrong with it.
-#[derive(Debug)]
+/// A record that has been read: its keys, or what is wrong with it. The default is storage for
+/// [`Reading::read_into`].
+#[derive(Debug, Default)]
 pub struct Gathered {
     pub(super) index: u64,
     pub(super) entry: Entry,
@@ -39,27 +44,15 @@ pub(super) struct Keys {
     /// The compound apart from what is overlooked, where something is.
     pub(super) parent: Option<Words>,
     pub(super) isomers: Words,
-    pub(super) open: bool,
-}
-
-impl Keys {
-    fn of(structure: &Structure) -> Self {
-        let canonical = structure.canonical();
-        Self {
-            compound: words(canonical.compound_key()),
-            family: words(canonical.labelled_constitution_key()),
-            parent: None,
-            isomers: words(structure.isomer_key()),
-            open: canonical.is_open(),
-        }
-    }
 }
 
 /// Reads records to be grouped; owns the scratch. One per thread.
 #[derive(Debug)]
 pub struct Reading {
     parser: Parser,
-    preparer: Preparer,
+    orderer: Orderer,
+    identity: Identity,
+    formula: Formula,
     outcome: RecordOutcome,
     forms: Option<(Normaliser, Axes)>,
 }
@@ -69,7 +62,9 @@ impl Reading {
     pub fn new(options: &ReadOptions, limits: Limits) -> Self {
         Self {
             parser: Parser::new(options),
-            preparer: Preparer::new(limits),
+            orderer: Orderer::new(limits),
+            identity: Identity::default(),
+            formula: Formula::default(),
             outcome: RecordOutcome::default(),
             forms: None,
         }
@@ -84,53 +79,72 @@ impl Reading {
         }
     }
 
-    /// Reads a record. What cannot be read, or ordered within the limits, is kept with its message; this
-    /// function does not fail.
-    pub fn read(&mut self, raw: RawRecord) -> Gathered {
-        let mut structure = Vec::new();
-        raw.keep(&mut structure);
-        self.parser.parse_into(raw, &mut self.outcome);
-        let (keys, message) = match self.keys() {
-            Ok((keys, message)) => (Some(keys), message),
-            Err(message) => {
-                structure.clear();
-                (None, message)
-            }
-        };
-        Gathered {
-            index: self.outcome.index,
-            entry: Entry {
-                name: self.outcome.name.clone(),
-                message,
-                structure,
-            },
-            keys,
-        }
+    /// Reads a record.
+    pub fn read(&mut self, mut raw: RawRecord) -> Gathered {
+        let mut gathered = Gathered::default();
+        self.read_into(&mut raw, &mut gathered);
+        gathered
     }
 
-    /// The keys of the record at hand, with what is to be said about them; or why there are none.
-    fn keys(&mut self) -> Result<(Keys, String), String> {
-        let record = self.outcome.result.as_mut();
-        let record = record.map_err(|error| wire::read_message(error))?;
-        let structure = self.preparer.prepare(&mut record.molecule);
-        let structure = structure.map_err(|error| wire::prepare_message(&error))?;
-        let mut keys = Keys::of(structure);
-        let mut message = String::new();
-        if let Some((normaliser, overlook)) = &mut self.forms {
-            match parent(normaliser, *overlook, structure) {
-                Ok(parent) => keys.parent = Some(parent),
-                Err(error) => message = format!("no parent: {}: {error}", error.code()),
+    /// Reads a record in place of another. What cannot be read, or ordered within the limits, is kept with
+    /// its message; this function does not fail.
+    pub fn read_into(&mut self, raw: &mut RawRecord, gathered: &mut Gathered) {
+        let Gathered { index, entry, keys } = gathered;
+        entry.structure.clear();
+        raw.keep(&mut entry.structure);
+        self.parser.parse_into(raw, &mut self.outcome);
+        *index = self.outcome.index;
+        entry.name.clone_from(&self.outcome.name);
+        entry.message.clear();
+        *keys = match &self.outcome.result {
+            Err(error) => Err(wire::read_message(error)),
+            Ok(record) => {
+                let keys = find_keys(
+                    &mut self.orderer,
+                    (&mut self.identity, &mut self.formula),
+                    &record.molecule,
+                );
+                keys.map_err(|error| wire::prepare_message(&error))
             }
         }
-        Ok((keys, message))
+        .map_err(|message| {
+            entry.message = message;
+            entry.structure.clear();
+        })
+        .ok();
+        if let (Some(keys), Some((normaliser, overlook)), Ok(record)) =
+            (keys, &mut self.forms, &self.outcome.result)
+        {
+            match parent(normaliser, *overlook, &record.molecule) {
+                Ok(parent) => keys.parent = Some(parent),
+                Err(error) => entry.message = format!("no parent: {}: {error}", error.code()),
+            }
+        }
     }
+}
+
+fn find_keys(
+    orderer: &mut Orderer,
+    (identity, formula): (&mut Identity, &mut Formula),
+    molecule: &Molecule,
+) -> Result<Keys, PrepareError> {
+    check_is_one_structure(molecule)?;
+    orderer.identify_into(molecule, identity)?;
+    molecule.formula_into(formula);
+    Ok(Keys {
+        compound: words(identity.compound_key()),
+        family: words(identity.labelled_constitution_key()),
+        parent: None,
+        isomers: words(Key::of_formula(formula, &isotopes(molecule))),
+    })
 }
 
 fn parent(
     normaliser: &mut Normaliser,
     overlook: Axes,
-    structure: &Structure,
+    molecule: &Molecule,
 ) -> Result<Words, FormError> {
-    let form = normaliser.overlook(structure, overlook)?;
+    let structure = Structure::new(normaliser.orderer(), molecule.clone())?;
+    let form = normaliser.overlook(&structure, overlook)?;
     Ok(words(form.structure().canonical().compound_key()))
 }

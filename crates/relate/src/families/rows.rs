@@ -17,28 +17,8 @@ pub(super) fn words(key: Key) -> Words {
 pub(super) struct Relative {
     pub(super) family: Words,
     pub(super) compound: Words,
-    /// Twice its number among all records, and 1 if it is open.
-    number: u64,
-}
-
-impl Relative {
-    pub(super) fn new(family: Words, compound: Words, record: u64, open: bool) -> Self {
-        let number = record << 1 | u64::from(open);
-        Self {
-            family,
-            compound,
-            number,
-        }
-    }
-
-    /// The number of the record among all, from 0.
-    pub(super) fn record(&self) -> u64 {
-        self.number >> 1
-    }
-
-    pub(super) fn is_open(&self) -> bool {
-        self.number & 1 == 1
-    }
+    /// Its number among all records, from 0.
+    pub(super) record: u64,
 }
 
 /// A record by a key that several constitutions share.
@@ -73,14 +53,14 @@ impl Row for Relative {
 
     fn numbers(&self) -> [u64; 5] {
         let ([a, b], [c, d]) = (self.family, self.compound);
-        [a, b, c, d, self.number]
+        [a, b, c, d, self.record]
     }
 
-    fn of_numbers([a, b, c, d, number]: [u64; 5]) -> Self {
+    fn of_numbers([a, b, c, d, record]: [u64; 5]) -> Self {
         Self {
             family: [a, b],
             compound: [c, d],
-            number,
+            record,
         }
     }
 }

@@ -88,10 +88,11 @@ pub fn same_apart_from(
 fn may_change(structure: &Structure, axis: Axis) -> bool {
     let molecule = structure.molecule();
     match axis {
-        Axis::Salt => molecule.component_count() > 1,
+        Axis::Salt => !molecule.is_connected(),
         Axis::Charge => molecule.atoms().any(|atom| atom.charge != 0),
         Axis::Tautomer | Axis::RingChain => true,
         Axis::Isotope => !structure.isotopes().is_empty(),
+        Axis::OpenStereo => false,
         Axis::Stereo => {
             !molecule.drawn_stereo().is_empty() || !molecule.drawn_coordination().is_empty()
         }

@@ -20,17 +20,21 @@ pub enum Axis {
     Isotope,
     /// Arrangement in space, and what is claimed about it.
     Stereo,
+    /// A switch for pairs: stereo where one of two records leaves it open, and the other says what it
+    /// allows. No form of one record shows it.
+    OpenStereo,
 }
 
 impl Axis {
     /// All axes, in the order in which they are written.
-    pub const ALL: [Self; 6] = [
+    pub const ALL: [Self; 7] = [
         Self::Salt,
         Self::Charge,
         Self::Tautomer,
         Self::RingChain,
         Self::Isotope,
         Self::Stereo,
+        Self::OpenStereo,
     ];
 
     /// The word of the output contract and of the command line.
@@ -42,6 +46,7 @@ impl Axis {
             Self::RingChain => "ring-chain",
             Self::Isotope => "isotope",
             Self::Stereo => "stereo",
+            Self::OpenStereo => "open-stereo",
         }
     }
 
@@ -59,7 +64,7 @@ impl fmt::Display for Axis {
 /// A word that names no axis.
 #[derive(Debug, Clone, PartialEq, Eq, Error)]
 #[error(
-    "'{word}' is no axis; the axes are salt, charge, tautomer, ring-chain, isotope and stereo, separated by commas"
+    "'{word}' is no axis; the axes are salt, charge, tautomer, ring-chain, isotope, stereo and open-stereo, separated by commas"
 )]
 pub struct AxesError {
     word: String,
@@ -89,7 +94,7 @@ impl Axes {
         self.0 == 0
     }
 
-    /// How many axes are in the set; a switch is none of its own.
+    /// How many axes are in the set; [`Axis::RingChain`] is none of its own.
     pub fn len(self) -> usize {
         (self.0 & !Axis::RingChain.bit()).count_ones() as usize
     }

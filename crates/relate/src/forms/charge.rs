@@ -134,10 +134,13 @@ impl<'s> Work<'s> {
     fn neutralise(&mut self) -> Result<(), FormError> {
         loop {
             let view = View::of(&self.canonical);
-            let choices: Vec<Choice> = clusters(&view)
-                .iter()
+            let found = clusters(&view);
+            let found = found.iter();
+            let mut choices: Vec<Choice> = found
                 .filter_map(|cluster| Choice::of(&view, cluster))
                 .collect();
+            // By the constitution first: isotopes and stereo must not steer a proton.
+            choices.sort_by_key(|choice| choice.atoms.iter().map(|&at| view.site(at).orbit).min());
             let mut moved = false;
             for choice in &choices {
                 if let Some(at) = choice.settled(&view) {
@@ -172,9 +175,9 @@ impl<'s> Work<'s> {
         })
     }
 
-    /// The atom of a choice, if any will do, that makes the most customary molecule: acids,
-    /// esters and amides kept, most of it aromatic, imines within rings, the most symmetric; the canonical order decides what is
-    /// left.
+    /// The atom of a choice, if any will do, that makes the most customary molecule: acids, esters and amides
+    /// kept, most of it aromatic, imines within rings, the most hydrogens where one is lost, the most
+    /// symmetric. The canonical order decides what is left.
     fn best(&mut self, view: &View, choice: &Choice) -> Result<Option<u32>, FormError> {
         let total = total_charge(view);
         let before = aromatic_bonds(&self.canonical);

@@ -47,13 +47,12 @@ pub(super) fn normalise(
     known: impl FnOnce() -> std::sync::Arc<CounterIons>,
     structure: &Structure,
 ) -> Result<Option<Outcome>, FormError> {
-    let parts = structure.molecule().components()?;
-    if parts.len() < 2 {
+    if structure.molecule().is_connected() {
         return Ok(None);
     }
     let known = known();
-    let mut components = Vec::with_capacity(parts.len());
-    for Revised { molecule, sources } in parts {
+    let mut components = Vec::new();
+    for Revised { molecule, sources } in structure.molecule().components()? {
         let bare = is_bare_proton(&molecule);
         let component = Structure::new(orderer, molecule)?;
         let (constitution, key) = listed::settled_keys(orderer, &component)?;

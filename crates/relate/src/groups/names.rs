@@ -2,7 +2,7 @@
 
 use std::{collections::HashMap, sync::OnceLock};
 
-use molkin_formats::smiles;
+use molkin_formats::{Record, smiles};
 use molkin_graph::{GraphOrderer, Limits, Orderer};
 
 use crate::{Structure, constitution::Constitution};
@@ -22,35 +22,58 @@ fn rows() -> impl Iterator<Item = [&'static str; 3]> {
 pub(super) fn of(certificate: &[u64]) -> Option<&'static str> {
     static NAMES: OnceLock<HashMap<Vec<u64>, &'static str>> = OnceLock::new();
     let names = NAMES.get_or_init(|| {
-        let mut orderer = Orderer::new(Limits::default());
+        let mut examples = Examples::new();
         rows()
-            .filter_map(|[name, example, _]| Some((certificate_of(&mut orderer, example)?, name)))
+            .filter_map(|[name, example, _]| Some((examples.certificate(example)?, name)))
             .collect()
     });
     names.get(certificate).copied()
 }
 
-/// The certificate of the one group of a structure.
-fn certificate_of(orderer: &mut Orderer, example: &str) -> Option<Vec<u64>> {
-    let structure = Structure::new(orderer, smiles::parse(example).ok()?).ok()?;
-    let constitution = Constitution::of(&structure);
-    let marked = Marked::of(&constitution);
-    let groups = marked.groups();
-    let [group] = groups.as_slice() else {
-        return None;
-    };
-    let (colours, edges) = marked.graph(group);
-    let mut orderer = GraphOrderer::new(Limits::default());
-    let order = orderer.order(&colours, &edges).ok()?;
-    Some(order.certificate.to_vec())
+/// Works on one example after another in the same memory: the table is most of what a single pair
+/// costs.
+struct Examples {
+    reader: smiles::Reader,
+    record: Record,
+    orderer: Orderer,
+    graphs: GraphOrderer,
+}
+
+impl Examples {
+    fn new() -> Self {
+        Self {
+            reader: smiles::Reader::default(),
+            record: Record::default(),
+            orderer: Orderer::new(Limits::default()),
+            graphs: GraphOrderer::new(Limits::default()),
+        }
+    }
+
+    /// The certificate of the one group of a structure.
+    fn certificate(&mut self, example: &str) -> Option<Vec<u64>> {
+        self.reader.read_into(example, 1, &mut self.record).ok()?;
+        let molecule = std::mem::take(&mut self.record.molecule);
+        let structure = Structure::new(&mut self.orderer, molecule).ok()?;
+        let constitution = Constitution::of(&structure);
+        let marked = Marked::of(&constitution);
+        let groups = marked.groups();
+        let [group] = groups.as_slice() else {
+            return None;
+        };
+        let (colours, edges) = marked.graph(group);
+        let order = self.graphs.order(&colours, &edges).ok()?;
+        Some(order.certificate.to_vec())
+    }
 }
 
 #[cfg(test)]
 mod tests {
     use std::collections::BTreeSet;
 
+    use molkin_graph::Orderer;
+
     use super::*;
-    use crate::functional_groups;
+    use crate::{Structure, functional_groups};
 
     fn names_in(smiles: &str) -> Vec<Option<&'static str>> {
         let limits = Limits::default();

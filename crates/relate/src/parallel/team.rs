@@ -5,17 +5,17 @@ use std::{
     sync::{
         Mutex,
         atomic::{AtomicBool, Ordering},
-        mpsc::{self, Receiver, Sender},
+        mpsc::{self, Receiver, Sender, SyncSender},
     },
     thread::{Builder, Scope},
 };
 
-use super::{Plan, Work};
+use super::{Chunk, Plan, Work};
 
 /// A chunk of items, and where its results are waited for.
 pub(super) struct Job<W: Work> {
-    chunk: Vec<W::Item>,
-    reply: Sender<Vec<W::Output>>,
+    chunk: Chunk<W>,
+    reply: SyncSender<Chunk<W>>,
 }
 
 /// Where the threads take their work from.
@@ -44,14 +44,15 @@ impl<'w, W: Work> Desk<'w, W> {
 
     fn serve(&self) {
         let mut scratch = self.work.scratch();
-        while let Some(Job { chunk, reply }) = self.next() {
-            let open = |_: &W::Item| !self.closed.load(Ordering::Relaxed);
-            let outputs = chunk
-                .into_iter()
-                .take_while(open)
-                .map(|item| self.work.run(&mut scratch, item));
+        while let Some(Job { mut chunk, reply }) = self.next() {
+            for (item, output) in &mut chunk.places[..chunk.taken] {
+                if self.closed.load(Ordering::Relaxed) {
+                    return;
+                }
+                self.work.run(&mut scratch, item, output);
+            }
             // After an error of the sink nobody waits.
-            let _ = reply.send(outputs.collect());
+            let _ = reply.send(chunk);
         }
     }
 
@@ -89,23 +90,19 @@ impl<'scope, 'env, W: Work> Team<'scope, 'env, W> {
         team.grow().then_some(team)
     }
 
-    /// How the work is shared out.
-    pub(super) fn plan(&self) -> Plan {
-        self.plan
+    /// How many threads there can be.
+    pub(super) fn threads(&self) -> NonZeroUsize {
+        self.plan.threads
     }
 
     /// Hands out a chunk, with so many others under way; its results come from the receiver.
-    pub(super) fn submit(
-        &mut self,
-        chunk: Vec<W::Item>,
-        under_way: usize,
-    ) -> Receiver<Vec<W::Output>> {
+    pub(super) fn submit(&mut self, chunk: Chunk<W>, under_way: usize) -> Receiver<Chunk<W>> {
         let wanted = under_way >= self.started && self.started < self.plan.threads.get();
         if wanted && !self.grow() {
             // The system gives no more.
             self.plan.threads = NonZeroUsize::new(self.started).unwrap_or(NonZeroUsize::MIN);
         }
-        let (reply, results) = mpsc::channel();
+        let (reply, results) = mpsc::sync_channel(1);
         // If no thread is left to take it, that shows where the results are waited for.
         let _ = self.jobs.send(Job { chunk, reply });
         results

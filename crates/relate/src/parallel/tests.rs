@@ -26,11 +26,11 @@ impl Work for Sums {
         Vec::new()
     }
 
-    fn run(&self, scratch: &mut Vec<u64>, item: u64) -> u64 {
+    fn run(&self, scratch: &mut Vec<u64>, item: &mut u64, sum: &mut u64) {
         self.begun.fetch_add(1, Ordering::Relaxed);
         scratch.clear();
-        scratch.extend(0..item);
-        scratch.iter().sum()
+        scratch.extend(0..*item);
+        *sum = scratch.iter().sum();
     }
 
     fn bytes(item: &u64) -> usize {
@@ -45,12 +45,22 @@ fn plan(threads: usize, chunk: usize) -> Plan {
     }
 }
 
+/// Fills places from an iterator.
+fn filled<T>(mut items: impl Iterator<Item = T>) -> impl FnMut(&mut T) -> bool {
+    move |place| items.next().map(|item| *place = item).is_some()
+}
+
 fn sums(plan: Plan, items: &[u64]) -> Vec<u64> {
     let mut found = Vec::new();
-    let outcome = in_order(&Sums::default(), plan, items.iter().copied(), |sum| {
-        found.push(sum);
-        Ok::<(), ()>(())
-    });
+    let outcome = in_order(
+        &Sums::default(),
+        plan,
+        filled(items.iter().copied()),
+        |sum| {
+            found.push(*sum);
+            Ok::<(), ()>(())
+        },
+    );
     assert_eq!(outcome, Ok(()));
     found
 }
@@ -70,7 +80,9 @@ proptest! {
 #[rstest]
 fn one_scratch_for_each_thread(#[values(1, 2, 5)] threads: usize) {
     let work = Sums::default();
-    let outcome = in_order(&work, plan(threads, 1), 0..2_000, |_| Ok::<(), ()>(()));
+    let outcome = in_order(&work, plan(threads, 1), filled(0..2_000), |_| {
+        Ok::<(), ()>(())
+    });
     assert_eq!(outcome, Ok(()));
     assert!(work.scratches.into_inner() <= threads);
     assert_eq!(work.begun.into_inner(), 2_000);
@@ -87,7 +99,7 @@ fn memory_is_bounded(#[case] chunk: usize, #[case] item: u64, #[case] most: usiz
         under_way.set(under_way.get() + 1);
         highest.set(highest.get().max(under_way.get()));
     });
-    let outcome = in_order(&Sums::default(), plan(2, chunk), items, |_| {
+    let outcome = in_order(&Sums::default(), plan(2, chunk), filled(items), |_| {
         under_way.set(under_way.get() - 1);
         Ok::<(), ()>(())
     });
@@ -99,10 +111,15 @@ fn memory_is_bounded(#[case] chunk: usize, #[case] item: u64, #[case] most: usiz
 fn the_first_error_of_the_sink_ends_it(#[values(1, 3)] threads: usize) {
     let work = Sums::default();
     let mut seen = 0;
-    let outcome = in_order(&work, plan(threads, 4), std::iter::repeat(5), |_| {
-        seen += 1;
-        if seen < 100 { Ok(()) } else { Err("enough") }
-    });
+    let outcome = in_order(
+        &work,
+        plan(threads, 4),
+        filled(std::iter::repeat(5)),
+        |_| {
+            seen += 1;
+            if seen < 100 { Ok(()) } else { Err("enough") }
+        },
+    );
     assert_eq!((outcome, seen), (Err("enough"), 100));
     assert!(work.begun.into_inner() <= 100 + 4 * 3 * CHUNKS_PER_THREAD);
 }
@@ -116,9 +133,9 @@ impl Work for Fails {
 
     fn scratch(&self) {}
 
-    fn run(&self, (): &mut (), item: u32) -> u32 {
-        assert_ne!(item, 50, "the item that fails");
-        item
+    fn run(&self, (): &mut (), item: &mut u32, output: &mut u32) {
+        assert_ne!(*item, 50, "the item that fails");
+        *output = *item;
     }
 
     fn bytes(_: &u32) -> usize {
@@ -130,8 +147,8 @@ impl Work for Fails {
 #[test]
 #[should_panic(expected = "a scoped thread panicked")]
 fn a_panic_is_passed_on() {
-    let _ = in_order(&Fails, plan(2, 1), 0.., |item| {
-        assert!(item < 50);
+    let _ = in_order(&Fails, plan(2, 1), filled(0..), |item| {
+        assert!(*item < 50);
         Ok::<(), ()>(())
     });
 }

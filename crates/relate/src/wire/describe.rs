@@ -82,7 +82,7 @@ pub struct Stereo {
     /// CIP label, where it has one.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub label: Option<&'static str>,
-    /// `given` or `absent`.
+    /// `given`, `absent`, or `idle`: on a bridgehead, and says nothing about the compound.
     pub mark: &'static str,
     /// The stereo group of the mark, where it has one.
     #[serde(skip_serializing_if = "Option::is_none")]
@@ -125,7 +125,7 @@ pub fn describe(prepared: &Prepared, limits: &Limits) -> Describe {
         Err(error) => described.errors = Some(vec![error.clone()]),
         Ok((structure, notes)) => {
             let labels = structure.canonical().labels(limits);
-            described.fill(structure, &labels);
+            described.fill(structure, &labels, limits);
             let unlabelled = remarks::unlabelled(structure, &labels);
             let note = |noted| Note::of(structure.molecule(), noted);
             let own = remarks::meso(structure).into_iter().chain(unlabelled);
@@ -136,7 +136,7 @@ pub fn describe(prepared: &Prepared, limits: &Limits) -> Describe {
 }
 
 impl Describe {
-    fn fill(&mut self, structure: &Structure, labels: &[Labelling]) {
+    fn fill(&mut self, structure: &Structure, labels: &[Labelling], limits: &Limits) {
         let canonical = structure.canonical();
         self.masses = masses(structure.molecule());
         let unsaturation = structure.molecule().unsaturation();
@@ -171,7 +171,26 @@ impl Describe {
             let supports = supports.into_iter().map(|ends| centres(molecule, ends));
             element.depends_on = Some(supports.collect());
         }
+        put_idle_bridgeheads(&mut elements, structure, limits);
         self.stereo = Some(elements.into_iter().chain(metals).collect());
+    }
+}
+
+/// Adds bridgeheads whose marks say nothing about the compound, with their labels; those that are open
+/// have an entry already.
+fn put_idle_bridgeheads(entries: &mut Vec<Stereo>, structure: &Structure, limits: &Limits) {
+    let canonical = structure.canonical();
+    let labels = canonical.idle_bridgehead_labels(limits);
+    for (element, labelling) in canonical.idle_bridgeheads().iter().zip(labels) {
+        let mut own = Stereo::of(structure.molecule(), element, labelling.label());
+        own.mark = "idle";
+        match entries.iter_mut().find(|entry| entry.atoms == own.atoms) {
+            Some(entry) => {
+                own.depends_on = entry.depends_on.take();
+                *entry = own;
+            }
+            None => entries.push(own),
+        }
     }
 }
 

@@ -96,11 +96,7 @@ impl FamilyRow {
             source: source.to_owned(),
             record,
             name: grouped.name.clone(),
-            status: if grouped.is_fine {
-                "ok"
-            } else {
-                "error"
-            },
+            status: if grouped.is_fine { "ok" } else { "error" },
             groups: Column::ALL.map(number),
             first,
             relation,

@@ -3,10 +3,13 @@
 use std::fmt::{Display, Write as _};
 
 use molkin_formats::{ReadError, smiles, source::RecordOutcome};
-use molkin_graph::{CanonicalForm, Limits};
+use molkin_graph::{CanonicalForm, Formula, Identity, Key, Limits, Molecule, Orderer};
 
 use super::table::{TableColumn, TableRow, Value};
-use crate::{Axes, Axis, Normaliser, PrepareError, Preparer, Structure};
+use crate::{
+    Axes, Axis, Normaliser, PrepareError, Structure,
+    structure::{check_is_one_structure, isotopes},
+};
 
 /// A record and its keys: the columns of `molkin keys`, in their order. Later columns are added at
 /// the end.
@@ -36,7 +39,7 @@ pub struct KeyRow {
     /// Compound key with the axis `tautomer` overlooked; empty where it is not asked for.
     pub tautomer_key: String,
     /// Whether the record stands for more than one possible sample, or leaves out what its notation
-    /// cannot say.
+    /// cannot say. It takes a view of all stereo elements, so it is there beside keys of forms only.
     pub open: Option<bool>,
     /// Key of the constitution with its isotopes, no stereo: that of all its stereoisomers.
     pub labelled_constitution_key: String,
@@ -67,17 +70,17 @@ impl TableRow for KeyRow {
             Value::Text(&self.source),
             Value::Number(self.record),
             Value::Text(&self.name),
-            Value::Text(self.status),
-            Value::text(&self.formula),
-            Value::text(&self.smiles),
-            Value::text(&self.constitution_key),
-            Value::text(&self.compound_key),
+            Value::Word(self.status),
+            Value::word(&self.formula),
+            Value::word(&self.smiles),
+            Value::word(&self.constitution_key),
+            Value::word(&self.compound_key),
             Value::text(&self.message),
-            Value::text(&self.parent_key),
-            Value::text(&self.tautomer_key),
+            Value::word(&self.parent_key),
+            Value::word(&self.tautomer_key),
             Value::from(self.open),
-            Value::text(&self.labelled_constitution_key),
-            Value::text(&self.isomer_key),
+            Value::word(&self.labelled_constitution_key),
+            Value::word(&self.isomer_key),
         ]
         .into_iter()
     }
@@ -104,16 +107,18 @@ struct Forms {
 /// let mut rows = KeyRows::new(Limits::default());
 /// let file = "OCC\nC1CC\n";
 /// let mut records = Records::new("a.smi", file.as_bytes(), Format::Smiles, ReadOptions::default());
-/// let mut ethanol = records.next().ok_or("a record")??;
-/// let row = rows.row("a.smi", &mut ethanol);
+/// let ethanol = records.next().ok_or("a record")??;
+/// let row = rows.row("a.smi", &ethanol);
 /// assert_eq!((row.status, row.formula.as_str()), ("ok", "C2H6O"));
-/// let mut broken = records.next().ok_or("a record")??;
-/// assert_eq!(rows.row("a.smi", &mut broken).status, "error");
+/// let broken = records.next().ok_or("a record")??;
+/// assert_eq!(rows.row("a.smi", &broken).status, "error");
 /// # Ok::<(), Box<dyn std::error::Error>>(())
 /// ```
 #[derive(Debug)]
 pub struct KeyRows {
-    preparer: Preparer,
+    orderer: Orderer,
+    identity: Identity,
+    formula: Formula,
     forms: Option<Forms>,
     form: CanonicalForm,
     writer: smiles::Writer,
@@ -125,8 +130,10 @@ impl KeyRows {
     /// Rows within the given limits, without keys of forms.
     pub fn new(limits: Limits) -> Self {
         Self {
+            orderer: Orderer::new(limits),
+            identity: Identity::default(),
+            formula: Formula::default(),
             forms: None,
-            preparer: Preparer::new(limits),
             form: CanonicalForm::default(),
             writer: smiles::Writer::default(),
             written: smiles::Written::default(),
@@ -151,26 +158,44 @@ impl KeyRows {
 
     /// The row of one record. What cannot be read, or ordered within the limits, becomes a row with
     /// status `error`; this function does not fail.
-    ///
-    /// The outcome is left as storage for [`parse_into`](molkin_formats::source::Parser::parse_into).
-    pub fn row(&mut self, source: &str, outcome: &mut RecordOutcome) -> &KeyRow {
-        let row = &mut self.row;
-        row.begin(source, outcome);
-        match &mut outcome.result {
-            Err(error) => row.message = read_message(error),
-            Ok(record) => match self.preparer.prepare(&mut record.molecule) {
-                Err(error) => row.message = prepare_message(&error),
-                Ok(_) => {
-                    let structure = self.preparer.form_into(&mut self.form);
-                    self.writer.write_into(&self.form, &mut self.written);
-                    row.fill(structure, &self.written.text);
-                    if let Some(forms) = &mut self.forms {
-                        row.add_forms(forms, structure);
-                    }
+    pub fn row(&mut self, source: &str, outcome: &RecordOutcome) -> &KeyRow {
+        self.row.begin(source, outcome);
+        match &outcome.result {
+            Err(error) => self.row.message = read_message(error),
+            Ok(record) => {
+                if let Err(error) = self.fill(&record.molecule) {
+                    self.row.message = prepare_message(&error);
                 }
-            },
+            }
         }
-        row
+        &self.row
+    }
+
+    fn fill(&mut self, molecule: &Molecule) -> Result<(), PrepareError> {
+        check_is_one_structure(molecule)?;
+        self.orderer.identify_into(molecule, &mut self.identity)?;
+        self.orderer
+            .identity_form_into(&self.identity, &mut self.form);
+        self.writer.write_into(&self.form, &mut self.written);
+        molecule.formula_into(&mut self.formula);
+        let row = &mut self.row;
+        row.status = "ok";
+        set(&mut row.formula, &self.formula);
+        row.smiles.push_str(&self.written.text);
+        set(&mut row.constitution_key, self.identity.constitution_key());
+        set(&mut row.compound_key, self.identity.compound_key());
+        set(
+            &mut row.labelled_constitution_key,
+            self.identity.labelled_constitution_key(),
+        );
+        let isomers = Key::of_formula(&self.formula, &isotopes(molecule));
+        set(&mut row.isomer_key, isomers);
+        if let Some(forms) = &mut self.forms {
+            let structure = Structure::new(&mut self.orderer, molecule.clone())?;
+            self.row.open = Some(structure.canonical().is_open());
+            self.row.add_forms(forms, &structure);
+        }
+        Ok(())
     }
 }
 
@@ -190,13 +215,6 @@ impl KeyRow {
             field.clear();
         }
         self.clear_keys();
-    }
-
-    fn fill(&mut self, structure: &Structure, smiles: &str) {
-        self.status = "ok";
-        set(&mut self.formula, structure.formula());
-        self.smiles.push_str(smiles);
-        self.fill_keys(structure);
     }
 
     fn clear_keys(&mut self) {

@@ -4,13 +4,13 @@ use molkin_graph::{Label, Limits, Molecule, OrderError, Orderer};
 use serde::Serialize;
 
 use crate::{
-    Axes, Branching as DomainBranching, Explanation, Normaliser, PrepareError, Relation,
-    StereoKind, Structure, explain, kinds, relate,
+    Axes, Axis, Branching as DomainBranching, Explanation, Normaliser, PrepareError, Relation,
+    StereoKind, Structure, Verdict, explain, kinds, relate,
     remarks::{self, Noted},
     same_apart_from, words,
 };
 
-use super::{Error, Group, Input, Note, Prepared, VERSION, Which, numbers};
+use super::{Error, Finding, Group, Input, Note, Prepared, VERSION, Which, findings, numbers};
 
 /// The result for one pair. Either `errors` or the fields from `relation` on are there.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize)]
@@ -51,6 +51,9 @@ pub struct Pair {
     /// Mapped atoms with different hydrogen counts.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub hydrogens: Option<Vec<Hydrogens>>,
+    /// What moved.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub findings: Option<Vec<Finding>>,
     /// How both records branch.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub branch_points: Option<BranchPoints>,
@@ -80,7 +83,7 @@ fn is_not_settled(apart: &Apart) -> bool {
 }
 
 fn words_of(axes: Axes) -> Vec<&'static str> {
-    axes.iter().map(crate::Axis::as_str).collect()
+    axes.iter().map(Axis::as_str).collect()
 }
 
 /// The kind field: null for identical records, absent beside errors.
@@ -241,6 +244,7 @@ impl Pair {
             atom_map: None,
             bonds: None,
             hydrogens: None,
+            findings: None,
             branch_points: None,
             stereo: None,
             notes: None,
@@ -255,7 +259,13 @@ impl Pair {
         [(a, notes_a), (b, notes_b)]: [(&Structure, &[Note]); 2],
         brief: bool,
     ) -> Result<(), OrderError> {
-        let verdict = relate(normaliser.orderer(), a, b)?;
+        let mut verdict = relate(normaliser.orderer(), a, b)?;
+        if verdict.relation == Relation::Stereo(StereoKind::Undetermined) && self.overlooks_open() {
+            verdict = Verdict {
+                relation: Relation::Identical,
+                open: true,
+            };
+        }
         let explained = (!brief).then(|| explain(a, b, verdict.relation, limits));
         let mut notes = Vec::new();
         let (apart, substances) = self.forms(normaliser, verdict.relation, [a, b], &mut notes);
@@ -268,14 +278,18 @@ impl Pair {
         self.aspects = Some(kinds.iter().map(|kind| kind.as_str()).collect());
         self.open = Some(verdict.open);
         let kind = kinds.first().copied();
-        self.summary = Some(words::summary(
+        let summary = words::summary(
             [a, b],
             &verdict,
             kind,
             substances.as_deref(),
             explained.as_ref(),
             limits,
-        ));
+        );
+        self.summary = Some(match &self.overlooked {
+            Some(axes) => format!("With {} overlooked: {summary}", axes.join(", ")),
+            None => summary,
+        });
         // What is unmarked is why these verdicts are not firmer.
         let unsettled = verdict.open
             || matches!(
@@ -302,10 +316,17 @@ impl Pair {
                 let note = |noted| Note::of(structure.molecule(), noted).on(which);
                 notes.extend(own.into_iter().map(note));
             }
+            self.findings = findings::of([a, b], &explained);
             self.add_explanation(verdict.relation, explained, molecules, &mut notes);
         }
         self.notes = Some(notes);
         Ok(())
+    }
+
+    /// Whether stereo is overlooked where one side leaves it open.
+    fn overlooks_open(&self) -> bool {
+        let mut axes = self.overlooked.iter().flatten();
+        axes.any(|&axis| axis == Axis::OpenStereo.as_str())
     }
 
     /// Which axes tell the two apart, and what they are as substances.

@@ -149,7 +149,7 @@ impl Cells {
 
     fn push(&mut self, value: Value<'_>) {
         let there = match (&mut self.values, value) {
-            (Values::Texts(texts), Value::Text(text)) => {
+            (Values::Texts(texts), Value::Text(text) | Value::Word(text)) => {
                 texts.push(ByteArray::from(text));
                 true
             }

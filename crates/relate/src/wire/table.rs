@@ -44,6 +44,8 @@ pub enum Value<'r> {
     Absent,
     /// Text.
     Text(&'r str),
+    /// Text that has no comma, quote or line end in its alphabet.
+    Word(&'r str),
     /// A number.
     Number(u64),
     /// True or false.
@@ -56,6 +58,14 @@ impl<'r> Value<'r> {
         match text {
             "" => Self::Absent,
             text => Self::Text(text),
+        }
+    }
+
+    /// A word, where none says nothing.
+    pub(super) fn word(word: &'r str) -> Self {
+        match word {
+            "" => Self::Absent,
+            word => Self::Word(word),
         }
     }
 }

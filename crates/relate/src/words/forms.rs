@@ -22,9 +22,12 @@ pub(crate) fn substances(
     } else {
         None
     };
-    let rest = apart
-        .iter()
-        .filter(|axis| !matches!(axis, Axis::Salt | Axis::Charge));
+    let said = if apart.contains(Axis::Salt) {
+        Axis::Salt
+    } else {
+        Axis::Charge
+    };
+    let rest = apart.iter().filter(|&axis| axis != said);
     let rest: Vec<&str> = rest.map(Axis::as_str).collect();
     Ok(sentence.map(|sentence| match rest.as_slice() {
         [] => sentence,

@@ -48,6 +48,7 @@ fn element(labels: &Labels<'_>, entry: &Stereo) -> String {
     let mark = match entry.mark {
         "given" => "marked",
         "absent" => "unmarked",
+        "idle" => "idle mark",
         other => other,
     };
     let mut text = format!(

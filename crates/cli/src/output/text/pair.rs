@@ -90,6 +90,12 @@ struct Differences<'p> {
 
 impl Differences<'_> {
     fn write(&self, out: &mut impl Write, style: Style) -> io::Result<()> {
+        // The verdict has the first already.
+        let findings = self.pair.findings.iter().flatten().skip(1);
+        for (at, finding) in findings.enumerate() {
+            let label = if at == 0 { "besides" } else { "" };
+            labelled(out, style, (None, label), &finding.text)?;
+        }
         if let Some(bonds) = &self.pair.bonds {
             self.bonds(out, style, bonds)?;
         }

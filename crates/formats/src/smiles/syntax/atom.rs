@@ -91,13 +91,9 @@ impl AtomSyntax {
         }
     }
 
-    /// Counts a bond.
+    /// Counts a bond of so many pairs.
     #[inline]
-    pub(super) fn count(&mut self, kind: BondKind) {
-        let pairs = match kind {
-            BondKind::Order(order) => u32::from(order.pairs()),
-            BondKind::Delocalised | BondKind::Open => 1,
-        };
+    pub(super) fn count(&mut self, kind: BondKind, pairs: u32) {
         self.degree += 1;
         self.order_sum += pairs;
         self.multiple |= pairs > 1;

@@ -36,7 +36,11 @@ pub(super) fn write(
     let symbol = atom.element.symbol();
     let plain = atom.charge == 0 && atom.isotope.is_none() && tag.is_none();
     if plain && counted_when_bare(atom.element, order_sum) == Some(counted) {
-        text.push_str(symbol);
+        // Nearly all symbols are one letter, and copying text of any length takes longer than that.
+        match *symbol.as_bytes() {
+            [letter] => text.push(char::from(letter)),
+            _ => text.push_str(symbol),
+        }
         return;
     }
     text.push('[');

@@ -16,67 +16,41 @@ pub(super) struct Emitter<'a> {
     pub(super) shown: &'a [u8],
     pub(super) tags: &'a Tags,
     pub(super) slopes: &'a mut Slopes,
-    /// Scratch.
-    pub(super) steps: &'a mut Vec<Step>,
     pub(super) text: &'a mut String,
-}
-
-/// What remains to be written.
-#[derive(Debug)]
-pub(super) enum Step {
-    Atom(u32),
-    /// A bond and the atom that it leads to.
-    Bond(Arc),
-    Open,
-    Close,
 }
 
 impl Emitter<'_> {
     pub(super) fn emit(&mut self) {
         let layout = self.layout;
-        self.steps.clear();
-        for (at, &root) in layout.roots().iter().enumerate() {
-            if at > 0 {
-                self.text.push('.');
+        for (word, rings) in layout.words() {
+            for _ in 0..word.closes {
+                self.text.push(')');
             }
-            self.steps.push(Step::Atom(root));
-            while let Some(step) = self.steps.pop() {
-                match step {
-                    Step::Open => self.text.push('('),
-                    Step::Close => self.text.push(')'),
-                    Step::Bond(arc) => {
-                        self.bond(arc);
-                        self.atom(arc.to);
-                    }
-                    Step::Atom(atom) => self.atom(atom),
-                }
+            if word.opens {
+                self.text.push('(');
             }
+            match layout.parent(word.atom) {
+                Some(arc) => self.bond(arc),
+                None if self.text.is_empty() => {}
+                None => self.text.push('.'),
+            }
+            self.atom(word.atom, rings);
         }
     }
 
-    /// Writes an atom with its labels and hydrogens, and leaves its branches to be written.
-    fn atom(&mut self, atom: u32) {
+    /// Writes an atom with its labels and hydrogens.
+    fn atom(&mut self, atom: u32, rings: &[RingEnd]) {
         let form = self.structure.atom(atom);
         let shown = self.shown[atom as usize];
         let counted = form.hydrogens.saturating_sub(shown);
-        let orders = self.structure.arcs(atom).iter();
-        let order_sum = orders.map(|arc| u32::from(arc.order)).sum::<u32>() + u32::from(shown);
+        let order_sum = self.layout.order_sum(atom) + u32::from(shown);
         atom::write(self.text, form, counted, order_sum, self.tags.of(atom));
-        let layout = self.layout;
-        for end in layout.rings(atom) {
+        for end in rings {
             self.ring_end(end);
         }
-        let children = layout.children(atom);
         for at in 0..shown {
-            let ends_chain = at + 1 == shown && children.is_empty();
+            let ends_chain = at + 1 == shown && self.layout.children(atom).next().is_none();
             self.hydrogen(atom, at == 0, !ends_chain);
-        }
-        if let Some((&chain, branches)) = children.split_last() {
-            self.steps.push(Step::Bond(chain));
-            for &branch in branches.iter().rev() {
-                self.steps
-                    .extend([Step::Close, Step::Bond(branch), Step::Open]);
-            }
         }
     }
 
@@ -112,12 +86,15 @@ impl Emitter<'_> {
     }
 
     fn bond(&mut self, arc: Arc) {
-        let symbol = match arc.order {
-            2 => Some('='),
-            3 => Some('#'),
-            4 => Some('$'),
-            _ => self.slopes.glyph(Carrier::Bond(arc.bond)),
-        };
-        self.text.extend(symbol);
+        match arc.order {
+            2 => self.text.push('='),
+            3 => self.text.push('#'),
+            4 => self.text.push('$'),
+            _ => {
+                if let Some(slope) = self.slopes.glyph(Carrier::Bond(arc.bond)) {
+                    self.text.push(slope);
+                }
+            }
+        }
     }
 }

@@ -3,54 +3,88 @@
 use super::structure::Structure;
 
 /// A row of one or more double bonds.
-#[derive(Debug, Clone, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub(super) struct Row {
+    ends: [u32; 2],
+    inner: [u32; 2],
+    middle: u32,
     /// Its atoms from end to end, two at least.
-    atoms: Vec<u32>,
+    length: usize,
 }
 
 impl Row {
+    /// A row of these atoms, two at least.
+    fn of(atoms: &[u32]) -> Self {
+        let last = atoms.len() - 1;
+        Self {
+            ends: [atoms[0], atoms[last]],
+            inner: [atoms[1], atoms[last - 1]],
+            middle: atoms[atoms.len() / 2],
+            length: atoms.len(),
+        }
+    }
+
     /// The two ends.
     pub(super) fn ends(&self) -> [u32; 2] {
-        [self.atoms[0], self.atoms[self.atoms.len() - 1]]
+        self.ends
     }
 
     /// The atom of the row that is bonded to each end.
     pub(super) fn inner(&self) -> [u32; 2] {
-        [self.atoms[1], self.atoms[self.atoms.len() - 2]]
+        self.inner
     }
 
     /// Whether the ligands at both ends lie in one plane: an odd number of bonds.
     pub(super) fn is_planar(&self) -> bool {
-        self.atoms.len().is_multiple_of(2)
+        self.length.is_multiple_of(2)
     }
 
     /// The atom in the middle of a row that is not planar.
     pub(super) fn middle(&self) -> Option<u32> {
-        (!self.is_planar()).then(|| self.atoms[self.atoms.len() / 2])
+        (!self.is_planar()).then_some(self.middle)
     }
 }
 
-/// All rows that have two ends, in the order of their first bonds. Linear.
-pub(super) fn find(structure: &Structure) -> Vec<Row> {
-    let mut seen = vec![false; structure.form.bonds.len()];
-    let mut rows = Vec::new();
-    for atom in 0..structure.len() as u32 {
-        for arc in structure.arcs(atom).iter().filter(|arc| arc.order == 2) {
-            if seen[arc.bond as usize] {
-                continue;
+/// The rows of a form; storage that is filled anew for every form.
+#[derive(Debug, Default)]
+pub(super) struct Rows {
+    rows: Vec<Row>,
+    /// Per bond.
+    seen: Vec<bool>,
+    /// Those of the row at hand.
+    atoms: Vec<u32>,
+}
+
+impl Rows {
+    /// Empties the list.
+    pub(super) fn clear(&mut self) {
+        self.rows.clear();
+    }
+
+    /// Finds all rows that have two ends, in the order of their first bonds. Linear.
+    pub(super) fn find(&mut self, structure: &Structure) {
+        let Self { rows, seen, atoms } = self;
+        seen.clear();
+        seen.resize(structure.form.bonds.len(), false);
+        for atom in 0..structure.len() as u32 {
+            for arc in structure.arcs(atom).iter().filter(|arc| arc.order == 2) {
+                if std::mem::replace(&mut seen[arc.bond as usize], true) {
+                    continue;
+                }
+                atoms.clear();
+                if !follow(structure, arc.to, atom, seen, atoms) {
+                    continue;
+                }
+                atoms.reverse();
+                follow(structure, atom, arc.to, seen, atoms);
+                rows.push(Row::of(atoms));
             }
-            seen[arc.bond as usize] = true;
-            let mut atoms = Vec::new();
-            if !follow(structure, arc.to, atom, &mut seen, &mut atoms) {
-                continue;
-            }
-            atoms.reverse();
-            follow(structure, atom, arc.to, &mut seen, &mut atoms);
-            rows.push(Row { atoms });
         }
     }
-    rows
+
+    pub(super) fn all(&self) -> &[Row] {
+        &self.rows
+    }
 }
 
 /// Adds the atoms from `to` to the end of the row, coming from `from`; false where there is no end

@@ -71,7 +71,7 @@ impl<'a> Search<'a> {
             for (end, side) in record.ends.iter().enumerate() {
                 // The second end counts from its own first ligand.
                 let across = end == 1 && record.mark == Some(true);
-                uses.extend(side.options.iter().map(|choice| Use {
+                uses.extend(side.options.iter().flatten().map(|choice| Use {
                     carrier: slopes.number(choice.carrier),
                     unit,
                     end,
@@ -138,9 +138,12 @@ impl<'a> Search<'a> {
     fn sort_options(&mut self) {
         for unit in 0..self.units.len() {
             for end in 0..2 {
-                let mut options = std::mem::take(&mut self.units[unit].ends[end].options);
-                options.sort_by_cached_key(|choice| self.cost(unit, choice));
-                self.units[unit].ends[end].options = options;
+                let [Some(first), Some(second)] = &self.units[unit].ends[end].options else {
+                    continue;
+                };
+                if self.cost(unit, second) < self.cost(unit, first) {
+                    self.units[unit].ends[end].options.swap(0, 1);
+                }
             }
         }
     }
@@ -205,7 +208,8 @@ impl<'a> Search<'a> {
                 continue;
             }
             let choice = self.units[unit].ends[end].options.get(option);
-            match choice.map(|choice| choice.carrier).filter(|_| budget > 0) {
+            let carrier = choice.and_then(|choice| Some(choice.as_ref()?.carrier));
+            match carrier.filter(|_| budget > 0) {
                 Some(carrier) => {
                     budget -= 1;
                     let unions = self.slopes.forest().unions();

@@ -1,7 +1,5 @@
 //! The form with the bonds of each atom at hand.
 
-use std::cmp::Reverse;
-
 use molkin_graph::{BondOrder, CanonicalForm, FormAtom};
 
 use super::Lost;
@@ -49,37 +47,38 @@ impl ArcTable {
     fn load(&mut self, form: &CanonicalForm) {
         let Self { starts, arcs } = self;
         let count = form.atoms.len() as u32;
-        let bonds = form.bonds.iter().enumerate();
-        let written = bonds
-            .filter(|&(_, &(a, b, _))| a < b && b < count)
-            .filter_map(|(bond, &(a, b, order))| Some((bond as u32, a, b, written_order(order)?)));
+        let written =
+            |&(a, b, order): &(u32, u32, u8)| written_order(order).filter(|_| a < b && b < count);
+        let (mut sum, mut highest) = (0, 0);
         starts.clear();
         starts.resize(form.atoms.len() + 1, 0);
-        for (_, a, b, _) in written.clone() {
-            starts[a as usize] += 1;
-            starts[b as usize] += 1;
+        for bond in &form.bonds {
+            if let Some(order) = written(bond) {
+                starts[bond.0 as usize] += 1;
+                starts[bond.1 as usize] += 1;
+                highest = highest.max(order);
+            }
         }
-        let mut sum = 0;
         for start in starts.iter_mut() {
             sum += *start;
             *start = sum;
         }
         arcs.clear();
         arcs.resize(sum as usize, Arc::default());
-        // Bonds come sorted, so the arcs of each atom now are by the other atom.
-        for (bond, a, b, order) in written.rev() {
-            for (from, to) in [(a, b), (b, a)] {
-                let start = &mut starts[from as usize];
-                *start -= 1;
-                arcs[*start as usize] = Arc { to, bond, order };
-            }
-        }
-        // Multiple bonds first: the tree then follows them, and rings close at single bonds.
-        for ends in starts.windows(2) {
-            let own = &mut arcs[ends[0] as usize..ends[1] as usize];
-            let key = |arc: &Arc| (Reverse(arc.order), arc.to, arc.bond);
-            if !own.is_sorted_by_key(key) {
-                own.sort_unstable_by_key(key);
+        // Multiple bonds first: the tree then follows them, and rings close at single bonds. Bonds come
+        // sorted, so within an order the arcs of each atom are by the other atom.
+        for order in 1..=highest {
+            let mut bond = form.bonds.len() as u32;
+            for ends in form.bonds.iter().rev() {
+                bond -= 1;
+                if written(ends) != Some(order) {
+                    continue;
+                }
+                for (from, to) in [(ends.0, ends.1), (ends.1, ends.0)] {
+                    let start = &mut starts[from as usize];
+                    *start -= 1;
+                    arcs[*start as usize] = Arc { to, bond, order };
+                }
             }
         }
     }
@@ -119,6 +118,12 @@ impl<'a> Structure<'a> {
         let at = atom as usize;
         let ArcTable { starts, arcs } = self.table;
         &arcs[starts[at] as usize..starts[at + 1] as usize]
+    }
+
+    /// The bonds of all atoms, atom by atom, and where those of each begin; one place more than there
+    /// are atoms.
+    pub(super) fn all_arcs(&self) -> (&[u32], &[Arc]) {
+        (&self.table.starts, &self.table.arcs)
     }
 
     /// Whether an atom lies inside a row of cumulated double bonds: two of them and nothing else.

@@ -157,7 +157,7 @@ impl Context<'_> {
         let bonded = |to| Ligand::Atom(to);
         let parent = self.layout.parent(atom).map(|arc| bonded(arc.to));
         let rings = self.layout.rings(atom).iter();
-        let children = self.layout.children(atom).iter();
+        let children = self.layout.children(atom);
         Some(
             parent
                 .into_iter()
@@ -165,7 +165,7 @@ impl Context<'_> {
                 .chain(std::iter::repeat_n(Ligand::LonePair, lone_pairs))
                 .chain(rings.map(move |end| bonded(end.arc.to)))
                 .chain(repeat(Ligand::Hydrogen, shown))
-                .chain(children.map(move |arc| bonded(arc.to))),
+                .chain(children.map(bonded)),
         )
     }
 }

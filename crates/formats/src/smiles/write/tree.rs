@@ -2,6 +2,9 @@
 
 use super::structure::{Arc, Structure};
 
+/// No atom, or no bond.
+const NONE: u32 = u32::MAX;
+
 /// A bond that is not in the tree: from the later atom to the earlier one.
 #[derive(Debug, Clone, Copy)]
 pub(super) struct Closure {
@@ -15,115 +18,137 @@ pub(super) struct Closure {
 pub(super) struct Tree {
     /// The first atom of each component, in text order.
     pub(super) roots: Vec<u32>,
-    /// Per atom: the bond to the atom before it in its chain.
-    pub(super) parent: Vec<Option<Arc>>,
     pub(super) closures: Vec<Closure>,
-    /// Every atom after its parent.
-    visited: Vec<u32>,
-    /// Per atom: when it was visited, or [`UNSEEN`].
-    time: Vec<u32>,
-    /// Atom and how many of its bonds have been looked at.
-    stack: Vec<(u32, usize)>,
-    /// Per atom: how many atoms hang on it, itself included.
-    size: Vec<u32>,
-    starts: Vec<u32>,
-    children: Vec<Arc>,
+    nodes: Vec<Node>,
 }
 
-const UNSEEN: u32 = u32::MAX;
+/// An atom in the tree. All of it is in one place, as it is looked at together.
+#[derive(Debug, Clone, Copy)]
+struct Node {
+    /// The bond to the atom before it in its chain; to [`NONE`] at a root.
+    parent: Arc,
+    /// Its bonds that have not been looked at.
+    arcs: (u32, u32),
+    /// When it was visited, or [`NONE`].
+    time: u32,
+    /// How many atoms hang on it, itself included.
+    size: u32,
+    /// The orders of its bonds together.
+    order_sum: u32,
+    /// The first of the atoms that follow it, or [`NONE`].
+    first: u32,
+    /// The next of the atoms that follow the same one, or [`NONE`].
+    sibling: u32,
+}
+
+impl Node {
+    fn unseen(arcs: (u32, u32)) -> Self {
+        let parent = Arc {
+            to: NONE,
+            bond: NONE,
+            order: 0,
+        };
+        Self {
+            parent,
+            arcs,
+            time: NONE,
+            size: 1,
+            order_sum: 0,
+            first: NONE,
+            sibling: NONE,
+        }
+    }
+}
 
 impl Tree {
-    /// Linear in atoms and bonds.
+    /// Linear in atoms and bonds, as atoms have few neighbours: what has a canonical order has at most
+    /// 511 of them.
     pub(super) fn grow(&mut self, structure: &Structure) {
-        let count = structure.len();
+        let (starts, arcs) = structure.all_arcs();
         self.roots.clear();
         self.closures.clear();
-        self.visited.clear();
-        self.stack.clear();
-        self.parent.clear();
-        self.parent.resize(count, None);
-        self.time.clear();
-        self.time.resize(count, UNSEEN);
-        for root in 0..count as u32 {
-            if self.time[root as usize] == UNSEEN {
+        self.nodes.clear();
+        let arcs_of = starts.windows(2).map(|ends| (ends[0], ends[1]));
+        self.nodes.extend(arcs_of.map(Node::unseen));
+        let mut time = 0;
+        for root in 0..self.nodes.len() as u32 {
+            if self.nodes[root as usize].time == NONE {
                 self.roots.push(root);
-                self.visit(root);
-                self.walk(structure);
+                self.walk(arcs, root, &mut time);
             }
         }
-        self.sort_children();
     }
 
-    /// The bonds to the atoms that follow one, smaller branches first and equal ones by number.
-    pub(super) fn children(&self, atom: u32) -> &[Arc] {
-        let at = atom as usize;
-        &self.children[self.starts[at] as usize..self.starts[at + 1] as usize]
+    /// The bond to the atom before this one in its chain.
+    pub(super) fn parent(&self, atom: u32) -> Option<Arc> {
+        let parent = self.nodes[atom as usize].parent;
+        (parent.to != NONE).then_some(parent)
     }
 
-    fn visit(&mut self, atom: u32) {
-        self.time[atom as usize] = self.visited.len() as u32;
-        self.visited.push(atom);
-        self.stack.push((atom, 0));
+    /// The orders of the bonds of an atom together, as they are written.
+    pub(super) fn order_sum(&self, atom: u32) -> u32 {
+        self.nodes[atom as usize].order_sum
     }
 
-    fn walk(&mut self, structure: &Structure) {
-        while let Some((atom, at)) = self.stack.last_mut() {
-            let atom = *atom;
-            let Some(&arc) = structure.arcs(atom).get(*at) else {
-                self.stack.pop();
+    /// The atoms that follow one, smaller branches first and equal ones by number.
+    pub(super) fn children(&self, atom: u32) -> impl Iterator<Item = u32> {
+        let mut next = self.nodes[atom as usize].first;
+        std::iter::from_fn(move || {
+            let child = next;
+            next = self.nodes.get(child as usize)?.sibling;
+            Some(child)
+        })
+    }
+
+    /// Visits a component depth first; `time` is how many atoms were visited before.
+    fn walk(&mut self, arcs: &[Arc], root: u32, time: &mut u32) {
+        let mut atom = root;
+        self.nodes[atom as usize].time = *time;
+        loop {
+            let node = &mut self.nodes[atom as usize];
+            if node.arcs.0 == node.arcs.1 {
+                if atom == root {
+                    break;
+                }
+                let parent = node.parent.to;
+                self.add_child(parent, atom);
+                atom = parent;
                 continue;
-            };
-            *at += 1;
-            let came = self.parent[atom as usize].is_some_and(|back| back.bond == arc.bond);
-            let time = self.time[arc.to as usize];
-            if time == UNSEEN {
-                self.parent[arc.to as usize] = Some(Arc { to: atom, ..arc });
-                self.visit(arc.to);
-            } else if !came && time < self.time[atom as usize] {
+            }
+            let arc = arcs[node.arcs.0 as usize];
+            node.arcs.0 += 1;
+            node.order_sum += u32::from(arc.order);
+            let (came, here) = (node.parent.bond, node.time);
+            let other = &mut self.nodes[arc.to as usize];
+            if other.time == NONE {
+                *time += 1;
+                other.time = *time;
+                other.parent = Arc { to: atom, ..arc };
+                atom = arc.to;
+            } else if arc.bond != came && other.time < here {
                 // The other way round it is met again later.
                 self.closures.push(Closure { from: atom, arc });
             }
         }
+        *time += 1;
     }
 
-    fn sort_children(&mut self) {
-        let Self {
-            parent,
-            visited,
-            size,
-            starts,
-            children,
-            ..
-        } = self;
-        size.clear();
-        size.resize(parent.len(), 1);
-        starts.clear();
-        starts.resize(parent.len() + 1, 0);
-        for &atom in visited.iter().rev() {
-            if let Some(arc) = parent[atom as usize] {
-                size[arc.to as usize] += size[atom as usize];
-                starts[arc.to as usize] += 1;
-            }
+    /// Lists an atom, whose size is known, among those that follow its parent.
+    fn add_child(&mut self, parent: u32, atom: u32) {
+        let size = self.nodes[atom as usize].size;
+        let above = &mut self.nodes[parent as usize];
+        above.size += size;
+        let mut next = above.first;
+        let mut before = NONE;
+        while let Some(node) = self.nodes.get(next as usize)
+            && (node.size, next) < (size, atom)
+        {
+            (before, next) = (next, node.sibling);
         }
-        let mut sum = 0;
-        for start in starts.iter_mut() {
-            sum += *start;
-            *start = sum;
-        }
-        children.clear();
-        children.resize(sum as usize, Arc::default());
-        for &atom in visited.iter() {
-            if let Some(arc) = parent[atom as usize] {
-                let start = &mut starts[arc.to as usize];
-                *start -= 1;
-                children[*start as usize] = Arc { to: atom, ..arc };
-            }
-        }
-        for ends in starts.windows(2) {
-            let own = &mut children[ends[0] as usize..ends[1] as usize];
-            if own.len() > 1 {
-                own.sort_unstable_by_key(|arc| (size[arc.to as usize], arc.to));
-            }
+        self.nodes[atom as usize].sibling = next;
+        match self.nodes.get_mut(before as usize) {
+            Some(node) => node.sibling = atom,
+            None => self.nodes[parent as usize].first = atom,
         }
     }
 }

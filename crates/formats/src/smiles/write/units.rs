@@ -25,8 +25,19 @@ pub(super) struct Unit {
 #[derive(Debug, Clone, Default)]
 pub(super) struct End {
     pub(super) atom: u32,
-    /// What can carry a slope that says where the first ligand lies, best first.
-    pub(super) options: Vec<Choice>,
+    /// What can carry a slope that says where the first ligand lies, best first: two bonds at most,
+    /// and where there is one, it comes first.
+    pub(super) options: [Option<Choice>; 2],
+}
+
+impl End {
+    fn new(atom: u32, options: impl Iterator<Item = Choice>) -> Self {
+        let mut options = options.fuse();
+        Self {
+            atom,
+            options: [options.next(), options.next()],
+        }
+    }
 }
 
 /// A bond that can carry a slope, seen from an end.
@@ -123,24 +134,19 @@ impl Context<'_> {
         };
         let [first, second] = ligands;
         let options = [(first, false), (second, true)].into_iter();
-        End {
-            atom,
-            options: options.filter_map(choice).collect(),
-        }
+        End::new(atom, options.filter_map(choice))
     }
 
     /// The end of a unit without a mark: only which bonds touch it matters.
     fn other_end(&self, atom: u32, inner: u32) -> End {
         let arcs = self.structure.arcs(atom).iter();
         let options = arcs.filter(|arc| arc.to != inner && arc.order == 1);
-        End {
+        End::new(
             atom,
-            options: options
-                .map(|arc| Choice {
-                    carrier: Carrier::Bond(arc.bond),
-                    opposite: false,
-                })
-                .collect(),
-        }
+            options.map(|arc| Choice {
+                carrier: Carrier::Bond(arc.bond),
+                opposite: false,
+            }),
+        )
     }
 }

@@ -203,7 +203,7 @@ impl CounterIons {
 /// Keys of a SMILES of one component with its protons settled.
 fn keys(orderer: &mut Orderer, text: &str) -> Result<(Key, Key), String> {
     let molecule = smiles::parse(text).map_err(|error| format!("{text}: {error}"))?;
-    if molecule.component_count() != 1 {
+    if !molecule.is_connected() {
         return Err(format!("{text} is not one component"));
     }
     let structure = Structure::new(orderer, molecule).map_err(|error| error.to_string())?;
