@@ -2,7 +2,7 @@
 
 use std::io;
 
-use crate::{Relation, StereoKind, Verdict, relate};
+use crate::{PrepareError, Relation, StereoKind, Verdict, relate};
 
 use super::{
     Column,
@@ -25,6 +25,25 @@ pub(super) struct Found {
 
 /// Relates the records of one family key, sorted.
 pub(super) fn relate_family(loader: &mut Loader<'_>, relatives: &[Relative]) -> io::Result<Found> {
+    let found = relate_compounds(loader, relatives);
+    loader.clear();
+    match found {
+        // Keys ask for less than a comparison does, which may reach a limit where they did not.
+        Err(error)
+            if error
+                .get_ref()
+                .is_some_and(|inner| inner.is::<PrepareError>()) =>
+        {
+            Ok(Found {
+                undecided: relatives.iter().map(|relative| relative.record).collect(),
+                ..Found::default()
+            })
+        }
+        found => found,
+    }
+}
+
+fn relate_compounds(loader: &mut Loader<'_>, relatives: &[Relative]) -> io::Result<Found> {
     let mut found = Found::default();
     for compounds in by_constitution(loader, relatives)? {
         found.add_duplicates(&compounds);
@@ -34,7 +53,6 @@ pub(super) fn relate_family(loader: &mut Loader<'_>, relatives: &[Relative]) -> 
             found.add_group(loader, Column::Stereo, &all)?;
         }
     }
-    loader.clear();
     Ok(found)
 }
 

@@ -203,3 +203,27 @@ fn groups_are_those_of_all_pairs() {
     }
     assert!(pairs > 200_000, "{pairs} pairs");
 }
+
+/// Where records cannot be compared within the limits, they are in no group and say so.
+#[test]
+fn what_cannot_be_compared_is_told() {
+    let (options, limits) = (ReadOptions::default(), Limits::default());
+    let mut reading = Reading::new(&options, limits);
+    let mut gatherer = Gatherer::new(1 << 20).unwrap();
+    let text = "CCO\nOCC\nCOC\n";
+    let mut records = Records::new("test", text.as_bytes(), Format::Smiles, options.clone());
+    while let Some(raw) = records.cut() {
+        gatherer.add(&reading.read(raw.unwrap())).unwrap();
+    }
+    let few = Limits {
+        order_steps: 1,
+        ..limits
+    };
+    let families = gatherer.group(&options, few, PLAN).unwrap();
+    let records: Vec<Grouped> = families.into_records().map(Result::unwrap).collect();
+    let undecided: Vec<bool> = records.iter().map(|record| record.undecided).collect();
+    assert_eq!(undecided, [true, true, false]);
+    assert_eq!(numbers(&records, Column::Duplicates), [0; 3]);
+    let closest = records[1].closest(9).map(|(_, group)| group.kinship);
+    assert_eq!(closest, Some(Kinship::NotCompared));
+}
