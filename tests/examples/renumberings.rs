@@ -13,21 +13,12 @@
     reason = "a program of the tests says what it found"
 )]
 
-use std::{
-    ops::AddAssign,
-    path::Path,
-    process::ExitCode,
-    sync::atomic::{AtomicUsize, Ordering},
-    thread,
-    time::Instant,
-};
+use std::{ops::AddAssign, path::Path, process::ExitCode, time::Instant};
 
 use molkin_tests::{
-    Comparer, Numbers, first_word, other_kekule_form, random_spelling, read_text, renumbered,
+    Comparer, Numbers, check_lines, first_word, other_kekule_form, random_spelling, read_text,
+    renumbered,
 };
-
-/// Lines that a thread takes at a time.
-const CHUNK: usize = 256;
 
 #[derive(Default)]
 struct Counts {
@@ -83,41 +74,17 @@ fn say(name: &str, counts: &Counts) {
     );
 }
 
-/// As many threads as processors, each of which takes the next lines.
 fn check_file(lines: &[&str], times: usize) -> Counts {
-    let next = AtomicUsize::new(0);
-    let threads = thread::available_parallelism().map_or(1, usize::from);
-    let work = || {
+    check_lines(lines, || {
         let mut comparer = Comparer::default();
-        let mut counts = Counts::default();
-        loop {
-            let from = next.fetch_add(CHUNK, Ordering::Relaxed);
-            let Some(chunk) = lines.get(from..lines.len().min(from + CHUNK)) else {
-                return counts;
-            };
-            if chunk.is_empty() {
-                return counts;
-            }
-            for (number, line) in (from..).zip(chunk) {
-                // The sequence belongs to the line, so that a run repeats whatever the threads do.
-                let mut numbers = Numbers::new(number as u64);
-                if let Err(message) = check(&mut comparer, line, times, &mut numbers, &mut counts) {
-                    eprintln!("line {}: {line}: {message}", number + 1);
-                }
+        move |number, line: &str, counts: &mut Counts| {
+            // The sequence belongs to the line, so that a run repeats whatever the threads do.
+            let mut numbers = Numbers::new(number as u64);
+            if let Err(message) = check(&mut comparer, line, times, &mut numbers, counts) {
+                eprintln!("line {}: {line}: {message}", number + 1);
             }
         }
-    };
-    let mut all = Counts::default();
-    thread::scope(|scope| {
-        let workers: Vec<_> = (0..threads).map(|_| scope.spawn(work)).collect();
-        for worker in workers {
-            match worker.join() {
-                Ok(counts) => all += counts,
-                Err(panic) => std::panic::resume_unwind(panic),
-            }
-        }
-    });
-    all
+    })
 }
 
 /// Counts one structure and its copies.

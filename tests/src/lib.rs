@@ -19,15 +19,18 @@ mod forms;
 mod graph6;
 mod kekule;
 mod kinds;
+mod lines;
 mod molfile;
 mod moves;
 mod numbers;
 mod pairs;
 mod renumber;
+mod shortcuts;
 mod small;
 mod spelling;
 mod stereo;
 mod tally;
+mod tautomers;
 mod text;
 
 pub mod fuzz;
@@ -42,15 +45,18 @@ pub use crate::{
     graph6::Graph,
     kekule::other_kekule_form,
     kinds::{KindPair, definition_kinds, fixture_kinds},
-    moves::{Readings, SubstituentNames},
+    lines::check_lines,
     molfile::{molfiles, renumbered_molfile},
+    moves::{Readings, SubstituentNames},
     numbers::Numbers,
     pairs::{Expected, Pair, definition_pairs, fixture_pairs, grouped_pairs},
     renumber::{renumbered, renumbered_form, with_hydrogens_written},
+    shortcuts::Shortcuts,
     small::small_isomers,
     spelling::random_spelling,
     stereo::{Markings, all_labels, all_markings, completions, grouped, mirrored},
     tally::Tally,
+    tautomers::shifted,
     text::{Table, first_word, read_text, shared, workspace},
 };
 

@@ -9,7 +9,7 @@ use std::collections::BTreeSet;
 
 use molkin_relate::{
     Explanation, Structure,
-    findings::{Change, Finding, Link, Moved, RingChange, Shift},
+    findings::{Change, Finding, Link, Moved, RingChange, Shift, Substituent},
     functional_groups,
 };
 
@@ -106,6 +106,19 @@ impl<'s> Readings<'s> {
                 self.hangs(chain)?;
                 self.moved(within, finding)
             }
+            Change::Divided {
+                centre,
+                chains,
+                within,
+            } => {
+                require(self.image(centre[0]) == Some(centre[1]), "another centre")?;
+                for side in 0..2 {
+                    for chain in &chains[side] {
+                        self.bears(side, centre[side], chain)?;
+                    }
+                }
+                self.moved(within, finding)
+            }
             Change::Link(link) => self.link(link, finding),
             Change::Turned { name, bonds } => self.turned(name, bonds, finding),
             Change::Swapped { atoms, beside, .. } => self.swapped(atoms, beside),
@@ -125,6 +138,18 @@ impl<'s> Readings<'s> {
     fn same_atoms(&self, moved: &Moved) -> Result<(), String> {
         let [a, b] = &moved.groups;
         require(self.images(&a.atoms) == b.atoms, "other atoms")
+    }
+
+    /// A named substituent on an atom.
+    fn bears(&self, side: usize, seat: u32, group: &Substituent) -> Result<(), String> {
+        let walk = &self.walks[side];
+        let through = walk.near(seat).find(|&to| {
+            walk.beyond(seat, to)
+                .is_some_and(|atoms| atoms == group.atoms)
+        });
+        let through = through.ok_or("no such chain")?;
+        let name = self.names.of(walk.structure, &group.atoms, through, seat);
+        require(name.as_deref() == group.name, "another name")
     }
 
     /// A substituent that hangs where it is said to, under its name, and at the place that is told.

@@ -62,6 +62,8 @@ struct Set {
     sampled: usize,
     proved: Proved,
     proved_in_sample: Proved,
+    /// Steps of half the pairs, and of 99 % of them: at most so many. A step takes 80 ns.
+    steps: Option<[u64; 2]>,
 }
 
 #[derive(Debug, Default, PartialEq)]
@@ -86,6 +88,7 @@ const MOVED: Set = Set {
         bonds: 600,
         all: 600,
     },
+    steps: Some([5_000, 60_000]),
 };
 
 /// Arbitrary isomers.
@@ -101,6 +104,7 @@ const COMMON: Set = Set {
         all: 283,
     },
     proved_in_sample: Proved { bonds: 30, all: 29 },
+    steps: None,
 };
 
 /// Constitutional isomers of all sorts.
@@ -116,6 +120,7 @@ const CONSTITUTIONAL: Set = Set {
         all: 943,
     },
     proved_in_sample: Proved { bonds: 25, all: 24 },
+    steps: None,
 };
 
 #[rstest]
@@ -160,6 +165,15 @@ fn maps_are_as_good_as_known_ones(#[case] set: &Set) {
         proved.bonds >= least.bonds && proved.all >= least.all,
         "{proved:?}, but {least:?} are stated"
     );
+    if let Some(most) = set.steps {
+        let mut steps: Vec<u64> = found.iter().map(|found| found.0.steps).collect();
+        steps.sort_unstable();
+        let taken = [50, 99].map(|percent| steps[steps.len() * percent / 100]);
+        assert!(
+            taken[0] <= most[0] && taken[1] <= most[1],
+            "{taken:?} steps"
+        );
+    }
 }
 
 /// The map of a pair and the milliseconds it took.
@@ -188,7 +202,7 @@ fn explain(
 
 /// A table by distance (i): pairs, how many are proved in each part, steps and times. It is the source of the one in
 /// docs/performance.md.
-fn report(name: &str, found: &[(Mapping, f64)]) {
+pub(crate) fn report(name: &str, found: &[(Mapping, f64)]) {
     let mut bins: BTreeMap<u32, Vec<&(Mapping, f64)>> = BTreeMap::new();
     for one in found {
         bins.entry(one.0.distance.bonds.div_ceil(4) * 4)

@@ -65,6 +65,7 @@ fn names_both_ends(finding: &Finding) -> bool {
             | Change::Exchanged(_)
             | Change::Rehung(_)
             | Change::Chain { .. }
+            | Change::Divided { .. }
             | Change::Link(_)
             | Change::Turned { .. }
     )

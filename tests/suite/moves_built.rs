@@ -26,6 +26,50 @@ const SCAFFOLDS: [&str; 8] = [
     "OC(=O)C1CC1c1ccco1",
 ];
 
+/// Names in the table of substituents.
+const GROUPS: [&str; 40] = [
+    "methyl group",
+    "ethyl group",
+    "isopropyl group",
+    "sec-butyl group",
+    "tert-butyl group",
+    "neopentyl group",
+    "cyclopropyl group",
+    "cyclohexyl group",
+    "vinyl group",
+    "propargyl group",
+    "phenyl group",
+    "4-methylphenyl group",
+    "3-nitrophenyl group",
+    "1-naphthyl group",
+    "benzyl group",
+    "benzhydryl group",
+    "3-pyridyl group",
+    "2-thienyl group",
+    "morpholin-4-yl group",
+    "fluorine",
+    "chlorine",
+    "bromine",
+    "trifluoromethyl group",
+    "hydroxy group",
+    "2-hydroxyethyl group",
+    "methoxy group",
+    "benzyloxy group",
+    "acetoxy group",
+    "amino group",
+    "dimethylamino group",
+    "acetamido group",
+    "formyl group",
+    "benzoyl group",
+    "carboxy group",
+    "ethoxycarbonyl group",
+    "carbamoyl group",
+    "cyano group",
+    "nitro group",
+    "methylsulfonyl group",
+    "trimethylsilyl group",
+];
+
 /// A pair and what is to be found.
 struct Built {
     molecules: [Molecule; 2],
@@ -74,17 +118,19 @@ fn with_groups(scaffold: &Molecule, groups: &[(&Molecule, u32)]) -> Option<Molec
     builder.build().ok()
 }
 
-/// Substituents of the table that hang by a single bond: name, fragment on astatine.
+/// Substituents by name, each as a fragment on astatine.
 fn substituents(comparer: &mut Comparer) -> Vec<(String, Molecule)> {
     let path = workspace("crates/relate/src/explain/moves/substituents.tsv");
     let table = Table::read(&path);
-    let rows = table.columns(["name", "fragment"]);
-    let rows = rows.filter(|[_, fragment]| !fragment.starts_with("*="));
-    rows.map(|[name, fragment]| {
-        let text = fragment.replacen('*', "[At]", 1);
+    let rows: BTreeMap<&str, &str> = table
+        .columns(["name", "fragment"])
+        .map(|[name, fragment]| (name, fragment))
+        .collect();
+    let named = GROUPS.map(|name| {
+        let text = rows[name].replacen('*', "[At]", 1);
         (name.to_owned(), comparer.molecule(&text).unwrap())
-    })
-    .collect()
+    });
+    named.into()
 }
 
 /// Two different atoms of a scaffold that have a hydrogen.

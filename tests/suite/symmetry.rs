@@ -1,7 +1,9 @@
 //! What holds for any pair: mirror symmetry of verdict and explanation, the least distance.
 
 use molkin_graph::Limits;
-use molkin_relate::{Explanation, HydrogenDifference, Relation, StereoChange, Structure, explain};
+use molkin_relate::{
+    Explanation, HydrogenDifference, Relation, StereoChange, Structure, explain, findings::Finding,
+};
 use molkin_tests::{
     Comparer, Numbers, Tally, definition_pairs, first_word, least_distance, mirrored, read_text,
     renumbered, shared, small_isomers, stated_distance,
@@ -28,9 +30,15 @@ fn turned(explanation: &Explanation) -> Explanation {
         };
     }
     turned.hydrogens.sort_unstable_by_key(|entry| entry.a);
-    if let Some([a, b]) = &mut turned.branching {
-        std::mem::swap(a, b);
-    }
+    turned.left_over.reverse();
+    turned.findings = turned.findings.into_iter().map(Finding::mirrored).collect();
+    turned
+        .branching
+        .iter_mut()
+        .for_each(|sides| sides.reverse());
+    turned.rings.iter_mut().for_each(|sides| sides.reverse());
+    let groups = turned.functional_groups.iter_mut();
+    groups.for_each(|sides| sides.reverse());
     for entry in &mut turned.stereo {
         std::mem::swap(&mut entry.a, &mut entry.b);
         entry.groups.reverse();

@@ -63,6 +63,9 @@ pub(crate) struct Compare {
     /// Leave out the atom map and everything that needs it
     #[arg(long)]
     pub(crate) brief: bool,
+    /// Show all in the text form: every atom, bond and branch point
+    #[arg(long, conflicts_with = "brief")]
+    pub(crate) full: bool,
     /// Budget of the search for the atom map, for each pair
     #[arg(long, value_name = "N")]
     pub(crate) steps: Option<u64>,

@@ -19,7 +19,7 @@ use crate::{
     args::{Compare, Format, PairBy},
     forms::Forms,
     input::{self, Input},
-    output::{CAUTION, json::Objects},
+    output::{CAUTION, json::Objects, text::Extent},
     report::Report,
 };
 
@@ -69,6 +69,7 @@ struct Comparison<'r> {
     forms: Forms,
     limits: Limits,
     brief: bool,
+    extent: Extent,
     format: Format,
     threads: NonZeroUsize,
     objects: Objects,
@@ -92,6 +93,11 @@ impl<'r> Comparison<'r> {
             forms,
             limits,
             brief: options.brief,
+            extent: if options.full {
+                Extent::Full
+            } else {
+                Extent::Screen
+            },
             format: options.format,
             threads: options.working.threads(),
             objects: Objects::new(options.format),
@@ -110,6 +116,7 @@ impl<'r> Comparison<'r> {
             forms: self.forms.clone(),
             limits: self.limits,
             brief: self.brief,
+            extent: self.extent,
             format: self.format,
             style: self.report.style(),
         }

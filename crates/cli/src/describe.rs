@@ -1,6 +1,6 @@
 //! `molkin describe`.
 
-use std::io;
+use std::{io, num::NonZeroUsize};
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions};
 use molkin_graph::{Limits, Orderer};
@@ -40,6 +40,8 @@ struct Descriptions<'r> {
 impl Entries for Descriptions<'_> {
     type Made = Vec<u8>;
     type Scratch = (Parser, Orderer);
+
+    const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(63);
 
     fn scratch(&self) -> (Parser, Orderer) {
         let orderer = Orderer::new(Limits::default());

@@ -1,6 +1,6 @@
 //! `molkin keys`.
 
-use std::io;
+use std::{io, num::NonZeroUsize};
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 use molkin_graph::Limits;
@@ -64,6 +64,8 @@ struct Scratch {
 impl Entries for Rows<'_> {
     type Made = Made<KeyRow>;
     type Scratch = Scratch;
+
+    const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(255);
 
     fn scratch(&self) -> Scratch {
         let limits = Limits::default();

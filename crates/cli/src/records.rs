@@ -20,6 +20,9 @@ pub(crate) trait Entries: Sync {
     /// What a thread keeps from one record to the next.
     type Scratch;
 
+    /// The most records that go to a thread at once: passing these on costs a small part of the work.
+    const CHUNK: NonZeroUsize;
+
     /// Scratch for one thread.
     fn scratch(&self) -> Self::Scratch;
 
@@ -93,9 +96,6 @@ impl<E: Entries> Work for Writing<'_, E> {
     }
 }
 
-/// Records that go to a thread at once: passing these on costs a small part of one.
-pub(crate) const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(255);
-
 /// Hands what is made of each record of each input to `write`, in order. Inputs that cannot be opened
 /// or that break off are reported in their place, and the next one is read. Ends with the count of
 /// records that failed.
@@ -108,7 +108,7 @@ pub(crate) fn each<E: Entries>(
 ) -> io::Result<()> {
     let plan = Plan {
         threads: working.threads(),
-        chunk: CHUNK,
+        chunk: E::CHUNK,
     };
     let (mut records, mut failed) = (0_u64, 0_u64);
     let arrivals = inputs.watched(report.progress());

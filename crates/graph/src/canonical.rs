@@ -23,6 +23,7 @@ use crate::{
     order::{Coloured, Labeller, Labelling, Unit},
     skeleton::Skeleton,
     stereo::{self, Perception},
+    tautomer,
 };
 
 pub use comparison::{Arrangement, arrangement};
@@ -96,7 +97,7 @@ pub enum OrderError {
 /// Computes canonical views; owns the scratch memory. One per thread.
 #[derive(Debug, Default)]
 pub struct Orderer {
-    limits: Limits,
+    pub(crate) limits: Limits,
     labeller: Labeller,
     graph: Coloured,
     mesomer: mesomer::Scratch,
@@ -104,6 +105,7 @@ pub struct Orderer {
     claims: claims::Scratch,
     form: form::Scratch,
     digester: Digester,
+    pub(crate) tautomer: tautomer::Scratch,
 }
 
 /// The canonical view of one molecule.
@@ -134,6 +136,15 @@ impl Orderer {
             limits,
             ..Self::default()
         }
+    }
+
+    /// An orderer that takes no shortcuts in perception: normal forms of mesomers are always found by
+    /// the general way, and an [`Identity`] is found as all of the [`Canonical`] view. It answers the
+    /// same, slowly; tests hold the shortcuts to it.
+    pub fn without_shortcuts(limits: Limits) -> Self {
+        let mut orderer = Self::new(limits);
+        orderer.mesomer.no_shortcuts = true;
+        orderer
     }
 
     /// The limits.
@@ -240,11 +251,38 @@ impl Orderer {
         molecule: &Molecule,
         view: &mut Canonical,
     ) -> Result<u64, OrderError> {
+        self.perceive(molecule, view)?;
+        self.label_constitution(view)
+    }
+
+    /// Loads the skeleton and its normal form.
+    pub(crate) fn perceive(
+        &mut self,
+        molecule: &Molecule,
+        view: &mut Canonical,
+    ) -> Result<(), OrderError> {
         if molecule.atom_count() > self.limits.atoms {
             return Err(OrderError::TooManyAtoms {
                 limit: self.limits.atoms,
             });
         }
+        view.skeleton.load(molecule);
+        let scratch = &mut self.mesomer;
+        view.mesomer
+            .load(&mut view.skeleton, &self.limits, scratch)
+    }
+
+    /// Finds the orders of what was perceived, and of that alone: no keys.
+    pub(crate) fn order_perceived(
+        &mut self,
+        molecule: &Molecule,
+        view: &mut Canonical,
+    ) -> Result<(), OrderError> {
+        let steps = self.label_constitution(view)?;
+        self.order_stereo(molecule, view, steps, Extent::All)
+    }
+
+    fn label_constitution(&mut self, view: &mut Canonical) -> Result<u64, OrderError> {
         let Canonical {
             skeleton,
             mesomer,
@@ -253,8 +291,6 @@ impl Orderer {
             has_isotopes,
             ..
         } = view;
-        skeleton.load(molecule);
-        mesomer.load(skeleton, &self.limits, &mut self.mesomer)?;
         let mut steps = 0;
         self.label(skeleton, mesomer, false, &mut steps, constitution)?;
         let mut atoms = skeleton.atoms.iter();

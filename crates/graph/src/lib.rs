@@ -28,6 +28,7 @@ mod skeleton;
 #[cfg(test)]
 mod sketch;
 mod stereo;
+mod tautomer;
 mod unsaturation;
 
 pub use crate::{
@@ -53,5 +54,6 @@ pub use crate::{
     order::{GraphError, GraphOrder, GraphOrderer},
     revision::{Revised, Revision},
     stereo::Undrawable,
+    tautomer::{Tautomer, TautomerAtom},
     unsaturation::Unsaturation,
 };

@@ -288,6 +288,19 @@ impl Matching {
         done
     }
 
+    /// Searches from a vertex that is exposed while no other is: afterwards
+    /// [`Matching::is_outer`] tells which vertices an even alternating path leads to, that is, which
+    /// could be exposed in its stead.
+    pub(crate) fn explore(&mut self, root: u32) {
+        let end = self.search(root);
+        debug_assert!(end.is_none(), "no other vertex is exposed");
+    }
+
+    /// Whether the last search reached a vertex by an even alternating path.
+    pub(crate) fn is_outer(&self, vertex: u32) -> bool {
+        self.outer[vertex as usize]
+    }
+
     /// Breadth-first search with blossom shrinking; returns the far end of an augmenting path.
     fn search(&mut self, root: u32) -> Option<u32> {
         for vertex in self.touched.drain(..) {

@@ -7,7 +7,7 @@
 //! all best placements share is fixed, what differs among them is mobile. [`placement`] makes
 //! this a perfect-matching question, so that the answer is exact and polynomial; [`mobile`] asks it
 //! bond by bond. Neutral closed-shell systems, nearly all, are best as drawn and have a shorter way:
-//! [`shift`].
+//! [`shift`]; where the whole drawing is such, [`plain`] tells.
 
 mod first;
 mod mobile;
@@ -24,6 +24,7 @@ mod tests;
 use crate::{Limits, OrderError, matching::Matching, skeleton::Skeleton};
 
 pub(crate) use first::First;
+use mobile::Mobility;
 pub(crate) use octet::{Scratch as OctetScratch, separate};
 use placement::System;
 use plain::Pairs;
@@ -63,6 +64,8 @@ pub(crate) struct Mesomer {
 /// Scratch that is reused from one molecule to the next.
 #[derive(Debug, Default)]
 pub(crate) struct Scratch {
+    /// Takes the general way for plain drawings and ring shifts, too.
+    pub(crate) no_shortcuts: bool,
     pairs: Vec<Pairs>,
     octet: octet::Scratch,
     drawn: Vec<Drawn>,
@@ -70,6 +73,7 @@ pub(crate) struct Scratch {
     /// Per atom: in one of the systems with charges or open valences.
     in_system: Vec<bool>,
     spare_systems: Vec<System>,
+    mobility: Mobility,
     shift: Shift,
     matching: Matching,
 }
@@ -115,30 +119,69 @@ impl Mesomer {
         limits: &Limits,
         scratch: &mut Scratch,
     ) -> Result<(), OrderError> {
+        // An edge of a matching costs some four times as much as one of a refinement.
+        scratch.matching.work = 0;
+        scratch.matching.budget = limits.order_steps / 4;
+        if !scratch.no_shortcuts && plain::is_plain(skeleton, &mut scratch.pairs) {
+            return self.load_plain(skeleton, limits, scratch);
+        }
+        octet::separate(skeleton, &mut scratch.octet);
+        self.take_orders(skeleton);
+        self.place_systems(skeleton, limits, scratch)?;
+        let Scratch {
+            valences,
+            in_system,
+            shift,
+            matching,
+            ..
+        } = scratch;
+        // A ring shift that would turn a triple bond into cumulated ones relates valence isomers, not
+        // mesomers (docs/definitions.md), so atoms with room for two π bonds stay out here.
+        let takes_part = |atom: u32| valences[atom as usize].pi == 1 && !in_system[atom as usize];
+        let (orders, shifting) = (&mut self.orders, &mut self.shifting);
+        shift.mark(skeleton, takes_part, matching, limits, orders, shifting)
+    }
+
+    /// The same for a plain drawing: ring shifts are all that there is.
+    fn load_plain(
+        &mut self,
+        skeleton: &Skeleton,
+        limits: &Limits,
+        scratch: &mut Scratch,
+    ) -> Result<(), OrderError> {
         let Scratch {
             pairs,
-            octet,
+            spare_systems,
+            shift,
+            matching,
+            ..
+        } = scratch;
+        self.take_orders(skeleton);
+        self.states.clear();
+        self.states.resize(skeleton.len(), AtomState::default());
+        spare_systems.append(&mut self.systems);
+        let takes_part = |atom: u32| pairs[atom as usize].pi == 1;
+        let (orders, shifting) = (&mut self.orders, &mut self.shifting);
+        shift.mark(skeleton, takes_part, matching, limits, orders, shifting)
+    }
+
+    /// Finds the systems with charges or open valences, and what is mobile in them.
+    fn place_systems(
+        &mut self,
+        skeleton: &Skeleton,
+        limits: &Limits,
+        scratch: &mut Scratch,
+    ) -> Result<(), OrderError> {
+        let Scratch {
+            no_shortcuts,
             drawn,
             valences,
             in_system,
             spare_systems,
-            shift,
+            mobility,
             matching,
+            ..
         } = scratch;
-        // An edge of a matching costs some four times as much as one of a refinement.
-        matching.work = 0;
-        matching.budget = limits.order_steps / 4;
-        if plain::is_plain(skeleton, pairs) {
-            self.take_orders(skeleton);
-            self.states.clear();
-            self.states.resize(skeleton.len(), AtomState::default());
-            spare_systems.append(&mut self.systems);
-            let takes_part = |atom: u32| pairs[atom as usize].pi == 1;
-            let (orders, shifting) = (&mut self.orders, &mut self.shifting);
-            return shift.mark(skeleton, takes_part, matching, limits, orders, shifting);
-        }
-        octet::separate(skeleton, octet);
-        self.take_orders(skeleton);
         valence::load(valences, drawn, skeleton);
         let atoms = skeleton.atoms.iter().zip(valences.iter());
         self.states.clear();
@@ -147,25 +190,20 @@ impl Mesomer {
             open: valence.open,
             ..AtomState::default()
         }));
-        systems::find(
-            skeleton,
-            valences,
-            in_system,
-            &mut self.systems,
-            spare_systems,
-        );
+        let systems = &mut self.systems;
+        systems::find(skeleton, valences, in_system, systems, spare_systems);
+        if *no_shortcuts {
+            systems::add_neutral(skeleton, valences, in_system, systems);
+        }
         let (orders, states) = (&mut self.orders, &mut self.states);
-        for system in &mut self.systems {
+        for system in systems {
             if system.settle(valences, matching, limits)? {
-                mobile::mark(system, matching, limits, orders, states)?;
+                mobility.mark(system, matching, limits, orders, states)?;
             }
         }
-        // A ring shift that would turn a triple bond into cumulated ones relates valence isomers, not
-        // mesomers (docs/definitions.md), so atoms with room for two π bonds stay out here.
-        let takes_part = |atom: u32| valences[atom as usize].pi == 1 && !in_system[atom as usize];
-        let shifting = &mut self.shifting;
-        shift.mark(skeleton, takes_part, matching, limits, orders, shifting)
+        Ok(())
     }
+
     fn take_orders(&mut self, skeleton: &Skeleton) {
         self.orders.clear();
         self.orders

@@ -102,9 +102,9 @@ pub(crate) struct Perception {
     pub(crate) undrawable: Vec<Undrawable>,
     /// Arrangements about centres that are not tetrahedral.
     pub(crate) placed: Vec<Placed>,
-    /// How many of the candidates are tetrahedral: these come first, by atom.
+    /// How many of the candidates are the molecule's own tetrahedral ones: these come first, by atom.
     tetrahedral: usize,
-    /// Ends, the lower first, of the others, and candidates; sorted.
+    /// Centres, the lower first, of all others, and candidates; sorted.
     places: Vec<([u32; 2], usize)>,
 }
 
@@ -140,7 +140,7 @@ impl Perception {
         self.cages.clear();
         self.undrawable.clear();
         marks::on_skeleton(marks, skeleton, molecule.drawn_stereo());
-        let thetas = tetrahedral::find(self, skeleton, mesomer, marks, eligible, bridgeheads);
+        tetrahedral::find(self, skeleton, mesomer, marks, eligible, bridgeheads);
         self.tetrahedral = self.candidates.len();
         double_bond::find(self, skeleton, mesomer, marks, seen);
         let places = self.candidates.iter().enumerate().skip(self.tetrahedral);
@@ -149,17 +149,18 @@ impl Perception {
             .extend(places.map(|(index, c)| (ascending(c.centres), index)));
         self.places.sort_unstable();
         marks::apply(self, skeleton, mesomer, marks, seen);
-        bridgehead::bind(self, &thetas);
+        bridgehead::bind(self, bridgeheads);
         coordination::load(self, skeleton, molecule.drawn_coordination());
     }
 
     /// The candidate at a tetrahedral centre (given twice) or a pair of ends.
     pub(crate) fn candidate_at(&self, centres: [u32; 2]) -> Option<usize> {
-        if centres[0] == centres[1] {
-            let tetrahedral = &self.candidates[..self.tetrahedral];
-            return tetrahedral
-                .binary_search_by_key(&centres[0], |candidate| candidate.centres[0])
-                .ok();
+        let tetrahedral = &self.candidates[..self.tetrahedral];
+        if centres[0] == centres[1]
+            && let Ok(index) =
+                tetrahedral.binary_search_by_key(&centres[0], |candidate| candidate.centres[0])
+        {
+            return Some(index);
         }
         let at = self
             .places

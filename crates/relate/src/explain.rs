@@ -3,31 +3,43 @@
 mod branching;
 mod constitution;
 mod coordination;
+mod functional;
+mod left_over;
 pub mod moves;
 mod named;
+mod rings;
 mod stereo;
 mod stereo_groups;
 
 use molkin_graph::Limits;
 
-use crate::{Relation, Structure};
+use crate::{FunctionalGroup, Relation, Structure};
 
 pub use branching::{BranchPoint, Branching};
 pub use constitution::{BondDifference, HydrogenDifference};
+pub use left_over::LeftOver;
+pub(crate) use left_over::surplus;
+pub use rings::{RingJoin, RingSystem};
 pub use stereo::{Geometry, StereoChange, StereoDifference};
 
 /// What accounts for a relation, on the atoms of both records (from 0, in input order).
 #[derive(Debug, Clone, PartialEq, Eq, Default)]
 pub struct Explanation {
-    /// The atom map: non-hydrogen atoms of A and of B, by A's number. Empty where there is none
-    /// (identical records, and records that are not isomers).
+    /// The atom map: non-hydrogen atoms of A and of B, by A's number. Empty for identical records.
     pub atom_map: Vec<(u32, u32)>,
     /// Bonds kept, lost and changed under the map.
     pub bonds: Option<BondDifference>,
     /// Mapped atoms that carry different numbers of hydrogens.
     pub hydrogens: Vec<HydrogenDifference>,
+    /// What the map leaves over of A and of B; nothing of isomers.
+    pub left_over: [Vec<LeftOver>; 2],
     /// Branch points and main chains of both records, where constitution differs.
     pub branching: Option<[Branching; 2]>,
+    /// The ring systems of both records, where constitution differs.
+    pub rings: Option<[Vec<RingSystem>; 2]>,
+    /// Functional groups that A has more often than B, and B than A, where constitution differs. `None`
+    /// also where a group is too symmetric for the step limit.
+    pub functional_groups: Option<[Vec<FunctionalGroup>; 2]>,
     /// What moved, the most telling first; nothing for records too far apart to tell it piece by piece.
     pub findings: Vec<moves::Finding>,
     /// Stereo elements that differ under the map.
@@ -40,9 +52,9 @@ pub struct Explanation {
 
 /// Explains a relation that [`crate::relate`] found.
 ///
-/// For constitutional isomers it searches for the atom map of least distance (docs/definitions.md)
+/// Where the constitution differs it searches for the atom map of least distance (docs/definitions.md)
 /// within `limits.map_steps`; where the budget ends first, the best map found is given and
-/// [`BondDifference::minimal`] is false. For stereo relations it takes, of the maps that keep the
+/// [`BondDifference::minimal`] is false. Records of different formula have atoms left over. For stereo relations it takes, of the maps that keep the
 /// constitution, one that disturbs the fewest stereo elements. `explain(a, b)` and `explain(b, a)`
 /// mirror each other.
 ///
@@ -64,11 +76,11 @@ pub struct Explanation {
 /// ```
 pub fn explain(a: &Structure, b: &Structure, relation: Relation, limits: &Limits) -> Explanation {
     match relation {
-        Relation::NotIsomers | Relation::Identical => Explanation {
+        Relation::Identical => Explanation {
             stereo_least: true,
             ..Explanation::default()
         },
-        Relation::Constitutional => constitution::explain(a, b, limits),
+        Relation::Constitutional | Relation::NotIsomers => constitution::explain(a, b, limits),
         Relation::Stereo(_) => stereo::explain(a, b, limits),
     }
 }

@@ -27,7 +27,7 @@ pub use explain::moves as findings;
 pub use crate::{
     explain::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
-        StereoChange, StereoDifference, explain,
+        LeftOver, RingJoin, RingSystem, StereoChange, StereoDifference, explain,
     },
     forms::{
         Axes, AxesError, Axis, Change, CounterIons, CounterIonsError, Form, FormError, Listed,

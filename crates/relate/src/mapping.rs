@@ -11,14 +11,17 @@
 //!   applied to graphs, then along subgradients (`descent`), which come near to the least bound of all shares.
 //! - `search` branches on one atom at a time and leaves out what `symmetry` shows to be a repetition; `node` says what is
 //!   done in between, `stage` what is proved one after the other.
-//! - `grow` and `polish` give good maps early. They decide nothing. `coherence` chooses among equally distant ones.
+//! - `grow` and `polish` give good maps early. They decide nothing. `choice` looks for a better one
+//!   of the same distance, `coherence` says which is better, `arrangement` what becomes of stereo elements.
 //! - Where the formulae differ, each side gets absent atoms for what only the other has: without bonds and without cost.
 //!
 //! Invariant of the whole module: atom indices come from `problem`, which checks every index of the input, and pair and
 //! slot indices come from `pairs`, which is built from it. All other files index by them without a test.
 
+mod arrangement;
 mod assignment;
 mod bound;
+mod choice;
 mod coherence;
 mod descent;
 mod domain;
@@ -45,12 +48,15 @@ use std::sync::atomic::AtomicBool;
 
 use self::{meter::Meter, problem::Problem};
 
-pub use self::structures::map_structures;
+pub use self::{
+    arrangement::{Arm, Arrangement},
+    structures::map_structures,
+};
 pub(crate) use self::structures::{Heavy, sides};
 
 /// One structure as the search sees it: non-hydrogen atoms in canonical order.
 ///
-/// The four lists of atoms are equally long. The order decides which of several equally good maps is returned, never the
+/// The first three lists, of atoms, are equally long. The order decides which of several equally good maps is returned, never the
 /// distance.
 #[derive(Debug, Clone, Default, PartialEq, Eq, PartialOrd, Ord)]
 pub struct Side {
@@ -62,6 +68,14 @@ pub struct Side {
     pub marks: Vec<u32>,
     /// Both atoms and the order class of each bond. Only equality of classes counts; mobile bonds are a class of their own.
     pub bonds: Vec<(u32, u32, u8)>,
+    /// The functional group that each atom belongs to, as a label that equal groups share, 0 for none; atoms of groups that
+    /// are bonded to each other are in one. It has no part in the distance. May be empty.
+    pub groups: Vec<u32>,
+    /// The stereo elements that are marked. They have no part in the distance.
+    pub stereo: Vec<Arrangement>,
+    /// Automorphisms, each as the atoms that it moves with their images, ascending. What they exchange is equally far from
+    /// everything, but not in stereo.
+    pub symmetries: Vec<Vec<(u32, u32)>>,
 }
 
 /// How far a map is from an isomorphism. Compares in the order of the fields.
@@ -144,6 +158,12 @@ pub enum MappingError {
         /// Length of the list of marks.
         marks: usize,
     },
+    /// A stereo element or a symmetry names an atom that is not there.
+    #[error("a stereo element or a symmetry names atom {atom}, which is not there")]
+    NoSuchAtom {
+        /// The atom.
+        atom: u32,
+    },
     /// A bond names an atom that is not there, joins an atom to itself, or occurs twice.
     #[error(
         "bond {index} joins atoms {first} and {second}, which is not possible or was said before"
@@ -170,12 +190,14 @@ impl Mapping {
     }
 
     /// Whether the structures are too far apart for their differences to be told one by one: at least a third of all bonds
-    /// of both is in one only, however the atoms are mapped.
+    /// of both, and more than six, are in one only, however the atoms are mapped. Six are three moves, which can be told of
+    /// the smallest.
     ///
     /// # Returns
     /// Nothing where the search ended too early to tell: the best map found is that far, but a nearer one may exist.
     pub fn is_unrelated(&self) -> Option<bool> {
-        let far = |bonds: u32| 3 * u64::from(bonds) >= u64::from(self.all_bonds) && bonds > 0;
+        const FEW: u32 = 6;
+        let far = |bonds: u32| 3 * u64::from(bonds) >= u64::from(self.all_bonds) && bonds > FEW;
         match (far(self.bonds_at_least), far(self.distance.bonds)) {
             (true, _) => Some(true),
             (false, false) => Some(false),
@@ -191,9 +213,9 @@ impl Mapping {
 ///
 /// # Returns
 /// The map, its distance and which parts of it are proved least. With the sides exchanged the result is the inverse map.
-/// Of equally distant maps that were met, one is taken that cuts the fewest ring bonds, of these one that leaves the fewest
-/// pieces, of these the one with the lexicographically least list of pairs (of the lesser side). Not all equally distant
-/// maps are met. When the budget ends first, the best map found is returned and the open parts are not `proved`.
+/// Of equally distant maps that were met, one is taken that cuts the fewest ring bonds, of these one that keeps most of the
+/// functional groups, of these one that disturbs the fewest stereo elements, of these one that leaves the fewest pieces, of
+/// these the one with the lexicographically least list of pairs (of the lesser side). Not all equally distant maps are met. When the budget ends first, the best map found is returned and the open parts are not `proved`.
 /// # Errors
 /// See [`MappingError`].
 /// # Complexity
@@ -209,12 +231,14 @@ impl Mapping {
 ///     hydrogens: vec![3, 2, 0],
 ///     marks: vec![0; 3],
 ///     bonds: vec![(0, 1, 1), (1, 2, 1)],
+///     ..Side::default()
 /// };
 /// let b = Side {
 ///     elements: vec![6, 35],
 ///     hydrogens: vec![3, 0],
 ///     marks: vec![0; 2],
 ///     bonds: vec![(0, 1, 1)],
+///     ..Side::default()
 /// };
 /// let found = map_atoms(&a, &b, &Effort::default())?;
 /// assert_eq!(found.pairs, [(0, 0)]);

@@ -27,7 +27,7 @@ pub use self::{
     causes::{Analysis, Cause, Evidence, Hypothesis, causes},
     composition::{Composition, FormulaError},
     judge::{Judge, Judgement},
-    measured::{MassCheck, Measurement, Tolerance, ToleranceError, number},
+    measured::{MassCheck, Measurement, Tolerance, ToleranceError, parse_number},
     pattern::Peak,
     verdict::Verdict,
     well::Well,

@@ -2,6 +2,7 @@
 //!
 //! Atoms count from 1 here, in input order. Fields that do not apply are absent.
 
+mod composition;
 mod describe;
 #[cfg(feature = "families")]
 mod families;
@@ -20,6 +21,7 @@ use serde::Serialize;
 
 use crate::remarks::Noted;
 
+pub use composition::{FunctionalGroup, Piece, RingSystem, Sides, Surplus};
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
 #[cfg(feature = "families")]
 pub use families::{FamilyRow, FamilySummary, GroupSummary, SizeSummary, Sources};
@@ -28,8 +30,8 @@ pub use keys::{KeyRow, KeyRows};
 #[cfg(feature = "families")]
 pub(crate) use keys::{prepare_message, read_message};
 pub use pair::{
-    Apart, BondPair, Bonds, BranchPoint, BranchPoints, Branching, Hydrogens, Kind, Pair,
-    StereoEntry, compare, compare_by,
+    Apart, BondPair, Bonds, BranchPoint, Branching, Hydrogens, Kind, Pair, StereoEntry, compare,
+    compare_by,
 };
 #[cfg(feature = "parquet")]
 pub use self::parquet::ParquetTable;

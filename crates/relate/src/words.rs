@@ -1,21 +1,23 @@
 //! The verdict in plain sentences.
 
+mod analysis;
 pub(crate) mod forms;
 mod functional;
 pub(crate) mod moves;
 mod places;
+mod relatives;
 mod stereo;
 mod stereo_groups;
 
 #[cfg(test)]
 mod tests;
 
-use molkin_graph::Limits;
-
 use crate::{
-    Explanation, Kind, Relation, Structure, Verdict,
+    BondDifference, Explanation, Kind, Relation, Structure, Verdict,
     findings::{Change, Finding},
 };
+
+pub(crate) use analysis::analysis;
 
 /// One or two sentences for a chemist.
 pub(crate) fn summary(
@@ -24,7 +26,6 @@ pub(crate) fn summary(
     kind: Option<Kind>,
     substances: Option<&str>,
     explained: Option<&Explanation>,
-    limits: &Limits,
 ) -> String {
     match verdict.relation {
         Relation::Identical if verdict.open => {
@@ -33,11 +34,11 @@ pub(crate) fn summary(
         Relation::Identical => "The two records are the same compound.".to_owned(),
         Relation::Stereo(kind) => stereo::summary(a, b, kind, explained),
         Relation::Constitutional => {
-            // What needs more than the kind is left out of brief output.
-            let groups = explained.and_then(|_| functional::difference(a, b, limits));
+            let groups = explained.and_then(|found| found.functional_groups.as_ref());
+            let groups = groups.and_then(functional::difference);
             constitutional([a, b], kind, groups, explained)
         }
-        Relation::NotIsomers => not_isomers(a, b, kind, substances),
+        Relation::NotIsomers => relatives::summary([a, b], kind, substances, explained),
     }
 }
 
@@ -80,6 +81,9 @@ fn constitutional(
     if let Some(told) = foremost([a, b], findings, bonds.minimal) {
         return format!("{verdict} {told}");
     }
+    if bonds.unrelated == Some(true) {
+        return format!("{verdict} {}", unrelated(bonds));
+    }
     let (only_a, only_b) = (bonds.only_in_a.len(), bonds.only_in_b.len());
     let differences = match (only_a + only_b, bonds.order_changed.len()) {
         (0, 0) => {
@@ -99,6 +103,15 @@ fn constitutional(
     } else {
         format!("{verdict} One way to see it, not proved the least: {differences}.")
     }
+}
+
+/// Why single differences are not told.
+fn unrelated(bonds: &BondDifference) -> String {
+    let all = 2 * bonds.kept + bonds.only_in_a.len() + bonds.only_in_b.len();
+    format!(
+        "They are unrelated in structure: however the atoms are laid on each other, at least {} of their {all} bonds belong to one only.",
+        bonds.at_least
+    )
 }
 
 /// The most telling finding, and how many there are beside it.
@@ -139,32 +152,5 @@ fn counted(count: usize, noun: &str) -> String {
         0 => format!("no {noun}"),
         1 => format!("one {noun}"),
         n => format!("{n} {noun}s"),
-    }
-}
-
-fn not_isomers(
-    a: &Structure,
-    b: &Structure,
-    kind: Option<Kind>,
-    substances: Option<&str>,
-) -> String {
-    let (left, right) = (a.formula(), b.formula());
-    if let Some(substances) = substances {
-        return format!("Not isomers, but one compound: {substances} ({left} and {right}).");
-    }
-    if kind == Some(Kind::Homologues) {
-        format!(
-            "Not isomers but homologues: the same functional groups, and formulae that differ by CH2 units ({left} and {right})."
-        )
-    } else if left != right {
-        let same_atoms = left.iter().eq(right.iter());
-        let why = if same_atoms {
-            "the net charge differs"
-        } else {
-            "the molecular formulae differ"
-        };
-        format!("Not isomers: {why} ({left} and {right}).")
-    } else {
-        format!("Not isomers: the same elements ({left}), but a different isotopic composition.")
     }
 }

@@ -29,8 +29,14 @@ pub(super) fn check(
             carbonyl,
             only,
         } => {
-            let outside = |_: u32, to: u32| !group.atoms.contains(&to);
-            let found = walk.distance(seat.atom, *carbonyl, outside);
+            // Over saturated carbons: a nitrogen of a lactam is no way.
+            let single = |at: u32| {
+                walk.near(at)
+                    .all(|to| walk.order((at, to)) == Some(Some(1)))
+            };
+            let over =
+                |at: u32, to: u32| single(at) && walk.is_carbon(to) && !group.atoms.contains(&to);
+            let found = walk.distance(seat.atom, *carbonyl, over);
             require(found == Some(usize::from(*distance)), "another distance")?;
             require(is_carbonyl(walk, *carbonyl), "no carbonyl group")?;
             let all = walk.atoms().filter(|&atom| is_carbonyl(walk, atom));

@@ -16,7 +16,10 @@ use molkin_relate::{
 use crate::{
     args::Format,
     forms::Forms,
-    output::{Style, text},
+    output::{
+        Style,
+        text::{self, Extent},
+    },
 };
 
 use super::tally::Outcome;
@@ -51,6 +54,7 @@ pub(super) struct Verdicts<'v> {
     pub(super) forms: Forms,
     pub(super) limits: Limits,
     pub(super) brief: bool,
+    pub(super) extent: Extent,
     pub(super) format: Format,
     pub(super) style: Style,
 }
@@ -84,7 +88,7 @@ impl Verdicts<'_> {
         let mut text = Vec::new();
         match self.format {
             Format::Text => {
-                text::pair::write(&mut text, self.style, pair, sides)?;
+                text::pair::write(&mut text, self.style, self.extent, pair, sides)?;
                 writeln!(text)?;
             }
             Format::Json | Format::Jsonl => serde_json::to_writer(&mut text, pair)?,

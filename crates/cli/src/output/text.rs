@@ -1,6 +1,7 @@
 //! Text for a chemist at a terminal.
 
 mod atoms;
+mod beside;
 pub(crate) mod describe;
 mod layout;
 pub(crate) mod pair;
@@ -11,6 +12,7 @@ use std::io::{self, Write};
 use molkin_formats::source::Format;
 use molkin_relate::wire::{Error, Group, Prepared};
 
+pub(crate) use layout::Extent;
 use layout::printable;
 
 /// `held.smi, record 3: QM-103`; the record is left out where a source holds one only.

@@ -12,7 +12,7 @@ use molkin_formats::{
 };
 use molkin_graph::{Limits, Orderer};
 use molkin_relate::{
-    samples::{Adduct, Composition, Measurement, Sample, Tolerance, number},
+    samples::{Adduct, Composition, Measurement, Sample, Tolerance, parse_number},
     wire::{Error, Prepared},
 };
 
@@ -169,7 +169,7 @@ impl Reader {
         if text.is_empty() {
             return Ok(None);
         }
-        let mz = number(text)
+        let mz = parse_number(text)
             .filter(|mz| *mz > 0.0)
             .ok_or_else(|| fault(cells, "mz", format!("{text:?} is no m/z")))?;
         let adduct = match cells.text(Column::Adduct) {

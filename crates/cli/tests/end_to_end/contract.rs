@@ -42,6 +42,29 @@ fn check_all(title: &str, outcome: &Outcome, expected: usize) {
 }
 
 #[test]
+fn a_tray_keeps_to_the_schemas() {
+    let arguments = [
+        "samples", "tray.csv", "--held", "held.smi", "--format", "jsonl",
+    ];
+    let objects = objects(&demo(&arguments));
+    let types = [
+        ("Tray", "tray"),
+        ("Sample", "sample"),
+        ("Hypothesis", "hypothesis"),
+    ];
+    let mut checked = 0;
+    for (title, own) in types {
+        let schema = schema(title);
+        for object in objects.iter().filter(|object| object["type"] == own) {
+            check(&schema, object).unwrap();
+            checked += 1;
+        }
+    }
+    assert_eq!(checked, objects.len());
+    assert!(checked > 1 + 96 + 5);
+}
+
+#[test]
 fn pairs_keep_to_the_schema() {
     let arguments = [
         "compare",

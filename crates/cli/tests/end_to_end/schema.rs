@@ -64,6 +64,7 @@ fn is_of(value: &Value, kind: &str) -> Result<bool, String> {
         "array" => value.is_array(),
         "string" => value.is_string(),
         "boolean" => value.is_boolean(),
+        "null" => value.is_null(),
         "number" => value.is_number(),
         "integer" => value.is_i64() || value.is_u64(),
         unknown => return Err(format!("the type {unknown} is not known")),

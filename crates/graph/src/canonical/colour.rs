@@ -15,18 +15,22 @@ pub(super) fn load(
     mesomer: &Mesomer,
     isotopes: bool,
 ) -> Result<(), OrderError> {
-    let atoms = || skeleton.atoms.iter().zip(&mesomer.states);
-    if let Some((atom, _)) = atoms().find(|(atom, state)| !fits(atom, state, isotopes)) {
-        return Err(OrderError::OutOfRange { atom: atom.source });
+    let mut beyond = None;
+    let atoms = skeleton.atoms.iter().zip(&mesomer.states);
+    let words = atoms.map(|(atom, state)| {
+        if !fits(atom, state, isotopes) {
+            beyond.get_or_insert(atom.source);
+        }
+        word(atom, state, isotopes)
+    });
+    graph.load_arcs(words, |atom| {
+        let arcs = skeleton.arcs(atom).iter();
+        arcs.map(|&(to, bond)| (to, mesomer.orders[bond as usize]))
+    });
+    match beyond {
+        Some(atom) => Err(OrderError::OutOfRange { atom }),
+        None => Ok(()),
     }
-    graph.load_arcs(
-        atoms().map(|(atom, state)| word(atom, state, isotopes)),
-        |atom| {
-            let arcs = skeleton.arcs(atom).iter();
-            arcs.map(|&(to, bond)| (to, mesomer.orders[bond as usize]))
-        },
-    );
-    Ok(())
 }
 
 /// Whether each number has room in its field of the word; a charge of eight bits always has.

@@ -109,14 +109,20 @@ impl Canonical {
         let mut next = self.skeleton.len() as u32;
         for (host, &atom) in (0..).zip(&self.written().order) {
             let record = &self.skeleton.atoms[atom as usize];
-            let counts = [0, 4, 8].map(|shift| record.labelled >> shift & 15);
-            let natural = u16::from(record.hydrogens).saturating_sub(counts.iter().sum());
-            form.atoms.push(FormAtom {
+            let mut own = FormAtom {
                 element: record.element,
                 isotope: record.isotope,
                 charge: placed.drawing.charges[atom as usize],
-                hydrogens: natural as u8,
-            });
+                hydrogens: record.hydrogens,
+            };
+            if record.labelled == 0 {
+                form.atoms.push(own);
+                continue;
+            }
+            let counts = [0, 4, 8].map(|shift| record.labelled >> shift & 15);
+            let natural = u16::from(record.hydrogens).saturating_sub(counts.iter().sum());
+            own.hydrogens = natural as u8;
+            form.atoms.push(own);
             for (mass, count) in (1..).zip(counts) {
                 for _ in 0..count {
                     let atom = next;
@@ -196,7 +202,7 @@ impl Canonical {
                 });
             }
         }
-        form.stereo.sort_by_key(|element| element.centres);
+        form.stereo.sort_unstable_by_key(|element| element.centres);
         let groups = self.claims.groups.iter();
         form.groups = groups.map(|group| group.freedom.group()).collect();
         form.groups.sort_unstable();

@@ -59,6 +59,9 @@ impl Orderer {
         identity: &mut Identity,
     ) -> Result<(), OrderError> {
         let view = &mut identity.view;
+        if self.mesomer.no_shortcuts {
+            return self.order_into(molecule, view);
+        }
         let steps = self.order_constitution(molecule, view)?;
         let marked = molecule.stereo.iter().any(|mark| mark.parity.is_some())
             || !molecule.remembered.is_empty();

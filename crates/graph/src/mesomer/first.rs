@@ -16,6 +16,10 @@ pub(crate) struct First {
     matching: Matching,
     /// Bonds to settle: whether after the others, the ranks of the two atoms, the bond.
     bonds: Vec<(bool, u32, u32, u32)>,
+    /// The atoms of a system in their order, each with its rank.
+    groups: Vec<(u32, u32)>,
+    settled: Vec<bool>,
+    edges: Vec<(u32, u32)>,
 }
 
 impl First {
@@ -44,13 +48,7 @@ impl First {
                     .iter()
                     .any(|&atom| mesomer.states[atom as usize].mobile);
             if mobile && !system.mate.is_empty() {
-                system.first_placement(
-                    &mut self.matching,
-                    rank,
-                    &marked,
-                    |bond, order| orders[bond as usize] = order,
-                    |atom, charge| charges[atom as usize] = charge,
-                );
+                self.place_system(system, rank, &marked, orders, charges);
             }
         }
         if !mesomer.shifting.joined.is_empty() {
@@ -68,7 +66,9 @@ impl First {
         marked: impl Fn(u32) -> bool,
         orders: &mut [u8],
     ) {
-        let Self { matching, bonds } = self;
+        let Self {
+            matching, bonds, ..
+        } = self;
         matching.reset(skeleton.len());
         bonds.clear();
         for &bond in &mesomer.shifting.joined {
@@ -123,61 +123,66 @@ fn alternate(
     }
 }
 
-impl System {
-    fn first_placement(
-        &self,
-        matching: &mut Matching,
+impl First {
+    /// The same for a system with charges or open valences.
+    fn place_system(
+        &mut self,
+        system: &System,
         rank: &[u32],
-        first: impl Fn(u32) -> bool,
-        mut set_order: impl FnMut(u32, u8),
-        mut set_charge: impl FnMut(u32, i8),
+        marked: impl Fn(u32) -> bool,
+        orders: &mut [u8],
+        charges: &mut [i8],
     ) {
-        self.connect(matching);
-        matching.restore(&self.mate);
-        let rank_of = |at: u32| rank[self.atoms[at as usize] as usize];
-        let mut order: Vec<(bool, u32, u32, SystemBond)> = self
-            .bonds
-            .iter()
-            .map(|&SystemBond { bond, a, b }| {
-                let (a, b) = if rank_of(a) < rank_of(b) {
-                    (a, b)
-                } else {
-                    (b, a)
-                };
-                (
-                    !first(bond),
-                    rank_of(a),
-                    rank_of(b),
-                    SystemBond { bond, a, b },
-                )
-            })
-            .collect();
-        order.sort_unstable_by_key(|&(later, a, b, _)| (later, a, b));
-        let mut choice = Choice {
-            system: self,
+        let Self {
             matching,
-            settled: vec![false; self.mate.len()],
+            bonds,
+            groups,
+            settled,
+            edges,
+        } = self;
+        system.connect(matching);
+        matching.restore(&system.mate);
+        let rank_of = |at: u32| rank[system.atoms[at as usize] as usize];
+        bonds.clear();
+        bonds.extend((0..).zip(&system.bonds).map(|(at, bond)| {
+            let (a, b) = (rank_of(bond.a), rank_of(bond.b));
+            (!marked(bond.bond), a.min(b), a.max(b), at)
+        }));
+        bonds.sort_unstable();
+        settled.clear();
+        settled.resize(system.mate.len(), false);
+        let mut choice = Choice {
+            system,
+            matching,
+            settled,
+            edges,
         };
-        for (_, _, _, bond) in order {
-            let pi = choice.raise(bond.a, bond.b);
-            set_order(bond.bond, 1 + pi);
+        for &(_, _, _, at) in &*bonds {
+            let SystemBond { bond, a, b } = system.bonds[at as usize];
+            let (a, b) = if rank_of(a) < rank_of(b) {
+                (a, b)
+            } else {
+                (b, a)
+            };
+            orders[bond as usize] = 1 + choice.raise(a, b);
         }
-        let mut groups: Vec<u32> = (0..self.atoms.len() as u32).collect();
-        groups.sort_unstable_by_key(|&at| rank[self.atoms[at as usize] as usize]);
-        for &group in &groups {
+        groups.clear();
+        groups.extend((0..system.atoms.len() as u32).map(|at| (rank_of(at), at)));
+        groups.sort_unstable();
+        for &(_, group) in &*groups {
             for pool in [
                 Pool::NegativeHetero,
                 Pool::NegativeCarbon,
                 Pool::Positive,
                 Pool::Open,
             ] {
-                choice.raise(group, self.pool_group(pool));
+                choice.raise(group, system.pool_group(pool));
             }
         }
         let mate = choice.matching.mates();
-        for group in groups {
-            let (charge, _) = self.charge_and_open(|v| mate[v as usize], group);
-            set_charge(self.atoms[group as usize], charge as i8);
+        for &(_, group) in &*groups {
+            let (charge, _) = system.charge_and_open(|v| mate[v as usize], group);
+            charges[system.atoms[group as usize] as usize] = charge as i8;
         }
     }
 }
@@ -186,7 +191,8 @@ impl System {
 struct Choice<'a> {
     system: &'a System,
     matching: &'a mut Matching,
-    settled: Vec<bool>,
+    settled: &'a mut [bool],
+    edges: &'a mut Vec<(u32, u32)>,
 }
 
 impl Choice<'_> {
@@ -200,28 +206,30 @@ impl Choice<'_> {
         self.matching.cut(
             self.system.vertices(a),
             self.system.vertices(b),
-            &self.settled,
+            self.settled,
         );
         count
     }
 
     /// Settles one more edge between the groups if some perfect matching has it.
     fn settle_one(&mut self, a: u32, b: u32) -> bool {
-        let edges: Vec<(u32, u32)> = self
-            .system
+        let Self {
+            system,
+            matching,
+            settled,
+            edges,
+        } = self;
+        let pairs = system
             .vertices(a)
-            .flat_map(|x| self.system.vertices(b).map(move |y| (x, y)))
-            .filter(|&(x, y)| {
-                !self.settled[x as usize]
-                    && !self.settled[y as usize]
-                    && self.matching.neighbours(x).contains(&y)
-            })
-            .collect();
+            .flat_map(|x| system.vertices(b).map(move |y| (x, y)));
+        edges.clear();
+        edges.extend(pairs.filter(|&(x, y)| {
+            !settled[x as usize] && !settled[y as usize] && matching.neighbours(x).contains(&y)
+        }));
         // The first edge that some perfect matching has, not the one that happens to be present:
         // vertices of an atom are not all alike, and the choice may not depend on the drawing.
-        let found = edges
-            .into_iter()
-            .find(|&(x, y)| self.matching.mate(x) == y || self.matching.force(x, y));
+        let mut edges = edges.iter().copied();
+        let found = edges.find(|&(x, y)| matching.mate(x) == y || matching.force(x, y));
         if let Some((x, y)) = found {
             for vertex in [x, y] {
                 self.settled[vertex as usize] = true;

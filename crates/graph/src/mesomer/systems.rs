@@ -16,32 +16,56 @@ pub(super) fn find(
     systems: &mut Vec<System>,
     spare: &mut Vec<System>,
 ) {
-    let strained = |atom: usize| {
+    let is_strained = |atom: usize| {
         let valence = &valences[atom];
         valence.has_room() && (valence.open > 0 || skeleton.atoms[atom].charge != valence.intrinsic)
     };
     spare.append(systems);
     inside.clear();
     inside.resize(skeleton.len(), false);
-    for start in (0..skeleton.len()).filter(|&atom| strained(atom)) {
-        if inside[start] {
-            continue;
-        }
-        let mut system = spare.pop().unwrap_or_default();
-        component(skeleton, valences, start as u32, inside, &mut system.atoms);
-        if system.atoms.len() > 1 {
-            system.fill(skeleton, valences);
-            systems.push(system);
-        } else {
-            spare.push(system);
+    for start in (0..skeleton.len()).filter(|&atom| is_strained(atom)) {
+        if !inside[start] {
+            let joins = |atom: u32| valences[atom as usize].has_room();
+            let mut system = spare.pop().unwrap_or_default();
+            component(skeleton, joins, start as u32, inside, &mut system.atoms);
+            if system.atoms.len() > 1 {
+                system.fill(skeleton, valences);
+                systems.push(system);
+            } else {
+                spare.push(system);
+            }
         }
     }
 }
 
-/// The atoms reachable from `start` over atoms with room, ascending.
-fn component(
+/// Adds the systems that are best as drawn, of double bonds between atoms with one π bond each: what
+/// ring shifts do, done the general way.
+pub(super) fn add_neutral(
     skeleton: &Skeleton,
     valences: &[Valence],
+    inside: &mut [bool],
+    systems: &mut Vec<System>,
+) {
+    let has_one = |atom: u32| valences[atom as usize].pi == 1;
+    let takes_part = |atom: u32| {
+        let mut arcs = skeleton.arcs(atom).iter();
+        has_one(atom)
+            && arcs.any(|&(to, bond)| skeleton.bonds[bond as usize].order == 2 && has_one(to))
+    };
+    for start in 0..skeleton.len() as u32 {
+        if !inside[start as usize] && takes_part(start) {
+            let mut system = System::default();
+            component(skeleton, takes_part, start, inside, &mut system.atoms);
+            system.fill(skeleton, valences);
+            systems.push(system);
+        }
+    }
+}
+
+/// The atoms reachable from `start` over atoms that join, ascending.
+fn component(
+    skeleton: &Skeleton,
+    joins: impl Fn(u32) -> bool,
     start: u32,
     seen: &mut [bool],
     atoms: &mut Vec<u32>,
@@ -53,8 +77,7 @@ fn component(
     while let Some(&atom) = atoms.get(at) {
         at += 1;
         for &(to, bond) in skeleton.arcs(atom) {
-            let joins = skeleton.pairs(bond) > 0 && valences[to as usize].has_room();
-            if joins && !seen[to as usize] {
+            if skeleton.pairs(bond) > 0 && joins(to) && !seen[to as usize] {
                 seen[to as usize] = true;
                 atoms.push(to);
             }

@@ -49,39 +49,47 @@ pub(super) struct Scratch {
     paths: Vec<Path>,
     /// Atoms of the path that is being followed, each with the place of the arc to look at next.
     trail: Vec<(u32, usize)>,
+    /// The pairs that were found.
+    pub(super) thetas: Vec<Theta>,
+    forest: Forest,
+    /// Candidates by the root of their set: root, candidate, parity to the root.
+    sets: Vec<(usize, usize, bool)>,
 }
 
 /// All pairs, among atoms that can be centres.
-pub(super) fn thetas(
+pub(super) fn find_thetas(
     skeleton: &Skeleton,
     can_be: impl Fn(u32) -> bool,
     scratch: &mut Scratch,
-) -> Vec<Theta> {
+) {
     let Scratch {
         heads,
         paths,
         trail,
+        thetas: found,
+        ..
     } = scratch;
+    found.clear();
     let in_ring = |&&(_, bond): &&(u32, u32)| skeleton.ring[bond as usize];
-    let branching =
-        |&atom: &u32| can_be(atom) && skeleton.arcs(atom).iter().filter(in_ring).count() >= 3;
+    let branching = |&atom: &u32| {
+        let arcs = skeleton.arcs(atom);
+        arcs.len() >= 3 && can_be(atom) && arcs.iter().filter(in_ring).count() >= 3
+    };
     heads.clear();
     heads.extend((0..skeleton.len() as u32).filter(branching));
-    let mut found = Vec::new();
     if heads.len() < 2 {
-        return found;
+        return;
     }
     for (at, &head) in heads.iter().enumerate() {
         find_paths(skeleton, head, &heads[at + 1..], trail, paths);
         if paths.len() < 3 {
             continue;
         }
-        paths.sort_by_key(|path| (path.end, path.length));
+        paths.sort_unstable_by_key(|path| (path.end, path.length, path.atoms));
         for group in paths.chunk_by(|a, b| a.end == b.end) {
-            disjoint_triples(head, group, &mut found);
+            disjoint_triples(head, group, found);
         }
     }
-    found
 }
 
 /// Simple paths over ring bonds with one to [`LONGEST_PATH`] inner atoms, to atoms among `ends`,
@@ -150,12 +158,18 @@ fn disjoint_triples(head: u32, paths: &[Path], found: &mut Vec<Theta>) {
 
 /// Joins candidates into cages and lets marked bridgeheads speak for the others. Where the marks
 /// contradict what a cage can have, all count as drawn.
-pub(super) fn bind(perception: &mut Perception, thetas: &[Theta]) {
+pub(super) fn bind(perception: &mut Perception, scratch: &mut Scratch) {
+    let Scratch {
+        thetas,
+        forest,
+        sets,
+        ..
+    } = scratch;
     if thetas.is_empty() {
         return;
     }
-    let mut forest = Forest::new(perception.candidates.len());
-    for theta in thetas {
+    forest.reset(perception.candidates.len());
+    for theta in &*thetas {
         let [u, v] = theta.ends.map(|atom| perception.candidate_at([atom, atom]));
         let (Some(u), Some(v)) = (u, v) else { continue };
         let order = |index: usize, side: usize| {
@@ -168,8 +182,13 @@ pub(super) fn bind(perception: &mut Perception, thetas: &[Theta]) {
             forest.join(u, v, !(first ^ second));
         }
     }
-    for cage in forest.cages() {
-        settle(perception, cage);
+    forest.list(sets);
+    for set in sets.chunk_by(|a, b| a.0 == b.0) {
+        // A set whose relations contradict each other binds nothing.
+        if set.len() > 1 && !forest.contradictory[set[0].0] {
+            let members = set.iter().map(|&(_, index, odd)| (index, odd)).collect();
+            settle(perception, Cage { members });
+        }
     }
 }
 
@@ -219,6 +238,7 @@ fn settle(perception: &mut Perception, cage: Cage) {
 }
 
 /// Union-find with a parity to the root.
+#[derive(Debug, Default)]
 struct Forest {
     parent: Vec<usize>,
     odd: Vec<bool>,
@@ -226,11 +246,12 @@ struct Forest {
 }
 
 impl Forest {
-    fn new(count: usize) -> Self {
-        Self {
-            parent: (0..count).collect(),
-            odd: vec![false; count],
-            contradictory: vec![false; count],
+    fn reset(&mut self, count: usize) {
+        self.parent.clear();
+        self.parent.extend(0..count);
+        for table in [&mut self.odd, &mut self.contradictory] {
+            table.clear();
+            table.resize(count, false);
         }
     }
 
@@ -256,20 +277,13 @@ impl Forest {
         self.contradictory[low] |= self.contradictory[high];
     }
 
-    /// The sets of two or more. A set whose relations contradict each other binds nothing.
-    fn cages(&self) -> Vec<Cage> {
-        let mut cages: Vec<Cage> = vec![Cage::default(); self.parent.len()];
-        for index in 0..self.parent.len() {
+    /// Lists all members by set.
+    fn list(&self, sets: &mut Vec<(usize, usize, bool)>) {
+        sets.clear();
+        sets.extend((0..self.parent.len()).map(|index| {
             let (root, odd) = self.root(index);
-            cages[root].members.push((index, odd));
-        }
-        let bound =
-            |(root, cage): &(usize, Cage)| cage.members.len() > 1 && !self.contradictory[*root];
-        cages
-            .into_iter()
-            .enumerate()
-            .filter(bound)
-            .map(|(_, cage)| cage)
-            .collect()
+            (root, index, odd)
+        }));
+        sets.sort_unstable();
     }
 }

@@ -6,13 +6,7 @@ use crate::{
     skeleton::{Skeleton, SkeletonAtom},
 };
 
-use super::{
-    Candidate, Perception,
-    bridgehead::{self, Theta},
-    labile,
-    marks::Mark,
-    slot,
-};
+use super::{Candidate, Perception, bridgehead, labile, marks::Mark, slot};
 
 /// What an atom is as a possible centre.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -27,8 +21,8 @@ pub(super) enum Eligible {
     Unruled,
 }
 
-/// Adds the tetrahedral candidates; returns the bridgehead relations found on the way.
-/// `eligibles` and `bridgeheads` are scratch.
+/// Adds the tetrahedral candidates, and lists in `bridgeheads` which atoms determine each other.
+/// `eligibles` is scratch.
 pub(super) fn find(
     perception: &mut Perception,
     skeleton: &Skeleton,
@@ -36,7 +30,7 @@ pub(super) fn find(
     marks: &[Mark],
     eligibles: &mut Vec<Option<Eligible>>,
     bridgeheads: &mut bridgehead::Scratch,
-) -> Vec<Theta> {
+) {
     let atoms = 0..skeleton.len() as u32;
     eligibles.clear();
     eligibles.extend(atoms.clone().map(|atom| eligible(skeleton, mesomer, atom)));
@@ -47,7 +41,8 @@ pub(super) fn find(
             && is(mark.centres[0], Eligible::Unruled)
     });
     let can_be = |atom| is(atom, Eligible::Stable) || is(atom, Eligible::HeldNitrogen);
-    let thetas = bridgehead::thetas(skeleton, can_be, bridgeheads);
+    bridgehead::find_thetas(skeleton, can_be, bridgeheads);
+    let thetas = &bridgeheads.thetas;
     for atom in atoms {
         let quiet = match eligibles[atom as usize] {
             Some(Eligible::Stable) => false,
@@ -71,7 +66,6 @@ pub(super) fn find(
             remembered: false,
         });
     }
-    thetas
 }
 
 fn eligible(skeleton: &Skeleton, mesomer: &Mesomer, atom: u32) -> Option<Eligible> {

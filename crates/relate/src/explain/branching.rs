@@ -22,7 +22,7 @@ pub struct BranchPoint {
 pub struct Branching {
     /// The branch points by atom number.
     pub points: Vec<BranchPoint>,
-    /// For each component without rings that has a bond: a longest chain of non-hydrogen atoms, from
+    /// For each part outside rings that has a bond within: a longest chain of non-hydrogen atoms, from
     /// its lower-numbered end.
     pub chains: Vec<Vec<u32>>,
 }
@@ -76,15 +76,15 @@ impl Skeleton {
             .collect()
     }
 
-    /// The atoms reachable from one, breadth first, each with its predecessor.
-    fn order_from(&self, start: u32) -> Vec<(u32, u32)> {
+    /// The atoms reachable from one through atoms that count, breadth first, each with its predecessor.
+    fn order_from(&self, start: u32, counts: impl Fn(u32) -> bool) -> Vec<(u32, u32)> {
         let mut seen = HashSet::from([start]);
         let mut order = vec![(start, start)];
         let mut at = 0;
         while let Some(&(atom, _)) = order.get(at) {
             at += 1;
             for &(to, _) in &self.neighbours[atom as usize] {
-                if seen.insert(to) {
+                if counts(to) && seen.insert(to) {
                     order.push((to, atom));
                 }
             }
@@ -94,24 +94,21 @@ impl Skeleton {
 
     /// Longest chains by two breadth-first walks, which is exact in trees.
     fn chains(&self) -> Vec<Vec<u32>> {
+        let outside_rings = |atom: u32| {
+            let mut bonds = self.neighbours[atom as usize].iter();
+            bonds.all(|&(_, in_ring)| !in_ring)
+        };
         let mut seen = HashSet::new();
         let mut chains = Vec::new();
-        for start in 0..self.neighbours.len() as u32 {
-            if self.neighbours[start as usize].is_empty() || seen.contains(&start) {
+        for start in (0..self.neighbours.len() as u32).filter(|&atom| outside_rings(atom)) {
+            if seen.contains(&start) {
                 continue;
             }
-            let component = self.order_from(start);
-            seen.extend(component.iter().map(|&(atom, _)| atom));
-            let in_ring =
-                |&(atom, _): &(u32, u32)| self.neighbours[atom as usize].iter().any(|&(_, r)| r);
-            if component.iter().any(in_ring) {
-                continue;
+            let part = self.order_from(start, outside_rings);
+            seen.extend(part.iter().map(|&(atom, _)| atom));
+            if let [_, .., (end, _)] = *part {
+                chains.push(path_back(&self.order_from(end, outside_rings), end));
             }
-            let Some(&(end, _)) = component.last() else {
-                continue;
-            };
-            let walk = self.order_from(end);
-            chains.push(path_back(&walk, end));
         }
         chains
     }
@@ -138,7 +135,7 @@ impl Tree {
             if tree.whole[start as usize] > 0 {
                 continue;
             }
-            let order = skeleton.order_from(start);
+            let order = skeleton.order_from(start, |_| true);
             for &(atom, before) in order.iter().rev() {
                 tree.whole[atom as usize] = order.len();
                 tree.parent[atom as usize] = before;

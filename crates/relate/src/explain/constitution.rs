@@ -1,15 +1,15 @@
-//! The map between constitutional isomers and what it keeps.
+//! The map between records of different constitution, of one formula or of two, and what it keeps.
 
 use std::collections::HashMap;
 
 use molkin_graph::Limits;
 
 use crate::{
-    Structure,
-    mapping::{self, Effort, Heavy, sides},
+    Structure, functional_groups,
+    mapping::{self, Effort, Heavy, Mapping, sides},
 };
 
-use super::{Explanation, branching, moves};
+use super::{Explanation, LeftOver, branching, functional, left_over, moves, rings};
 
 /// Bonds under an atom map; atoms from 0. Bonds to hydrogen are not counted.
 #[derive(Debug, Clone, PartialEq, Eq, Default)]
@@ -26,6 +26,9 @@ pub struct BondDifference {
     pub minimal: bool,
     /// Proved: no map has fewer bonds that only one record has.
     pub at_least: usize,
+    /// Whether at least a third of the bonds of both together, and more than six, are in one only,
+    /// however the atoms are mapped: then single differences say nothing. `None`: the search ended too early to tell.
+    pub unrelated: Option<bool>,
 }
 
 /// A pair of mapped atoms with different numbers of hydrogens; atoms from 0.
@@ -44,37 +47,29 @@ pub struct HydrogenDifference {
 pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanation {
     let heavy = [a, b].map(Heavy::of);
     let [left, right] = &heavy;
-    let sides = sides(left, right);
+    // Groups too symmetric for the limit have no say in the choice of the map.
+    let groups = [a, b].map(|side| functional_groups(side, limits).ok());
+    let sides = sides([a, b], [left, right], &groups);
     let effort = Effort {
         steps: limits.map_steps,
         stop: limits.stop,
     };
-    let branching = Some([branching::of(a), branching::of(b)]);
-    // Constitutional isomers have equal formulae and each side lists its bonds once, so all atoms
-    // are mapped. Should one be left over all the same, there is no map to show.
-    let found = mapping::map_atoms(&sides[0], &sides[1], &effort).ok();
-    let whole = found.filter(|found| found.left_over_a.is_empty() && found.left_over_b.is_empty());
-    let Some(mapping) = whole else {
-        return Explanation {
-            branching,
-            stereo_least: true,
-            ..Explanation::default()
-        };
+    let unmapped = Explanation {
+        branching: Some([branching::of(a), branching::of(b)]),
+        rings: Some([rings::of(a), rings::of(b)]),
+        stereo_least: true,
+        ..Explanation::default()
     };
-    let pairs: Vec<u32> = mapping.pairs.iter().map(|&(_, image)| image).collect();
-    let mut atom_map: Vec<(u32, u32)> = left
-        .atoms
-        .iter()
-        .zip(&pairs)
-        .map(|(atom, &image)| (atom.source, right.atoms[image as usize].source))
-        .collect();
+    // Each side lists its bonds once, so there is always a map.
+    let Ok(mapping) = mapping::map_atoms(&sides[0], &sides[1], &effort) else {
+        return unmapped;
+    };
+    let pairs = mapping.pairs.iter();
+    let pairs = pairs.map(|&(x, y)| (&left.atoms[x as usize], &right.atoms[y as usize]));
+    let mut atom_map: Vec<(u32, u32)> = pairs.clone().map(|(x, y)| (x.source, y.source)).collect();
     atom_map.sort_unstable();
-    let mut hydrogens: Vec<HydrogenDifference> = left
-        .atoms
-        .iter()
-        .zip(&pairs)
-        .map(|(atom, &image)| (atom, &right.atoms[image as usize]))
-        .filter(|(x, y)| x.hydrogens != y.hydrogens)
+    let differing = pairs.filter(|(x, y)| x.hydrogens != y.hydrogens);
+    let mut hydrogens: Vec<HydrogenDifference> = differing
         .map(|(x, y)| HydrogenDifference {
             a: x.source,
             b: y.source,
@@ -83,23 +78,48 @@ pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanat
         })
         .collect();
     hydrogens.sort_unstable_by_key(|h| h.a);
-    let mut bonds = difference(left, right, &pairs);
-    let proved = mapping.proved;
-    bonds.minimal = proved.bonds && proved.orders && proved.hydrogens;
-    bonds.at_least = mapping.bonds_at_least as usize;
     Explanation {
+        functional_groups: functional::differences(groups, &atom_map),
         atom_map,
-        bonds: Some(bonds),
+        bonds: Some(bonds_under(&mapping, left, right)),
         hydrogens,
-        branching,
+        left_over: left_over_pieces(&mapping, [a, b], &heavy),
         findings: moves::findings([a, b], &heavy, &sides, &mapping, limits),
-        stereo: Vec::new(),
-        stereo_least: true,
         steps: mapping.steps,
+        ..unmapped
     }
 }
 
-fn difference(left: &Heavy, right: &Heavy, pairs: &[u32]) -> BondDifference {
+fn left_over_pieces(
+    mapping: &Mapping,
+    structures: [&Structure; 2],
+    heavy: &[Heavy; 2],
+) -> [Vec<LeftOver>; 2] {
+    let left_over = [&mapping.left_over_a, &mapping.left_over_b];
+    [0, 1].map(|side| {
+        let mut mapped = vec![true; heavy[side].atoms.len()];
+        for &atom in left_over[side] {
+            mapped[atom as usize] = false;
+        }
+        left_over::pieces(structures[side], &heavy[side], &mapped)
+    })
+}
+
+fn bonds_under(mapping: &Mapping, left: &Heavy, right: &Heavy) -> BondDifference {
+    let mut image = vec![None; left.atoms.len()];
+    for &(atom, to) in &mapping.pairs {
+        image[atom as usize] = Some(to);
+    }
+    let proved = mapping.proved;
+    BondDifference {
+        minimal: proved.bonds && proved.orders && proved.hydrogens,
+        at_least: mapping.bonds_at_least as usize,
+        unrelated: mapping.is_unrelated(),
+        ..difference(left, right, &image)
+    }
+}
+
+fn difference(left: &Heavy, right: &Heavy, image: &[Option<u32>]) -> BondDifference {
     let source = |side: &Heavy, a: u32, b: u32| {
         let (a, b) = (side.atoms[a as usize].source, side.atoms[b as usize].source);
         (a.min(b), a.max(b))
@@ -111,15 +131,15 @@ fn difference(left: &Heavy, right: &Heavy, pairs: &[u32]) -> BondDifference {
         .collect();
     let mut found = BondDifference::default();
     for &(a, b, order) in &left.bonds {
-        let (x, y) = (pairs[a as usize], pairs[b as usize]);
-        match in_b.remove(&(x.min(y), x.max(y))) {
+        let images = image[a as usize].zip(image[b as usize]);
+        let laid = images.and_then(|(x, y)| Some((x, y, in_b.remove(&(x.min(y), x.max(y)))?)));
+        match laid {
             None => found.only_in_a.push(source(left, a, b)),
-            Some(other) => {
+            Some((x, y, other)) => {
                 found.kept += 1;
                 if other != order {
-                    found
-                        .order_changed
-                        .push((source(left, a, b), source(right, x, y)));
+                    let changed = (source(left, a, b), source(right, x, y));
+                    found.order_changed.push(changed);
                 }
             }
         }

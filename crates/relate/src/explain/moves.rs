@@ -5,6 +5,7 @@
 //! [`Change::Rest`]. All work is done on the canonical numbering of the lesser record of the two, so
 //! that no choice depends on the input and the two directions mirror each other.
 
+mod chains;
 mod changes;
 mod frame;
 mod groups;
@@ -27,6 +28,7 @@ use crate::{
 
 use self::{frame::Frame, ledger::Ledger};
 
+pub(super) use self::substituent::name;
 pub use self::{
     changes::{Change, Finding, GroupHere, Link, Moved, RingChange, Seat, Shift},
     place::{Neighbour, Place},

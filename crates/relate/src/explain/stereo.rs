@@ -125,6 +125,7 @@ pub(super) fn explain(a: &Structure, b: &Structure, limits: &Limits) -> Explanat
         bonds: Some(BondDifference {
             kept,
             minimal: true,
+            unrelated: Some(false),
             ..BondDifference::default()
         }),
         stereo,

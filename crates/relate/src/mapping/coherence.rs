@@ -1,12 +1,21 @@
-//! Which of equally distant maps a chemist would take: rings stay whole, and what is kept hangs together.
+//! Which of equally distant maps a chemist would take: rings and functional groups stay whole, stereo elements are kept,
+//! and what is kept hangs together.
 
-use super::problem::{Graph, Problem};
+use super::{
+    arrangement,
+    problem::{Graph, Problem},
+};
 
 /// Less is better, in the order of the fields.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
 pub(super) struct Coherence {
     /// Bonds in rings, on either side, that are not kept or are laid on a bond outside rings.
     rings_cut: u32,
+    /// Atoms of functional groups, on either side, that are not laid on an atom of an equal group, and bonds within groups
+    /// that are not laid on a bond within an equal one.
+    groups_cut: u32,
+    /// Marked stereo elements of either side that are not kept.
+    stereo: u32,
     /// Pieces that the kept bonds leave.
     pieces: u32,
 }
@@ -16,9 +25,14 @@ impl Coherence {
         let (left, right) = (&problem.left, &problem.right);
         // A ring bond counts once for its own side; those laid on ring bonds are taken off for both.
         let mut rings_cut = left.ring_bonds() + right.ring_bonds();
+        let (mut groups_cut, mut groups_kept) = (0, 0);
         let mut pieces = left.atoms() as u32;
         let mut parent: Vec<u32> = (0..pieces).collect();
         for (atom, &image) in (0..).zip(map) {
+            let alike = left.group(atom) == right.group(image);
+            if !alike {
+                groups_cut += u32::from(left.group(atom) > 0) + u32::from(right.group(image) > 0);
+            }
             for near in left.neighbours(atom).iter().filter(|near| near.atom > atom) {
                 let far = map[near.atom as usize];
                 if right.class_between(image, far).is_none() {
@@ -27,6 +41,13 @@ impl Coherence {
                 if left.in_ring(atom, near.atom) && right.in_ring(image, far) {
                     rings_cut -= 2;
                 }
+                // Bonds are counted from what is kept: the more, the fewer are cut.
+                groups_kept += u32::from(
+                    alike
+                        && left.group(atom) > 0
+                        && left.group(near.atom) > 0
+                        && right.group(far) > 0,
+                );
                 let (first, second) = (root(&parent, atom), root(&parent, near.atom));
                 if first != second {
                     parent[first.max(second) as usize] = first.min(second);
@@ -34,7 +55,13 @@ impl Coherence {
                 }
             }
         }
-        Self { rings_cut, pieces }
+        let group_bonds = left.group_bonds() + right.group_bonds();
+        Self {
+            rings_cut,
+            groups_cut: groups_cut + group_bonds - 2 * groups_kept,
+            stereo: arrangement::disturbed(&left.stereo, &right.stereo, map),
+            pieces,
+        }
     }
 }
 

@@ -145,7 +145,7 @@ fn side(numbers: &mut Numbers, elements: &[u8], hydrogens: &[u8]) -> Side {
         marks: (0..atoms)
             .map(|_| u32::from(numbers.below(5) == 0))
             .collect(),
-        bonds: Vec::new(),
+        ..Side::default()
     };
     let more = numbers.below(4);
     for second in 1..atoms {
@@ -187,5 +187,6 @@ pub(super) fn renumbered(numbers: &mut Numbers, side: &Side) -> Side {
         bonds: bonds
             .map(|&(first, second, class)| (place[second as usize], place[first as usize], class))
             .collect(),
+        ..Side::default()
     }
 }

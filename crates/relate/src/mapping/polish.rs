@@ -1,18 +1,15 @@
 //! Makes a map better by exchanging the images of two atoms, as long as that helps.
 
-use super::{goal::Incumbent, meter::Meter, problem::Problem};
+use super::{meter::Meter, problem::Problem};
 
 /// A distance, or a change in it, as one number: hydrogens and marks of 20 bits each, orders of 10 and bonds above.
 ///
 /// Around two atoms no part comes near its bits, so numbers compare as distances do.
-type Packed = i64;
+pub(super) type Packed = i64;
 
 const BOND: Packed = 1 << 50;
 const ORDER: Packed = 1 << 40;
 const HYDROGEN: Packed = 1 << 20;
-
-/// What tidying may spend, whatever is left of the budget: a sixtieth of the usual one.
-const TIDY_STEPS: usize = 50_000;
 
 /// Exchanges images until no exchange brings the map nearer, or the meter ends.
 pub(super) fn polish(problem: &Problem, map: &mut [u32], meter: &mut Meter<'_>) {
@@ -44,37 +41,6 @@ pub(super) fn polish(problem: &Problem, map: &mut [u32], meter: &mut Meter<'_>) 
     }
 }
 
-/// Exchanges images as long as the distance stays and the map becomes better otherwise, or the meter ends.
-///
-/// Only single exchanges are tried, so a better one of equally distant maps may be missed.
-pub(super) fn tidy(problem: &Problem, incumbent: &mut Incumbent, meter: &mut Meter<'_>) {
-    let mut steps = 0;
-    let mut improved = incumbent.distance.bonds > 0;
-    while improved && steps < TIDY_STEPS {
-        improved = false;
-        for class in &problem.classes {
-            for (index, &first) in class.left.iter().enumerate() {
-                steps += index * (4 + problem.left.degree(first)) / 16;
-                for &second in &class.left[..index] {
-                    let mut map = std::mem::take(&mut incumbent.map);
-                    let before = around(problem, &map, first) + around(problem, &map, second);
-                    map.swap(first as usize, second as usize);
-                    let after = around(problem, &map, first) + around(problem, &map, second);
-                    let swapped = (after <= before).then(|| map.clone());
-                    map.swap(first as usize, second as usize);
-                    incumbent.map = map;
-                    if let Some(map) = swapped {
-                        steps += 1 + map.len() / 8;
-                        incumbent.offer(problem, &map);
-                        improved |= incumbent.map == map;
-                    }
-                }
-            }
-        }
-    }
-    meter.spend(steps);
-}
-
 /// Computes the costs of two atoms and of their neighbours anew.
 fn renew(problem: &Problem, map: &[u32], atoms: [u32; 2], costs: &mut [Packed]) {
     for atom in atoms {
@@ -86,7 +52,7 @@ fn renew(problem: &Problem, map: &[u32], atoms: [u32; 2], costs: &mut [Packed]) 
 }
 
 /// What one atom and its bonds add to the distance, apart from a constant.
-fn around(problem: &Problem, map: &[u32], atom: u32) -> Packed {
+pub(super) fn around(problem: &Problem, map: &[u32], atom: u32) -> Packed {
     let image = map[atom as usize];
     let (hydrogens, mark) = problem.atom_cost(atom, image);
     let mut cost = HYDROGEN * Packed::from(hydrogens) + Packed::from(mark);

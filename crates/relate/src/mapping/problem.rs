@@ -1,6 +1,6 @@
 //! The two graphs, checked, and the distance of a map between them.
 
-use super::{Distance, MappingError, Side, coherence::bridges};
+use super::{Arm, Arrangement, Distance, MappingError, Side, coherence::bridges};
 
 /// Up to this many atoms a graph keeps a square table of its bonds.
 const TABLED: usize = 256;
@@ -21,6 +21,10 @@ pub(super) struct Graph {
     elements: Vec<u8>,
     hydrogens: Vec<u8>,
     marks: Vec<u32>,
+    /// Functional groups, 0 for none.
+    groups: Vec<u32>,
+    pub(super) stereo: Vec<Arrangement>,
+    pub(super) symmetries: Vec<Vec<(u32, u32)>>,
     /// Atom `u` owns `neighbours[start[u]..start[u + 1]]`.
     start: Vec<u32>,
     neighbours: Vec<Neighbour>,
@@ -28,6 +32,8 @@ pub(super) struct Graph {
     present: usize,
     /// Bonds outside rings, lower atom first, sorted.
     bridges: Vec<(u32, u32)>,
+    /// The number of bonds within functional groups.
+    group_bonds: u32,
     /// The class of the bond between any two atoms, row by row; empty for large graphs.
     table: Vec<u16>,
 }
@@ -92,14 +98,22 @@ impl Graph {
             elements: side.elements.iter().chain(lacking).copied().collect(),
             hydrogens: side.hydrogens.clone(),
             marks: side.marks.clone(),
+            groups: side.groups.clone(),
+            stereo: side.stereo.clone(),
+            symmetries: side.symmetries.clone(),
             start,
             neighbours,
             present,
             bridges: Vec::new(),
+            group_bonds: 0,
         };
         graph.hydrogens.resize(atoms, 0);
         graph.marks.resize(atoms, 0);
+        graph.groups.resize(atoms, 0);
         graph.bridges = bridges(&graph);
+        let within = side.bonds.iter();
+        let within = within.filter(|&&(a, b, _)| graph.group(a) > 0 && graph.group(b) > 0);
+        graph.group_bonds = within.count() as u32;
         Ok(graph)
     }
 
@@ -135,6 +149,11 @@ impl Graph {
         (self.bonds() - self.bridges.len()) as u32
     }
 
+    /// The number of bonds within functional groups.
+    pub(super) fn group_bonds(&self) -> u32 {
+        self.group_bonds
+    }
+
     pub(super) fn bonds(&self) -> usize {
         self.neighbours.len() / 2
     }
@@ -149,6 +168,11 @@ impl Graph {
 
     pub(super) fn mark(&self, atom: u32) -> u32 {
         self.marks[atom as usize]
+    }
+
+    /// The label of the functional group of an atom, 0 for none.
+    pub(super) fn group(&self, atom: u32) -> u32 {
+        self.groups[atom as usize]
     }
 
     pub(super) fn neighbours(&self, atom: u32) -> &[Neighbour] {
@@ -183,6 +207,9 @@ fn check(side: &Side) -> Result<(), MappingError> {
             marks,
         });
     }
+    if let Some(atom) = named(side).find(|&atom| atom as usize >= elements) {
+        return Err(MappingError::NoSuchAtom { atom });
+    }
     for (index, &(first, second, _)) in side.bonds.iter().enumerate() {
         let repeated = index
             .checked_sub(1)
@@ -197,6 +224,19 @@ fn check(side: &Side) -> Result<(), MappingError> {
         }
     }
     Ok(())
+}
+
+/// The atoms that stereo elements and symmetries name.
+fn named(side: &Side) -> impl Iterator<Item = u32> {
+    let stereo = side.stereo.iter().flat_map(|element| {
+        let arms = element.arms.iter().filter_map(|arm| match arm {
+            Arm::Atom(atom) => Some(*atom),
+            Arm::Hydrogen(_) | Arm::LonePair => None,
+        });
+        arms.chain(element.centres)
+    });
+    let moved = side.symmetries.iter().flatten();
+    stereo.chain(moved.flat_map(|&(from, to)| [from, to]))
 }
 
 /// The elements that a side has fewer of than the other, as often as they are missing.

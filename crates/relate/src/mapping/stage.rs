@@ -6,11 +6,12 @@
 use super::{
     Distance, Proved,
     bound::Bound,
+    choice::choose,
     goal::{Goal, Incumbent, SCALE, Weights},
     grow::Grower,
     meter::Meter,
     pairs::Pairs,
-    polish::{polish, tidy},
+    polish::polish,
     problem::Problem,
     search::{Misled, Outcome, Search},
     symmetry::Kept,
@@ -52,7 +53,7 @@ pub(super) fn solve(problem: &Problem, meter: &mut Meter<'_>) -> Solution {
         };
         (proved, at_least) = stages.run(&grower, &mut incumbent, meter);
     }
-    tidy(problem, &mut incumbent, meter);
+    choose(problem, &grower, &mut incumbent, meter);
     let distance = incumbent.distance;
     proved.bonds |= distance.bonds <= at_least;
     proved.orders |= proved.bonds && distance.orders == 0;

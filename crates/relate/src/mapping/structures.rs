@@ -1,10 +1,10 @@
 //! Maps between structures: what the search sees of them, and its result in the numbers of the input.
 
-use molkin_graph::{Element, Limits, NormalAtom};
+use molkin_graph::{Element, Ligand, Limits, Mark, NormalAtom};
 
-use crate::Structure;
+use crate::{FunctionalGroup, Structure, functional_groups};
 
-use super::{Effort, Mapping, MappingError, Side, map_atoms};
+use super::{Arm, Arrangement, Effort, Mapping, MappingError, Side, map_atoms};
 
 /// The order class of a mobile bond, beside 1 to 4.
 const MOBILE: u8 = 5;
@@ -13,6 +13,10 @@ const MOBILE: u8 = 5;
 pub(crate) struct Heavy {
     pub(crate) atoms: Vec<NormalAtom>,
     pub(crate) bonds: Vec<(u32, u32, u8)>,
+    /// Marked stereo elements.
+    stereo: Vec<Arrangement>,
+    /// Automorphisms of the constitution: moved atoms with their images.
+    symmetries: Vec<Vec<(u32, u32)>>,
 }
 
 impl Heavy {
@@ -35,8 +39,86 @@ impl Heavy {
             })
             .collect();
         bonds.sort_unstable();
-        Self { atoms, bonds }
+        let moved = |&(from, to): &(u32, u32)| Some((place[from as usize]?, place[to as usize]?));
+        let symmetries = structure.canonical().automorphisms().into_iter();
+        let symmetries = symmetries.map(|symmetry| symmetry.iter().filter_map(moved).collect());
+        let symmetries = symmetries.filter(|symmetry: &Vec<_>| !symmetry.is_empty());
+        Self {
+            stereo: arrangements(structure, &atoms),
+            atoms,
+            bonds,
+            symmetries: symmetries.collect(),
+        }
     }
+}
+
+/// The marked stereo elements of a record on its non-hydrogen atoms.
+fn arrangements(structure: &Structure, atoms: &[NormalAtom]) -> Vec<Arrangement> {
+    let elements = structure.canonical().stereo_elements();
+    if elements.is_empty() {
+        return Vec::new();
+    }
+    let molecule = structure.molecule();
+    let places = places(structure, atoms);
+    let place = |atom: u32| places.get(atom as usize).copied().flatten();
+    let arm = |ligand: Ligand| match ligand {
+        Ligand::LonePair => Arm::LonePair,
+        Ligand::Hydrogen => Arm::Hydrogen(0),
+        Ligand::Atom(atom) => match place(atom) {
+            Some(place) => Arm::Atom(place),
+            None => Arm::Hydrogen(molecule.atom(atom).and_then(|own| own.isotope).unwrap_or(0)),
+        },
+    };
+    let marked = elements.iter().filter_map(|element| {
+        let Mark::Given(parity) = element.mark else {
+            return None;
+        };
+        let [first, second] = element.centres.map(place);
+        Some(Arrangement {
+            centres: [first?, second?],
+            arms: element.ligands.map(arm),
+            odd: parity.is_odd(),
+        })
+    });
+    marked.collect()
+}
+
+/// For each atom of the record its place among the given ones.
+fn places(structure: &Structure, atoms: &[NormalAtom]) -> Vec<Option<u32>> {
+    let mut places = vec![None; structure.molecule().atom_count()];
+    for (place, atom) in (0..).zip(atoms) {
+        places[atom.source as usize] = Some(place);
+    }
+    places
+}
+
+/// A label for the functional group of each atom, equal for equal groups of either side; nothing where the groups of a side
+/// are not known.
+fn group_labels(
+    structures: [&Structure; 2],
+    heavy: [&Heavy; 2],
+    groups: &[Option<Vec<FunctionalGroup>>; 2],
+) -> [Vec<u32>; 2] {
+    let [Some(own), Some(others)] = groups else {
+        return [Vec::new(), Vec::new()];
+    };
+    let all = own.iter().chain(others);
+    let mut known: Vec<&[u64]> = all.map(|group| group.certificate.as_slice()).collect();
+    known.sort_unstable();
+    known.dedup();
+    let mut side = 0;
+    [own, others].map(|groups| {
+        let places = places(structures[side], &heavy[side].atoms);
+        let mut labels = vec![0; heavy[side].atoms.len()];
+        side += 1;
+        for group in groups {
+            let label = known.partition_point(|&other| other < group.certificate.as_slice());
+            for place in group.atoms.iter().filter_map(|&atom| places[atom as usize]) {
+                labels[place as usize] = label as u32 + 1;
+            }
+        }
+        labels
+    })
 }
 
 /// What an atom carries beside element and hydrogens.
@@ -47,24 +129,33 @@ fn mark(atom: &NormalAtom) -> AtomMark {
 }
 
 /// Both sides for the search; equal marks get equal numbers, whichever side they are on.
-pub(crate) fn sides(left: &Heavy, right: &Heavy) -> [Side; 2] {
-    let mut known: Vec<AtomMark> = left.atoms.iter().chain(&right.atoms).map(mark).collect();
+pub(crate) fn sides(
+    structures: [&Structure; 2],
+    heavy: [&Heavy; 2],
+    groups: &[Option<Vec<FunctionalGroup>>; 2],
+) -> [Side; 2] {
+    let all = heavy.iter().flat_map(|side| &side.atoms);
+    let mut known: Vec<AtomMark> = all.map(mark).collect();
     known.sort_unstable();
     known.dedup();
-    [left, right].map(|side| Side {
+    let number =
+        |atom: &NormalAtom| known.binary_search(&mark(atom)).unwrap_or_else(|at| at) as u32;
+    let side = |(side, groups): (&Heavy, Vec<u32>)| Side {
         elements: side
             .atoms
             .iter()
             .map(|atom| atom.element.number())
             .collect(),
         hydrogens: side.atoms.iter().map(|atom| atom.hydrogens).collect(),
-        marks: side
-            .atoms
-            .iter()
-            .map(|atom| known.binary_search(&mark(atom)).unwrap_or_else(|at| at) as u32)
-            .collect(),
+        marks: side.atoms.iter().map(number).collect(),
         bonds: side.bonds.clone(),
-    })
+        groups,
+        stereo: side.stereo.clone(),
+        symmetries: side.symmetries.clone(),
+    };
+    let [left, right] = heavy;
+    let [groups_left, groups_right] = group_labels(structures, heavy, groups);
+    [(left, groups_left), (right, groups_right)].map(side)
 }
 
 /// Finds the map of least distance between two structures, of one formula or of two; atoms from 0 in input order.
@@ -94,7 +185,8 @@ pub fn map_structures(
     limits: &Limits,
 ) -> Result<Mapping, MappingError> {
     let [left, right] = [a, b].map(Heavy::of);
-    let [first, second] = sides(&left, &right);
+    let groups = [a, b].map(|side| functional_groups(side, limits).ok());
+    let [first, second] = sides([a, b], [&left, &right], &groups);
     let effort = Effort {
         steps: limits.map_steps,
         stop: limits.stop,

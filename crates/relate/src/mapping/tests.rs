@@ -3,7 +3,7 @@ use std::sync::atomic::AtomicBool;
 use rstest::rstest;
 
 use super::{
-    Distance, Effort, Mapping, MappingError, Proved, Side, map_atoms,
+    Arm, Arrangement, Distance, Effort, Mapping, MappingError, Proved, Side, map_atoms,
     oracle::{self, Numbers},
 };
 
@@ -191,6 +191,7 @@ fn carbons(atoms: u32, closed: bool) -> Side {
         hydrogens: vec![2; atoms as usize],
         marks: vec![0; atoms as usize],
         bonds,
+        ..Side::default()
     }
 }
 
@@ -205,6 +206,7 @@ fn star(ligands: u32, class: u8) -> Side {
         bonds: (1..=ligands)
             .map(|atom| (0, atom, if atom < 3 { class } else { 1 }))
             .collect(),
+        ..Side::default()
     }
 }
 
@@ -308,11 +310,130 @@ fn rings_stay_whole() {
     assert!(ring == [0, 1, 2] || ring == [5, 6, 7], "{ring:?}");
 }
 
+/// A chain of eight carbons whose end was moved inwards. Either end may be the one that moved; the group stays whole, on
+/// the chain or on what moved.
+#[rstest]
+#[case::on_the_chain([0, 1])]
+#[case::on_the_branch([6, 7])]
+fn functional_groups_stay_whole(#[case] group: [u32; 2]) {
+    let mut a = carbons(8, false);
+    a.groups = vec![1, 1, 0, 0, 0, 0, 0, 0];
+    let mut b = carbons(6, false);
+    b.elements.extend([6, 6]);
+    b.hydrogens.extend([2, 2]);
+    b.marks.extend([0, 0]);
+    b.bonds.extend([(2, 6, 1), (6, 7, 1)]);
+    b.groups = (0..8)
+        .map(|atom| u32::from(group.contains(&atom)))
+        .collect();
+    let found = mapping(&a, &b);
+    check_map(&a, &b, &found);
+    assert_eq!(found.distance.bonds, 2);
+    let images: Vec<u32> = found.pairs[..2].iter().map(|pair| pair.1).collect();
+    assert!(
+        images.iter().all(|image| group.contains(image)),
+        "{images:?}"
+    );
+}
+
+/// A ring of six with centres 0 and 3, bearing atoms 6 and 7; the two halves of the ring are alike.
+fn ring_with_two_centres(odd: [bool; 2]) -> Side {
+    let mut side = carbons(6, true);
+    side.elements.extend([8, 8]);
+    side.hydrogens.extend([1, 1]);
+    side.marks.extend([0, 0]);
+    side.bonds.extend([(0, 6, 1), (3, 7, 1)]);
+    let centre = |atom: u32, arms: [u32; 3], odd| Arrangement {
+        centres: [atom; 2],
+        arms: [
+            Arm::Atom(arms[0]),
+            Arm::Atom(arms[1]),
+            Arm::Atom(arms[2]),
+            Arm::Hydrogen(0),
+        ],
+        odd,
+    };
+    side.stereo = vec![centre(0, [1, 5, 6], odd[0]), centre(3, [2, 4, 7], odd[1])];
+    side.symmetries = vec![
+        vec![(1, 5), (2, 4), (4, 2), (5, 1)],
+        vec![
+            (0, 3),
+            (1, 2),
+            (2, 1),
+            (3, 0),
+            (4, 5),
+            (5, 4),
+            (6, 7),
+            (7, 6),
+        ],
+    ];
+    side
+}
+
+/// The halves of the ring are laid on each other so that both centres are kept, where that is possible.
+#[rstest]
+#[case::as_drawn([false, false], [false, false], true)]
+#[case::turned([false, false], [true, true], true)]
+#[case::cis_and_trans([false, false], [false, true], false)]
+fn stereo_elements_are_kept(#[case] of_a: [bool; 2], #[case] of_b: [bool; 2], #[case] kept: bool) {
+    let (a, mut b) = (ring_with_two_centres(of_a), ring_with_two_centres(of_b));
+    // One more carbon, so that the two are not the same.
+    b.elements.push(6);
+    b.hydrogens.push(3);
+    b.marks.push(0);
+    b.bonds.push((7, 8, 1));
+    b.symmetries.pop();
+    let found = mapping(&a, &b);
+    assert_eq!(found.distance.bonds, 1);
+    let image: Vec<u32> = found.pairs.iter().map(|pair| pair.1).collect();
+    let disturbed = super::arrangement::disturbed(&a.stereo, &b.stereo, &image);
+    assert_eq!(disturbed == 0, kept, "{image:?}");
+}
+
+#[test]
+fn arrangements_follow_their_arms() {
+    let arms = [Arm::Atom(1), Arm::Atom(2), Arm::Atom(3), Arm::Hydrogen(0)];
+    let own = Arrangement {
+        centres: [0; 2],
+        arms,
+        odd: false,
+    };
+    let exchanged = Arrangement {
+        arms: [arms[1], arms[0], arms[2], arms[3]],
+        odd: true,
+        ..own
+    };
+    let inverted = Arrangement { odd: true, ..own };
+    let identity = [0, 1, 2, 3];
+    let disturbed = |other| super::arrangement::disturbed(&[own], &[other], &identity);
+    assert_eq!(
+        (disturbed(own), disturbed(exchanged), disturbed(inverted)),
+        (0, 0, 2)
+    );
+    // Cis on either side of a double bond, its ends exchanged by the map.
+    let ends = [
+        Arm::Atom(2),
+        Arm::Hydrogen(0),
+        Arm::Atom(3),
+        Arm::Hydrogen(0),
+    ];
+    let bond = Arrangement {
+        centres: [0, 1],
+        arms: ends,
+        odd: false,
+    };
+    assert_eq!(
+        super::arrangement::disturbed(&[bond], &[bond], &[1, 0, 3, 2]),
+        0
+    );
+}
+
 #[rstest]
 #[case::near(carbons(9, true), carbons(9, false), Some(false))]
 #[case::same(carbons(9, true), carbons(9, true), Some(false))]
 #[case::far(star(6, 1), carbons(7, false), Some(true))]
 #[case::ring_of_three(carbons(3, true), carbons(3, false), Some(false))]
+#[case::few_bonds(star(3, 1), carbons(4, false), Some(false))]
 fn unrelated_beyond_a_third(#[case] a: Side, #[case] b: Side, #[case] expected: Option<bool>) {
     assert_eq!(mapping(&a, &b).is_unrelated(), expected);
 }
@@ -343,6 +464,12 @@ fn refuses_what_cannot_be_mapped() {
     assert!(matches!(
         refused(&other),
         MappingError::UnequalLists { marks: 2, .. }
+    ));
+    let mut other = chain.clone();
+    other.symmetries = vec![vec![(0, 3), (3, 0)]];
+    assert!(matches!(
+        refused(&other),
+        MappingError::NoSuchAtom { atom: 3 }
     ));
     for bond in [(0, 3, 1), (1, 1, 1), (1, 0, 2)] {
         let mut other = chain.clone();

@@ -49,6 +49,10 @@ const USUAL: [&str; 9] = [
     "[M+HCOO]-",
 ];
 
+/// No ion has more molecules, or more of one group.
+const MOST_MOLECULES: u16 = 100;
+const MOST_TIMES: u16 = 1_000;
+
 /// Names of what is added that are no formulae.
 const NAMES: [(&str, &str); 6] = [
     ("ACN", "C2H3N"),
@@ -80,6 +84,11 @@ impl Adduct {
     /// The size of the charge, by which a mass is divided.
     pub(super) fn charges(&self) -> f64 {
         f64::from(self.charge.unsigned_abs())
+    }
+
+    /// How far the mass of M may be off where the m/z may be off so much.
+    pub(super) fn width_of_molecule(&self, width: f64) -> f64 {
+        width * self.charges() / f64::from(self.molecules)
     }
 
     /// The mass of the atoms of M, without a thought to electrons, of an ion with this m/z; what
@@ -143,11 +152,24 @@ fn parse(text: &str) -> Option<Adduct> {
     };
     let (inner, charge) = rest.rsplit_once(']')?;
     let charge = parse_charge(charge)?;
-    let (molecules, mut terms) = inner.split_once('M')?;
+    let (molecules, terms) = inner.split_once('M')?;
     let molecules = match molecules {
         "" => 1,
-        digits => digits.parse().ok().filter(|&count| count > 0)?,
+        digits => digits
+            .parse()
+            .ok()
+            .filter(|count| (1..=MOST_MOLECULES).contains(count))?,
     };
+    Some(Adduct {
+        molecules,
+        change: parse_terms(terms)?,
+        charge,
+        text: text.to_owned(),
+    })
+}
+
+/// `+2H`, `+Na-H2O`: what is added and what is taken away.
+fn parse_terms(mut terms: &str) -> Option<Composition> {
     let mut change = Composition::default();
     while !terms.is_empty() {
         let sign = match terms.as_bytes().first()? {
@@ -161,18 +183,16 @@ fn parse(text: &str) -> Option<Adduct> {
         let term = &terms[1..end];
         let digits = term.len() - term.trim_start_matches(|c: char| c.is_ascii_digit()).len();
         let (times, group) = term.split_at(digits);
-        let times: i64 = if digits == 0 { 1 } else { times.parse().ok()? };
+        let times: u16 = match digits {
+            0 => 1,
+            _ => times.parse().ok().filter(|&times| times <= MOST_TIMES)?,
+        };
         let named = NAMES.iter().find(|(name, _)| *name == group);
         let group = Composition::parse(named.map_or(group, |(_, formula)| formula)).ok()?;
-        change = change.plus(&group, times.checked_mul(sign)?);
+        change = change.plus(&group, sign * i64::from(times));
         terms = &terms[end..];
     }
-    Some(Adduct {
-        molecules,
-        change,
-        charge,
-        text: text.to_owned(),
-    })
+    Some(change)
 }
 
 /// `+`, `2+`, `+2`, `++` and the same with minus.

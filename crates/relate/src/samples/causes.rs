@@ -133,43 +133,17 @@ pub struct Hypothesis {
 pub fn causes(tray: &[(Sample, Judgement)]) -> Vec<Hypothesis> {
     let holdings = Holdings::new(tray);
     let shifts = plate::shifts(&holdings);
-    let mut explained: BTreeSet<usize> = BTreeSet::new();
-    let mut found = Vec::new();
-    let mut open = Vec::new();
-    for level in Level::ALL {
-        let edges: Vec<Edge> = holdings
-            .edges(level)
-            .filter(|edge| !explained.contains(&edge.sample))
-            .collect();
-        let (exchanges, rest) = exchange::exchanges(edges);
-        for exchange in exchanges {
-            explained.extend(&exchange.samples);
-            found.push(of_exchange(&holdings, level, exchange));
-        }
-        open.push((level, rest));
-    }
-    for (level, rest) in open {
-        let rest: Vec<Edge> = rest
-            .into_iter()
-            .filter(|edge| !explained.contains(&edge.sample))
-            .collect();
-        for chain in exchange::chains(&rest) {
-            let ends = holdings.bereft(level, chain.end);
-            if !ends.is_empty() {
-                explained.extend(&chain.samples);
-                found.push(half_seen(&holdings, level, chain.samples, ends));
-            }
-        }
-    }
+    let mut found = exchanges(&holdings);
     // A line that moved on and closes on itself is a circle as well; that says no more.
     let moved: Vec<BTreeSet<usize>> = shifts.iter().map(Hypothesis::all).collect();
     found.retain(|hypothesis| {
         let samples = hypothesis.all();
         !moved.iter().any(|shift| samples.is_subset(shift))
     });
+    let closed = found.iter().filter(|hypothesis| hypothesis.is_closed());
     let settled: BTreeSet<usize> = shifts
         .iter()
-        .chain(found.iter().filter(|hypothesis| hypothesis.is_closed()))
+        .chain(closed)
         .flat_map(|hypothesis| hypothesis.explains.iter().copied())
         .collect();
     found.extend(shifts);
@@ -179,6 +153,34 @@ pub fn causes(tray: &[(Sample, Judgement)]) -> Vec<Hypothesis> {
     found.extend(shared::several_structures(&holdings, left));
     found.extend(shared::one_mass(&holdings, left));
     finish(tray, &holdings, found)
+}
+
+/// Exchanges, the finest level first: those that are seen in full, then those that are not.
+fn exchanges(holdings: &Holdings<'_>) -> Vec<Hypothesis> {
+    let mut explained: BTreeSet<usize> = BTreeSet::new();
+    let mut found = Vec::new();
+    let mut open = Vec::new();
+    for level in Level::ALL {
+        let edges = holdings.edges(level);
+        let edges: Vec<Edge> = edges.filter(|e| !explained.contains(&e.sample)).collect();
+        let (exchanges, rest) = exchange::exchanges(edges);
+        for exchange in exchanges {
+            explained.extend(&exchange.samples);
+            found.push(of_exchange(holdings, level, exchange));
+        }
+        open.push((level, rest));
+    }
+    for (level, mut rest) in open {
+        rest.retain(|edge| !explained.contains(&edge.sample));
+        for chain in exchange::chains(&rest) {
+            let ends = holdings.bereft(level, chain.end);
+            if !ends.is_empty() {
+                explained.extend(&chain.samples);
+                found.push(half_seen(holdings, level, chain.samples, ends));
+            }
+        }
+    }
+    found
 }
 
 impl Hypothesis {

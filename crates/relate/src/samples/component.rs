@@ -20,8 +20,7 @@ impl Side {
     /// are taken.
     pub(super) fn of(normaliser: &mut Normaliser, structure: &Structure) -> Self {
         let molecule = structure.molecule();
-        let is_plain =
-            molecule.is_connected() && molecule.atoms().all(|atom| atom.charge == 0);
+        let is_plain = molecule.is_connected() && molecule.atoms().all(|atom| atom.charge == 0);
         if is_plain {
             return Self {
                 components: ionising(molecule),

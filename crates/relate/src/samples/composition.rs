@@ -120,7 +120,7 @@ impl Composition {
     }
 }
 
-/// The longest count that is read: more digits are no formula.
+/// The most atoms of an element.
 const MOST_ATOMS: i64 = 100_000;
 
 /// Reads a formula from left to right.
@@ -154,6 +154,9 @@ impl Reader {
         }
         match self.peek() {
             Some(_) => Err(self.wrong("unexpected character")),
+            None if whole.counts.values().any(|&count| count > MOST_ATOMS) => {
+                Err(self.wrong("too many atoms"))
+            }
             None if whole.is_possible() => Ok(whole),
             None => Err(self.wrong("no atoms")),
         }
@@ -235,7 +238,7 @@ impl Reader {
         let mut number = None;
         while let Some(digit) = self.peek().and_then(|c| c.to_digit(10)) {
             let more = number.unwrap_or(0_i64).saturating_mul(10);
-            number = Some(more.saturating_add(i64::from(digit)).min(MOST_ATOMS));
+            number = Some(more.saturating_add(i64::from(digit)).min(MOST_ATOMS + 1));
             self.at += 1;
         }
         number.unwrap_or(1)
@@ -303,6 +306,10 @@ mod tests {
     )]
     #[case("C2)", "no molecular formula: unexpected character at character 3")]
     #[case("[13C", "no molecular formula: ']' is missing at character 5")]
+    #[case(
+        "(C99999)99999",
+        "no molecular formula: too many atoms at character 14"
+    )]
     #[case("c6h6", "no molecular formula: unexpected character at character 1")]
     fn no_formulae(#[case] text: &str, #[case] expected: &str) {
         assert_eq!(Composition::parse(text).unwrap_err().to_string(), expected);

@@ -135,7 +135,6 @@ impl Judge {
             kind,
             substances.as_deref(),
             explained.as_ref(),
-            limits,
         );
         let constituted = matches!(
             related.relation,

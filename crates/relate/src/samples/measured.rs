@@ -69,7 +69,7 @@ impl FromStr for Tolerance {
             .trim_start();
         let digits = plain.trim_end_matches(char::is_alphabetic);
         let unit = plain[digits.len()..].to_ascii_lowercase();
-        let size = number(digits)
+        let size = parse_number(digits)
             .filter(|size| *size > 0.0)
             .ok_or_else(error)?;
         match unit.as_str() {
@@ -91,7 +91,7 @@ impl fmt::Display for Tolerance {
 }
 
 /// A number with a decimal point, or a decimal comma where there is no point.
-pub fn number(text: &str) -> Option<f64> {
+pub fn parse_number(text: &str) -> Option<f64> {
     let text = text.trim();
     let plain = match text.contains('.') {
         true => text.to_owned(),

@@ -82,14 +82,14 @@ impl Spread {
 
     fn prune(&mut self) {
         let kept = |entry: &(f64, f64)| entry.0 >= LEAST;
-        let start = self.entries.iter().position(kept).unwrap_or(0);
-        let end = self
-            .entries
-            .iter()
-            .rposition(kept)
-            .map_or(start, |at| at + 1);
-        self.entries.truncate(end);
-        self.entries.drain(..start);
+        let ends = (
+            self.entries.iter().position(kept),
+            self.entries.iter().rposition(kept),
+        );
+        if let (Some(start), Some(end)) = ends {
+            self.entries.truncate(end + 1);
+            self.entries.drain(..start);
+        }
     }
 
     /// So many of it, by repeated squaring.

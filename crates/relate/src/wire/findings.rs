@@ -89,6 +89,7 @@ impl Finding {
             Change::Moved(moved) | Change::Rehung(moved) => vec![moved],
             Change::Exchanged(both) => both.iter().collect(),
             Change::Chain { chain, within } => vec![chain, within],
+            Change::Divided { within, .. } => vec![within],
             _ => Vec::new(),
         };
         Self {

@@ -10,7 +10,10 @@ use crate::{
     same_apart_from, words,
 };
 
-use super::{Error, Finding, Group, Input, Note, Prepared, VERSION, Which, findings, numbers};
+use super::{
+    Error, Finding, FunctionalGroup, Group, Input, Note, Prepared, RingSystem, Sides, Surplus,
+    VERSION, Which, findings, numbers,
+};
 
 /// The result for one pair. Either `errors` or the fields from `relation` on are there.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize)]
@@ -54,12 +57,24 @@ pub struct Pair {
     /// What moved.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub findings: Option<Vec<Finding>>,
+    /// What only one formula has, and where.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub left_over: Option<Sides<Surplus>>,
     /// How both records branch.
     #[serde(skip_serializing_if = "Option::is_none")]
-    pub branch_points: Option<BranchPoints>,
+    pub branch_points: Option<Sides<Branching>>,
+    /// The ring systems of both.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub rings: Option<Sides<Vec<RingSystem>>>,
+    /// Functional groups that one has more often than the other.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub functional_groups: Option<Sides<Vec<FunctionalGroup>>>,
     /// Stereo elements that differ.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub stereo: Option<Vec<StereoEntry>>,
+    /// On which everyday analysis the two can be told apart: common practice.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub analysis: Option<String>,
     /// Remarks.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub notes: Option<Vec<Note>>,
@@ -118,6 +133,8 @@ pub struct Bonds {
     pub minimal: bool,
     /// Proved lower bound on the bonds that only one has.
     pub at_least: usize,
+    /// Whether the two are unrelated in structure; null where the search ended too early to tell.
+    pub unrelated: Option<bool>,
 }
 
 /// A mapped pair of atoms with different hydrogen counts.
@@ -133,21 +150,12 @@ pub struct Hydrogens {
     pub count_b: u8,
 }
 
-/// How both records branch.
-#[derive(Debug, Clone, PartialEq, Eq, Serialize)]
-pub struct BranchPoints {
-    /// The first record.
-    pub a: Branching,
-    /// The second record.
-    pub b: Branching,
-}
-
 /// How one record branches.
 #[derive(Debug, Clone, PartialEq, Eq, Serialize)]
 pub struct Branching {
     /// Atoms with three or more non-hydrogen neighbours.
     pub points: Vec<BranchPoint>,
-    /// A longest chain of each component without rings.
+    /// A longest chain of each part outside rings.
     pub chains: Vec<Vec<u32>>,
 }
 
@@ -245,8 +253,12 @@ impl Pair {
             bonds: None,
             hydrogens: None,
             findings: None,
+            left_over: None,
             branch_points: None,
+            rings: None,
+            functional_groups: None,
             stereo: None,
+            analysis: None,
             notes: None,
             errors: None,
         }
@@ -284,7 +296,6 @@ impl Pair {
             kind,
             substances.as_deref(),
             explained.as_ref(),
-            limits,
         );
         self.summary = Some(match &self.overlooked {
             Some(axes) => format!("With {} overlooked: {summary}", axes.join(", ")),
@@ -317,7 +328,8 @@ impl Pair {
                 notes.extend(own.into_iter().map(note));
             }
             self.findings = findings::of([a, b], &explained);
-            self.add_explanation(verdict.relation, explained, molecules, &mut notes);
+            self.analysis = words::analysis([a, b], &verdict, kind, &explained);
+            self.add_explanation(verdict.relation, explained, [a, b], &mut notes);
         }
         self.notes = Some(notes);
         Ok(())
@@ -360,12 +372,13 @@ impl Pair {
         &mut self,
         relation: Relation,
         explained: Explanation,
-        [a, b]: [&Molecule; 2],
+        structures: [&Structure; 2],
         notes: &mut Vec<Note>,
     ) {
-        if matches!(relation, Relation::Identical | Relation::NotIsomers) {
+        if relation == Relation::Identical {
             return;
         }
+        let [a, b] = structures.map(Structure::molecule);
         if !explained.stereo_least {
             let noted = Noted {
                 code: "stereo-map-limit",
@@ -403,6 +416,7 @@ impl Pair {
                 .collect(),
             minimal: bonds.minimal,
             at_least: bonds.at_least,
+            unrelated: bonds.unrelated,
         });
         self.hydrogens = Some(
             explained
@@ -416,11 +430,25 @@ impl Pair {
                 })
                 .collect(),
         );
-        self.branch_points = explained.branching.map(|[in_a, in_b]| BranchPoints {
-            a: Branching::of(a, &in_a),
-            b: Branching::of(b, &in_b),
-        });
-        if relation != Relation::Constitutional {
+        let constitution_differs = !matches!(relation, Relation::Stereo(_));
+        if relation == Relation::NotIsomers {
+            self.left_over = Some(Sides::left_over(structures, &explained.left_over));
+        }
+        let both = |branching| Sides::of(branching, [a, b], Branching::of);
+        self.branch_points = explained.branching.as_ref().map(both);
+        let both = |rings| {
+            Sides::of(rings, [a, b], |molecule, rings: &Vec<_>| {
+                RingSystem::list(molecule, rings)
+            })
+        };
+        self.rings = explained.rings.as_ref().map(both);
+        let both = |groups| {
+            Sides::of(groups, [a, b], |molecule, groups: &Vec<_>| {
+                FunctionalGroup::list(molecule, groups)
+            })
+        };
+        self.functional_groups = explained.functional_groups.as_ref().map(both);
+        if !constitution_differs {
             self.stereo = Some(
                 explained
                     .stereo

@@ -2,42 +2,34 @@
 
 use std::collections::BTreeMap;
 
-use molkin_graph::Limits;
+use crate::FunctionalGroup;
 
-use crate::{Structure, functional_groups};
+use super::listed;
 
-/// A group that the table lacks.
-const UNNAMED: &str = "a group without a name";
-
-/// "alcohol in A, ether in B": the groups that one has more often than the other. `None` where there
+/// "alcohol in A, ether in B": the groups that each has more often than the other. `None` where there
 /// are none, or none with a name.
-pub(super) fn difference(a: &Structure, b: &Structure, limits: &Limits) -> Option<String> {
-    let mut surplus: BTreeMap<Vec<u64>, (&str, i32)> = BTreeMap::new();
-    for (structure, step) in [(a, 1), (b, -1)] {
-        for group in functional_groups(structure, limits).ok()? {
-            let name = group.name.unwrap_or(UNNAMED);
-            surplus.entry(group.certificate).or_insert((name, 0)).1 += step;
-        }
-    }
-    let named = |&(name, count): &(&str, i32)| name != UNNAMED && count != 0;
-    if !surplus.values().any(named) {
+pub(super) fn difference([a, b]: &[Vec<FunctionalGroup>; 2]) -> Option<String> {
+    if a.iter().chain(b).all(|group| group.name.is_none()) {
         return None;
     }
-    let side = |sign: i32, place: &str| {
-        let mut own: BTreeMap<&str, i32> = BTreeMap::new();
-        for &(name, count) in surplus.values().filter(|(_, count)| count * sign > 0) {
-            *own.entry(name).or_default() += count * sign;
-        }
-        let words = own.into_iter().map(|(name, count)| match count {
-            1 => name.to_owned(),
-            _ => format!("{count} × {name}"),
-        });
-        let words: Vec<String> = words.collect();
-        (!words.is_empty()).then(|| format!("{} in {place}", words.join(" and ")))
-    };
-    let sides: Vec<String> = [side(1, "A"), side(-1, "B")]
-        .into_iter()
-        .flatten()
-        .collect();
-    Some(sides.join(", "))
+    let sides = [side(a, "A"), side(b, "B")].into_iter().flatten();
+    Some(sides.collect::<Vec<_>>().join(", "))
+}
+
+fn side(groups: &[FunctionalGroup], place: &str) -> Option<String> {
+    let mut named: BTreeMap<&str, usize> = BTreeMap::new();
+    for name in groups.iter().filter_map(|group| group.name) {
+        *named.entry(name).or_default() += 1;
+    }
+    let named = named.into_iter().map(|(name, count)| match count {
+        1 => name.to_owned(),
+        _ => format!("{count} × {name}"),
+    });
+    let unnamed = groups.iter().filter(|group| group.name.is_none());
+    let unnamed = unnamed.map(|group| match group.atoms.len() {
+        1 => "an unnamed group of one atom".to_owned(),
+        count => format!("an unnamed group of {count} atoms"),
+    });
+    let words: Vec<String> = named.chain(unnamed).collect();
+    (!words.is_empty()).then(|| format!("{} in {place}", listed(&words)))
 }

@@ -4,9 +4,11 @@ mod names;
 mod places;
 mod rings;
 
+use std::collections::BTreeMap;
+
 use crate::{
     BondDifference, Structure,
-    findings::{Change, Finding, GroupHere, Link, Moved, Shift},
+    findings::{Change, Finding, GroupHere, Link, Moved, Shift, Substituent},
 };
 
 use self::names::Names;
@@ -20,6 +22,7 @@ pub(crate) fn sentence(structures: [&Structure; 2], finding: &Finding) -> String
         Change::Exchanged(both) => exchanged(&names, both),
         Change::Rehung(moved) => rehung(&names, moved),
         Change::Chain { chain, within } => chain_changed(&names, chain, within),
+        Change::Divided { centre, chains, .. } => divided(&names, centre, chains),
         Change::Link(link) => linked(&names, link),
         Change::Turned { name, bonds } => {
             let sides = [0, 1].map(|side| {
@@ -101,7 +104,7 @@ fn substituent(names: &Names<'_>, moved: &Moved) -> String {
 }
 
 fn linked(names: &Names<'_>, link: &Link) -> String {
-    let place = |side: usize| {
+    let ends = |side: usize| {
         let ends = link.ends[side].iter();
         let ends: Vec<String> = ends.map(|&(_, atom)| names.atom(side, atom)).collect();
         match ends.len() {
@@ -109,25 +112,30 @@ fn linked(names: &Names<'_>, link: &Link) -> String {
             _ => format!("between {}", listed(&ends)),
         }
     };
-    let apart = |side: usize| {
-        let bond = link.joined[side].map(|bond| names.bond(1 - side, bond));
+    let [from, to] = [ends(0), ends(1)];
+    let [group, other] = [0, 1].map(|side| names.group(side, &link.groups[side]));
+    let one_end = link.ends[0].len() == 1;
+    let what = match (group == other, one_end) {
+        (true, _) => format!("The {} is {from} in A, {to} in B", names.linking(link)),
+        (_, true) => format!(
+            "The {group} {from} of A is {} {to} in B",
+            names::with_article(&other)
+        ),
+        _ => format!(
+            "The {} {from} of A is {} {to} in B",
+            names.linking(link),
+            names::with_article(&other)
+        ),
+    };
+    let joined = [1, 0].map(|side| {
+        let (x, y) = link.joined[side]?;
+        let [x, y] = [x, y].map(|atom| names.atom(1 - side, atom));
         let record = ["A", "B"][1 - side];
-        bond.map_or_else(String::new, |bond| format!(" ({record} has {bond})"))
-    };
-    let group = names.linking(link);
-    let other = names.group(1, &link.groups[1]);
-    let again = if other == names.group(0, &link.groups[0]) {
-        String::new()
-    } else {
-        format!("as {} ", names::with_article(&other))
-    };
-    format!(
-        "The {group} is {} in A{}, {again}{} in B{}",
-        place(0),
-        apart(0),
-        place(1),
-        apart(1)
-    )
+        Some(format!(
+            "; {x} and {y} of {record} are bonded to each other"
+        ))
+    });
+    what + &joined.into_iter().flatten().collect::<String>()
 }
 
 fn exchanged(names: &Names<'_>, [one, other]: &[Moved; 2]) -> String {
@@ -171,6 +179,24 @@ fn chain_changed(names: &Names<'_>, chain: &Moved, within: &Moved) -> String {
     format!(
         "The {old} on {on} of A is {new} on {there} of B: the {group} on {from} of A is on {to} of B"
     )
+}
+
+fn divided(names: &Names<'_>, centre: &[u32; 2], chains: &[Vec<Substituent>; 2]) -> String {
+    let [a, b] = [0, 1].map(|side| {
+        let mut counts: BTreeMap<String, usize> = BTreeMap::new();
+        for chain in &chains[side] {
+            *counts.entry(names.group(side, chain)).or_default() += 1;
+        }
+        let words = counts.into_iter().map(|(name, count)| match count {
+            1 => names::with_article(&name),
+            2 => format!("two {name}s"),
+            3 => format!("three {name}s"),
+            n => format!("{n} {name}s"),
+        });
+        listed(&words.collect::<Vec<String>>())
+    });
+    let [centre, image] = [0, 1].map(|side| names.atom(side, centre[side]));
+    format!("{centre} of A bears {a}, {image} of B {b}")
 }
 
 fn delocalised(names: &Names<'_>, side: usize, atoms: &[Vec<u32>; 2], ring: bool) -> String {

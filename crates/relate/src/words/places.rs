@@ -32,6 +32,11 @@ impl Places<'_> {
         self.place(side, [&difference.a, &difference.b][side])
     }
 
+    /// An atom of one of them.
+    pub(super) fn of_atom(&self, side: usize, atom: u32) -> String {
+        self.place(side, &[atom])
+    }
+
     /// `C3`, `C3=C4`, or `C3…C6` for ends that no bond joins.
     fn place(&self, side: usize, atoms: &[u32]) -> String {
         let molecule = self.0[side].molecule();

@@ -38,7 +38,7 @@ fn told(a: Molecule, b: Molecule) -> String {
     let [a, b] = [a, b].map(|molecule| Structure::new(&mut orderer, molecule).unwrap());
     let verdict = relate(&mut orderer, &a, &b).unwrap();
     let explanation = explain(&a, &b, verdict.relation, &limits);
-    summary([&a, &b], &verdict, None, None, Some(&explanation), &limits)
+    summary([&a, &b], &verdict, None, None, Some(&explanation))
 }
 
 #[rstest]

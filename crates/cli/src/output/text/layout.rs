@@ -7,6 +7,23 @@ use crate::output::style::{Role, Style};
 /// Columns of the label, and of a line altogether.
 const LABEL: usize = 17;
 const WIDTH: usize = 96;
+/// What a line has beside its label.
+pub(super) const LINE: usize = WIDTH - LABEL - 3;
+
+/// Columns of a cell where two stand side by side.
+pub(super) const COLUMN: usize = (WIDTH - LABEL - 5) / 2;
+
+/// How much is shown.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(crate) enum Extent {
+    /// What fits a screen.
+    Screen,
+    /// All of it.
+    Full,
+}
+
+/// Lines of a list on a screen.
+const SCREEN_LINES: usize = 2;
 
 /// A blank at which no line breaks; it is written as a plain one.
 pub(super) const HARD_BLANK: &str = "\u{a0}";
@@ -19,16 +36,86 @@ pub(super) fn labelled(
     text: &str,
 ) -> io::Result<()> {
     let mut label = label;
-    for line in wrapped(text, WIDTH - LABEL - 3) {
-        let role = role.filter(|_| !label.is_empty());
-        match role {
-            Some(role) => write!(out, "  {:<LABEL$} ", style.paint(role, label))?,
-            None => write!(out, "  {label:<LABEL$} ")?,
-        }
-        writeln!(out, "{}", line.replace(HARD_BLANK, " ").trim_end())?;
+    for line in wrapped(text, LINE) {
+        labelled_line(out, style, (role, label), &line)?;
         label = "";
     }
     Ok(())
+}
+
+fn labelled_line(
+    out: &mut impl Write,
+    style: Style,
+    (role, label): (Option<Role>, &str),
+    line: &str,
+) -> io::Result<()> {
+    match role.filter(|_| !label.is_empty()) {
+        Some(role) => write!(out, "  {:<LABEL$} ", style.paint(role, label))?,
+        None => write!(out, "  {label:<LABEL$} ")?,
+    }
+    writeln!(out, "{}", line.replace(HARD_BLANK, " ").trim_end())
+}
+
+/// Writes a text of its own across the whole width.
+pub(super) fn paragraph(
+    out: &mut impl Write,
+    style: Style,
+    role: Role,
+    text: &str,
+) -> io::Result<()> {
+    for line in wrapped(text, WIDTH) {
+        writeln!(out, "{}", style.paint(role, &line))?;
+    }
+    Ok(())
+}
+
+/// Writes two cells side by side, each with lines of its own.
+pub(super) fn columns(
+    out: &mut impl Write,
+    style: Style,
+    label: &str,
+    cells: [String; 2],
+) -> io::Result<()> {
+    let [left, right] = cells.map(|cell| wrapped(&cell, COLUMN));
+    let blank = String::new();
+    for line in 0..left.len().max(right.len()) {
+        let of = |cell: &Vec<String>| cell.get(line).unwrap_or(&blank).replace(HARD_BLANK, " ");
+        let text = format!("{:<COLUMN$}  {}", of(&left), of(&right));
+        labelled_line(
+            out,
+            style,
+            (None, if line == 0 { label } else { "" }),
+            &text,
+        )?;
+    }
+    Ok(())
+}
+
+/// A list as text: all of it, or as many items as fit the lines of a screen and how many there are
+/// more.
+pub(super) fn fitting(items: Vec<String>, extent: Extent, width: usize) -> String {
+    // An item is kept on one line where there is one for it.
+    let whole = |item: String| match item.chars().count() < width {
+        true => item.replace(' ', HARD_BLANK),
+        false => item,
+    };
+    let items: Vec<String> = items.into_iter().map(whole).collect();
+    let first = |count: usize| {
+        let rest = match items.len() - count {
+            0 => String::new(),
+            more => format!(", and {more} more (--full)")
+                .replace(' ', HARD_BLANK)
+                .replacen(HARD_BLANK, " ", 1),
+        };
+        format!("{}{rest}", items[..count].join(", "))
+    };
+    if extent == Extent::Full || wrapped(&first(items.len()), width).len() <= SCREEN_LINES {
+        return first(items.len());
+    }
+    // The more items, the more lines.
+    let counts: Vec<usize> = (1..items.len()).collect();
+    let fits = |&count: &usize| wrapped(&first(count), width).len() <= SCREEN_LINES;
+    first(counts.partition_point(fits).max(1))
 }
 
 /// Breaks a text at blanks into lines of at most `width` characters; longer words stay whole.

@@ -2,14 +2,16 @@
 
 use std::io::{self, Write};
 
-use molkin_relate::wire::{Apart, Bonds, Branching, Group, Pair, Prepared, StereoEntry, Which};
+use molkin_relate::wire::{
+    Apart, Bonds, Finding, Group, Pair, Piece, Prepared, StereoEntry, Which,
+};
 
 use crate::output::style::{Role, Style};
 
 use super::{
     atoms::{Labels, MOBILE},
-    excerpt, fault, group as group_in_words,
-    layout::{HARD_BLANK, labelled, sentence},
+    beside, excerpt, fault, group as group_in_words,
+    layout::{Extent, LINE, fitting, labelled, paragraph, sentence},
     place,
 };
 
@@ -17,11 +19,12 @@ use super::{
 pub(crate) fn write(
     out: &mut impl Write,
     style: Style,
+    extent: Extent,
     pair: &Pair,
     sides: [&Prepared; 2],
 ) -> io::Result<()> {
     let verdict = pair.summary.as_deref().unwrap_or("No verdict.");
-    writeln!(out, "{}", style.paint(Role::Verdict, verdict))?;
+    paragraph(out, style, Role::Verdict, verdict)?;
     record(out, style, Which::A, sides[0])?;
     record(out, style, Which::B, sides[1])?;
     if let Some(axes) = &pair.overlooked {
@@ -38,7 +41,15 @@ pub(crate) fn write(
     }
     if let [Some(a), Some(b)] = sides.map(Prepared::structure) {
         let labels = [Labels::new(a), Labels::new(b)];
-        Differences { pair, labels }.write(out, style)?;
+        let differences = Differences {
+            pair,
+            labels,
+            extent,
+        };
+        differences.write(out, style)?;
+    }
+    if let Some(analysis) = &pair.analysis {
+        labelled(out, style, (None, "common practice"), analysis)?;
     }
     for note in pair.notes.iter().flatten() {
         let label = match note.input {
@@ -58,23 +69,16 @@ fn record(out: &mut impl Write, style: Style, which: Which, prepared: &Prepared)
         Which::B => (Some(Role::OfB), "B"),
     };
     let input = prepared.input();
-    let place = place(&input.source, input.record, &input.name);
+    let mut place = place(&input.source, input.record, &input.name);
+    if let Some(formula) = &input.formula {
+        place.push_str(&format!(" ({formula})"));
+    }
     labelled(out, style, label, &place)?;
-    if let (Some(formula), Some(smiles)) = (&input.formula, &input.smiles) {
-        labelled(
-            out,
-            style,
-            (None, ""),
-            &format!("{formula}{HARD_BLANK} {smiles}"),
-        )?;
+    if let Some(smiles) = &input.smiles {
+        labelled(out, style, (None, ""), &broken(smiles))?;
     }
     if let Some(form) = &input.form {
-        labelled(
-            out,
-            style,
-            (None, ""),
-            &format!("compared as{HARD_BLANK} {form}"),
-        )?;
+        labelled(out, style, (None, ""), &format!("compared as {form}"))?;
     }
     if let Some(error) = prepared.error() {
         labelled(out, style, (None, "error"), &fault(error))?;
@@ -82,32 +86,104 @@ fn record(out: &mut impl Write, style: Style, which: Which, prepared: &Prepared)
     excerpt(out, prepared)
 }
 
+/// A SMILES with blanks where it is too long for a line.
+fn broken(smiles: &str) -> String {
+    let characters: Vec<char> = smiles.chars().collect();
+    let lines = characters
+        .chunks(LINE)
+        .map(|line| line.iter().collect::<String>());
+    lines.collect::<Vec<_>>().join(" ")
+}
+
 /// What differs between two structures.
 struct Differences<'p> {
     pair: &'p Pair,
     labels: [Labels<'p>; 2],
+    extent: Extent,
 }
 
 impl Differences<'_> {
     fn write(&self, out: &mut impl Write, style: Style) -> io::Result<()> {
-        // The verdict has the first already.
-        let findings = self.pair.findings.iter().flatten().skip(1);
-        for (at, finding) in findings.enumerate() {
-            let label = if at == 0 { "besides" } else { "" };
-            labelled(out, style, (None, label), &finding.text)?;
-        }
-        if let Some(bonds) = &self.pair.bonds {
+        self.findings(out, style)?;
+        // Of what is unrelated, single differences say nothing.
+        let bonds = self.pair.bonds.as_ref();
+        let told = bonds.filter(|bonds| self.is_full() || bonds.unrelated != Some(true));
+        if let Some(bonds) = told {
+            self.left_over(out, style)?;
             self.bonds(out, style, bonds)?;
+            // Where it is told what moved, hydrogens follow from it.
+            if self.is_full() || self.pair.findings.is_none() {
+                self.hydrogens(out, style)?;
+            }
         }
-        self.hydrogens(out, style)?;
         for entry in self.pair.stereo.iter().flatten() {
             labelled(out, style, (None, "stereo"), &self.stereo(entry))?;
         }
-        if let Some(branching) = &self.pair.branch_points {
-            self.branching(out, style, 0, &branching.a)?;
-            self.branching(out, style, 1, &branching.b)?;
+        beside::write(out, style, self.extent, self.pair, &self.labels)?;
+        if told.is_some() {
+            self.map(out, style)?;
         }
-        self.map(out, style)
+        Ok(())
+    }
+
+    fn is_full(&self) -> bool {
+        self.extent == Extent::Full
+    }
+
+    fn list(
+        &self,
+        out: &mut impl Write,
+        style: Style,
+        label: (Option<Role>, &str),
+        items: impl Iterator<Item = String>,
+    ) -> io::Result<()> {
+        let items: Vec<String> = items.collect();
+        if items.is_empty() {
+            return Ok(());
+        }
+        labelled(out, style, label, &fitting(items, self.extent, LINE))
+    }
+
+    /// What moved beside what the verdict says, and what is the same.
+    fn findings(&self, out: &mut impl Write, style: Style) -> io::Result<()> {
+        let Some([_, between @ .., last]) = self.pair.findings.as_deref() else {
+            return Ok(());
+        };
+        // What became of functional groups is in their row.
+        let told = |found: &&Finding| self.is_full() || found.kind != "group-changed";
+        let between: Vec<&Finding> = between.iter().filter(told).collect();
+        let shown = match self.extent {
+            Extent::Full => between.len(),
+            Extent::Screen => between.len().min(SCREEN_FINDINGS),
+        };
+        let mut lines: Vec<String> = between.iter().map(|found| found.text.clone()).collect();
+        lines.truncate(shown);
+        if shown < between.len() {
+            let more = counted(between.len() - shown, "more difference");
+            lines.push(format!("{more} (--full)."));
+        }
+        lines.push(last.text.clone());
+        for (at, line) in lines.iter().enumerate() {
+            let label = if at == 0 { "besides" } else { "" };
+            labelled(out, style, (None, label), line)?;
+        }
+        Ok(())
+    }
+
+    /// "methyl (C7) on C6".
+    fn left_over(&self, out: &mut impl Write, style: Style) -> io::Result<()> {
+        let Some(left_over) = &self.pair.left_over else {
+            return Ok(());
+        };
+        let sides = [
+            (Role::OfA, "left over in A", &left_over.a.pieces),
+            (Role::OfB, "left over in B", &left_over.b.pieces),
+        ];
+        for (labels, (role, label, pieces)) in self.labels.iter().zip(sides) {
+            let pieces = pieces.iter().map(|piece| left_over_piece(labels, piece));
+            self.list(out, style, (Some(role), label), pieces)?;
+        }
+        Ok(())
     }
 
     fn bonds(&self, out: &mut impl Write, style: Style, bonds: &Bonds) -> io::Result<()> {
@@ -119,8 +195,8 @@ impl Differences<'_> {
             .only_in_b
             .iter()
             .map(|&bond| self.labels[1].bond(bond));
-        list(out, style, (Some(Role::OfA), "only in A"), only_in_a)?;
-        list(out, style, (Some(Role::OfB), "only in B"), only_in_b)?;
+        self.list(out, style, (Some(Role::OfA), "only in A"), only_in_a)?;
+        self.list(out, style, (Some(Role::OfB), "only in B"), only_in_b)?;
         let changed = bonds.order_changed.iter().map(|&[in_a, in_b]| {
             let [a, b] = &self.labels;
             format!("{} → {}", a.bond(in_a), b.bond(in_b))
@@ -130,8 +206,8 @@ impl Differences<'_> {
             let last = changed.pop().unwrap_or_default();
             changed.push(format!("{last} (: is a mobile bond)"));
         }
-        list(out, style, (None, "order, A → B"), changed.into_iter())?;
-        if !bonds.minimal && self.pair.relation == Some("constitutional") {
+        self.list(out, style, (None, "order, A → B"), changed.into_iter())?;
+        if !bonds.minimal && self.pair.relation != Some("stereo") {
             let mut text =
                 "The search ended at its budget; another map may change less.".to_owned();
             if bonds.at_least > 0 {
@@ -155,7 +231,7 @@ impl Differences<'_> {
                 hydrogens(count_b)
             )
         });
-        list(out, style, (None, "hydrogens, A → B"), entries)
+        self.list(out, style, (None, "hydrogens, A → B"), entries)
     }
 
     fn stereo(&self, entry: &StereoEntry) -> String {
@@ -192,39 +268,6 @@ impl Differences<'_> {
         format!("{in_a} → {in_b}: {element}, {change}")
     }
 
-    fn branching(
-        &self,
-        out: &mut impl Write,
-        style: Style,
-        side: usize,
-        branching: &Branching,
-    ) -> io::Result<()> {
-        let labels = &self.labels[side];
-        let (role, branches, chain) = match side {
-            0 => (Role::OfA, "branches in A", "chain in A"),
-            _ => (Role::OfB, "branches in B", "chain in B"),
-        };
-        let points = branching.points.iter().map(|point| {
-            let mut parts = Vec::new();
-            if point.ring_bonds > 0 {
-                parts.push(counted(point.ring_bonds, "ring bond"));
-            }
-            let sizes: Vec<String> = point.branches.iter().map(usize::to_string).collect();
-            match sizes.len() {
-                0 => {}
-                1 => parts.push(format!("a branch of {}", sizes.join(""))),
-                _ => parts.push(format!("branches of {}", sizes.join(", "))),
-            }
-            format!("{} ({})", labels.atom(point.atom), parts.join(", "))
-        });
-        list(out, style, (Some(role), branches), points)?;
-        for atoms in &branching.chains {
-            let text = format!("{} atoms: {}", atoms.len(), labels.chain(atoms));
-            labelled(out, style, (Some(role), chain), &text)?;
-        }
-        Ok(())
-    }
-
     fn map(&self, out: &mut impl Write, style: Style) -> io::Result<()> {
         let Some(map) = self.pair.atom_map.as_deref().filter(|map| !map.is_empty()) else {
             return Ok(());
@@ -241,22 +284,35 @@ impl Differences<'_> {
         let entries = map
             .iter()
             .map(|&[a, b]| format!("{} → {}", left.atom(a), right.atom(b)));
-        list(out, style, (None, "atoms, A → B"), entries)
+        if !self.is_full() && map.len() > SHORTEST_HIDDEN_MAP {
+            let text = format!(
+                "{} atoms are laid on each other (--full lists them)",
+                map.len()
+            );
+            return labelled(out, style, (None, "atoms, A → B"), &text);
+        }
+        self.list(out, style, (None, "atoms, A → B"), entries)
     }
 }
 
-/// Writes a list on one labelled line, or nothing for an empty one.
-fn list(
-    out: &mut impl Write,
-    style: Style,
-    label: (Option<Role>, &str),
-    items: impl Iterator<Item = String>,
-) -> io::Result<()> {
-    let items: Vec<String> = items.map(|item| item.replace(' ', HARD_BLANK)).collect();
-    if items.is_empty() {
-        return Ok(());
-    }
-    labelled(out, style, label, &items.join(", "))
+/// Findings that a screen has room for beside the one of the verdict.
+const SCREEN_FINDINGS: usize = 2;
+
+/// Maps of more atoms take more than two lines.
+const SHORTEST_HIDDEN_MAP: usize = 14;
+
+/// "methyl (C7) on C6", "Na+ (Na5)".
+fn left_over_piece(labels: &Labels<'_>, piece: &Piece) -> String {
+    let named = |atoms: &[u32]| {
+        let names: Vec<String> = atoms.iter().map(|&atom| labels.atom(atom)).collect();
+        names.join(", ")
+    };
+    let what = piece.name.unwrap_or(&piece.formula);
+    let on = match piece.on.is_empty() {
+        true => String::new(),
+        false => format!(" on {}", named(&piece.on)),
+    };
+    format!("{what} ({}){on}", named(&piece.atoms))
 }
 
 /// ": R in A, S in B", or nothing without labels.

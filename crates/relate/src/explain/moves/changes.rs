@@ -32,6 +32,16 @@ pub enum Change {
         /// What moved within the chain.
         within: Moved,
     },
+    /// The saturated chains on one atom that is not of their kind share their atoms otherwise: ethyl and
+    /// propyl, methyl and butyl. All have names.
+    Divided {
+        /// The atom in A and in B.
+        centre: [u32; 2],
+        /// The chains on it.
+        chains: [Vec<Substituent>; 2],
+        /// What moved from one chain to another.
+        within: Moved,
+    },
     /// A piece joins two others, in both records or in one: it stands between other atoms, or it was put
     /// into a bond.
     Link(Link),
@@ -158,7 +168,8 @@ impl Finding {
     }
 
     /// The same finding with the records exchanged.
-    pub(super) fn mirrored(self) -> Self {
+    #[must_use]
+    pub fn mirrored(self) -> Self {
         let [a, b] = self.only_in;
         let bonds = self.order_changed.into_iter();
         let mut order_changed: Vec<[Ends; 2]> = bonds.map(|[a, b]| [b, a]).collect();
@@ -192,6 +203,15 @@ impl Change {
             Self::Rehung(moved) => Self::Rehung(moved.mirrored()),
             Self::Chain { chain, within } => Self::Chain {
                 chain: chain.mirrored(),
+                within: within.mirrored(),
+            },
+            Self::Divided {
+                centre,
+                chains,
+                within,
+            } => Self::Divided {
+                centre: turned(centre),
+                chains: turned(chains),
                 within: within.mirrored(),
             },
             Self::Link(link) => Self::Link(Link {
@@ -247,7 +267,7 @@ impl Change {
         match self {
             Self::Turned { .. } => 0,
             Self::Exchanged(_) => 1,
-            Self::Chain { .. } | Self::Rehung(_) => 2,
+            Self::Chain { .. } | Self::Divided { .. } | Self::Rehung(_) => 2,
             Self::Moved(_) | Self::Link(_) => 3,
             Self::Swapped { .. } => 4,
             Self::Ring(_) => 5,
@@ -266,6 +286,7 @@ impl Change {
             Self::Exchanged(_) => "substituents-exchanged",
             Self::Rehung(_) => "attachment-moved",
             Self::Chain { .. } => "chain-branches-elsewhere",
+            Self::Divided { .. } => "chains-divided-otherwise",
             Self::Link(_) => "link-moved",
             Self::Turned { .. } => "group-turned",
             Self::Swapped { .. } => "neighbours-swapped",
@@ -289,6 +310,10 @@ impl Change {
             Self::Exchanged(both) => {
                 let groups = both.iter().flat_map(|moved| &moved.groups[side].atoms);
                 groups.copied().collect()
+            }
+            Self::Divided { chains, .. } => {
+                let chains = chains[side].iter();
+                chains.flat_map(|chain| chain.atoms.clone()).collect()
             }
             Self::Link(link) => link.groups[side].atoms.clone(),
             Self::Turned { bonds, .. } => {

@@ -81,7 +81,7 @@ impl Frame {
 }
 
 impl Graph {
-    fn new(atoms: Vec<NormalAtom>, bonds: impl Iterator<Item = (u32, u32, u8)>) -> Self {
+    pub(super) fn new(atoms: Vec<NormalAtom>, bonds: impl Iterator<Item = (u32, u32, u8)>) -> Self {
         let mut near = vec![Vec::new(); atoms.len()];
         for (a, b, order) in bonds {
             near[a as usize].push((b, order));

@@ -35,24 +35,37 @@ pub(super) fn moved(frame: &Frame) -> Vec<Finding> {
 }
 
 /// By atom, how many more hydrogens the second record has than bonds of one record only account for.
+/// Atoms of which that cannot be said are left out.
 fn unexplained(frame: &Frame) -> Vec<(u32, i32)> {
     let [first, second] = &frame.graphs;
     let atoms = 0..first.size() as u32;
-    let counts = atoms
-        .map(|atom| i32::from(second.atom(atom).hydrogens) - i32::from(first.atom(atom).hydrogens));
-    let mut counts: Vec<i32> = counts.collect();
-    for (graph, other, sign) in [(first, second, -1), (second, first, 1)] {
-        for ((a, b), order) in graph
-            .bonds()
-            .filter(|((a, b), _)| other.order(*a, *b).is_none())
-        {
-            for end in [a, b] {
-                counts[end as usize] += sign * valence(order);
-            }
-        }
-    }
-    let counts = (0..).zip(counts);
+    let counts = atoms.filter(|&atom| is_certain(frame, atom)).map(|atom| {
+        let hydrogens =
+            i32::from(second.atom(atom).hydrogens) - i32::from(first.atom(atom).hydrogens);
+        let own = |side: usize| -> i32 {
+            let other = &frame.graphs[1 - side];
+            let near = frame.graphs[side].near(atom).iter();
+            let alone = near.filter(|&&(to, _)| other.order(atom, to).is_none());
+            alone.map(|&(_, order)| i32::from(order)).sum()
+        };
+        (atom, hydrogens + own(1) - own(0))
+    });
     counts.filter(|&(_, count)| count != 0).collect()
+}
+
+/// Whether it is known how many bonds an atom gives up or takes up: no mobile bond of it is in one record
+/// only, nor, of a carbon, mobile in one only.
+fn is_certain(frame: &Frame, atom: u32) -> bool {
+    let is_carbon = frame.graphs[0].is_carbon(atom);
+    (0..2).all(|side| {
+        let other = &frame.graphs[1 - side];
+        let near = frame.graphs[side].near(atom).iter();
+        let mut mobile = near.filter(|&&(_, order)| order == MOBILE);
+        mobile.all(|&(to, _)| match other.order(atom, to) {
+            None => false,
+            Some(order) => order == MOBILE || !is_carbon,
+        })
+    })
 }
 
 /// A mobile bond counts as a single one.

@@ -5,7 +5,9 @@ use std::{collections::HashMap, sync::OnceLock};
 use molkin_formats::smiles;
 use molkin_graph::{Element, Formula, GraphOrderer, Limits, NormalAtom, Orderer};
 
-use super::frame::{Frame, MOBILE};
+use crate::mapping::Heavy;
+
+use super::frame::{Frame, Graph, MOBILE};
 
 /// A part of a record that hangs on the rest by one bond.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -33,23 +35,39 @@ impl Substituent {
         }
         let mut sources = frame.sources(side, atoms);
         sources.sort_unstable();
-        // The bond of a sulfoxide or nitro group is written in more than one way.
-        let separated = |&seat: &u32| {
-            let charge = graph.atom(seat).charge;
-            atoms.len() == 1 && !atoms.contains(&seat) && charge.is_some_and(|charge| charge > 0)
-        };
-        let named = !graph.neighbours(through).any(|seat| separated(&seat));
-        let name = named.then(|| name_of(&coloured(frame, side, atoms, through, order)));
         Self {
             atoms: sources,
-            name: name.flatten(),
+            name: named(graph, atoms, through, order),
             formula: Formula::new(counts, 0),
         }
     }
 }
 
-fn coloured(frame: &Frame, side: usize, atoms: &[u32], through: u32, order: u8) -> Coloured {
-    let graph = &frame.graphs[side];
+/// The name of a part of a record that hangs by `through` on the rest, joined by a bond of `order`; atoms
+/// by position.
+pub(in crate::explain) fn name(
+    heavy: &Heavy,
+    atoms: &[u32],
+    through: u32,
+    order: u8,
+) -> Option<&'static str> {
+    let graph = Graph::new(heavy.atoms.clone(), heavy.bonds.iter().copied());
+    named(&graph, atoms, through, order)
+}
+
+fn named(graph: &Graph, atoms: &[u32], through: u32, order: u8) -> Option<&'static str> {
+    // The bond of a sulfoxide or nitro group is written in more than one way.
+    let separated = |seat: u32| {
+        let charge = graph.atom(seat).charge;
+        atoms.len() == 1 && !atoms.contains(&seat) && charge.is_some_and(|charge| charge > 0)
+    };
+    let in_one_way = !graph.neighbours(through).any(separated);
+    in_one_way
+        .then(|| name_of(&coloured(graph, atoms, through, order)))
+        .flatten()
+}
+
+fn coloured(graph: &Graph, atoms: &[u32], through: u32, order: u8) -> Coloured {
     let place = |atom: u32| atoms.iter().position(|&other| other == atom);
     // Where the group is conjugated with a charge outside, its bond to there is mobile; of a single
     // oxygen it is then not known whether it is oxido or oxo.

@@ -103,7 +103,8 @@ fn peel(edges: Vec<Edge>) -> (Vec<Edge>, Vec<Edge>) {
     edges.into_iter().partition(|_| kept.next() == Some(true))
 }
 
-/// The connected parts of edges each of which may be on a closed walk.
+/// The connected parts of edges each of which may be on a closed walk: some edge leaves each vertex, and
+/// some leads to it.
 fn circles(core: &[Edge]) -> Vec<Exchange> {
     let mut out: BTreeMap<u32, Vec<usize>> = BTreeMap::new();
     let mut about: BTreeMap<u32, Vec<usize>> = BTreeMap::new();

@@ -339,10 +339,8 @@ fn differs(verdict: Verdict) -> bool {
 fn mass(measurement: &Measurement) -> Option<(f64, f64)> {
     let adduct = measurement.adduct.as_ref()?;
     let mass = adduct.mass_of_molecule(measurement.mz)?;
-    Some((
-        mass,
-        measurement.tolerance.width(measurement.mz) * adduct.charges(),
-    ))
+    let width = measurement.tolerance.width(measurement.mz);
+    Some((mass, adduct.width_of_molecule(width)))
 }
 
 /// A measurement is made on what is in the vial; where it contradicts the record of what came, that
@@ -456,7 +454,8 @@ impl MassIndex {
             let Some(mass) = adduct.mass_of_molecule(measurement.mz) else {
                 continue;
             };
-            let width = measurement.tolerance.width(measurement.mz) * adduct.charges();
+            let width = measurement.tolerance.width(measurement.mz);
+            let width = adduct.width_of_molecule(width);
             let start = self.masses.partition_point(|entry| entry.0 < mass - width);
             let within = self.masses[start..]
                 .iter()

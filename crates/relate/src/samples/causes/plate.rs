@@ -43,7 +43,6 @@ pub(super) fn shifts(holdings: &Holdings<'_>) -> Vec<Hypothesis> {
 
 /// Whether the samples of a line, in order of their places, hold what the label one place before says.
 fn moved(holdings: &Holdings<'_>, line: &[(u16, usize)]) -> Option<Hypothesis> {
-    let differs = |sample: usize| holdings.samples[sample].differs;
     // Each with the one in the place before.
     let pairs: Vec<(usize, usize)> = line
         .windows(2)
@@ -51,58 +50,79 @@ fn moved(holdings: &Holdings<'_>, line: &[(u16, usize)]) -> Option<Hypothesis> {
         .map(|pair| (pair[1].1, pair[0].1))
         .collect();
     let is_moved = |&(sample, before): &(usize, usize)| {
-        differs(sample) && holdings.strength(sample, before) > 0.0
+        holdings.samples[sample].differs && holdings.strength(sample, before) > 0.0
     };
     let first = pairs.iter().position(is_moved)?;
     let last = pairs.iter().rposition(is_moved)?;
     let span = &pairs[first..=last];
-    let mut explains: Vec<usize> = span.iter().filter(|p| is_moved(p)).map(|p| p.0).collect();
-    let mut involves = Vec::new();
-    let (mut sum, mut count) = (0.0, 0);
-    for &(sample, before) in span {
-        let holding = &holdings.samples[sample];
-        match holding.content {
-            Content::Unknown => involves.push(sample),
-            // Equal labels beside each other: nothing is seen of the move, and nothing speaks against it.
-            _ if holding.label == holdings.samples[before].label => continue,
-            _ => {
-                sum += if differs(sample) {
-                    holdings.strength(sample, before)
-                } else {
-                    0.0
-                }
-            }
-        }
-        count += 1;
-    }
-    // What sat in the last place may have come round to the first; what was there first went on.
-    let tail = span[span.len() - 1].0;
-    let head = head(holdings, &pairs[..first], span[0].1);
-    for (at, &sample) in head.iter().enumerate() {
-        let round = match at + 1 == head.len() {
-            true => holdings.strength(sample, tail),
-            false => 0.0,
-        };
-        match differs(sample) && round > 0.0 {
-            true => explains.insert(0, sample),
-            false => involves.push(sample),
-        }
-        sum += round;
-        count += 1;
-    }
-    let score = sum / f64::from(count.max(1));
-    let by_mass = |&at: &usize| matches!(holdings.samples[at].content, Content::ByMass(_));
-    let evidence = match explains.iter().any(by_mass) {
-        true => Evidence::Mass,
-        false => Evidence::Structure,
+    let mut moved = Moved {
+        explains: span.iter().filter(|p| is_moved(p)).map(|p| p.0).collect(),
+        involves: Vec::new(),
+        strengths: Vec::new(),
     };
-    let is_seen = explains.len() >= LEAST_MOVED && score >= LEAST_SCORE;
-    is_seen.then(|| Hypothesis {
-        involves,
-        evidence,
-        score,
-        ..Hypothesis::new(Cause::Shift, explains)
-    })
+    moved.follow(holdings, span);
+    let (nearest, tail) = (pairs[first].1, pairs[last].0);
+    moved.come_round(holdings, &head(holdings, &pairs[..first], nearest), tail);
+    moved.hypothesis(holdings)
+}
+
+/// A line that may have moved.
+struct Moved {
+    explains: Vec<usize>,
+    involves: Vec<usize>,
+    /// Of each sample for which the move predicts something.
+    strengths: Vec<f64>,
+}
+
+impl Moved {
+    /// Weighs what the samples of the span hold.
+    fn follow(&mut self, holdings: &Holdings<'_>, span: &[(usize, usize)]) {
+        for &(sample, before) in span {
+            let holding = &holdings.samples[sample];
+            if holding.content == Content::Unknown {
+                self.involves.push(sample);
+                self.strengths.push(0.0);
+            } else if holding.label != holdings.samples[before].label {
+                let strength = holdings.strength(sample, before);
+                self.strengths
+                    .push(if holding.differs { strength } else { 0.0 });
+            }
+            // Equal labels beside each other: nothing is seen of the move, and nothing speaks against it.
+        }
+    }
+
+    /// What sat in the last place may have come round to the first; what was there first went on.
+    fn come_round(&mut self, holdings: &Holdings<'_>, head: &[usize], tail: usize) {
+        for (at, &sample) in head.iter().enumerate() {
+            let is_first = at + 1 == head.len() && holdings.samples[sample].differs;
+            let round = if is_first {
+                holdings.strength(sample, tail)
+            } else {
+                0.0
+            };
+            match round > 0.0 {
+                true => self.explains.insert(0, sample),
+                false => self.involves.push(sample),
+            }
+            self.strengths.push(round);
+        }
+    }
+
+    fn hypothesis(self, holdings: &Holdings<'_>) -> Option<Hypothesis> {
+        let score = self.strengths.iter().sum::<f64>() / self.strengths.len().max(1) as f64;
+        let by_mass = |&at: &usize| matches!(holdings.samples[at].content, Content::ByMass(_));
+        let evidence = match self.explains.iter().any(by_mass) {
+            true => Evidence::Mass,
+            false => Evidence::Structure,
+        };
+        let is_seen = self.explains.len() >= LEAST_MOVED && score >= LEAST_SCORE;
+        is_seen.then(|| Hypothesis {
+            involves: self.involves,
+            evidence,
+            score,
+            ..Hypothesis::new(Cause::Shift, self.explains)
+        })
+    }
 }
 
 /// The samples before the first one that is seen to have moved that moved as well, as far as can be said:
