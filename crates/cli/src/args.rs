@@ -3,7 +3,7 @@
 use std::{ffi::OsString, num::NonZeroUsize, path::PathBuf, thread};
 
 use clap::{Args, Parser, Subcommand, ValueEnum};
-use molkin_relate::Axes;
+use molkin_relate::{Axes, families::Column};
 
 use crate::output::CAUTION;
 
@@ -17,7 +17,7 @@ Inputs:
 
 const EXIT_HELP: &str = "\
 Exit status:
-  0  all pairs are identical (keys, describe: every record was read)
+  0  all pairs are identical (keys, families, describe: every record was read)
   1  some pairs differ
   2  trouble: something could not be read, paired or compared";
 
@@ -41,6 +41,8 @@ pub(crate) enum Command {
     Compare(Compare),
     /// Write a table of keys, one line a record
     Keys(Keys),
+    /// Group the records of files: duplicates, stereoisomers, isomers
+    Families(Families),
     /// Say what is known about each record
     Describe(Describe),
     /// Hold the labels of a tray of samples against what came
@@ -93,15 +95,91 @@ pub(crate) struct Keys {
     /// Leave parent_key and tautomer_key empty, which takes less time
     #[arg(long)]
     pub(crate) brief: bool,
-    /// Form of the output
-    #[arg(long, value_enum, default_value_t = TableFormat::Csv)]
-    pub(crate) format: TableFormat,
+    #[command(flatten)]
+    pub(crate) table: TableOutput,
     #[command(flatten)]
     pub(crate) forms: Forms,
     #[command(flatten)]
     pub(crate) working: Working,
     #[command(flatten)]
     pub(crate) reading: Reading,
+}
+
+/// Group the records of one or many files.
+///
+/// Tells which records are duplicates, which may be, which are stereoisomers of each other and which are
+/// isomers: a row a record, with the numbers of its groups and what it is to the first record of the
+/// closest. Columns: docs/output.md. A summary goes to standard error.
+#[derive(Debug, Args)]
+#[command(after_help = format!("{INPUT_HELP}\n\n{CAUTION}"))]
+pub(crate) struct Families {
+    /// Files or structures
+    #[arg(required = true, value_name = "FILE")]
+    pub(crate) inputs: Vec<OsString>,
+    /// Say of each record what it is to those of this file, which is held; its own are not listed
+    #[arg(long, value_name = "FILE")]
+    pub(crate) against: Vec<OsString>,
+    /// List only records that are in such groups
+    #[arg(long, value_enum, value_name = "GROUPS", value_delimiter = ',')]
+    pub(crate) only: Vec<Group>,
+    /// Say in sentences what records are to the first of such groups: A is the first, B the record
+    #[arg(long, value_enum, value_name = "GROUPS", value_delimiter = ',')]
+    pub(crate) explain: Vec<Group>,
+    /// The most records that are explained
+    #[arg(long, value_name = "N", default_value_t = 1_000)]
+    pub(crate) explain_limit: u64,
+    /// Write the summary as JSON
+    #[arg(long, value_name = "FILE")]
+    pub(crate) summary: Option<PathBuf>,
+    /// Memory for the rows of records, in MiB; what exceeds it goes to temporary files
+    #[arg(long, value_name = "MIB", default_value_t = 1_024)]
+    pub(crate) memory: usize,
+    #[command(flatten)]
+    pub(crate) forms: Forms,
+    #[command(flatten)]
+    pub(crate) table: TableOutput,
+    #[command(flatten)]
+    pub(crate) working: Working,
+    #[command(flatten)]
+    pub(crate) reading: Reading,
+}
+
+/// Sorts of groups: see docs/output.md.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub(crate) enum Group {
+    /// Identical, and not open
+    Duplicates,
+    /// Identical but open, or not to be told apart
+    PossibleDuplicates,
+    /// Stereoisomers
+    Stereo,
+    /// Forms of one parent
+    Forms,
+    /// Isomers of one formula
+    Isomers,
+}
+
+impl From<Group> for Column {
+    fn from(group: Group) -> Self {
+        match group {
+            Group::Duplicates => Self::Duplicates,
+            Group::PossibleDuplicates => Self::PossibleDuplicates,
+            Group::Stereo => Self::Stereo,
+            Group::Forms => Self::Forms,
+            Group::Isomers => Self::Isomers,
+        }
+    }
+}
+
+/// How a table is written, and where.
+#[derive(Debug, Args)]
+pub(crate) struct TableOutput {
+    /// Form of the output
+    #[arg(long, value_enum, default_value_t = TableFormat::Csv)]
+    pub(crate) format: TableFormat,
+    /// Write to a file, which is there as a whole or not at all
+    #[arg(long, value_name = "FILE")]
+    pub(crate) output: Option<PathBuf>,
 }
 
 /// Hold the labels of a tray of samples against what came.
@@ -295,6 +373,10 @@ pub(crate) enum SamplesFormat {
 pub(crate) enum TableFormat {
     /// Comma-separated values with a header
     Csv,
+    /// One object a line
+    Jsonl,
+    /// Columns, for engines that read many files at once
+    Parquet,
 }
 
 /// What decides which records are compared with each other.

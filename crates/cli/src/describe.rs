@@ -38,6 +38,7 @@ struct Descriptions<'r> {
 }
 
 impl Entries for Descriptions<'_> {
+    type Made = Vec<u8>;
     type Scratch = (Parser, Orderer);
 
     const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(63);
@@ -54,6 +55,7 @@ impl Entries for Descriptions<'_> {
         record: &mut RawRecord,
         text: &mut Vec<u8>,
     ) -> io::Result<bool> {
+        text.clear();
         let outcome = parser.parse(std::mem::take(record));
         let prepared = Prepared::new(orderer, source, outcome);
         let described = wire::describe(&prepared, &Limits::default());

@@ -1,26 +1,26 @@
 //! `molkin keys`.
 
-use std::{
-    io::{self, Write},
-    num::NonZeroUsize,
-};
+use std::{io, num::NonZeroUsize};
 
 use molkin_formats::source::{Parser, RawRecord, ReadOptions, RecordOutcome};
 use molkin_graph::Limits;
-use molkin_relate::{Axis, wire::KeyRows};
+use molkin_relate::{
+    Axis,
+    wire::{KeyRow, KeyRows},
+};
 
 use crate::{
     args::{Keys, TableFormat},
     forms::Forms,
     input,
-    output::csv,
+    output::table::{Made, Table},
     records::{self, Entries, Inputs},
     report::Report,
 };
 
 /// Writes one row for every record of every input, in order.
 pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
-    let TableFormat::Csv = options.format;
+    let format = options.table.format;
     let forms = match Forms::new(&options.forms) {
         Ok(forms) => forms,
         Err(message) => return report.trouble(message),
@@ -28,22 +28,28 @@ pub(crate) fn run(options: &Keys, report: &mut Report) -> io::Result<()> {
     if forms.overlook.contains(Axis::OpenStereo) {
         return report.trouble("open-stereo is about two records: keys cannot overlook it");
     }
-    report.out().write_all(csv::HEADER)?;
+    if !report.prepare_table(&options.table)? {
+        return Ok(());
+    }
+    let mut table = Table::begin::<KeyRow>(format, report.out())?;
     let reading = input::read_options(&options.reading);
     let inputs = Inputs::new(&options.inputs, &reading);
     let work = Rows {
         reading: &reading,
+        format,
         forms,
         further: !options.brief,
     };
     records::each(&work, inputs, &options.working, report, |report, row| {
-        report.out().write_all(row)
-    })
+        table.write(report.out(), row)
+    })?;
+    table.finish(report.out())
 }
 
 /// From records to rows.
 struct Rows<'r> {
     reading: &'r ReadOptions,
+    format: TableFormat,
     forms: Forms,
     /// Whether there are keys of parents and tautomers.
     further: bool,
@@ -56,6 +62,7 @@ struct Scratch {
 }
 
 impl Entries for Rows<'_> {
+    type Made = Made<KeyRow>;
     type Scratch = Scratch;
 
     const CHUNK: NonZeroUsize = NonZeroUsize::MIN.saturating_add(255);
@@ -78,11 +85,11 @@ impl Entries for Rows<'_> {
         scratch: &mut Scratch,
         source: &str,
         record: &mut RawRecord,
-        text: &mut Vec<u8>,
+        made: &mut Made<KeyRow>,
     ) -> io::Result<bool> {
         scratch.parser.parse_into(record, &mut scratch.outcome);
         let row = scratch.rows.row(source, &scratch.outcome);
-        csv::write_row(text, row)?;
+        made.fill(self.format, row)?;
         Ok(row.status == "ok")
     }
 }

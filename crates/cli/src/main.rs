@@ -4,7 +4,9 @@
 mod args;
 mod compare;
 mod describe;
+mod destination;
 mod exit;
+mod families;
 mod forms;
 mod input;
 mod keys;

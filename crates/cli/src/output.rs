@@ -3,6 +3,7 @@
 pub(crate) mod csv;
 pub(crate) mod json;
 mod style;
+pub(crate) mod table;
 pub(crate) mod text;
 
 pub(crate) use style::Style;

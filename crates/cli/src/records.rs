@@ -13,8 +13,10 @@ use crate::{
     report::Report,
 };
 
-/// What is written about each record.
+/// What is made of each record.
 pub(crate) trait Entries: Sync {
+    /// What is made: storage that is filled again and again.
+    type Made: Default + Send;
     /// What a thread keeps from one record to the next.
     type Scratch;
 
@@ -24,13 +26,13 @@ pub(crate) trait Entries: Sync {
     /// Scratch for one thread.
     fn scratch(&self) -> Self::Scratch;
 
-    /// Appends the text for standard output on a record of `source`. Returns whether all went well.
+    /// Makes it of a record of `source`, in place of one before. Returns whether all went well.
     fn write(
         &self,
         scratch: &mut Self::Scratch,
         source: &str,
         record: &mut RawRecord,
-        text: &mut Vec<u8>,
+        made: &mut Self::Made,
     ) -> io::Result<bool>;
 }
 
@@ -46,8 +48,8 @@ struct Arrival {
 
 /// The place of what becomes of an arrival.
 #[derive(Default)]
-struct Entry {
-    text: Vec<u8>,
+struct Entry<M> {
+    made: M,
     outcome: Outcome,
 }
 
@@ -56,9 +58,9 @@ enum Outcome {
     /// All went well.
     #[default]
     Fine,
-    /// The record failed, and the text says so.
+    /// The record failed, and what was made says so.
     Failed,
-    /// There is no text.
+    /// Nothing was made.
     Unwritten(io::Error),
     /// There was no record.
     Trouble(String),
@@ -69,21 +71,20 @@ struct Writing<'e, E>(&'e E);
 
 impl<E: Entries> Work for Writing<'_, E> {
     type Item = Arrival;
-    type Output = Entry;
+    type Output = Entry<E::Made>;
     type Scratch = E::Scratch;
 
     fn scratch(&self) -> E::Scratch {
         self.0.scratch()
     }
 
-    fn run(&self, scratch: &mut E::Scratch, arrival: &mut Arrival, entry: &mut Entry) {
-        entry.text.clear();
+    fn run(&self, scratch: &mut E::Scratch, arrival: &mut Arrival, entry: &mut Self::Output) {
         if let Some(message) = arrival.trouble.take() {
             entry.outcome = Outcome::Trouble(message);
             return;
         }
         let (source, record) = (&arrival.source, &mut arrival.record);
-        entry.outcome = match self.0.write(scratch, source, record, &mut entry.text) {
+        entry.outcome = match self.0.write(scratch, source, record, &mut entry.made) {
             Ok(true) => Outcome::Fine,
             Ok(false) => Outcome::Failed,
             Err(error) => Outcome::Unwritten(error),
@@ -95,7 +96,7 @@ impl<E: Entries> Work for Writing<'_, E> {
     }
 }
 
-/// Writes the entry of each record of each input with `write`, in order. Inputs that cannot be opened
+/// Hands what is made of each record of each input to `write`, in order. Inputs that cannot be opened
 /// or that break off are reported in their place, and the next one is read. Ends with the count of
 /// records that failed.
 pub(crate) fn each<E: Entries>(
@@ -103,7 +104,7 @@ pub(crate) fn each<E: Entries>(
     inputs: Inputs<'_>,
     working: &Working,
     report: &mut Report,
-    mut write: impl FnMut(&mut Report, &[u8]) -> io::Result<()>,
+    mut write: impl FnMut(&mut Report, &mut E::Made) -> io::Result<()>,
 ) -> io::Result<()> {
     let plan = Plan {
         threads: working.threads(),
@@ -123,7 +124,7 @@ pub(crate) fn each<E: Entries>(
         }
         records += 1;
         report.progress().done();
-        write(report, &entry.text)
+        write(report, &mut entry.made)
     })?;
     if failed > 0 {
         report.trouble(format_args!("{failed} of {records} records failed"))?;

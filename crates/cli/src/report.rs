@@ -2,14 +2,20 @@
 
 use std::{
     fmt::Display,
-    io::{self, BufWriter, IsTerminal, StdoutLock, Write},
+    io::{self, IsTerminal, Write},
 };
 
-use crate::{exit::Status, output::Style, progress::Progress};
+use crate::{
+    args::{TableFormat, TableOutput},
+    destination::Destination,
+    exit::Status,
+    output::Style,
+    progress::Progress,
+};
 
-/// One run: buffered standard output, standard error, and the status earned so far.
+/// One run: where results go, standard error, and the status earned so far.
 pub(crate) struct Report {
-    out: BufWriter<StdoutLock<'static>>,
+    out: Destination,
     style: Style,
     status: Status,
     progress: Progress,
@@ -21,14 +27,37 @@ impl Report {
         let stdout = io::stdout();
         let style = Style::choose(stdout.is_terminal(), |name| std::env::var_os(name));
         Self {
-            out: BufWriter::with_capacity(1 << 16, stdout.lock()),
+            out: Destination::standard(),
             style,
             status: Status::Same,
             progress: Progress::new(),
         }
     }
 
-    /// Standard output.
+    /// Sends a table where it is wanted. Whether that can be; if not, it has been said.
+    pub(crate) fn prepare_table(&mut self, table: &TableOutput) -> io::Result<bool> {
+        if let Some(path) = &table.output {
+            match Destination::file(path) {
+                Ok(file) => self.out = file,
+                Err(error) => {
+                    self.trouble(format_args!("{}: {error}", path.display()))?;
+                    return Ok(false);
+                }
+            }
+        }
+        if table.format == TableFormat::Parquet && self.out.is_terminal() {
+            self.trouble("columns are nothing to read on a terminal: write to a file (--output)")?;
+            return Ok(false);
+        }
+        Ok(true)
+    }
+
+    /// What results go to, for words.
+    pub(crate) fn destination(&self) -> String {
+        self.out.name()
+    }
+
+    /// Where results go.
     pub(crate) fn out(&mut self) -> &mut impl Write {
         &mut self.out
     }
@@ -67,9 +96,9 @@ impl Report {
         self.say(message)
     }
 
-    /// Writes out what is buffered.
-    pub(crate) fn flush(&mut self) -> io::Result<()> {
-        self.out.flush()
+    /// Writes out what is buffered and puts a file in its place.
+    pub(crate) fn finish(&mut self) -> io::Result<()> {
+        self.out.finish()
     }
 }
 

@@ -9,6 +9,7 @@
 mod counted;
 mod error;
 mod format;
+mod kept;
 mod parser;
 mod raw;
 

@@ -125,6 +125,7 @@ pub struct Canonical {
     marked: Labelling,
     has_marks: bool,
     constitution_key: Key,
+    labelled_constitution_key: Key,
     compound_key: Key,
 }
 
@@ -305,6 +306,12 @@ impl Orderer {
         let own = &view.constitution.certificate;
         let constitution = digester.first(own);
         view.constitution_key = Key::of(Named::Constitution, std::iter::once(constitution));
+        view.labelled_constitution_key = if view.has_isotopes {
+            let digest = digester.digest(&view.isotopic.certificate, own);
+            Key::of(Named::Constitution, std::iter::once(digest))
+        } else {
+            view.constitution_key
+        };
         // Most records have neither isotopes nor stereo: one certificate serves both keys.
         let mut digest = |certificate: &[u64]| {
             let known = certificate == own;
@@ -420,6 +427,12 @@ impl Canonical {
     /// The key of the constitution: no stereo, no isotopes.
     pub fn constitution_key(&self) -> Key {
         self.constitution_key
+    }
+
+    /// The key of the constitution with its isotopes, no stereo: that of all stereoisomers of the record.
+    /// Without isotopes it is the constitution key.
+    pub fn labelled_constitution_key(&self) -> Key {
+        self.labelled_constitution_key
     }
 
     /// The key of the compound: isotopes and everything the record claims about stereo. Two records

@@ -4,6 +4,8 @@ use std::fmt;
 
 use sha2::{Digest as _, Sha256};
 
+use crate::{Element, Formula};
+
 /// The version of everything a key depends on: perception, certificate layout and hash. Changing any
 /// of them changes this number; committed golden keys watch over it.
 pub const KEY_VERSION: u8 = 1;
@@ -14,6 +16,7 @@ pub(crate) type Digest = [u8; 32];
 /// What a digest is of, so that one thing never has the digest of the other.
 const CERTIFICATE: u8 = 0;
 const LIST: u8 = 1;
+const FORMULA: u8 = 2;
 
 /// Makes digests; owns the scratch.
 #[derive(Debug, Default)]
@@ -83,7 +86,8 @@ pub(crate) enum Named {
 
 /// A 128-bit key: half of a SHA-256 digest (FIPS 180-4) of the key version and a canonical
 /// certificate, the first half for constitutions and the second for compounds. Where a compound is a
-/// list of certificates, it is a half of the digest of their digests.
+/// list of certificates, it is a half of the digest of their digests. The key of a formula is a half of
+/// a digest of its counts.
 ///
 /// Written as the version, a hyphen and 32 hexadecimal digits.
 #[derive(Debug, Clone, Copy, Default, PartialEq, Eq, PartialOrd, Ord, Hash)]
@@ -109,6 +113,25 @@ impl Key {
         };
         let mut key = [0; 16];
         key.copy_from_slice(&digest[half]);
+        Self(key)
+    }
+
+    /// The key of a formula and of the stated nuclides (element, mass number, count; sorted): equal for
+    /// records that are isomers of each other, whatever their constitution.
+    pub fn of_formula(formula: &Formula, nuclides: &[(Element, u16, u32)]) -> Self {
+        let mut hash = Sha256::new();
+        hash.update([KEY_VERSION, FORMULA]);
+        hash.update(formula.charge().to_le_bytes());
+        // Isotopes count as their element in the formula, so mass number 0 is free for that.
+        let elements = formula.iter().map(|(element, count)| (element, 0, count));
+        for (element, mass, count) in elements.chain(nuclides.iter().copied()) {
+            hash.update([element.number()]);
+            hash.update(mass.to_le_bytes());
+            hash.update(count.to_le_bytes());
+        }
+        let digest: Digest = hash.finalize().into();
+        let mut key = [0; 16];
+        key.copy_from_slice(&digest[..16]);
         Self(key)
     }
 

@@ -17,6 +17,8 @@ pub mod samples;
 mod structure;
 mod words;
 
+#[cfg(feature = "families")]
+pub mod families;
 #[cfg(feature = "parallel")]
 pub mod parallel;
 pub mod wire;

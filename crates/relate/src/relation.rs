@@ -19,7 +19,7 @@ pub enum Relation {
 }
 
 /// The kinds of stereo relation.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash)]
 #[non_exhaustive]
 pub enum StereoKind {
     /// Mirror images that do not coincide.

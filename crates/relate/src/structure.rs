@@ -1,6 +1,6 @@
 //! One side of a comparison, prepared once.
 
-use molkin_graph::{Canonical, Element, Formula, Molecule, OrderError, Orderer};
+use molkin_graph::{Canonical, Element, Formula, Key, Molecule, OrderError, Orderer};
 use thiserror::Error;
 
 /// Why a record cannot be compared.
@@ -86,6 +86,11 @@ impl Structure {
     pub fn isotopes(&self) -> &[(Element, u16, u32)] {
         &self.isotopes
     }
+
+    /// The key of formula and isotopes: equal for isomers.
+    pub fn isomer_key(&self) -> Key {
+        Key::of_formula(&self.formula, &self.isotopes)
+    }
 }
 
 /// Refuses molecules with unknown atoms.
@@ -100,7 +105,7 @@ pub(crate) fn check_is_one_structure(molecule: &Molecule) -> Result<(), PrepareE
     }
 }
 
-fn isotopes(molecule: &Molecule) -> Vec<(Element, u16, u32)> {
+pub(crate) fn isotopes(molecule: &Molecule) -> Vec<(Element, u16, u32)> {
     let stated = molecule
         .atoms()
         .filter_map(|atom| Some((atom.element, atom.isotope?, 1)));

@@ -4,10 +4,15 @@
 
 mod composition;
 mod describe;
+#[cfg(feature = "families")]
+mod families;
 mod findings;
 mod keys;
 mod pair;
+#[cfg(feature = "parquet")]
+mod parquet;
 mod prepared;
+mod table;
 mod samples;
 
 use molkin_formats::{Note as ReadNote, ReadError};
@@ -18,13 +23,20 @@ use crate::remarks::Noted;
 
 pub use composition::{FunctionalGroup, Piece, RingSystem, Sides, Surplus};
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
+#[cfg(feature = "families")]
+pub use families::{FamilyRow, FamilySummary, GroupSummary, SizeSummary, Sources};
 pub use findings::{Finding, FoundGroup};
 pub use keys::{KeyRow, KeyRows};
+#[cfg(feature = "families")]
+pub(crate) use keys::{prepare_message, read_message};
 pub use pair::{
     Apart, BondPair, Bonds, BranchPoint, Branching, Hydrogens, Kind, Pair, StereoEntry, compare,
     compare_by,
 };
+#[cfg(feature = "parquet")]
+pub use self::parquet::ParquetTable;
 pub use prepared::Prepared;
+pub use table::{ColumnKind, TableColumn, TableRow, Value};
 pub use samples::{
     CAUTION, ExpectedMass, FormulaEntry, HypothesisEntry, MassEntry, SampleEntry, SampleName,
     SampleRow, Tray, VerdictCount,

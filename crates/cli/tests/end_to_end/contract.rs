@@ -194,17 +194,29 @@ fn the_checker_refuses(#[case] pointer: &str, #[case] value: Option<Value>) {
     check(&schema, &object).unwrap_err();
 }
 
+/// The columns that the first table of a section lists.
+fn listed(section: &str) -> String {
+    let page = fs::read_to_string(repository().join("docs/output.md")).unwrap();
+    let (_, section) = page.split_once(&format!("## {section}\n")).unwrap();
+    let (_, table) = section.split_once("\n|---|---|\n").unwrap();
+    let rows = table.lines().map_while(|line| line.strip_prefix("| `"));
+    let columns: Vec<&str> = rows.filter_map(|row| row.split('`').next()).collect();
+    columns.join(",")
+}
+
 #[test]
 fn the_columns_are_those_of_the_page() {
-    let page = fs::read_to_string(repository().join("docs/output.md")).unwrap();
-    let (_, section) = page.split_once("## CSV of keys").unwrap();
-    let (section, _) = section.split_once("\n## ").unwrap();
-    let rows = section.lines().filter_map(|line| line.strip_prefix("| `"));
-    let columns: Vec<&str> = rows.filter_map(|row| row.split('`').next()).collect();
-    let header = run(&["keys", "C"]).out.lines().next().unwrap().to_owned();
-    assert_eq!(header, columns.join(","));
+    let header = |command| run(&[command, "C"]).out.lines().next().unwrap().to_owned();
+    assert_eq!(header("keys"), listed("CSV of keys"));
     assert_eq!(
-        header,
-        "source,record,name,status,formula,smiles,constitution_key,compound_key,message,parent_key,tautomer_key"
+        header("keys"),
+        "source,record,name,status,formula,smiles,constitution_key,compound_key,message,\
+         parent_key,tautomer_key,open,labelled_constitution_key,isomer_key"
+    );
+    assert_eq!(header("families"), listed("Families"));
+    assert_eq!(
+        header("families"),
+        "source,record,name,status,duplicates,possible_duplicates,stereo,forms,isomers,\
+         first_source,first_record,relation,kind,open,message,explanation"
     );
 }

@@ -2,7 +2,9 @@
 #![expect(clippy::unwrap_used, reason = "what tests share may fail like a test")]
 
 mod contract;
+mod families;
 mod inputs;
+mod interrupted;
 mod pairing;
 mod runner;
 mod samples;

@@ -62,6 +62,9 @@ fn check(folder: &Folder, arguments: &[&str], status: i32) {
 
 #[rstest]
 #[case::keys(&["keys", "a.smi", "none.smi", "t.csv", "-", "s.sdf", "-"])]
+#[case::keys_as_objects(&["keys", "t.csv", "s.sdf", "--format", "jsonl"])]
+#[case::families(&["families", "a.smi", "none.smi", "t.csv", "-", "s.sdf", "--memory", "0"])]
+#[case::families_explained(&["families", "a.smi", "b.smi", "--overlook", "salt,charge", "--explain", "stereo,duplicates"])]
 #[case::describe(&["describe", "t.csv", "CCO", "s.sdf", "a.smi"])]
 #[case::describe_json(&["describe", "s.sdf", "none.sdf", "a.smi", "--format", "json"])]
 #[case::compare(&["compare", "a.smi", "b.smi", "--brief"])]
@@ -84,6 +87,7 @@ fn no_thread_is_no_choice() {
     for command in [
         &["keys", "C"][..],
         &["describe", "C"],
+        &["families", "C"],
         &["compare", "C", "C"],
     ] {
         let outcome = folder.run(&[command, &["--threads", "0"]].concat());

@@ -5,9 +5,10 @@ use std::{
     path::Path,
 };
 
+use molkin_graph::{Limits, Orderer};
 use rstest::rstest;
 
-use super::{Format, ReadOptions, Records, SourceError};
+use super::{Format, Parser, RawRecord, ReadOptions, Records, SourceError};
 
 #[rstest]
 #[case("a.smi", Some((Format::Smiles, false)))]
@@ -44,6 +45,51 @@ fn formats_by_content(#[case] text: &str, #[case] expected: Format) {
 #[case("SMILES\tname\rC\tmethane\r")]
 fn tables_by_their_header(#[case] text: &str) {
     assert_eq!(Format::guess(text.as_bytes()), Format::Csv);
+}
+
+const DATA_ITEM: &str = ">  <batch>\n17\n\n$$$$\n";
+
+/// The compound key of every record, read at once and read again from what is kept of it; and the
+/// bytes that are kept.
+fn kept(text: &str, format: Format) -> Vec<u8> {
+    let options = ReadOptions::default();
+    let mut parser = Parser::new(&options);
+    let mut orderer = Orderer::new(Limits::default());
+    let mut records = Records::new("test", text.as_bytes(), format, options);
+    let mut all = Vec::new();
+    while let Some(raw) = records.cut() {
+        let raw = raw.unwrap();
+        let mut bytes = Vec::new();
+        raw.keep(&mut bytes);
+        let again = RawRecord::from_kept(raw.index(), &bytes);
+        let [first, second] = [raw, again].map(|raw| {
+            let molecule = parser.parse(raw).result.unwrap().molecule;
+            orderer.order(&molecule).unwrap().compound_key()
+        });
+        assert_eq!(first, second);
+        all.extend_from_slice(&bytes);
+    }
+    all
+}
+
+#[test]
+fn structures_are_kept_without_what_stands_beside_them() {
+    assert_eq!(
+        kept("C[C@H](O)F a b\nC\n", Format::Smiles),
+        b"sC[C@H](O)F a bsC"
+    );
+    let named_like_an_end = WATER.replacen("\n\n", "\nM  END\n", 1);
+    let sdf = format!("{WATER}{DATA_ITEM}{named_like_an_end}{DATA_ITEM}");
+    let expected = format!("m{WATER}m{named_like_an_end}");
+    assert_eq!(kept(&sdf, Format::Sdf), expected.as_bytes());
+}
+
+#[cfg(feature = "table")]
+#[test]
+fn structures_of_tables_are_kept_without_the_other_columns() {
+    let table = format!("id,structure\n1, CCO \n2,\"{WATER}\"\n");
+    let expected = format!("sCCOm{WATER}");
+    assert_eq!(kept(&table, Format::Csv), expected.as_bytes());
 }
 
 /// Index, name and success of each record.

@@ -50,6 +50,16 @@ impl RawRow {
         self.raw.text.len()
     }
 
+    /// The value of the structure column, and whether it is a molfile; otherwise it is a SMILES.
+    pub(crate) fn structure_text(&self) -> (bool, &[u8]) {
+        let field = self.row.field(self.header.structure);
+        let value = field.map_or(&b""[..], |(_, value)| value);
+        match is_molfile(value) {
+            true => (true, value),
+            false => (false, value.trim_ascii()),
+        }
+    }
+
     /// Reads the name in the row, none where there is none, and the record, in place of one that is done
     /// with; its properties are left out.
     pub(crate) fn parse(

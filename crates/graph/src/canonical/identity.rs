@@ -36,6 +36,11 @@ impl Identity {
         self.view.constitution_key()
     }
 
+    /// The key of the constitution with its isotopes, no stereo.
+    pub fn labelled_constitution_key(&self) -> Key {
+        self.view.labelled_constitution_key()
+    }
+
     /// The key of the compound: isotopes and everything the record claims about stereo.
     pub fn compound_key(&self) -> Key {
         self.view.compound_key()

@@ -45,10 +45,40 @@ fn a_hydrogen_is_the_same_drawn_or_counted() {
     assert_eq!(counted.compound_key(), drawn.compound_key());
     assert_ne!(counted.compound_key(), mirror.compound_key());
     assert_eq!(counted.constitution_key(), mirror.constitution_key());
+    assert_eq!(
+        counted.labelled_constitution_key(),
+        counted.constitution_key()
+    );
     assert_eq!(counted.form(), drawn.form());
     let elements = mirror.stereo_elements();
     assert_eq!(elements.len(), 1);
     assert!(matches!(elements[0].mark, Mark::Given(_)));
+}
+
+/// Where a label sits is part of the labelled constitution and of no other.
+#[test]
+fn labels_are_in_the_labelled_constitution_alone() {
+    let mut orderer = Orderer::new(Limits::default());
+    let mut propane = |labelled: Option<u32>| {
+        let mut builder = MoleculeBuilder::new();
+        for atom in 0..3 {
+            builder.add_atom(Atom {
+                hydrogens: if atom == 1 { 2 } else { 3 },
+                isotope: (labelled == Some(atom)).then_some(13),
+                ..Atom::new(Element::CARBON)
+            });
+        }
+        builder.add_bond(0, 1, BondOrder::Single).unwrap();
+        builder.add_bond(1, 2, BondOrder::Single).unwrap();
+        let view = orderer.order(&builder.build().unwrap()).unwrap();
+        (view.constitution_key(), view.labelled_constitution_key())
+    };
+    let [plain, first, second, third] = [None, Some(0), Some(1), Some(2)].map(&mut propane);
+    assert!([first, second, third].iter().all(|keys| keys.0 == plain.0));
+    assert_eq!(plain.0, plain.1);
+    assert_eq!(first.1, third.1);
+    assert_ne!(first.1, second.1);
+    assert_ne!(first.1, plain.1);
 }
 
 #[test]

@@ -3,16 +3,17 @@
 use std::fmt::{Display, Write as _};
 
 use molkin_formats::{ReadError, smiles, source::RecordOutcome};
-use molkin_graph::{CanonicalForm, Formula, Identity, Limits, Molecule, Orderer};
-use serde::Serialize;
+use molkin_graph::{CanonicalForm, Formula, Identity, Key, Limits, Molecule, Orderer};
 
+use super::table::{TableColumn, TableRow, Value};
 use crate::{
-    Axes, Axis, Normaliser, PrepareError, Structure, structure::check_is_one_structure,
+    Axes, Axis, Normaliser, PrepareError, Structure,
+    structure::{check_is_one_structure, isotopes},
 };
 
 /// A record and its keys: the columns of `molkin keys`, in their order. Later columns are added at
 /// the end.
-#[derive(Debug, Clone, Default, PartialEq, Eq, Serialize)]
+#[derive(Debug, Clone, Default, PartialEq, Eq)]
 pub struct KeyRow {
     /// File name, `-`, or the SMILES text as given.
     pub source: String,
@@ -37,6 +38,52 @@ pub struct KeyRow {
     pub parent_key: String,
     /// Compound key with the axis `tautomer` overlooked; empty where it is not asked for.
     pub tautomer_key: String,
+    /// Whether the record stands for more than one possible sample, or leaves out what its notation
+    /// cannot say. It takes a view of all stereo elements, so it is there beside keys of forms only.
+    pub open: Option<bool>,
+    /// Key of the constitution with its isotopes, no stereo: that of all its stereoisomers.
+    pub labelled_constitution_key: String,
+    /// Key of formula, isotopes and charge.
+    pub isomer_key: String,
+}
+
+impl TableRow for KeyRow {
+    const COLUMNS: &'static [TableColumn] = &[
+        TableColumn::text("source"),
+        TableColumn::number("record"),
+        TableColumn::text("name"),
+        TableColumn::text("status"),
+        TableColumn::text("formula"),
+        TableColumn::text("smiles"),
+        TableColumn::text("constitution_key"),
+        TableColumn::text("compound_key"),
+        TableColumn::text("message"),
+        TableColumn::text("parent_key"),
+        TableColumn::text("tautomer_key"),
+        TableColumn::truth("open"),
+        TableColumn::text("labelled_constitution_key"),
+        TableColumn::text("isomer_key"),
+    ];
+
+    fn values(&self) -> impl Iterator<Item = Value<'_>> {
+        [
+            Value::Text(&self.source),
+            Value::Number(self.record),
+            Value::Text(&self.name),
+            Value::Word(self.status),
+            Value::word(&self.formula),
+            Value::word(&self.smiles),
+            Value::word(&self.constitution_key),
+            Value::word(&self.compound_key),
+            Value::text(&self.message),
+            Value::word(&self.parent_key),
+            Value::word(&self.tautomer_key),
+            Value::from(self.open),
+            Value::word(&self.labelled_constitution_key),
+            Value::word(&self.isomer_key),
+        ]
+        .into_iter()
+    }
 }
 
 /// Which keys of forms the rows have.
@@ -114,11 +161,10 @@ impl KeyRows {
     pub fn row(&mut self, source: &str, outcome: &RecordOutcome) -> &KeyRow {
         self.row.begin(source, outcome);
         match &outcome.result {
-            Err(error) => set(&mut self.row.message, Placed(error)),
+            Err(error) => self.row.message = read_message(error),
             Ok(record) => {
                 if let Err(error) = self.fill(&record.molecule) {
-                    let message = format_args!("{}: {error}", error.code());
-                    set(&mut self.row.message, message);
+                    self.row.message = prepare_message(&error);
                 }
             }
         }
@@ -138,8 +184,15 @@ impl KeyRows {
         row.smiles.push_str(&self.written.text);
         set(&mut row.constitution_key, self.identity.constitution_key());
         set(&mut row.compound_key, self.identity.compound_key());
+        set(
+            &mut row.labelled_constitution_key,
+            self.identity.labelled_constitution_key(),
+        );
+        let isomers = Key::of_formula(&self.formula, &isotopes(molecule));
+        set(&mut row.isomer_key, isomers);
         if let Some(forms) = &mut self.forms {
             let structure = Structure::new(&mut self.orderer, molecule.clone())?;
+            self.row.open = Some(structure.canonical().is_open());
             self.row.add_forms(forms, &structure);
         }
         Ok(())
@@ -148,22 +201,44 @@ impl KeyRows {
 
 impl KeyRow {
     fn begin(&mut self, source: &str, outcome: &RecordOutcome) {
-        self.source.clear();
-        self.source.push_str(source);
+        set(&mut self.source, source);
         self.record = outcome.index;
         self.name.clone_from(&outcome.name);
         self.status = "error";
         for field in [
             &mut self.formula,
             &mut self.smiles,
-            &mut self.constitution_key,
-            &mut self.compound_key,
             &mut self.message,
             &mut self.parent_key,
             &mut self.tautomer_key,
         ] {
             field.clear();
         }
+        self.clear_keys();
+    }
+
+    fn clear_keys(&mut self) {
+        for field in [
+            &mut self.constitution_key,
+            &mut self.labelled_constitution_key,
+            &mut self.compound_key,
+            &mut self.isomer_key,
+        ] {
+            field.clear();
+        }
+        self.open = None;
+    }
+
+    fn fill_keys(&mut self, structure: &Structure) {
+        let canonical = structure.canonical();
+        set(&mut self.constitution_key, canonical.constitution_key());
+        set(
+            &mut self.labelled_constitution_key,
+            canonical.labelled_constitution_key(),
+        );
+        set(&mut self.compound_key, canonical.compound_key());
+        set(&mut self.isomer_key, structure.isomer_key());
+        self.open = Some(canonical.is_open());
     }
 }
 
@@ -184,15 +259,7 @@ impl KeyRow {
                 None
             }
         };
-        if !overlook.is_empty() {
-            self.constitution_key.clear();
-            self.compound_key.clear();
-            if let Some(form) = form("key", *overlook) {
-                let canonical = form.structure().canonical();
-                set(&mut self.constitution_key, canonical.constitution_key());
-                set(&mut self.compound_key, canonical.compound_key());
-            }
-        }
+        let overlooked = (!overlook.is_empty()).then(|| form("key", *overlook));
         if *further {
             let parent = overlook.with(Axis::Salt).with(Axis::Charge);
             if let Some(form) = form("parent_key", parent) {
@@ -204,6 +271,11 @@ impl KeyRow {
                 set(&mut self.tautomer_key, canonical.compound_key());
             }
         }
+        match overlooked {
+            None => {}
+            Some(Some(form)) => self.fill_keys(form.structure()),
+            Some(None) => self.clear_keys(),
+        }
     }
 }
 
@@ -214,14 +286,14 @@ fn set(field: &mut String, value: impl Display) {
     let _ = write!(field, "{value}");
 }
 
-/// An error with its place and code.
-struct Placed<'e>(&'e ReadError);
+/// An error of a reader with its place and code.
+pub(crate) fn read_message(error: &ReadError) -> String {
+    let span = error.span();
+    let (line, column) = (span.line, span.column);
+    format!("{line}:{column}: {}: {}", error.code(), error.kind())
+}
 
-impl Display for Placed<'_> {
-    fn fmt(&self, out: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
-        let Self(error) = self;
-        let span = error.span();
-        let (line, column) = (span.line, span.column);
-        write!(out, "{line}:{column}: {}: {}", error.code(), error.kind())
-    }
+/// An error of the canonical order with its code.
+pub(crate) fn prepare_message(error: &PrepareError) -> String {
+    format!("{}: {error}", error.code())
 }
