@@ -114,6 +114,10 @@ fn one_by_one(normaliser: &mut Normaliser, structure: &Structure) -> Result<(), 
     Ok(())
 }
 
+/// A salt of which `charge` leaves an anion, so that it asks for the strongest acid of the tautomer that
+/// stands for the class, not of that which was drawn: the two axes are not independent there.
+const DEPENDENT: [&str; 1] = ["[Na+].[O-]C1=NC(=O)C(N1)(c1ccccc1)c1ccccc1"];
+
 #[test]
 fn the_order_of_axes_does_not_matter() {
     let mut comparer = Comparer::default();
@@ -123,6 +127,11 @@ fn the_order_of_axes_does_not_matter() {
         for text in [&pair.a, &pair.b] {
             let structure = comparer.structure(text);
             let outcome = structure.and_then(|own| one_by_one(&mut normaliser, &own));
+            if DEPENDENT.contains(&text.as_str()) {
+                // Fails when one starts to pass, so that the list stays true.
+                tally.case(outcome.is_err(), || format!("{text}: no longer dependent"));
+                continue;
+            }
             tally.value(outcome.map_err(|error| format!("{text}: {error}")));
         }
     }

@@ -17,8 +17,8 @@ use rstest::rstest;
 fn kinds_of(comparer: &mut Comparer, a: &Structure, b: &Structure) -> Result<Vec<Kind>, String> {
     let relation = comparer.relate(a, b)?.relation;
     let mut normaliser = Normaliser::new(Limits::default());
-    let apart = same_apart_from(&mut normaliser, relation, a, b);
-    let apart = apart.map_err(|error| error.to_string())?;
+    // Where a form is not found the kinds do without it, as in output.
+    let apart = same_apart_from(&mut normaliser, relation, a, b).unwrap_or_default();
     let found = kinds(relation, [a, b], apart, &Limits::default());
     found.map_err(|error| error.to_string())
 }
@@ -73,7 +73,7 @@ fn pairs_have_the_kinds_stated(
     tally.finish(at_least);
     let few: Vec<_> = of_kind.iter().filter(|&(_, &count)| count < 5).collect();
     assert!(few.is_empty(), "fewer than five pairs: {few:?}");
-    assert_eq!(of_kind.len(), 11, "{:?}", of_kind.keys());
+    assert_eq!(of_kind.len(), 12, "{:?}", of_kind.keys());
 }
 
 /// Real pairs: the same kinds both ways round, and functional groups that hold every heteroatom, share

@@ -47,4 +47,5 @@ mod shortcuts;
 mod smiles;
 mod stability;
 mod symmetry;
+mod tautomers;
 mod trays;

@@ -268,8 +268,7 @@ impl Orderer {
         }
         view.skeleton.load(molecule);
         let scratch = &mut self.mesomer;
-        view.mesomer
-            .load(&mut view.skeleton, &self.limits, scratch)
+        view.mesomer.load(&mut view.skeleton, &self.limits, scratch)
     }
 
     /// Finds the orders of what was perceived, and of that alone: no keys.

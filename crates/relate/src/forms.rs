@@ -40,6 +40,18 @@ pub enum FormError {
         /// The axis.
         axis: Axis,
     },
+    /// An axis made more of its own form, so the form would depend on what was drawn.
+    #[error("the {axis} form is not settled")]
+    Unsettled {
+        /// The axis.
+        axis: Axis,
+    },
+    /// The axis is not built yet.
+    #[error("the axis {axis} is not built yet")]
+    NotBuilt {
+        /// The axis.
+        axis: Axis,
+    },
     /// A rule led to something that is no molecule.
     #[error(transparent)]
     Build(#[from] BuildError),
@@ -51,6 +63,8 @@ impl FormError {
         match self {
             Self::Prepare(error) => error.code(),
             Self::StepLimit { .. } => "form-step-limit",
+            Self::Unsettled { .. } => "form-not-settled",
+            Self::NotBuilt { .. } => "axis-not-built",
             Self::Build(_) => "form-not-built",
         }
     }
@@ -212,12 +226,13 @@ impl Normaliser {
         structure: &'s Structure,
         axes: Axes,
     ) -> Result<Form<'s>, FormError> {
-        const ORDER: [Axis; 5] = [
+        const ORDER: [Axis; 6] = [
             Axis::Stereo,
             Axis::Isotope,
             Axis::Salt,
             Axis::Charge,
             Axis::Tautomer,
+            Axis::RingChain,
         ];
         let mut form = Form {
             structure: Cow::Borrowed(structure),
@@ -225,8 +240,7 @@ impl Normaliser {
         };
         let mut sources: Option<Vec<u32>> = None;
         for axis in ORDER.into_iter().filter(|&axis| axes.contains(axis)) {
-            let ring_chain = axes.contains(Axis::RingChain);
-            let Some(outcome) = self.apply(&form.structure, axis, ring_chain)? else {
+            let Some(outcome) = self.apply(&form.structure, axis)? else {
                 continue;
             };
             let traced = outcome.changes.into_iter().map(|change| match &sources {
@@ -247,12 +261,7 @@ impl Normaliser {
         Ok(form)
     }
 
-    fn apply(
-        &mut self,
-        structure: &Structure,
-        axis: Axis,
-        ring_chain: bool,
-    ) -> Result<Option<Outcome>, FormError> {
+    fn apply(&mut self, structure: &Structure, axis: Axis) -> Result<Option<Outcome>, FormError> {
         match axis {
             Axis::Stereo => stereo::normalise(structure),
             Axis::OpenStereo => Ok(None),
@@ -266,9 +275,8 @@ impl Normaliser {
                 salt::normalise(&mut self.orderer, known, structure)
             }
             Axis::Charge => charge::normalise(&mut self.orderer, structure),
-            Axis::Tautomer | Axis::RingChain => {
-                tautomer::normalise(&mut self.orderer, structure, ring_chain)
-            }
+            Axis::Tautomer => tautomer::normalise(&mut self.orderer, structure),
+            Axis::RingChain => Err(FormError::NotBuilt { axis }),
         }
     }
 }

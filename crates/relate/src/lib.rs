@@ -23,7 +23,6 @@ pub mod families;
 pub mod parallel;
 pub mod wire;
 
-pub use explain::moves as findings;
 pub use crate::{
     explain::{
         BondDifference, BranchPoint, Branching, Explanation, Geometry, HydrogenDifference,
@@ -38,3 +37,4 @@ pub use crate::{
     relation::{Relation, StereoKind, Verdict, relate},
     structure::{PrepareError, Structure},
 };
+pub use explain::moves as findings;

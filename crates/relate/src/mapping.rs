@@ -48,11 +48,11 @@ use std::sync::atomic::AtomicBool;
 
 use self::{meter::Meter, problem::Problem};
 
+pub(crate) use self::structures::{Heavy, sides};
 pub use self::{
     arrangement::{Arm, Arrangement},
     structures::map_structures,
 };
-pub(crate) use self::structures::{Heavy, sides};
 
 /// One structure as the search sees it: non-hydrogen atoms in canonical order.
 ///

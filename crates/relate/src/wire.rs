@@ -12,8 +12,8 @@ mod pair;
 #[cfg(feature = "parquet")]
 mod parquet;
 mod prepared;
-mod table;
 mod samples;
+mod table;
 
 use molkin_formats::{Note as ReadNote, ReadError};
 use molkin_graph::Molecule;
@@ -21,6 +21,8 @@ use serde::Serialize;
 
 use crate::remarks::Noted;
 
+#[cfg(feature = "parquet")]
+pub use self::parquet::ParquetTable;
 pub use composition::{FunctionalGroup, Piece, RingSystem, Sides, Surplus};
 pub use describe::{Describe, Group, Masses, Stereo, Unsaturation, describe};
 #[cfg(feature = "families")]
@@ -33,14 +35,12 @@ pub use pair::{
     Apart, BondPair, Bonds, BranchPoint, Branching, Hydrogens, Kind, Pair, StereoEntry, compare,
     compare_by,
 };
-#[cfg(feature = "parquet")]
-pub use self::parquet::ParquetTable;
 pub use prepared::Prepared;
-pub use table::{ColumnKind, TableColumn, TableRow, Value};
 pub use samples::{
     CAUTION, ExpectedMass, FormulaEntry, HypothesisEntry, MassEntry, SampleEntry, SampleName,
     SampleRow, Tray, VerdictCount,
 };
+pub use table::{ColumnKind, TableColumn, TableRow, Value};
 
 /// The version of the contract.
 pub const VERSION: u32 = 1;

@@ -165,7 +165,7 @@ fn every_record_counts() {
     assert_eq!(rows.len(), 5);
     assert_eq!(
         rows[2],
-        "-,3,broken,error,,,,,3:2: ring-not-closed: ring label 1 is opened and never closed,,"
+        "-,3,broken,error,,,,,3:2: ring-not-closed: ring label 1 is opened and never closed,,,,,"
     );
     assert!(rows[4].starts_with("-,5,water,ok,H2O,O,1-"));
 }

@@ -96,7 +96,7 @@ impl Regions {
     /// Finds the sites: heteroatoms, then carbons that exchange a hydrogen with sites found before in
     /// some tautomer, until there are no more. The matching holds what is drawn afterwards.
     ///
-    /// The outcome does not depend on the tautomer that came in. Say B is a tautomer of A by the sites
+    /// Where all hydrogens of a region stay on sites, the outcome does not depend on the tautomer that came in. Say B is a tautomer of A by the sites
     /// of A. Those of B are among them. On the sites of A that B lacks, all tautomers of B have as many
     /// hydrogens together, or else one of them would exchange hydrogen with a site of B and be one. But
     /// the first of them that A found did exchange hydrogen with such sites.

@@ -59,7 +59,7 @@ pub(super) fn may_shift(skeleton: &Skeleton, bond: u32) -> bool {
             && heavy.period() >= 3
             && skeleton.degree(y) >= 3
     };
-    !ylide(a, b) && !ylide(b, a) && !(acyl && !skeleton.ring[bond as usize])
+    !ylide(a, b) && !ylide(b, a) && (!acyl || skeleton.ring[bond as usize])
 }
 
 /// Carbon with an oxygen that has no other neighbour, and another nitrogen or oxygen.

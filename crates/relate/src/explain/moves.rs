@@ -1,6 +1,6 @@
 //! What moved between constitutional isomers: the difference under the atom map, told in a chemist's terms.
 //!
-//! Findings come one after the other out of a [`Ledger`] of what differs: every bond of one record only
+//! Findings come one after the other out of a ledger of what differs: every bond of one record only
 //! and every bond of changed order ends up in exactly one finding, what no other takes in
 //! [`Change::Rest`]. All work is done on the canonical numbering of the lesser record of the two, so
 //! that no choice depends on the input and the two directions mirror each other.

@@ -20,7 +20,7 @@ use molkin_graph::{Canonical, Element, Molecule, Orderer, Revised};
 
 use crate::{PrepareError, Structure, constitution::Constitution, groups::aromatic};
 
-use super::{Change, FormError, Outcome, remembering};
+use super::{Axis, Change, FormError, Outcome, remembering};
 use clusters::{Cluster, clusters};
 use sites::Choice;
 use view::View;
@@ -130,13 +130,19 @@ impl<'s> Work<'s> {
     }
 
     /// Settles all clusters. Each round takes a unit of charge from some cluster, so there are as many
-    /// rounds at most as there are charges.
+    /// rounds at most as there are charges, drawn or in the normal form. More mean that some round took
+    /// none, as where deuterium is all that an atom could give: then there is no form.
     fn neutralise(&mut self) -> Result<(), FormError> {
-        loop {
+        let drawn = self.structure.molecule().atoms();
+        let drawn: u32 = drawn
+            .map(|atom| u32::from(atom.charge.unsigned_abs()))
+            .sum();
+        let charges = drawn + total_charge(&View::of(&self.canonical));
+        for _ in 0..=charges {
             let view = View::of(&self.canonical);
             let found = clusters(&view);
-            let found = found.iter();
             let mut choices: Vec<Choice> = found
+                .iter()
                 .filter_map(|cluster| Choice::of(&view, cluster))
                 .collect();
             // By the constitution first: isotopes and stereo must not steer a proton.
@@ -163,6 +169,7 @@ impl<'s> Work<'s> {
             }
             self.rebuild()?;
         }
+        Err(FormError::Unsettled { axis: Axis::Charge })
     }
 
     /// Among equal carbons of a mobile anion the one that bears the charge as drawn: another could not take

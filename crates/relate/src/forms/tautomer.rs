@@ -9,11 +9,33 @@ use crate::{PrepareError, Relation, StereoKind, Structure, relate};
 use super::{Axis, Change, FormError, Outcome, remembering};
 
 /// Brings mobile hydrogens to where every tautomer of the record has them.
+///
+/// Where regions allow a shift of oxidation states, as for a saturated ring beside an azole, the
+/// tautomer that stands for the class may lie in a narrower one. Such a record has no form: it is an
+/// error, never a key that follows the drawing.
 pub(super) fn normalise(
     orderer: &mut Orderer,
     structure: &Structure,
-    _ring_chain: bool,
 ) -> Result<Option<Outcome>, FormError> {
+    let Some(outcome) = step(orderer, structure)? else {
+        return Ok(None);
+    };
+    let form = Structure::new(orderer, outcome.revised.molecule.clone())?;
+    let Some(again) = step(orderer, &form)? else {
+        return Ok(Some(outcome));
+    };
+    let again = Structure::new(orderer, again.revised.molecule)?;
+    if form.canonical().same_compound(again.canonical()) {
+        Ok(Some(outcome))
+    } else {
+        Err(FormError::Unsettled {
+            axis: Axis::Tautomer,
+        })
+    }
+}
+
+/// The form, not checked.
+fn step(orderer: &mut Orderer, structure: &Structure) -> Result<Option<Outcome>, FormError> {
     let mut revision = remembering(structure);
     // A mark that counts for nothing as drawn is not to count elsewhere.
     let elements = structure.canonical().stereo_elements();
@@ -73,7 +95,7 @@ fn everywhere(orderer: &mut Orderer, form: &Structure) -> Result<Option<Structur
         revision.remember(*mark);
     }
     let stripped = Structure::new(orderer, revision.finish()?.molecule)?;
-    let normalised = normalise(orderer, &stripped, false)?;
+    let normalised = normalise(orderer, &stripped)?;
     Ok(Some(match normalised {
         Some(outcome) => Structure::new(orderer, outcome.revised.molecule)?,
         None => stripped,
