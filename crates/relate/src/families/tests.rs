@@ -210,7 +210,7 @@ fn what_cannot_be_compared_is_told() {
     let (options, limits) = (ReadOptions::default(), Limits::default());
     let mut reading = Reading::new(&options, limits);
     let mut gatherer = Gatherer::new(1 << 20).unwrap();
-    let text = "C12C3C4C1C5C2C3C45\nC14C5C2C3C5C1C3C24\nCOC\n";
+    let text = "C12C3C4C1C5C2C3C45\nC14C5C2C3C5C1C3C24\nC=Cc1ccccc1\n";
     let mut records = Records::new("test", text.as_bytes(), Format::Smiles, options.clone());
     while let Some(raw) = records.cut() {
         gatherer.add(&reading.read(raw.unwrap())).unwrap();
