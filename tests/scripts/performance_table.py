@@ -71,7 +71,7 @@ def allocations(molkin, texts, folder):
     for records in (500, 1000):
         part = Path(folder, "part.smi")
         part.write_text("\n".join(texts[:records]) + "\n")
-        command = ["valgrind", molkin, "keys", "--threads", "1", str(part)]
+        command = ["valgrind", molkin, "keys", "--brief", "--threads", "1", str(part)]
         words = subprocess.run(command, capture_output=True, text=True).stderr
         line = next(line for line in words.splitlines() if "total heap usage" in line)
         counts.append(int(line.split("usage:")[1].split()[0].replace(",", "")))
@@ -101,8 +101,8 @@ def reference_rate(texts):
 
 def row(molkin, path, folder):
     texts, size = structures(path)
-    alone = [molkin, "keys", "--threads", "1", path]
-    one, all_cores = best(alone), best([molkin, "keys", path])
+    alone = [molkin, "keys", "--brief", "--threads", "1", path]
+    one, all_cores = best(alone), best([molkin, "keys", "--brief", path])
     reference = reference_rate(texts)
     rate = len(texts) / one
     cells = [
@@ -157,7 +157,7 @@ def bare_graphs(molkin, path, folder):
             smiles.write(Chem.MolToSmiles(bare, canonical=False) + "\n")
             lines.write(graph6(molecule.GetNumAtoms(), bonds) + "\n")
             count += 1
-    own = best([molkin, "keys", "--threads", "1", str(chains)])
+    own = best([molkin, "keys", "--brief", "--threads", "1", str(chains)])
     other = best([labelg, "-q", str(graphs), "/dev/null"])
     return (
         f"Bare graphs of `{Path(path).name}` ({count:,}, elements and bond orders left out), text to canonical\n"
