@@ -255,7 +255,7 @@ pub(crate) struct TrayColumns {
 #[derive(Debug, Args)]
 #[command(next_help_heading = "Forms of one compound")]
 pub(crate) struct Forms {
-    /// Axes to overlook, separated by commas: salt, charge, tautomer, ring-chain, isotope, stereo,
+    /// Axes to overlook, separated by commas: salt, charge, tautomer (provisional), isotope, stereo,
     /// open-stereo (compare only)
     #[arg(long, value_name = "AXES")]
     pub(crate) overlook: Option<Axes>,
